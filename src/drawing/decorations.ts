@@ -1,0 +1,63 @@
+import type { ElementRef } from '../engine/model/design.ts';
+import type { Plug } from '../engine/model/underlay.ts';
+
+export type Severity = 'blocking' | 'degrading' | 'advisory';
+
+/** How an element stands out; several may hold at once. */
+export type Tone = 'selected' | 'hovered' | 'lit' | 'dimmed' | 'failed' | 'fault';
+
+/** A step of a loop: along a tunnel or a cable, from its end a to its end b or back. */
+export interface LoopStep {
+  readonly collection: 'tunnels' | 'links';
+  readonly id: string;
+  readonly direction: 'a-to-b' | 'b-to-a';
+}
+
+/**
+ * What is to be shown on top of a drawing. The canvas and the exports know these and the design, never findings or
+ * traces: whoever has a result turns it into decorations.
+ */
+export interface Decorations {
+  readonly tones: { readonly [elementKey: string]: readonly Tone[] };
+  /** Cords drawn as cut; with `vnis` both ends' differing VNIs are flagged at the gap. */
+  readonly cuts: readonly {
+    readonly tunnel: string;
+    readonly vnis?: { readonly a?: number; readonly b?: number };
+  }[];
+  readonly loops: readonly { readonly steps: readonly LoopStep[] }[];
+  readonly ghosts: readonly {
+    readonly id: string;
+    readonly from: Plug;
+    readonly to: Plug;
+    readonly label: string;
+  }[];
+  readonly overhangs: readonly {
+    readonly tunnel: string;
+    readonly end: 'a' | 'b';
+    readonly packetBytes: number;
+    readonly mtuBytes: number;
+  }[];
+  readonly balloons: readonly {
+    readonly number: number;
+    readonly severity: Severity;
+    readonly waived: boolean;
+    readonly at: ElementRef;
+    readonly words?: string;
+  }[];
+  /** Segments whose cords are hidden from view (faded). */
+  readonly hiddenSegments: readonly string[];
+}
+
+export const noDecorations: Decorations = {
+  tones: {},
+  cuts: [],
+  loops: [],
+  ghosts: [],
+  overhangs: [],
+  balloons: [],
+  hiddenSegments: [],
+};
+
+/** The key under which an element's tones stand. */
+export const elementKey = (ref: ElementRef): string =>
+  `${ref.collection}/${ref.id}${ref.port === undefined ? '' : `/${ref.port}`}${ref.member === undefined ? '' : `@${ref.member}`}`;
