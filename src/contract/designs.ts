@@ -1,0 +1,116 @@
+import { z } from 'zod';
+import { actions } from './session.ts';
+
+const titleSchema = z
+  .string()
+  .trim()
+  .min(1, 'expected a title, at least one character')
+  .max(80, 'expected at most 80 characters');
+
+export const countsSchema = z.object({ blocking: z.int(), degrading: z.int(), advisory: z.int() });
+export type Counts = z.infer<typeof countsSchema>;
+
+export const designStates = ['draft', 'in-review', 'approved', 'built', 'superseded'] as const;
+export const designSummarySchema = z.object({
+  id: z.string(),
+  engagementId: z.string(),
+  title: z.string(),
+  identification: z.string().nullable(),
+  revision: z.string().nullable(),
+  state: z.enum(designStates),
+  counts: countsSchema,
+  /** Sequence number of the last patch; also the version of the thumbnail. */
+  sequence: z.int(),
+  changedAt: z.iso.datetime(),
+  changedBy: z.string().nullable(),
+  archivedAt: z.iso.datetime().nullable(),
+});
+export type DesignSummary = z.infer<typeof designSummarySchema>;
+
+export const engagementSchema = z.object({
+  id: z.string(),
+  workspaceId: z.string(),
+  name: z.string(),
+  summary: z.string(),
+  archivedAt: z.iso.datetime().nullable(),
+  designs: z.array(designSummarySchema),
+});
+export type Engagement = z.infer<typeof engagementSchema>;
+
+/** GET /api/workspaces/:workspaceId/engagements?archived=true|false */
+export const engagementListSchema = z.object({ engagements: z.array(engagementSchema) });
+/** POST /api/workspaces/:workspaceId/engagements */
+export const createEngagementSchema = z.strictObject({
+  name: titleSchema,
+  summary: z.string().trim().max(200, 'expected at most 200 characters').optional(),
+});
+/** PATCH /api/engagements/:engagementId */
+export const changeEngagementSchema = z.strictObject({
+  name: titleSchema.optional(),
+  summary: z.string().trim().max(200, 'expected at most 200 characters').optional(),
+  archived: z.boolean().optional(),
+});
+
+export const demoDesigns = ['fault-free', 'planted-faults'] as const;
+/** POST /api/engagements/:engagementId/designs */
+export const createDesignSchema = z.strictObject({
+  title: titleSchema,
+  from: z.discriminatedUnion('kind', [
+    z.strictObject({ kind: z.literal('empty') }),
+    z.strictObject({ kind: z.literal('demo'), demo: z.enum(demoDesigns) }),
+    z.strictObject({ kind: z.literal('copy'), designId: z.string() }),
+    // The design's own JSON; read by the engine, every problem named.
+    z.strictObject({ kind: z.literal('document'), document: z.unknown() }),
+  ]),
+});
+export type CreateDesign = z.infer<typeof createDesignSchema>;
+/** PATCH /api/designs/:designId */
+export const changeDesignSchema = z.strictObject({
+  title: titleSchema.optional(),
+  archived: z.boolean().optional(),
+});
+
+/** GET /api/designs/:designId */
+export const openDesignSchema = z.object({
+  summary: designSummarySchema,
+  engagementName: z.string(),
+  workspaceId: z.string(),
+  actions: z.array(z.enum(actions)),
+  sequence: z.int(),
+  /** The engine's document; parse with parseDesign. */
+  document: z.unknown(),
+});
+export type OpenDesign = z.infer<typeof openDesignSchema>;
+
+/** A JSON Merge Patch (RFC 7396) on the document. */
+const patchSchema = z.record(z.string(), z.unknown());
+
+export const loggedPatchSchema = z.object({
+  sequence: z.int(),
+  /** Made by the client, unique: the same edit sent twice is applied once. */
+  editId: z.string(),
+  by: z.string().nullable(),
+  at: z.iso.datetime(),
+  patch: patchSchema,
+  /** True for the removal of entries whose required reference vanished when two people's patches met. */
+  repair: z.boolean(),
+});
+export type LoggedPatch = z.infer<typeof loggedPatchSchema>;
+
+/** POST /api/designs/:designId/patches: edits in order, made on top of `baseSequence`. */
+export const savePatchesSchema = z.strictObject({
+  baseSequence: z.int().min(0, 'expected the sequence number that the edits were made on'),
+  edits: z
+    .array(z.strictObject({ editId: z.uuid('expected a UUID'), patch: patchSchema }))
+    .min(1, 'expected at least one edit')
+    .max(1000, 'expected at most 1,000 edits in one request'),
+});
+/** Its answer: everything logged after `baseSequence`, the sender's own edits included, in order. */
+export const savedPatchesSchema = z.object({
+  sequence: z.int(),
+  patches: z.array(loggedPatchSchema),
+  counts: countsSchema,
+});
+/** GET /api/designs/:designId/patches?after=N */
+export const patchListSchema = z.object({ sequence: z.int(), patches: z.array(loggedPatchSchema) });
+export type SavedPatches = z.infer<typeof savedPatchesSchema>;

@@ -1,0 +1,68 @@
+import { z } from 'zod';
+
+export const roles = ['owner', 'architect', 'reviewer', 'presales', 'installer'] as const;
+export type Role = (typeof roles)[number];
+export const roleSchema = z.enum(roles);
+
+/** What a person may do in a workspace; the server's permission table says which role may do what. */
+export const actions = [
+  'workspace.read',
+  'engagement.create',
+  'engagement.edit',
+  'design.read',
+  'design.create',
+  'design.edit',
+  'design.archive',
+] as const;
+export type Action = (typeof actions)[number];
+
+export const membershipSchema = z.object({
+  workspaceId: z.string(),
+  workspaceName: z.string(),
+  role: roleSchema,
+  actions: z.array(z.enum(actions)),
+});
+export const personSchema = z.object({
+  id: z.string(),
+  name: z.string(),
+  email: z.string(),
+  initials: z.string(),
+});
+export type Person = z.infer<typeof personSchema>;
+export type Membership = z.infer<typeof membershipSchema>;
+
+/** GET /api/session: who is signed in, and what every changing request must carry as X-CSRF-Token. */
+export const sessionSchema = z.object({
+  person: personSchema.nullable(),
+  memberships: z.array(membershipSchema),
+  csrfToken: z.string(),
+  /** While the demo is on: who can be signed in as with one click. */
+  demo: z.array(z.object({ role: roleSchema, name: z.string(), email: z.string() })),
+});
+export type Session = z.infer<typeof sessionSchema>;
+
+const emailSchema = z
+  .string()
+  .trim()
+  .toLowerCase()
+  .max(254, 'expected at most 254 characters')
+  .pipe(z.email('expected an e-mail address such as r.halloran@ternwick.example'));
+const newPasswordSchema = z
+  .string()
+  .min(12, 'expected at least 12 characters')
+  .max(200, 'expected at most 200 characters');
+
+/** POST /api/session */
+export const signInSchema = z.strictObject({
+  email: emailSchema,
+  password: z.string().min(1, 'expected a password').max(200, 'expected at most 200 characters'),
+  keep: z.boolean().optional(),
+});
+/** POST /api/session/demo */
+export const demoSignInSchema = z.strictObject({ role: roleSchema });
+/** PUT /api/account/password */
+export const changePasswordSchema = z.strictObject({
+  current: z.string().min(1, 'expected your current password').max(200, 'expected at most 200 characters'),
+  next: newPasswordSchema,
+});
+export type SignIn = z.infer<typeof signInSchema>;
