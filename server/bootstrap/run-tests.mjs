@@ -1,0 +1,131 @@
+import { spawn } from 'node:child_process';
+import { readFileSync, rmSync } from 'node:fs';
+import { join } from 'node:path';
+import { ensureChromium } from './chromium.mjs';
+import { ensureDependencies } from './dependencies.mjs';
+import { ensureWritableFolder, projectFolder, stateFolder } from './folders.mjs';
+import { acquireCluster } from './postgres-cluster.mjs';
+import { withSetupLock } from './setup-lock.mjs';
+import { SetupProblem } from './setup-problem.mjs';
+import { closingLine, countVitestReport } from './test-count.mjs';
+import { chooseSteps, vitestCommand } from './test-steps.mjs';
+
+/**
+ * @typedef {import('./lifetime.mjs').Lifetime} Lifetime
+ * @typedef {import('./test-count.mjs').TestCount} TestCount
+ */
+
+// The slowest step takes a fraction of this; a step that hangs must not hang the run.
+const stepTimeoutMs = 600_000;
+
+const say = (/** @type {string} */ line) => console.log(line);
+
+/**
+ * Sets up whatever is missing, runs the chosen steps, and prints the count of all of them last.
+ * @param {Lifetime} lifetime
+ * @param {readonly string[]} args
+ * @returns {Promise<string | null>} an empty text when a step failed, null when all passed
+ */
+export async function runTests(lifetime, args) {
+  const chosen = chooseSteps(args);
+  if (!chosen.ok) return chosen.problem;
+  /** @type {TestCount[]} */
+  const counts = [];
+  try {
+    await withSetupLock(say, () => ensureDependencies({ say, signal: lifetime.signal }));
+    for (const step of chosen.steps) {
+      say(`\n── ${step.name}`);
+      const startedAt = Date.now();
+      const count = await runStep(lifetime, step, chosen.rest);
+      counts.push(count);
+      const note = count.note === undefined ? '' : `: ${count.note}`;
+      const seconds = ((Date.now() - startedAt) / 1000).toFixed(1);
+      say(`── ${step.name}: ${count.passed} passed, ${count.failed} failed in ${seconds} s${note}`);
+    }
+  } catch (error) {
+    if (!(error instanceof SetupProblem)) throw error;
+    say(error.message);
+    counts.push({ passed: 0, failed: 1 });
+  }
+  await lifetime.stopAll();
+  say(`\n${closingLine(counts)}`);
+  return counts.some((count) => count.failed > 0) ? '' : null;
+}
+
+/**
+ * @param {Lifetime} lifetime
+ * @param {import('./test-steps.mjs').TestStep} step
+ * @param {readonly string[]} rest
+ * @returns {Promise<TestCount>}
+ */
+async function runStep(lifetime, step, rest) {
+  const { signal } = lifetime;
+  try {
+    if (step.needsDatabase) await holdDatabase(lifetime);
+    if (step.needsBrowser) await withSetupLock(say, () => ensureChromium({ say, signal }));
+  } catch (error) {
+    if (!(error instanceof SetupProblem)) throw error;
+    return { passed: 0, failed: 1, note: error.message };
+  }
+  if (step.vitest === null) return runChecks(step.checks, signal);
+  const report = join(ensureWritableFolder(join(stateFolder, 'test')), `${step.name}.json`);
+  rmSync(report, { force: true });
+  const exitCode = await runNode(vitestCommand(report, step.vitest, rest), signal);
+  return countVitestReport(readReport(report), exitCode);
+}
+
+/**
+ * @param {readonly (readonly string[])[]} checks
+ * @param {AbortSignal} signal
+ * @returns {Promise<TestCount>}
+ */
+async function runChecks(checks, signal) {
+  let failures = 0;
+  for (const check of checks) if ((await runNode(check, signal)) !== 0) failures += 1;
+  return failures === 0 ? { passed: 1, failed: 0 } : { passed: 0, failed: 1 };
+}
+
+/** @type {WeakSet<Lifetime>} */
+const holdsDatabase = new WeakSet();
+
+/**
+ * Keeps the tests' database server running from the first step that needs it to the end of the run.
+ * @param {Lifetime} lifetime
+ */
+async function holdDatabase(lifetime) {
+  if (process.env['TEST_DATABASE_URL'] || holdsDatabase.has(lifetime)) return;
+  const cluster = await acquireCluster({ name: 'test', isDurable: false, say, signal: lifetime.signal });
+  holdsDatabase.add(lifetime);
+  lifetime.onEnd(() => cluster.release());
+}
+
+/**
+ * @param {readonly string[]} args
+ * @param {AbortSignal} signal
+ * @returns {Promise<number | null>} null when it was killed
+ */
+function runNode(args, signal) {
+  return new Promise((resolve, reject) => {
+    const child = spawn(process.execPath, args, {
+      cwd: projectFolder,
+      env: { ...process.env, NODE_ENV: 'test' },
+      stdio: ['ignore', 'inherit', 'inherit'],
+      timeout: stepTimeoutMs,
+      signal,
+    });
+    child.once('error', reject);
+    child.once('exit', resolve);
+  });
+}
+
+/**
+ * @param {string} file
+ * @returns {import('./test-count.mjs').VitestReport | null}
+ */
+function readReport(file) {
+  try {
+    return JSON.parse(readFileSync(file, 'utf8'));
+  } catch {
+    return null;
+  }
+}
