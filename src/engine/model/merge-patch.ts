@@ -20,12 +20,11 @@ export const sameJson = (a: unknown, b: unknown): boolean => {
   );
 };
 
-const withKey = (bag: Bag, key: string, value: unknown): Bag => {
-  const copy: Record<string, unknown> = { ...bag };
-  // A plain assignment to "__proto__" would set the prototype instead of a member.
-  Object.defineProperty(copy, key, { value, enumerable: true, writable: true, configurable: true });
-  return copy;
-};
+// Object.fromEntries and a spread make own members of any name; a plain assignment to "__proto__" would set the prototype.
+const withKey = (bag: Bag, key: string, value: unknown): Bag => ({
+  ...bag,
+  ...Object.fromEntries([[key, value]]),
+});
 
 const mergeInto = (target: unknown, patch: unknown): unknown => {
   if (!isBag(patch)) return sameJson(target, patch) ? target : patch;
@@ -56,20 +55,20 @@ const undoOf = (before: unknown, patch: unknown): unknown => {
   if (!isBag(before)) return before;
   // An array or a scalar took the object's place: a merge patch onto it starts from nothing, so the whole object comes back.
   if (!isBag(patch)) return before;
-  const undo: Record<string, unknown> = {};
+  const undo: [string, unknown][] = [];
   for (const key of Object.keys(patch)) {
     const had = Object.hasOwn(before, key);
     const old = before[key];
     if (!had) {
-      if (patch[key] !== null) undo[key] = null;
+      if (patch[key] !== null) undo.push([key, null]);
     } else if (isBag(old) && isBag(patch[key])) {
       const inner = undoOf(old, patch[key]) as Bag;
-      if (Object.keys(inner).length > 0) undo[key] = inner;
+      if (Object.keys(inner).length > 0) undo.push([key, inner]);
     } else if (!sameJson(old, patch[key])) {
-      undo[key] = old;
+      undo.push([key, old]);
     }
   }
-  return undo;
+  return Object.fromEntries(undo);
 };
 
 /** The patch that takes `applyPatch(document, patch)` back to `document`. */
@@ -81,22 +80,22 @@ export const inversePatch = (document: object, patch: MergePatch): MergePatch =>
  * not looked into. Neither document holds null, as in every design.
  */
 export const diffPatch = (before: object, after: object): MergePatch => {
-  const patch: Record<string, unknown> = {};
+  const patch: [string, unknown][] = [];
   const old = before as Bag;
   const now = after as Bag;
-  for (const key of Object.keys(old)) if (!Object.hasOwn(now, key)) patch[key] = null;
+  for (const key of Object.keys(old)) if (!Object.hasOwn(now, key)) patch.push([key, null]);
   for (const key of Object.keys(now)) {
     const was = own(old, key);
     const is = now[key];
     if (was === is) continue;
     if (isBag(was) && isBag(is)) {
       const inner = diffPatch(was, is);
-      if (Object.keys(inner).length > 0) patch[key] = inner;
+      if (Object.keys(inner).length > 0) patch.push([key, inner]);
     } else if (!sameJson(was, is)) {
-      patch[key] = is;
+      patch.push([key, is]);
     }
   }
-  return patch as MergePatch;
+  return Object.fromEntries(patch) as MergePatch;
 };
 
 /** One patch that does what the given ones do in turn to this document. */
