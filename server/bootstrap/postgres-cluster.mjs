@@ -14,7 +14,7 @@ import { freeLoopbackPort } from './free-port.mjs';
 import { ensureDatabase, newCredentials, readCredentials, waitUntilAccepting } from './postgres-access.mjs';
 import { clusterFolder } from './postgres-folder.mjs';
 import { ensurePostgresPrograms, postgresUser, runAsPostgres } from './postgres-programs.mjs';
-import { identityOf, isRunning, processesWorkingIn, processStartTicks, worksIn } from './processes.mjs';
+import { identityOf, isRunning, processesWorkingIn, worksIn } from './processes.mjs';
 import { withProcessLock } from './process-lock.mjs';
 import { lastLines } from './run-command.mjs';
 import { SetupProblem } from './setup-problem.mjs';
@@ -130,8 +130,10 @@ async function ensureStarted(place, say) {
     if (await waitUntilAccepting(readCredentials(folder), running.port)) return running;
     await stop(place);
   } else {
-    removeForeignPidFile(data);
     await waitForOrphans(data);
+    // PostgreSQL takes the pid file of a server that was killed for a running one when that id belongs to another process by
+    // now, or to the killed one that nobody has collected yet. With nobody at work in the folder it means nothing.
+    rmSync(join(data, 'postmaster.pid'), { force: true });
   }
   say('Starting PostgreSQL');
   return start(place);
@@ -207,15 +209,6 @@ function runningServer(data) {
   const pid = Number(lines[0]);
   const port = Number(lines[3]);
   return pid > 0 && port > 0 && worksIn(pid, data) ? { pid, port } : null;
-}
-
-/**
- * PostgreSQL removes the pid file of a server that crashed, except when that process id now belongs to some other process.
- * @param {string} data
- */
-function removeForeignPidFile(data) {
-  const pid = Number(pidFileLines(data)[0]);
-  if (pid > 0 && processStartTicks(pid) !== null && !worksIn(pid, data)) rmSync(join(data, 'postmaster.pid'));
 }
 
 /**
