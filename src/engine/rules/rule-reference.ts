@@ -1,0 +1,35 @@
+import type { Severity, Source } from './finding.ts';
+import { rules } from './index.ts';
+
+/** What a reader of the reference page learns of a check. */
+export interface RuleReference {
+  readonly id: string;
+  readonly title: string;
+  readonly severity: Severity;
+  readonly why: string;
+  readonly seen: string;
+  readonly sources: readonly Source[];
+  readonly canFix: boolean;
+}
+
+/** Every check of the catalogue, by id. */
+export const ruleReference = (): readonly RuleReference[] =>
+  rules
+    .map(({ id, title, severity, why, seen, sources, canFix }) => ({
+      id,
+      title,
+      severity,
+      why,
+      seen,
+      sources,
+      canFix,
+    }))
+    .sort((a, b) => (a.id < b.id ? -1 : 1));
+
+/** A source as a reader sees it. */
+export const sourceText = (source: Source): string =>
+  typeof source === 'string'
+    ? source
+    : source.clause === undefined
+      ? source.document
+      : `${source.document}, ${source.clause}`;

@@ -1,0 +1,156 @@
+import { describe, expect, it } from 'vitest';
+import { noContext, type CheckContext } from '#engine/rules/check-context.ts';
+import type { Rule } from '#engine/rules/define-rule.ts';
+import type { Finding, Mark, Severity } from '#engine/rules/finding.ts';
+import { fixesFor } from '#engine/rules/fixes-for.ts';
+import { rules } from '#engine/rules/index.ts';
+import { runRules, runTheseRules } from '#engine/rules/run-rules.ts';
+import type { Design, ElementRef } from '#engine/model/design.ts';
+import { applyPatch, inversePatch } from '#engine/model/merge-patch.ts';
+import { parseDesign } from '#engine/model/parse-design.ts';
+
+export interface ExpectedFinding {
+  readonly sentence: string;
+  readonly words?: string;
+  readonly severity?: Severity;
+  /** All elements as `collection/id` or `devices/id/port`, in order. */
+  readonly elements?: readonly string[];
+  /** All marked fields as `collection/id: path.to.field`. */
+  readonly properties?: readonly string[];
+  readonly mark?: Mark;
+  /** Labels of everything that is offered, in order. */
+  readonly fixes: readonly string[];
+}
+export interface RuleCases {
+  readonly context?: CheckContext;
+  readonly accepted: { readonly [sentence: string]: Design };
+  readonly rejected: {
+    readonly [sentence: string]: {
+      readonly design: Design;
+      readonly context?: CheckContext;
+      readonly findings: readonly ExpectedFinding[];
+    };
+  };
+}
+
+const freezeDeep = <T>(value: T): T => {
+  if (typeof value === 'object' && value !== null && !Object.isFrozen(value)) {
+    Object.freeze(value);
+    Object.values(value).forEach(freezeDeep);
+  }
+  return value;
+};
+
+/** The same document with the keys of every object the other way round. */
+const reversed = <T>(value: T): T => {
+  if (Array.isArray(value)) return value.map(reversed) as T;
+  if (typeof value !== 'object' || value === null) return value;
+  return Object.fromEntries(
+    Object.entries(value)
+      .reverse()
+      .map(([key, item]) => [key, reversed(item)]),
+  ) as T;
+};
+
+const refText = (ref: ElementRef): string =>
+  [ref.collection, ref.id, ref.port, ref.member].filter((part) => part !== undefined).join('/');
+
+const summary = (finding: Finding, expected: ExpectedFinding, fixes: readonly string[]): ExpectedFinding => ({
+  sentence: finding.sentence,
+  fixes,
+  ...(expected.words === undefined ? {} : { words: finding.words }),
+  ...(expected.severity === undefined ? {} : { severity: finding.severity }),
+  ...(expected.elements === undefined ? {} : { elements: finding.elements.map(refText) }),
+  ...(expected.properties === undefined
+    ? {}
+    : { properties: finding.properties.map(({ ref, path }) => `${refText(ref)}: ${path.join('.')}`) }),
+  ...(expected.mark === undefined ? {} : { mark: finding.mark }),
+});
+
+const entryOf = (design: Design, ref: ElementRef): unknown => {
+  const entry = (design[ref.collection] as { readonly [id: string]: unknown })[ref.id];
+  if (ref.port === undefined) return entry;
+  return design.devices[ref.id]?.ports[ref.port];
+};
+
+const expectWellFormed = (rule: Rule, design: Design, findings: readonly Finding[]): void => {
+  expect(new Set(findings.map((finding) => finding.key)).size, 'keys are unique').toBe(findings.length);
+  for (const finding of findings) {
+    expect(JSON.parse(JSON.stringify(finding)), 'survives JSON').toEqual(finding);
+    expect(finding.rule).toBe(rule.id);
+    expect(finding.key.startsWith(`${rule.id} `), `key ${finding.key}`).toBe(true);
+    expect(finding.sentence, 'a sentence in sentence case without a final stop').toMatch(
+      /^[^a-z].*[^.]$|^[a-z0-9]+[-_.0-9].*[^.]$/,
+    );
+    expect(finding.words.split(' ').length, `2 or 3 words: ${finding.words}`).toBeLessThanOrEqual(3);
+    expect(finding.elements.length).toBeGreaterThan(0);
+    for (const ref of finding.elements) expect(entryOf(design, ref), `${refText(ref)} exists`).toBeDefined();
+    for (const { ref, path } of finding.properties) {
+      expect(entryOf(design, ref), `${refText(ref)} exists`).toBeDefined();
+      expect(path.length).toBeGreaterThan(0);
+    }
+  }
+};
+
+/** What a fresh copy gives: nothing of it is in any memory. */
+const fresh = (design: Design): Design => freezeDeep(structuredClone(design));
+
+const expectCure = (design: Design, finding: Finding, context: CheckContext): readonly string[] => {
+  const blocking = (findings: readonly Finding[]): string[] =>
+    findings.filter((other) => other.severity === 'blocking').map((other) => other.key);
+  const before = blocking(runRules(design, context));
+  const fixes = fixesFor(design, finding, context);
+  expect(new Set(fixes.map((fix) => fix.id)).size, 'ids of fixes are unique').toBe(fixes.length);
+  for (const fix of fixes) {
+    const patched = applyPatch(design, fix.patch);
+    expect(parseDesign(patched), `${fix.label}: a valid design`).toMatchObject({ ok: true });
+    const after = runRules(fresh(patched), context);
+    expect(
+      after.map((other) => other.key),
+      `${fix.label}: the finding is gone`,
+    ).not.toContain(finding.key);
+    expect(before, `${fix.label}: nothing new blocks`).toEqual(expect.arrayContaining(blocking(after)));
+    expect(runRules(patched, context), `${fix.label}: memory and a fresh run agree`).toEqual(after);
+    expect(applyPatch(patched, inversePatch(design, fix.patch)), `${fix.label}: can be undone`).toEqual(
+      design,
+    );
+    expect(fix.sentence, `${fix.label}: a whole sentence`).toMatch(/^[A-Z].*\.$/);
+  }
+  return fixes.map((fix) => fix.label);
+};
+
+/**
+ * Runs a rule over accepted and rejected designs. Unasked it also checks that the design was not changed, that a second
+ * run and one on a design with its keys in another order agree, that memory never gives a stale answer after a fix, and
+ * that every fix applies, cures, adds nothing that blocks and can be undone.
+ */
+export const testRule = (rule: Rule, cases: RuleCases): void => {
+  describe(rule.id, () => {
+    it('stands in the catalogue', () => {
+      expect(rules).toContain(rule);
+    });
+
+    for (const [sentence, given] of Object.entries(cases.accepted))
+      it(`accepts ${sentence}`, () => {
+        const found = runTheseRules([rule], fresh(given), cases.context);
+        expect(found.map((finding) => finding.sentence)).toEqual([]);
+      });
+
+    for (const [sentence, { design: given, findings: expected, ...rest }] of Object.entries(cases.rejected))
+      it(`finds ${sentence}`, () => {
+        const context = rest.context ?? cases.context ?? noContext;
+        const design = fresh(given);
+        const found = runTheseRules([rule], design, context);
+        expectWellFormed(rule, design, found);
+        expect(runTheseRules([rule], fresh(design), context), 'a second run agrees').toEqual(found);
+        expect(
+          runTheseRules([rule], freezeDeep(reversed(design)), context),
+          'the order of keys does not matter',
+        ).toEqual(found);
+        const fixes = found.map((finding) => expectCure(design, finding, context));
+        expect(
+          found.map((finding, i) => summary(finding, expected[i] ?? { sentence: '', fixes: [] }, fixes[i]!)),
+        ).toEqual(expected);
+      });
+  });
+};
