@@ -1,0 +1,106 @@
+import { describe, expect, it } from 'vitest';
+import { applyPatch } from '#engine/model/merge-patch.ts';
+import { indexNetwork } from '#engine/network/index-network.ts';
+import { plugKey, portVlanKey, segmentsAt, siteVlanKey } from '#engine/network/network.ts';
+import { hubDesign, pairDesign } from '../../support/designs.ts';
+
+describe('indexNetwork', () => {
+  it('finds what hangs on a device, a port, an endpoint and an association', () => {
+    const network = indexNetwork(hubDesign(2, { segments: ['a', 'b'] }));
+    expect(network.devicesBySite.get('s1')).toEqual(['fw-s1', 'h-s1-a', 'h-s1-b', 'sw-s1']);
+    expect(network.hostsBySegment.get('b')).toEqual(['h-s0-b', 'h-s1-b', 'h-s2-b']);
+    expect(network.landingsByTransport.get('coast')).toEqual(['ld-s0-coast', 'ld-s1-coast', 'ld-s2-coast']);
+    expect(network.tunnelsByEndpoint.get('lo-s1')).toEqual([
+      { tunnel: 'tn-s0-s1-a', end: 'b' },
+      { tunnel: 'tn-s0-s1-b', end: 'b' },
+    ]);
+    expect(network.tunnelsByAssociation.get('as-s0-s2')).toEqual(['tn-s0-s2-a', 'tn-s0-s2-b']);
+    expect(network.forwardersByDevice.get('fw-s0')).toEqual(['br-s0-a', 'br-s0-b']);
+    expect(network.circuitsByTunnel.get('tn-s0-s1-a')?.map(({ forwarder }) => forwarder)).toEqual([
+      'br-s0-a',
+      'br-s1-a',
+    ]);
+    expect(network.circuitsByPortVlan.get(portVlanKey('fw-s1', 'lan1', 120))).toMatchObject([
+      { forwarder: 'br-s1-b', id: 'access' },
+    ]);
+    expect(network.segmentsBySiteVlan.get(siteVlanKey('s2', 110))).toEqual(['a']);
+    expect(segmentsAt(network, 's2', 999)).toEqual([]);
+    expect(network.cablesByDevice.get('sw-s0')).toHaveLength(3);
+  });
+
+  it('gives the same network for the same facts, wherever things stand on the sheet', () => {
+    const design = pairDesign();
+    const network = indexNetwork(design);
+    expect(indexNetwork(design)).toBe(network);
+    const moved = applyPatch(design, { layout: { devices: { 'fw-s0': { x: 40, y: 80 } } } });
+    expect(moved).not.toBe(design);
+    expect(indexNetwork(moved)).toBe(network);
+    const renamed = applyPatch(design, { tunnels: { 'tn-s0-s1-a': { name: 'west' } } });
+    expect(indexNetwork(renamed)).not.toBe(network);
+    expect(indexNetwork(renamed).design.tunnels['tn-s0-s1-a']?.name).toBe('west');
+  });
+
+  it('reads the same from a design whose entries come in another order', () => {
+    const design = hubDesign(3, { segments: ['a', 'b'] });
+    const turned = Object.fromEntries(
+      Object.entries(design).map(([key, value]) => [
+        key,
+        typeof value === 'object' ? Object.fromEntries(Object.entries(value).reverse()) : value,
+      ]),
+    ) as typeof design;
+    const [one, other] = [indexNetwork(design), indexNetwork(turned)];
+    expect(JSON.stringify([...other.circuitsByPort])).toBe(JSON.stringify([...one.circuitsByPort]));
+    expect(other.bundles.map(({ cables }) => cables)).toEqual(one.bundles.map(({ cables }) => cables));
+  });
+});
+
+describe('ports and cables as logical ones', () => {
+  const doubled = (aggregation: string | null) =>
+    indexNetwork(
+      applyPatch(pairDesign(), {
+        devices: {
+          'sw-s0': {
+            ports: {
+              p1: { aggregation },
+              p9: { number: 9, role: 'lan', mode: 'trunk', ...(aggregation === null ? {} : { aggregation }) },
+            },
+          },
+          'fw-s0': { ports: { lan1: { aggregation }, lan2: { aggregation } } },
+        },
+        links: {
+          'cb-s0-up2': {
+            kind: 'cable',
+            a: { device: 'fw-s0', port: 'lan2' },
+            b: { device: 'sw-s0', port: 'p9' },
+          },
+        },
+      }),
+    );
+
+  it('counts cables of one aggregation once and leaves others apart', () => {
+    const network = doubled('lag1');
+    const bundle = network.bundleByCable.get('cb-s0-up2')!;
+    expect(bundle).toBe(network.bundleByCable.get('cb-s0-up1'));
+    expect(bundle.cables).toEqual(['cb-s0-up1', 'cb-s0-up2']);
+    expect(network.portGroupByPlug.get(plugKey('sw-s0', 'p9', undefined))?.ports).toEqual(['p1', 'p9']);
+    const apart = doubled(null);
+    expect(apart.bundleByCable.get('cb-s0-up2')).not.toBe(apart.bundleByCable.get('cb-s0-up1'));
+  });
+
+  it('gives each member of a pair its own ports and leaves member links out', () => {
+    const network = indexNetwork(pairDesign({ hub: 'ha-pair' }));
+    expect(network.bundleByCable.has('cb-s0-sync1')).toBe(false);
+    expect(network.bundleByCable.get('cb-s0-up2')?.b).toMatchObject({
+      device: 'fw-s0',
+      member: 2,
+      port: 'lan1',
+    });
+  });
+
+  it('knows a cable in a shut port for dead', () => {
+    const network = indexNetwork(
+      applyPatch(pairDesign(), { devices: { 'sw-s0': { ports: { p1: { shut: true } } } } }),
+    );
+    expect(network.bundleByCable.get('cb-s0-up1')).toMatchObject({ cables: ['cb-s0-up1'], alive: [] });
+  });
+});
