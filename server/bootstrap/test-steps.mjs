@@ -42,7 +42,7 @@ export const testSteps = [
   checks('format', [
     [join('node_modules', 'prettier', 'bin', 'prettier.cjs'), '--check', '--log-level=warn', '.'],
   ]),
-  tests('layout', ['--project=engine', '--dir=tests/layout']),
+  tests('layout', ['--project=engine', 'tests/layout/']),
   tests('engine', ['--project=engine', '--exclude=tests/layout/**']),
   tests('server', ['--project=server'], { needsDatabase: true }),
   tests('client', ['--project=client']),
