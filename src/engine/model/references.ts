@@ -1,12 +1,14 @@
 import type { Collection, Design, Entry } from './design.ts';
 import { collections } from './design.ts';
 import type { MergePatch } from './merge-patch.ts';
-import { applyPatch, isEmptyPatch, patchAt } from './merge-patch.ts';
+import { applyPatch, diffPatch, patchAt } from './merge-patch.ts';
 
 /** Something an entry names elsewhere in the design. */
 export interface Reference {
   /** Keys from the document's root to the value that names the target. */
   readonly path: readonly string[];
+  /** The key that holds the target's id, where the value at `path` is an object. */
+  readonly within?: 'device' | 'id';
   readonly target: Collection;
   readonly id: string;
   /** With a device as target: the port that must be there too. */
@@ -57,7 +59,8 @@ const listers: { readonly [C in Collection]: Lister<C> } = {
     link.kind === 'cable'
       ? ends.map((end) => ({
           path: [...at, end],
-          target: 'devices',
+          within: 'device' as const,
+          target: 'devices' as const,
           id: link[end].device,
           port: link[end].port,
           removes: at,
@@ -127,6 +130,7 @@ const listers: { readonly [C in Collection]: Lister<C> } = {
       : [
           {
             path: [...at, 'target'],
+            within: 'id',
             target: note.target.collection,
             id: note.target.id,
             removes: [...at, 'target'],
@@ -177,42 +181,20 @@ export const resolves = (design: Design, reference: Reference): boolean => {
  * the same patch, whoever computes it.
  */
 export const danglingPatch = (design: Design): MergePatch => {
-  let total: MergePatch = {};
   let current = design;
   for (;;) {
     const dangling = listReferences(current).filter((reference) => !resolves(current, reference));
-    if (dangling.length === 0) return total;
-    let step: MergePatch = {};
+    if (dangling.length === 0) return diffPatch(design, current);
     for (const reference of dangling)
-      if (!isGone(step, reference.removes)) step = mergePatches(step, patchAt(reference.removes, null));
-    current = applyPatch(current, step);
-    total = mergePatches(total, step);
-    if (isEmptyPatch(step)) return total;
+      if (holds(current, reference.removes)) current = applyPatch(current, patchAt(reference.removes, null));
   }
 };
 
-const isGone = (patch: MergePatch, path: readonly string[]): boolean => {
-  let at: unknown = patch;
-  for (const key of path) {
-    if (at === null) return true;
-    if (typeof at !== 'object') return false;
-    at = (at as Record<string, unknown>)[key];
-    if (at === undefined) return false;
-  }
-  return at === null;
-};
-
-/** Both patches hold nothing but removals, so that joining them by key is exact. */
-const mergePatches = (a: MergePatch, b: MergePatch): MergePatch => {
-  const result: Record<string, unknown> = { ...a };
-  for (const [key, value] of Object.entries(b)) {
-    const mine = result[key];
-    result[key] =
-      mine !== null && value !== null && typeof mine === 'object' && typeof value === 'object'
-        ? mergePatches(mine as MergePatch, value as MergePatch)
-        : mine === null
-          ? null
-          : value;
-  }
-  return result as MergePatch;
-};
+const holds = (document: unknown, path: readonly string[]): boolean =>
+  path.reduce<unknown>(
+    (at, key) =>
+      typeof at === 'object' && at !== null && Object.hasOwn(at, key)
+        ? (at as Record<string, unknown>)[key]
+        : undefined,
+    document,
+  ) !== undefined;

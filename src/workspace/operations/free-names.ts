@@ -1,0 +1,62 @@
+import ipaddr from 'ipaddr.js';
+import type { Design } from '../../engine/model/design.ts';
+
+const lowestFree = (taken: (n: number) => boolean, from: number): number => {
+  let n = from;
+  while (taken(n)) n += 1;
+  return n;
+};
+
+/** The first of `base`, `base-2` (or `base-1`, `base-2` when `numbered`) that nothing in the collection is called. */
+export const freeName = (
+  entries: { readonly [id: string]: { readonly name?: string } },
+  base: string,
+  numbered = true,
+): string => {
+  const names = new Set(Object.values(entries).map((entry) => entry.name));
+  if (!numbered && !names.has(base)) return base;
+  const join = /\d$/.test(base) ? '-' : base.includes(' ') || /^[A-Z]/.test(base) ? ' ' : '-';
+  return `${base}${join}${lowestFree((n) => names.has(`${base}${join}${n}`), numbered ? 1 : 2)}`;
+};
+
+/** A, B … Z, then AA, AB …, the first that no segment has. */
+export const freeLetter = (design: Design): string => {
+  const taken = new Set(Object.values(design.segments).map((segment) => segment.letter));
+  const letters = (n: number): string =>
+    n < 26 ? String.fromCharCode(65 + n) : letters(Math.floor(n / 26) - 1) + letters(n % 26);
+  return letters(lowestFree((n) => taken.has(letters(n)), 0));
+};
+
+/** The lowest VLAN from 10 in tens that no segment uses at any site. */
+export const freeVlan = (design: Design): number => {
+  const taken = new Set(
+    Object.values(design.segments).flatMap((segment) => Object.values(segment.sites).map((at) => at.vlan)),
+  );
+  return 10 * lowestFree((n) => taken.has(n * 10), 11);
+};
+
+/** The lowest VNI from 10001 that no end of a tunnel has, so that every tunnel gets a number of its own. */
+export const freeVni = (design: Design): number => {
+  const taken = new Set(Object.values(design.tunnels).flatMap((tunnel) => [tunnel.a.vni, tunnel.b.vni]));
+  return lowestFree((n) => taken.has(n), 10_001);
+};
+
+const hostOf = (cidr: string): string => cidr.split('/')[0]!;
+
+/** The lowest loopback address from 10.255.0.1 that no endpoint has and that no segment's subnet holds. */
+export const freeLoopback = (design: Design): string => {
+  const taken = new Set(
+    Object.values(design.endpoints).flatMap((endpoint) =>
+      endpoint.ipv4 === undefined ? [] : [hostOf(endpoint.ipv4)],
+    ),
+  );
+  const subnets = Object.values(design.segments)
+    .flatMap((segment) => Object.values(segment.sites).flatMap((at) => at.subnets ?? []))
+    .filter((subnet) => !subnet.includes(':'))
+    .map((subnet) => ipaddr.IPv4.parseCIDR(subnet));
+  const address = (n: number): string => `10.255.${Math.floor(n / 254) % 256}.${(n % 254) + 1}`;
+  const clash = (n: number): boolean =>
+    n < 65_000 &&
+    (taken.has(address(n)) || subnets.some((subnet) => ipaddr.IPv4.parse(address(n)).match(subnet)));
+  return `${address(lowestFree(clash, 0))}/32`;
+};
