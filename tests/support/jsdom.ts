@@ -1,13 +1,34 @@
 import '@testing-library/jest-dom/vitest';
 import { cleanup } from '@testing-library/react';
-import { afterEach } from 'vitest';
+import { afterEach, vi } from 'vitest';
 
-// jsdom has no layout: the canvas library needs these to exist.
-class NoResizeObserver implements ResizeObserver {
+afterEach(() => {
+  cleanup();
+  window.localStorage.clear();
+});
+
+// What jsdom lacks and the components' libraries ask for. None of it measures anything here.
+class UnmeasuredObserver implements ResizeObserver {
   observe(): void {}
   unobserve(): void {}
   disconnect(): void {}
 }
-globalThis.ResizeObserver ??= NoResizeObserver;
-
-afterEach(() => cleanup());
+class IdentityMatrix {
+  readonly m22 = 1;
+}
+vi.stubGlobal('ResizeObserver', UnmeasuredObserver);
+vi.stubGlobal('DOMMatrixReadOnly', IdentityMatrix);
+Element.prototype.scrollIntoView = () => undefined;
+Element.prototype.hasPointerCapture = () => false;
+Element.prototype.setPointerCapture = () => undefined;
+Element.prototype.releasePointerCapture = () => undefined;
+window.matchMedia = (media) => ({
+  media,
+  matches: false,
+  onchange: null,
+  addEventListener: () => undefined,
+  removeEventListener: () => undefined,
+  addListener: () => undefined,
+  removeListener: () => undefined,
+  dispatchEvent: () => false,
+});

@@ -1,0 +1,101 @@
+import { DropdownMenu as Primitive } from 'radix-ui';
+import { Fragment, type ReactElement, type ReactNode } from 'react';
+import { classNames } from '../lib/class-names.ts';
+import { Icon } from './icon.tsx';
+
+export interface MenuAction {
+  readonly label: string;
+  readonly onSelect: () => void;
+  /** Stands at the right, such as a shortcut. */
+  readonly detail?: string;
+  readonly danger?: boolean;
+  readonly disabled?: boolean;
+}
+
+export interface MenuChoice {
+  readonly label: string;
+  readonly value: string;
+  readonly onChange: (value: string) => void;
+  readonly options: readonly { readonly value: string; readonly label: string }[];
+}
+
+/** A group of a menu: things to do, or one of several to choose. */
+export type MenuGroup = { readonly actions: readonly MenuAction[] } | { readonly choice: MenuChoice };
+
+interface MenuProps {
+  /** The button that opens it. */
+  readonly trigger: ReactElement;
+  readonly groups: readonly MenuGroup[];
+  /** Stands above the groups; takes no part in the keyboard's way through the menu. */
+  readonly heading?: ReactNode;
+  readonly align?: 'start' | 'end';
+}
+
+const itemLook = classNames(
+  'relative flex min-h-28 cursor-pointer items-center gap-12 px-12 text-base text-ink outline-none select-none',
+  'data-highlighted:bg-strip data-highlighted:text-strip-ink data-disabled:cursor-default data-disabled:text-ink-3',
+);
+
+/** A list of things to do that opens from a button. Groups are parted by a rule. */
+export function Menu({ trigger, groups, heading, align = 'start' }: MenuProps) {
+  return (
+    // Not modal: a modal menu would put a style element into the page, which the content security policy refuses.
+    <Primitive.Root modal={false}>
+      <Primitive.Trigger asChild>{trigger}</Primitive.Trigger>
+      <Primitive.Portal>
+        <Primitive.Content
+          align={align}
+          sideOffset={5}
+          collisionPadding={8}
+          className="z-50 max-h-(--radix-dropdown-menu-content-available-height) min-w-180 overflow-y-auto border-1.5 border-ink bg-field py-4 shadow-sheet outline-none"
+        >
+          {heading !== undefined && <div className="border-b border-rule-2 px-12 pt-6 pb-9">{heading}</div>}
+          {groups.map((group, at) => (
+            <Fragment key={'choice' in group ? group.choice.label : (group.actions[0]?.label ?? at)}>
+              {at > 0 && <Primitive.Separator className="my-4 h-px bg-rule-2" />}
+              {'choice' in group ? (
+                <MenuChoiceItems choice={group.choice} />
+              ) : (
+                group.actions.map((action) => (
+                  <Primitive.Item
+                    key={action.label}
+                    disabled={action.disabled}
+                    onSelect={action.onSelect}
+                    className={classNames(itemLook, action.danger && 'text-red')}
+                  >
+                    <span className="flex-1">{action.label}</span>
+                    {action.detail !== undefined && (
+                      <span className="text-note opacity-80">{action.detail}</span>
+                    )}
+                  </Primitive.Item>
+                ))
+              )}
+            </Fragment>
+          ))}
+        </Primitive.Content>
+      </Primitive.Portal>
+    </Primitive.Root>
+  );
+}
+
+function MenuChoiceItems({ choice }: { readonly choice: MenuChoice }) {
+  return (
+    <>
+      <Primitive.Label className="px-12 pt-4 pb-2 text-label text-ink-3">{choice.label}</Primitive.Label>
+      <Primitive.RadioGroup value={choice.value} onValueChange={choice.onChange}>
+        {choice.options.map((option) => (
+          <Primitive.RadioItem
+            key={option.value}
+            value={option.value}
+            className={classNames(itemLook, 'pl-32')}
+          >
+            <Primitive.ItemIndicator className="absolute left-11">
+              <Icon name="check" size={14} />
+            </Primitive.ItemIndicator>
+            {option.label}
+          </Primitive.RadioItem>
+        ))}
+      </Primitive.RadioGroup>
+    </>
+  );
+}

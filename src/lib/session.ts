@@ -1,0 +1,58 @@
+import { queryOptions, useQuery, useQueryClient, useMutation } from '@tanstack/react-query';
+import type { Action, Membership, Role, Session, SignIn } from '../contract/session.ts';
+import { callApiForNothing, fetchSession } from './api-client.ts';
+
+export const sessionQuery = queryOptions({
+  queryKey: ['session'],
+  queryFn: ({ signal }) => fetchSession(signal),
+  staleTime: Infinity,
+});
+
+/** The session once it is known; screens behind the sign-in can rely on it. */
+export function useSession(): Session | undefined {
+  return useQuery(sessionQuery).data;
+}
+
+/** The reader's place in a workspace, if they have one. */
+export function useMembership(workspaceId: string | undefined): Membership | undefined {
+  return useSession()?.memberships.find((membership) => membership.workspaceId === workspaceId);
+}
+
+/** Whether the reader may do this in the workspace. The server decides; this only hides what it would refuse. */
+export function may(membership: Membership | undefined, action: Action): boolean {
+  return membership?.actions.includes(action) ?? false;
+}
+
+export function useSignIn() {
+  const takeOver = useTakeOver();
+  return useMutation({
+    mutationFn: (credentials: SignIn) =>
+      callApiForNothing('/api/session', { method: 'POST', body: credentials }),
+    onSuccess: takeOver,
+  });
+}
+
+export function useDemoSignIn() {
+  const takeOver = useTakeOver();
+  return useMutation({
+    mutationFn: (role: Role) => callApiForNothing('/api/session/demo', { method: 'POST', body: { role } }),
+    onSuccess: takeOver,
+  });
+}
+
+export function useSignOut() {
+  const takeOver = useTakeOver();
+  return useMutation({
+    mutationFn: () => callApiForNothing('/api/session', { method: 'DELETE' }),
+    onSuccess: takeOver,
+  });
+}
+
+/** What one person was shown is never shown to the next: everything cached goes, then the new session is read. */
+function useTakeOver(): () => Promise<void> {
+  const queryClient = useQueryClient();
+  return async () => {
+    queryClient.removeQueries({ predicate: (query) => query.queryKey[0] !== 'session' });
+    await queryClient.fetchQuery({ ...sessionQuery, staleTime: 0 });
+  };
+}

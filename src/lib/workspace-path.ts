@@ -1,0 +1,22 @@
+const storageKey = 'longpatch.workspace';
+
+export const engagementsPath = (workspaceId: string): string => `/workspaces/${workspaceId}/engagements`;
+
+export const designPath = (designId: string): string => `/designs/${designId}`;
+
+/** The workspace that this browser last showed. */
+export function rememberedWorkspace(): string | null {
+  try {
+    return window.localStorage.getItem(storageKey);
+  } catch {
+    return null;
+  }
+}
+
+export function rememberWorkspace(workspaceId: string): void {
+  try {
+    window.localStorage.setItem(storageKey, workspaceId);
+  } catch {
+    // Without storage the first workspace is the start.
+  }
+}
