@@ -36,7 +36,6 @@ export const espIntegrityLevels: AlgorithmLevels = {
   'hmac-sha1-96': { level: 'must', trend: 'falling', source: espIntegritySource },
   'hmac-sha2-512-256': { level: 'should', source: espIntegritySource },
   'aes-gmac': { level: 'may', source: espIntegritySource },
-  'aes-xcbc-96': { level: 'may', source: espIntegritySource },
   'hmac-md5-96': { level: 'must-not', source: espIntegritySource },
   'des-mac': { level: 'must-not', source: espIntegritySource },
   'kpdk-md5': { level: 'must-not', source: espIntegritySource },

@@ -1,3 +1,5 @@
+// RFC 791, 792, 4443 and the field widths of RFC 8200 are cited from memory; RFC 8200 section 5 was read.
+
 export const ipVersions = ['ipv4', 'ipv6'] as const;
 export type IpVersion = (typeof ipVersions)[number];
 

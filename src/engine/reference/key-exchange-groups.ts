@@ -1,4 +1,4 @@
-/** Names of IKE key-exchange groups by their IANA transform number. */
+/** Names of IKE key-exchange groups by their IANA transform number; the clauses are cited from memory. */
 export const keyExchangeGroupNames: Readonly<Record<number, string>> = {
   // RFC 7296 appendix B.1.
   1: '768-bit MODP',

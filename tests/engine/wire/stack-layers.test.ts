@@ -1,8 +1,15 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import {
+  espIntegrityIds,
+  espTransformIds,
+  type EspIntegrityId,
+  type EspTransformId,
+} from '#engine/reference/esp.ts';
 import { bareStack, type Stack } from '#engine/wire/stack.ts';
 import { bytesOf, type Layer } from '#engine/wire/layer.ts';
 import { stackLayers, type StackLayers } from '#engine/wire/stack-layers.ts';
+import transforms from '../../reference/esp-transform-sizes.json' with { type: 'json' };
 import vectors from '../../reference/published-esp-vectors.json' with { type: 'json' };
 import { arbitraryIpVersion, arbitraryStack } from './arbitrary-stack.ts';
 import { measuredRows, measuredStack } from './measured-packets.ts';
@@ -56,6 +63,26 @@ describe('published test vectors', () => {
       );
     },
   );
+});
+
+describe('every ESP transform and integrity algorithm', () => {
+  it.each(transforms.rows)('$transform with $integrity has the size worked out by hand', (row) => {
+    const suite = {
+      transform: row.transform as EspTransformId,
+      integrity: row.integrity as EspIntegrityId | undefined,
+    };
+    const esp = { mode: 'tunnel', ...suite, natTraversal: false, outerIp: 'ipv4' } as const;
+    const { totals } = layersOf(transforms.innerPacketBytes, { ...bareStack, esp });
+    expect(totals.outerIpPacketBytes).toBe(row.outerIpPacketBytes);
+  });
+
+  it('is among them', () => {
+    expect(new Set(transforms.rows.map(({ transform }) => transform))).toEqual(new Set(espTransformIds));
+    const integrities = transforms.rows.flatMap(({ integrity }) =>
+      integrity === undefined ? [] : [integrity],
+    );
+    expect(new Set(integrities)).toEqual(new Set(espIntegrityIds));
+  });
 });
 
 describe('layers', () => {
