@@ -40,9 +40,7 @@ export async function launchBrowser(): Promise<TestBrowser> {
         locale: 'en-GB',
         timezoneId: 'UTC',
       });
-      const page = await context.newPage();
-      page.once('close', () => void context.close());
-      return page;
+      return context.newPage();
     },
     close: () => browser.close(),
   };
