@@ -1,7 +1,7 @@
 import { createContext, use, useId, useState, type ReactNode } from 'react';
 import { createPortal } from 'react-dom';
 import { classNames } from '../lib/class-names.ts';
-import { SeverityShape } from './severity-mark.tsx';
+import { SeverityShape, type Severity } from './severity-mark.tsx';
 
 /** Where the cells of a grid put what is wrong with them: beneath the grid, so that its rules stay whole. */
 const MessagesContext = createContext<HTMLElement | null>(null);
@@ -31,6 +31,8 @@ export function CellGrid({ columns = 1, className, children }: CellGridProps) {
 
 export interface CellProps {
   readonly label: string;
+  /** Where the value stands, said to screen readers where two cells side by side have one label. */
+  readonly place?: string;
   /** How many columns of its grid the cell takes. */
   readonly span?: number;
   /** Right-aligned, as the far end's cells in a mirror. */
@@ -44,13 +46,19 @@ const cellBase = 'relative -mt-px -ml-px flex min-w-0 flex-col border px-9 pt-4 
 const spanStyle = (span: number | undefined) =>
   span === undefined || span === 1 ? undefined : { gridColumn: `span ${span}` };
 
-function CellLabel({ children }: { readonly children: ReactNode }) {
-  return <span className="block text-label text-ink-3">{children}</span>;
+function CellLabel({ label, place }: Pick<CellProps, 'label' | 'place'>) {
+  return (
+    <span className="block text-label text-ink-3">
+      {label}
+      {place !== undefined && <span className="sr-only"> at {place}</span>}
+    </span>
+  );
 }
 
 /** A value that is read here and changed elsewhere, or computed. */
 export function ReadCell({
   label,
+  place,
   span,
   alignRight = false,
   className,
@@ -61,7 +69,7 @@ export function ReadCell({
       style={spanStyle(span)}
       className={classNames(cellBase, 'border-rule-strong bg-raise', alignRight && 'text-right', className)}
     >
-      <CellLabel>{label}</CellLabel>
+      <CellLabel label={label} place={place} />
       <div className="min-h-18 text-value break-words text-ink">{children}</div>
     </div>
   );
@@ -80,9 +88,30 @@ export function PlainCell({
   );
 }
 
+/** What a check says about a value that may stand as it is. */
+export interface CellMark {
+  readonly severity: Severity;
+  readonly sentence: string;
+}
+
+/** How a marked value is written. */
+export const markInks: Readonly<Record<Severity, string>> = {
+  blocking: 'font-semibold text-red',
+  degrading: 'font-semibold text-degr',
+  advisory: 'font-semibold text-advi',
+};
+
+const markOutlines: Readonly<Record<Severity, string>> = {
+  blocking: 'outline-red',
+  degrading: 'outline-degr',
+  advisory: 'outline-advi',
+};
+
 export interface FieldCellProps extends CellProps {
   /** What is wrong: field, value and way out in one sentence. */
   readonly error?: string;
+  /** Outlines the cell in its severity's colour; the sentence is said on hover and to screen readers. */
+  readonly marked?: CellMark;
   /** What the value stands for, said beneath the cell while nothing is wrong. */
   readonly hint?: string;
   /** Stands after the value, such as a unit or a small link. */
@@ -97,10 +126,12 @@ interface FieldIds {
 /** The frame of a cell that can be typed into or chosen in: label, value, and what is wrong beneath. */
 export function FieldCell({
   label,
+  place,
   span,
   alignRight = false,
   className,
   error,
+  marked,
   hint,
   after,
   disabled = false,
@@ -116,7 +147,9 @@ export function FieldCell({
   const messageId = `${id}-message`;
   const inGrid = use(MessagesContext);
   const faulty = error !== undefined && error !== '';
-  const describedBy = faulty || hint !== undefined ? messageId : undefined;
+  const markId = `${id}-mark`;
+  const describedBy =
+    classNames(marked !== undefined && markId, (faulty || hint !== undefined) && messageId) || undefined;
   const message = faulty ? (
     <FieldError id={messageId}>{error}</FieldError>
   ) : hint !== undefined ? (
@@ -128,10 +161,10 @@ export function FieldCell({
     <>
       {group ? (
         <span id={`${id}-label`}>
-          <CellLabel>{label}</CellLabel>
+          <CellLabel label={label} place={place} />
         </span>
       ) : (
-        <CellLabel>{label}</CellLabel>
+        <CellLabel label={label} place={place} />
       )}
       <span className={classNames('flex min-h-18 items-center gap-8', alignRight && 'justify-end')}>
         {children({ id, describedBy })}
@@ -144,7 +177,9 @@ export function FieldCell({
     disabled ? 'border-rule-strong bg-raise' : 'border-rule-strong bg-field',
     !group &&
       'focus-within:z-1 focus-within:outline-2 focus-within:-outline-offset-2 focus-within:outline-blue',
-    faulty && 'z-1 outline-2 -outline-offset-2 outline-red',
+    faulty
+      ? 'z-1 outline-2 -outline-offset-2 outline-red'
+      : marked && `z-1 outline-2 -outline-offset-2 ${markOutlines[marked.severity]}`,
     alignRight && 'text-right',
     className,
   );
@@ -155,15 +190,21 @@ export function FieldCell({
           role="group"
           aria-labelledby={`${id}-label`}
           aria-describedby={describedBy}
+          title={marked?.sentence}
           style={spanStyle(span)}
           className={look}
         >
           {content}
         </div>
       ) : (
-        <label htmlFor={id} style={spanStyle(span)} className={look}>
+        <label htmlFor={id} title={marked?.sentence} style={spanStyle(span)} className={look}>
           {content}
         </label>
+      )}
+      {marked !== undefined && (
+        <span id={markId} hidden>
+          {marked.sentence}
+        </span>
       )}
       {message !== null && (inGrid === null ? message : createPortal(message, inGrid))}
     </>

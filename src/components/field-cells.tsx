@@ -1,9 +1,10 @@
-import { useState, type InputHTMLAttributes, type ReactNode, type Ref } from 'react';
+import type { InputHTMLAttributes, ReactNode, Ref } from 'react';
 import { classNames } from '../lib/class-names.ts';
 import { CheckBox } from './check-box.tsx';
-import { FieldCell, type FieldCellProps } from './cell.tsx';
+import { FieldCell, markInks, type FieldCellProps } from './cell.tsx';
 import { Icon } from './icon.tsx';
 import { SegmentedChoice, type ChoiceOption } from './segmented-choice.tsx';
+import { useCommittedText } from './use-committed-text.ts';
 
 // The cell draws the focus; the input itself has no look of its own.
 const bareInput =
@@ -17,10 +18,12 @@ export interface InputCellProps
 /** A cell to type in. Takes everything that an input takes, so that form libraries can register it. */
 export function InputCell({
   label,
+  place,
   span,
   alignRight,
   className,
   error,
+  marked,
   hint,
   after,
   ref,
@@ -28,7 +31,7 @@ export function InputCell({
   ...input
 }: InputCellProps) {
   return (
-    <FieldCell {...{ label, span, alignRight, className, error, hint, after, disabled }}>
+    <FieldCell {...{ label, place, span, alignRight, className, error, marked, hint, after, disabled }}>
       {({ id, describedBy }) => (
         <input
           {...input}
@@ -37,7 +40,11 @@ export function InputCell({
           disabled={disabled}
           aria-invalid={error ? true : undefined}
           aria-describedby={describedBy}
-          className={classNames(bareInput, alignRight && 'text-right', error && 'font-semibold text-red')}
+          className={classNames(
+            bareInput,
+            alignRight && 'text-right',
+            error ? 'font-semibold text-red' : marked && markInks[marked.severity],
+          )}
         />
       )}
     </FieldCell>
@@ -58,38 +65,40 @@ export interface CommitCellProps extends FieldCellProps {
 
 /** A cell whose text counts when it is left or Enter is pressed; Escape brings the old text back. */
 export function CommitCell({ value, onCommit, validate, error, ...cell }: CommitCellProps) {
-  const [draft, setDraft] = useState<string | null>(null);
-  const [problem, setProblem] = useState<string>();
-  const commit = (): void => {
-    if (draft === null) return;
-    const text = draft.trim();
-    const found = text === value ? undefined : validate?.(text);
-    setProblem(found);
-    if (found !== undefined) return;
-    setDraft(null);
-    if (text !== value) onCommit(text);
-  };
+  const { field, problem } = useCommittedText({ value, onCommit, validate });
+  return <InputCell {...cell} {...field} error={problem ?? error} />;
+}
+
+export interface CommitAreaCellProps extends Omit<CommitCellProps, 'inputMode' | 'alignRight'> {
+  readonly rows?: number;
+}
+
+/** A cell for several lines; Enter starts a new one, and the text counts when the cell is left. */
+export function CommitAreaCell({
+  value,
+  onCommit,
+  validate,
+  error,
+  disabled,
+  placeholder,
+  maxLength,
+  rows = 3,
+  ...cell
+}: CommitAreaCellProps) {
+  const { field, problem } = useCommittedText({ value, onCommit, validate, multiline: true });
+  const shown = problem ?? error;
   return (
-    <InputCell
-      {...cell}
-      value={draft ?? value}
-      error={problem ?? error}
-      autoComplete="off"
-      spellCheck={false}
-      onChange={(event) => {
-        setDraft(event.target.value);
-        setProblem(undefined);
-      }}
-      onBlur={commit}
-      onKeyDown={(event) => {
-        if (event.key === 'Enter') commit();
-        if (event.key !== 'Escape' || draft === null) return;
-        // The first Escape is the cell's; what is around it, such as a dialog, gets the next.
-        event.stopPropagation();
-        setDraft(null);
-        setProblem(undefined);
-      }}
-    />
+    <FieldCell {...cell} error={shown} disabled={disabled}>
+      {({ id, describedBy }) => (
+        <textarea
+          {...field}
+          {...{ id, disabled, placeholder, maxLength, rows }}
+          aria-invalid={shown ? true : undefined}
+          aria-describedby={describedBy}
+          className={classNames(bareInput, 'resize-y text-base font-normal', shown && 'text-red')}
+        />
+      )}
+    </FieldCell>
   );
 }
 
@@ -164,7 +173,8 @@ export function SelectCell<Value extends string>({
           className={classNames(
             bareInput,
             'appearance-none text-ellipsis [&_option]:bg-field [&_option]:text-ink',
-            value === '' && 'text-ink-3',
+            cell.alignRight && '[text-align-last:right]',
+            cell.marked ? markInks[cell.marked.severity] : value === '' && 'text-ink-3',
           )}
         >
           {placeholder !== undefined && (
