@@ -35,6 +35,7 @@ export async function ensureClientBuild({ say, signal }) {
     env: { ...process.env, NODE_ENV: 'production' },
     logFile: setupLog,
     signal,
+    endsWithUs: true,
   });
   if (!result.ok) {
     throw new SetupProblem(

@@ -1,5 +1,5 @@
 import { createLifetime } from './lifetime.mjs';
-import { SetupProblem } from './setup-problem.mjs';
+import { messageOf } from './setup-problem.mjs';
 
 /**
  * Runs a command until it is done or asked to end, stops what it started, and ends this process.
@@ -22,7 +22,7 @@ export async function runCommandLine(command) {
 }
 
 /**
- * What to tell the user; a bug keeps its stack trace.
+ * What went wrong in `work`, or null.
  * @param {() => Promise<string | null>} work
  * @param {import('./lifetime.mjs').Lifetime} [lifetime]
  * @returns {Promise<string | null>}
@@ -33,8 +33,7 @@ async function outcomeOf(work, lifetime) {
   } catch (error) {
     // Work that was cut short fails in all sorts of ways that mean nothing.
     if (lifetime?.signal.aborted) return lifetime.signal.reason;
-    if (error instanceof SetupProblem) return error.message;
-    return error instanceof Error ? (error.stack ?? error.message) : String(error);
+    return messageOf(error);
   }
 }
 

@@ -12,7 +12,7 @@ import { SetupProblem } from './setup-problem.mjs';
 export const postgresPackage = {
   name: 'postgresql',
   purpose: 'PostgreSQL',
-  alternative: ', or set DATABASE_URL to a PostgreSQL server that you have',
+  alternative: ', or set DATABASE_URL (for tests TEST_DATABASE_URL) to a PostgreSQL server that you have',
   beforeInstall() {
     const settings = '/etc/postgresql-common/createcluster.conf';
     if (existsSync(settings)) return;

@@ -33,6 +33,7 @@ export async function ensureDependencies({ say, signal, folder = projectFolder }
     cwd: folder,
     logFile: setupLog,
     signal,
+    endsWithUs: true,
   });
   if (!result.ok) {
     throw new SetupProblem(

@@ -63,10 +63,10 @@ export async function acquireCluster({ name, isDurable, say, signal }) {
       isDurable,
     };
     if (!exists) await createCluster(place, say);
-    const credentials = readCredentials(folder);
     const lease = takeLease(folder);
     try {
       const server = await ensureStarted(place, say);
+      const credentials = readCredentials(folder);
       await ensureDatabase(credentials, server.port);
       const identity = identityOf(server.pid);
       return {
@@ -96,19 +96,19 @@ async function createCluster({ folder, data, programs, user }, say) {
   // Made under another name and renamed when complete: a creation that was cut off leaves nothing that looks finished.
   const unfinished = join(folder, 'data.unfinished');
   const passwordFile = join(folder, 'initdb-password');
-  rmSync(unfinished, { recursive: true, force: true });
-  rmSync(passwordFile, { force: true });
+  for (const path of [data, unfinished, passwordFile]) rmSync(path, { recursive: true, force: true });
   mkdirSync(unfinished, { mode: 0o700 });
   writeFileSync(passwordFile, credentials.superuserPassword, { mode: 0o600 });
   if (user !== null) for (const path of [unfinished, passwordFile]) chownSync(path, user.uid, user.gid);
-  const result = await runAsPostgres(user, join(programs, 'initdb'), [
+  const settings = [
     `--pgdata=${unfinished}`,
     '--username=postgres',
     '--auth=scram-sha-256',
     `--pwfile=${passwordFile}`,
     '--locale=C.UTF-8',
     '--encoding=UTF8',
-  ]);
+  ];
+  const result = await runAsPostgres(user, join(programs, 'initdb'), settings, { endsWithUs: true });
   rmSync(passwordFile, { force: true });
   if (!result.ok) {
     throw new SetupProblem(
@@ -136,7 +136,15 @@ async function ensureStarted(place, say) {
     rmSync(join(data, 'postmaster.pid'), { force: true });
   }
   say('Starting PostgreSQL');
-  return start(place);
+  try {
+    return await start(place);
+  } catch (error) {
+    // Without durability a power cut can leave a cluster that never starts again; nothing in it was meant to last.
+    if (place.isDurable) throw error;
+    say('The database for tests is damaged');
+    await createCluster(place, say);
+    return start(place);
+  }
 }
 
 /**

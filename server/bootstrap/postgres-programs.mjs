@@ -77,13 +77,13 @@ export async function postgresUser(ownedFolder) {
  * @param {PostgresUser} user
  * @param {string} program
  * @param {readonly string[]} args
+ * @param {{ endsWithUs?: boolean }} [options] for programs that must not outlive this process
  */
-export function runAsPostgres(user, program, args) {
-  const [command, ...rest] =
-    user === null
-      ? [program, ...args]
-      : ['setpriv', `--reuid=${user.uid}`, `--regid=${user.gid}`, '--clear-groups', program, ...args];
-  return runCommand(command ?? program, rest, { cwd: '/', env: withoutPostgresVariables(process.env) });
+export function runAsPostgres(user, program, args, { endsWithUs = false } = {}) {
+  const options = { cwd: '/', env: withoutPostgresVariables(process.env), endsWithUs };
+  if (user === null) return runCommand(program, args, options);
+  const asUser = [`--reuid=${user.uid}`, `--regid=${user.gid}`, '--clear-groups'];
+  return runCommand('setpriv', [...asUser, program, ...args], options);
 }
 
 /**

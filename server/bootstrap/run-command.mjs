@@ -7,6 +7,7 @@ import { appendFileSync } from 'node:fs';
  * @property {NodeJS.ProcessEnv} [env]
  * @property {string} [logFile] receives all output
  * @property {AbortSignal} [signal] ends the program early
+ * @property {boolean} [endsWithUs] the program is killed when this process is, so that the next run never meets it at work
  *
  * @typedef {{ ok: boolean, exitCode: number | null, output: string }} CommandResult
  */
@@ -18,9 +19,12 @@ import { appendFileSync } from 'node:fs';
  * @param {CommandOptions} [options]
  * @returns {Promise<CommandResult>}
  */
-export function runCommand(program, args, { cwd, env, logFile, signal } = {}) {
+export function runCommand(program, args, { cwd, env, logFile, signal, endsWithUs = false } = {}) {
   return new Promise((resolve, reject) => {
-    const child = spawn(program, args, { cwd, env, signal, stdio: ['ignore', 'pipe', 'pipe'] });
+    const [first, ...rest] = endsWithUs
+      ? ['setpriv', '--pdeathsig=KILL', '--', program, ...args]
+      : [program, ...args];
+    const child = spawn(first ?? program, rest, { cwd, env, signal, stdio: ['ignore', 'pipe', 'pipe'] });
     let output = '';
     /** @param {Buffer | string} chunk */
     const collect = (chunk) => {

@@ -5,8 +5,9 @@ import { ensureChromium } from './chromium.mjs';
 import { ensureDependencies } from './dependencies.mjs';
 import { ensureWritableFolder, projectFolder, stateFolder } from './folders.mjs';
 import { acquireCluster } from './postgres-cluster.mjs';
+import { withoutPostgresVariables } from './postgres-programs.mjs';
 import { withSetupLock } from './setup-lock.mjs';
-import { SetupProblem } from './setup-problem.mjs';
+import { messageOf } from './setup-problem.mjs';
 import { closingLine, countVitestReport } from './test-count.mjs';
 import { chooseSteps, vitestCommand } from './test-steps.mjs';
 
@@ -36,18 +37,26 @@ export async function runTests(lifetime, args) {
     for (const step of chosen.steps) {
       say(`\n── ${step.name}`);
       const startedAt = Date.now();
-      const count = await runStep(lifetime, step, chosen.rest);
+      const count = await runStep(lifetime, step, chosen.rest).catch((error) => {
+        if (lifetime.signal.aborted) throw error;
+        return { passed: 0, failed: 1, note: messageOf(error) };
+      });
       counts.push(count);
       const note = count.note === undefined ? '' : `: ${count.note}`;
       const seconds = ((Date.now() - startedAt) / 1000).toFixed(1);
       say(`── ${step.name}: ${count.passed} passed, ${count.failed} failed in ${seconds} s${note}`);
     }
   } catch (error) {
-    if (!(error instanceof SetupProblem)) throw error;
-    say(error.message);
+    if (lifetime.signal.aborted) throw error;
+    say(messageOf(error));
     counts.push({ passed: 0, failed: 1 });
   }
-  await lifetime.stopAll();
+  try {
+    await lifetime.stopAll();
+  } catch (error) {
+    say(messageOf(error));
+    counts.push({ passed: 0, failed: 1 });
+  }
   say(`\n${closingLine(counts)}`);
   return counts.some((count) => count.failed > 0) ? '' : null;
 }
@@ -60,13 +69,8 @@ export async function runTests(lifetime, args) {
  */
 async function runStep(lifetime, step, rest) {
   const { signal } = lifetime;
-  try {
-    if (step.needsDatabase) await holdDatabase(lifetime);
-    if (step.needsBrowser) await withSetupLock(say, () => ensureChromium({ say, signal }));
-  } catch (error) {
-    if (!(error instanceof SetupProblem)) throw error;
-    return { passed: 0, failed: 1, note: error.message };
-  }
+  if (step.needsDatabase) await holdDatabase(lifetime);
+  if (step.needsBrowser) await withSetupLock(say, () => ensureChromium({ say, signal }));
   if (step.vitest === null) return runChecks(step.checks, signal);
   const report = join(ensureWritableFolder(join(stateFolder, 'test')), `${step.name}.json`);
   rmSync(report, { force: true });
@@ -108,7 +112,7 @@ function runNode(args, signal) {
   return new Promise((resolve, reject) => {
     const child = spawn(process.execPath, args, {
       cwd: projectFolder,
-      env: { ...process.env, NODE_ENV: 'test' },
+      env: environmentOfTests(process.env),
       stdio: ['ignore', 'inherit', 'inherit'],
       timeout: stepTimeoutMs,
       signal,
@@ -116,6 +120,19 @@ function runNode(args, signal) {
     child.once('error', reject);
     child.once('exit', resolve);
   });
+}
+
+/**
+ * What somebody set for `npm start` must not change what the tests see.
+ * @param {NodeJS.ProcessEnv} environment
+ * @returns {NodeJS.ProcessEnv}
+ */
+function environmentOfTests(environment) {
+  const ofStart = ['DATABASE_URL', 'HOST', 'PORT', 'PUBLIC_URL', 'SESSION_SECRET', 'SMTP_URL'];
+  const kept = Object.entries(withoutPostgresVariables(environment)).filter(
+    ([name]) => !ofStart.includes(name),
+  );
+  return { ...Object.fromEntries(kept), NODE_ENV: 'test' };
 }
 
 /**

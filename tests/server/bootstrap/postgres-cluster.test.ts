@@ -10,8 +10,8 @@ const name = `trial-${process.pid}`;
 const folders = [join(stateFolder, name), join(outsideFolder(name), '..')];
 const releases: (() => Promise<void>)[] = [];
 
-async function open() {
-  const cluster = await acquireCluster({ name, isDurable: true, say: () => {} });
+async function open(isDurable = true) {
+  const cluster = await acquireCluster({ name, isDurable, say: () => {} });
   releases.push(cluster.release);
   return cluster;
 }
@@ -88,6 +88,16 @@ test('a pid file that names some other process does not keep the server from sta
   writeFileSync(join(dataFolder(), 'postmaster.pid'), `${process.pid}\n${dataFolder()}\n${now}\n5432\n`);
   const second = await open();
   expect(await ask(second.url, 'select 1 as answer')).toBe(1);
+});
+
+test('a damaged cluster is kept when it was to last, and made anew when it was not', async () => {
+  const first = await open();
+  await first.release();
+  rmSync(join(dataFolder(), 'global', 'pg_control'));
+  await expect(open()).rejects.toThrow('PostgreSQL does not start; its log');
+  const second = await open(false);
+  expect(await ask(second.url, "select to_regclass('logbook')::text as answer")).toBeNull();
+  expect(await ask(second.url, "select current_setting('fsync') as answer")).toBe('off');
 });
 
 test('a cluster without its passwords is refused with the way out', async () => {
