@@ -45,6 +45,8 @@ export const wrapText = (
 export interface FittedText {
   readonly lines: readonly string[];
   readonly sizePx: number;
+  /** Width of the longest line. */
+  readonly widthPx: number;
   /** True when even the smallest size left something out; the whole text belongs in a tooltip then. */
   readonly shortened: boolean;
 }
@@ -66,6 +68,18 @@ const shortenLine = (line: string, maxWidthPx: number, sizePx: number, weight: F
   return `${characters.join('').trimEnd()}…`;
 };
 
+const fitted = (
+  lines: readonly string[],
+  sizePx: number,
+  weight: FontWeight,
+  shortened: boolean,
+): FittedText => ({
+  lines,
+  sizePx,
+  widthPx: Math.max(0, ...lines.map((line) => textWidth(line, sizePx, weight))),
+  shortened,
+});
+
 /** Sets text as large as it fits: first smaller, in half pixels, on as many lines as allowed; what still does not fit ends in an ellipsis. */
 export const fitText = (text: string, limits: FitLimits): FittedText => {
   const { maxWidthPx, maxLines = 1, sizePx, minSizePx, weight = 400 } = limits;
@@ -73,11 +87,11 @@ export const fitText = (text: string, limits: FitLimits): FittedText => {
     lines.length <= maxLines && lines.every((line) => textWidth(line, size, weight) <= maxWidthPx);
   for (let size = sizePx; size >= minSizePx; size -= 0.5) {
     const lines = maxLines === 1 ? [text] : wrapText(text, maxWidthPx, size, weight);
-    if (fits(lines, size)) return { lines, sizePx: size, shortened: false };
+    if (fits(lines, size)) return fitted(lines, size, weight, false);
   }
   if (limits.whole) {
     const width = textWidth(text, 1, weight);
-    return { lines: [text], sizePx: maxWidthPx / width, shortened: false };
+    return fitted([text], maxWidthPx / width, weight, false);
   }
   const lines = maxLines === 1 ? [text] : wrapText(text, maxWidthPx, minSizePx, weight);
   const kept = lines.slice(0, maxLines).map((line, i) => {
@@ -86,5 +100,5 @@ export const fitText = (text: string, limits: FitLimits): FittedText => {
       ? shortenLine(line, maxWidthPx, minSizePx, weight)
       : line;
   });
-  return { lines: kept, sizePx: minSizePx, shortened: true };
+  return fitted(kept, minSizePx, weight, true);
 };

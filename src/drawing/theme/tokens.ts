@@ -36,6 +36,7 @@ const baseTokens = {
   casing: token('#17232b', '#0a0f11', black),
   brass: token('#c99f4e', '#d3aa5c', white),
   'brass-deep': token('#76560f', '#e2bf78', black),
+  'on-brass': token('#17232b', '#11181b', black),
   'brass-wash': token('#f4e9cf', '#3a3019', white),
   band: token('#eae9e1', '#232c2f', '#f1f1f1'),
   'band-edge': token('#69746f', '#84918f', '#3c3c3c'),

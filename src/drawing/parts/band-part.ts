@@ -1,0 +1,122 @@
+import { elementKey } from '../decorations.ts';
+import type { BandGeometry, Rect, SheetFrame } from '../geometry.ts';
+import type { Shape } from '../shape.ts';
+import { group, shape } from '../shape.ts';
+import { paint } from '../theme/paint.ts';
+import { bandText } from './band-text.ts';
+import type { DrawingFacts } from './drawing-facts.ts';
+import type { Look } from './look.ts';
+import { dimmedOpacity, tonesOf } from './look.ts';
+import { grown } from './outlines.ts';
+import type { OutlineEdge } from './rectilinear-outline.ts';
+import { insetLoop, loopEdges, rectilinearOutline } from './rectilinear-outline.ts';
+
+const tickEveryPx = 46;
+const tickPx = 7;
+const tickStepPx = 6;
+const innerLinePx = 5;
+
+const onFrame = ({ from, to }: OutlineEdge, frame: Rect): boolean =>
+  (from.y === to.y && (Math.abs(from.y - frame.y) < 1 || Math.abs(from.y - frame.y - frame.height) < 1)) ||
+  (from.x === to.x && (Math.abs(from.x - frame.x) < 1 || Math.abs(from.x - frame.x - frame.width) < 1));
+
+const edgePath = (edges: readonly OutlineEdge[]): string =>
+  edges.map(({ from, to }) => `M${from.x} ${from.y}L${to.x} ${to.y}`).join('');
+
+/** Three strokes at 45° every 46 px along the inside of an edge; all of them rise to the right. */
+const ticks = (edges: readonly OutlineEdge[]): string =>
+  edges
+    .map(({ from, to }) => {
+      const length = Math.hypot(to.x - from.x, to.y - from.y);
+      const along = { x: (to.x - from.x) / length, y: (to.y - from.y) / length };
+      const into = { x: -along.y, y: along.x };
+      // A stroke rising to the right either starts on the edge or ends there.
+      const starts = into.x - into.y > 0 ? 1 : -1;
+      const strokes: string[] = [];
+      for (let middle = tickEveryPx / 2; middle < length - tickPx - tickStepPx; middle += tickEveryPx)
+        for (const step of [-1, 0, 1]) {
+          const x = from.x + along.x * (middle + step * tickStepPx);
+          const y = from.y + along.y * (middle + step * tickStepPx);
+          strokes.push(`M${x} ${y}l${starts * tickPx} ${-starts * tickPx}`);
+        }
+      return strokes.join('');
+    })
+    .join('');
+
+/** A transport: ground, edges that say whether it is trusted, and its words where routing found room. */
+export const bandPart = (band: BandGeometry, sheet: SheetFrame, facts: DrawingFacts, look: Look): Shape => {
+  const ref = { collection: 'transports', id: band.id } as const;
+  const tones = tonesOf(look, ref);
+  const words = facts.transports[band.id];
+  const rects = [...band.limbs, ...(band.header === undefined ? [] : [band.header])];
+  const loops = rectilinearOutline(rects);
+  const trusted = words?.trusted ?? false;
+  const edges = loops.flatMap(loopEdges).filter((edge) => !onFrame(edge, sheet.frame));
+  const inner = loops.flatMap((loop) =>
+    loopEdges(insetLoop(loop, innerLinePx)).filter(
+      (edge) => !onFrame(edge, grown(sheet.frame, -innerLinePx)),
+    ),
+  );
+  const failed = tones.includes('failed');
+  const marked = tones.includes('selected') || tones.includes('hovered');
+  const far = look.level === 'far';
+  const edgeColour = failed || tones.includes('fault') ? 'red' : 'band-edge';
+  return group(
+    [
+      marked && {
+        ...shape('path', {
+          d: edgePath(edges),
+          fill: 'none',
+          stroke: paint('blue-soft'),
+          strokeWidth: 9,
+          strokeLinecap: 'square',
+        }),
+        key: 'pencil',
+      },
+      {
+        ...shape('path', {
+          d: loops.map((loop) => `M${loop.map(({ x, y }) => `${x} ${y}`).join('L')}z`).join(''),
+          fill: paint(marked ? 'blue-wash' : tones.includes('lit') ? 'lamp' : 'band'),
+          ...(tones.includes('lit') && !marked ? { fillOpacity: 0.45 } : {}),
+        }),
+        key: 'ground',
+      },
+      {
+        ...shape('path', {
+          d: edgePath(edges),
+          fill: 'none',
+          stroke: paint(marked ? 'blue' : edgeColour),
+          strokeWidth: far ? 4 : 2.2,
+          ...(trusted && !failed ? {} : { strokeDasharray: far ? '26 12' : '16 7' }),
+        }),
+        key: 'edge',
+      },
+      !far &&
+        (trusted
+          ? {
+              ...shape('path', {
+                d: edgePath(inner),
+                fill: 'none',
+                stroke: paint(edgeColour),
+                strokeWidth: 1,
+              }),
+              key: 'inner',
+            }
+          : {
+              ...shape('path', {
+                d: ticks(edges),
+                fill: 'none',
+                stroke: paint('band-tick'),
+                strokeWidth: 1.6,
+              }),
+              key: 'ticks',
+            }),
+      words !== undefined && bandText(band, words, look.level, tones.includes('dimmed')),
+    ],
+    {
+      key: elementKey(ref),
+      data: { ref, part: 'band' },
+      ...(tones.includes('dimmed') ? { attrs: { opacity: dimmedOpacity } } : {}),
+    },
+  );
+};

@@ -1,0 +1,61 @@
+import { elementKey } from '../decorations.ts';
+import type { SiteGeometry } from '../geometry.ts';
+import type { Shape } from '../shape.ts';
+import { group, shape } from '../shape.ts';
+import { fitText } from '../text-width.ts';
+import { paint } from '../theme/paint.ts';
+import type { DrawingFacts } from './drawing-facts.ts';
+import { cornerTicks } from './highlight.ts';
+import type { Look } from './look.ts';
+import { dimmedOpacity, tonesOf } from './look.ts';
+import { site as size } from './sizes.ts';
+import { capShift, fittedLines } from './text-shape.ts';
+
+const nameSizes = { near: 16, work: 16, plan: 23, far: 44 } as const;
+const aroundName = 10;
+
+/** A site: a chain line that its name interrupts at the top. */
+export const sitePart = (site: SiteGeometry, facts: DrawingFacts, look: Look): Shape => {
+  const ref = { collection: 'sites', id: site.id } as const;
+  const tones = tonesOf(look, ref);
+  const { x, y, width, height } = site.rect;
+  const name = facts.sites[site.id] ?? '';
+  const sizePx = nameSizes[look.level];
+  const fitted = fitText(name, {
+    maxWidthPx: Math.max(60, width - size.nameAt - 24),
+    sizePx,
+    minSizePx: Math.min(sizePx, 12),
+    weight: 600,
+  });
+  const nameWidth = fitted.widthPx;
+  const far = look.level === 'far';
+  const gapFrom = x + size.nameAt - aroundName;
+  const gapTo = Math.min(x + width, x + size.nameAt + nameWidth + aroundName);
+  const marked = tones.includes('selected') || tones.includes('hovered');
+  const colour = marked ? 'blue' : tones.includes('failed') || tones.includes('fault') ? 'red' : 'ink-3';
+  return group(
+    [
+      {
+        // The line starts right of the name and ends left of it, so that the gap lets bands and lines beneath show.
+        ...shape('path', {
+          d: `M${gapTo} ${y}H${x + width}V${y + height}H${x}V${y}H${gapFrom}`,
+          fill: 'none',
+          stroke: paint(colour),
+          strokeWidth: far ? 3 : look.level === 'plan' ? 1.8 : 1.2,
+          strokeDasharray: far ? '30 8 5 8' : '16 4 2.5 4',
+        }),
+        key: 'frame',
+      },
+      ...fittedLines(fitted, name, x + size.nameAt, y + fitted.sizePx * capShift, 0, {
+        weight: 600,
+        fill: paint(marked ? 'blue' : 'ink'),
+      }),
+      tones.includes('selected') && cornerTicks(site.rect),
+    ],
+    {
+      key: elementKey(ref),
+      data: { ref, part: 'site' },
+      ...(tones.includes('dimmed') ? { attrs: { opacity: dimmedOpacity } } : {}),
+    },
+  );
+};

@@ -1,0 +1,197 @@
+import type { Rect, SheetFrame } from '../geometry.ts';
+import type { Shape } from '../shape.ts';
+import { group, shape } from '../shape.ts';
+import type { FitLimits } from '../text-width.ts';
+import { fitText } from '../text-width.ts';
+import { paint } from '../theme/paint.ts';
+import type { TitleBlockFacts } from './drawing-facts.ts';
+import type { Level } from './level-of-detail.ts';
+import { capShift, fittedLines, textLine } from './text-shape.ts';
+
+const columns = [112, 134, 240] as const;
+const rowPx = 38;
+const inset = 7;
+
+interface Cell {
+  readonly key: string;
+  readonly label: string;
+  readonly value: string;
+  readonly rect: Rect;
+  readonly bold?: boolean;
+}
+
+const rules = (d: string): Shape => ({
+  ...shape('path', { d, fill: 'none', stroke: paint('ink'), strokeWidth: 1 }),
+  key: 'rules',
+});
+const outline = (rect: Rect, widthPx = 2.4): Shape => ({
+  ...shape('rect', { ...rect, fill: 'none', stroke: paint('ink'), strokeWidth: widthPx }),
+  key: 'outline',
+});
+const ground = (rect: Rect): Shape => ({
+  ...shape('rect', { ...rect, fill: paint('paper') }),
+  key: 'ground',
+});
+
+const fitted = (
+  text: string,
+  x: number,
+  baseline: number,
+  stepPx: number,
+  limits: FitLimits,
+  fill: string = paint('ink'),
+): readonly Shape[] =>
+  fittedLines(fitText(text, limits), text, x, baseline, stepPx, {
+    ...(limits.weight === undefined ? {} : { weight: limits.weight }),
+    fill,
+  });
+
+const cellPart = ({ key, label, value, rect, bold }: Cell): Shape => {
+  const width = rect.width - 2 * inset + 3;
+  const oneLine = fitText(value, { maxWidthPx: width, sizePx: 13.5, minSizePx: 11.5, weight: 500 });
+  // A long value may have two small lines instead of one.
+  const limits: FitLimits = oneLine.shortened
+    ? { maxWidthPx: width, maxLines: 2, sizePx: 10.5, minSizePx: 9, weight: 500 }
+    : { maxWidthPx: width, sizePx: 13.5, minSizePx: 11.5, weight: bold ? 700 : 500 };
+  return group(
+    [
+      textLine(label, rect.x + inset, rect.y + 14, { sizePx: 11.5, fill: paint('ink-3'), key: 'label' }),
+      ...fitted(value, rect.x + inset, rect.y + (oneLine.shortened ? 25 : 31.5), 10, limits),
+    ],
+    { key },
+  );
+};
+
+const titleCell = (facts: TitleBlockFacts, rect: Rect): Shape => {
+  const limits = {
+    maxWidthPx: rect.width - 2 * inset,
+    maxLines: 2,
+    sizePx: 16.8,
+    minSizePx: 11,
+    weight: 600,
+  } as const;
+  const title = fitText(facts.title, limits);
+  const step = title.sizePx * 1.18;
+  const first = title.lines.length === 1 ? rect.y + 38 : rect.y + 32;
+  return group(
+    [
+      textLine('Title', rect.x + inset, rect.y + 14, { sizePx: 11.5, fill: paint('ink-3'), key: 'label' }),
+      group(fitted(facts.title, rect.x + inset, first, step, limits), { key: 'title' }),
+      facts.supplementaryTitle !== '' &&
+        group(
+          fitted(
+            facts.supplementaryTitle,
+            rect.x + inset,
+            title.lines.length === 1 ? rect.y + 60 : first + step + 16,
+            0,
+            { maxWidthPx: rect.width - 2 * inset, sizePx: 14.5, minSizePx: 10 },
+            paint('ink-2'),
+          ),
+          { key: 'supplementary' },
+        ),
+    ],
+    { key: 'title' },
+  );
+};
+
+const full = (facts: TitleBlockFacts, rect: Rect): readonly Shape[] => {
+  const { x, y } = rect;
+  const second = x + columns[0];
+  const third = second + columns[1];
+  const right = x + rect.width;
+  const wide = right - third;
+  const at = (column: number, row: number, width: number): Rect => ({
+    x: column,
+    y: y + row * rowPx,
+    width,
+    height: rowPx,
+  });
+  const rev = third + wide * 0.4;
+  const language = rev + wide * 0.18;
+  const sheet = language + wide * 0.18;
+  const cells: readonly Cell[] = [
+    { key: 'owner', label: 'Legal owner', value: facts.legalOwner, rect: at(x, 0, columns[0]) },
+    { key: 'creator', label: 'Created by', value: facts.createdBy, rect: at(x, 1, columns[0]) },
+    { key: 'status', label: 'Status', value: facts.status, rect: at(x, 2, columns[0]) },
+    { key: 'type', label: 'Document type', value: facts.documentType, rect: at(second, 0, columns[1]) },
+    { key: 'approver', label: 'Approved by', value: facts.approvedBy, rect: at(second, 1, columns[1]) },
+    {
+      key: 'number',
+      label: 'Identification no.',
+      value: facts.identification,
+      rect: at(second, 2, columns[1]),
+    },
+    { key: 'date', label: 'Date of issue', value: facts.dateOfIssue, rect: at(third, 2, rev - third) },
+    { key: 'revision', label: 'Rev.', value: facts.revision, rect: at(rev, 2, language - rev), bold: true },
+    { key: 'language', label: 'Lang.', value: facts.language, rect: at(language, 2, sheet - language) },
+    { key: 'sheet', label: 'Sheet', value: facts.sheet, rect: at(sheet, 2, right - sheet) },
+  ];
+  const [row1, row2, bottom] = [y + rowPx, y + 2 * rowPx, y + rect.height];
+  return [
+    rules(
+      `M${second} ${y}V${bottom}M${third} ${y}V${bottom}M${x} ${row1}H${third}M${x} ${row2}H${right}` +
+        [rev, language, sheet].map((column) => `M${column} ${row2}V${bottom}`).join(''),
+    ),
+    ...cells.map(cellPart),
+    titleCell(facts, { x: third, y, width: wide, height: 2 * rowPx }),
+  ];
+};
+
+/** Three facts that still read at half size: title, number, revision with its state. */
+const brief = (facts: TitleBlockFacts, rect: Rect): readonly Shape[] => {
+  const { x, y, width } = rect;
+  const row = y + 66;
+  const [rev, status] = [x + width * 0.39, x + width * 0.62];
+  const bottom = y + rect.height;
+  const middle = (row + bottom) / 2;
+  const small = (value: string, from: number, to: number, bold = false): readonly Shape[] =>
+    fitted(value, from + 12, middle + 21 * capShift, 0, {
+      maxWidthPx: to - from - 20,
+      sizePx: 21,
+      minSizePx: 14,
+      weight: bold ? 600 : 400,
+    });
+  return [
+    rules(`M${x} ${row}H${x + width}M${rev} ${row}V${bottom}M${status} ${row}V${bottom}`),
+    group(
+      fitted(facts.title, x + 14, y + 33 + 29 * capShift, 0, {
+        maxWidthPx: width - 28,
+        sizePx: 29,
+        minSizePx: 19,
+        weight: 600,
+      }),
+      { key: 'title' },
+    ),
+    group(small(facts.identification, x, rev), { key: 'number' }),
+    group(small(`Rev. ${facts.revision}`, rev, status, true), { key: 'revision' }),
+    group(small(facts.status, status, x + width), { key: 'status' }),
+  ];
+};
+
+const titleAlone = (facts: TitleBlockFacts, rect: Rect): readonly Shape[] => [
+  group(
+    fittedLines(
+      fitText(facts.title, {
+        maxWidthPx: rect.width - 28,
+        maxLines: 2,
+        sizePx: 46,
+        minSizePx: 30,
+        weight: 600,
+      }),
+      facts.title,
+      rect.x + rect.width / 2,
+      rect.y + rect.height / 2 + 14,
+      40,
+      { weight: 600, anchor: 'middle' },
+    ),
+    { key: 'title' },
+  ),
+];
+
+/** The title block with the data fields of ISO 7200:2004 (from memory), at the bottom right of the frame. */
+export const titleBlockPart = (sheet: SheetFrame, facts: TitleBlockFacts, level: Level): Shape => {
+  const rect = sheet.titleBlock;
+  const inside =
+    level === 'far' ? titleAlone(facts, rect) : level === 'plan' ? brief(facts, rect) : full(facts, rect);
+  return group([ground(rect), ...inside, outline(rect, level === 'far' ? 4 : 2.4)], { key: 'title-block' });
+};
