@@ -80,10 +80,12 @@ export async function postgresUser(ownedFolder) {
  * @param {{ endsWithUs?: boolean }} [options] for programs that must not outlive this process
  */
 export function runAsPostgres(user, program, args, { endsWithUs = false } = {}) {
-  const options = { cwd: '/', env: withoutPostgresVariables(process.env), endsWithUs };
-  if (user === null) return runCommand(program, args, options);
+  const options = { cwd: '/', env: withoutPostgresVariables(process.env) };
+  if (user === null) return runCommand(program, args, { ...options, endsWithUs });
   const asUser = [`--reuid=${user.uid}`, `--regid=${user.gid}`, '--clear-groups'];
-  return runCommand('setpriv', [...asUser, program, ...args], options);
+  // prctl(2), PR_SET_PDEATHSIG: changing the user clears the setting, so one call has to do both, in its own order.
+  const ending = endsWithUs ? ['--pdeathsig=KILL'] : [];
+  return runCommand('setpriv', [...asUser, ...ending, '--', program, ...args], options);
 }
 
 /**

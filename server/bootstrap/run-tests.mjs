@@ -104,6 +104,7 @@ async function holdDatabase(lifetime) {
 }
 
 /**
+ * Runs a Node program to its end. When the run is interrupted the program is ended too, and waited for: it may hold the database.
  * @param {readonly string[]} args
  * @param {AbortSignal} signal
  * @returns {Promise<number | null>} null when it was killed
@@ -114,11 +115,21 @@ function runNode(args, signal) {
       cwd: projectFolder,
       env: environmentOfTests(process.env),
       stdio: ['ignore', 'inherit', 'inherit'],
-      timeout: stepTimeoutMs,
-      signal,
     });
+    const kill = () => child.kill('SIGKILL');
+    const timers = [setTimeout(kill, stepTimeoutMs)];
+    const interrupt = () => {
+      child.kill('SIGTERM');
+      timers.push(setTimeout(kill, 10_000));
+    };
+    signal.addEventListener('abort', interrupt, { once: true });
     child.once('error', reject);
-    child.once('exit', resolve);
+    child.once('exit', (exitCode) => {
+      timers.forEach(clearTimeout);
+      signal.removeEventListener('abort', interrupt);
+      if (signal.aborted) reject(signal.reason);
+      else resolve(exitCode);
+    });
   });
 }
 

@@ -12,6 +12,8 @@ if (problem !== null) {
   // Loaded only now: an old Node version could not read these.
   void Promise.all([import('./command-line.mjs'), import('./run-tests.mjs')]).then(
     ([{ runCommandLine }, { runTests }]) =>
-      runCommandLine((lifetime) => runTests(lifetime, process.argv.slice(2))),
+      runCommandLine((lifetime) => runTests(lifetime, process.argv.slice(2)), {
+        whenInterrupted: 'Interrupted.',
+      }),
   );
 }

@@ -1,10 +1,11 @@
-import { readFileSync, rmSync, statSync, writeFileSync } from 'node:fs';
+import { existsSync, readFileSync, readdirSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
-import { afterAll, afterEach, expect, test } from 'vitest';
+import { afterAll, afterEach, beforeAll, expect, test } from 'vitest';
 import { stateFolder } from '../../../server/bootstrap/folders.mjs';
 import { withConnection } from '../../../server/bootstrap/postgres-access.mjs';
 import { acquireCluster } from '../../../server/bootstrap/postgres-cluster.mjs';
 import { outsideFolder } from '../../../server/bootstrap/postgres-folder.mjs';
+import { processStartTicks, processesWorkingIn } from '../../../server/bootstrap/processes.mjs';
 
 const name = `trial-${process.pid}`;
 const folders = [join(stateFolder, name), join(outsideFolder(name), '..')];
@@ -37,6 +38,18 @@ function killServer(): void {
   const [pid] = readFileSync(join(dataFolder(), 'postmaster.pid'), 'utf8').split('\n');
   process.kill(Number(pid), 'SIGKILL');
 }
+
+// A run that was killed in the middle of a test leaves its server at work.
+beforeAll(() => {
+  const trials = existsSync(stateFolder)
+    ? readdirSync(stateFolder).filter((each) => /^trial-\d+$/.test(each))
+    : [];
+  for (const trial of trials.filter((each) => processStartTicks(Number(each.split('-')[1])) === null)) {
+    const data = join(stateFolder, trial, 'postgres', 'data');
+    for (const pid of processesWorkingIn(data)) process.kill(pid, 'SIGKILL');
+    rmSync(join(stateFolder, trial), { recursive: true, force: true });
+  }
+});
 
 afterEach(async () => {
   for (const release of releases.splice(0)) await release();
