@@ -85,6 +85,8 @@ export interface FerruleGeometry {
 /** The tunnels of one association (or one bare tunnel) where they leave a ring. */
 export interface CombGroup {
   readonly jacket: string;
+  /** Counts the further jackets of one association that joins several pairs of endpoints; 0 or absent for the first. */
+  readonly part?: number;
   readonly end: EndName;
   /** Centre of the cuff, or of the cord where it is bare, and the direction away from the device. */
   readonly mouth: Point;
@@ -105,6 +107,8 @@ export interface RingGeometry {
 }
 
 export interface LabelGeometry {
+  readonly text: string;
+  /** On the baseline, at the text's start, middle or end as `anchor` says. */
   readonly at: Point;
   readonly anchor: 'start' | 'middle' | 'end';
   readonly rect: Rect;
@@ -120,14 +124,16 @@ export type Path = readonly PathStep[];
 
 export interface LaneGeometry {
   readonly tunnel: string;
-  /** Cuff to cuff, in the direction from a to b. */
+  /** Cuff to cuff, in the direction from the tunnel's own end a to its end b. */
   readonly path: Path;
-  /** Ferrule to cuff at each end. */
+  /** Ferrule to cuff at each end of the tunnel. */
   readonly tails: { readonly a: Path; readonly b: Path };
 }
 export interface JacketGeometry {
   /** An association's id, or a bare tunnel's. */
   readonly id: string;
+  /** Counts the further jackets of one association that joins several pairs of endpoints; 0 or absent for the first. */
+  readonly part?: number;
   readonly kind: 'jacket' | 'bare';
   readonly transport?: string;
   /** Centre line from mouth a to mouth b: corners in order, with their radii (one per inner corner). */

@@ -1,0 +1,312 @@
+import type { Side } from '../../engine/model/layout.ts';
+import type { Point, Rect } from '../geometry.ts';
+import type { Direction } from './a-star.ts';
+import { searchGrid, stepOf } from './a-star.ts';
+import { bandRects } from './bands.ts';
+import type { Cord, Corners, Ground, Mouth, Way } from './ground.ts';
+import { bandOf, foreignBands, isLevelRun, isOwn } from './ground.ts';
+import { bottom, centre, contains, grown, outward, overlap, right } from './rects.ts';
+
+const perPx = { ownBand: 1, open: 3 } as const;
+const times = { foreignSite: 5, foreignBand: 6, alongFixedRun: 6 } as const;
+const bendCost = 90;
+const crossingCost = 70;
+const windowReach = 420;
+const searchClearance = 12;
+const leastClearance = 4;
+
+const directionOf: { readonly [side in Side]: Direction } = { right: 0, bottom: 1, left: 2, top: 3 };
+
+/** A run of a cord that has its way already: crossing it costs, and so does running on top of it where it can't move. */
+export interface KnownRun {
+  readonly from: Point;
+  readonly to: Point;
+  readonly width: number;
+  readonly fixed: boolean;
+}
+
+/** The runs of ways found so far; the first and last of each are fixed by their mouths. */
+export const knownRuns = (ways: readonly Way[]): readonly KnownRun[] =>
+  ways
+    .filter((way) => way.found !== 'none')
+    .flatMap(({ cord, corners }) =>
+      corners.slice(1).map((to, i) => ({
+        from: corners[i]!,
+        to,
+        width: cord.width,
+        fixed: i === 0 || i === corners.length - 2,
+      })),
+    );
+
+/** How far a mouth can run straight out before it meets an obstacle. */
+const freeRun = (ground: Ground, mouth: Mouth, half: number): number => {
+  const out = outward[mouth.side];
+  let free = Infinity;
+  for (const obstacle of ground.obstacles) {
+    if (isOwn(obstacle, mouth)) continue;
+    const r = grown(obstacle.rect, leastClearance);
+    const level = out.x !== 0;
+    const besides = level
+      ? mouth.at.y + half <= r.y || mouth.at.y - half >= bottom(r)
+      : mouth.at.x + half <= r.x || mouth.at.x - half >= right(r);
+    if (besides) continue;
+    const near =
+      out.x > 0
+        ? r.x - mouth.at.x
+        : out.x < 0
+          ? mouth.at.x - right(r)
+          : out.y > 0
+            ? r.y - mouth.at.y
+            : mouth.at.y - bottom(r);
+    const far =
+      out.x > 0
+        ? right(r) - mouth.at.x
+        : out.x < 0
+          ? mouth.at.x - r.x
+          : out.y > 0
+            ? bottom(r) - mouth.at.y
+            : mouth.at.y - r.y;
+    if (far <= 0) continue;
+    free = Math.min(free, Math.max(0, near));
+  }
+  return free;
+};
+
+const stubOf = (ground: Ground, cord: Cord, mouth: Mouth): Point | undefined => {
+  const half = cord.width / 2;
+  const free = freeRun(ground, mouth, half);
+  if (free < half + cord.leastRadius) return undefined;
+  const reach = Math.max(cord.leastRadius + 2, Math.min(half + 22, free - half - searchClearance));
+  const out = outward[mouth.side];
+  return { x: mouth.at.x + out.x * reach, y: mouth.at.y + out.y * reach };
+};
+
+const sortedUnique = (values: readonly number[]): readonly number[] =>
+  [...values].sort((a, b) => a - b).filter((value, i, all) => i === 0 || value - all[i - 1]! > 0.01);
+
+/** Costs of every step of the grid, painted rectangle by rectangle. */
+class GridCosts {
+  readonly level: Float64Array;
+  readonly upright: Float64Array;
+  private readonly xs: readonly number[];
+  private readonly ys: readonly number[];
+
+  constructor(xs: readonly number[], ys: readonly number[]) {
+    this.xs = xs;
+    this.ys = ys;
+    this.level = new Float64Array(xs.length * ys.length);
+    this.upright = new Float64Array(xs.length * ys.length);
+    ys.forEach((y, row) =>
+      xs.forEach((x, column) => {
+        this.level[row * xs.length + column] = ((xs[column + 1] ?? x) - x) * perPx.open;
+        this.upright[row * xs.length + column] = ((ys[row + 1] ?? y) - y) * perPx.open;
+      }),
+    );
+  }
+
+  /** Multiplies what lies in a rectangle: by the middle of each step, or with `touch` by any contact. */
+  times(rect: Rect, factor: number, touch = false): void {
+    const { xs, ys } = this;
+    const inside = (value: number, from: number, to: number): boolean => value > from && value < to;
+    const spans = (a: number, b: number, from: number, to: number): boolean =>
+      touch ? a < to && b > from : inside((a + b) / 2, from, to);
+    for (let row = 0; row < ys.length; row += 1) {
+      const y = ys[row]!;
+      const levelHere = inside(y, rect.y, bottom(rect));
+      const uprightHere = row + 1 < ys.length && spans(y, ys[row + 1]!, rect.y, bottom(rect));
+      if (!levelHere && !uprightHere) continue;
+      for (let column = 0; column < xs.length; column += 1) {
+        const at = row * xs.length + column;
+        if (levelHere && column + 1 < xs.length && spans(xs[column]!, xs[column + 1]!, rect.x, right(rect)))
+          this.level[at]! *= factor;
+        if (uprightHere && inside(xs[column]!, rect.x, right(rect))) this.upright[at]! *= factor;
+      }
+    }
+  }
+
+  cross({ from, to }: KnownRun): void {
+    const { xs, ys } = this;
+    if (isLevelRun(from, to)) {
+      const [x0, x1] = [Math.min(from.x, to.x), Math.max(from.x, to.x)];
+      const row = ys.findIndex((y, i) => y < from.y && (ys[i + 1] ?? -Infinity) >= from.y);
+      if (row < 0) return;
+      xs.forEach((x, column) => {
+        if (x > x0 && x < x1) this.upright[row * xs.length + column]! += crossingCost;
+      });
+    } else {
+      const [y0, y1] = [Math.min(from.y, to.y), Math.max(from.y, to.y)];
+      const column = xs.findIndex((x, i) => x < from.x && (xs[i + 1] ?? -Infinity) >= from.x);
+      if (column < 0) return;
+      ys.forEach((y, row) => {
+        if (y > y0 && y < y1) this.level[row * xs.length + column]! += crossingCost;
+      });
+    }
+  }
+}
+
+interface Trial {
+  readonly clearance: number;
+  readonly window: Rect | undefined;
+}
+
+const attempt = (
+  ground: Ground,
+  cord: Cord,
+  stubs: readonly [Point, Point],
+  known: readonly KnownRun[],
+  avoided: readonly Rect[],
+  { clearance, window }: Trial,
+): Corners | undefined => {
+  const half = cord.width / 2;
+  const [p, q] = stubs;
+  const band = bandOf(ground, cord.transport);
+  const own = band === undefined ? [] : bandRects(band);
+  const within = (rect: Rect): boolean => window === undefined || overlap(window, rect);
+  const obstacles = ground.obstacles.filter((o) => within(o.rect));
+  const frames = ground.frames.filter((f) => within(f.rect));
+  const foreign = foreignBands(ground, cord.transport);
+  const xs: number[] = [p.x, q.x];
+  const ys: number[] = [p.y, q.y];
+  const lines = (rect: Rect, off: number): void => {
+    xs.push(rect.x - off, right(rect) + off);
+    ys.push(rect.y - off, bottom(rect) + off);
+  };
+  for (const { rect } of obstacles) lines(rect, half + clearance);
+  for (const { rect } of frames) lines(rect, half + clearance);
+  for (const rect of foreign) lines(rect, half + clearance);
+  for (const rect of own) {
+    const middle = centre(rect);
+    xs.push(middle.x);
+    ys.push(middle.y);
+  }
+  for (const run of known) {
+    if (!run.fixed) continue;
+    const off = half + run.width / 2 + 10;
+    for (const end of [p, q]) {
+      if (isLevelRun(run.from, run.to) && Math.abs(run.from.y - end.y) < 200)
+        ys.push(run.from.y - off, run.from.y + off);
+      if (!isLevelRun(run.from, run.to) && Math.abs(run.from.x - end.x) < 200)
+        xs.push(run.from.x - off, run.from.x + off);
+    }
+  }
+  const edge = grown(ground.sheet, 240);
+  const columns = sortedUnique(xs.filter((x) => x === p.x || x === q.x || (x > edge.x && x < right(edge))));
+  const rows = sortedUnique(ys.filter((y) => y === p.y || y === q.y || (y > edge.y && y < bottom(edge))));
+  const costs = new GridCosts(columns, rows);
+  for (const rect of own) costs.times(rect, perPx.ownBand / perPx.open);
+  for (const { site, rect } of frames)
+    if (site !== cord.a.site && site !== cord.b.site) costs.times(rect, times.foreignSite);
+  for (const rect of foreign) costs.times(rect, times.foreignBand);
+  for (const rect of avoided) costs.times(rect, times.alongFixedRun);
+  for (const run of known) {
+    costs.cross(run);
+    if (!run.fixed) continue;
+    const level = isLevelRun(run.from, run.to);
+    const reach = half + run.width / 2 + 3;
+    const along: Rect = {
+      x: Math.min(run.from.x, run.to.x) - (level ? 0 : reach),
+      y: Math.min(run.from.y, run.to.y) - (level ? reach : 0),
+      width: Math.abs(run.to.x - run.from.x) + (level ? 0 : 2 * reach),
+      height: Math.abs(run.to.y - run.from.y) + (level ? 2 * reach : 0),
+    };
+    costs.times(along, times.alongFixedRun);
+  }
+  for (const { rect } of obstacles) costs.times(grown(rect, half + clearance - 0.1), Infinity, true);
+
+  const columnOf = (x: number): number => columns.findIndex((value) => Math.abs(value - x) <= 0.01);
+  const rowOf = (y: number): number => rows.findIndex((value) => Math.abs(value - y) <= 0.01);
+  const inOwn = rows.map((y) =>
+    columns.map((x) => own.length === 0 || own.some((rect) => contains(rect, { x, y }))),
+  );
+  const way = searchGrid({
+    xs: columns,
+    ys: rows,
+    start: { column: columnOf(p.x), row: rowOf(p.y), direction: directionOf[cord.a.side] },
+    goal: {
+      column: columnOf(q.x),
+      row: rowOf(q.y),
+      direction: ((directionOf[cord.b.side] + 2) % 4) as Direction,
+    },
+    cost: (column, row, direction) => {
+      const [dx, dy] = stepOf[direction];
+      const at = (row + Math.min(0, dy)) * columns.length + column + Math.min(0, dx);
+      const cost = dx === 0 ? costs.upright[at]! : costs.level[at]!;
+      return Number.isFinite(cost) ? cost : Infinity;
+    },
+    fulfils: (column, row, direction) => {
+      const [dx, dy] = stepOf[direction];
+      return inOwn[row]![column]! || inOwn[row + dy]![column + dx]!;
+    },
+    bendCost,
+    leastCostPerPx: own.length === 0 ? perPx.open : perPx.ownBand,
+  });
+  if (way === undefined) return undefined;
+  return withoutIdlePoints([
+    cord.a.at,
+    ...way.map(({ column, row }) => ({ x: columns[column]!, y: rows[row]! })),
+    cord.b.at,
+  ]);
+};
+
+/** Leaves out points in the middle of a straight run. */
+export const withoutIdlePoints = (corners: Corners): Corners => {
+  const kept: Point[] = [];
+  for (const point of corners) {
+    const last = kept.at(-1);
+    if (last !== undefined && Math.abs(last.x - point.x) < 0.01 && Math.abs(last.y - point.y) < 0.01)
+      continue;
+    const before = kept.at(-2);
+    if (
+      last !== undefined &&
+      before !== undefined &&
+      ((Math.abs(before.x - last.x) < 0.01 && Math.abs(last.x - point.x) < 0.01) ||
+        (Math.abs(before.y - last.y) < 0.01 && Math.abs(last.y - point.y) < 0.01))
+    )
+      kept.pop();
+    kept.push(point);
+  }
+  return kept;
+};
+
+/** The cheapest way round whatever stands between two mouths and through their own band; undefined where there is none. */
+export const detour = (
+  ground: Ground,
+  cord: Cord,
+  known: readonly KnownRun[],
+  avoided: readonly Rect[] = [],
+): Corners | undefined => {
+  const p = stubOf(ground, cord, cord.a);
+  const q = stubOf(ground, cord, cord.b);
+  if (p === undefined || q === undefined) return undefined;
+  const band = bandOf(ground, cord.transport);
+  const points = [cord.a.at, cord.b.at];
+  const x0 = Math.min(...points.map((point) => point.x));
+  const x1 = Math.max(...points.map((point) => point.x));
+  const y0 = Math.min(...points.map((point) => point.y));
+  const y1 = Math.max(...points.map((point) => point.y));
+  const nearest =
+    band === undefined
+      ? undefined
+      : [...bandRects(band)].sort(
+          (r, s) => Math.abs(centre(r).x - (x0 + x1) / 2) - Math.abs(centre(s).x - (x0 + x1) / 2),
+        )[0];
+  const window = grown(
+    {
+      x: Math.min(x0, nearest?.x ?? x0),
+      y: y0,
+      width: Math.max(x1, nearest === undefined ? x1 : right(nearest)) - Math.min(x0, nearest?.x ?? x0),
+      height: y1 - y0,
+    },
+    windowReach,
+  );
+  const trials: readonly Trial[] = [
+    { clearance: searchClearance, window },
+    { clearance: searchClearance, window: undefined },
+    { clearance: leastClearance, window: undefined },
+  ];
+  for (const trial of trials) {
+    const found = attempt(ground, cord, [p, q], known, avoided, trial);
+    if (found !== undefined) return found;
+  }
+  return undefined;
+};

@@ -1,0 +1,96 @@
+import type { Side } from '../../engine/model/layout.ts';
+import type { Point, Rect } from '../geometry.ts';
+import type { BandPlace } from './bands.ts';
+import { bandRects } from './bands.ts';
+import { overlap, runRect } from './rects.ts';
+
+/** Something no cord may cross: a plate, a comb, the title block or the legend. `owner` is the device it belongs to. */
+export interface Obstacle {
+  readonly rect: Rect;
+  readonly owner?: string;
+  /** The endpoint whose comb it is. */
+  readonly endpoint?: string;
+}
+export interface SiteFrame {
+  readonly site: string;
+  readonly rect: Rect;
+}
+
+/** What cords find on their way. */
+export interface Ground {
+  readonly sheet: Rect;
+  readonly obstacles: readonly Obstacle[];
+  readonly frames: readonly SiteFrame[];
+  readonly bands: readonly BandPlace[];
+}
+
+/** Where a cord begins, with the direction away from its device. */
+export interface Mouth {
+  readonly at: Point;
+  readonly side: Side;
+  readonly endpoint: string;
+  readonly device: string;
+  readonly site: string;
+}
+
+/** One jacket or bare cord on its way from mouth to mouth. */
+export interface Cord {
+  readonly key: string;
+  readonly transport?: string;
+  readonly width: number;
+  readonly leastRadius: number;
+  readonly a: Mouth;
+  readonly b: Mouth;
+}
+
+/** Corners from mouth a to mouth b; every run level or upright. */
+export type Corners = readonly Point[];
+
+/** A cord with the way it takes. */
+export interface Way {
+  readonly cord: Cord;
+  readonly corners: Corners;
+  /** How it was found: a plain pattern, a search round obstacles, or not at all. */
+  readonly found: 'pattern' | 'search' | 'none';
+}
+
+export const isLevelRun = (p: Point, q: Point): boolean => Math.abs(p.y - q.y) <= Math.abs(p.x - q.x);
+
+export const bandOf = (ground: Ground, transport: string | undefined): BandPlace | undefined =>
+  ground.bands.find((band) => band.id === transport);
+
+/** Bands of other transports. */
+export const foreignBands = (ground: Ground, transport: string | undefined): readonly Rect[] =>
+  ground.bands.filter((band) => band.id !== transport).flatMap(bandRects);
+
+/** Whether a cord's own comb and plate may touch its first run; nobody else's may. */
+export const isOwn = (obstacle: Obstacle, mouth: Mouth): boolean => obstacle.endpoint === mouth.endpoint;
+
+/** True when a run, taken at half a width to either side, comes nearer than `clear` to an obstacle it does not belong to. */
+export const runIsBlocked = (
+  ground: Ground,
+  p: Point,
+  q: Point,
+  half: number,
+  clear: number,
+  own?: (obstacle: Obstacle) => boolean,
+): boolean => {
+  const room = runRect(p, q, half + clear);
+  return ground.obstacles.some((obstacle) => overlap(obstacle.rect, room) && !(own?.(obstacle) ?? false));
+};
+
+/** True when any run of a way passes over an obstacle. */
+export const wayIsBlocked = (ground: Ground, way: Pick<Way, 'cord' | 'corners'>, clear = 0): boolean => {
+  const { cord, corners } = way;
+  const half = cord.width / 2 + clear;
+  for (let i = 0; i + 1 < corners.length; i += 1) {
+    const p = corners[i]!;
+    const q = corners[i + 1]!;
+    const own = (obstacle: Obstacle): boolean =>
+      (i === 0 && isOwn(obstacle, cord.a)) || (i === corners.length - 2 && isOwn(obstacle, cord.b));
+    const inner = i > 0 && i < corners.length - 2;
+    const room = runRect(p, q, half, inner ? half - 1 : 0);
+    if (ground.obstacles.some((o) => overlap(o.rect, room) && !own(o))) return true;
+  }
+  return false;
+};

@@ -1,0 +1,185 @@
+import type { Rect } from '../geometry.ts';
+import type { BandPlace } from './bands.ts';
+import { meetings } from './corners.ts';
+import type { WayCrossing, WayOverlap } from './corners.ts';
+import { detour, knownRuns, withoutIdlePoints } from './detour.ts';
+import type { Cord, Ground, Way } from './ground.ts';
+import { wayIsBlocked } from './ground.ts';
+import { patternWay } from './patterns.ts';
+import { bottom, byText, grown, right, runRect } from './rects.ts';
+import { settleTracks } from './tracks.ts';
+import type { TrackedWays } from './tracks.ts';
+
+const mostRipUps = 6;
+const mostWidenings = 3;
+const bandToFrame = 20;
+
+export interface RoutedCords {
+  readonly ways: readonly Way[];
+  readonly bands: readonly BandPlace[];
+  readonly crossings: readonly WayCrossing[];
+  readonly overlaps: readonly WayOverlap[];
+  readonly tracked: TrackedWays;
+}
+
+/** Patterns first, then a search for each cord that has none, in the order of their keys. */
+const firstWays = (
+  ground: Ground,
+  cords: readonly Cord[],
+  avoided: ReadonlyMap<string, readonly Rect[]>,
+): readonly Way[] => {
+  const ways = new Map<string, Way>();
+  for (const cord of cords) {
+    if (avoided.has(cord.key)) continue;
+    const corners = patternWay(ground, cord);
+    if (corners !== undefined) ways.set(cord.key, { cord, corners, found: 'pattern' });
+  }
+  for (const cord of cords) {
+    if (ways.has(cord.key)) continue;
+    const corners = detour(ground, cord, knownRuns([...ways.values()]), avoided.get(cord.key));
+    ways.set(
+      cord.key,
+      corners === undefined
+        ? { cord, corners: [cord.a.at, cord.b.at], found: 'none' }
+        : { cord, corners, found: 'search' },
+    );
+  }
+  return cords.map((cord) => ways.get(cord.key)!);
+};
+
+/** Bands grown to what is packed in them, as far as the neighbouring frames leave room. */
+const widened = (ground: Ground, needs: ReadonlyMap<string, number>): readonly BandPlace[] | undefined => {
+  let changed = false;
+  const bands = ground.bands.map((band): BandPlace => {
+    const level = band.orientation === 'horizontal';
+    const widen = (rect: Rect): Rect => {
+      const need = needs.get(`${band.id} ${rect.x} ${rect.y}`) ?? 0;
+      const across = level ? rect.height : rect.width;
+      if (need <= across + 0.5) return rect;
+      const blockers = [
+        ...ground.frames.map((frame) => frame.rect),
+        ...ground.bands.filter((other) => other !== band).flatMap((other) => other.limbs),
+      ].filter((r) =>
+        level ? r.x < right(rect) && right(r) > rect.x : r.y < bottom(rect) && bottom(r) > rect.y,
+      );
+      const [start, end] = level ? [rect.y, bottom(rect)] : [rect.x, right(rect)];
+      const sheet = level ? [ground.sheet.y, bottom(ground.sheet)] : [ground.sheet.x, right(ground.sheet)];
+      const before = Math.max(
+        sheet[0]!,
+        ...blockers
+          .map((r) => (level ? bottom(r) : right(r)) + bandToFrame)
+          .filter((v) => v <= start + bandToFrame),
+      );
+      const after = Math.min(
+        sheet[1]!,
+        ...blockers.map((r) => (level ? r.y : r.x) - bandToFrame).filter((v) => v >= end - bandToFrame),
+      );
+      const half = (need - across) / 2;
+      const from = Math.min(start, Math.max(before, start - half));
+      const to = Math.max(end, Math.min(after, end + half));
+      if (to - from <= across + 0.5) return rect;
+      changed = true;
+      return level ? { ...rect, y: from, height: to - from } : { ...rect, x: from, width: to - from };
+    };
+    return { ...band, limbs: band.limbs.map(widen) };
+  });
+  return changed ? bands : undefined;
+};
+
+interface State {
+  readonly ground: Ground;
+  readonly tracked: TrackedWays;
+  readonly ways: readonly Way[];
+  readonly crossings: readonly WayCrossing[];
+  readonly overlaps: readonly WayOverlap[];
+  readonly blocked: readonly number[];
+}
+
+const settle = (
+  start: Ground,
+  cords: readonly Cord[],
+  avoided: ReadonlyMap<string, readonly Rect[]>,
+): State => {
+  let ground = start;
+  for (let round = 0; ; round += 1) {
+    const tracked = settleTracks(ground, firstWays(ground, cords, avoided));
+    const wider = round < mostWidenings ? widened(ground, tracked.needs) : undefined;
+    if (wider !== undefined) {
+      ground = { ...ground, bands: wider };
+      continue;
+    }
+    const ways = tracked.ways.map((way) =>
+      way.found === 'none'
+        ? way
+        : {
+            ...way,
+            corners: withoutIdlePoints(
+              way.corners.map(({ x, y }) => ({ x: Math.round(x * 2) / 2, y: Math.round(y * 2) / 2 })),
+            ),
+          },
+    );
+    const blocked = ways.flatMap((way, i) =>
+      way.found !== 'none' && wayIsBlocked(ground, way, -0.75) ? [i] : [],
+    );
+    return { ground, tracked, ways, ...meetings(ways), blocked };
+  }
+};
+
+const badness = ({ overlaps, blocked, crossings, tracked, ways }: State): number =>
+  50 * overlaps.length +
+  200 * blocked.length +
+  150 * ways.filter((way) => way.found === 'none').length +
+  crossings.length +
+  4 * tracked.tight;
+
+/** Which of two overlapping ways gives in: an inner run before one at a mouth, a searched way before a pattern. */
+const lessBound = (
+  state: State,
+  { ways, runs }: WayOverlap,
+): { readonly way: number; readonly run: number } => {
+  const weight = (way: number, run: number): number => {
+    const w = state.ways[way]!;
+    const atMouth = run === 0 || run === w.corners.length - 2;
+    return (atMouth ? 2 : 0) + (w.found === 'pattern' ? 1 : 0);
+  };
+  const [a, b] = ways;
+  const [p, q] = runs;
+  const keep = weight(a, p) - weight(b, q) || byText(state.ways[b]!.cord.key, state.ways[a]!.cord.key);
+  return keep > 0 ? { way: b, run: q } : { way: a, run: p };
+};
+
+/**
+ * A way for every cord. Where some overlap or run into an obstacle, the less bound ones are taken up and searched anew,
+ * and the best state found is kept; what still can't pass gets no way at all rather than one across a plate.
+ */
+export const routeCords = (start: Ground, cords: readonly Cord[]): RoutedCords => {
+  let avoided = new Map<string, readonly Rect[]>();
+  let state = settle(start, cords, avoided);
+  let best = state;
+  for (let round = 0; round < mostRipUps; round += 1) {
+    if (state.overlaps.length === 0 && state.blocked.length === 0) break;
+    const next = new Map(avoided);
+    const avoid = (way: number, run: number, width: number): void => {
+      const { cord, corners } = state.ways[way]!;
+      const rect = grown(runRect(corners[run]!, corners[run + 1]!, width), 0);
+      next.set(cord.key, [...(next.get(cord.key) ?? []), rect]);
+    };
+    for (const pair of state.overlaps) {
+      const { way, run } = lessBound(state, pair);
+      const other = pair.ways[0] === way ? pair.ways[1] : pair.ways[0];
+      avoid(way, run, (state.ways[way]!.cord.width + state.ways[other]!.cord.width) / 2);
+    }
+    for (const way of state.blocked)
+      for (let run = 1; run < state.ways[way]!.corners.length - 2; run += 1)
+        avoid(way, run, state.ways[way]!.cord.width / 2 + 2);
+    avoided = next;
+    state = settle(start, cords, avoided);
+    if (badness(state) < badness(best)) best = state;
+  }
+  const ways = best.ways.map((way, i): Way =>
+    best.blocked.includes(i)
+      ? { cord: way.cord, corners: [way.cord.a.at, way.cord.b.at], found: 'none' }
+      : way,
+  );
+  return { ways, bands: best.ground.bands, ...meetings(ways), tracked: best.tracked };
+};

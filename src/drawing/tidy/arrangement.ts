@@ -1,0 +1,216 @@
+import type { Design } from '../../engine/model/design.ts';
+import type { SheetSize } from '../../engine/model/layout.ts';
+import type { Rect, SheetFrame } from '../geometry.ts';
+import { band as bandSizes, bareWidth, gutter, jacketWidth } from '../parts/sizes.ts';
+import { bandFoot } from '../routing/bands.ts';
+import { bundlesOf } from '../routing/bundles.ts';
+import { bottom, right } from '../routing/rects.ts';
+import { laneCount } from '../routing/ring-seats.ts';
+import { sheetFrame } from '../routing/sheet-frame.ts';
+import type { SiteBlock } from './site-block.ts';
+import type { SiteGraphFacts } from './site-graph.ts';
+import type { Level } from './site-parts.ts';
+
+export interface Seating {
+  /** Sites of each column from the left; columns 2j and 2j + 1 lie left and right of limb j of the main band. */
+  readonly columns: readonly (readonly string[])[];
+  /** Columns right of each further transport's band, in the order of the transports. */
+  readonly further: readonly (readonly string[])[];
+}
+
+export interface Arrangement {
+  readonly size: SheetSize;
+  readonly sheet: SheetFrame;
+  readonly sites: ReadonlyMap<string, Rect>;
+  readonly bands: ReadonlyMap<string, { readonly limbs: readonly Rect[]; readonly header?: Rect }>;
+  readonly seating: Seating;
+}
+
+/** What routing reported back: how wide each transport's limbs and header have to be. */
+export type BandWidths = ReadonlyMap<string, number>;
+
+export const widthOfBand = (design: Design, transport: string, widths: BandWidths): number =>
+  Math.max(
+    widths.get(transport) ?? 0,
+    design.transports[transport]?.trusted === true ? bandSizes.trustedWidth : bandSizes.width,
+  );
+
+const edgeRoom = 16;
+const backToBack = 40;
+const leastGap = 16;
+const mostGap = 60;
+const footRoom = 14;
+const headerGap = 12;
+
+export const facingOf = (column: number): Level => (column % 2 === 0 ? 'right' : 'left');
+
+export interface ArrangementOptions {
+  readonly design: Design;
+  readonly facts: SiteGraphFacts;
+  readonly size: SheetSize;
+  readonly seating: Seating;
+  readonly blockOf: (site: string, facing: Level) => SiteBlock;
+  readonly widths: BandWidths;
+  /** All right columns are moved down by this much, so that runs of both sides don't meet. */
+  readonly stagger?: number;
+  /** Answer even when the sheet is too small. */
+  readonly force?: boolean;
+}
+
+/** Lays columns of sites and the bands between them on one sheet; undefined when they don't fit. */
+export const arrange = (options: ArrangementOptions): Arrangement | undefined => {
+  const { design, facts, size, seating, blockOf, widths } = options;
+  const stagger = options.stagger ?? 0;
+  const sheet = sheetFrame(size, Object.keys(design.segments).length);
+  const limbs = seating.columns.length / 2;
+  const [main, ...others] = facts.transports;
+  const mainWidth = main === undefined ? 0 : widthOfBand(design, main, widths);
+  const topHeader = limbs > 1 && main !== undefined ? mainWidth : 0;
+  const inLeft = new Set(seating.columns[0]);
+  // A further transport with members left of the first limb reaches round under the columns.
+  const reaching = others.filter((t) =>
+    [...inLeft].some((site) => facts.landedOn.get(site)?.has(t) ?? false),
+  );
+  const headers = reaching.map((t) => ({ transport: t, height: widthOfBand(design, t, widths) }));
+  const headersHeight = headers.reduce((sum, h) => sum + h.height + headerGap, 0);
+
+  const top = sheet.frame.y + edgeRoom + topHeader + (topHeader > 0 ? footRoom : 0);
+  const foot = bottom(sheet.frame) - Math.max(sheet.titleBlock.height, sheet.legend.height) - footRoom;
+  const columnFoot = foot - headersHeight - (headersHeight > 0 ? footRoom - headerGap : 0);
+  const room = columnFoot - top;
+
+  interface Column {
+    readonly sites: readonly string[];
+    readonly facing: Level;
+    readonly width: number;
+    readonly height: number;
+  }
+  const columnOf = (sites: readonly string[], facing: Level): Column => {
+    const blocks = sites.map((site) => blockOf(site, facing).size);
+    return {
+      sites,
+      facing,
+      width: Math.max(0, ...blocks.map((block) => block.width)),
+      height:
+        blocks.reduce((sum, block) => sum + block.height, 0) + leastGap * Math.max(0, blocks.length - 1),
+    };
+  };
+  const columns = seating.columns.map((sites, i) => columnOf(sites, facingOf(i)));
+  const further = seating.further.map((sites) => columnOf(sites, 'left'));
+  const gutters = headers.map(({ transport }) => 40 + reachWidth(design, transport, inLeft));
+  const leftGutter = gutter + gutters.reduce((sum, w) => sum + w, 0);
+
+  let width = 0;
+  columns.forEach((column, i) => {
+    const isLeft = i % 2 === 0;
+    width += column.width;
+    if (i > 0 && isLeft && column.width > 0 && columns[i - 1]!.width > 0) width += backToBack;
+    if (isLeft) width += (i === 0 ? leftGutter : gutter) + mainWidth + gutter;
+  });
+  others.forEach((t, i) => {
+    width +=
+      gutter + widthOfBand(design, t, widths) + (further[i]!.width > 0 ? gutter + further[i]!.width : 0);
+  });
+  const all = [...columns, ...further];
+  const tooHigh = all.some((column) => column.height > room);
+  const tooWide = width > sheet.frame.width - 2 * edgeRoom;
+  if ((tooHigh || tooWide) && options.force !== true) return undefined;
+
+  const sites = new Map<string, Rect>();
+  const stand = (column: Column, x: number, down: number): boolean => {
+    const n = column.sites.length;
+    const spare = room - column.height;
+    const gap = n < 2 ? 0 : Math.min(mostGap, Math.max(leastGap, leastGap + spare / (n + 1)));
+    const total = column.height + (gap - leastGap) * Math.max(0, n - 1);
+    let y = Math.round(top + Math.max(0, (room - total) / 2) + down);
+    const start = y;
+    for (const site of column.sites) {
+      const block = blockOf(site, column.facing).size;
+      sites.set(site, {
+        x: Math.round(column.facing === 'right' ? x + column.width - block.width : x),
+        y,
+        width: block.width,
+        height: block.height,
+      });
+      y = Math.round(y + block.height + gap);
+    }
+    return n === 0 || (start >= top - 0.5 && y - gap <= columnFoot + 0.5);
+  };
+
+  let x = Math.round(sheet.frame.x + Math.max(edgeRoom, (sheet.frame.width - width) / 2));
+  const mainLimbs: { x: number }[] = [];
+  let firstGutter = x;
+  let fits = true;
+  columns.forEach((column, i) => {
+    const isLeft = i % 2 === 0;
+    if (i > 0 && isLeft && column.width > 0 && columns[i - 1]!.width > 0) x += backToBack;
+    fits = stand(column, x, isLeft ? 0 : stagger) && fits;
+    x += column.width;
+    if (!isLeft) return;
+    if (i === 0) firstGutter = x;
+    x += i === 0 ? leftGutter : gutter;
+    mainLimbs.push({ x });
+    x += mainWidth + gutter;
+  });
+  if (!fits && options.force !== true) return undefined;
+
+  const bands = new Map<string, { limbs: readonly Rect[]; header?: Rect }>();
+  const limbAt = (at: number, w: number, until?: number): Rect => {
+    const y = sheet.frame.y;
+    return { x: at, y, width: w, height: (until ?? bandFoot(sheet, at, w)) - y };
+  };
+  const headersTop = foot - headersHeight;
+  if (main !== undefined) {
+    const until = headers.length > 0 ? headersTop : undefined;
+    const rects = mainLimbs.map((limb) => limbAt(limb.x, mainWidth, until));
+    const last = rects.at(-1)!;
+    bands.set(main, {
+      limbs: rects,
+      ...(limbs > 1
+        ? {
+            header: {
+              x: rects[0]!.x,
+              y: sheet.frame.y,
+              width: right(last) - rects[0]!.x,
+              height: topHeader,
+            },
+          }
+        : {}),
+    });
+  }
+  let headerY = headersTop + headerGap;
+  others.forEach((t, i) => {
+    const w = widthOfBand(design, t, widths);
+    x += gutter;
+    const header = headers.find((h) => h.transport === t);
+    if (header === undefined) bands.set(t, { limbs: [limbAt(x, w)] });
+    else {
+      const start = firstGutter + gutter / 2;
+      bands.set(t, {
+        limbs: [limbAt(x, w, headerY + header.height)],
+        header: { x: start, y: headerY, width: x + w - start, height: header.height },
+      });
+      headerY += header.height + headerGap;
+    }
+    x += w;
+    const column = further[i]!;
+    if (column.width === 0) return;
+    x += gutter;
+    fits = stand(column, x, 0) && fits;
+    x += column.width;
+  });
+  return fits || options.force === true ? { size, sheet, sites, bands, seating } : undefined;
+};
+
+/** Room in the first gutter for the cords that go round the first limb to a further transport. */
+const reachWidth = (design: Design, transport: string, left: ReadonlySet<string>): number =>
+  bundlesOf(design)
+    .filter(
+      (bundle) =>
+        bundle.transport === transport &&
+        [bundle.a, bundle.b].some((end) => left.has(design.devices[end.device]?.site ?? '')),
+    )
+    .reduce(
+      (sum, bundle) => sum + 14 + (bundle.kind === 'bare' ? bareWidth : jacketWidth(laneCount(bundle))),
+      0,
+    );

@@ -1,0 +1,228 @@
+import type { Design } from '../../engine/model/design.ts';
+import type { Layout, SheetSize } from '../../engine/model/layout.ts';
+import { sheetSizes } from '../../engine/model/layout.ts';
+import { diffPatch } from '../../engine/model/merge-patch.ts';
+import type { MergePatch } from '../../engine/model/merge-patch.ts';
+import type { Point } from '../geometry.ts';
+import type { Size } from '../parts/sizes.ts';
+import { band as bandSizes } from '../parts/sizes.ts';
+import { bundlesOf } from '../routing/bundles.ts';
+import { byText } from '../routing/rects.ts';
+import { routeSheet } from '../routing/route.ts';
+import type { RoutedSheet } from '../routing/route.ts';
+import { sheetFrame } from '../routing/sheet-frame.ts';
+import type { Arrangement, Seating } from './arrangement.ts';
+import { arrange } from './arrangement.ts';
+import { refine, scoreOf } from './refine.ts';
+import { seatings } from './seatings.ts';
+import type { SiteBlock } from './site-block.ts';
+import { columnsBlock, mirrored, rowBlock, sizeOfDevice, stackBlock } from './site-block.ts';
+import type { SiteGraphFacts } from './site-graph.ts';
+import { siteGraphFacts } from './site-graph.ts';
+import type { CombNeed, Level } from './site-parts.ts';
+import { combNeedOf, sitePartsOf } from './site-parts.ts';
+
+/** A site laid out elsewhere, facing right: positions from its frame's top left corner. */
+export interface SiteLayout {
+  readonly positions: { readonly [device: string]: Point };
+  readonly size: Size;
+}
+export interface TidyOptions {
+  /** Layouts computed for the sites that `unusualSites` names. */
+  readonly siteLayouts?: { readonly [site: string]: SiteLayout };
+}
+
+const mostLimbs = 4;
+const mostWidthRounds = 4;
+const collapseOver = 24;
+
+/** Blocks of all sites for either facing; each is built once. */
+const blocksOf = (
+  design: Design,
+  facts: SiteGraphFacts,
+  options: TidyOptions,
+): {
+  readonly blockOf: (site: string, facing: Level) => SiteBlock;
+  readonly collapsed: ReadonlySet<string>;
+} => {
+  const parts = sitePartsOf(design);
+  const bundles = bundlesOf(design);
+  const collapses = parts.size > collapseOver;
+  const collapsed = new Set(
+    [...parts.values()]
+      .filter((site) =>
+        collapses
+          ? site.shape === 'stack' && site.hosts.length + site.switches.length > 0
+          : design.layout.sites?.[site.id]?.collapsed === true && site.shape === 'stack',
+      )
+      .map((site) => site.id),
+  );
+  const known = new Map<string, SiteBlock>();
+  const build = (id: string, facing: Level): SiteBlock => {
+    const site = parts.get(id)!;
+    // A further transport's band lies right of everything; whoever stands on its far side looks left at it.
+    const sideOf = (transport: string | undefined): Level =>
+      transport === undefined || transport === facts.main || isHome(facts, id, transport) ? facing : 'right';
+    const needOf = (device: string): CombNeed => combNeedOf(design, device, bundles, sideOf);
+    const given = options.siteLayouts?.[id];
+    if (site.shape === 'stack') return stackBlock(site, needOf(site.gateways[0]![0]), collapsed.has(id));
+    if (site.shape === 'row') {
+      const need = needOf(site.gateways[0]![0]);
+      // All rings of a pair dock on its one bracket.
+      const widest = Math.max(need.ferruleWidth.left, need.ferruleWidth.right);
+      return rowBlock(site, { ...need, ferruleWidth: { left: widest, right: widest } }, facing);
+    }
+    if (given === undefined) return columnsBlock(site, needOf, facing);
+    const block: SiteBlock = { positions: new Map(Object.entries(given.positions)), size: given.size };
+    return facing === 'right'
+      ? block
+      : mirrored(block, (device) => sizeOfDevice(design.devices[device]!).width);
+  };
+  return {
+    collapsed,
+    blockOf: (site, facing) => {
+      const key = `${facing} ${site}`;
+      const before = known.get(key);
+      if (before !== undefined) return before;
+      const block = build(site, facing);
+      known.set(key, block);
+      return block;
+    },
+  };
+};
+
+const isHome = (facts: SiteGraphFacts, site: string, transport: string): boolean =>
+  facts.main !== undefined &&
+  !(facts.landedOn.get(site)?.has(facts.main) ?? false) &&
+  (facts.landedOn.get(site)?.has(transport) ?? false);
+
+/** The layout that an arrangement stands for; what a person locked keeps its place. */
+const layoutOf = (
+  design: Design,
+  arrangement: Arrangement,
+  blockOf: (site: string, facing: Level) => SiteBlock,
+  collapsed: ReadonlySet<string>,
+): Layout => {
+  const facing = new Map<string, Level>();
+  arrangement.seating.columns.forEach((sites, i) =>
+    sites.forEach((site) => facing.set(site, i % 2 === 0 ? 'right' : 'left')),
+  );
+  arrangement.seating.further.forEach((sites) => sites.forEach((site) => facing.set(site, 'left')));
+  const before = design.layout;
+  const sites: NonNullable<Layout['sites']> = {};
+  const devices: NonNullable<Layout['devices']> = {};
+  for (const [id, rect] of [...arrangement.sites].sort(([a], [b]) => byText(a, b))) {
+    const was = before.sites?.[id];
+    const block = blockOf(id, facing.get(id)!);
+    if (was?.locked === true) sites[id] = was;
+    else sites[id] = { ...rect, ...(collapsed.has(id) ? { collapsed: true } : {}) };
+    for (const [device, at] of block.positions) {
+      const own = before.devices?.[device];
+      devices[device] =
+        own?.locked === true || was?.locked === true
+          ? (own ?? { x: rect.x + at.x, y: rect.y + at.y })
+          : { x: Math.round((rect.x + at.x) * 2) / 2, y: Math.round((rect.y + at.y) * 2) / 2 };
+    }
+    if (collapsed.has(id))
+      for (const [device, { site }] of Object.entries(design.devices))
+        if (site === id && devices[device] === undefined)
+          devices[device] = before.devices?.[device] ?? { x: rect.x + 40, y: rect.y + rect.height };
+  }
+  const transports: NonNullable<Layout['transports']> = {};
+  for (const [id, { limbs, header }] of arrangement.bands) {
+    const was = before.transports?.[id];
+    transports[id] =
+      was?.locked === true
+        ? { ...was, limbs: was.limbs.map((limb) => ({ ...limb })) }
+        : {
+            limbs: limbs.map((limb) => ({ ...limb })),
+            ...(header === undefined ? {} : { header: { ...header } }),
+          };
+  }
+  return {
+    sheet: arrangement.size,
+    sites,
+    devices,
+    transports,
+    ...(before.notes === undefined ? {} : { notes: before.notes }),
+  };
+};
+
+interface Tidied {
+  readonly layout: Layout;
+  readonly arrangement: Arrangement;
+  readonly routed: RoutedSheet;
+}
+
+/** The design with another layout. */
+export const withLayout = (design: Design, layout: Layout): Design => ({ ...design, layout });
+
+/**
+ * Lays out the whole sheet and answers the patch on the design that does it: sites in columns along their transports'
+ * bands, on the smallest sheet that holds them. The same design gives the same layout, whatever it looked like before;
+ * only what a person locked or collapsed stays.
+ */
+export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
+  const facts = siteGraphFacts(design);
+  const { blockOf, collapsed } = blocksOf(design, facts, options);
+  const heightOf = (site: string): number => blockOf(site, 'left').size.height + 16;
+
+  const attempt = (
+    size: SheetSize,
+    seating: Seating,
+    stagger: number,
+    force: boolean,
+  ): Tidied | undefined => {
+    let widths = new Map<string, number>();
+    for (let round = 0; ; round += 1) {
+      const arrangement = arrange({ design, facts, size, seating, blockOf, widths, stagger, force });
+      if (arrangement === undefined) return undefined;
+      const layout = layoutOf(design, arrangement, blockOf, collapsed);
+      const routed = routeSheet(withLayout(design, layout));
+      const wider = new Map(widths);
+      for (const [key, need] of routed.cords.tracked.needs) {
+        const transport = key.slice(0, key.lastIndexOf(' ', key.lastIndexOf(' ') - 1));
+        if (need > (wider.get(transport) ?? 0)) wider.set(transport, Math.ceil(need / 2) * 2);
+      }
+      const settled = [...wider].every(([t, w]) => {
+        const laid = arrangement.bands.get(t);
+        return laid === undefined || w <= laid.limbs[0]!.width + 0.5;
+      });
+      if (settled || round === mostWidthRounds - 1) return { layout, arrangement, routed };
+      widths = wider;
+    }
+  };
+
+  const find = (): { readonly tidied: Tidied; readonly again: (stagger: number) => Tidied | undefined } => {
+    for (const size of sheetSizes)
+      for (let limbs = 1; limbs <= mostLimbs; limbs += 1)
+        for (const seating of seatings(facts, limbs, heightOf, roomOn(design, size, limbs))) {
+          const tidied = attempt(size, seating, 0, false);
+          if (tidied !== undefined)
+            return { tidied, again: (stagger) => attempt(size, seating, stagger, false) };
+        }
+    const last = sheetSizes.at(-1)!;
+    const seating = seatings(facts, mostLimbs, heightOf, roomOn(design, last, mostLimbs)).at(-1)!;
+    return {
+      tidied: attempt(last, seating, 0, true)!,
+      again: (stagger) => attempt(last, seating, stagger, true),
+    };
+  };
+  const { tidied, again } = find();
+  const candidates = [tidied];
+  if (scoreOf(tidied.routed).steps > 0)
+    for (const step of [16, 24, 32, 44, 58])
+      for (const stagger of [step, -step]) {
+        const other = again(stagger);
+        if (other !== undefined) candidates.push(other);
+      }
+  const best = candidates.reduce((a, b) => (scoreOf(b.routed).total < scoreOf(a.routed).total ? b : a));
+  const layout = refine(design, best.layout);
+  return diffPatch({ layout: design.layout }, { layout });
+};
+
+/** Height that a column may take on a sheet, to fill columns evenly. */
+const roomOn = (design: Design, size: SheetSize, limbs: number): number => {
+  const { frame, legend } = sheetFrame(size, Object.keys(design.segments).length);
+  return frame.height - 16 - legend.height - 14 - (limbs > 1 ? bandSizes.width + 14 : 0);
+};
