@@ -46,7 +46,7 @@ export default {
       base: ['13px', '18px'],
       value: ['13.5px', { lineHeight: '18px', fontWeight: '500' }],
       section: ['15px', '20px'],
-      panel: ['17px', { lineHeight: '22px', fontWeight: '600' }],
+      title: ['17px', { lineHeight: '22px', fontWeight: '600' }],
       page: ['24px', '30px'],
       line: ['31px', '39px'],
     },

@@ -55,39 +55,6 @@ function CellLabel({ label, place }: Pick<CellProps, 'label' | 'place'>) {
   );
 }
 
-/** A value that is read here and changed elsewhere, or computed. */
-export function ReadCell({
-  label,
-  place,
-  span,
-  alignRight = false,
-  className,
-  children,
-}: CellProps & { readonly children: ReactNode }) {
-  return (
-    <div
-      style={spanStyle(span)}
-      className={classNames(cellBase, 'border-rule-strong bg-raise', alignRight && 'text-right', className)}
-    >
-      <CellLabel label={label} place={place} />
-      <div className="min-h-18 text-value break-words text-ink">{children}</div>
-    </div>
-  );
-}
-
-/** A ruled cell without a label, for what isn't a value: buttons, a picture. */
-export function PlainCell({
-  span,
-  className,
-  children,
-}: Pick<CellProps, 'span' | 'className'> & { readonly children: ReactNode }) {
-  return (
-    <div style={spanStyle(span)} className={classNames(cellBase, 'border-rule-strong', className)}>
-      {children}
-    </div>
-  );
-}
-
 /** What a check says about a value that may stand as it is. */
 export interface CellMark {
   readonly severity: Severity;
@@ -106,6 +73,58 @@ const markOutlines: Readonly<Record<Severity, string>> = {
   degrading: 'outline-degr',
   advisory: 'outline-advi',
 };
+
+const markOutline = (mark: CellMark): string =>
+  `z-1 outline-2 -outline-offset-2 ${markOutlines[mark.severity]}`;
+
+/** A value that is read here and changed elsewhere, or computed. */
+export function ReadCell({
+  label,
+  place,
+  span,
+  alignRight = false,
+  className,
+  marked,
+  children,
+}: CellProps & { readonly marked?: CellMark; readonly children: ReactNode }) {
+  return (
+    <div
+      title={marked?.sentence}
+      style={spanStyle(span)}
+      className={classNames(
+        cellBase,
+        'border-rule-strong bg-raise',
+        marked && markOutline(marked),
+        alignRight && 'text-right',
+        className,
+      )}
+    >
+      <CellLabel label={label} place={place} />
+      <div
+        className={classNames(
+          'min-h-18 text-value break-words',
+          marked ? markInks[marked.severity] : 'text-ink',
+        )}
+      >
+        {children}
+        {marked !== undefined && <span className="sr-only">. {marked.sentence}</span>}
+      </div>
+    </div>
+  );
+}
+
+/** A ruled cell without a label, for what isn't a value: buttons, a picture. */
+export function PlainCell({
+  span,
+  className,
+  children,
+}: Pick<CellProps, 'span' | 'className'> & { readonly children: ReactNode }) {
+  return (
+    <div style={spanStyle(span)} className={classNames(cellBase, 'border-rule-strong', className)}>
+      {children}
+    </div>
+  );
+}
 
 export interface FieldCellProps extends CellProps {
   /** What is wrong: field, value and way out in one sentence. */
@@ -177,9 +196,7 @@ export function FieldCell({
     disabled ? 'border-rule-strong bg-raise' : 'border-rule-strong bg-field',
     !group &&
       'focus-within:z-1 focus-within:outline-2 focus-within:-outline-offset-2 focus-within:outline-blue',
-    faulty
-      ? 'z-1 outline-2 -outline-offset-2 outline-red'
-      : marked && `z-1 outline-2 -outline-offset-2 ${markOutlines[marked.severity]}`,
+    faulty ? 'z-1 outline-2 -outline-offset-2 outline-red' : marked && markOutline(marked),
     alignRight && 'text-right',
     className,
   );

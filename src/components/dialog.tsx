@@ -17,6 +17,15 @@ interface DialogProps {
   readonly onSubmit?: () => void;
 }
 
+/** Who opens a form wants to type, not to close it. */
+function focusFirstField(event: Event): void {
+  const panel = event.currentTarget;
+  const field = panel instanceof Element ? panel.querySelector<HTMLElement>('input, select, textarea') : null;
+  if (field === null) return;
+  event.preventDefault();
+  field.focus();
+}
+
 /** A panel over the page that has to be answered or closed first. */
 export function Dialog({
   open,
@@ -44,11 +53,12 @@ export function Dialog({
           <Primitive.Content
             className="pointer-events-auto flex max-h-full w-full flex-col border-1.5 border-ink bg-panel text-ink shadow-sheet outline-none"
             style={{ maxWidth: widthPx }}
+            onOpenAutoFocus={focusFirstField}
             {...(description === undefined ? { 'aria-describedby': undefined } : {})}
           >
             <div className="flex items-start gap-12 border-b border-rule-2 py-12 pr-12 pl-20">
               <div className="min-w-0 flex-1 py-4">
-                <Primitive.Title className="text-panel">{title}</Primitive.Title>
+                <Primitive.Title className="text-title">{title}</Primitive.Title>
                 {description !== undefined && (
                   <Primitive.Description className="mt-2 text-base text-ink-2">
                     {description}

@@ -21,7 +21,7 @@ export function EmptyState({ title, children, action, picture, className }: Empt
     >
       {picture !== undefined && <div className="mb-10">{picture}</div>}
       <p className="text-base font-semibold text-ink">{title}</p>
-      <div className="max-w-320 text-base text-ink-2">{children}</div>
+      <div className="max-w-320 text-base text-balance text-ink-2">{children}</div>
       {action !== undefined && <div className="mt-12 flex flex-wrap justify-center gap-8">{action}</div>}
     </div>
   );

@@ -8,7 +8,7 @@ import { useCommittedText } from './use-committed-text.ts';
 
 // The cell draws the focus; the input itself has no look of its own.
 const bareInput =
-  'min-w-0 flex-1 border-0 bg-transparent p-0 text-value text-ink outline-none disabled:text-ink-2';
+  'min-w-0 flex-1 border-0 bg-transparent p-0 text-value text-ink outline-none disabled:text-ink-2 file:mr-8 file:font-medium file:text-blue file:underline';
 
 export interface InputCellProps
   extends FieldCellProps, Omit<InputHTMLAttributes<HTMLInputElement>, 'children' | 'className'> {

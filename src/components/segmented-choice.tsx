@@ -34,7 +34,10 @@ export function SegmentedChoice<Value extends string>({
     <div
       role="radiogroup"
       aria-label={label}
-      className={classNames('border border-rule-strong', stretch ? 'flex w-full' : 'inline-flex flex-wrap')}
+      className={classNames(
+        'max-w-full border border-rule-strong bg-field',
+        stretch ? 'flex w-full' : 'inline-flex flex-wrap',
+      )}
     >
       {options.map((option) => (
         <label

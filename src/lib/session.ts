@@ -1,6 +1,7 @@
 import { queryOptions, useQuery, useQueryClient, useMutation } from '@tanstack/react-query';
 import type { Action, Membership, Role, Session, SignIn } from '../contract/session.ts';
 import { callApiForNothing, fetchSession } from './api-client.ts';
+import { rememberedWorkspace } from './workspace-path.ts';
 
 export const sessionQuery = queryOptions({
   queryKey: ['session'],
@@ -16,6 +17,14 @@ export function useSession(): Session | undefined {
 /** The reader's place in a workspace, if they have one. */
 export function useMembership(workspaceId: string | undefined): Membership | undefined {
   return useSession()?.memberships.find((membership) => membership.workspaceId === workspaceId);
+}
+
+/** The workspace of pages that belong to none: the one last shown, else the reader's first. */
+export function useCurrentWorkspaceId(): string | null {
+  const memberships = useSession()?.memberships ?? [];
+  const remembered = rememberedWorkspace();
+  const here = memberships.find(({ workspaceId }) => workspaceId === remembered) ?? memberships[0];
+  return here?.workspaceId ?? null;
 }
 
 /** Whether the reader may do this in the workspace. The server decides; this only hides what it would refuse. */

@@ -1,0 +1,64 @@
+import type { RouteObject } from 'react-router-dom';
+import { PageError } from './page-error.tsx';
+import { Shell } from './shell.tsx';
+import { SignedInOnly } from './signed-in-only.tsx';
+import { StartPage } from './start-page.tsx';
+import { Root } from './root.tsx';
+
+/** Every address of the application. Pages are loaded when they are first gone to, each with a boundary of its own. */
+export const routes: RouteObject[] = [
+  {
+    element: <Root />,
+    ErrorBoundary: PageError,
+    HydrateFallback: () => null,
+    children: [
+      {
+        path: 'sign-in',
+        ErrorBoundary: PageError,
+        lazy: async () => ({ Component: (await import('../pages/sign-in-page.tsx')).SignInPage }),
+      },
+      {
+        element: <SignedInOnly />,
+        children: [
+          {
+            element: <Shell />,
+            children: [
+              { index: true, element: <StartPage /> },
+              {
+                path: 'workspaces/:workspaceId/engagements',
+                ErrorBoundary: PageError,
+                lazy: async () => ({
+                  Component: (await import('../pages/engagements-page.tsx')).EngagementsPage,
+                }),
+              },
+              {
+                path: 'designs/:designId',
+                ErrorBoundary: PageError,
+                lazy: async () => ({ Component: (await import('../pages/sheet-page.tsx')).SheetPage }),
+              },
+              {
+                path: 'checks',
+                ErrorBoundary: PageError,
+                lazy: async () => ({
+                  Component: (await import('../pages/checks-reference-page.tsx')).ChecksReferencePage,
+                }),
+              },
+              {
+                path: 'account/password',
+                ErrorBoundary: PageError,
+                lazy: async () => ({
+                  Component: (await import('../pages/change-password-page.tsx')).ChangePasswordPage,
+                }),
+              },
+              {
+                path: '*',
+                ErrorBoundary: PageError,
+                lazy: async () => ({ Component: (await import('../pages/not-found-page.tsx')).NotFoundPage }),
+              },
+            ],
+          },
+        ],
+      },
+    ],
+  },
+];

@@ -1,0 +1,17 @@
+import { Suspense } from 'react';
+import { Outlet } from 'react-router-dom';
+import { WithBar } from '../components/bar.tsx';
+import { AccountMenu } from '../features/account/account-menu.tsx';
+
+/** The bar above every page behind the sign-in. */
+export function Shell() {
+  return (
+    <div className="flex h-dvh flex-col">
+      <WithBar end={<AccountMenu />}>
+        <Suspense fallback={null}>
+          <Outlet />
+        </Suspense>
+      </WithBar>
+    </div>
+  );
+}

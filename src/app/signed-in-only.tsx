@@ -1,0 +1,30 @@
+import { useQuery } from '@tanstack/react-query';
+import { Navigate, Outlet, useLocation } from 'react-router-dom';
+import { Button } from '../components/button.tsx';
+import { ErrorNotice } from '../components/notice.tsx';
+import { signInPath } from '../lib/return-path.ts';
+import { sessionQuery } from '../lib/session.ts';
+
+/** Shows what is inside to people who are signed in, and leads everybody else to the sign-in and back. */
+export function SignedInOnly() {
+  const { data: session, error, refetch, isFetching } = useQuery(sessionQuery);
+  const { pathname, search, hash } = useLocation();
+  if (session === undefined && error !== null) {
+    return (
+      <main id="main" tabIndex={-1} className="mx-auto max-w-560 p-28 outline-none">
+        <ErrorNotice
+          action={
+            <Button small busy={isFetching} onClick={() => void refetch()}>
+              Try again
+            </Button>
+          }
+        >
+          {error.message}
+        </ErrorNotice>
+      </main>
+    );
+  }
+  if (session === undefined) return null;
+  if (session.person === null) return <Navigate to={signInPath(`${pathname}${search}${hash}`)} replace />;
+  return <Outlet />;
+}

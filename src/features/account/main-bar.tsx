@@ -1,0 +1,35 @@
+import type { ReactNode } from 'react';
+import { BarContents, BarNav } from '../../components/bar.tsx';
+import { useCurrentWorkspaceId } from '../../lib/session.ts';
+import { engagementsPath } from '../../lib/workspace-path.ts';
+import { WorkspaceCell } from './workspace-cell.tsx';
+
+interface MainBarProps {
+  /** The workspace that the page belongs to; without it the one last shown. */
+  readonly workspaceId?: string;
+  /** Stands at the right. */
+  readonly children?: ReactNode;
+}
+
+/** What the bar shows on every page that is not one design's. */
+export function MainBar({ workspaceId, children }: MainBarProps) {
+  const current = useCurrentWorkspaceId();
+  const here = workspaceId ?? current;
+  return (
+    <BarContents>
+      {here !== null && (
+        <>
+          <WorkspaceCell workspaceId={here} />
+          <BarNav
+            label="Main"
+            destinations={[
+              { to: engagementsPath(here), label: 'Engagements' },
+              { to: '/checks', label: 'Checks' },
+            ]}
+          />
+        </>
+      )}
+      {children}
+    </BarContents>
+  );
+}

@@ -1,0 +1,110 @@
+import { useState } from 'react';
+import { Link } from 'react-router-dom';
+import { Button } from '../../components/button.tsx';
+import { Icon } from '../../components/icon.tsx';
+import { Menu, type MenuAction } from '../../components/menu.tsx';
+import { SeverityCounts } from '../../components/severity-mark.tsx';
+import { Stamp } from '../../components/stamp.tsx';
+import type { DesignSummary } from '../../contract/designs.ts';
+import { classNames } from '../../lib/class-names.ts';
+import { dateAndTime, relativeTime } from '../../lib/format-time.ts';
+import { useTheme } from '../../lib/theme.ts';
+import { useNow } from '../../lib/use-now.ts';
+import { designPath } from '../../lib/workspace-path.ts';
+
+interface DesignCardProps {
+  readonly design: DesignSummary;
+  /** The reader may open it; without, the card tells what there is and leads nowhere. */
+  readonly canOpen: boolean;
+  /** What the reader may do with it, in a menu. */
+  readonly actions: readonly MenuAction[];
+}
+
+export function DesignCard({ design, canOpen, actions }: DesignCardProps) {
+  const now = useNow();
+  const changed = new Date(design.changedAt);
+  const archived = design.archivedAt !== null;
+  const number = [design.identification, design.revision].filter((part) => part !== null).join(', ');
+  return (
+    <article
+      className={classNames(
+        'relative flex w-200 flex-col border border-rule-strong bg-paper max-sm:w-full',
+        canOpen &&
+          'hover:outline-2 hover:outline-offset-2 hover:outline-blue has-[a:focus-visible]:outline-2 has-[a:focus-visible]:outline-offset-2 has-[a:focus-visible]:outline-blue',
+      )}
+    >
+      <Thumbnail design={design} canOpen={canOpen} />
+      <div className="flex flex-1 flex-col border-t border-rule-2 bg-field px-9 pt-7 pb-6">
+        <div className="flex items-start gap-2">
+          <h3 className="line-clamp-2 min-w-0 flex-1 text-value font-semibold" title={design.title}>
+            {canOpen ? (
+              // The whole card takes a press for its title's link.
+              <Link to={designPath(design.id)} className="outline-none after:absolute after:inset-0">
+                {design.title}
+              </Link>
+            ) : (
+              design.title
+            )}
+          </h3>
+          {actions.length > 0 && (
+            <span className="relative z-1 -mt-3 -mr-6">
+              <Menu
+                align="end"
+                groups={[{ actions }]}
+                trigger={
+                  <Button
+                    kind="quiet"
+                    small
+                    iconOnly
+                    aria-label={`What to do with ${design.title}`}
+                    icon={<Icon name="more" />}
+                  />
+                }
+              />
+            </span>
+          )}
+        </div>
+        <div className="mt-auto flex flex-wrap items-baseline justify-between gap-x-8 pt-2 text-note">
+          <span className="text-ink">{number === '' ? 'No number yet' : number}</span>
+          <time
+            dateTime={design.changedAt}
+            title={`Changed ${dateAndTime(changed)}${design.changedBy === null ? '' : ` by ${design.changedBy}`}`}
+            className="whitespace-nowrap text-ink-2"
+          >
+            {relativeTime(changed, now)}
+          </time>
+        </div>
+      </div>
+      <div className="flex min-h-31 flex-wrap items-center justify-between gap-x-8 gap-y-4 border-t border-rule-2 bg-field px-9 py-5 text-base">
+        {archived ? <span className="text-note text-ink-2">Archived</span> : <Stamp state={design.state} />}
+        <SeverityCounts counts={design.counts} />
+      </div>
+    </article>
+  );
+}
+
+/** The sheet from far off. The address names the version, so the browser may keep each picture for good. */
+function Thumbnail({ design, canOpen }: { readonly design: DesignSummary; readonly canOpen: boolean }) {
+  const theme = useTheme();
+  const address = `/api/designs/${design.id}/thumbnail?v=${design.sequence}&theme=${theme}`;
+  const [failedAddress, setFailedAddress] = useState<string>();
+  return (
+    <div className="flex aspect-[212/150] items-center justify-center overflow-hidden">
+      {canOpen && failedAddress !== address ? (
+        <img
+          src={address}
+          alt=""
+          loading="lazy"
+          width={212}
+          height={150}
+          className="size-full object-cover"
+          onError={() => setFailedAddress(address)}
+        />
+      ) : (
+        <p className="px-14 text-center text-note text-ink-3">
+          {canOpen ? 'Its picture cannot be shown just now' : 'Drafts open to you once they are approved'}
+        </p>
+      )}
+    </div>
+  );
+}

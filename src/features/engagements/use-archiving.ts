@@ -1,0 +1,38 @@
+import { showToast } from '../../components/toast.tsx';
+import type { DesignSummary, Engagement } from '../../contract/designs.ts';
+import { useChangeDesign, useChangeEngagement } from './engagements-query.ts';
+
+interface Archiving {
+  readonly archiveEngagement: (engagement: Engagement, archived: boolean) => void;
+  readonly archiveDesign: (design: DesignSummary, archived: boolean) => void;
+}
+
+/** Puts engagements and designs into the archive and takes them out. Nothing is lost, so it is done at once and can be undone. */
+export function useArchiving(): Archiving {
+  const engagements = useChangeEngagement();
+  const designs = useChangeDesign();
+  const say = (title: string, archived: boolean, back: () => void) => ({
+    onSuccess: () =>
+      void showToast({
+        tone: 'done',
+        text: archived ? `${title} is in the archive.` : `${title} is back.`,
+        action: { label: 'Undo', onSelect: back },
+      }),
+    onError: (error: Error) =>
+      void showToast({
+        tone: 'failed',
+        text: `${title} was not ${archived ? 'archived' : 'restored'}. ${error.message}`,
+      }),
+  });
+  const archiveEngagement: Archiving['archiveEngagement'] = (engagement, archived) =>
+    engagements.mutate(
+      { id: engagement.id, archived },
+      say(engagement.name, archived, () => archiveEngagement(engagement, !archived)),
+    );
+  const archiveDesign: Archiving['archiveDesign'] = (design, archived) =>
+    designs.mutate(
+      { id: design.id, archived },
+      say(design.title, archived, () => archiveDesign(design, !archived)),
+    );
+  return { archiveEngagement, archiveDesign };
+}

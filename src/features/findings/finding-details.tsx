@@ -1,0 +1,68 @@
+import { Button } from '../../components/button.tsx';
+import type { FindingItem } from './finding-item.ts';
+import { previewHandlers } from './preview-handlers.ts';
+
+interface FindingDetailsProps {
+  readonly id: string;
+  readonly finding: FindingItem;
+  readonly canFix: boolean;
+  readonly onApplyFix: (fixId: string) => void;
+  readonly onPreviewFix: (fixId: string | null) => void;
+}
+
+/** Why it matters, what is seen on site, on what the check rests, and what would cure it. */
+export function FindingDetails({ id, finding, canFix, onApplyFix, onPreviewFix }: FindingDetailsProps) {
+  const { why, seen, sources, severityReason, fixes } = finding;
+  return (
+    <div
+      id={id}
+      className="grid grid-cols-[minmax(0,1fr)_minmax(0,1fr)] gap-x-28 gap-y-10 pt-4 pr-12 pb-14 pl-50 text-base max-md:grid-cols-1 max-md:pl-12"
+    >
+      <dl className="flex max-w-620 flex-col gap-8">
+        <Part term="Why it matters">{why}</Part>
+        <Part term="What is seen on site">{seen}</Part>
+        {severityReason !== undefined && <Part term="Why this severity">{severityReason}</Part>}
+        <Part term="Rests on">{sources.join('; ')}</Part>
+      </dl>
+      <div>
+        <h3 className="text-label text-ink-3">What would cure it</h3>
+        {fixes === undefined && <p className="text-ink-2">Being worked out…</p>}
+        {fixes?.length === 0 && (
+          <p className="max-w-460 text-ink-2">
+            No change could be found that cures this without doing harm elsewhere. It needs a decision of
+            yours.
+          </p>
+        )}
+        <ul className="flex flex-col gap-8">
+          {fixes?.map((fix) => (
+            <li key={fix.id} className="flex flex-col items-start gap-4">
+              {canFix ? (
+                <Button
+                  kind="accent"
+                  small
+                  className="mt-4"
+                  onClick={() => onApplyFix(fix.id)}
+                  {...previewHandlers(fix, onPreviewFix)}
+                >
+                  {fix.label}
+                </Button>
+              ) : (
+                <span className="font-medium">{fix.label}</span>
+              )}
+              <span className="max-w-460 text-ink-2">{fix.sentence}</span>
+            </li>
+          ))}
+        </ul>
+      </div>
+    </div>
+  );
+}
+
+function Part({ term, children }: { readonly term: string; readonly children: string }) {
+  return (
+    <div>
+      <dt className="text-label text-ink-3">{term}</dt>
+      <dd className="text-ink">{children}</dd>
+    </div>
+  );
+}

@@ -1,0 +1,94 @@
+import { useId } from 'react';
+import { Button } from '../../components/button.tsx';
+import { Icon } from '../../components/icon.tsx';
+import { SeverityMark } from '../../components/severity-mark.tsx';
+import { classNames } from '../../lib/class-names.ts';
+import { FindingDetails } from './finding-details.tsx';
+import type { FindingItem } from './finding-item.ts';
+import { FindingNumber } from './finding-number.tsx';
+import { previewHandlers } from './preview-handlers.ts';
+
+interface FindingRowProps {
+  readonly finding: FindingItem;
+  readonly selected: boolean;
+  readonly open: boolean;
+  readonly tabStop: boolean;
+  readonly canFix: boolean;
+  readonly onPress: () => void;
+  readonly onApplyFix: (fixId: string) => void;
+  readonly onPreviewFix: (fixId: string | null) => void;
+}
+
+export function FindingRow({
+  finding,
+  selected,
+  open,
+  tabStop,
+  canFix,
+  onPress,
+  onApplyFix,
+  onPreviewFix,
+}: FindingRowProps) {
+  const detailsId = useId();
+  const firstFix = finding.fixes?.[0];
+  return (
+    <li
+      aria-current={selected || undefined}
+      className={classNames(
+        'border-b border-rule-2',
+        selected && 'bg-blue-wash shadow-[inset_4px_0_0_var(--blue)]',
+      )}
+    >
+      <div className="flex min-h-29 items-stretch">
+        <button
+          type="button"
+          data-finding={finding.key}
+          tabIndex={tabStop ? 0 : -1}
+          aria-expanded={open}
+          aria-controls={open ? detailsId : undefined}
+          onClick={onPress}
+          className={classNames(
+            'grid min-w-0 flex-1 grid-cols-[24px_86px_minmax(0,1fr)_minmax(0,148px)_72px_16px] items-center gap-x-14 py-4 pr-12 pl-12 text-left text-base -outline-offset-2',
+            'max-md:grid-cols-[24px_86px_minmax(0,1fr)_16px] max-md:py-8',
+            !selected && 'hover:bg-hover',
+          )}
+        >
+          <FindingNumber finding={finding} />
+          <SeverityMark severity={finding.severity} />
+          <span className="font-medium max-md:order-last max-md:col-span-4">
+            {finding.sentence}
+            {finding.waived === true && <span className="font-normal text-ink-3"> (waived)</span>}
+          </span>
+          <span className="text-ink-2 max-md:order-last max-md:col-span-4">{finding.elements}</span>
+          <span className="whitespace-nowrap text-ink-2">
+            {finding.zone === undefined ? null : `at ${finding.zone}`}
+          </span>
+          <Icon name={open ? 'chevron-up' : 'chevron-down'} size={13} />
+        </button>
+        <div className="flex w-198 shrink-0 items-center pr-12 max-md:hidden">
+          {canFix && firstFix !== undefined && (
+            <Button
+              kind="accent"
+              small
+              className="w-full whitespace-normal!"
+              title={firstFix.sentence}
+              onClick={() => onApplyFix(firstFix.id)}
+              {...previewHandlers(firstFix, onPreviewFix)}
+            >
+              <span className="truncate">{firstFix.label}</span>
+            </Button>
+          )}
+        </div>
+      </div>
+      {open && (
+        <FindingDetails
+          id={detailsId}
+          finding={finding}
+          canFix={canFix}
+          onApplyFix={onApplyFix}
+          onPreviewFix={onPreviewFix}
+        />
+      )}
+    </li>
+  );
+}

@@ -1,0 +1,57 @@
+import type { Decorations, Tone } from '../../drawing/decorations.ts';
+import { elementKey, noDecorations } from '../../drawing/decorations.ts';
+import type { Finding } from '../../engine/rules/finding.ts';
+
+const collect = <T>(findings: readonly Finding[], pick: (finding: Finding) => T | undefined): readonly T[] =>
+  findings.flatMap((finding) => pick(finding) ?? []);
+
+/** Each tunnel is cut once, with the VNIs where they are the reason. */
+const cutsOf = (findings: readonly Finding[]): Decorations['cuts'] => {
+  const cuts = new Map<string, Decorations['cuts'][number]>();
+  for (const { mark } of findings) {
+    if (mark?.kind !== 'cut') continue;
+    if (mark.vnis !== undefined || !cuts.has(mark.tunnel))
+      cuts.set(mark.tunnel, { tunnel: mark.tunnel, vnis: mark.vnis });
+  }
+  return [...cuts.values()];
+};
+
+const portsAtFault = (findings: readonly Finding[]): { readonly [key: string]: readonly Tone[] } =>
+  Object.fromEntries(
+    findings
+      .filter((finding) => finding.severity === 'blocking')
+      .flatMap((finding) => finding.elements.filter((ref) => ref.port !== undefined))
+      .map((ref) => [elementKey(ref), ['fault']]),
+  );
+
+/**
+ * How findings show on the sheet: a balloon for each that is blocking or degrading, and for the selected one whatever its
+ * severity; words only beside the blocking; and the faults that can be drawn, drawn. Numbers are those of the list.
+ */
+export const findingsToDecorations = (findings: readonly Finding[], selectedKey?: string): Decorations => ({
+  ...noDecorations,
+  tones: portsAtFault(findings),
+  cuts: cutsOf(findings),
+  loops: collect(findings, ({ mark }) => (mark?.kind === 'loop' ? { steps: mark.steps } : undefined)),
+  ghosts: collect(findings, ({ mark, key }) =>
+    mark?.kind === 'ghost' ? { id: key, from: mark.from, to: mark.to, label: mark.label } : undefined,
+  ),
+  overhangs: collect(findings, ({ mark }) =>
+    mark?.kind === 'overhang'
+      ? { tunnel: mark.tunnel, end: mark.end, packetBytes: mark.packetBytes, mtuBytes: mark.mtuBytes }
+      : undefined,
+  ),
+  balloons: findings.flatMap((finding, i) => {
+    const at = finding.elements[0];
+    if (at === undefined || (finding.severity === 'advisory' && finding.key !== selectedKey)) return [];
+    return [
+      {
+        number: i + 1,
+        severity: finding.severity,
+        waived: false,
+        at,
+        ...(finding.severity === 'blocking' || finding.key === selectedKey ? { words: finding.words } : {}),
+      },
+    ];
+  }),
+});
