@@ -1,5 +1,5 @@
 import { elementKey } from '../decorations.ts';
-import type { BandGeometry, Rect, SheetFrame } from '../geometry.ts';
+import type { BandGeometry, Point, SheetFrame } from '../geometry.ts';
 import type { Shape } from '../shape.ts';
 import { group, shape } from '../shape.ts';
 import { paint } from '../theme/paint.ts';
@@ -7,7 +7,6 @@ import { bandText } from './band-text.ts';
 import type { DrawingFacts } from './drawing-facts.ts';
 import type { Look } from './look.ts';
 import { dimmedOpacity, tonesOf } from './look.ts';
-import { grown } from './outlines.ts';
 import type { OutlineEdge } from './rectilinear-outline.ts';
 import { insetLoop, loopEdges, rectilinearOutline } from './rectilinear-outline.ts';
 
@@ -16,9 +15,20 @@ const tickPx = 7;
 const tickStepPx = 6;
 const innerLinePx = 5;
 
-const onFrame = ({ from, to }: OutlineEdge, frame: Rect): boolean =>
-  (from.y === to.y && (Math.abs(from.y - frame.y) < 1 || Math.abs(from.y - frame.y - frame.height) < 1)) ||
-  (from.x === to.x && (Math.abs(from.x - frame.x) < 1 || Math.abs(from.x - frame.x - frame.width) < 1));
+/** A band's end on the frame or on the furniture needs no line of its own; its long sides are drawn everywhere. */
+const isHiddenEnd = (
+  { from, to }: OutlineEdge,
+  orientation: BandGeometry['orientation'],
+  { frame, titleBlock, legend }: SheetFrame,
+): boolean => {
+  const level = from.y === to.y;
+  if (level !== (orientation === 'vertical')) return false;
+  const at = level ? from.y : from.x;
+  const borders = level
+    ? [frame.y, frame.y + frame.height, titleBlock.y, legend.y]
+    : [frame.x, frame.x + frame.width, titleBlock.x, legend.x + legend.width];
+  return borders.some((border) => Math.abs(border - at) < 1);
+};
 
 const edgePath = (edges: readonly OutlineEdge[]): string =>
   edges.map(({ from, to }) => `M${from.x} ${from.y}L${to.x} ${to.y}`).join('');
@@ -51,12 +61,32 @@ export const bandPart = (band: BandGeometry, sheet: SheetFrame, facts: DrawingFa
   const rects = [...band.limbs, ...(band.header === undefined ? [] : [band.header])];
   const loops = rectilinearOutline(rects);
   const trusted = words?.trusted ?? false;
-  const edges = loops.flatMap(loopEdges).filter((edge) => !onFrame(edge, sheet.frame));
-  const inner = loops.flatMap((loop) =>
-    loopEdges(insetLoop(loop, innerLinePx)).filter(
-      (edge) => !onFrame(edge, grown(sheet.frame, -innerLinePx)),
-    ),
-  );
+  // Each edge with its twin on the inner line, which runs through to a hidden end.
+  const sides = loops.flatMap((loop) => {
+    const outer = loopEdges(loop);
+    const inset = loopEdges(insetLoop(loop, innerLinePx));
+    const hidden = (i: number): boolean => {
+      const edge = outer[(i + outer.length) % outer.length];
+      return edge !== undefined && isHiddenEnd(edge, band.orientation, sheet);
+    };
+    return outer.flatMap((edge, i) => {
+      const twin = inset[i];
+      if (twin === undefined || hidden(i)) return [];
+      const level = edge.from.y === edge.to.y;
+      const reach = (inner: Point, end: Point): Point =>
+        level ? { x: end.x, y: inner.y } : { x: inner.x, y: end.y };
+      return [
+        {
+          edge,
+          twin: {
+            from: hidden(i - 1) ? reach(twin.from, edge.from) : twin.from,
+            to: hidden((i + 1) % outer.length) ? reach(twin.to, edge.to) : twin.to,
+          },
+        },
+      ];
+    });
+  });
+  const edges = sides.map((side) => side.edge);
   const failed = tones.includes('failed');
   const marked = tones.includes('selected') || tones.includes('hovered');
   const far = look.level === 'far';
@@ -95,7 +125,7 @@ export const bandPart = (band: BandGeometry, sheet: SheetFrame, facts: DrawingFa
         (trusted
           ? {
               ...shape('path', {
-                d: edgePath(inner),
+                d: edgePath(sides.map((side) => side.twin)),
                 fill: 'none',
                 stroke: paint(edgeColour),
                 strokeWidth: 1,

@@ -42,7 +42,7 @@ const cutOf = (jacket: JacketGeometry, lane: LaneGeometry, level: Level): Cut | 
   // Inside a jacket the opening ends half a lane away from its neighbours and runs out where there is none.
   const centre = pathAt(jacket.path, nearestAlong(jacket.path, place));
   const toCentre = (centre.x - place.x) * right.x + (centre.y - place.y) * right.y;
-  const width = drawnJacketWidth(jacket.width, jacket.lanes.length, level) + 3;
+  const width = drawnJacketWidth(jacket.width, jacket.lanes.length, level) + 5;
   const half = jacket.pitch / 2;
   const outermost = ((jacket.lanes.length - 1) / 2) * jacket.pitch - 0.5;
   return {

@@ -40,7 +40,8 @@ const pips = (device: DeviceGeometry, facts: DeviceFacts, look: Look, failed: bo
         const tones = tonesOf(look, ref);
         const port = facts.ports[pip.port];
         const plate = device.plates.find((p) => p.member === pip.member) ?? device.plates[0];
-        const numbered = look.level === 'near' && device.kind !== 'host' && pip.shape !== 'bar';
+        const numbered =
+          look.level === 'near' && device.kind !== 'host' && pip.shape !== 'bar' && pip.shape !== 'lozenge';
         return group(
           [
             pipMark(

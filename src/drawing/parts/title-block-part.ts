@@ -168,25 +168,22 @@ const brief = (facts: TitleBlockFacts, rect: Rect): readonly Shape[] => {
   ];
 };
 
-const titleAlone = (facts: TitleBlockFacts, rect: Rect): readonly Shape[] => [
-  group(
-    fittedLines(
-      fitText(facts.title, {
-        maxWidthPx: rect.width - 28,
-        maxLines: 2,
-        sizePx: 46,
-        minSizePx: 30,
+const titleAlone = (facts: TitleBlockFacts, rect: Rect): readonly Shape[] => {
+  const widest = { maxWidthPx: rect.width - 28, sizePx: 46, minSizePx: 32, weight: 600 } as const;
+  const oneLine = fitText(facts.title, widest);
+  const title = oneLine.shortened ? fitText(facts.title, { ...widest, maxLines: 2, minSizePx: 26 }) : oneLine;
+  const step = title.sizePx * 1.05;
+  const first = rect.y + rect.height / 2 + title.sizePx * capShift - ((title.lines.length - 1) * step) / 2;
+  return [
+    group(
+      fittedLines(title, facts.title, rect.x + rect.width / 2, first, step, {
         weight: 600,
+        anchor: 'middle',
       }),
-      facts.title,
-      rect.x + rect.width / 2,
-      rect.y + rect.height / 2 + 14,
-      40,
-      { weight: 600, anchor: 'middle' },
+      { key: 'title' },
     ),
-    { key: 'title' },
-  ),
-];
+  ];
+};
 
 /** The title block with the data fields of ISO 7200:2004 (from memory), at the bottom right of the frame. */
 export const titleBlockPart = (sheet: SheetFrame, facts: TitleBlockFacts, level: Level): Shape => {
