@@ -14,6 +14,7 @@ import { endOf } from '../canvas/connect-ends.ts';
 import { askToJoin } from '../canvas/desk-state.ts';
 import { useShortcuts } from '../canvas/use-shortcuts.ts';
 import { useView } from '../canvas/use-view.ts';
+import { Button } from '../components/button.tsx';
 import { ErrorNotice } from '../components/notice.tsx';
 import { SeverityCounts } from '../components/severity-mark.tsx';
 import { showToast } from '../components/toast.tsx';
@@ -77,7 +78,15 @@ function CannotOpen({ message, onRetry }: { readonly message: string; readonly o
       tabIndex={-1}
       className="flex min-h-0 flex-1 items-start justify-center bg-desk p-28 outline-none"
     >
-      <ErrorNotice action={{ label: 'Try again', onSelect: onRetry }}>{message}</ErrorNotice>
+      <ErrorNotice
+        action={
+          <Button small onClick={onRetry}>
+            Try again
+          </Button>
+        }
+      >
+        {message}
+      </ErrorNotice>
     </main>
   );
 }

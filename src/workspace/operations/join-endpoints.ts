@@ -1,4 +1,5 @@
 import type { DeepReadonly, Design, Entry } from '../../engine/model/design.ts';
+import { isGateway } from '../../engine/model/devices.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { joinPatches } from '../../engine/model/merge-patch.ts';
 import type { AssociationEnd, Circuit, Endpoint, Forwarder } from '../../engine/model/overlay.ts';
@@ -110,27 +111,71 @@ const usualEnd = (start: 'starts' | 'answers'): Omit<AssociationEnd, 'device'> =
   };
 };
 
-const newAssociation = (design: Design, choice: JoinChoice): Entry<'associations'> => {
-  const [endA, endB] = [design.endpoints[choice.a]!, design.endpoints[choice.b]!];
-  const family = sameFamily(endA, endB);
-  const shared = sharedTransports(design, endA.device, endB.device);
+type Ends = readonly [a: DeepReadonly<Endpoint>, b: DeepReadonly<Endpoint>];
+
+/** A new association between two devices; with endpoints its selectors cover just these. */
+const newAssociation = (
+  design: Design,
+  deviceA: string,
+  deviceB: string,
+  endpoints?: Ends,
+): Entry<'associations'> => {
+  const shared = sharedTransports(design, deviceA, deviceB);
   const rank = firstRanks(1)[0]!;
-  const aStarts = !waitsBehindNat(design, endB.device);
-  const end = (
-    own: DeepReadonly<Endpoint>,
-    far: DeepReadonly<Endpoint>,
-    starts: boolean,
-  ): AssociationEnd => ({
-    device: own.device,
-    via: viaOf(design, own.device, shared),
-    ...usualEnd(starts ? 'starts' : 'answers'),
-    selectors: { loopbacks: { rank, local: addressOf(own, family), remote: addressOf(far, family) } },
-  });
-  const name = `as-${design.devices[endA.device]!.name}-${design.devices[endB.device]!.name}`;
+  const family = endpoints === undefined ? undefined : sameFamily(...endpoints);
+  const selectorsOf = (own: 0 | 1): Pick<AssociationEnd, 'selectors'> =>
+    endpoints === undefined || family === undefined
+      ? {}
+      : {
+          selectors: {
+            loopbacks: {
+              rank,
+              local: addressOf(endpoints[own], family),
+              remote: addressOf(endpoints[own === 0 ? 1 : 0], family),
+            },
+          },
+        };
+  // Whoever cannot be reached from outside has to start; with both reachable one is enough.
+  const bStarts = waitsBehindNat(design, deviceB);
+  const aStarts = waitsBehindNat(design, deviceA) || !bStarts;
   return {
-    name: freeName(design.associations, name, false),
-    a: end(endA, endB, waitsBehindNat(design, endA.device) || aStarts),
-    b: end(endB, endA, !aStarts),
+    name: freeName(
+      design.associations,
+      `as-${design.devices[deviceA]!.name}-${design.devices[deviceB]!.name}`,
+      false,
+    ),
+    a: {
+      device: deviceA,
+      via: viaOf(design, deviceA, shared),
+      ...usualEnd(aStarts ? 'starts' : 'answers'),
+      ...selectorsOf(0),
+    },
+    b: {
+      device: deviceB,
+      via: viaOf(design, deviceB, shared),
+      ...usualEnd(bStarts ? 'starts' : 'answers'),
+      ...selectorsOf(1),
+    },
+  };
+};
+
+/** An IPsec association between two gateways that carries no tunnel yet. */
+export const associateGateways = (design: Design, a: string, b: string, newId: NewId): Operation => {
+  const [deviceA, deviceB] = [design.devices[a], design.devices[b]];
+  if (deviceA === undefined || deviceB === undefined) return refused('That device is no longer there.');
+  if (a === b) return refused('An association needs two different gateways.');
+  for (const device of [deviceA, deviceB])
+    if (!isGateway(device))
+      return refused(
+        `${device.name} is a ${device.kind}: an association joins firewalls, HA pairs or routers.`,
+      );
+  const id = newId('as');
+  const association = newAssociation(design, a, b);
+  return {
+    ok: true,
+    label: `Associate ${deviceA.name} with ${deviceB.name}`,
+    patch: { associations: { [id]: association } } as unknown as MergePatch,
+    created: [{ collection: 'associations', id }],
   };
 };
 
@@ -219,7 +264,7 @@ export const joinEndpoints = (design: Design, choice: JoinChoice, newId: NewId):
   if (choice.association === 'new') {
     association = newId('as');
     patches.push({
-      associations: { [association]: newAssociation(design, choice) },
+      associations: { [association]: newAssociation(design, endA.device, endB.device, [endA, endB]) },
     } as unknown as MergePatch);
   } else if (choice.association !== 'none') {
     if (!associationsBetween(design, choice.a, choice.b).includes(choice.association))

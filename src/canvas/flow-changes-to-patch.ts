@@ -1,0 +1,129 @@
+import type { NodeChange, NodePositionChange, XYPosition } from '@xyflow/react';
+import type { Point, Rect, RingGeometry, SheetGeometry } from '../drawing/geometry.ts';
+import type { Design, ElementRef } from '../engine/model/design.ts';
+import type { Side } from '../engine/model/layout.ts';
+import type { MergePatch } from '../engine/model/merge-patch.ts';
+import { applyPatch, joinPatches } from '../engine/model/merge-patch.ts';
+import type { Standing } from '../workspace/operations/move-parts.ts';
+import { dockEndpoint, moveElements, rehome } from '../workspace/operations/move-parts.ts';
+import type { FlowNode } from './design-to-flow.ts';
+
+const inside = (rect: Rect, at: Point): boolean =>
+  at.x >= rect.x && at.x <= rect.x + rect.width && at.y >= rect.y && at.y <= rect.y + rect.height;
+
+/** Where everything stands on the sheet as drawn, also what nobody placed yet. */
+export const standingOf = (geometry: SheetGeometry): Standing => ({
+  devices: Object.fromEntries(
+    geometry.devices.map((device) => [
+      device.id,
+      { x: device.plates[0]!.rect.x, y: device.plates[0]!.rect.y },
+    ]),
+  ),
+  sites: Object.fromEntries(geometry.sites.map((site) => [site.id, site.rect])),
+  notes: Object.fromEntries(
+    geometry.notes.filter((note) => !note.standing).map((note) => [note.id, note.at]),
+  ),
+});
+
+export type MovedNode = Pick<NodePositionChange, 'id' | 'position'>;
+
+/** The changes that move nodes, and whether the pointer still holds them. */
+export const movesIn = (
+  changes: readonly NodeChange<FlowNode>[],
+): { readonly moved: readonly MovedNode[]; readonly dragging: boolean } => {
+  const positions = changes.filter((change): change is NodePositionChange => change.type === 'position');
+  return {
+    moved: positions.filter((change) => change.position !== undefined),
+    dragging: positions.some((change) => change.dragging === true),
+  };
+};
+
+/** The side of its device that a ring held at `at` is nearest to. */
+export const nearestSide = (plate: Rect, at: XYPosition): Side => {
+  const dx = (at.x - (plate.x + plate.width / 2)) / plate.width;
+  const dy = (at.y - (plate.y + plate.height / 2)) / plate.height;
+  if (Math.abs(dx) >= Math.abs(dy)) return dx < 0 ? 'left' : 'right';
+  return dy < 0 ? 'top' : 'bottom';
+};
+
+const ringOf = (geometry: SheetGeometry, endpoint: string): RingGeometry | undefined =>
+  geometry.rings.find((ring) => ring.endpoint === endpoint);
+
+/**
+ * What moving nodes to new places means for the design: one patch on its layout. All nodes of a drag move by the same
+ * distance, which is read off the first; a ring alone docks on the side of its device that it is held nearest to.
+ */
+export const movesToPatch = (
+  design: Design,
+  geometry: SheetGeometry,
+  nodes: readonly FlowNode[],
+  moved: readonly MovedNode[],
+): MergePatch => {
+  const known = moved.flatMap((change) => {
+    const node = nodes.find((candidate) => candidate.id === change.id);
+    return node?.data.ref === undefined || change.position === undefined
+      ? []
+      : [{ node, ref: node.data.ref, to: change.position }];
+  });
+  const first = known[0];
+  if (first === undefined) return {};
+  if (first.ref.collection === 'endpoints') {
+    const ring = ringOf(geometry, first.ref.id);
+    const device = geometry.devices.find((candidate) => candidate.id === ring?.device);
+    if (ring === undefined || device === undefined) return {};
+    const side = nearestSide(device.rect, { x: first.to.x + 14, y: first.to.y + 14 });
+    const docked = dockEndpoint(design, first.ref.id, side);
+    return docked.ok && side !== ring.side ? docked.patch : {};
+  }
+  const dx = Math.round(first.to.x - first.node.position.x);
+  const dy = Math.round(first.to.y - first.node.position.y);
+  const operation = moveElements(
+    design,
+    standingOf(geometry),
+    known.map(({ ref }) => ref),
+    dx,
+    dy,
+  );
+  return operation.ok ? operation.patch : {};
+};
+
+/** The site whose frame holds a point; of several the one in front. */
+export const siteAt = (geometry: SheetGeometry, at: Point): string | undefined =>
+  [...geometry.sites].reverse().find((site) => inside(site.rect, at))?.id;
+
+/** The gateway or other device whose plate holds a point, with some room around it. */
+export const deviceAt = (geometry: SheetGeometry, at: Point, roomPx = 0): string | undefined =>
+  [...geometry.devices].reverse().find((device) =>
+    inside(
+      {
+        x: device.rect.x - roomPx,
+        y: device.rect.y - roomPx,
+        width: device.rect.width + 2 * roomPx,
+        height: device.rect.height + 2 * roomPx,
+      },
+      at,
+    ),
+  )?.id;
+
+/**
+ * The patch of a drop: the move, and for each dropped device the site whose frame it now stands in, judged by the
+ * frames as they were before the drag, since a frame grows with what is pulled out of it.
+ */
+export const dropToPatch = (
+  design: Design,
+  before: SheetGeometry,
+  move: MergePatch,
+  dropped: readonly ElementRef[],
+): MergePatch => {
+  const after = applyPatch(design, move);
+  const patches = dropped
+    .filter((ref) => ref.collection === 'devices')
+    .flatMap((ref) => {
+      const at = after.layout.devices?.[ref.id];
+      const size = before.devices.find((device) => device.id === ref.id)?.rect;
+      if (at === undefined || size === undefined) return [];
+      const site = siteAt(before, { x: at.x + size.width / 2, y: at.y + size.height / 2 });
+      return site === undefined ? [] : [rehome(design, ref.id, site)];
+    });
+  return joinPatches(design, [move, ...patches]);
+};

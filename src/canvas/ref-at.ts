@@ -1,0 +1,26 @@
+import { collections, type Collection, type ElementRef } from '../engine/model/design.ts';
+
+/** Reads an element's key back; undefined when it is none. */
+export const refOfKey = (key: string): ElementRef | undefined => {
+  const match = /^([a-z]+)\/([^/@]+)(?:\/([^@]+))?(?:@([12]))?$/.exec(key);
+  if (match === null || !collections.includes(match[1] as Collection)) return undefined;
+  return {
+    collection: match[1] as Collection,
+    id: match[2]!,
+    ...(match[3] === undefined ? {} : { port: match[3] }),
+    ...(match[4] === undefined ? {} : { member: Number(match[4]) as 1 | 2 }),
+  };
+};
+
+/** The element that the pointer is on: the innermost that is marked. A grip stands for its port. */
+export const refAt = (target: Element): ElementRef | undefined => {
+  const grip = target.closest('.grip:not(.grip-body)');
+  const node = grip?.closest('.react-flow__node')?.getAttribute('data-id');
+  const handle = grip?.getAttribute('data-handleid');
+  if (node != null && handle?.startsWith('port:')) {
+    const [port, member] = handle.slice(5).split('@');
+    return refOfKey(`${node}/${port}${member === undefined ? '' : `@${member}`}`);
+  }
+  const key = target.closest('[data-ref]')?.getAttribute('data-ref');
+  return key === null || key === undefined ? undefined : refOfKey(key);
+};

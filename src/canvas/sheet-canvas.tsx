@@ -1,0 +1,344 @@
+import {
+  ConnectionMode,
+  ReactFlow,
+  SelectionMode,
+  useReactFlow,
+  useStore,
+  type Connection,
+  type EdgeChange,
+  type FinalConnectionState,
+  type NodeChange,
+} from '@xyflow/react';
+import {
+  useCallback,
+  useEffect,
+  useMemo,
+  useRef,
+  type DragEvent,
+  type KeyboardEvent,
+  type MouseEvent,
+} from 'react';
+import { showToast } from '../components/toast.tsx';
+import type { Decorations, Tone } from '../drawing/decorations.ts';
+import { elementKey } from '../drawing/decorations.ts';
+import { levelOf, type Level } from '../drawing/parts/level-of-detail.ts';
+import type { ElementRef } from '../engine/model/design.ts';
+import type { MergePatch } from '../engine/model/merge-patch.ts';
+import { isEmptyPatch } from '../engine/model/merge-patch.ts';
+import { newEntryId, perform, useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
+import { isLocked } from '../workspace/operations/move-parts.ts';
+import { connectEnds, endOf, whyNotConnect, type ConnectEnd } from './connect-ends.ts';
+import { designToFlow, type FlowEdge, type FlowNode } from './design-to-flow.ts';
+import { askToJoin, startPlacing, useDesk } from './desk-state.ts';
+import { DrawingContext, type Drawing } from './drawing-context.ts';
+import { edgeTypes } from './edges/part-edges.tsx';
+import { dropToPatch, movesIn, movesToPatch, type MovedNode } from './flow-changes-to-patch.ts';
+import { useDrawn } from './geometry-context.tsx';
+import { nodeTypes } from './nodes/part-nodes.tsx';
+import { endAt, isJoining, placePart, type TrayPart } from './place-part.ts';
+import { PullLine } from './pull-line.tsx';
+import { readPartDrag } from './parts-tray/part-drag.ts';
+import { refAt } from './ref-at.ts';
+import { useView, zoomLimits } from './use-view.ts';
+
+interface SheetCanvasProps {
+  /** What features want shown on top of the drawing. */
+  readonly decorations: Decorations;
+  readonly onAcceptGhost: (id: string) => void;
+  /** A balloon was pressed; its number is the finding's. */
+  readonly onPickBalloon: (number: number) => void;
+}
+
+// A key that repeats is one gesture: the move is committed once it has been quiet for so long.
+const keyQuietMs = 400;
+// Below this many parts drawing them all is cheaper than deciding which are in view.
+const cullFrom = 400;
+
+const useLevel = (): Level => {
+  const last = useRef<Level | undefined>(undefined);
+  const level = useStore((state) => levelOf(state.transform[2], last.current));
+  last.current = level;
+  return level;
+};
+
+const tonesWith = (decorations: Decorations, selection: readonly ElementRef[]): Decorations => {
+  if (selection.length === 0) return decorations;
+  const tones: { [key: string]: readonly Tone[] } = { ...decorations.tones };
+  for (const ref of selection) tones[elementKey(ref)] = [...(tones[elementKey(ref)] ?? []), 'selected'];
+  return { ...decorations, tones };
+};
+
+/** The sheet: everything of the design that is drawn, to be looked at, selected, moved and connected. */
+export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: SheetCanvasProps) {
+  const open = useOpenDesign();
+  const design = useOpenState((state) => state.document);
+  const editable = useOpenState((state) => state.editable);
+  const selection = useOpenState((state) => state.selection);
+  const { geometry, settled, facts, drag, setDrag, shown } = useDrawn();
+  const flow = useReactFlow<FlowNode, FlowEdge>();
+  const view = useView();
+  const level = useLevel();
+  const tool = useDesk((state) => state.tool);
+  const placing = useDesk((state) => state.placing);
+  const firstEnd = useDesk((state) => state.firstEnd);
+  const hiddenSegments = useDesk((state) => state.hiddenSegments);
+
+  const look = useMemo(
+    () => ({ level, decorations: tonesWith({ ...decorations, hiddenSegments }, selection) }),
+    [level, decorations, hiddenSegments, selection],
+  );
+  const drawing = useMemo<Drawing>(
+    () => ({ geometry, facts, look, editable, acceptGhost: onAcceptGhost, pickBalloon: onPickBalloon }),
+    [geometry, facts, look, editable, onAcceptGhost, onPickBalloon],
+  );
+  const selected = useMemo(
+    () => new Set(selection.map(({ collection, id }) => elementKey({ collection, id }))),
+    [selection],
+  );
+  const { nodes, edges } = useMemo(
+    () =>
+      designToFlow({
+        design: shown,
+        geometry,
+        facts,
+        selected,
+        editable,
+        isLocked: (ref) => isLocked(shown, ref),
+      }),
+    [shown, geometry, facts, selected, editable],
+  );
+  // Moves are measured from where things stood when the drag began.
+  const settledNodes = useMemo(
+    () =>
+      drag === undefined
+        ? nodes
+        : designToFlow({
+            design,
+            geometry: settled,
+            facts,
+            selected,
+            editable,
+            isLocked: (ref) => isLocked(design, ref),
+          }).nodes,
+    [drag, nodes, design, settled, facts, selected, editable],
+  );
+
+  const say = useCallback((why: string): void => void showToast({ tone: 'failed', text: why }), []);
+
+  // ---- moving -------------------------------------------------------------------------------------------------
+  const keyMove = useRef<ReturnType<typeof setTimeout> | undefined>(undefined);
+  const dragRef = useRef<MergePatch | undefined>(undefined);
+  const hold = (patch: MergePatch | undefined): void => {
+    dragRef.current = patch;
+    setDrag(patch);
+  };
+  const drop = (moved: readonly MovedNode[]): void => {
+    const patch = dragRef.current;
+    hold(undefined);
+    if (patch === undefined || isEmptyPatch(patch)) return;
+    const dropped = moved.flatMap(
+      (change) => settledNodes.find((node) => node.id === change.id)?.data.ref ?? [],
+    );
+    const committed = open.commit('Move', dropToPatch(design, settled, patch, dropped));
+    if (!committed.ok) say(committed.problems.map((problem) => problem.expected).join('; '));
+  };
+  const dragging = useRef(false);
+  const onNodesChange = (changes: NodeChange<FlowNode>[]): void => {
+    const picks = changes.filter((change) => change.type === 'select');
+    if (picks.length > 0) changeSelection(picks);
+    const { moved, dragging: held } = movesIn(changes);
+    if (moved.length === 0 || !editable) return;
+    if (held) {
+      dragging.current = true;
+      hold(movesToPatch(design, settled, settledNodes, moved));
+    } else if (dragging.current) {
+      dragging.current = false;
+      drop(moved);
+    } else {
+      // Arrow keys: the library moves the nodes as drawn, so the distance adds up to the drag so far.
+      hold(movesToPatch(design, settled, settledNodes, moved));
+      if (keyMove.current !== undefined) clearTimeout(keyMove.current);
+      keyMove.current = setTimeout(() => drop(moved), keyQuietMs);
+    }
+  };
+
+  // ---- selecting ----------------------------------------------------------------------------------------------
+  const changeSelection = (
+    picks: readonly { readonly type: 'select'; readonly id: string; readonly selected: boolean }[],
+  ): void => {
+    const refs = new Map(
+      open.store
+        .getState()
+        .selection.map((ref) => [elementKey({ collection: ref.collection, id: ref.id }), ref]),
+    );
+    for (const pick of picks) {
+      const ref = [...nodes, ...edges].find((part) => part.id === pick.id)?.data?.ref;
+      if (ref === undefined) continue;
+      const key = elementKey(ref);
+      if (!pick.selected) refs.delete(key);
+      else if (!refs.has(key)) refs.set(key, ref);
+    }
+    open.select([...refs.values()]);
+  };
+  const onEdgesChange = (changes: EdgeChange<FlowEdge>[]): void => {
+    const picks = changes.filter((change) => change.type === 'select');
+    if (picks.length > 0) changeSelection(picks);
+  };
+  /** A pip, a ferrule or a cord under the pointer is meant more than the node that it belongs to. */
+  const onPartClick = (event: MouseEvent): void => {
+    const ref = refAt(event.target as Element);
+    if (ref !== undefined && !event.shiftKey && !event.metaKey && !event.ctrlKey) open.select([ref]);
+  };
+
+  // ---- connecting ---------------------------------------------------------------------------------------------
+  const connect = (a: ConnectEnd, b: ConnectEnd): void => {
+    const result = connectEnds(design, a, b, newEntryId);
+    if ('ask' in result)
+      return askToJoin({
+        kind: 'tunnel',
+        a: { kind: 'endpoint', id: result.a },
+        b: { kind: 'endpoint', id: result.b },
+      });
+    const done = perform(open, result);
+    if (!done.ok) say(done.why);
+  };
+  const endsOf = (connection: Pick<Connection, 'source' | 'sourceHandle' | 'target' | 'targetHandle'>) =>
+    [
+      endOf(connection.source, connection.sourceHandle),
+      endOf(connection.target, connection.targetHandle),
+    ] as const;
+  const isValidConnection = (connection: Connection | FlowEdge): boolean => {
+    const [a, b] = endsOf(connection as Connection);
+    return a !== undefined && b !== undefined && whyNotConnect(design, a, b) === undefined;
+  };
+  const onConnect = (connection: Connection): void => {
+    const [a, b] = endsOf(connection);
+    if (a !== undefined && b !== undefined) connect(a, b);
+  };
+  const onConnectEnd = (_event: unknown, state: FinalConnectionState): void => {
+    if (state.isValid !== false || state.fromNode === null || state.toNode === null) return;
+    const a = endOf(state.fromNode.id, state.fromHandle?.id);
+    const b = endOf(state.toNode.id, state.toHandle?.id);
+    if (a === undefined || b === undefined || JSON.stringify(a) === JSON.stringify(b)) return;
+    const why = whyNotConnect(design, a, b);
+    if (why !== undefined) say(why);
+  };
+
+  // ---- placing from the tray ----------------------------------------------------------------------------------
+  const put = (part: TrayPart, at: { readonly x: number; readonly y: number }): void => {
+    if (isJoining(part)) {
+      const end = endAt(settled, at);
+      if (end === undefined)
+        return say(
+          part === 'tunnel'
+            ? 'Pick a ring, then the ring at the other end.'
+            : 'Pick a device, then the one at the other end.',
+        );
+      if (firstEnd === undefined) return useDesk.setState({ firstEnd: end });
+      if (part === 'cable') {
+        connect(firstEnd, end);
+        startPlacing(undefined);
+      } else askToJoin({ kind: part, a: firstEnd, b: end });
+      return;
+    }
+    const done = perform(open, placePart(design, settled, part, at, newEntryId));
+    if (!done.ok) return say(done.why);
+    startPlacing(undefined);
+  };
+  const onClickCapture = (event: MouseEvent): void => {
+    if (placing === undefined || !editable) return;
+    event.stopPropagation();
+    put(placing, flow.screenToFlowPosition({ x: event.clientX, y: event.clientY }));
+  };
+  const onDrop = (event: DragEvent): void => {
+    const part = readPartDrag(event.dataTransfer);
+    if (part === undefined || !editable) return;
+    event.preventDefault();
+    put(part, flow.screenToFlowPosition({ x: event.clientX, y: event.clientY }));
+  };
+  const onKeyDown = (event: KeyboardEvent): void => {
+    if (event.key === 'Escape' && placing !== undefined) startPlacing(undefined);
+  };
+
+  // The first fit, once the canvas knows its size; later sizes of the window keep what is being looked at.
+  const fitted = useRef(false);
+  const width = useStore((state) => state.width);
+  useEffect(() => {
+    if (fitted.current || width === 0) return;
+    fitted.current = true;
+    view.fit(geometry.sheet, false);
+  }, [width, view, geometry.sheet]);
+
+  const hint = placing === undefined ? undefined : placingHint(placing, firstEnd !== undefined);
+  return (
+    <DrawingContext value={drawing}>
+      <div
+        className="sheet-canvas"
+        data-placing={placing}
+        data-tool={tool}
+        onClickCapture={onClickCapture}
+        onDragOver={(event) => {
+          if (editable && event.dataTransfer.types.includes('application/x-longpatch-part'))
+            event.preventDefault();
+        }}
+        onDrop={onDrop}
+        onKeyDown={onKeyDown}
+      >
+        <ReactFlow<FlowNode, FlowEdge>
+          nodes={nodes}
+          edges={edges}
+          nodeTypes={nodeTypes}
+          edgeTypes={edgeTypes}
+          onNodesChange={onNodesChange}
+          onEdgesChange={onEdgesChange}
+          onNodeClick={onPartClick}
+          onEdgeClick={onPartClick}
+          onPaneClick={() => open.select([])}
+          onConnect={onConnect}
+          onConnectEnd={onConnectEnd}
+          isValidConnection={isValidConnection}
+          connectionMode={ConnectionMode.Loose}
+          connectionRadius={16}
+          connectOnClick={false}
+          connectionLineComponent={PullLine}
+          nodesConnectable={editable}
+          selectionOnDrag={tool === 'select'}
+          panOnDrag={tool === 'pan' ? true : [1, 2]}
+          selectionMode={SelectionMode.Full}
+          panOnScroll
+          zoomOnDoubleClick={false}
+          minZoom={zoomLimits.least}
+          maxZoom={zoomLimits.most}
+          multiSelectionKeyCode={['Meta', 'Control', 'Shift']}
+          selectionKeyCode={null}
+          deleteKeyCode={null}
+          elevateNodesOnSelect={false}
+          elevateEdgesOnSelect={false}
+          onlyRenderVisibleElements={nodes.length + edges.length > cullFrom}
+          proOptions={{ hideAttribution: true }}
+          aria-label={`Sheet of ${design.meta.title}`}
+        />
+        {hint !== undefined && (
+          <p className="sheet-hint" role="status">
+            {hint}
+          </p>
+        )}
+      </div>
+    </DrawingContext>
+  );
+}
+
+const placingHint = (part: TrayPart, hasFirst: boolean): string => {
+  if (part === 'tunnel')
+    return hasFirst ? 'Now the ring at the other end. Esc stops.' : 'Pick the ring at one end. Esc stops.';
+  if (part === 'association')
+    return hasFirst
+      ? 'Now the gateway at the other end. Esc stops.'
+      : 'Pick the gateway at one end. Esc stops.';
+  if (part === 'cable')
+    return hasFirst
+      ? 'Now the port, device or transport at the other end. Esc stops.'
+      : 'Pick a port or a device. Esc stops.';
+  if (part === 'endpoint') return 'Click a firewall, an HA pair or a router. Esc stops.';
+  return 'Click where it is to stand. Esc stops.';
+};

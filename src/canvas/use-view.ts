@@ -1,0 +1,60 @@
+import { useReactFlow, useStore } from '@xyflow/react';
+import { useCallback, useMemo } from 'react';
+import type { Point, SheetFrame } from '../drawing/geometry.ts';
+
+export const zoomLimits = { least: 0.1, most: 3 } as const;
+// 10 to 14 px of desk show round a fitted sheet.
+const deskPx = 12;
+const panMs = 240;
+
+const still = (): boolean => window.matchMedia('(prefers-reduced-motion: reduce)').matches;
+
+export interface View {
+  readonly zoom: number;
+  readonly zoomTo: (zoom: number) => void;
+  readonly fit: (sheet: SheetFrame, animated?: boolean) => void;
+  /** Brings a point of the sheet to the middle unless it is well in view already. */
+  readonly showPoint: (at: Point) => void;
+  readonly middle: () => Point;
+}
+
+/** Moves over the sheet. Fits are computed from the model, never measured. */
+export function useView(): View {
+  const flow = useReactFlow();
+  const zoom = useStore((state) => state.transform[2]);
+  const width = useStore((state) => state.width);
+  const height = useStore((state) => state.height);
+  const fit = useCallback(
+    (sheet: SheetFrame, animated = true) => {
+      if (width === 0 || height === 0) return;
+      const next = Math.min((width - 2 * deskPx) / sheet.width, (height - 2 * deskPx) / sheet.height, 1.2);
+      const x = (width - sheet.width * next) / 2;
+      const y = (height - sheet.height * next) / 2;
+      void flow.setViewport({ x, y, zoom: next }, { duration: animated && !still() ? panMs : 0 });
+    },
+    [flow, width, height],
+  );
+  return useMemo(
+    () => ({
+      zoom,
+      zoomTo: (next) =>
+        void flow.zoomTo(Math.min(zoomLimits.most, Math.max(zoomLimits.least, next)), {
+          duration: still() ? 0 : 120,
+        }),
+      fit,
+      showPoint: (at) => {
+        const viewport = flow.getViewport();
+        const screen = { x: at.x * viewport.zoom + viewport.x, y: at.y * viewport.zoom + viewport.y };
+        const margin = 60;
+        if (screen.x > margin && screen.y > margin && screen.x < width - margin && screen.y < height - margin)
+          return;
+        void flow.setCenter(at.x, at.y, { zoom: viewport.zoom, duration: still() ? 0 : panMs });
+      },
+      middle: () => {
+        const viewport = flow.getViewport();
+        return { x: (width / 2 - viewport.x) / viewport.zoom, y: (height / 2 - viewport.y) / viewport.zoom };
+      },
+    }),
+    [flow, zoom, fit, width, height],
+  );
+}
