@@ -1,0 +1,116 @@
+import { useId, useState } from 'react';
+import { Button } from '../../components/button.tsx';
+import { Icon } from '../../components/icon.tsx';
+import { SeverityShape, severityWords, type Severity } from '../../components/severity-mark.tsx';
+import type { ElementRef } from '../../engine/model/design.ts';
+import type { Finding } from '../../engine/rules/finding.ts';
+import { sourceText } from '../../engine/rules/rule-reference.ts';
+import { classNames } from '../../lib/class-names.ts';
+import { useChecks, useFixes } from '../../workspace/checks-context.tsx';
+import { findingsAbout } from './field-marks.ts';
+import { useInspectorTools } from './inspector-context.ts';
+import { useCommit, useEditable } from './use-field.ts';
+
+const edges: Readonly<Record<Severity, string>> = {
+  blocking: 'border-red',
+  degrading: 'border-degr',
+  advisory: 'border-advi',
+};
+const inks: Readonly<Record<Severity, string>> = {
+  blocking: 'text-red',
+  degrading: 'text-degr',
+  advisory: 'text-advi',
+};
+
+// Each proposal of a fix costs a run of all checks, so only the first findings are open from the start.
+const openFromTheStart = 2;
+
+/** What the checks say about an element, with what can be done about it. */
+export function FindingBoxes({ about }: { readonly about: ElementRef }) {
+  const { findings } = useChecks();
+  const found = findingsAbout(findings, about);
+  if (found.length === 0) return null;
+  return (
+    <section aria-label="Findings" className="flex flex-col gap-8">
+      {found.map((finding, at) => (
+        <FindingBox key={finding.key} finding={finding} open={at < openFromTheStart} />
+      ))}
+    </section>
+  );
+}
+
+/** One finding: words, sentence, why, sources, and its fixes with what each will do. */
+export function FindingBox({ finding, open }: { readonly finding: Finding; readonly open: boolean }) {
+  const [shown, setShown] = useState(open);
+  const { severity, words } = finding;
+  return (
+    <article className={classNames('border border-l-5 bg-field px-9 py-8', edges[severity])}>
+      <h3>
+        <button
+          type="button"
+          aria-expanded={shown}
+          onClick={() => setShown(!shown)}
+          className={classNames(
+            'flex w-full items-center gap-6 text-left text-value font-semibold',
+            inks[severity],
+          )}
+        >
+          <SeverityShape severity={severity} />
+          <span className="min-w-0 flex-1">
+            {severityWords[severity]}: {words}
+          </span>
+          <Icon name={shown ? 'chevron-up' : 'chevron-down'} size={14} />
+        </button>
+      </h3>
+      {shown && <FindingBody finding={finding} />}
+    </article>
+  );
+}
+
+function FindingBody({ finding }: { readonly finding: Finding }) {
+  const { onShowFinding } = useInspectorTools();
+  const { severityReason, sentence, why, sources } = finding;
+  return (
+    <div className="mt-6 flex flex-col gap-6 text-base text-ink">
+      <p className="font-medium break-words">{sentence}.</p>
+      <p>{why}</p>
+      {severityReason !== undefined && <p className="text-ink-2">{severityReason}</p>}
+      <p className="text-note text-ink-2">{sources.map(sourceText).join('; ')}</p>
+      <FixButtons finding={finding} />
+      {onShowFinding !== undefined && (
+        <Button kind="quiet" small className="self-start" onClick={() => onShowFinding(finding.key)}>
+          Show in the list of findings
+        </Button>
+      )}
+    </div>
+  );
+}
+
+function FixButtons({ finding }: { readonly finding: Finding }) {
+  const editable = useEditable();
+  const { behind } = useChecks();
+  const fixes = useFixes(editable ? finding : undefined);
+  const commit = useCommit();
+  const id = useId();
+  return (
+    <>
+      {fixes.map((fix, at) => (
+        <div key={fix.id} className="mt-2 flex flex-col gap-4">
+          <p id={`${id}-${fix.id}`} className="text-note text-ink-2">
+            {fix.sentence}
+          </p>
+          <Button
+            kind={at === 0 ? 'primary' : 'secondary'}
+            className="h-auto! min-h-30 w-full py-4 whitespace-normal!"
+            // The fixes are for the design that was checked; a newer one is being checked this moment.
+            disabled={behind}
+            aria-describedby={`${id}-${fix.id}`}
+            onClick={() => commit(fix.label, fix.patch)}
+          >
+            {fix.label}
+          </Button>
+        </div>
+      ))}
+    </>
+  );
+}
