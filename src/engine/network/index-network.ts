@@ -52,7 +52,9 @@ const build = (design: DesignFacts): Network => {
     if (link.kind === 'cable') {
       cables.push([id, link]);
       for (const end of ends) {
-        const at: CableAt = { cable: id, end, member: link[end].member ?? 1 };
+        const plug = link[end];
+        const isPair = entryOf(design.devices, plug.device).kind === 'ha-pair';
+        const at: CableAt = { cable: id, end, member: isPair ? (plug.member ?? 1) : 1 };
         put(cablesByPort, portKey(link[end].device, link[end].port), at);
         put(cablesByDevice, link[end].device, at);
       }

@@ -57,15 +57,18 @@ export const cablingOf = (
   for (const group of groups)
     for (const port of group.ports) groupByPlug.set(plugKey(group.device, port, group.member), group);
   const byId = new Map(devices);
+  // Only a pair has members: on anything else a plug that names one is in the device all the same.
+  const groupOf = (plug: Cable['a']): Draft | undefined =>
+    groupByPlug.get(
+      plugKey(plug.device, plug.port, byId.get(plug.device)?.kind === 'ha-pair' ? plug.member : undefined),
+    );
   const isShut = (plug: Cable['a']): boolean => byId.get(plug.device)?.ports[plug.port]?.shut === true;
 
   const bundles: (Bundle & { readonly cables: Id[]; readonly alive: Id[] })[] = [];
   const bundleByCable = new Map<Id, Bundle>();
   const byGroups = new Map<string, (typeof bundles)[number]>();
   for (const [id, cable] of cables) {
-    const [a, b] = ends.map((end) =>
-      groupByPlug.get(plugKey(cable[end].device, cable[end].port, cable[end].member)),
-    );
+    const [a, b] = [groupOf(cable.a), groupOf(cable.b)];
     if (a === undefined || b === undefined) continue;
     // Two cables between the same single ports stay two: only an aggregate makes one crossing of several.
     const aggregated = a.aggregation !== undefined || b.aggregation !== undefined;

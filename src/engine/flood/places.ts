@@ -1,0 +1,230 @@
+import type { Member } from '../model/devices.ts';
+import type { Id } from '../model/scalars.ts';
+import type { Tags } from '../network/frame-tags.ts';
+import { isTrunk, untagged } from '../network/frame-tags.ts';
+import type { CircuitAt, Network, Port, PortCircuit, PortGroup } from '../network/network.ts';
+import {
+  deviceOfTunnelEnd,
+  ends,
+  entryOf,
+  forwardingMembers,
+  otherEnd,
+  perNetwork,
+  plugKey,
+} from '../network/network.ts';
+import type { ClassSet } from './frame-classes.ts';
+import { classesPassed } from './frame-classes.ts';
+
+/** 0 runs from end a to end b, 1 back. */
+export type Direction = 0 | 1;
+/** A way out: an element (cables first, then tunnels, by index) and the direction along it. */
+export interface Out {
+  readonly element: number;
+  readonly direction: Direction;
+}
+export interface SwitchPort {
+  readonly group: PortGroup;
+  readonly port: Port;
+  readonly outs: readonly Out[];
+  /** Ways that would lead out were no port shut. */
+  readonly shutOuts: readonly Out[];
+}
+export interface SwitchPlace {
+  readonly kind: 'switch';
+  readonly index: number;
+  readonly device: Id;
+  readonly ports: readonly SwitchPort[];
+  readonly ordinalByGroup: ReadonlyMap<number, number>;
+}
+interface CircuitCommon {
+  readonly at: CircuitAt;
+  /** Circuits of one place with the same number never exchange frames; -1 exchanges with all. */
+  readonly isolation: number;
+  readonly outs: readonly Out[];
+  readonly shutOuts: readonly Out[];
+}
+export type PlaceCircuit =
+  | (CircuitCommon & {
+      readonly kind: 'port';
+      readonly circuit: PortCircuit;
+      readonly group: PortGroup;
+      readonly port: Port;
+    })
+  | (CircuitCommon & {
+      readonly kind: 'tunnel';
+      readonly tunnel: Id;
+      readonly keepsTags: boolean;
+      /** Tunnels with one VNI at a multipoint endpoint are one circuit: never from one to the other. -1: not so. */
+      readonly horizon: number;
+    });
+export interface ForwarderPlace {
+  readonly kind: 'forwarder';
+  readonly index: number;
+  readonly device: Id;
+  readonly forwarder: Id;
+  readonly member: Member;
+  readonly circuits: readonly PlaceCircuit[];
+  readonly classesToTunnel: ClassSet;
+  readonly classesFromTunnel: ClassSet;
+}
+export interface HostPlace {
+  readonly kind: 'host';
+  readonly index: number;
+  readonly device: Id;
+  readonly ports: readonly {
+    readonly group: PortGroup;
+    readonly tags: Tags;
+    readonly outs: readonly Out[];
+    readonly shutOuts: readonly Out[];
+  }[];
+}
+/** Where a frame is between two crossings: inside a switch, a forwarder (of one member) or a host. */
+export type Place = SwitchPlace | ForwarderPlace | HostPlace;
+
+export interface Places {
+  readonly all: readonly Place[];
+  readonly byDevice: ReadonlyMap<Id, readonly Place[]>;
+  /** By forwarder and member: `forwarder@member`. */
+  readonly byForwarder: ReadonlyMap<string, ForwarderPlace>;
+  readonly tunnelIndex: ReadonlyMap<Id, number>;
+}
+
+/** The VLAN with which a host on a trunk tags its frames: its segment's at its site; untagged where that isn't known or the port is no trunk. */
+export const hostTags = (network: Network, host: Id, port: Port): Tags => {
+  const device = entryOf(network.design.devices, host);
+  if (device.kind !== 'host' || !isTrunk(port) || device.segment === undefined) return untagged;
+  return entryOf(network.design.segments, device.segment).sites[device.site]?.vlan ?? untagged;
+};
+
+const speaks = (network: Network, group: PortGroup): boolean =>
+  forwardingMembers(entryOf(network.design.devices, group.device)).includes(group.member);
+
+/** The ways out of a port group. Of an aggregate that leads to several groups a frame takes one: the first that isn't silent. */
+const outsOf = (
+  network: Network,
+  group: PortGroup,
+): { readonly outs: readonly Out[]; readonly shutOuts: readonly Out[] } => {
+  const all = group.bundles.map(({ bundle, end }) => ({ bundle: network.bundles[bundle]!, end }));
+  const alive = all.filter(({ bundle }) => bundle.alive.length > 0);
+  const used =
+    group.aggregation === undefined
+      ? alive
+      : [alive.find(({ bundle, end }) => speaks(network, bundle[otherEnd(end)])) ?? alive[0]].filter(
+          (one) => one !== undefined,
+        );
+  const asOuts = (list: typeof all): readonly Out[] =>
+    list.map(({ bundle, end }) => ({ element: bundle.index, direction: end === 'a' ? 0 : 1 }));
+  return {
+    outs: asOuts(used),
+    shutOuts: asOuts(all.filter(({ bundle }) => bundle.alive.length === 0)),
+  };
+};
+
+const buildCircuits = (
+  network: Network,
+  forwarder: Id,
+  member: Member,
+  tunnelIndex: ReadonlyMap<Id, number>,
+): readonly PlaceCircuit[] => {
+  const { design } = network;
+  const device = entryOf(design.devices, entryOf(design.forwarders, forwarder).device);
+  const isMultipoint =
+    device.profile !== undefined && entryOf(design.profiles, device.profile).vniScope === 'multipoint';
+  const isolations = new Map<string, number>();
+  const horizons = new Map<string, number>();
+  const numberOf = (numbers: Map<string, number>, key: string | undefined): number => {
+    if (key === undefined) return -1;
+    if (!numbers.has(key)) numbers.set(key, numbers.size);
+    return numbers.get(key)!;
+  };
+  const circuits: PlaceCircuit[] = [];
+  for (const at of network.circuitsByForwarder.get(forwarder) ?? []) {
+    const { circuit } = at;
+    const isolation = numberOf(isolations, circuit.isolation);
+    if (circuit.kind === 'port') {
+      const group = network.portGroupByPlug.get(plugKey(at.device, circuit.port, member));
+      // A member link carries no segment frames, whatever claims it.
+      if (group === undefined) continue;
+      const port = device.ports[group.port]!;
+      circuits.push({ kind: 'port', at, isolation, circuit, group, port, ...outsOf(network, group) });
+      continue;
+    }
+    const tunnel = entryOf(design.tunnels, circuit.tunnel);
+    const end = ends.find((candidate) => deviceOfTunnelEnd(network, tunnel, candidate) === at.device);
+    if (end === undefined) continue;
+    const { endpoint, vni, innerTags } = tunnel[end];
+    const owner = entryOf(design.endpoints, endpoint).member;
+    if (owner !== undefined && device.kind === 'ha-pair' && owner !== member) continue;
+    const keepsTags = (innerTags ?? (device.settings?.keepInnerTags === true ? 'keep' : 'strip')) === 'keep';
+    const horizon = numberOf(horizons, isMultipoint && vni !== undefined ? `${endpoint}/${vni}` : undefined);
+    const out: Out = {
+      element: network.bundles.length + tunnelIndex.get(circuit.tunnel)!,
+      direction: end === 'a' ? 0 : 1,
+    };
+    circuits.push({
+      kind: 'tunnel',
+      at,
+      isolation,
+      tunnel: circuit.tunnel,
+      keepsTags,
+      horizon,
+      outs: [out],
+      shutOuts: [],
+    });
+  }
+  return circuits;
+};
+
+/** Every place in which frames of the design can be, with the ways in and out of it. */
+export const placesOf = perNetwork((network): Places => {
+  const { design } = network;
+  const all: Place[] = [];
+  const byDevice = new Map<Id, Place[]>();
+  const byForwarder = new Map<string, ForwarderPlace>();
+  const tunnelIndex = new Map(network.tunnelIds.map((id, index) => [id, index]));
+  for (const id of network.deviceIds) {
+    const device = entryOf(design.devices, id);
+    const here: Place[] = [];
+    byDevice.set(id, here);
+    const add = (place: Place): void => {
+      all.push(place);
+      here.push(place);
+    };
+    const groups = network.portGroupsByDevice.get(id) ?? [];
+    if (device.kind === 'switch') {
+      const ports = groups.map((group) => ({
+        group,
+        port: device.ports[group.port]!,
+        ...outsOf(network, group),
+      }));
+      const ordinalByGroup = new Map(groups.map((group, ordinal) => [group.index, ordinal]));
+      add({ kind: 'switch', index: all.length, device: id, ports, ordinalByGroup });
+    } else if (device.kind === 'host') {
+      const ports = groups.map((group) => ({
+        group,
+        tags: hostTags(network, id, device.ports[group.port]!),
+        ...outsOf(network, group),
+      }));
+      add({ kind: 'host', index: all.length, device: id, ports });
+    } else {
+      for (const forwarder of network.forwardersByDevice.get(id) ?? []) {
+        const entry = entryOf(design.forwarders, forwarder);
+        for (const member of forwardingMembers(device)) {
+          const place: ForwarderPlace = {
+            kind: 'forwarder',
+            index: all.length,
+            device: id,
+            forwarder,
+            member,
+            circuits: buildCircuits(network, forwarder, member, tunnelIndex),
+            classesToTunnel: classesPassed(entry, 'to-tunnel'),
+            classesFromTunnel: classesPassed(entry, 'from-tunnel'),
+          };
+          add(place);
+          byForwarder.set(`${forwarder}@${member}`, place);
+        }
+      }
+    }
+  }
+  return { all, byDevice, byForwarder, tunnelIndex };
+});

@@ -1,0 +1,74 @@
+import type { Id } from '../model/scalars.ts';
+import type { Tags } from '../network/frame-tags.ts';
+import { accessVlan, circuitIn, isTrunk, untagged } from '../network/frame-tags.ts';
+import type { Network } from '../network/network.ts';
+import { entryOf } from '../network/network.ts';
+import type { FloodGraph } from './flood-graph.ts';
+import type { Emit } from './forwarding.ts';
+import type { Place } from './places.ts';
+
+/** Segments in the order of their letters: A to Z, then AA and on. */
+export const inLetterOrder = (network: Network): readonly Id[] =>
+  Object.keys(network.design.segments).sort((idA, idB) => {
+    const a = entryOf(network.design.segments, idA).letter;
+    const b = entryOf(network.design.segments, idB).letter;
+    return a.length - b.length || (a < b ? -1 : a > b ? 1 : idA < idB ? -1 : 1);
+  });
+
+/** Puts a frame of a site's VLAN into a place, in every way in which the place knows that VLAN. */
+const startIn = (graph: FloodGraph, place: Place, vlan: number, emit: Emit): void => {
+  const { forwarding } = graph;
+  if (place.kind === 'switch') forwarding.leave(place, -1, vlan, emit);
+  if (place.kind !== 'forwarder') return;
+  place.circuits.forEach((circuit, ordinal) => {
+    if (circuit.kind !== 'port') return;
+    const wire: Tags = !isTrunk(circuit.port) && accessVlan(circuit.port) === vlan ? untagged : vlan;
+    const inside = circuitIn(circuit.circuit, wire);
+    if (inside !== undefined) forwarding.leave(place, ordinal, inside, emit);
+  });
+};
+
+export interface SegmentNodes {
+  readonly segment: Id;
+  /** Every crossing that a frame of the segment can make, whoever sends it; filters are not asked. */
+  readonly nodes: readonly number[];
+}
+
+const compute = (graph: FloodGraph): readonly SegmentNodes[] => {
+  const { network, forwarding } = graph;
+  const stamp = new Int32Array(graph.nodeCount).fill(-1);
+  return inLetterOrder(network).map((segment, mark) => {
+    const nodes: number[] = [];
+    const emit: Emit = (element, direction, tags) => {
+      const node = graph.nodeOf(element, direction, tags);
+      if (node < 0 || stamp[node] === mark) return;
+      stamp[node] = mark;
+      nodes.push(node);
+    };
+    for (const [site, { vlan }] of Object.entries(entryOf(network.design.segments, segment).sites))
+      if (vlan !== undefined)
+        for (const device of network.devicesBySite.get(site) ?? [])
+          for (const place of forwarding.places.byDevice.get(device)!) startIn(graph, place, vlan, emit);
+    for (const host of network.hostsBySegment.get(segment) ?? [])
+      for (const place of forwarding.places.byDevice.get(host)!) forwarding.leave(place, -1, untagged, emit);
+    for (let i = 0; i < nodes.length; i += 1)
+      for (let edge = graph.edgeStart[nodes[i]!]!; edge < graph.edgeStart[nodes[i]! + 1]!; edge += 1) {
+        const target = graph.edgeTo[edge]!;
+        if (stamp[target] === mark) continue;
+        stamp[target] = mark;
+        nodes.push(target);
+      }
+    return { segment, nodes };
+  });
+};
+
+const known = new WeakMap<FloodGraph, readonly SegmentNodes[]>();
+
+/** For every segment, in order of letter, the crossings that its frames can make. */
+export const segmentReaches = (graph: FloodGraph): readonly SegmentNodes[] => {
+  const before = known.get(graph);
+  if (before !== undefined) return before;
+  const reaches = compute(graph);
+  known.set(graph, reaches);
+  return reaches;
+};
