@@ -1,11 +1,21 @@
 import { z } from 'zod';
 import { actions } from './session.ts';
 
+// eslint-disable-next-line no-control-regex
+const oneLine = /^[^\u0000-\u001f\u007f]*$/;
+
+// As strict as the name of anything in a design, where titles end up.
 const titleSchema = z
   .string()
   .trim()
   .min(1, 'expected a title, at least one character')
-  .max(80, 'expected at most 80 characters');
+  .max(80, 'expected at most 80 characters')
+  .regex(oneLine, 'expected one line without control characters');
+const engagementSummarySchema = z
+  .string()
+  .trim()
+  .max(200, 'expected at most 200 characters')
+  .regex(oneLine, 'expected one line without control characters');
 
 export const countsSchema = z.object({ blocking: z.int(), degrading: z.int(), advisory: z.int() });
 export type Counts = z.infer<typeof countsSchema>;
@@ -22,6 +32,7 @@ export const designSummarySchema = z.object({
   /** Sequence number of the last patch; also the version of the thumbnail. */
   sequence: z.int(),
   changedAt: z.iso.datetime(),
+  /** The person's name. */
   changedBy: z.string().nullable(),
   archivedAt: z.iso.datetime().nullable(),
 });
@@ -37,22 +48,22 @@ export const engagementSchema = z.object({
 });
 export type Engagement = z.infer<typeof engagementSchema>;
 
-/** GET /api/workspaces/:workspaceId/engagements?archived=true|false */
+/** GET /api/workspaces/:workspaceId/engagements?archived=true|false: the archived ones, of both kinds, besides the others when true. */
 export const engagementListSchema = z.object({ engagements: z.array(engagementSchema) });
-/** POST /api/workspaces/:workspaceId/engagements */
+/** POST /api/workspaces/:workspaceId/engagements → 201, the engagement */
 export const createEngagementSchema = z.strictObject({
   name: titleSchema,
-  summary: z.string().trim().max(200, 'expected at most 200 characters').optional(),
+  summary: engagementSummarySchema.optional(),
 });
-/** PATCH /api/engagements/:engagementId */
+/** PATCH /api/engagements/:engagementId → the engagement with all its designs, archived ones too */
 export const changeEngagementSchema = z.strictObject({
   name: titleSchema.optional(),
-  summary: z.string().trim().max(200, 'expected at most 200 characters').optional(),
+  summary: engagementSummarySchema.optional(),
   archived: z.boolean().optional(),
 });
 
 export const demoDesigns = ['fault-free', 'planted-faults'] as const;
-/** POST /api/engagements/:engagementId/designs */
+/** POST /api/engagements/:engagementId/designs → 201, the design's summary */
 export const createDesignSchema = z.strictObject({
   title: titleSchema,
   from: z.discriminatedUnion('kind', [
@@ -64,7 +75,7 @@ export const createDesignSchema = z.strictObject({
   ]),
 });
 export type CreateDesign = z.infer<typeof createDesignSchema>;
-/** PATCH /api/designs/:designId */
+/** PATCH /api/designs/:designId → its summary. A new title is written into the document as a patch. */
 export const changeDesignSchema = z.strictObject({
   title: titleSchema.optional(),
   archived: z.boolean().optional(),
@@ -75,6 +86,7 @@ export const openDesignSchema = z.object({
   summary: designSummarySchema,
   engagementName: z.string(),
   workspaceId: z.string(),
+  /** What the reader may do with it; nobody edits what is archived. */
   actions: z.array(z.enum(actions)),
   sequence: z.int(),
   /** The engine's document; parse with parseDesign. */
@@ -89,6 +101,7 @@ export const loggedPatchSchema = z.object({
   sequence: z.int(),
   /** Made by the client, unique: the same edit sent twice is applied once. */
   editId: z.string(),
+  /** The person's name; null for a repair. */
   by: z.string().nullable(),
   at: z.iso.datetime(),
   patch: patchSchema,
@@ -97,7 +110,10 @@ export const loggedPatchSchema = z.object({
 });
 export type LoggedPatch = z.infer<typeof loggedPatchSchema>;
 
-/** POST /api/designs/:designId/patches: edits in order, made on top of `baseSequence`. */
+/**
+ * POST /api/designs/:designId/patches: edits in order, made on top of `baseSequence`; all are taken or none. They merge by
+ * property with what others logged since. An edit inside something that was removed since is logged without that part.
+ */
 export const savePatchesSchema = z.strictObject({
   baseSequence: z.int().min(0, 'expected the sequence number that the edits were made on'),
   edits: z

@@ -52,15 +52,15 @@ const newPasswordSchema = z
   .min(12, 'expected at least 12 characters')
   .max(200, 'expected at most 200 characters');
 
-/** POST /api/session */
+/** POST /api/session → the session, with a new token */
 export const signInSchema = z.strictObject({
   email: emailSchema,
   password: z.string().min(1, 'expected a password').max(200, 'expected at most 200 characters'),
   keep: z.boolean().optional(),
 });
-/** POST /api/session/demo */
+/** POST /api/session/demo → the session; 404 while the demo is off. (DELETE /api/session → 204.) */
 export const demoSignInSchema = z.strictObject({ role: roleSchema });
-/** PUT /api/account/password */
+/** PUT /api/account/password → the session, with a new token; the person's other sessions end. */
 export const changePasswordSchema = z.strictObject({
   current: z.string().min(1, 'expected your current password').max(200, 'expected at most 200 characters'),
   next: newPasswordSchema,

@@ -1,0 +1,45 @@
+import { hashPassword } from '../server/auth/passwords.ts';
+import type { Database } from '../server/db/open-database.ts';
+import { insertDemoPerson } from '../server/repositories/demo-people.ts';
+import { insertSnapshot } from '../server/repositories/design-snapshots.ts';
+import { insertDesign } from '../server/repositories/designs.ts';
+import { insertEngagement } from '../server/repositories/engagements.ts';
+import { insertMembership, insertWorkspace } from '../server/repositories/memberships.ts';
+import { insertPerson } from '../server/repositories/people.ts';
+import { summarise } from '../server/services/design-summary.ts';
+import { demoDesign, smallerDemoDesigns } from './demo-designs/demo-design.ts';
+import { demoPeople } from './demo-people.ts';
+
+const oneMinuteMs = 60_000;
+
+/** Fills a database with the demo, all or nothing, once. */
+export async function seedSaltmarsh({ knex }: Pick<Database, 'knex'>): Promise<void> {
+  await knex.transaction(async (trx) => {
+    // Two starters may seed at once: the second waits, and finds the demo there.
+    await trx.raw('lock table demo_people in exclusive mode');
+    if ((await trx('demo_people').first('person_id')) !== undefined) return;
+
+    const workspaceId = await insertWorkspace(trx, 'Ternwick Net');
+    const ids = new Map<string, string>();
+    for (const { role, name, email, password } of demoPeople) {
+      const id = await insertPerson(trx, { name, email, passwordHash: await hashPassword(password) });
+      await insertMembership(trx, workspaceId, id, role);
+      await insertDemoPerson(trx, id);
+      ids.set(role, id);
+    }
+    const now = Date.now();
+    const engagement = await insertEngagement(
+      trx,
+      { workspaceId, name: 'Saltmarsh Ferries', summary: 'Head office, Gullhaven, Orrin Point, Skerry' },
+      new Date(now),
+    );
+    const designs = [demoDesign('fault-free'), demoDesign('planted-faults'), ...smallerDemoDesigns()];
+    for (const [index, document] of designs.entries()) {
+      // The list shows the last changed first.
+      const at = new Date(now - index * oneMinuteMs);
+      const changedBy = ids.get('architect')!;
+      const id = await insertDesign(trx, engagement.id, summarise(document), changedBy, at);
+      await insertSnapshot(trx, id, { sequence: 0, document });
+    }
+  });
+}

@@ -1,0 +1,68 @@
+import { join } from 'node:path';
+import express from 'express';
+import type { Express } from 'express';
+import { pino } from 'pino';
+import type { Logger } from 'pino';
+import { createSessions, refuseForgedRequests } from './auth/sessions.ts';
+import { createThrottles } from './auth/throttles.ts';
+import type { Config } from './config.ts';
+import type { Database } from './db/open-database.ts';
+import { clientFiles } from './middleware/client-files.ts';
+import { answerUnknownPaths, errorAnswers } from './middleware/error-answers.ts';
+import { requestLog } from './middleware/request-log.ts';
+import { securityHeaders } from './middleware/security-headers.ts';
+import { designRoutes } from './routes/design-routes.ts';
+import { engagementRoutes } from './routes/engagement-routes.ts';
+import { engineRoutes } from './routes/engine-routes.ts';
+import { healthRoutes } from './routes/health-routes.ts';
+import { sessionRoutes } from './routes/session-routes.ts';
+import type { Context } from './services/context.ts';
+import { createDocumentCache } from './services/stored-documents.ts';
+
+export interface AppOptions {
+  readonly database: Database;
+  readonly config: Config;
+  readonly clock?: () => Date;
+  readonly log?: Logger;
+  /** The built client. */
+  readonly clientFolder?: string;
+}
+
+const builtClient = join(import.meta.dirname, '..', 'dist');
+
+export function createApp({
+  database,
+  config,
+  clock = () => new Date(),
+  log = pino({ level: 'silent' }),
+  clientFolder = builtClient,
+}: AppOptions): Express {
+  const context: Context = { database, clock, documents: createDocumentCache() };
+  const sessions = createSessions(database, config, (error) => log.error({ err: error }, 'session store'));
+  const throttles = createThrottles(database.pool);
+
+  const app = express();
+  app.disable('x-powered-by');
+  app.set('query parser', 'simple');
+  app.set('etag', 'strong');
+  // A site under https stands behind one proxy that ends TLS; its word about the visitor's address counts, nobody else's.
+  app.set('trust proxy', config.publicUrl.startsWith('https:') ? 1 : false);
+
+  app.use(requestLog(log));
+  app.use(securityHeaders(config));
+  app.use('/api', (_req, res, next) => {
+    res.setHeader('Cache-Control', 'no-store');
+    next();
+  });
+  app.use(healthRoutes(database));
+  app.use(engineRoutes(throttles));
+  app.use('/api', ...sessions.handlers, refuseForgedRequests);
+  app.use(sessionRoutes(context, sessions, throttles));
+  app.use(engagementRoutes(context));
+  app.use(designRoutes(context));
+  app.use('/api', answerUnknownPaths);
+  app.use(clientFiles(clientFolder));
+  app.use(answerUnknownPaths);
+  app.use(errorAnswers(log));
+  return app;
+}

@@ -1,0 +1,37 @@
+import type { Knex } from 'knex';
+import type { Action, Role } from '#contract/session.ts';
+import { Refusal, notFound } from '../errors.ts';
+import { findRole } from '../repositories/memberships.ts';
+import { permits } from './permissions.ts';
+
+const words: { readonly [action in Action]: string } = {
+  'workspace.read': 'look into the workspace',
+  'engagement.create': 'start an engagement',
+  'engagement.edit': 'change an engagement',
+  'design.read': 'open drafts of designs',
+  'design.create': 'start a design',
+  'design.edit': 'edit designs',
+  'design.archive': 'archive or restore designs',
+};
+
+/**
+ * The person's role in the workspace, if it allows the action. Strangers are told that there is no such thing (`what`),
+ * members of too little right that their role does not allow it.
+ */
+export async function authorise(
+  knex: Knex,
+  personId: string,
+  action: Action,
+  workspaceId: string,
+  what: Parameters<typeof notFound>[0],
+): Promise<Role> {
+  const role = await findRole(knex, workspaceId, personId);
+  if (role === null) throw notFound(what);
+  if (!permits(role, action)) {
+    throw new Refusal(
+      'not-allowed',
+      `Your role in this workspace, ${role}, may not ${words[action]}; ask an owner of the workspace.`,
+    );
+  }
+  return role;
+}

@@ -1,0 +1,44 @@
+import type { Action, Role } from '#contract/session.ts';
+import { actions } from '#contract/session.ts';
+
+/**
+ * What each role may do. Every design is a draft so far, and installers work from approved revisions alone: they see which
+ * engagements and designs there are, and open none.
+ */
+export const permissions: { readonly [role in Role]: readonly Action[] } = {
+  owner: actions,
+  architect: actions,
+  reviewer: ['workspace.read', 'design.read'],
+  presales: ['workspace.read', 'design.read', 'design.create'],
+  installer: ['workspace.read'],
+};
+
+/** An action that a membership must allow, or the weaker wishes of routes that belong to no workspace. */
+export type Access = Action | 'signed-in' | 'anyone';
+
+/** Every route of the server, and what one must be allowed to do to be answered. */
+export const routes = {
+  'GET /api/health': 'anyone',
+  'POST /api/engine/check': 'anyone',
+  'POST /api/engine/wire': 'anyone',
+  'GET /api/session': 'anyone',
+  'POST /api/session': 'anyone',
+  'POST /api/session/demo': 'anyone',
+  'DELETE /api/session': 'anyone',
+  'PUT /api/account/password': 'signed-in',
+  'GET /api/workspaces/:workspaceId/engagements': 'workspace.read',
+  'POST /api/workspaces/:workspaceId/engagements': 'engagement.create',
+  'PATCH /api/engagements/:engagementId': 'engagement.edit',
+  'POST /api/engagements/:engagementId/designs': 'design.create',
+  'GET /api/designs/:designId': 'design.read',
+  'PATCH /api/designs/:designId': 'design.edit',
+  'GET /api/designs/:designId/patches': 'design.read',
+  'POST /api/designs/:designId/patches': 'design.edit',
+  'GET /api/designs/:designId/thumbnail': 'design.read',
+} as const satisfies { readonly [route: string]: Access };
+
+export type Route = keyof typeof routes;
+
+export function permits(role: Role, action: Action): boolean {
+  return permissions[role].includes(action);
+}

@@ -1,0 +1,111 @@
+import { createHash } from 'node:crypto';
+import ipaddr from 'ipaddr.js';
+import type { Pool } from 'pg';
+import { RateLimiterMemory, RateLimiterPostgres, RateLimiterRes } from 'rate-limiter-flexible';
+import { Refusal } from '../errors.ts';
+
+/** How often something may happen within a time. */
+export interface Allowance {
+  readonly times: number;
+  readonly seconds: number;
+}
+
+/** Kept in PostgreSQL, so that several processes behind one address count together. */
+export interface Throttles {
+  /** Counts an attempt before the password is looked at; undone by `signedIn`. */
+  signInAttempt(email: string, address: string): Promise<void>;
+  signedIn(email: string, address: string): Promise<void>;
+  /** Guesses at the current password of somebody who is signed in. */
+  passwordAttempt(personId: string): Promise<void>;
+  passwordFound(personId: string): Promise<void>;
+  demoSignIn(address: string): Promise<void>;
+  engineRequest(address: string): Promise<void>;
+}
+
+export const allowances = {
+  signInOfPersonFromAddress: { times: 10, seconds: 15 * 60 },
+  // Wider, so that nobody can lock a colleague out with a handful of requests.
+  signInOfPerson: { times: 100, seconds: 60 * 60 },
+  signInFromAddress: { times: 100, seconds: 15 * 60 },
+  currentPassword: { times: 10, seconds: 15 * 60 },
+  demoSignIn: { times: 120, seconds: 60 },
+  engineRequest: { times: 120, seconds: 60 },
+} as const satisfies { readonly [name: string]: Allowance };
+
+export function createThrottles(pool: Pool): Throttles {
+  const limiter = (name: keyof typeof allowances, insured = false) => {
+    const { times: points, seconds: duration } = allowances[name];
+    return new RateLimiterPostgres({
+      storeClient: pool,
+      tableName: 'rate_limits',
+      tableCreated: true,
+      clearExpiredByTimeout: true,
+      keyPrefix: name,
+      points,
+      duration,
+      ...(insured ? { insuranceLimiter: new RateLimiterMemory({ points, duration }) } : {}),
+    });
+  };
+  const ofPersonFromAddress = limiter('signInOfPersonFromAddress');
+  const ofPerson = limiter('signInOfPerson');
+  const fromAddress = limiter('signInFromAddress');
+  const currentPassword = limiter('currentPassword');
+  const demo = limiter('demoSignIn');
+  // The engine answers without a database too.
+  const engine = limiter('engineRequest', true);
+  const both = (email: string, address: string) => shortKey(`${email} ${addressKey(address)}`);
+
+  return {
+    async signInAttempt(email, address) {
+      await take(fromAddress, addressKey(address));
+      await take(ofPerson, shortKey(email));
+      await take(ofPersonFromAddress, both(email, address));
+    },
+    async signedIn(email, address) {
+      await Promise.all([
+        fromAddress.reward(addressKey(address), 1),
+        ofPerson.reward(shortKey(email), 1),
+        ofPersonFromAddress.delete(both(email, address)),
+      ]);
+    },
+    passwordAttempt: (personId) => take(currentPassword, personId),
+    async passwordFound(personId) {
+      await currentPassword.delete(personId);
+    },
+    demoSignIn: (address) => take(demo, addressKey(address)),
+    engineRequest: (address) => take(engine, addressKey(address)),
+  };
+}
+
+async function take(limiter: RateLimiterPostgres, key: string): Promise<void> {
+  try {
+    await limiter.consume(key);
+  } catch (error) {
+    if (!(error instanceof RateLimiterRes)) throw error;
+    const retryAfterSeconds = Math.max(1, Math.ceil(error.msBeforeNext / 1000));
+    throw new Refusal('too-many-requests', `Too many attempts; try again in ${inWords(retryAfterSeconds)}.`, {
+      retryAfterSeconds,
+    });
+  }
+}
+
+function inWords(seconds: number): string {
+  if (seconds < 90) return seconds === 1 ? '1 second' : `${seconds} seconds`;
+  return `${Math.ceil(seconds / 60)} minutes`;
+}
+
+/** What stands for one customer of an access network: an IPv4 address, or the /64 that every IPv6 site has at least (RFC 6177 section 2). */
+function addressKey(address: string): string {
+  if (!ipaddr.isValid(address)) return 'unknown';
+  const parsed = ipaddr.process(address);
+  if (parsed.kind() === 'ipv4') return parsed.toString();
+  return `${(parsed as ipaddr.IPv6).parts
+    .slice(0, 4)
+    .map((part) => part.toString(16))
+    .join(':')}::/64`;
+}
+
+// Keys keep their length whatever people type, and hold no address of anybody.
+function shortKey(text: string): string {
+  return createHash('sha256').update(text).digest('base64url');
+}

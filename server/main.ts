@@ -1,0 +1,61 @@
+import { createServer } from 'node:http';
+import { pino } from 'pino';
+import { createApp } from './app.ts';
+import { readConfig } from './config.ts';
+import { openDatabase } from './db/open-database.ts';
+
+const log = pino({
+  // Nothing of this is written on purpose; errors of libraries may carry it along.
+  redact: {
+    paths: [
+      'password',
+      'cookie',
+      'authorization',
+      'headers',
+      'body',
+      'detail',
+      'parameters',
+      'bindings',
+    ].flatMap((name) => [name, `*.${name}`, `*.*.${name}`]),
+    censor: '[withheld]',
+  },
+});
+const shutdownMs = 8_000;
+
+const result = readConfig(process.env);
+if (result.ok) {
+  const { config } = result;
+  const database = openDatabase(config.databaseUrl, {
+    onError: (error) => log.error({ err: error }, 'database'),
+  });
+  const server = createServer(createApp({ database, config, log }));
+
+  const stop = (signal: string): void => {
+    log.info({ signal }, 'stopping');
+    setTimeout(() => {
+      log.error('some requests did not end in time');
+      process.exit(1);
+    }, shutdownMs).unref();
+    server.close(() => {
+      void database.close().then(
+        () => log.info('stopped'),
+        (error: unknown) => log.error({ err: error }, 'the database did not close'),
+      );
+    });
+    server.closeIdleConnections();
+  };
+  process.once('SIGTERM', stop);
+  process.once('SIGINT', stop);
+
+  server.once('error', (error) => {
+    log.fatal({ err: error }, `cannot listen on ${config.host}, port ${config.port}`);
+    process.exitCode = 1;
+    void database.close();
+  });
+  server.listen(config.port, config.host, () =>
+    log.info({ host: config.host, port: config.port, publicUrl: config.publicUrl }, 'listening'),
+  );
+} else {
+  for (const problem of result.problems) log.fatal(problem);
+  process.exitCode = 1;
+}

@@ -1,0 +1,31 @@
+import type { RequestHandler } from 'express';
+import { Router } from 'express';
+import { checkRequestSchema } from '#contract/engine.ts';
+import { wireRequestSchema } from '#engine/wire/wire-request.ts';
+import type { Throttles } from '../auth/throttles.ts';
+import { jsonBody } from '../middleware/json-body.ts';
+import { checkDesign, wireAnswer } from '../services/engine-answers.ts';
+import { limits } from '../services/limits.ts';
+import { mountRoute } from './mount-route.ts';
+import { readBody } from './read-request.ts';
+
+/** The engine for everybody: no sign-in, nothing kept, each address so many requests a minute. */
+export function engineRoutes(throttles: Throttles): Router {
+  const router = Router();
+  const throttle: RequestHandler = async (req, _res, next) => {
+    await throttles.engineRequest(req.ip ?? '');
+    next();
+  };
+  const body = [throttle, ...jsonBody(limits.engineBodyBytes)];
+
+  mountRoute(router, 'POST /api/engine/check', ...body, (req, res) => {
+    const { design, withFixes = false } = readBody(req, checkRequestSchema);
+    res.json(checkDesign(design, withFixes));
+  });
+
+  mountRoute(router, 'POST /api/engine/wire', ...body, (req, res) => {
+    res.json(wireAnswer(readBody(req, wireRequestSchema)));
+  });
+
+  return router;
+}

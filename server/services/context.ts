@@ -1,0 +1,9 @@
+import type { Database } from '../db/open-database.ts';
+import type { DocumentCache } from './stored-documents.ts';
+
+/** What services work with: one per process. */
+export interface Context {
+  readonly database: Database;
+  readonly clock: () => Date;
+  readonly documents: DocumentCache;
+}

@@ -1,0 +1,152 @@
+import type { CreateDesign, DesignSummary, OpenDesign } from '#contract/designs.ts';
+import type { Design } from '#engine/model/design.ts';
+import { emptyDesign } from '#engine/model/design.ts';
+import { applyPatch } from '#engine/model/merge-patch.ts';
+import { parseDesign } from '#engine/model/parse-design.ts';
+import { demoDesign } from '../../seeds/demo-designs/demo-design.ts';
+import { authorise } from '../auth/authorise.ts';
+import { permissions } from '../auth/permissions.ts';
+import { Refusal, notFound } from '../errors.ts';
+import { insertSnapshot } from '../repositories/design-snapshots.ts';
+import type { DesignRow } from '../repositories/designs.ts';
+import { findDesign, insertDesign, lockDesign, setDesignArchivedAt } from '../repositories/designs.ts';
+import { findEngagement } from '../repositories/engagements.ts';
+import type { Context } from './context.ts';
+import { summarise, summaryOf } from './design-summary.ts';
+import { saveTitle } from './save-edits.ts';
+import { sizeProblem } from './settle-edits.ts';
+import { loadDocument } from './stored-documents.ts';
+
+/** Starts a design: empty, from the demo, as a copy of another, or from a document. */
+export async function createDesign(
+  context: Context,
+  personId: string,
+  engagementId: string,
+  { title, from }: CreateDesign,
+): Promise<DesignSummary> {
+  const { database, clock } = context;
+  const engagement = await findEngagement(database.knex, engagementId);
+  if (engagement === null) throw notFound('engagement');
+  await authorise(database.knex, personId, 'design.create', engagement.workspaceId, 'engagement');
+  if (engagement.archivedAt !== null) {
+    throw new Refusal('conflict', 'The engagement is archived; restore it before you start a design in it.');
+  }
+  const document = withTitle(await firstDocument(context, personId, title, from), title);
+  const id = await database.knex.transaction(async (trx) => {
+    const inserted = await insertDesign(trx, engagementId, summarise(document), personId, clock());
+    await insertSnapshot(trx, inserted, { sequence: 0, document });
+    return inserted;
+  });
+  return summaryOf(await requireDesign(context, id));
+}
+
+/** A design with its document, and what the reader may do with it. */
+export async function openDesign(context: Context, personId: string, designId: string): Promise<OpenDesign> {
+  const { knex } = context.database;
+  const design = await requireDesign(context, designId);
+  const role = await authorise(knex, personId, 'design.read', design.workspaceId, 'design');
+  const { document } = await loadDocument(context, knex, design);
+  const isPutAway = design.archivedAt !== null || design.engagementArchivedAt !== null;
+  return {
+    summary: summaryOf(design),
+    engagementName: design.engagementName,
+    workspaceId: design.workspaceId,
+    actions: permissions[role].filter((action) => !isPutAway || action !== 'design.edit'),
+    sequence: design.sequence,
+    document,
+  };
+}
+
+/** Renames, archives or restores a design. */
+export async function changeDesign(
+  context: Context,
+  personId: string,
+  designId: string,
+  { title, archived }: { readonly title?: string; readonly archived?: boolean },
+): Promise<DesignSummary> {
+  const { database, clock } = context;
+  const design = await requireDesign(context, designId);
+  await authorise(database.knex, personId, 'design.edit', design.workspaceId, 'design');
+  // Restored before it is renamed, renamed before it is archived: an archived design takes no patch.
+  if (archived === false) await putAway(context, personId, designId, null);
+  if (title !== undefined) await saveTitle(context, personId, designId, title);
+  if (archived === true) await putAway(context, personId, designId, clock());
+  return summaryOf(await requireDesign(context, designId));
+}
+
+async function putAway(
+  { database }: Context,
+  personId: string,
+  designId: string,
+  at: Date | null,
+): Promise<void> {
+  await database.knex.transaction(async (trx) => {
+    const design = await lockDesign(trx, designId);
+    if (design === null) throw notFound('design');
+    await authorise(trx, personId, 'design.archive', design.workspaceId, 'design');
+    if (at === null || design.archivedAt === null) await setDesignArchivedAt(trx, designId, at);
+  });
+}
+
+export async function requireDesign({ database }: Context, designId: string): Promise<DesignRow> {
+  const design = await findDesign(database.knex, designId);
+  if (design === null) throw notFound('design');
+  return design;
+}
+
+async function firstDocument(
+  context: Context,
+  personId: string,
+  title: string,
+  from: CreateDesign['from'],
+): Promise<Design> {
+  switch (from.kind) {
+    case 'empty':
+      return emptyDesign(title);
+    case 'demo':
+      return demoDesign(from.demo);
+    case 'copy':
+      return copied(await documentOf(context, personId, from.designId));
+    case 'document':
+      return parsed(from.document);
+  }
+}
+
+async function documentOf(context: Context, personId: string, designId: string): Promise<Design> {
+  const { knex } = context.database;
+  const design = await requireDesign(context, designId);
+  await authorise(knex, personId, 'design.read', design.workspaceId, 'design');
+  return (await loadDocument(context, knex, design)).document;
+}
+
+/** A copy is another drawing: what identifies and releases the first is not carried over. */
+function copied(document: Design): Design {
+  return applyPatch(document, {
+    meta: { identification: null, revision: null, approvedBy: null, dateOfIssue: null, status: null },
+  });
+}
+
+function parsed(input: unknown): Design {
+  const result = parseDesign(input);
+  if (!result.ok) {
+    const count = result.problems.length;
+    throw new Refusal(
+      'invalid-design',
+      count === 1 ? 'The document has a problem.' : `The document has ${count} problems.`,
+      { details: result.problems.slice(0, mostProblemsShown) },
+    );
+  }
+  const tooLarge = sizeProblem(result.value);
+  if (tooLarge !== null) {
+    throw new Refusal('too-large', `The design has ${tooLarge.value}, ${tooLarge.expected}.`, {
+      details: [tooLarge],
+    });
+  }
+  return result.value;
+}
+
+const mostProblemsShown = 200;
+
+function withTitle(document: Design, title: string): Design {
+  return { ...document, meta: { ...document.meta, title } };
+}

@@ -1,0 +1,17 @@
+/** Bounds on what one request may bring, so that no request can hold the server up. README.md names them. */
+export const limits = {
+  /** Bodies of ordinary requests. */
+  bodyBytes: 100 * 1024,
+  /** A batch of edits, or a whole design as a document. */
+  editsBodyBytes: 5 * 1024 * 1024,
+  engineBodyBytes: 2 * 1024 * 1024,
+  /** Objects and arrays inside one another; a design has 8. */
+  nestedLevels: 32,
+  /** A stored design, as JSON. */
+  designBytes: 8 * 1024 * 1024,
+  designEntries: 20_000,
+  /** A design that is checked without being stored. */
+  checkedEntries: 5_000,
+  /** Each finding's fixes cost some runs of all checks. */
+  checkedEntriesWithFixes: 500,
+} as const;
