@@ -3,7 +3,7 @@ export interface GridSearch {
   readonly xs: readonly number[];
   readonly ys: readonly number[];
   readonly start: { readonly column: number; readonly row: number; readonly direction: Direction };
-  /** Where the way has to end, and the direction of its last step. */
+  /** Where the way has to end, and the direction in which it goes on from there; it may still turn at the end. */
   readonly goal: { readonly column: number; readonly row: number; readonly direction: Direction };
   /** Cost of the step from a crossing in a direction, Infinity where there is no passing. */
   readonly cost: (column: number, row: number, direction: Direction) => number;
@@ -96,7 +96,12 @@ export const searchGrid = (
     const cell = node >> 3;
     const column = cell % columns;
     const row = (cell - column) / columns;
-    if (column === goal.column && row === goal.row && direction === goal.direction && fulfilled === 1) {
+    if (
+      column === goal.column &&
+      row === goal.row &&
+      fulfilled === 1 &&
+      (direction + 2) % 4 !== goal.direction
+    ) {
       const way: { column: number; row: number }[] = [];
       for (let at = node; at !== -1; at = from[at]!) {
         const place = at >> 3;
@@ -112,9 +117,11 @@ export const searchGrid = (
       if (toColumn < 0 || toRow < 0 || toColumn >= columns || toRow >= ys.length) continue;
       const step = search.cost(column, row, next);
       if (step === Infinity) continue;
+      const endsAskew = toColumn === goal.column && toRow === goal.row && next !== goal.direction;
       const now = fulfilled === 1 || search.fulfils(column, row, next) ? 1 : 0;
       const arrived = number(toColumn, toRow, next, now);
-      const cost = best[node]! + step + (next === direction ? 0 : search.bendCost);
+      const cost =
+        best[node]! + step + (next === direction ? 0 : search.bendCost) + (endsAskew ? search.bendCost : 0);
       if (cost >= best[arrived]! - 1e-9) continue;
       best[arrived] = cost;
       from[arrived] = node;

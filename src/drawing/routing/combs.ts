@@ -142,8 +142,8 @@ export const ringGeometry = (design: Design, seat: RingSeat, groups: readonly Se
           comb: {
             arm: [dock, spot(along0, comb.spineAt)] as const,
             spine: [
-              spot(spineFrom - comb.overhang, comb.spineAt),
-              spot(spineTo + comb.overhang, comb.spineAt),
+              spot(spineFrom - (spineFrom === along0 ? 0 : comb.overhang), comb.spineAt),
+              spot(spineTo + (spineTo === along0 ? 0 : comb.overhang), comb.spineAt),
             ] as const,
           },
         }

@@ -2,18 +2,52 @@ import type { Side } from '../../engine/model/layout.ts';
 import type { Point, Rect } from '../geometry.ts';
 import type { Direction } from './a-star.ts';
 import { searchGrid, stepOf } from './a-star.ts';
+import { gridCosts } from './grid-costs.ts';
 import { bandRects } from './bands.ts';
 import type { Cord, Corners, Ground, Mouth, Way } from './ground.ts';
 import { bandOf, foreignBands, isLevelRun, isOwn } from './ground.ts';
 import { bottom, centre, contains, grown, outward, overlap, right } from './rects.ts';
 
-const perPx = { ownBand: 1, open: 3 } as const;
-const times = { foreignSite: 5, foreignBand: 6, alongFixedRun: 6 } as const;
-const bendCost = 90;
-const crossingCost = 70;
-const windowReach = 420;
+/** How a search weighs what it may pass, and how near it may come to what it may not. */
+export interface SearchManner {
+  /** Cost of a px inside the own band and elsewhere; whether the way has to pass through that band. */
+  readonly ownBand: number;
+  readonly open: number;
+  readonly throughBand: boolean;
+  readonly foreignSite: number;
+  readonly foreignBand: number;
+  readonly alongRun: number;
+  readonly bend: number;
+  readonly crossing: number;
+  /** Distances to obstacles in px, tried in turn. */
+  readonly clearances: readonly number[];
+  /** How far a way runs straight out of its mouth when so much is free ahead; undefined where that is too little. */
+  readonly stub: (cord: Cord, freePx: number) => number | undefined;
+  /** Free lines beside known runs. */
+  readonly besideRuns: number;
+}
+
 const searchClearance = 12;
 const leastClearance = 4;
+
+export const cordManner: SearchManner = {
+  ownBand: 1,
+  open: 3,
+  throughBand: true,
+  foreignSite: 5,
+  foreignBand: 6,
+  alongRun: 6,
+  bend: 90,
+  crossing: 70,
+  clearances: [searchClearance, leastClearance],
+  stub: ({ width, leastRadius }, free) =>
+    free < width / 2 + leastRadius
+      ? undefined
+      : Math.max(leastRadius + 2, Math.min(width / 2 + 22, free - width / 2 - searchClearance)),
+  besideRuns: 10,
+};
+
+const windowReach = 420;
 
 const directionOf: { readonly [side in Side]: Direction } = { right: 0, bottom: 1, left: 2, top: 3 };
 
@@ -72,77 +106,14 @@ const freeRun = (ground: Ground, mouth: Mouth, half: number): number => {
   return free;
 };
 
-const stubOf = (ground: Ground, cord: Cord, mouth: Mouth): Point | undefined => {
-  const half = cord.width / 2;
-  const free = freeRun(ground, mouth, half);
-  if (free < half + cord.leastRadius) return undefined;
-  const reach = Math.max(cord.leastRadius + 2, Math.min(half + 22, free - half - searchClearance));
+const stubOf = (ground: Ground, cord: Cord, mouth: Mouth, manner: SearchManner): Point | undefined => {
+  const reach = manner.stub(cord, freeRun(ground, mouth, cord.width / 2));
   const out = outward[mouth.side];
-  return { x: mouth.at.x + out.x * reach, y: mouth.at.y + out.y * reach };
+  return reach === undefined ? undefined : { x: mouth.at.x + out.x * reach, y: mouth.at.y + out.y * reach };
 };
 
 const sortedUnique = (values: readonly number[]): readonly number[] =>
   [...values].sort((a, b) => a - b).filter((value, i, all) => i === 0 || value - all[i - 1]! > 0.01);
-
-/** Costs of every step of the grid, painted rectangle by rectangle. */
-class GridCosts {
-  readonly level: Float64Array;
-  readonly upright: Float64Array;
-  private readonly xs: readonly number[];
-  private readonly ys: readonly number[];
-
-  constructor(xs: readonly number[], ys: readonly number[]) {
-    this.xs = xs;
-    this.ys = ys;
-    this.level = new Float64Array(xs.length * ys.length);
-    this.upright = new Float64Array(xs.length * ys.length);
-    ys.forEach((y, row) =>
-      xs.forEach((x, column) => {
-        this.level[row * xs.length + column] = ((xs[column + 1] ?? x) - x) * perPx.open;
-        this.upright[row * xs.length + column] = ((ys[row + 1] ?? y) - y) * perPx.open;
-      }),
-    );
-  }
-
-  /** Multiplies what lies in a rectangle: by the middle of each step, or with `touch` by any contact. */
-  times(rect: Rect, factor: number, touch = false): void {
-    const { xs, ys } = this;
-    const inside = (value: number, from: number, to: number): boolean => value > from && value < to;
-    const spans = (a: number, b: number, from: number, to: number): boolean =>
-      touch ? a < to && b > from : inside((a + b) / 2, from, to);
-    for (let row = 0; row < ys.length; row += 1) {
-      const y = ys[row]!;
-      const levelHere = inside(y, rect.y, bottom(rect));
-      const uprightHere = row + 1 < ys.length && spans(y, ys[row + 1]!, rect.y, bottom(rect));
-      if (!levelHere && !uprightHere) continue;
-      for (let column = 0; column < xs.length; column += 1) {
-        const at = row * xs.length + column;
-        if (levelHere && column + 1 < xs.length && spans(xs[column]!, xs[column + 1]!, rect.x, right(rect)))
-          this.level[at]! *= factor;
-        if (uprightHere && inside(xs[column]!, rect.x, right(rect))) this.upright[at]! *= factor;
-      }
-    }
-  }
-
-  cross({ from, to }: KnownRun): void {
-    const { xs, ys } = this;
-    if (isLevelRun(from, to)) {
-      const [x0, x1] = [Math.min(from.x, to.x), Math.max(from.x, to.x)];
-      const row = ys.findIndex((y, i) => y < from.y && (ys[i + 1] ?? -Infinity) >= from.y);
-      if (row < 0) return;
-      xs.forEach((x, column) => {
-        if (x > x0 && x < x1) this.upright[row * xs.length + column]! += crossingCost;
-      });
-    } else {
-      const [y0, y1] = [Math.min(from.y, to.y), Math.max(from.y, to.y)];
-      const column = xs.findIndex((x, i) => x < from.x && (xs[i + 1] ?? -Infinity) >= from.x);
-      if (column < 0) return;
-      ys.forEach((y, row) => {
-        if (y > y0 && y < y1) this.level[row * xs.length + column]! += crossingCost;
-      });
-    }
-  }
-}
 
 interface Trial {
   readonly clearance: number;
@@ -155,12 +126,14 @@ const attempt = (
   stubs: readonly [Point, Point],
   known: readonly KnownRun[],
   avoided: readonly Rect[],
+  manner: SearchManner,
   { clearance, window }: Trial,
 ): Corners | undefined => {
   const half = cord.width / 2;
   const [p, q] = stubs;
   const band = bandOf(ground, cord.transport);
   const own = band === undefined ? [] : bandRects(band);
+  const needsBand = manner.throughBand && own.length > 0;
   const within = (rect: Rect): boolean => window === undefined || overlap(window, rect);
   const obstacles = ground.obstacles.filter((o) => within(o.rect));
   const frames = ground.frames.filter((f) => within(f.rect));
@@ -181,7 +154,7 @@ const attempt = (
   }
   for (const run of known) {
     if (!run.fixed) continue;
-    const off = half + run.width / 2 + 10;
+    const off = half + run.width / 2 + manner.besideRuns;
     for (const end of [p, q]) {
       if (isLevelRun(run.from, run.to) && Math.abs(run.from.y - end.y) < 200)
         ys.push(run.from.y - off, run.from.y + off);
@@ -192,14 +165,16 @@ const attempt = (
   const edge = grown(ground.sheet, 240);
   const columns = sortedUnique(xs.filter((x) => x === p.x || x === q.x || (x > edge.x && x < right(edge))));
   const rows = sortedUnique(ys.filter((y) => y === p.y || y === q.y || (y > edge.y && y < bottom(edge))));
-  const costs = new GridCosts(columns, rows);
-  for (const rect of own) costs.times(rect, perPx.ownBand / perPx.open);
+  const costs = gridCosts(columns, rows, manner.open);
+  for (const rect of own) costs.weigh(rect, manner.ownBand / manner.open);
   for (const { site, rect } of frames)
-    if (site !== cord.a.site && site !== cord.b.site) costs.times(rect, times.foreignSite);
-  for (const rect of foreign) costs.times(rect, times.foreignBand);
-  for (const rect of avoided) costs.times(rect, times.alongFixedRun);
+    if (site !== cord.a.site && site !== cord.b.site) costs.weigh(rect, manner.foreignSite);
+  for (const rect of foreign)
+    if (manner.foreignBand === Infinity) costs.close(rect);
+    else costs.weigh(rect, manner.foreignBand);
+  for (const rect of avoided) costs.weigh(rect, manner.alongRun);
   for (const run of known) {
-    costs.cross(run);
+    costs.cross(run.from, run.to, manner.crossing);
     if (!run.fixed) continue;
     const level = isLevelRun(run.from, run.to);
     const reach = half + run.width / 2 + 3;
@@ -209,14 +184,14 @@ const attempt = (
       width: Math.abs(run.to.x - run.from.x) + (level ? 0 : 2 * reach),
       height: Math.abs(run.to.y - run.from.y) + (level ? 2 * reach : 0),
     };
-    costs.times(along, times.alongFixedRun);
+    costs.weigh(along, manner.alongRun);
   }
-  for (const { rect } of obstacles) costs.times(grown(rect, half + clearance - 0.1), Infinity, true);
+  for (const { rect } of obstacles) costs.close(grown(rect, half + clearance - 0.1));
 
   const columnOf = (x: number): number => columns.findIndex((value) => Math.abs(value - x) <= 0.01);
   const rowOf = (y: number): number => rows.findIndex((value) => Math.abs(value - y) <= 0.01);
   const inOwn = rows.map((y) =>
-    columns.map((x) => own.length === 0 || own.some((rect) => contains(rect, { x, y }))),
+    columns.map((x) => !needsBand || own.some((rect) => contains(rect, { x, y }))),
   );
   const way = searchGrid({
     xs: columns,
@@ -227,18 +202,13 @@ const attempt = (
       row: rowOf(q.y),
       direction: ((directionOf[cord.b.side] + 2) % 4) as Direction,
     },
-    cost: (column, row, direction) => {
-      const [dx, dy] = stepOf[direction];
-      const at = (row + Math.min(0, dy)) * columns.length + column + Math.min(0, dx);
-      const cost = dx === 0 ? costs.upright[at]! : costs.level[at]!;
-      return Number.isFinite(cost) ? cost : Infinity;
-    },
+    cost: costs.of,
     fulfils: (column, row, direction) => {
       const [dx, dy] = stepOf[direction];
       return inOwn[row]![column]! || inOwn[row + dy]![column + dx]!;
     },
-    bendCost,
-    leastCostPerPx: own.length === 0 ? perPx.open : perPx.ownBand,
+    bendCost: manner.bend,
+    leastCostPerPx: own.length === 0 ? manner.open : Math.min(manner.open, manner.ownBand),
   });
   if (way === undefined) return undefined;
   return withoutIdlePoints([
@@ -274,9 +244,10 @@ export const detour = (
   cord: Cord,
   known: readonly KnownRun[],
   avoided: readonly Rect[] = [],
+  manner: SearchManner = cordManner,
 ): Corners | undefined => {
-  const p = stubOf(ground, cord, cord.a);
-  const q = stubOf(ground, cord, cord.b);
+  const p = stubOf(ground, cord, cord.a, manner);
+  const q = stubOf(ground, cord, cord.b, manner);
   if (p === undefined || q === undefined) return undefined;
   const band = bandOf(ground, cord.transport);
   const points = [cord.a.at, cord.b.at];
@@ -300,12 +271,11 @@ export const detour = (
     windowReach,
   );
   const trials: readonly Trial[] = [
-    { clearance: searchClearance, window },
-    { clearance: searchClearance, window: undefined },
-    { clearance: leastClearance, window: undefined },
+    { clearance: manner.clearances[0]!, window },
+    ...manner.clearances.map((clearance) => ({ clearance, window: undefined })),
   ];
   for (const trial of trials) {
-    const found = attempt(ground, cord, [p, q], known, avoided, trial);
+    const found = attempt(ground, cord, [p, q], known, avoided, manner, trial);
     if (found !== undefined) return found;
   }
   return undefined;

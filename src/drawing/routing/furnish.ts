@@ -16,7 +16,7 @@ import { combOrder, combRect, ringGeometry } from './combs.ts';
 import type { Cord, Ground, Mouth, Obstacle } from './ground.ts';
 import { placePips } from './pips.ts';
 import { portLoads, portSpots } from './port-sides.ts';
-import { around, byText } from './rects.ts';
+import { around, bottom, byText, rectBetween, right } from './rects.ts';
 import type { RingSeat } from './ring-seats.ts';
 import { bracketRect, laneCount, ringSeats, ringedSides, sideTowards } from './ring-seats.ts';
 import { sheetFrame } from './sheet-frame.ts';
@@ -72,7 +72,14 @@ const obstaclesOf = (
   seats: readonly RingSeat[],
 ): readonly Obstacle[] => {
   const obstacles: Obstacle[] = [{ rect: sheet.titleBlock }, { rect: sheet.legend }];
-  for (const stand of stands.values()) obstacles.push({ rect: stand.rect, owner: stand.id });
+  for (const { id, plates } of stands.values()) {
+    for (const { rect } of plates) obstacles.push({ rect, owner: id });
+    const [first, second] = plates;
+    if (first === undefined || second === undefined) continue;
+    // The gap between a pair's members belongs to their own links.
+    const gap = rectBetween(second.rect.x, bottom(first.rect), right(first.rect), second.rect.y);
+    obstacles.push({ rect: gap, owner: id });
+  }
   const bracketed = new Set<string>();
   for (const seat of seats) {
     obstacles.push({

@@ -24,11 +24,11 @@ export interface Ground {
   readonly bands: readonly BandPlace[];
 }
 
-/** Where a cord begins, with the direction away from its device. */
+/** Where a cord or a cable begins, with the direction away from its device; a cable has no endpoint. */
 export interface Mouth {
   readonly at: Point;
   readonly side: Side;
-  readonly endpoint: string;
+  readonly endpoint?: string;
   readonly device: string;
   readonly site: string;
 }
@@ -63,8 +63,11 @@ export const bandOf = (ground: Ground, transport: string | undefined): BandPlace
 export const foreignBands = (ground: Ground, transport: string | undefined): readonly Rect[] =>
   ground.bands.filter((band) => band.id !== transport).flatMap(bandRects);
 
-/** Whether a cord's own comb and plate may touch its first run; nobody else's may. */
-export const isOwn = (obstacle: Obstacle, mouth: Mouth): boolean => obstacle.endpoint === mouth.endpoint;
+/** Whether an obstacle is what a way begins at: the comb of a cord's ring, or the plate of a cable's pip. */
+export const isOwn = (obstacle: Obstacle, mouth: Mouth): boolean =>
+  mouth.endpoint === undefined
+    ? obstacle.endpoint === undefined && obstacle.owner === mouth.device
+    : obstacle.endpoint === mouth.endpoint;
 
 /** True when a run, taken at half a width to either side, comes nearer than `clear` to an obstacle it does not belong to. */
 export const runIsBlocked = (

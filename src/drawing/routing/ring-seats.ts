@@ -118,7 +118,7 @@ const placeAlong = (seats: readonly Unseated[], stand: Stand, side: Side, onBrac
   });
   const out = edgeOf(edge, side);
   const off = (side === 'left' || side === 'top' ? -1 : 1) * (onBracket ? ring.offBracket : ring.offPlate);
-  const reach = Math.max(0, extent - 44);
+  const reach = Math.max(0, extent - 30);
   const step =
     seats.length < 2
       ? 0

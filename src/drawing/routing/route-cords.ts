@@ -148,6 +148,10 @@ const lessBound = (
   return keep > 0 ? { way: b, run: q } : { way: a, run: p };
 };
 
+/** How wide each band rectangle has to be for the plain ways of these cords, by `transport x y` of the rectangle. */
+export const bandNeeds = (ground: Ground, cords: readonly Cord[]): ReadonlyMap<string, number> =>
+  settleTracks(ground, firstWays(ground, cords, new Map())).needs;
+
 /**
  * A way for every cord. Where some overlap or run into an obstacle, the less bound ones are taken up and searched anew,
  * and the best state found is kept; what still can't pass gets no way at all rather than one across a plate.

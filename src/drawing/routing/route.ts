@@ -1,6 +1,7 @@
 import type { Design } from '../../engine/model/design.ts';
 import type { Crowded, SheetGeometry } from '../geometry.ts';
 import { lane } from '../parts/sizes.ts';
+import { cableGeometries } from './cables.ts';
 import type { FurnishedSheet } from './furnish.ts';
 import { cordsOf, deviceGeometries, furnish } from './furnish.ts';
 import { jacketGeometries } from './jackets.ts';
@@ -51,6 +52,10 @@ export const route = (design: Design): SheetGeometry => {
   shaped.forEach(({ bundle, way }) => {
     if (way.found === 'none') crowded.push({ what: 'no-way', ids: [bundle.id] });
   });
+  const jackets = jacketGeometries(shaped, cords.crossings, rings, cords.bands);
+  const cables = cableGeometries(design, furnished, { ...furnished.ground, bands: cords.bands }, jackets);
+  for (const { geometry } of cables)
+    if (geometry.noWay) crowded.push({ what: 'no-way', ids: geometry.links });
   return {
     sheet,
     sites,
@@ -63,8 +68,8 @@ export const route = (design: Design): SheetGeometry => {
     })),
     devices: deviceGeometries(furnished),
     rings: [...rings.values()],
-    jackets: jacketGeometries(shaped, cords.crossings, rings, cords.bands),
-    cables: [],
+    jackets,
+    cables: cables.map(({ geometry }) => geometry),
     notes: [],
     crowded,
   };

@@ -5,9 +5,11 @@ import { diffPatch } from '../../engine/model/merge-patch.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import type { Point } from '../geometry.ts';
 import type { Size } from '../parts/sizes.ts';
-import { band as bandSizes } from '../parts/sizes.ts';
+import { band as bandSizes, lane } from '../parts/sizes.ts';
 import { bundlesOf } from '../routing/bundles.ts';
 import { byText } from '../routing/rects.ts';
+import { cordsOf, furnish } from '../routing/furnish.ts';
+import { bandNeeds } from '../routing/route-cords.ts';
 import { routeSheet } from '../routing/route.ts';
 import type { RoutedSheet } from '../routing/route.ts';
 import { sheetFrame } from '../routing/sheet-frame.ts';
@@ -35,6 +37,8 @@ export interface TidyOptions {
 const mostLimbs = 4;
 const mostWidthRounds = 4;
 const collapseOver = 24;
+/** Steps in px by which right columns may be moved, so that runs of both sides don't meet. */
+const staggers = [16, -16, 24, -24, 32, -32, 44, -44, 58, -58];
 
 /** Blocks of all sites for either facing; each is built once. */
 const blocksOf = (
@@ -178,9 +182,13 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
       const arrangement = arrange({ design, facts, size, seating, blockOf, widths, stagger, force });
       if (arrangement === undefined) return undefined;
       const layout = layoutOf(design, arrangement, blockOf, collapsed);
-      const routed = routeSheet(withLayout(design, layout));
+      const laidOut = withLayout(design, layout);
+      const furnished = furnish(laidOut);
       const wider = new Map(widths);
-      for (const [key, need] of routed.cords.tracked.needs) {
+      for (const [key, need] of bandNeeds(
+        furnished.ground,
+        cordsOf(furnished, () => lane.pitch),
+      )) {
         const transport = key.slice(0, key.lastIndexOf(' ', key.lastIndexOf(' ') - 1));
         if (need > (wider.get(transport) ?? 0)) wider.set(transport, Math.ceil(need / 2) * 2);
       }
@@ -188,35 +196,36 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
         const laid = arrangement.bands.get(t);
         return laid === undefined || w <= laid.limbs[0]!.width + 0.5;
       });
-      if (settled || round === mostWidthRounds - 1) return { layout, arrangement, routed };
+      if (settled || round === mostWidthRounds - 1)
+        return { layout, arrangement, routed: routeSheet(laidOut) };
       widths = wider;
     }
   };
 
-  const find = (): { readonly tidied: Tidied; readonly again: (stagger: number) => Tidied | undefined } => {
+  /** The best of a seating's arrangements on one sheet: as it comes, or with the right columns moved a little. */
+  const bestOf = (size: SheetSize, seating: Seating, force: boolean): Tidied | undefined => {
+    const plain = attempt(size, seating, 0, force);
+    if (plain !== undefined && (force || scoreOf(plain.routed).steps === 0)) return plain;
+    const candidates = staggers.flatMap((stagger) => attempt(size, seating, stagger, false) ?? []);
+    if (plain !== undefined) candidates.unshift(plain);
+    return candidates.reduce<Tidied | undefined>(
+      (best, next) =>
+        best === undefined || scoreOf(next.routed).total < scoreOf(best.routed).total ? next : best,
+      undefined,
+    );
+  };
+  const find = (): Tidied => {
     for (const size of sheetSizes)
       for (let limbs = 1; limbs <= mostLimbs; limbs += 1)
         for (const seating of seatings(facts, limbs, heightOf, roomOn(design, size, limbs))) {
-          const tidied = attempt(size, seating, 0, false);
-          if (tidied !== undefined)
-            return { tidied, again: (stagger) => attempt(size, seating, stagger, false) };
+          const tidied = bestOf(size, seating, false);
+          if (tidied !== undefined) return tidied;
         }
     const last = sheetSizes.at(-1)!;
     const seating = seatings(facts, mostLimbs, heightOf, roomOn(design, last, mostLimbs)).at(-1)!;
-    return {
-      tidied: attempt(last, seating, 0, true)!,
-      again: (stagger) => attempt(last, seating, stagger, true),
-    };
+    return bestOf(last, seating, true)!;
   };
-  const { tidied, again } = find();
-  const candidates = [tidied];
-  if (scoreOf(tidied.routed).steps > 0)
-    for (const step of [16, 24, 32, 44, 58])
-      for (const stagger of [step, -step]) {
-        const other = again(stagger);
-        if (other !== undefined) candidates.push(other);
-      }
-  const best = candidates.reduce((a, b) => (scoreOf(b.routed).total < scoreOf(a.routed).total ? b : a));
+  const best = find();
   const layout = refine(design, best.layout);
   return diffPatch({ layout: design.layout }, { layout });
 };

@@ -1,0 +1,151 @@
+import type { Design } from '../../engine/model/design.ts';
+import type { CableGeometry, JacketGeometry, Path, Point } from '../geometry.ts';
+import { cable as cableSizes } from '../parts/sizes.ts';
+import type { CableEnd, LandingRun } from './cable-ends.ts';
+import { cableRuns } from './cable-ends.ts';
+import { cableWay, jogShares, runsOfCables } from './cable-ways.ts';
+import { combRect } from './combs.ts';
+import { pathThrough } from './corners.ts';
+import type { KnownRun } from './detour.ts';
+import type { FurnishedSheet } from './furnish.ts';
+import type { Corners, Ground } from './ground.ts';
+import type { ElbowRoom, LandedWay } from './landings.ts';
+import { landingRegister, landingWay } from './landings.ts';
+import { bottom } from './rects.ts';
+
+const shortJog = 20;
+
+const smooth = (corners: Corners): { readonly path: Path; readonly radius: number } => {
+  const lengths = corners
+    .slice(1)
+    .map((q, i) => Math.abs(q.x - corners[i]!.x) + Math.abs(q.y - corners[i]!.y));
+  const inner = lengths.slice(1, -1);
+  const radius = inner.some((length) => length < shortJog) ? cableSizes.jogRadius : cableSizes.radius;
+  const radii = lengths.slice(1).map((length, i) => {
+    const before = lengths[i]!;
+    const room = (run: number, value: number): number =>
+      run === 0 || run === lengths.length - 1 ? value - 1 : value / 2;
+    return Math.max(0, Math.min(radius, room(i, before), room(i + 1, length)));
+  });
+  return { path: pathThrough(corners, radii), radius };
+};
+
+/** Where one line crosses others at right angles, away from their ends. */
+const crossingsWith = (corners: Corners, others: readonly Corners[]): readonly Point[] => {
+  const found: Point[] = [];
+  const between = (value: number, p: number, q: number): boolean =>
+    value > Math.min(p, q) + 0.5 && value < Math.max(p, q) - 0.5;
+  for (const other of others)
+    for (let i = 0; i + 1 < corners.length; i += 1)
+      for (let j = 0; j + 1 < other.length; j += 1) {
+        const [p, q, r, s] = [corners[i]!, corners[i + 1]!, other[j]!, other[j + 1]!];
+        if (p.y === q.y && r.x === s.x && between(r.x, p.x, q.x) && between(p.y, r.y, s.y))
+          found.push({ x: r.x, y: p.y });
+        if (p.x === q.x && r.y === s.y && between(p.x, r.x, s.x) && between(r.y, p.y, q.y))
+          found.push({ x: p.x, y: r.y });
+      }
+  return found;
+};
+
+const leader = (a: Point, b: Point): Pick<CableGeometry, 'polyline' | 'path' | 'radius'> => ({
+  polyline: [a, b],
+  radius: 0,
+  path: [
+    { kind: 'move', to: a },
+    { kind: 'line', to: b },
+  ],
+});
+
+/** How far the combs beside a plate reach, labels included: WAN cables turn above or below them. */
+const elbowRoomOf = (furnished: FurnishedSheet, end: CableEnd): ElbowRoom => {
+  const rings = [...furnished.rings.values()].filter((ring) => ring.device === end.device);
+  const plate = furnished.stands.get(end.device)!.rect;
+  return {
+    above: Math.min(plate.y - 18, ...rings.map((ring) => combRect(ring).y - 15)),
+    below: Math.max(
+      bottom(plate) + 18,
+      ...rings.map((ring) => Math.max(bottom(combRect(ring)), bottom(ring.label.rect)) + 12),
+    ),
+  };
+};
+
+const roundedCorners = (corners: Corners): Corners =>
+  corners.map(({ x, y }) => ({ x: Math.round(x * 2) / 2, y: Math.round(y * 2) / 2 }));
+
+/** Every cable and WAN cable as it is drawn, without the labels of the latter. */
+export const cableGeometries = (
+  design: Design,
+  furnished: FurnishedSheet,
+  ground: Ground,
+  jackets: readonly JacketGeometry[],
+): readonly { readonly geometry: CableGeometry; readonly landing?: LandingRun }[] => {
+  const { cables, landings } = cableRuns(design, furnished.pips);
+  const siteOf = (device: string): string => furnished.stands.get(device)?.device.site ?? '';
+  const shares = jogShares(cables);
+  const cords: readonly KnownRun[] = jackets
+    .filter((jacket) => !jacket.noWay)
+    .flatMap(({ polyline, width }) =>
+      polyline.slice(1).map((to, i) => ({ from: polyline[i]!, to, width, fixed: true })),
+    );
+  const laid: Corners[] = [];
+  const drawn: { geometry: CableGeometry; landing?: LandingRun }[] = [];
+  const known = (): readonly KnownRun[] => [...cords, ...runsOfCables(laid)];
+
+  // WAN cables first: they have one straight way, the others can give way.
+  const register = landingRegister();
+  for (const run of landings) {
+    const way: LandedWay | undefined = landingWay(
+      ground,
+      run,
+      siteOf(run.from.device),
+      elbowRoomOf(furnished, run.from),
+      register,
+      known(),
+    );
+    const shared = { links: [run.link], aggregated: false };
+    if (way === undefined) {
+      const band = ground.bands.find((b) => b.id === run.landing.transport);
+      if (band === undefined) continue;
+      const limb = band.limbs[0]!;
+      const to = { x: limb.x + limb.width / 2, y: Math.max(limb.y, Math.min(bottom(limb), run.from.at.y)) };
+      drawn.push({
+        geometry: { ...shared, ...leader(run.from.at, to), crossings: [], noWay: true },
+        landing: run,
+      });
+      continue;
+    }
+    const corners = roundedCorners(way.corners);
+    drawn.push({
+      geometry: {
+        ...shared,
+        polyline: corners,
+        ...smooth(corners),
+        landing: { transport: run.landing.transport, bar: way.bar },
+        crossings: crossingsWith(corners, laid),
+        noWay: false,
+      },
+      landing: run,
+    });
+    laid.push(corners);
+  }
+  for (const run of cables) {
+    const way = cableWay(ground, run, shares.get(run.key) ?? 0.5, known(), siteOf);
+    const shared = { links: run.links, aggregated: run.aggregated };
+    if (way === undefined) {
+      drawn.push({ geometry: { ...shared, ...leader(run.a.at, run.b.at), crossings: [], noWay: true } });
+      continue;
+    }
+    const corners = roundedCorners(way);
+    drawn.push({
+      geometry: {
+        ...shared,
+        polyline: corners,
+        ...smooth(corners),
+        crossings: crossingsWith(corners, laid),
+        noWay: false,
+      },
+    });
+    laid.push(corners);
+  }
+  return drawn;
+};

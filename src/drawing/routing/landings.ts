@@ -1,0 +1,168 @@
+import type { Side } from '../../engine/model/layout.ts';
+import type { Point, Rect } from '../geometry.ts';
+import { landing as landingSizes } from '../parts/sizes.ts';
+import type { BandPlace } from './bands.ts';
+import { bandRects } from './bands.ts';
+import type { LandingRun } from './cable-ends.ts';
+import { cableManner } from './cable-ways.ts';
+import type { KnownRun } from './detour.ts';
+import { detour } from './detour.ts';
+import type { Corners, Ground } from './ground.ts';
+import { bandOf, foreignBands, runIsBlocked } from './ground.ts';
+import { bottom, clamp, isUpright, opposite, outward, overlap, right, runRect } from './rects.ts';
+
+/** Where a WAN cable ends: on an edge of its band, a little inside. */
+export interface LandedWay {
+  readonly corners: Corners;
+  readonly bar: Rect;
+}
+
+/** The combs that a WAN cable of one plate has to clear before it turns to its band. */
+export interface ElbowRoom {
+  readonly above: number;
+  readonly below: number;
+}
+
+const inset = 8;
+const elbowStep = 14;
+const mostElbows = 8;
+
+const barAt = (end: Point, side: Side): Rect => {
+  const { width, height } = landingSizes.bar;
+  const [w, h] = isUpright(side) ? [height, width] : [width, height];
+  return { x: end.x - w / 2, y: end.y - h / 2, width: w, height: h };
+};
+
+/** Landings taken so far on each edge, so that no two stand nearer than their spacing. */
+export const landingRegister = (): {
+  readonly isFree: (edge: string, along: number) => boolean;
+  readonly take: (edge: string, along: number) => void;
+} => {
+  const taken = new Map<string, number[]>();
+  return {
+    isFree: (edge, along) =>
+      (taken.get(edge) ?? []).every((other) => Math.abs(other - along) >= landingSizes.spacing - 0.5),
+    take: (edge, along) => void taken.set(edge, [...(taken.get(edge) ?? []), along]),
+  };
+};
+
+/** Nothing in the way: no plate, no foreign frame, no band of another transport. */
+const isClear = (ground: Ground, run: LandingRun, site: string, corners: Corners): boolean =>
+  corners.slice(1).every((q, i) => {
+    const p = corners[i]!;
+    if (runIsBlocked(ground, p, q, 1, 2)) return false;
+    const room = runRect(p, q, 1);
+    return (
+      !ground.frames.some((frame) => frame.site !== site && overlap(frame.rect, room)) &&
+      !foreignBands(ground, run.landing.transport).some((rect) => overlap(rect, room))
+    );
+  });
+
+interface Edge {
+  readonly key: string;
+  readonly rect: Rect;
+  /** The side of the band that the cable comes to. */
+  readonly side: Side;
+}
+
+const edgesOf = (band: BandPlace): readonly Edge[] =>
+  bandRects(band).flatMap((rect, i) =>
+    (['left', 'right', 'top', 'bottom'] as const).map((side) => ({
+      key: `${band.id} ${i} ${side}`,
+      rect,
+      side,
+    })),
+  );
+
+const spotOn = ({ rect, side }: Edge, along: number): Point => {
+  if (isUpright(side)) {
+    const y = side === 'top' ? rect.y + landingSizes.depth : bottom(rect) - landingSizes.depth;
+    return { x: clamp(along, rect.x + inset, right(rect) - inset), y };
+  }
+  const x = side === 'left' ? rect.x + landingSizes.depth : right(rect) - landingSizes.depth;
+  return { x, y: clamp(along, rect.y + inset, bottom(rect) - inset) };
+};
+
+/** The way of a WAN cable to its transport: straight, over an elbow that clears the combs, or searched. */
+export const landingWay = (
+  ground: Ground,
+  run: LandingRun,
+  site: string,
+  elbow: ElbowRoom,
+  register: ReturnType<typeof landingRegister>,
+  known: readonly KnownRun[],
+): LandedWay | undefined => {
+  const band = bandOf(ground, run.landing.transport);
+  if (band === undefined) return undefined;
+  const { at, side } = run.from;
+  const edges = edgesOf(band);
+  const done = (edge: Edge, corners: Corners): LandedWay => {
+    const end = corners.at(-1)!;
+    register.take(edge.key, isUpright(edge.side) ? end.x : end.y);
+    return { corners, bar: barAt(end, edge.side) };
+  };
+  const nearness = (edge: Edge): number => {
+    const spot = spotOn(edge, isUpright(edge.side) ? at.x : at.y);
+    return Math.abs(spot.x - at.x) + Math.abs(spot.y - at.y);
+  };
+  const near = [...edges].sort((p, q) => nearness(p) - nearness(q));
+
+  if (!isUpright(side)) {
+    for (const edge of near) {
+      if (edge.side !== opposite[side]) continue;
+      const end = spotOn(edge, at.y);
+      if (Math.abs(end.y - at.y) > 0.01 || (end.x - at.x) * outward[side].x < 12) continue;
+      if (register.isFree(edge.key, at.y) && isClear(ground, run, site, [at, end]))
+        return done(edge, [at, end]);
+    }
+  } else {
+    const away = outward[side].y;
+    const start = side === 'top' ? Math.min(at.y - 18, elbow.above) : Math.max(at.y + 18, elbow.below);
+    for (let i = 0; i < mostElbows; i += 1) {
+      const y = start + away * elbowStep * i;
+      for (const edge of near) {
+        if (isUpright(edge.side)) continue;
+        const end = spotOn(edge, y);
+        const towards = edge.side === 'left' ? 1 : -1;
+        if (Math.abs(end.y - y) > 0.01 || (end.x - at.x) * towards < 20) continue;
+        const corners = [at, { x: at.x, y }, end];
+        if (register.isFree(edge.key, y) && isClear(ground, run, site, corners)) return done(edge, corners);
+      }
+    }
+    for (const edge of near) {
+      if (edge.side !== opposite[side]) continue;
+      const end = spotOn(edge, at.x);
+      if (Math.abs(end.x - at.x) > 0.01 || (end.y - at.y) * away < 12) continue;
+      if (register.isFree(edge.key, at.x) && isClear(ground, run, site, [at, end]))
+        return done(edge, [at, end]);
+    }
+  }
+  for (const edge of near) {
+    const upright = isUpright(edge.side);
+    const wish = upright ? at.x : at.y;
+    for (let i = 0; i < mostElbows; i += 1) {
+      const off = Math.ceil(i / 2) * landingSizes.spacing * (i % 2 === 0 ? 1 : -1);
+      const end = spotOn(edge, wish + off);
+      if (!register.isFree(edge.key, upright ? end.x : end.y)) continue;
+      const out = outward[edge.side];
+      const outside = { x: end.x + out.x * landingSizes.depth, y: end.y + out.y * landingSizes.depth };
+      const found = detour(
+        ground,
+        {
+          key: run.key,
+          transport: run.landing.transport,
+          width: 2,
+          leastRadius: 5,
+          a: { at, side, device: run.from.device, site },
+          b: { at: outside, side: edge.side, device: '', site: '' },
+        },
+        known,
+        [],
+        cableManner,
+      );
+      if (found === undefined) break;
+      return done(edge, [...found.slice(0, -1), end]);
+    }
+  }
+  return undefined;
+};
