@@ -6,7 +6,7 @@ import { fixesFor } from '#engine/rules/fixes-for.ts';
 import { rules } from '#engine/rules/index.ts';
 import { runRules, runTheseRules } from '#engine/rules/run-rules.ts';
 import type { Design, ElementRef } from '#engine/model/design.ts';
-import { applyPatch, inversePatch } from '#engine/model/merge-patch.ts';
+import { applyPatch, inversePatch, type MergePatch } from '#engine/model/merge-patch.ts';
 import { parseDesign } from '#engine/model/parse-design.ts';
 
 export interface ExpectedFinding {
@@ -90,6 +90,14 @@ const expectWellFormed = (rule: Rule, design: Design, findings: readonly Finding
       expect(path.length).toBeGreaterThan(0);
     }
   }
+};
+
+/** A design with a change, which must leave it valid: the tests' own designs are held to that. */
+export const changed = (design: Design, ...patches: readonly MergePatch[]): Design => {
+  const parsed = parseDesign(patches.reduce<Design>(applyPatch, design));
+  if (!parsed.ok)
+    throw new Error(parsed.problems.map((p) => `${p.path}: ${p.value}, ${p.expected}`).join('\n'));
+  return parsed.value;
 };
 
 /** What a fresh copy gives: nothing of it is in any memory. */

@@ -1,5 +1,73 @@
+import { accessPortWithoutStormLimit } from './access-port-without-storm-limit.ts';
+import { associationBothBehindNat } from './association-both-behind-nat.ts';
+import { associationBothDynamic } from './association-both-dynamic.ts';
+import { associationLivenessOneSided } from './association-liveness-one-sided.ts';
+import { associationNeitherReachable } from './association-neither-reachable.ts';
+import { associationNoCommonPath } from './association-no-common-path.ts';
+import { associationNobodyStarts } from './association-nobody-starts.ts';
+import { associationProposalsDiffer } from './association-proposals-differ.ts';
+import { associationSelectorsMissLoopbacks } from './association-selectors-miss-loopbacks.ts';
+import { associationWrongInitiator } from './association-wrong-initiator.ts';
+import { authenticationMismatch } from './authentication-mismatch.ts';
+import { bridgeWhereFilterRequired } from './bridge-where-filter-required.ts';
+import { crossConnectCircuits } from './cross-connect-circuits.ts';
+import { crossConnectWithoutPolicy } from './cross-connect-without-policy.ts';
 import type { Rule } from './define-rule.ts';
+import { duplicateName } from './duplicate-name.ts';
+import { endpointAddressDuplicate } from './endpoint-address-duplicate.ts';
+import { endpointInsideSegment } from './endpoint-inside-segment.ts';
+import { endpointOnOneMember } from './endpoint-on-one-member.ts';
+import { frameExceedsPath } from './frame-exceeds-path.ts';
+import { ikeVersionMismatch } from './ike-version-mismatch.ts';
+import { portHoldsTwoCables } from './port-holds-two-cables.ts';
+import { transportFiltersNeeded } from './transport-filters-needed.ts';
+import { transportMtuUnknown } from './transport-mtu-unknown.ts';
+import { tunnelBareOnUntrusted } from './tunnel-bare-on-untrusted.ts';
+import { tunnelEndsOffAssociation } from './tunnel-ends-off-association.ts';
+import { tunnelFamiliesDiffer } from './tunnel-families-differ.ts';
+import { tunnelNoCommonPath } from './tunnel-no-common-path.ts';
+import { tunnelTagModeMismatch } from './tunnel-tag-mode-mismatch.ts';
+import { tunnelUdpPortMismatch } from './tunnel-udp-port-mismatch.ts';
 import { tunnelVniMismatch } from './tunnel-vni-mismatch.ts';
+import { tunnelVniReserved } from './tunnel-vni-reserved.ts';
+import { tunnelVniUnset } from './tunnel-vni-unset.ts';
+import { vniUsedTwice } from './vni-used-twice.ts';
+import { weakAlgorithm } from './weak-algorithm.ts';
 
 /** Every check, one line each. */
-export const rules: readonly Rule[] = [tunnelVniMismatch];
+export const rules: readonly Rule[] = [
+  accessPortWithoutStormLimit,
+  associationBothBehindNat,
+  associationBothDynamic,
+  associationLivenessOneSided,
+  associationNeitherReachable,
+  associationNoCommonPath,
+  associationNobodyStarts,
+  associationProposalsDiffer,
+  associationSelectorsMissLoopbacks,
+  associationWrongInitiator,
+  authenticationMismatch,
+  bridgeWhereFilterRequired,
+  crossConnectCircuits,
+  crossConnectWithoutPolicy,
+  duplicateName,
+  endpointAddressDuplicate,
+  endpointInsideSegment,
+  endpointOnOneMember,
+  frameExceedsPath,
+  ikeVersionMismatch,
+  portHoldsTwoCables,
+  transportFiltersNeeded,
+  transportMtuUnknown,
+  tunnelBareOnUntrusted,
+  tunnelEndsOffAssociation,
+  tunnelFamiliesDiffer,
+  tunnelNoCommonPath,
+  tunnelTagModeMismatch,
+  tunnelUdpPortMismatch,
+  tunnelVniMismatch,
+  tunnelVniReserved,
+  tunnelVniUnset,
+  vniUsedTwice,
+  weakAlgorithm,
+];

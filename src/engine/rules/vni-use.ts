@@ -1,10 +1,9 @@
 import type { DesignFacts } from '../network/network.ts';
+import { LARGEST_VNI, MANAGEMENT_VNI } from '../reference/vxlan.ts';
 import type { CheckContext } from './check-context.ts';
 
 // RFC 8944 section 4 (0 depends on the implementation) and RFC 8971 section 4 (1 may be kept for management).
-export const FIRST_PLAIN_VNI = 2;
-// RFC 7348 section 5: the field has 24 bits.
-const LAST_VNI = 2 ** 24 - 1;
+export const FIRST_PLAIN_VNI = MANAGEMENT_VNI + 1;
 // Common practice, no source: five digits, so that no VNI is taken for a VLAN.
 const FIRST_VNI_WITHOUT_POOL = 10_000;
 
@@ -27,7 +26,7 @@ export const freeVnis = (design: DesignFacts, context: CheckContext, count: numb
     .reduce((most, vni) => Math.max(most, vni), 0);
   const above = highest < FIRST_VNI_WITHOUT_POOL ? FIRST_VNI_WITHOUT_POOL : highest + 1;
   const ranges = context.pools?.vnis ?? [
-    { from: above, to: LAST_VNI },
+    { from: above, to: LARGEST_VNI },
     { from: FIRST_PLAIN_VNI, to: above - 1 },
   ];
   const free: number[] = [];

@@ -1,0 +1,49 @@
+import type { Network, PortCircuit } from '../network/network.ts';
+import { deviceOfTunnelEnd, ends, entryOf, perNetwork, segmentsAt } from '../network/network.ts';
+
+/** The segments whose frames a port's circuit takes in, by the VLANs that its site gives them. */
+export const segmentsOfCircuit = (
+  network: Network,
+  device: string,
+  { port, vlans }: PortCircuit,
+): readonly string[] => {
+  const { site, ports } = entryOf(network.design.devices, device);
+  if (vlans === 'all')
+    return Object.keys(network.design.segments).filter(
+      (id) => network.design.segments[id]!.sites[site]?.vlan !== undefined,
+    );
+  const untagged = ports[port]?.mode === 'trunk' ? ports[port].nativeVlan : ports[port]?.vlan;
+  const taken = vlans === 'untagged' ? (untagged === undefined ? [] : [untagged]) : vlans;
+  return taken.flatMap((vlan) => segmentsAt(network, site, vlan));
+};
+
+/** The segments that each forwarder serves, in order of id. */
+export const segmentsByForwarder = perNetwork(
+  (network): ReadonlyMap<string, readonly string[]> =>
+    new Map(
+      [...network.circuitsByForwarder].map(([forwarder, circuits]) => [
+        forwarder,
+        [
+          ...new Set(
+            circuits.flatMap(({ device, circuit }) =>
+              circuit.kind === 'port' ? segmentsOfCircuit(network, device, circuit) : [],
+            ),
+          ),
+        ].sort(),
+      ]),
+    ),
+);
+
+/** The segments that each tunnel carries as either end sees it, in order of id. */
+export const segmentsByTunnel = perNetwork((network): ReadonlyMap<string, readonly string[]> => {
+  const byForwarder = segmentsByForwarder(network);
+  return new Map(
+    network.tunnelIds.map((id) => {
+      const devices = ends.map((end) => deviceOfTunnelEnd(network, entryOf(network.design.tunnels, id), end));
+      const carried = (network.circuitsByTunnel.get(id) ?? [])
+        .filter(({ device }) => devices.includes(device))
+        .flatMap(({ forwarder }) => byForwarder.get(forwarder) ?? []);
+      return [id, [...new Set(carried)].sort()];
+    }),
+  );
+});

@@ -1,0 +1,194 @@
+import type { Network } from '../network/network.ts';
+import { defineRule, type Fault } from './define-rule.ts';
+import { lowerSegment, raisePath } from './packet-size-fixes.ts';
+import { siteNameOf } from './places.ts';
+import { capacitiesOf, gatewaysOf, isFragmented, needOf, type Tight } from './segment-capacity.ts';
+import { outermostBytes } from './tunnel-capacity.ts';
+import { counted } from './wording.ts';
+
+const messages = {
+  segment: {
+    words: 'packets too large',
+    sentence: (v: {
+      readonly segment: string;
+      readonly needBytes: number;
+      readonly largestBytes: number;
+      readonly tunnel: string;
+      readonly others: number;
+    }) =>
+      `${v.segment} needs packets of ${v.needBytes} bytes, but ${v.largestBytes} fit through ${v.tunnel}${v.others === 0 ? '' : ` and fewer than needed through ${counted(v.others, 'other tunnel', 'other tunnels')}`}`,
+  },
+  hosts: {
+    words: 'packets too large',
+    sentence: (v: {
+      readonly segment: string;
+      readonly needBytes: number;
+      readonly hosts: string;
+      readonly largestBytes: number;
+      readonly tunnel: string;
+    }) =>
+      `${v.hosts} of ${v.segment} may send packets of ${v.needBytes} bytes, but ${v.largestBytes} fit through ${v.tunnel}`,
+  },
+  gateway: {
+    words: 'gateway MTU large',
+    sentence: (v: {
+      readonly forwarder: string;
+      readonly place: string;
+      readonly mtuBytes: number;
+      readonly largestBytes: number;
+      readonly segment: string;
+    }) =>
+      `The gateway on ${v.forwarder} at ${v.place} sends up to ${v.mtuBytes} bytes into ${v.segment}, where ${v.largestBytes} fit through`,
+    why: 'A bridge can’t answer that a packet is too big. The gateway could, for everything that comes from elsewhere, if its own MTU were right.',
+    seen: 'Downloads from other networks to hosts of the far sites stall, while those hosts reach each other.',
+  },
+};
+
+export const frameExceedsPath = defineRule({
+  id: 'frame-exceeds-path',
+  title: 'The largest packet of a segment fits whole through every tunnel that carries it',
+  severity: 'blocking',
+  looksAt: [
+    'segments',
+    'tunnels',
+    'forwarders',
+    'associations',
+    'endpoints',
+    'devices',
+    'links',
+    'transports',
+    'sites',
+  ],
+  why: 'VXLAN and IPsec make every packet longer. What no longer fits the transport is dropped, and a bridge has no way to tell the sender.',
+  seen: 'Pings and logins work; file transfers, web pages and certificate exchanges hang.',
+  sources: [
+    { document: 'RFC 7348', clause: 'section 4.3' },
+    { document: 'RFC 8899', clause: 'section 1.1' },
+    { document: 'RFC 4303', clause: 'section 2.4' },
+  ],
+  messages,
+  check: (network): readonly Fault<typeof messages>[] => {
+    const { design } = network;
+    return [...capacitiesOf(network)].flatMap(([segment, capacities]): Fault<typeof messages>[] => {
+      const { name } = design.segments[segment]!;
+      const ref = { collection: 'segments', id: segment } as const;
+      const need = needOf(network, segment);
+      const tight = capacities.filter(({ largestBytes }) => largestBytes < (need?.needBytes ?? 0));
+      const [worst] = tight;
+      if (need === undefined || worst === undefined) return gatewayFaults(network, segment, capacities);
+      const { needBytes, hosts } = need;
+      const tunnelRefs = tight.map(({ tunnel }) => ({ collection: 'tunnels' as const, id: tunnel }));
+      const packetBytes = outermostBytes(needBytes, worst.stack);
+      const cut = tight.every(({ tunnel }) => isFragmented(network, tunnel));
+      const tunnel = design.tunnels[worst.tunnel]!.name;
+      const body = {
+        elements: [...tunnelRefs.slice(0, 1), ref, ...tunnelRefs.slice(1)],
+        identity: [segment],
+        basis: [needBytes, ...tight.map((one) => `${one.tunnel} ${one.largestBytes}`)],
+        ...(packetBytes === undefined
+          ? {}
+          : {
+              mark: {
+                kind: 'overhang' as const,
+                tunnel: worst.tunnel,
+                end: worst.end,
+                packetBytes,
+                mtuBytes: worst.mtuBytes,
+              },
+            }),
+        ...(cut
+          ? {
+              severity: 'degrading' as const,
+              severityReason:
+                'Outer packets may be fragmented here, which carries everything at twice the packets and breaks wherever fragments are dropped.',
+            }
+          : {}),
+      };
+      return [
+        hosts.length === 0
+          ? {
+              message: 'segment',
+              values: {
+                segment: name,
+                needBytes,
+                largestBytes: worst.largestBytes,
+                tunnel,
+                others: tight.length - 1,
+              },
+              properties: [{ ref, path: ['mtu'] }],
+              ...body,
+            }
+          : {
+              message: 'hosts',
+              values: {
+                segment: name,
+                needBytes,
+                largestBytes: worst.largestBytes,
+                tunnel,
+                hosts: hosts.length === 1 ? design.devices[hosts[0]!]!.name : `${hosts.length} hosts`,
+              },
+              properties: [{ ref, path: ['mtu'] }],
+              ...body,
+            },
+      ];
+    });
+  },
+  fixes: (fault, network) => {
+    if (fault.message === 'gateway') {
+      const { id } = fault.elements[0]!;
+      const { largestBytes, forwarder } = fault.values;
+      return [
+        {
+          id: 'lower-gateway',
+          label: `Set its MTU to ${largestBytes}`,
+          sentence: `Sets the MTU of the gateway on ${forwarder} to ${largestBytes} bytes, so that it can tell senders elsewhere.`,
+          patch: { forwarders: { [id]: { gateway: { mtu: largestBytes } } } },
+        },
+      ];
+    }
+    const segment = fault.identity![0]!;
+    const capacities = capacitiesOf(network).get(segment) ?? [];
+    return [
+      ...lowerSegment(network, segment, capacities),
+      ...raisePath(
+        network,
+        fault.values.needBytes,
+        capacities.filter(({ largestBytes }) => largestBytes < fault.values.needBytes),
+      ),
+    ];
+  },
+});
+
+const gatewayFaults = (
+  network: Network,
+  segment: string,
+  capacities: readonly Tight[],
+): Fault<typeof messages>[] => {
+  const { design } = network;
+  const largestBytes = capacities[0]?.largestBytes;
+  if (largestBytes === undefined) return [];
+  return gatewaysOf(network, segment).flatMap((id): Fault<typeof messages>[] => {
+    const forwarder = design.forwarders[id]!;
+    const mtuBytes = forwarder.gateway!.mtu!;
+    if (mtuBytes <= largestBytes) return [];
+    const ref = { collection: 'forwarders', id } as const;
+    return [
+      {
+        message: 'gateway',
+        values: {
+          forwarder: forwarder.name,
+          place: siteNameOf(design, forwarder.device),
+          mtuBytes,
+          largestBytes,
+          segment: design.segments[segment]!.name,
+        },
+        elements: [ref, { collection: 'segments', id: segment }],
+        properties: [{ ref, path: ['gateway', 'mtu'] }],
+        basis: [mtuBytes, largestBytes],
+        severity: 'degrading',
+        severityReason: 'Hosts that keep to the segment’s own MTU are not touched.',
+        sources: [{ document: 'RFC 1191', clause: 'section 4' }],
+      },
+    ];
+  });
+};

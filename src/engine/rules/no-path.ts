@@ -1,0 +1,138 @@
+import type { NoPath } from '../network/association-path.ts';
+import { landingOf } from '../network/association-path.ts';
+import type { Network } from '../network/network.ts';
+import type { JsonValue } from './finding.ts';
+import type { Fix } from './finding.ts';
+import type { Runner } from './other-path.ts';
+import { otherPathFixes } from './other-path.ts';
+import { placesOf } from './places.ts';
+import { listed } from './wording.ts';
+
+interface AtOneEnd {
+  readonly runner: string;
+  readonly place: string;
+}
+
+/** How the two rules about paths say why there is none. */
+export const noPathMessages = {
+  noLanding: {
+    words: 'no WAN port',
+    sentence: (v: AtOneEnd) => `${v.runner} has no path: ${v.place} has no WAN port on any transport`,
+  },
+  offDevice: {
+    words: 'no common path',
+    sentence: (v: AtOneEnd) =>
+      `${v.runner} has no path: at ${v.place} it names only WAN ports of other devices`,
+  },
+  shut: {
+    words: 'WAN port shut',
+    sentence: (v: AtOneEnd) =>
+      `${v.runner} has no path: at ${v.place} it may use only WAN ports that are shut`,
+  },
+  standby: {
+    words: 'WAN port silent',
+    sentence: (v: AtOneEnd) =>
+      `${v.runner} has no path: no open WAN port of the active member at ${v.place} is plugged into a transport`,
+  },
+  noTransport: {
+    words: 'no common path',
+    sentence: (v: {
+      readonly runner: string;
+      readonly placeA: string;
+      readonly transportsA: string;
+      readonly placeB: string;
+      readonly transportsB: string;
+    }) => `${v.runner} has no path: ${v.placeA} lands on ${v.transportsA}, ${v.placeB} on ${v.transportsB}`,
+  },
+  noFamily: {
+    words: 'no common family',
+    sentence: (v: { readonly runner: string; readonly transports: string }) =>
+      `${v.runner} has no path: its ends share no address family on ${v.transports}`,
+  },
+} as const;
+
+type Said =
+  | {
+      readonly message: 'noLanding' | 'offDevice' | 'shut' | 'standby';
+      readonly values: AtOneEnd & { readonly [name: string]: JsonValue };
+    }
+  | {
+      readonly message: 'noTransport';
+      readonly values: Parameters<(typeof noPathMessages)['noTransport']['sentence']>[0] & {
+        readonly [name: string]: JsonValue;
+      };
+    }
+  | {
+      readonly message: 'noFamily';
+      readonly values: Parameters<(typeof noPathMessages)['noFamily']['sentence']>[0] & {
+        readonly [name: string]: JsonValue;
+      };
+    };
+
+/** Which message says why there is no path, with its values. */
+export const sayNoPath = (network: Network, runner: Runner, reason: NoPath): Said => {
+  const { design } = network;
+  const places = placesOf(design, runner.ends.a.device, runner.ends.b.device);
+  const names = (transports: readonly string[]): string =>
+    listed(transports.map((id) => design.transports[id]!.name));
+  switch (reason.code) {
+    case 'no-landing':
+      return { message: 'noLanding', values: { runner: runner.name, place: places[reason.end] } };
+    case 'via-off-device':
+      return { message: 'offDevice', values: { runner: runner.name, place: places[reason.end] } };
+    case 'landing-silent': {
+      const areShut = reason.landings.every((id) => {
+        const { device, port } = landingOf(network, id);
+        return design.devices[device]!.ports[port]?.shut === true;
+      });
+      return {
+        message: areShut ? 'shut' : 'standby',
+        values: { runner: runner.name, place: places[reason.end] },
+      };
+    }
+    case 'no-common-transport':
+      return {
+        message: 'noTransport',
+        values: {
+          runner: runner.name,
+          placeA: places.a,
+          transportsA: names(reason.a),
+          placeB: places.b,
+          transportsB: names(reason.b),
+        },
+      };
+    case 'no-common-family':
+      return {
+        message: 'noFamily',
+        values: { runner: runner.name, transports: names(reason.transports) },
+      };
+  }
+};
+
+/** Changes that may give the association or tunnel a path. */
+export const noPathFixes = (network: Network, runner: Runner, reason: NoPath): readonly Fix[] => {
+  const fixes = otherPathFixes(network, runner, { ok: false, reason });
+  if (reason.code !== 'landing-silent') return fixes;
+  const { design } = network;
+  return [
+    ...reason.landings.map((id): Fix => {
+      const { device, port } = landingOf(network, id);
+      const entry = design.devices[device]!;
+      const name = entry.ports[port]!.name ?? `port ${entry.ports[port]!.number}`;
+      return entry.ports[port]!.shut === true
+        ? {
+            id: `open-${id}`,
+            label: `Open ${name}`,
+            sentence: `Opens ${name} of ${entry.name}.`,
+            patch: { devices: { [device]: { ports: { [port]: { shut: null } } } } },
+          }
+        : {
+            id: `plug-${id}`,
+            label: 'Plug in both members',
+            sentence: `Plugs ${name} of both members of ${entry.name} into the transport.`,
+            patch: { links: { [id]: { members: null } } },
+          };
+    }),
+    ...fixes,
+  ];
+};

@@ -1,0 +1,52 @@
+import { bridgeWhereFilterRequired } from '#engine/rules/bridge-where-filter-required.ts';
+import { hubDesign, pairDesign } from '../../support/designs.ts';
+import { changed, testRule } from '../../support/rule-tester.ts';
+
+const filtered = { segments: { a: { mustBeFiltered: true } } };
+const policy = { all: { rank: 'a0', action: 'permit', direction: 'both', frames: 'any' } } as const;
+
+testRule(bridgeWhereFilterRequired, {
+  accepted: {
+    'a segment that need not be filtered': pairDesign(),
+    'a cross-connect with a policy at one end': changed(pairDesign(), filtered, {
+      forwarders: { 'br-s1-a': { kind: 'cross-connect', policy } },
+    }),
+    'another segment on a bridge': changed(pairDesign({ segments: ['a', 'b'] }), filtered, {
+      forwarders: { 'br-s1-a': { kind: 'cross-connect', policy } },
+    }),
+    'a tunnel whose far end leads the segment nowhere': changed(pairDesign(), filtered, {
+      forwarders: { 'br-s1-a': { circuits: { 'tn-s0-s1-a': null } } },
+    }),
+  },
+  rejected: {
+    'bridges at both ends': {
+      design: changed(pairDesign(), filtered),
+      findings: [
+        {
+          sentence:
+            'Segment A must be filtered, but is bridged between Head office and Gullhaven through tn-s0-s1-a',
+          words: 'not filtered',
+          severity: 'blocking',
+          elements: ['tunnels/tn-s0-s1-a', 'segments/a', 'forwarders/br-s0-a', 'forwarders/br-s1-a'],
+          properties: ['segments/a: mustBeFiltered', 'forwarders/br-s0-a: kind', 'forwarders/br-s1-a: kind'],
+          fixes: ['Filter at Head office', 'Filter at Gullhaven'],
+        },
+      ],
+    },
+    'a hub, which can be filtered only at its spokes': {
+      design: changed(hubDesign(2), filtered),
+      findings: [
+        {
+          sentence:
+            'Segment A must be filtered, but is bridged between Head office and Gullhaven through tn-s0-s1-a',
+          fixes: ['Filter at Gullhaven'],
+        },
+        {
+          sentence:
+            'Segment A must be filtered, but is bridged between Head office and Orrin Point through tn-s0-s2-a',
+          fixes: ['Filter at Orrin Point'],
+        },
+      ],
+    },
+  },
+});

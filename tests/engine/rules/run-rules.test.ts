@@ -1,0 +1,146 @@
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import type { Design } from '#engine/model/design.ts';
+import { applyPatch, inversePatch, type MergePatch } from '#engine/model/merge-patch.ts';
+import { associationStates, tunnelStates } from '#engine/network/can-come-up.ts';
+import { indexNetwork } from '#engine/network/index-network.ts';
+import { compareFindings } from '#engine/rules/finding.ts';
+import { countBySeverity, runRules } from '#engine/rules/run-rules.ts';
+import { chainDesign, hubDesign, meshDesign, pairDesign } from '../../support/designs.ts';
+
+const sound: { readonly [name: string]: Design } = {
+  'a pair of sites': pairDesign(),
+  'a pair with three segments': pairDesign({ segments: ['a', 'b', 'c'], hostsPerSite: 2 }),
+  'a hub of four': hubDesign(4),
+  'a hub on an HA pair': hubDesign(3, { hub: 'ha-pair', segments: ['a', 'b'] }),
+  'a chain of five': chainDesign(5),
+  'a full mesh whose tunnels are isolated from each other': meshDesign(4, { join: { isolation: 'mesh' } }),
+};
+
+describe('runRules', () => {
+  it.each(Object.entries(sound))('finds nothing in %s', (_name, design) => {
+    expect(runRules(design).map((finding) => finding.sentence)).toEqual([]);
+  });
+
+  it('does not complain of lifetimes that differ, since each end keeps its own', () => {
+    const design = applyPatch(pairDesign(), {
+      associations: { 'as-s0-s1': { a: { ikeLifetimeSeconds: 3600, childLifetimeSeconds: 900 } } },
+    });
+    expect(runRules(design)).toEqual([]);
+  });
+
+  it('sorts by severity, then rule, then key, and counts', () => {
+    const findings = runRules(faulty);
+    expect(findings.length).toBeGreaterThan(4);
+    expect([...findings].sort(compareFindings)).toEqual(findings);
+    const counts = countBySeverity(findings);
+    expect(counts.blocking + counts.degrading + counts.advisory).toBe(findings.length);
+    expect(counts.blocking).toBeGreaterThan(0);
+    expect(counts.degrading).toBeGreaterThan(0);
+    expect(counts.advisory).toBeGreaterThan(0);
+  });
+
+  it('keeps the keys of findings whose values change, and changes their fingerprint', () => {
+    const [before] = runRules(vnis(10_120, 10_210));
+    const [after] = runRules(vnis(10_120, 10_211));
+    const [renamed] = runRules(
+      applyPatch(vnis(10_120, 10_210), { sites: { s1: { name: 'Gullhaven pier' } } }),
+    );
+    expect(after!.key).toBe(before!.key);
+    expect(after!.fingerprint).not.toBe(before!.fingerprint);
+    expect(renamed!.sentence).not.toBe(before!.sentence);
+    expect(renamed!.fingerprint).toBe(before!.fingerprint);
+  });
+
+  it('answers the same from memory as afresh, after any sequence of edits', () => {
+    fc.assert(
+      fc.property(fc.array(fc.nat(edits.length - 1), { minLength: 1, maxLength: 8 }), (picks) => {
+        let design: Design = pairDesign({ segments: ['a', 'b'] });
+        for (const pick of picks) {
+          const patch = edits[pick]!;
+          const undo = inversePatch(design, patch);
+          const edited = applyPatch(design, patch);
+          runRules(design);
+          expect(runRules(edited)).toEqual(runRules(structuredClone(edited)));
+          expect(runRules(applyPatch(edited, undo))).toEqual(runRules(structuredClone(design)));
+          design = edited;
+        }
+      }),
+      { numRuns: 60 },
+    );
+  });
+
+  it('names every tunnel and association that can’t come up in a blocking finding', () => {
+    fc.assert(
+      fc.property(fc.uniqueArray(fc.nat(edits.length - 1), { minLength: 1, maxLength: 5 }), (picks) => {
+        const design = picks.reduce<Design>(
+          (at, pick) => applyPatch(at, edits[pick]!),
+          pairDesign({ segments: ['a', 'b'] }),
+        );
+        const network = indexNetwork(design);
+        const blamed = new Set(
+          runRules(design)
+            .filter(({ severity }) => severity === 'blocking')
+            .flatMap(({ elements }) => elements.map(({ id }) => id)),
+        );
+        for (const [id, { up }] of associationStates(network)) if (!up) expect([...blamed]).toContain(id);
+        for (const [id, { reasons }] of tunnelStates(network))
+          if (reasons.some(({ code }) => code !== 'association-down'))
+            expect(
+              [id, ...(['a', 'b'] as const).map((end) => design.tunnels[id]![end].endpoint)].some((one) =>
+                blamed.has(one),
+              ),
+              id,
+            ).toBe(true);
+      }),
+      { numRuns: 100 },
+    );
+  });
+});
+
+const vnis = (a: number, b: number): Design =>
+  applyPatch(pairDesign(), { tunnels: { 'tn-s0-s1-a': { a: { vni: a }, b: { vni: b } } } });
+
+const association = (patch: MergePatch): MergePatch => ({ associations: { 'as-s0-s1': patch } });
+const tunnel = (patch: MergePatch): MergePatch => ({ tunnels: { 'tn-s0-s1-a': patch } });
+
+/** Edits in every collection that a check looks at, most of them faults. */
+const edits: readonly MergePatch[] = [
+  tunnel({ b: { vni: 777 } }),
+  tunnel({ a: { vni: null } }),
+  tunnel({ a: { udpPort: 8472 } }),
+  tunnel({ association: null }),
+  tunnel({ family: 6 }),
+  tunnel({ a: { innerTags: 'keep' } }),
+  association({ a: { start: 'answers' } }),
+  association({ b: { liveness: 'off' } }),
+  association({ b: { ikeVersion: 1 } }),
+  association({ a: { authentication: { method: 'certificate', vaultEntry: null } } }),
+  association({ b: { espProposals: { first: { encryption: 'aes-cbc', integrity: 'hmac-sha1-96' } } } }),
+  association({ a: { ikeProposals: { first: { group: 2 } } } }),
+  association({ a: { selectors: { loopbacks: { local: '10.99.0.0/24' } } } }),
+  { endpoints: { 'lo-s1': { ipv4: '10.255.0.1/32' } } },
+  { endpoints: { 'lo-s1': { ipv4: '10.110.3.3/32' } } },
+  { endpoints: { 'lo-s1': { ipv4: null, ipv6: '2001:db8::1/128' } } },
+  { links: { 'ld-s0-coast': { nat: {} } } },
+  { links: { 'ld-s1-coast': { dynamic: true } } },
+  { links: { 'ld-s1-coast': { ipv4: null, ipv6: '2001:db8:9::1' } } },
+  { transports: { coast: { mtu: null } } },
+  { transports: { coast: { mtu: 1400 } } },
+  { transports: { coast: { filters: ['esp', 'udp-4500', 'udp-4789'] } } },
+  { transports: { coast: { trusted: true } } },
+  { devices: { 'fw-s1': { ports: { wan1: { shut: true } } } } },
+  { devices: { 'fw-s1': { name: 'fw-s0' } } },
+  { devices: { 'sw-s1': { ports: { p2: { stormLimitPps: null } } } } },
+  { segments: { a: { mustBeFiltered: true } } },
+  { segments: { a: { mtu: 1500 } } },
+  { segments: { b: { letter: 'A' } } },
+  { forwarders: { 'br-s0-a': { kind: 'cross-connect' } } },
+  { forwarders: { 'br-s0-a': { circuits: { access: null } } } },
+  { sites: { s1: { name: 'Head office' } } },
+];
+
+const faulty = [0, 7, 9, 25, 26, 27, 29].reduce<Design>(
+  (design, i) => applyPatch(design, edits[i]!),
+  pairDesign({ segments: ['a', 'b'] }),
+);
