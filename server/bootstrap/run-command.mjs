@@ -1,5 +1,6 @@
 import { spawn } from 'node:child_process';
 import { appendFileSync } from 'node:fs';
+import { stripVTControlCharacters } from 'node:util';
 
 /**
  * @typedef {object} CommandOptions
@@ -44,11 +45,11 @@ export function runCommand(program, args, { cwd, env, logFile, signal, endsWithU
 }
 
 /**
- * The end of a program's output, for the sentence that reports its failure.
+ * The end of a program's output, without its colours, for the sentence that reports its failure.
  * @param {string} output
  * @param {number} [lines]
  * @returns {string}
  */
 export function lastLines(output, lines = 12) {
-  return output.trimEnd().split('\n').slice(-lines).join('\n');
+  return stripVTControlCharacters(output).trimEnd().split('\n').slice(-lines).join('\n');
 }
