@@ -5,7 +5,7 @@ import { fitText, textWidth, wrapText } from '../text-width.ts';
 import type { FontWeight } from '../text-width.ts';
 import { paint } from '../theme/paint.ts';
 import type { Level } from './level-of-detail.ts';
-import { textLine } from './text-shape.ts';
+import { capShift, textLine } from './text-shape.ts';
 import type { TransportWords } from './words.ts';
 
 interface Line {
@@ -135,23 +135,32 @@ const flat = (words: TransportWords, rect: Rect, level: Level, dimmed: boolean):
   return stacked(list, rect.x + rect.width / 2, top, undefined, dimmed);
 };
 
-/** One line along the edge of an upright band that has no room across. */
+/** One line along the edge of an upright band that has no room across: as much as fits its length, trust before figures. */
 const turned = (words: TransportWords, rect: Rect, dimmed: boolean): readonly Shape[] => {
-  const rest = [words.kind, words.latency, words.mtu, words.loss, words.trust].filter(
-    (fact): fact is string => fact !== undefined,
-  );
+  const { name, kind, trust, latency, mtu, loss } = words;
+  const known = (facts: readonly (string | undefined)[]): string =>
+    facts.map((fact) => (fact === undefined ? '' : `, ${fact}`)).join('');
+  const candidates = [
+    known([kind, latency, mtu, loss, trust]),
+    known([kind, latency, mtu, trust]),
+    known([mtu, trust]),
+    known([trust]),
+    '',
+  ];
+  const widthPx = (rest: string, sizePx: number): number =>
+    textWidth(name, sizePx, 600) + textWidth(rest, sizePx, 400);
+  const rest = candidates.find((candidate) => widthPx(candidate, 11.5) <= rect.height) ?? '';
+  const sizePx = Math.max(9.5, Math.min(14, (14 * rect.height) / widthPx(rest, 14)));
   const [x, y] = [rect.x + rect.width / 2, rect.y + rect.height / 2];
-  const full = `${words.name}, ${rest.join(', ')}`;
-  const sizePx = Math.max(9.5, Math.min(14, (14 * rect.height) / textWidth(full, 14, 600)));
   return [
     group(
       [
         shape(
           'text',
-          { x: 0, y: sizePx * 0.33, fontSize: sizePx, textAnchor: 'middle', fill: paint('ink') },
+          { x: 0, y: sizePx * capShift, fontSize: sizePx, textAnchor: 'middle', fill: paint('ink') },
           [
-            shape('tspan', { fontWeight: 600 }, [words.name]),
-            shape('tspan', { fill: paint(dimmed ? 'ink' : 'ink-2') }, [`, ${rest.join(', ')}`]),
+            shape('tspan', { fontWeight: 600 }, [name]),
+            shape('tspan', { fill: paint(dimmed ? 'ink' : 'ink-2') }, [rest]),
           ],
         ),
       ],

@@ -82,7 +82,7 @@ export const cablePart = (cable: CableGeometry, look: Look): Shape => {
           ...labelText(cable.label, {
             sizePx: look.level === 'work' ? 13.6 : 14,
             fill: paint(dimmed ? 'ink' : 'ink-2'),
-            haloPx: 3,
+            haloPx: 5,
           }),
           key: 'label',
         },

@@ -21,6 +21,8 @@ interface Cut {
   readonly along: Point;
   readonly right: Point;
   readonly halfGap: number;
+  /** Length of what is left of the straight run on either side of the gap. */
+  readonly stubPx: number;
   /** How far the opening reaches to the left and to the right of the lane. */
   readonly reachLeft: number;
   readonly reachRight: number;
@@ -37,8 +39,17 @@ const cutOf = (jacket: JacketGeometry, lane: LaneGeometry, level: Level): Cut | 
   const along = { x: Math.cos(place.angle), y: Math.sin(place.angle) };
   const right = { x: -along.y, y: along.x };
   const halfGap = Math.min(gapPx, Math.max(12, room - 24)) / 2;
+  const stubPx = room / 2 - halfGap;
   if (jacket.kind === 'bare')
-    return { middle: place, along, right, halfGap, reachLeft: bareSpanPx / 2, reachRight: bareSpanPx / 2 };
+    return {
+      middle: place,
+      along,
+      right,
+      halfGap,
+      stubPx,
+      reachLeft: bareSpanPx / 2,
+      reachRight: bareSpanPx / 2,
+    };
   // Inside a jacket the opening ends half a lane away from its neighbours and runs out where there is none.
   const centre = pathAt(jacket.path, nearestAlong(jacket.path, place));
   const toCentre = (centre.x - place.x) * right.x + (centre.y - place.y) * right.y;
@@ -50,6 +61,7 @@ const cutOf = (jacket: JacketGeometry, lane: LaneGeometry, level: Level): Cut | 
     along,
     right,
     halfGap,
+    stubPx,
     reachLeft: -toCentre <= -outermost ? width / 2 - toCentre : half,
     reachRight: -toCentre >= outermost ? width / 2 + toCentre : half,
   };
@@ -129,6 +141,8 @@ const flags = (cut: Cut, lane: LaneGeometry, facts: DrawingFacts, look: Look): r
   const tunnel = facts.tunnels[lane.tunnel];
   if (vnis === undefined || tunnel === undefined || look.level === 'plan' || look.level === 'far') return [];
   const upright = Math.abs(cut.along.y) > Math.abs(cut.along.x);
+  // On a short level run the ferrules are near enough to be read; flags would cover what is left of the cord.
+  if (!upright && cut.stubPx < ferrule.width + 40) return [];
   return (['a', 'b'] as const).map((end) => {
     const vni = vnis[end];
     const farVni = vnis[end === 'a' ? 'b' : 'a'];

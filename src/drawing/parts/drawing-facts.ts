@@ -3,7 +3,7 @@ import type { DeviceKind, Member } from '../../engine/model/devices.ts';
 import { paletteOf } from '../theme/segment-tokens.ts';
 import type { CorePalette } from '../theme/paint.ts';
 import type { GlyphName } from './glyphs.ts';
-import { carriesWords, hostAddress, subnetWords, transportWords, vlanWords } from './words.ts';
+import { carriesWords, hostAddressWords, subnetWords, transportWords, vlanWords } from './words.ts';
 import type { TransportWords } from './words.ts';
 
 /** A segment as a cord wears it. */
@@ -100,7 +100,7 @@ const deviceFacts = (design: Design): { readonly [id: string]: DeviceFacts } => 
   for (const device of Object.values(design.devices))
     perSite.set(device.site, (perSite.get(device.site) ?? 0) + 1);
   const second = (device: Entry<'devices'>): string | undefined => {
-    if (device.kind === 'host') return hostAddress(device);
+    if (device.kind === 'host') return hostAddressWords(device);
     if (device.kind === 'switch') return undefined;
     const hidden = (perSite.get(device.site) ?? 1) - 1;
     if (design.layout.sites?.[device.site]?.collapsed && hidden > 0)

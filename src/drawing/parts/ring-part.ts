@@ -221,7 +221,7 @@ export const ringPart = (ring: RingGeometry, facts: DrawingFacts, look: Look): S
         ...labelText(ring.label, {
           sizePx: look.level === 'work' ? 13.6 : 14,
           weight: 500,
-          haloPx: 3,
+          haloPx: 5,
         }),
         key: 'address',
       },

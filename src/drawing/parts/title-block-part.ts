@@ -18,6 +18,8 @@ interface Cell {
   readonly value: string;
   readonly rect: Rect;
   readonly bold?: boolean;
+  /** Numbers that identify something are never cut. */
+  readonly whole?: boolean;
 }
 
 const rules = (d: string): Shape => ({
@@ -46,17 +48,21 @@ const fitted = (
     fill,
   });
 
-const cellPart = ({ key, label, value, rect, bold }: Cell): Shape => {
-  const width = rect.width - 2 * inset + 3;
-  const oneLine = fitText(value, { maxWidthPx: width, sizePx: 13.5, minSizePx: 11.5, weight: 500 });
+const cellPart = ({ key, label, value, rect, bold, whole }: Cell): Shape => {
+  const maxWidthPx = rect.width - 2 * inset + 3;
+  const large = { maxWidthPx, sizePx: 13.5, minSizePx: 11.5, weight: bold ? 700 : 500 } as const;
   // A long value may have two small lines instead of one.
-  const limits: FitLimits = oneLine.shortened
-    ? { maxWidthPx: width, maxLines: 2, sizePx: 10.5, minSizePx: 9, weight: 500 }
-    : { maxWidthPx: width, sizePx: 13.5, minSizePx: 11.5, weight: bold ? 700 : 500 };
+  const small = { maxWidthPx, maxLines: 2, sizePx: 10.5, minSizePx: 9, weight: 500 } as const;
+  const twoLines = fitText(value, large).shortened;
+  const tiny = twoLines && whole === true && fitText(value, small).shortened;
   return group(
     [
       textLine(label, rect.x + inset, rect.y + 14, { sizePx: 11.5, fill: paint('ink-3'), key: 'label' }),
-      ...fitted(value, rect.x + inset, rect.y + (oneLine.shortened ? 25 : 31.5), 10, limits),
+      ...(tiny
+        ? fitted(value, rect.x + inset, rect.y + 30, 10, { ...large, sizePx: 9, minSizePx: 9, whole: true })
+        : twoLines
+          ? fitted(value, rect.x + inset, rect.y + 25, 10, small)
+          : fitted(value, rect.x + inset, rect.y + 31.5, 10, large)),
     ],
     { key },
   );
@@ -120,6 +126,7 @@ const full = (facts: TitleBlockFacts, rect: Rect): readonly Shape[] => {
       label: 'Identification no.',
       value: facts.identification,
       rect: at(second, 2, columns[1]),
+      whole: true,
     },
     { key: 'date', label: 'Date of issue', value: facts.dateOfIssue, rect: at(third, 2, rev - third) },
     { key: 'revision', label: 'Rev.', value: facts.revision, rect: at(rev, 2, language - rev), bold: true },

@@ -1,17 +1,17 @@
 import type { Entry } from '../../engine/model/design.ts';
+import { hostAddress } from '../routing/stands.ts';
 
 // How values are said on the sheet. Addresses and numbers are never shortened.
 
 type HostDevice = Extract<Entry<'devices'>, { kind: 'host' }>;
 
-const withoutPrefix = (cidr: string): string => cidr.split('/')[0] ?? cidr;
 const unique = <T>(values: readonly T[]): readonly T[] => [...new Set(values)];
 
-/** A host's first address without its prefix length, and how many more it has. */
-export const hostAddress = (host: HostDevice): string | undefined => {
-  const [first, ...more] = host.addresses ?? [];
-  if (first === undefined) return undefined;
-  return more.length === 0 ? withoutPrefix(first) : `${withoutPrefix(first)} +${more.length}`;
+/** The address a host shows, and how many more it has. */
+export const hostAddressWords = (host: HostDevice): string | undefined => {
+  const more = (host.addresses?.length ?? 0) - 1;
+  if (more < 0) return undefined;
+  return more === 0 ? hostAddress(host) : `${hostAddress(host)} +${more}`;
 };
 
 /** A number with at most `places` decimals and no trailing zeros. */

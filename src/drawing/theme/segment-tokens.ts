@@ -30,7 +30,7 @@ const cores: { readonly [key in PaletteKey]: Core } = {
   h: { paper: ['#000000', '#ffffff'], slate: ['#c9cfcc', dark] },
 };
 /** A tunnel that carries nothing: an empty core. */
-const none: Core = { paper: ['#ffffff', ink], slate: ['#263137', '#e9ece6'] };
+const none: Core = { paper: ['#ffffff', ink], slate: ['#e9ece6', dark] };
 
 /** Segment colours of a theme: `seg-a` is the core, `seg-a-on` its letter and pattern, `tracer-h…` H inside a jacket. */
 export const segmentTokens = (theme: Theme): Readonly<Record<string, string>> => {

@@ -1,0 +1,107 @@
+import type { Design } from '../../engine/model/design.ts';
+import type { Decorations } from '../decorations.ts';
+import { noDecorations } from '../decorations.ts';
+import type { SheetGeometry } from '../geometry.ts';
+import { bandPart } from '../parts/band-part.ts';
+import { cablePart } from '../parts/cable-part.ts';
+import { cutMarks } from '../parts/cuts.ts';
+import { devicePart } from '../parts/device-part.ts';
+import type { DrawingFacts, TitleBlockFacts } from '../parts/drawing-facts.ts';
+import { drawingFacts } from '../parts/drawing-facts.ts';
+import { jacketPart } from '../parts/jacket-part.ts';
+import { legendPart } from '../parts/legend-part.ts';
+import type { Level } from '../parts/level-of-detail.ts';
+import type { Look } from '../parts/look.ts';
+import { loopChevrons } from '../parts/loop-chevrons.ts';
+import { standingNotesPart } from '../parts/notes-part.ts';
+import { framePart, paperPart } from '../parts/paper-part.ts';
+import { ringPart } from '../parts/ring-part.ts';
+import { sitePart } from '../parts/site-part.ts';
+import { titleBlockPart } from '../parts/title-block-part.ts';
+import { route } from '../routing/route.ts';
+import type { Shape } from '../shape.ts';
+import type { Theme } from '../theme/tokens.ts';
+import { escapeXml, toSvgText } from './to-svg-text.ts';
+
+export type LayerName =
+  'paper' | 'frame' | 'sites' | 'bands' | 'cables' | 'cords' | 'devices' | 'rings' | 'faults' | 'furniture';
+
+export interface Layer {
+  readonly name: LayerName;
+  readonly shapes: readonly Shape[];
+}
+
+export interface SheetView {
+  readonly level: Level;
+  readonly decorations: Decorations;
+  readonly facts: DrawingFacts;
+}
+
+const present = (shapes: readonly (Shape | undefined)[]): readonly Shape[] =>
+  shapes.filter((shape): shape is Shape => shape !== undefined);
+
+/** The whole sheet, back to front. */
+export const sheetShapes = (geometry: SheetGeometry, view: SheetView): readonly Layer[] => {
+  const { facts } = view;
+  const look: Look = { level: view.level, decorations: view.decorations };
+  const { sheet } = geometry;
+  return [
+    { name: 'paper', shapes: [paperPart(sheet)] },
+    { name: 'frame', shapes: [framePart(sheet, look.level)] },
+    { name: 'sites', shapes: geometry.sites.map((site) => sitePart(site, facts, look)) },
+    { name: 'bands', shapes: geometry.bands.map((band) => bandPart(band, sheet, facts, look)) },
+    { name: 'cables', shapes: geometry.cables.map((cable) => cablePart(cable, look)) },
+    { name: 'cords', shapes: geometry.jackets.map((jacket) => jacketPart(jacket, geometry, facts, look)) },
+    { name: 'devices', shapes: geometry.devices.map((device) => devicePart(device, facts, look)) },
+    { name: 'rings', shapes: geometry.rings.map((ring) => ringPart(ring, facts, look)) },
+    {
+      name: 'furniture',
+      shapes: present([
+        standingNotesPart(geometry, facts, look),
+        legendPart(sheet, facts.segments, look.level),
+        titleBlockPart(sheet, facts.titleBlock, look.level),
+      ]),
+    },
+    { name: 'faults', shapes: [...loopChevrons(geometry, look), ...cutMarks(geometry, facts, look)] },
+  ];
+};
+
+export interface SheetSvgOptions {
+  readonly theme: Theme;
+  readonly tunnelSegments: ReadonlyMap<string, readonly string[]>;
+  readonly level?: Level;
+  readonly decorations?: Decorations;
+  readonly titleBlock?: Partial<TitleBlockFacts>;
+  /** Faces of Work Sans by weight as data URLs; without them the file names the font only. */
+  readonly fonts?: { readonly [weight: number]: string };
+  readonly geometry?: SheetGeometry;
+}
+
+const fontFaces = (fonts: { readonly [weight: number]: string }): string =>
+  Object.entries(fonts)
+    .map(
+      ([weight, url]) =>
+        `@font-face{font-family:'Work Sans';font-weight:${weight};src:url("${url.replace(/["\\\n]/g, '')}")}`,
+    )
+    .join('');
+
+/** A whole sheet as one SVG file that needs nothing else: colours written in, fonts embedded where given. */
+export const sheetSvgText = (design: Design, options: SheetSvgOptions): string => {
+  const geometry = options.geometry ?? route(design);
+  const layers = sheetShapes(geometry, {
+    level: options.level ?? 'near',
+    decorations: options.decorations ?? noDecorations,
+    facts: drawingFacts(design, options.tunnelSegments, options.titleBlock),
+  });
+  const { width, height } = geometry.sheet;
+  const style = options.fonts === undefined ? '' : `<style>${escapeXml(fontFaces(options.fonts))}</style>`;
+  return (
+    `<svg xmlns="http://www.w3.org/2000/svg" width="${width}" height="${height}" viewBox="0 0 ${width} ${height}" ` +
+    `font-family="'Work Sans', sans-serif" style="font-feature-settings:'tnum' 1">` +
+    `<title>${escapeXml(design.meta.title)}</title>${style}` +
+    layers
+      .map(({ name, shapes }) => `<g class="layer-${name}">${toSvgText(shapes, options.theme)}</g>`)
+      .join('') +
+    '</svg>'
+  );
+};
