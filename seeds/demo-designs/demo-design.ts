@@ -10,7 +10,8 @@ type DemoDesign = (typeof demoDesigns)[number];
 
 const builders: { readonly [name in DemoDesign]: () => Design } = {
   'fault-free': () => terminalsStretch('Terminals stretch, phase 1', 'SMF-L2-004'),
-  'planted-faults': () => plantFaults(terminalsStretch('Terminals stretch, with planted faults', 'SMF-L2-014')),
+  'planted-faults': () =>
+    plantFaults(terminalsStretch('Terminals stretch, with planted faults', 'SMF-L2-014')),
 };
 
 /** One of the two designs of the story, laid out on its sheet. */

@@ -24,10 +24,11 @@ export function terminalsStretch(title: string, identification: string): Design 
     segments,
     vni: vni(pair),
   });
-  const design = saltmarshDesign(
-    { title, identification, revision: 'C', createdBy: 'R. Halloran' },
-    ['a', 'b', 'c'],
-  )
+  const design = saltmarshDesign({ title, identification, revision: 'C', createdBy: 'R. Halloran' }, [
+    'a',
+    'b',
+    'c',
+  ])
     .transport('coast', coast)
     .transport('ring', ring)
     .site('ho', {
