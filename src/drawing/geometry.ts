@@ -184,6 +184,12 @@ export interface SheetGeometry {
   readonly rings: readonly RingGeometry[];
   readonly jackets: readonly JacketGeometry[];
   readonly cables: readonly CableGeometry[];
-  readonly notes: readonly { readonly id: string; readonly at: Point; readonly standing: boolean }[];
+  /** `at` is the top left corner of a note's words, `rect` the room kept for them at 14 px; standing notes leave 18 px for their number and 26 px above the first for a heading. */
+  readonly notes: readonly {
+    readonly id: string;
+    readonly at: Point;
+    readonly standing: boolean;
+    readonly rect: Rect;
+  }[];
   readonly crowded: readonly Crowded[];
 }

@@ -115,6 +115,17 @@ const stubOf = (ground: Ground, cord: Cord, mouth: Mouth, manner: SearchManner):
 const sortedUnique = (values: readonly number[]): readonly number[] =>
   [...values].sort((a, b) => a - b).filter((value, i, all) => i === 0 || value - all[i - 1]! > 0.01);
 
+const offSheet = 4;
+const faraway = 1e5;
+
+/** The ground outside the sheet's frame, as four rectangles. */
+const outsideOf = ({ x, y, width, height }: Rect): readonly Rect[] => [
+  { x: x - faraway, y: y - faraway, width: 2 * faraway, height: faraway },
+  { x: x - faraway, y: y + height, width: 2 * faraway, height: faraway },
+  { x: x - faraway, y, width: faraway, height },
+  { x: x + width, y, width: faraway, height },
+];
+
 interface Trial {
   readonly clearance: number;
   readonly window: Rect | undefined;
@@ -166,6 +177,7 @@ const attempt = (
   const columns = sortedUnique(xs.filter((x) => x === p.x || x === q.x || (x > edge.x && x < right(edge))));
   const rows = sortedUnique(ys.filter((y) => y === p.y || y === q.y || (y > edge.y && y < bottom(edge))));
   const costs = gridCosts(columns, rows, manner.open);
+  for (const rect of outsideOf(ground.sheet)) costs.weigh(rect, offSheet);
   for (const rect of own) costs.weigh(rect, manner.ownBand / manner.open);
   for (const { site, rect } of frames)
     if (site !== cord.a.site && site !== cord.b.site) costs.weigh(rect, manner.foreignSite);

@@ -1,9 +1,14 @@
 import type { Design } from '../../engine/model/design.ts';
-import type { Crowded, SheetGeometry } from '../geometry.ts';
+import type { BandGeometry, Crowded, Rect, SheetGeometry } from '../geometry.ts';
 import { lane } from '../parts/sizes.ts';
+import { bandText } from './band-text.ts';
+import { bandRects } from './bands.ts';
 import { cableGeometries } from './cables.ts';
 import type { FurnishedSheet } from './furnish.ts';
 import { cordsOf, deviceGeometries, furnish } from './furnish.ts';
+import { cableBoxes, jacketBoxes, occupied, solidBoxes } from './free-places.ts';
+import { placeLandingLabels, placeRingLabels } from './labels.ts';
+import { placeNotes } from './note-places.ts';
 import { jacketGeometries } from './jackets.ts';
 import type { RoutedCords } from './route-cords.ts';
 import { routeCords } from './route-cords.ts';
@@ -38,39 +43,83 @@ export const routeSheet = (design: Design): RoutedSheet => {
 const trouble = ({ cords }: RoutedSheet): number =>
   cords.overlaps.length + cords.ways.filter((way) => way.found === 'none').length;
 
+/** The whole drawing of a design: everything placed and routed, from its layout alone. */
 export const route = (design: Design): SheetGeometry => {
   const { furnished, cords, pitches } = routeSheet(design);
-  const { sheet, sites, rings, bundles } = furnished;
+  const { sheet, sites, bundles, ground } = furnished;
   const shaped = bundles.map((bundle, i) => ({
     bundle,
     way: cords.ways[i]!,
     pitch: pitches.get(bundle.transport ?? '') ?? lane.pitch,
   }));
-  const crowded: Crowded[] = [];
-  for (const { ways } of cords.overlaps)
-    crowded.push({ what: 'overlap', ids: ways.map((way) => bundles[way]!.id) });
-  shaped.forEach(({ bundle, way }) => {
-    if (way.found === 'none') crowded.push({ what: 'no-way', ids: [bundle.id] });
-  });
-  const jackets = jacketGeometries(shaped, cords.crossings, rings, cords.bands);
-  const cables = cableGeometries(design, furnished, { ...furnished.ground, bands: cords.bands }, jackets);
-  for (const { geometry } of cables)
-    if (geometry.noWay) crowded.push({ what: 'no-way', ids: geometry.links });
-  return {
-    sheet,
-    sites,
-    bands: cords.bands.map((band) => ({
+  const devices = deviceGeometries(furnished);
+  const jackets = jacketGeometries(shaped, cords.crossings, furnished.rings, cords.bands);
+  const laid = cableGeometries(design, furnished, { ...ground, bands: cords.bands }, jackets);
+  const rawRings = [...furnished.rings.values()];
+
+  const taken = occupied([
+    ...solidBoxes(design, { sheet, sites, devices, rings: rawRings, jackets }),
+    ...jacketBoxes(jackets),
+    ...cableBoxes(laid.map(({ geometry }) => geometry)),
+  ]);
+  const rings = placeRingLabels(rawRings, taken);
+  const cables = placeLandingLabels(design, laid, sites, taken);
+  const landings = laid.flatMap(({ geometry }) =>
+    geometry.landing === undefined ? [] : [geometry.landing.bar],
+  );
+  const bands = cords.bands.map((band): BandGeometry => {
+    const text = bandText(design, band, jacketBoxes(jackets), landings, taken, sheet.frame);
+    taken.add(text.rect);
+    return {
       id: band.id,
       limbs: band.limbs,
       ...(band.header === undefined ? {} : { header: band.header }),
       orientation: band.orientation,
-      text: { mode: 'in', rect: band.limbs[0]! },
+      text,
+    };
+  });
+  taken.add(...sites.map((site) => site.rect), ...bands.flatMap((band) => bandRects(band)));
+  const rectOf = (collection: string, id: string): Rect | undefined =>
+    collection === 'devices'
+      ? devices.find((device) => device.id === id)?.rect
+      : collection === 'sites'
+        ? sites.find((site) => site.id === id)?.rect
+        : collection === 'transports'
+          ? bands.find((band) => band.id === id)?.text.rect
+          : collection === 'endpoints'
+            ? rings.find(({ ring }) => ring.endpoint === id)?.ring.label.rect
+            : undefined;
+  const notes = placeNotes(design, sheet, taken, rectOf);
+
+  const crowded: Crowded[] = [
+    ...cords.overlaps.map(({ ways }): Crowded => ({
+      what: 'overlap',
+      ids: ways.map((way) => bundles[way]!.id),
     })),
-    devices: deviceGeometries(furnished),
-    rings: [...rings.values()],
+    ...jackets.flatMap((jacket): Crowded[] => (jacket.noWay ? [{ what: 'no-way', ids: [jacket.id] }] : [])),
+    ...cables.flatMap(({ geometry }): Crowded[] =>
+      geometry.noWay ? [{ what: 'no-way', ids: geometry.links }] : [],
+    ),
+    ...rings.flatMap(({ ring, crowded: full }): Crowded[] =>
+      full ? [{ what: 'text', ids: [ring.endpoint] }] : [],
+    ),
+    ...cables.flatMap(({ geometry, crowded: full }): Crowded[] =>
+      full ? [{ what: 'text', ids: geometry.links }] : [],
+    ),
+    ...bands.flatMap((band): Crowded[] =>
+      band.text.mode === 'name-only' ? [{ what: 'text', ids: [band.id] }] : [],
+    ),
+    ...(notes.crowded.length > 0 ? [{ what: 'text' as const, ids: notes.crowded }] : []),
+  ];
+  return {
+    sheet,
+    sites,
+    bands,
+    devices,
+    rings: rings.map(({ ring }) => ring),
     jackets,
     cables: cables.map(({ geometry }) => geometry),
-    notes: [],
+    notes: notes.notes,
     crowded,
   };
 };

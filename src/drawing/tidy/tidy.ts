@@ -3,8 +3,6 @@ import type { Layout, SheetSize } from '../../engine/model/layout.ts';
 import { sheetSizes } from '../../engine/model/layout.ts';
 import { diffPatch } from '../../engine/model/merge-patch.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
-import type { Point } from '../geometry.ts';
-import type { Size } from '../parts/sizes.ts';
 import { band as bandSizes, lane } from '../parts/sizes.ts';
 import { bundlesOf } from '../routing/bundles.ts';
 import { byText } from '../routing/rects.ts';
@@ -20,15 +18,11 @@ import { seatings } from './seatings.ts';
 import type { SiteBlock } from './site-block.ts';
 import { columnsBlock, mirrored, rowBlock, sizeOfDevice, stackBlock } from './site-block.ts';
 import type { SiteGraphFacts } from './site-graph.ts';
+import type { SiteLayout } from './site-layout.ts';
 import { siteGraphFacts } from './site-graph.ts';
 import type { CombNeed, Level } from './site-parts.ts';
 import { combNeedOf, sitePartsOf } from './site-parts.ts';
 
-/** A site laid out elsewhere, facing right: positions from its frame's top left corner. */
-export interface SiteLayout {
-  readonly positions: { readonly [device: string]: Point };
-  readonly size: Size;
-}
 export interface TidyOptions {
   /** Layouts computed for the sites that `unusualSites` names. */
   readonly siteLayouts?: { readonly [site: string]: SiteLayout };
