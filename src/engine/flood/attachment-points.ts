@@ -1,8 +1,9 @@
 import type { Id } from '../model/scalars.ts';
 import type { Tags } from '../network/frame-tags.ts';
-import { accessVlan, isTrunk, untagged } from '../network/frame-tags.ts';
+import { untagged } from '../network/frame-tags.ts';
 import type { Network, PortGroup } from '../network/network.ts';
 import { entryOf } from '../network/network.ts';
+import { entrancesAt } from './entrances.ts';
 import type { FloodGraph } from './flood-graph.ts';
 import type { Place } from './places.ts';
 
@@ -21,30 +22,27 @@ export interface PlacedPoint {
   readonly at?: { readonly group: PortGroup; readonly ordinal: number; readonly tags: Tags };
 }
 
-const portOf = (graph: FloodGraph, site: Id, vlan: number): PlacedPoint | undefined => {
-  const { network, forwarding } = graph;
-  const places = (network.devicesBySite.get(site) ?? []).flatMap((id) => forwarding.places.byDevice.get(id)!);
-  const placed = (place: Place, group: PortGroup, ordinal: number, tags: Tags): PlacedPoint => ({
-    point: { site, device: place.device, port: group.port },
+/** A port in the VLAN: an access port where there is one, or a circuit of the gateway. */
+const portOf = (network: Network, site: Id, vlan: number): PlacedPoint | undefined => {
+  const { accessPorts, circuits } = entrancesAt(network, site, vlan);
+  const [port] = accessPorts;
+  if (port !== undefined) {
+    const { group } = port.place.ports[port.ordinal]!;
+    return {
+      point: { site, device: port.place.device, port: group.port },
+      place: port.place,
+      at: { group, ordinal: port.ordinal, tags: untagged },
+    };
+  }
+  const [entrance] = circuits;
+  const circuit = entrance?.place.circuits[entrance.ordinal];
+  if (entrance === undefined || circuit?.kind !== 'port') return undefined;
+  const { place, ordinal, tags } = entrance;
+  return {
+    point: { site, device: place.device, port: circuit.group.port },
     place,
-    at: { group, ordinal, tags },
-  });
-  for (const place of places)
-    if (place.kind === 'switch') {
-      const ordinal = place.ports.findIndex(({ port }) => !isTrunk(port) && port.vlan === vlan);
-      if (ordinal >= 0) return placed(place, place.ports[ordinal]!.group, ordinal, untagged);
-    }
-  for (const place of places)
-    if (place.kind === 'forwarder')
-      for (const [ordinal, circuit] of place.circuits.entries()) {
-        if (circuit.kind !== 'port') continue;
-        const { vlans } = circuit.circuit;
-        if (vlans === 'all' || (vlans !== 'untagged' && vlans.includes(vlan)))
-          return placed(place, circuit.group, ordinal, vlan);
-        if (vlans === 'untagged' && !isTrunk(circuit.port) && accessVlan(circuit.port) === vlan)
-          return placed(place, circuit.group, ordinal, untagged);
-      }
-  return undefined;
+    at: { group: circuit.group, ordinal, tags },
+  };
 };
 
 /** The points of a segment: its hosts, and for each of its sites without one a port in its VLAN; sites that have neither are named apart. */
@@ -67,7 +65,7 @@ export const attachmentPoints = (
   for (const site of Object.keys(declared).sort()) {
     if (sites.has(site)) continue;
     const vlan = declared[site]!.vlan;
-    const port = vlan === undefined ? undefined : portOf(graph, site, vlan);
+    const port = vlan === undefined ? undefined : portOf(network, site, vlan);
     if (port === undefined) unattachedSites.push(site);
     else points.push(port);
   }

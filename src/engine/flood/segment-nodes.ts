@@ -1,11 +1,10 @@
 import type { Id } from '../model/scalars.ts';
-import type { Tags } from '../network/frame-tags.ts';
-import { accessVlan, circuitIn, isTrunk, untagged } from '../network/frame-tags.ts';
+import { circuitIn, untagged } from '../network/frame-tags.ts';
 import type { Network } from '../network/network.ts';
 import { entryOf } from '../network/network.ts';
+import { entrancesAt } from './entrances.ts';
 import type { FloodGraph } from './flood-graph.ts';
 import type { Emit } from './forwarding.ts';
-import type { Place } from './places.ts';
 
 /** Segments in the order of their letters: A to Z, then AA and on. */
 export const inLetterOrder = (network: Network): readonly Id[] =>
@@ -14,19 +13,6 @@ export const inLetterOrder = (network: Network): readonly Id[] =>
     const b = entryOf(network.design.segments, idB).letter;
     return a.length - b.length || (a < b ? -1 : a > b ? 1 : idA < idB ? -1 : 1);
   });
-
-/** Puts a frame of a site's VLAN into a place, in every way in which the place knows that VLAN. */
-const startIn = (graph: FloodGraph, place: Place, vlan: number, emit: Emit): void => {
-  const { forwarding } = graph;
-  if (place.kind === 'switch') forwarding.leave(place, -1, vlan, emit);
-  if (place.kind !== 'forwarder') return;
-  place.circuits.forEach((circuit, ordinal) => {
-    if (circuit.kind !== 'port') return;
-    const wire: Tags = !isTrunk(circuit.port) && accessVlan(circuit.port) === vlan ? untagged : vlan;
-    const inside = circuitIn(circuit.circuit, wire);
-    if (inside !== undefined) forwarding.leave(place, ordinal, inside, emit);
-  });
-};
 
 export interface SegmentNodes {
   readonly segment: Id;
@@ -45,10 +31,16 @@ const compute = (graph: FloodGraph): readonly SegmentNodes[] => {
       stamp[node] = mark;
       nodes.push(node);
     };
-    for (const [site, { vlan }] of Object.entries(entryOf(network.design.segments, segment).sites))
-      if (vlan !== undefined)
-        for (const device of network.devicesBySite.get(site) ?? [])
-          for (const place of forwarding.places.byDevice.get(device)!) startIn(graph, place, vlan, emit);
+    for (const [site, { vlan }] of Object.entries(entryOf(network.design.segments, segment).sites)) {
+      if (vlan === undefined) continue;
+      const { switches, circuits } = entrancesAt(network, site, vlan);
+      for (const place of switches) forwarding.leave(place, -1, vlan, emit);
+      for (const { place, ordinal, tags } of circuits) {
+        const circuit = place.circuits[ordinal]!;
+        const inside = circuit.kind === 'port' ? circuitIn(circuit.circuit, tags) : undefined;
+        if (inside !== undefined) forwarding.leave(place, ordinal, inside, emit);
+      }
+    }
     for (const host of network.hostsBySegment.get(segment) ?? [])
       for (const place of forwarding.places.byDevice.get(host)!) forwarding.leave(place, -1, untagged, emit);
     for (let i = 0; i < nodes.length; i += 1)

@@ -33,6 +33,8 @@ export const associationEndOf = (
 };
 
 const contains = (prefix: string, address: string): boolean => {
+  // Nearly all selectors are the endpoint's own host prefix: parsing each would be most of the work in a large design.
+  if (prefix === `${address}/32` || prefix === `${address}/128`) return true;
   const network = ipaddr.parseCIDR(prefix);
   const single = ipaddr.parse(address);
   return network[0].kind() === single.kind() && single.match(network);

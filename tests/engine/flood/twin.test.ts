@@ -14,7 +14,7 @@ import { generatedDesign, generatedVlans } from '../../support/generated-designs
 
 const hostsOf = (design: Design): readonly string[] =>
   Object.keys(design.devices).filter((id) => design.devices[id]!.kind === 'host');
-const runs = { numRuns: 250 };
+const runs = { numRuns: 150 };
 
 describe('the flood graph and copies that walk the design', () => {
   it('agree on which hosts a broadcast reaches, in how many copies, and where it never ends', () => {
