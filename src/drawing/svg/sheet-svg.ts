@@ -1,5 +1,5 @@
 import type { Design } from '../../engine/model/design.ts';
-import type { Decorations } from '../decorations.ts';
+import type { Decorations, Tone } from '../decorations.ts';
 import { noDecorations } from '../decorations.ts';
 import type { SheetGeometry } from '../geometry.ts';
 import { bandPart } from '../parts/band-part.ts';
@@ -8,12 +8,14 @@ import { cutMarks } from '../parts/cuts.ts';
 import { devicePart } from '../parts/device-part.ts';
 import type { DrawingFacts, TitleBlockFacts } from '../parts/drawing-facts.ts';
 import { drawingFacts } from '../parts/drawing-facts.ts';
+import { ghostParts } from '../parts/ghost-part.ts';
 import { jacketPart } from '../parts/jacket-part.ts';
 import { legendPart } from '../parts/legend-part.ts';
 import type { Level } from '../parts/level-of-detail.ts';
 import type { Look } from '../parts/look.ts';
 import { loopChevrons } from '../parts/loop-chevrons.ts';
 import { standingNotesPart } from '../parts/notes-part.ts';
+import { overhangParts } from '../parts/overhang-part.ts';
 import { framePart, paperPart } from '../parts/paper-part.ts';
 import { ringPart } from '../parts/ring-part.ts';
 import { sitePart } from '../parts/site-part.ts';
@@ -21,15 +23,8 @@ import { titleBlockPart } from '../parts/title-block-part.ts';
 import { route } from '../routing/route.ts';
 import type { Shape } from '../shape.ts';
 import type { Theme } from '../theme/tokens.ts';
-import { escapeXml, toSvgText } from './to-svg-text.ts';
-
-export type LayerName =
-  'paper' | 'frame' | 'sites' | 'bands' | 'cables' | 'cords' | 'devices' | 'rings' | 'faults' | 'furniture';
-
-export interface Layer {
-  readonly name: LayerName;
-  readonly shapes: readonly Shape[];
-}
+import type { Layer } from './standalone-svg.ts';
+import { standaloneSvg } from './standalone-svg.ts';
 
 export interface SheetView {
   readonly level: Level;
@@ -62,46 +57,62 @@ export const sheetShapes = (geometry: SheetGeometry, view: SheetView): readonly 
         titleBlockPart(sheet, facts.titleBlock, look.level),
       ]),
     },
-    { name: 'faults', shapes: [...loopChevrons(geometry, look), ...cutMarks(geometry, facts, look)] },
+    {
+      name: 'faults',
+      shapes: [
+        ...loopChevrons(geometry, look),
+        ...cutMarks(geometry, facts, look),
+        ...overhangParts(geometry, facts, look),
+        ...ghostParts(geometry, look),
+      ],
+    },
   ];
 };
 
 export interface SheetSvgOptions {
   readonly theme: Theme;
+  /** Ids of the segments each tunnel carries, as the engine follows them. */
   readonly tunnelSegments: ReadonlyMap<string, readonly string[]>;
   readonly level?: Level;
   readonly decorations?: Decorations;
   readonly titleBlock?: Partial<TitleBlockFacts>;
   /** Faces of Work Sans by weight as data URLs; without them the file names the font only. */
   readonly fonts?: { readonly [weight: number]: string };
+  /** What `route` answers for the design, where the caller has it already. */
   readonly geometry?: SheetGeometry;
 }
 
-const fontFaces = (fonts: { readonly [weight: number]: string }): string =>
-  Object.entries(fonts)
-    .map(
-      ([weight, url]) =>
-        `@font-face{font-family:'Work Sans';font-weight:${weight};src:url("${url.replace(/["\\\n]/g, '')}")}`,
-    )
-    .join('');
+const pencilTones: ReadonlySet<Tone> = new Set(['selected', 'hovered', 'lit', 'dimmed']);
+
+/** What may stand on paper: findings' marks and failures, but no selection, lamp, ghost or hidden segment. */
+const printable = (decorations: Decorations): Decorations => ({
+  ...decorations,
+  tones: Object.fromEntries(
+    Object.entries(decorations.tones).map(([key, tones]) => [
+      key,
+      tones.filter((tone) => !pencilTones.has(tone)),
+    ]),
+  ),
+  ghosts: [],
+  hiddenSegments: [],
+});
 
 /** A whole sheet as one SVG file that needs nothing else: colours written in, fonts embedded where given. */
 export const sheetSvgText = (design: Design, options: SheetSvgOptions): string => {
   const geometry = options.geometry ?? route(design);
+  const decorations = options.decorations ?? noDecorations;
   const layers = sheetShapes(geometry, {
     level: options.level ?? 'near',
-    decorations: options.decorations ?? noDecorations,
+    decorations:
+      options.theme === 'print' || options.theme === 'print-colour' ? printable(decorations) : decorations,
     facts: drawingFacts(design, options.tunnelSegments, options.titleBlock),
   });
   const { width, height } = geometry.sheet;
-  const style = options.fonts === undefined ? '' : `<style>${escapeXml(fontFaces(options.fonts))}</style>`;
-  return (
-    `<svg xmlns="http://www.w3.org/2000/svg" width="${width}" height="${height}" viewBox="0 0 ${width} ${height}" ` +
-    `font-family="'Work Sans', sans-serif" style="font-feature-settings:'tnum' 1">` +
-    `<title>${escapeXml(design.meta.title)}</title>${style}` +
-    layers
-      .map(({ name, shapes }) => `<g class="layer-${name}">${toSvgText(shapes, options.theme)}</g>`)
-      .join('') +
-    '</svg>'
-  );
+  return standaloneSvg(layers, {
+    title: design.meta.title,
+    theme: options.theme,
+    viewBox: { width, height },
+    size: { width, height },
+    ...(options.fonts === undefined ? {} : { fonts: options.fonts }),
+  });
 };

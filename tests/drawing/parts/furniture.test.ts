@@ -8,6 +8,7 @@ import { standingNotesPart } from '#drawing/parts/notes-part.ts';
 import { framePart } from '#drawing/parts/paper-part.ts';
 import { insetLoop, rectilinearOutline } from '#drawing/parts/rectilinear-outline.ts';
 import { titleBlockPart } from '#drawing/parts/title-block-part.ts';
+import { textWidth } from '#drawing/text-width.ts';
 import { allShapes, factsWith, keyed, segmentOf, sheetWith, wordsOf } from './sample-geometry.ts';
 
 const look = { level: 'near' as const, decorations: noDecorations };
@@ -156,38 +157,27 @@ describe('an outline round rectangles', () => {
 describe('standing notes', () => {
   const notes = {
     n1: { text: 'Keys are in the vault.' },
-    n2: { text: 'UDP 4789 at both ends. '.repeat(6).trim() },
+    n2: {
+      text: 'UDP 4789 at both ends, outer DF set, inner IP packets up to 1396 B, at every site on the coast.',
+    },
   };
   const withNotes = factsWith({}, { notes });
-  const noteGeometry = [
-    { id: 'n1', at: { x: 0, y: 0 }, standing: true },
-    { id: 'n2', at: { x: 0, y: 0 }, standing: true },
-  ];
-
-  it('are numbered and whole', () => {
-    const words = wordsOf(standingNotesPart(sheetWith({ notes: noteGeometry }), withNotes, look)!);
-    expect(words.slice(0, 3)).toEqual(['Notes', '1', 'Keys are in the vault.']);
-    expect(words.join(' ')).toContain(notes.n2.text.slice(0, 40));
+  const placed = sheetWith({
+    notes: ['n1', 'n2'].map((id, i) => {
+      const rect = { x: 52, y: 80 + i * 21, width: 460, height: 19 };
+      return { id, at: { x: rect.x, y: rect.y }, standing: true, rect };
+    }),
   });
 
-  it('stand top left where that is free, and elsewhere where a site stands there', () => {
-    const at = (sites: Parameters<typeof sheetWith>[0]['sites']) => {
-      const shape = standingNotesPart(
-        sheetWith({ notes: noteGeometry, sites: sites ?? [] }),
-        withNotes,
-        look,
-      )!;
-      const { x, y } = allShapes(shape).find(({ key }) => key === 'heading')!.attrs;
-      return { x: Number(x), y: Number(y) };
-    };
-    expect(at([])).toEqual({ x: 52, y: 60.5 });
-    const site = { id: 's', rect: { x: 40, y: 40, width: 900, height: 400 }, collapsed: false };
-    expect(at([site]).y).toBeGreaterThan(440);
+  it('are numbered under a heading, whole, and inside their room', () => {
+    const shape = standingNotesPart(placed, withNotes, look)!;
+    const words = wordsOf(shape);
+    expect(words.slice(0, 4)).toEqual(['Notes', '1', notes.n1.text, '2']);
+    expect(words.slice(4).join(' ')).toBe(notes.n2.text);
+    for (const line of words.slice(4)) expect(textWidth(line, 14)).toBeLessThanOrEqual(460 - 18);
   });
 
   it('are left to the note list from afar', () => {
-    expect(
-      standingNotesPart(sheetWith({ notes: noteGeometry }), withNotes, { ...look, level: 'plan' }),
-    ).toBeUndefined();
+    expect(standingNotesPart(placed, withNotes, { ...look, level: 'plan' })).toBeUndefined();
   });
 });

@@ -1,0 +1,181 @@
+// @vitest-environment jsdom
+import { describe, expect, it } from 'vitest';
+import { tunnelSegments } from '#engine/flood/tunnel-segments.ts';
+import type { Design } from '#engine/model/design.ts';
+import { applyPatch } from '#engine/model/merge-patch.ts';
+import { indexNetwork } from '#engine/network/index-network.ts';
+import type { Decorations, Tone } from '#drawing/decorations.ts';
+import { noDecorations } from '#drawing/decorations.ts';
+import { drawingFacts } from '#drawing/parts/drawing-facts.ts';
+import { levels } from '#drawing/parts/level-of-detail.ts';
+import { route } from '#drawing/routing/route.ts';
+import type { Shape } from '#drawing/shape.ts';
+import { sheetShapes, sheetSvgText } from '#drawing/svg/sheet-svg.ts';
+import { themeColours, themes } from '#drawing/theme/tokens.ts';
+import { tidy } from '#drawing/tidy/tidy.ts';
+import { chainDesign, hubDesign, meshDesign, pairDesign } from '../../support/designs.ts';
+import { allShapes, wordsOf } from '../parts/sample-geometry.ts';
+
+const tidied = (design: Design): Design => applyPatch(design, tidy(design)) as Design;
+const segmentsOf = (design: Design) => tunnelSegments(indexNetwork(design));
+
+const designs: { readonly [name: string]: Design } = {
+  pair: tidied(pairDesign({ segments: ['a', 'b'] })),
+  'hub with a pair': tidied(hubDesign(3, { segments: ['a', 'b', 'c'], hub: 'ha-pair' })),
+  'chain of bare tunnels': tidied(chainDesign(3, { join: { protectedBy: false } })),
+  mesh: tidied(meshDesign(4)),
+  'without a layout': hubDesign(2),
+};
+
+/** Every element wears every tone it can, every tunnel is cut or loops. */
+const everything = (design: Design): Decorations => {
+  const tunnels = Object.keys(design.tunnels);
+  const tones: { [key: string]: readonly Tone[] } = {};
+  for (const collection of [
+    'sites',
+    'devices',
+    'transports',
+    'links',
+    'endpoints',
+    'associations',
+    'tunnels',
+  ] as const)
+    Object.keys(design[collection]).forEach((id, i) => {
+      tones[`${collection}/${id}`] = [
+        (['selected', 'hovered', 'lit', 'dimmed', 'failed', 'fault'] as const)[i % 6]!,
+      ];
+    });
+  const [first, second] = Object.entries(design.devices);
+  return {
+    ...noDecorations,
+    tones,
+    cuts: tunnels.slice(0, 1).map((tunnel) => ({ tunnel, vnis: { a: 10120, b: 10210 } })),
+    loops: [
+      { steps: tunnels.map((id) => ({ collection: 'tunnels' as const, id, direction: 'a-to-b' as const })) },
+    ],
+    ghosts: [
+      {
+        id: 'ghost',
+        from: { device: first![0], port: Object.keys(first![1].ports)[0]! },
+        to: { device: second![0], port: Object.keys(second![1].ports)[0]! },
+        label: 'second uplink',
+      },
+    ],
+    overhangs: tunnels.slice(0, 1).map((tunnel) => ({
+      tunnel,
+      end: 'a' as const,
+      packetBytes: 1604,
+      mtuBytes: 1500,
+    })),
+  };
+};
+
+const siblingKeys = (shape: Shape): readonly string[] =>
+  (shape.children ?? []).flatMap((child) => (typeof child === 'string' ? [] : (child.key ?? [])));
+
+describe.each(Object.entries(designs))('the sheet of a %s', (_name, design) => {
+  const geometry = route(design);
+  const facts = drawingFacts(design, segmentsOf(design));
+
+  it.each(levels)('is sound at the level %s, whatever is shown on top', (level) => {
+    const paints = new Set(['none', ...Object.keys(themeColours('paper')).map((name) => `var(--${name})`)]);
+    const problems: string[] = [];
+    const repeated = (where: string, keys: readonly (string | undefined)[]): void => {
+      if (new Set(keys).size !== keys.length) problems.push(`${where}: repeated key in ${keys.join()}`);
+    };
+    for (const decorations of [noDecorations, everything(design)])
+      for (const { name, shapes } of sheetShapes(geometry, { level, decorations, facts })) {
+        repeated(
+          name,
+          shapes.map(({ key }) => key),
+        );
+        for (const shape of shapes.flatMap(allShapes)) {
+          repeated(shape.key ?? shape.el, siblingKeys(shape));
+          for (const [attribute, value] of Object.entries(shape.attrs)) {
+            if (/NaN|Infinity|undefined/.test(String(value ?? 0))) problems.push(`${attribute} is ${value}`);
+            if ((attribute === 'fill' || attribute === 'stroke') && !paints.has(String(value ?? 'none')))
+              problems.push(`${attribute} ${value} is no token`);
+          }
+        }
+      }
+    expect(problems).toEqual([]);
+  });
+
+  it('shows every VNI, address and name whole at 100 %', () => {
+    const words = sheetShapes(geometry, { level: 'near', decorations: noDecorations, facts })
+      .flatMap(({ shapes }) => shapes)
+      .flatMap(wordsOf);
+    for (const tunnel of Object.values(design.tunnels)) expect(words).toContain(String(tunnel.a.vni));
+    for (const endpoint of Object.values(design.endpoints))
+      expect(words).toContain(endpoint.ipv4?.split('/')[0]);
+    for (const device of Object.values(design.devices))
+      expect(
+        words.some((word) => word.startsWith(device.name)),
+        device.name,
+      ).toBe(true);
+  });
+
+  it.each(themes)('is a file of its own in %s', (theme) => {
+    const text = sheetSvgText(design, {
+      theme,
+      tunnelSegments: segmentsOf(design),
+      decorations: everything(design),
+    });
+    expect(text).not.toContain('var(--');
+    expect(text).not.toContain('undefined');
+    if (theme !== 'paper') return;
+    const document = new DOMParser().parseFromString(text, 'image/svg+xml');
+    expect(document.querySelector('parsererror')).toBeNull();
+    expect(document.documentElement.getAttribute('viewBox')).toBe(
+      `0 0 ${geometry.sheet.width} ${geometry.sheet.height}`,
+    );
+  });
+});
+
+describe('a sheet as SVG', () => {
+  const design = designs['hub with a pair']!;
+  const options = { theme: 'paper', tunnelSegments: segmentsOf(design) } as const;
+
+  it('is the same text every time', () => {
+    expect(sheetSvgText(design, options)).toBe(sheetSvgText(structuredClone(design) as Design, options));
+  });
+
+  it('embeds the fonts it is given, and lets no address out of its rule', () => {
+    const text = sheetSvgText(design, {
+      ...options,
+      fonts: { 400: 'data:font/woff2;base64,AAAA', 600: 'x")}</style><script>' },
+    });
+    expect(text).toContain('font-weight:400;src:url(&quot;data:font/woff2;base64,AAAA&quot;)');
+    expect(new DOMParser().parseFromString(text, 'image/svg+xml').querySelector('script')).toBeNull();
+  });
+
+  it('prints no selection, lamp or ghost, but findings that are asked for', () => {
+    const decorations: Decorations = {
+      ...everything(design),
+      tones: { 'devices/fw-s1': ['selected'], 'devices/fw-s2': ['lit'] },
+    };
+    const print = sheetSvgText(design, { ...options, theme: 'print', decorations });
+    const screen = sheetSvgText(design, { ...options, decorations });
+    expect(screen).toContain('second uplink');
+    expect(print).not.toContain('second uplink');
+    expect(screen).toContain(themeColours('paper')['lamp']);
+    expect(print).toContain('1604 in 1500');
+    const plain = sheetSvgText(design, {
+      ...options,
+      theme: 'print',
+      decorations: { ...decorations, tones: {} },
+    });
+    expect(print).toBe(plain);
+  });
+
+  it('draws cords over cables and bands, and rings over devices', () => {
+    const names = sheetShapes(route(design), {
+      level: 'near',
+      decorations: noDecorations,
+      facts: drawingFacts(design, segmentsOf(design)),
+    }).map(({ name }) => name);
+    const order = ['paper', 'frame', 'sites', 'bands', 'cables', 'cords', 'devices', 'rings'];
+    expect(names.filter((name) => order.includes(name))).toEqual(order);
+    expect(names.indexOf('faults')).toBeGreaterThan(names.indexOf('rings'));
+  });
+});
