@@ -157,6 +157,7 @@ function OpenJoinDialog({ request }: { readonly request: JoinRequest }) {
         if (!isOpen) askToJoin(undefined);
       }}
       title={titles[kind]}
+      widthPx={620}
       onSubmit={submit}
       footer={
         <>

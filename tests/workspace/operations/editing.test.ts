@@ -51,7 +51,10 @@ const done = (design: Design, operation: Operation): Design => {
   return whole;
 };
 const why = (operation: Operation): string => (operation.ok ? '' : operation.why);
-const created = (operation: Operation): ElementRef => (operation as { created: ElementRef[] }).created[0]!;
+const created = (operation: Operation): ElementRef => {
+  if (!operation.ok || operation.created?.[0] === undefined) throw new Error('Nothing was made.');
+  return operation.created[0];
+};
 
 describe('drawing a two-site overlay from nothing', () => {
   it('ends with a valid design that has a tunnel in both bridges', () => {

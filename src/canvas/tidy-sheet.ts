@@ -1,0 +1,37 @@
+import type { ElkNode } from 'elkjs/lib/elk-api.js';
+import type { ElkGraph } from '../drawing/tidy/elk-graph.ts';
+import { elkGraphOf, positionsFromElk, selectionGraph, unusualSites } from '../drawing/tidy/elk-graph.ts';
+import type { SiteLayout } from '../drawing/tidy/site-layout.ts';
+import { tidySelection } from '../drawing/tidy/tidy-selection.ts';
+import { tidy } from '../drawing/tidy/tidy.ts';
+import type { Design } from '../engine/model/design.ts';
+import type { MergePatch } from '../engine/model/merge-patch.ts';
+
+/** Lays out one graph; the browser does it in a worker. */
+export type LayOut = (graph: ElkNode) => Promise<ElkNode>;
+
+// Of elkjs's answer only the children's places are read.
+const asAnswer = (answer: ElkNode): Pick<ElkGraph, 'children'> => ({
+  children: (answer.children ?? []) as ElkGraph['children'],
+});
+
+/** A new layout of the whole sheet. Sites that none of the drawing's own templates fits are laid out by `layOut`. */
+export const tidySheet = async (design: Design, layOut: LayOut): Promise<MergePatch> => {
+  const laidOut = await Promise.all(
+    unusualSites(design).map(async (site): Promise<readonly [string, SiteLayout]> => [
+      site.id,
+      positionsFromElk(site, asAnswer(await layOut(elkGraphOf(site) as ElkNode))),
+    ]),
+  );
+  return tidy(design, { siteLayouts: Object.fromEntries(laidOut) });
+};
+
+/** A new layout of some devices, where they stand together; locked ones stay. */
+export const tidyDevices = async (
+  design: Design,
+  devices: readonly string[],
+  layOut: LayOut,
+): Promise<MergePatch> => {
+  const graph = elkGraphOf(selectionGraph(design, devices));
+  return tidySelection(design, devices, asAnswer(await layOut(graph as ElkNode)));
+};
