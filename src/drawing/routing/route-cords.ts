@@ -156,11 +156,15 @@ export const bandNeeds = (ground: Ground, cords: readonly Cord[]): ReadonlyMap<s
  * A way for every cord. Where some overlap or run into an obstacle, the less bound ones are taken up and searched anew,
  * and the best state found is kept; what still can't pass gets no way at all rather than one across a plate.
  */
-export const routeCords = (start: Ground, cords: readonly Cord[]): RoutedCords => {
+export const routeCords = (
+  start: Ground,
+  cords: readonly Cord[],
+  ripUps: number = mostRipUps,
+): RoutedCords => {
   let avoided = new Map<string, readonly Rect[]>();
   let state = settle(start, cords, avoided);
   let best = state;
-  for (let round = 0; round < mostRipUps; round += 1) {
+  for (let round = 0; round < ripUps; round += 1) {
     if (state.overlaps.length === 0 && state.blocked.length === 0) break;
     const next = new Map(avoided);
     const avoid = (way: number, run: number, width: number): void => {

@@ -19,6 +19,17 @@ export interface RoutedSheet {
   readonly pitches: ReadonlyMap<string, number>;
 }
 
+/** Routes all cords once, without mending overlaps: enough to compare layouts. */
+export const routeSheetOnce = (design: Design): RoutedSheet => {
+  const furnished = furnish(design);
+  const cords = routeCords(
+    furnished.ground,
+    cordsOf(furnished, () => lane.pitch),
+    0,
+  );
+  return { furnished, cords, pitches: new Map() };
+};
+
 /** Routes all cords, with lanes drawn closer on transports whose jackets would overlap otherwise. */
 export const routeSheet = (design: Design): RoutedSheet => {
   const furnished = furnish(design);
@@ -43,8 +54,35 @@ export const routeSheet = (design: Design): RoutedSheet => {
 const trouble = ({ cords }: RoutedSheet): number =>
   cords.overlaps.length + cords.ways.filter((way) => way.found === 'none').length;
 
-/** The whole drawing of a design: everything placed and routed, from its layout alone. */
+const drawn = new WeakMap<Design['layout'], { readonly design: Design; readonly geometry: SheetGeometry }>();
+
+const routedParts = [
+  'sites',
+  'devices',
+  'transports',
+  'links',
+  'endpoints',
+  'associations',
+  'tunnels',
+  'segments',
+  'notes',
+  'layout',
+] as const satisfies readonly (keyof Design)[];
+
+/**
+ * The whole drawing of a design: everything placed and routed, from its layout alone. The same design gives the same
+ * drawing however it was reached; edits of parts that are not drawn keep the drawing itself.
+ */
 export const route = (design: Design): SheetGeometry => {
+  const before = drawn.get(design.layout);
+  if (before !== undefined && routedParts.every((part) => before.design[part] === design[part]))
+    return before.geometry;
+  const geometry = draw(design);
+  drawn.set(design.layout, { design, geometry });
+  return geometry;
+};
+
+const draw = (design: Design): SheetGeometry => {
   const { furnished, cords, pitches } = routeSheet(design);
   const { sheet, sites, bundles, ground } = furnished;
   const shaped = bundles.map((bundle, i) => ({

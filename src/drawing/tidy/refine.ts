@@ -3,7 +3,7 @@ import type { Layout } from '../../engine/model/layout.ts';
 import { combOrder } from '../routing/combs.ts';
 import { cornerRadii } from '../routing/corners.ts';
 import { byText } from '../routing/rects.ts';
-import { routeSheet } from '../routing/route.ts';
+import { routeSheetOnce } from '../routing/route.ts';
 import type { RoutedSheet } from '../routing/route.ts';
 
 const mostTrials = 240;
@@ -34,7 +34,7 @@ export const scoreOf = ({ cords }: RoutedSheet): { readonly total: number; reado
 /** Swaps neighbouring groups of combs where that makes the sheet cleaner, and keeps the order where it differs from the computed one. */
 export const refine = (design: Design, start: Layout): Layout => {
   let layout = start;
-  let routed = routeSheet({ ...design, layout });
+  let routed = routeSheetOnce({ ...design, layout });
   let score = scoreOf(routed).total;
   if (score === 0 || routed.furnished.bundles.length > mostJackets) return layout;
   let trials = 0;
@@ -58,7 +58,7 @@ export const refine = (design: Design, start: Layout): Layout => {
           ...layout,
           endpoints: { ...layout.endpoints, [endpoint]: { ...layout.endpoints?.[endpoint], order: swapped } },
         };
-        const next = routeSheet({ ...design, layout: candidate });
+        const next = routeSheetOnce({ ...design, layout: candidate });
         const better = scoreOf(next).total;
         if (better >= score - 1e-9) continue;
         layout = candidate;

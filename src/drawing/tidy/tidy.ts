@@ -8,7 +8,7 @@ import { bundlesOf } from '../routing/bundles.ts';
 import { byText } from '../routing/rects.ts';
 import { cordsOf, furnish } from '../routing/furnish.ts';
 import { bandNeeds } from '../routing/route-cords.ts';
-import { routeSheet } from '../routing/route.ts';
+import { routeSheetOnce } from '../routing/route.ts';
 import type { RoutedSheet } from '../routing/route.ts';
 import { sheetFrame } from '../routing/sheet-frame.ts';
 import type { Arrangement, Seating } from './arrangement.ts';
@@ -191,7 +191,7 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
         return laid === undefined || w <= laid.limbs[0]!.width + 0.5;
       });
       if (settled || round === mostWidthRounds - 1)
-        return { layout, arrangement, routed: routeSheet(laidOut) };
+        return { layout, arrangement, routed: routeSheetOnce(laidOut) };
       widths = wider;
     }
   };
