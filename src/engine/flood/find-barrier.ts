@@ -16,6 +16,8 @@ export interface Ending {
   readonly barrier: Barrier;
   /** The crossings that frames do make up to there. */
   readonly path: readonly FloodStep[];
+  /** What would stop them further on. */
+  readonly further: readonly Barrier[];
 }
 
 interface State {
@@ -24,7 +26,7 @@ interface State {
   readonly tags: Tags;
   readonly from: State | undefined;
   /** What stood between `from` and this crossing. */
-  readonly barrier: Barrier | undefined;
+  readonly barriers: readonly Barrier[];
 }
 
 /** No design is explained by more barriers in a row than this; what lies further is simply not joined. */
@@ -68,11 +70,13 @@ export const findBarriers = (
   const endingAt = (state: State | undefined, last: Barrier | undefined): Ending | undefined => {
     const chain: State[] = [];
     for (let at = state; at !== undefined; at = at.from) chain.unshift(at);
-    const first = chain.findIndex(({ barrier }) => barrier !== undefined);
-    const barrier = first < 0 ? last : chain[first]!.barrier;
-    return barrier === undefined
-      ? undefined
-      : { barrier, path: (first < 0 ? chain : chain.slice(0, first)).map(stepOfState) };
+    const [barrier, ...further] = [
+      ...chain.flatMap(({ barriers }) => barriers),
+      ...(last === undefined ? [] : [last]),
+    ];
+    if (barrier === undefined) return undefined;
+    const first = chain.findIndex(({ barriers }) => barriers.length > 0);
+    return { barrier, path: (first < 0 ? chain : chain.slice(0, first)).map(stepOfState), further };
   };
   const settle = (
     state: State | undefined,
@@ -108,7 +112,13 @@ export const findBarriers = (
     const cost = passed + (entered === undefined ? 0 : 1);
     forwarding.leave(place, ordinal, inside, (element, direction, tags, _classes, barrier) => {
       const layer = layers[cost + (barrier === undefined ? 0 : 1)];
-      layer?.push({ element, direction, tags, from, barrier: entered ?? barrier });
+      layer?.push({
+        element,
+        direction,
+        tags,
+        from,
+        barriers: [entered, barrier].filter((one) => one !== undefined),
+      });
     });
   };
   if (source.at === undefined) leave(source.place, -1, untagged, undefined, 0, undefined);
@@ -135,6 +145,7 @@ export const findBarriers = (
       endings.set(point, {
         barrier: { code: 'not-joined', fromSite: source.point.site, toSite: point.site },
         path: [],
+        further: [],
       });
   return endings;
 };

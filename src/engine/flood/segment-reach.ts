@@ -28,6 +28,8 @@ export interface Parting {
   readonly barrier: Barrier;
   /** The crossings that they do make. */
   readonly path: readonly FloodStep[];
+  /** What would stop them further on, were it not for the first. */
+  readonly further: readonly Barrier[];
 }
 export interface SegmentReach {
   readonly segment: Id;
@@ -156,7 +158,7 @@ const compute = (graph: FloodGraph, segment: Id): SegmentReach => {
       const ending: Ending | undefined =
         lonely === undefined
           ? endings.get(targets[i]!.point)
-          : { barrier: { code: 'not-cabled', device: lonely.point.device }, path: [] };
+          : { barrier: { code: 'not-cabled', device: lonely.point.device }, path: [], further: [] };
       if (ending !== undefined) partings.push({ from, to, ...ending });
     });
   });

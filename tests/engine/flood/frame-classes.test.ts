@@ -8,6 +8,7 @@ const passed = (rules: readonly Partial<Rule>[], direction: 'to-tunnel' | 'from-
     classesPassed(
       {
         device: 'fw',
+        name: 'x',
         kind: 'cross-connect',
         circuits: {},
         policy: Object.fromEntries(
@@ -23,7 +24,7 @@ const passed = (rules: readonly Partial<Rule>[], direction: 'to-tunnel' | 'from-
 
 describe('classesPassed', () => {
   it('passes everything through a bridge, but multicast where it is told to drop it', () => {
-    const bridge = { device: 'fw', kind: 'bridge', circuits: {} } as const;
+    const bridge = { device: 'fw', name: 'br', kind: 'bridge', circuits: {} } as const;
     expect(classesIn(classesPassed(bridge, 'to-tunnel'))).toEqual(['arp', 'ipv4', 'ipv6', 'other']);
     expect(classesIn(classesPassed({ ...bridge, multicast: 'drop' }, 'to-tunnel'))).toEqual([
       'arp',
