@@ -1,17 +1,27 @@
 import type { MergePatch } from '../model/merge-patch.ts';
 import type { End, Network } from '../network/network.ts';
 import { deviceOfTunnelEnd, ends } from '../network/network.ts';
-import { segmentsByForwarder, segmentsByTunnel } from './carried-segments.ts';
+import { tunnelSegments } from '../flood/tunnel-segments.ts';
+import { segmentPathFacts, segmentsByForwarder, segmentsOfCircuit } from './carried-segments.ts';
 import { defineRule } from './define-rule.ts';
 import { firstPolicy } from './first-policy.ts';
 import { siteNameOf, tunnelPlaces } from './places.ts';
 
+/** Forwarders that lead the segment on from this end of the tunnel, to a port or into another tunnel. */
 const forwardersAt = (network: Network, tunnel: string, segment: string, end: End): readonly string[] => {
   const device = deviceOfTunnelEnd(network, network.design.tunnels[tunnel]!, end);
   return (network.circuitsByTunnel.get(tunnel) ?? [])
     .filter((at) => at.device === device)
     .map(({ forwarder }) => forwarder)
-    .filter((forwarder) => segmentsByForwarder(network).get(forwarder)?.includes(segment) === true);
+    .filter((forwarder) =>
+      network.circuitsByForwarder
+        .get(forwarder)!
+        .some(({ circuit }) =>
+          circuit.kind === 'port'
+            ? segmentsOfCircuit(network, device, circuit).includes(segment)
+            : circuit.tunnel !== tunnel && tunnelSegments(network).get(circuit.tunnel)!.includes(segment),
+        ),
+    );
 };
 
 const isBridge = ({ design }: Network, forwarder: string): boolean =>
@@ -21,7 +31,7 @@ export const bridgeWhereFilterRequired = defineRule({
   id: 'bridge-where-filter-required',
   title: 'Segments that must be filtered between their sites pass a cross-connect with a policy',
   severity: 'blocking',
-  looksAt: ['segments', 'forwarders', 'tunnels', 'endpoints', 'devices', 'sites'],
+  looksAt: segmentPathFacts,
   why: 'A bridge hands on every frame unseen, so that whatever the firewall’s rules say of this segment is never asked.',
   seen: 'Hosts of one site reach everything at the other; the firewall’s log shows nothing of it.',
   sources: [{ document: 'RFC 3378', clause: 'section 6' }, 'common practice, no source'],
@@ -39,7 +49,7 @@ export const bridgeWhereFilterRequired = defineRule({
   },
   check: (network) => {
     const { design } = network;
-    return [...segmentsByTunnel(network)].flatMap(([tunnel, segments]) =>
+    return [...tunnelSegments(network)].flatMap(([tunnel, segments]) =>
       segments.flatMap((segment) => {
         if (design.segments[segment]!.mustBeFiltered !== true) return [];
         const at = {

@@ -1,5 +1,20 @@
+import type { Collection } from '../model/design.ts';
 import type { Network, PortCircuit } from '../network/network.ts';
-import { deviceOfTunnelEnd, ends, entryOf, perNetwork, segmentsAt } from '../network/network.ts';
+import { entryOf, perNetwork, segmentsAt } from '../network/network.ts';
+
+/** What decides which segments a tunnel carries: every collection that says how frames travel. */
+export const segmentPathFacts = [
+  'devices',
+  'links',
+  'endpoints',
+  'associations',
+  'tunnels',
+  'forwarders',
+  'segments',
+  'transports',
+  'profiles',
+  'sites',
+] as const satisfies readonly Collection[];
 
 /** The segments whose frames a port's circuit takes in, by the VLANs that its site gives them. */
 export const segmentsOfCircuit = (
@@ -33,17 +48,3 @@ export const segmentsByForwarder = perNetwork(
       ]),
     ),
 );
-
-/** The segments that each tunnel carries as either end sees it, in order of id. */
-export const segmentsByTunnel = perNetwork((network): ReadonlyMap<string, readonly string[]> => {
-  const byForwarder = segmentsByForwarder(network);
-  return new Map(
-    network.tunnelIds.map((id) => {
-      const devices = ends.map((end) => deviceOfTunnelEnd(network, entryOf(network.design.tunnels, id), end));
-      const carried = (network.circuitsByTunnel.get(id) ?? [])
-        .filter(({ device }) => devices.includes(device))
-        .flatMap(({ forwarder }) => byForwarder.get(forwarder) ?? []);
-      return [id, [...new Set(carried)].sort()];
-    }),
-  );
-});

@@ -2,13 +2,14 @@ import type { MergePatch } from '../model/merge-patch.ts';
 import { applyPatch, diffPatch } from '../model/merge-patch.ts';
 import { indexNetwork } from '../network/index-network.ts';
 import type { Network } from '../network/network.ts';
+import { perNetwork } from '../network/network.ts';
 import { defineRule } from './define-rule.ts';
 import { betterAddress, families, familyField, plainAddress, readdressPatch } from './endpoint-addresses.ts';
 import { sharedSets } from './grouping.ts';
 import { counted, listed } from './wording.ts';
 
 /** Endpoints that have an address in common; the two members of one pair may share theirs. */
-export const duplicateEndpoints = ({ design }: Network): readonly (readonly string[])[] => {
+export const duplicateEndpoints = perNetwork(({ design }): readonly (readonly string[])[] => {
   const marked = Object.entries(design.endpoints).flatMap(([id, endpoint]) =>
     families.flatMap((family) => {
       const address = endpoint[familyField(family)];
@@ -24,7 +25,7 @@ export const duplicateEndpoints = ({ design }: Network): readonly (readonly stri
       ids.every((id) => design.endpoints[id]!.member !== undefined);
     return !isOnePair;
   });
-};
+});
 
 const addressesOf = (design: Network['design'], id: string): readonly string[] =>
   families.flatMap((family) => {

@@ -3,7 +3,7 @@ import type { MergePatch } from '../model/merge-patch.ts';
 import { applyPatch, diffPatch, joinPatches } from '../model/merge-patch.ts';
 import type { Family } from '../network/association-path.ts';
 import type { DesignFacts, Network } from '../network/network.ts';
-import { ends } from '../network/network.ts';
+import { ends, perNetwork } from '../network/network.ts';
 import { indexNetwork } from '../network/index-network.ts';
 import { associationEndOf } from '../network/selectors-cover.ts';
 import { coverPatch } from './selector-patch.ts';
@@ -15,22 +15,48 @@ const hostBits = (family: Family): number => (family === 4 ? 32 : 128);
 /** One spelling for one address, prefix length left out. */
 export const plainAddress = (text: string): string => ipaddr.parse(text.split('/')[0]!).toNormalizedString();
 
-/** True when the prefix, such as a subnet, holds the address. */
-export const prefixHolds = (prefix: string, address: string): boolean => {
-  const range = ipaddr.parseCIDR(prefix);
-  const single = ipaddr.parse(address.split('/')[0]!);
-  return range[0].kind() === single.kind() && single.match(range);
-};
+interface Subnet {
+  readonly subnet: string;
+  readonly segment: string;
+}
 
-/** Every subnet of every segment, with the segment's id. */
-export const segmentSubnets = (
-  design: DesignFacts,
-): readonly (readonly [subnet: string, segment: string])[] =>
-  Object.entries(design.segments).flatMap(([id, segment]) =>
-    Object.values(segment.sites).flatMap(({ subnets }) =>
-      (subnets ?? []).map((subnet) => [subnet, id] as const),
-    ),
-  );
+/** The first bits of an address, as text that is equal where they are. */
+const firstBits = (bytes: readonly number[], count: number): string =>
+  bytes.map((byte, i) => byte & (0xff00 >> Math.min(8, Math.max(0, count - 8 * i))) & 0xff).join('.');
+
+// By family and prefix length, then by the prefix's bits: one look-up per length instead of one per subnet.
+const subnetIndex = perNetwork(({ design }): ReadonlyMap<string, ReadonlyMap<string, Subnet>> => {
+  const byLength = new Map<string, Map<string, Subnet>>();
+  for (const segment of Object.keys(design.segments).sort())
+    for (const { subnets } of Object.values(design.segments[segment]!.sites))
+      for (const subnet of subnets ?? []) {
+        const [address, length] = ipaddr.parseCIDR(subnet);
+        const bytes = address.toByteArray();
+        const group = `${bytes.length} ${length}`;
+        const bits = firstBits(bytes, length);
+        const known = byLength.get(group) ?? new Map<string, Subnet>();
+        byLength.set(group, known);
+        const before = known.get(bits);
+        // Several sites may spell one subnet each; the answer must not depend on their order.
+        if (before === undefined || (before.segment === segment && subnet < before.subnet))
+          known.set(bits, { subnet, segment });
+      }
+  return byLength;
+});
+
+/** The narrowest subnet of a segment that holds the address; undefined where it lies outside all segments. */
+export const segmentSubnetOf = (network: Network, address: string): Subnet | undefined => {
+  const bytes = ipaddr.parse(address.split('/')[0]!).toByteArray();
+  let narrowest: { readonly length: number; readonly found: Subnet } | undefined;
+  for (const [group, subnets] of subnetIndex(network)) {
+    const [byteCount, length] = group.split(' ').map(Number) as [number, number];
+    if (byteCount !== bytes.length) continue;
+    const found = subnets.get(firstBits(bytes, length));
+    if (found !== undefined && (narrowest === undefined || length > narrowest.length))
+      narrowest = { length, found };
+  }
+  return narrowest?.found;
+};
 
 const usedAddresses = (design: DesignFacts): ReadonlySet<string> => {
   const used = new Set<string>();
@@ -53,13 +79,13 @@ const usedAddresses = (design: DesignFacts): ReadonlySet<string> => {
  * The lowest free endpoint address near the given one, outside every segment: in the same /24 (IPv4) or /112 (IPv6), from
  * just above it, then from the block's start. With the host's own prefix length, as endpoints have it.
  */
-const freeAddressNear = (design: DesignFacts, near: string): string | undefined => {
+const freeAddressNear = (network: Network, near: string): string | undefined => {
+  const { design } = network;
   const bytes = ipaddr.parse(near.split('/')[0]!).toByteArray();
   const family: Family = bytes.length === 4 ? 4 : 6;
   const last = family === 4 ? 254 : 0xffff;
   const start = family === 4 ? bytes[3]! : bytes[14]! * 256 + bytes[15]!;
   const used = usedAddresses(design);
-  const subnets = segmentSubnets(design).map(([subnet]) => subnet);
   for (let step = 0; step < last; step += 1) {
     const host = ((start + step) % last) + 1;
     const candidate = ipaddr
@@ -67,7 +93,7 @@ const freeAddressNear = (design: DesignFacts, near: string): string | undefined 
         family === 4 ? [...bytes.slice(0, 3), host] : [...bytes.slice(0, 14), host >> 8, host & 0xff],
       )
       .toString();
-    if (!used.has(plainAddress(candidate)) && !subnets.some((subnet) => prefixHolds(subnet, candidate)))
+    if (!used.has(plainAddress(candidate)) && segmentSubnetOf(network, candidate) === undefined)
       return `${candidate}/${hostBits(family)}`;
   }
   return undefined;
@@ -103,12 +129,11 @@ export const betterAddress = (
       return address === undefined ? [] : [plainAddress(address)];
     }),
   );
-  const subnets = segmentSubnets(design).map(([subnet]) => subnet);
   const named = addressesInSelectors(network, endpoint, family).find(
-    (prefix) => !taken.has(plainAddress(prefix)) && !subnets.some((subnet) => prefixHolds(subnet, prefix)),
+    (prefix) => !taken.has(plainAddress(prefix)) && segmentSubnetOf(network, prefix) === undefined,
   );
   if (named !== undefined) return { address: named, isNamed: true };
-  const free = freeAddressNear(design, near);
+  const free = freeAddressNear(network, near);
   return free === undefined ? undefined : { address: free, isNamed: false };
 };
 

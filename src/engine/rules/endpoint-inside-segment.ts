@@ -1,4 +1,4 @@
-import type { Network } from '../network/network.ts';
+import { perNetwork } from '../network/network.ts';
 import { defineRule } from './define-rule.ts';
 import type { Family } from '../network/association-path.ts';
 import {
@@ -6,9 +6,8 @@ import {
   families,
   familyField,
   plainAddress,
-  prefixHolds,
   readdressPatch,
-  segmentSubnets,
+  segmentSubnetOf,
 } from './endpoint-addresses.ts';
 
 interface Inside {
@@ -20,20 +19,15 @@ interface Inside {
 }
 
 /** Endpoints whose address lies in a subnet of a segment. */
-export const insideSegments = ({ design }: Network): readonly Inside[] => {
-  const subnets = segmentSubnets(design).map(([subnet, segment]) => ({ subnet, segment }));
-  return Object.entries(design.endpoints).flatMap(([endpoint, entry]) =>
+export const insideSegments = perNetwork((network): readonly Inside[] =>
+  Object.entries(network.design.endpoints).flatMap(([endpoint, entry]) =>
     families.flatMap((family) => {
       const address = entry[familyField(family)];
-      if (address === undefined) return [];
-      // Several sites may spell one subnet each; the answer must not depend on their order.
-      const [first] = subnets
-        .filter(({ subnet }) => prefixHolds(subnet, address))
-        .sort((x, y) => (`${x.segment} ${x.subnet}` < `${y.segment} ${y.subnet}` ? -1 : 1));
-      return first === undefined ? [] : [{ endpoint, family, address, ...first }];
+      const subnet = address === undefined ? undefined : segmentSubnetOf(network, address);
+      return address === undefined || subnet === undefined ? [] : [{ endpoint, family, address, ...subnet }];
     }),
-  );
-};
+  ),
+);
 
 export const endpointInsideSegment = defineRule({
   id: 'endpoint-inside-segment',

@@ -1,4 +1,5 @@
 import type { Network } from '../network/network.ts';
+import { segmentPathFacts } from './carried-segments.ts';
 import { defineRule, type Fault } from './define-rule.ts';
 import { lowerSegment, raisePath } from './packet-size-fixes.ts';
 import { siteNameOf } from './places.ts';
@@ -48,17 +49,7 @@ export const frameExceedsPath = defineRule({
   id: 'frame-exceeds-path',
   title: 'The largest packet of a segment fits whole through every tunnel that carries it',
   severity: 'blocking',
-  looksAt: [
-    'segments',
-    'tunnels',
-    'forwarders',
-    'associations',
-    'endpoints',
-    'devices',
-    'links',
-    'transports',
-    'sites',
-  ],
+  looksAt: segmentPathFacts,
   why: 'VXLAN and IPsec make every packet longer. What no longer fits the transport is dropped, and a bridge has no way to tell the sender.',
   seen: 'Pings and logins work; file transfers, web pages and certificate exchanges hang.',
   sources: [

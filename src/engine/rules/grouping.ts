@@ -26,8 +26,9 @@ export const sharedSets = (
   }
   const sets = new Map<string, string[]>();
   for (const item of [...parent.keys()].sort()) {
-    const set = sets.get(root(item)) ?? [];
-    sets.set(root(item), [...set, item]);
+    const set = sets.get(root(item));
+    if (set === undefined) sets.set(root(item), [item]);
+    else set.push(item);
   }
   return [...sets.values()].filter((set) => set.length > 1);
 };

@@ -1,8 +1,7 @@
 import type { NoPath } from '../network/association-path.ts';
 import { landingOf } from '../network/association-path.ts';
 import type { Network } from '../network/network.ts';
-import type { JsonValue } from './finding.ts';
-import type { Fix } from './finding.ts';
+import type { JsonValue, Fix } from './finding.ts';
 import type { Runner } from './other-path.ts';
 import { otherPathFixes } from './other-path.ts';
 import { placesOf } from './places.ts';

@@ -1,8 +1,9 @@
 import { tunnelPath } from '../network/association-path.ts';
 import type { Network } from '../network/network.ts';
-import { deviceOfTunnelEnd, ends } from '../network/network.ts';
+import { deviceOfTunnelEnd, ends, perNetwork } from '../network/network.ts';
 import type { TagCount } from '../wire/stack.ts';
-import { segmentsByForwarder, segmentsByTunnel, segmentsOfCircuit } from './carried-segments.ts';
+import { tunnelSegments } from '../flood/tunnel-segments.ts';
+import { segmentsByForwarder, segmentsOfCircuit } from './carried-segments.ts';
 import { keepsTags, tagModeOf } from './tag-mode.ts';
 import { tunnelCapacity, type EndCapacity } from './tunnel-capacity.ts';
 
@@ -34,7 +35,7 @@ const innerTagsOf = (network: Network, tunnel: string, segment: string): TagCoun
 /** What the tunnels of a segment let through, the narrowest first. */
 export const capacitiesOf = (network: Network): ReadonlyMap<string, readonly Tight[]> => {
   const bySegment = new Map<string, Tight[]>();
-  for (const [tunnel, segments] of segmentsByTunnel(network))
+  for (const [tunnel, segments] of tunnelSegments(network))
     for (const segment of segments) {
       const capacity = tunnelCapacity(network, tunnel, innerTagsOf(network, tunnel, segment));
       if (capacity === undefined) continue;
@@ -85,11 +86,15 @@ export const isFragmented = (network: Network, id: string): boolean => {
   });
 };
 
+const gatewaysBySegment = perNetwork((network): ReadonlyMap<string, readonly string[]> => {
+  const bySegment = new Map<string, string[]>();
+  for (const [forwarder, segments] of segmentsByForwarder(network)) {
+    if (network.design.forwarders[forwarder]!.gateway?.mtu === undefined) continue;
+    for (const segment of segments) bySegment.set(segment, [...(bySegment.get(segment) ?? []), forwarder]);
+  }
+  return bySegment;
+});
+
 /** Forwarders that serve the segment and have a gateway in it whose MTU is known. */
 export const gatewaysOf = (network: Network, segment: string): readonly string[] =>
-  [...segmentsByForwarder(network)]
-    .filter(
-      ([id, segments]) =>
-        segments.includes(segment) && network.design.forwarders[id]!.gateway?.mtu !== undefined,
-    )
-    .map(([id]) => id);
+  gatewaysBySegment(network).get(segment) ?? [];

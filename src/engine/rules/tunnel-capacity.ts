@@ -46,6 +46,21 @@ const espOf = (network: Network, id: string, family: 4 | 6, hasNat: boolean): Es
 const portMtu = (network: Network, landing: Landing): number =>
   entryOf(network.design.devices, landing.device).ports[landing.port]?.mtu ?? Infinity;
 
+const answers = perNetwork((_network) => new Map<string, ReturnType<typeof largestInnerPacket>>());
+
+/** Most tunnels of a design are built alike: each stack is searched once. */
+const largestThrough = (
+  network: Network,
+  transportMtuBytes: number,
+  stack: Stack,
+): ReturnType<typeof largestInnerPacket> => {
+  const known = answers(network);
+  const key = JSON.stringify([transportMtuBytes, stack]);
+  const answer = known.get(key) ?? largestInnerPacket({ transportMtuBytes, innerIpVersion: 'ipv4', stack });
+  known.set(key, answer);
+  return answer;
+};
+
 const capacityOf = (network: Network, id: string, innerTags: TagCount): EndCapacity | undefined => {
   const tunnel = entryOf(network.design.tunnels, id);
   const path = tunnelPath(network, id);
@@ -81,7 +96,7 @@ const capacityOf = (network: Network, id: string, innerTags: TagCount): EndCapac
       ...(Number.isFinite(port) && port >= 576 ? { accessPayloadBytes: port } : {}),
     };
     const ownLimit = Math.min(transportMtuBytes, port);
-    const answer = largestInnerPacket({ transportMtuBytes: ownLimit, innerIpVersion: 'ipv4', stack });
+    const answer = largestThrough(network, ownLimit, stack);
     return {
       end,
       largestBytes: answer.ok ? answer.largestInnerPacketBytes : 0,

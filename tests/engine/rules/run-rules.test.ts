@@ -17,7 +17,7 @@ const sound: { readonly [name: string]: Design } = {
   'a full mesh whose tunnels are isolated from each other': meshDesign(4, { join: { isolation: 'mesh' } }),
 };
 
-describe('runRules', () => {
+describe('runRules', { timeout: 60_000 }, () => {
   it.each(Object.entries(sound))('finds nothing in %s', (_name, design) => {
     expect(runRules(design).map((finding) => finding.sentence)).toEqual([]);
   });
@@ -66,7 +66,7 @@ describe('runRules', () => {
           design = edited;
         }
       }),
-      { numRuns: 60 },
+      { numRuns: 30 },
     );
   });
 
@@ -93,7 +93,7 @@ describe('runRules', () => {
               id,
             ).toBe(true);
       }),
-      { numRuns: 100 },
+      { numRuns: 60 },
     );
   });
 });
