@@ -87,7 +87,7 @@ export function DataTable<Row>({
                       // The row takes the mouse, this button the keyboard.
                       <button
                         type="button"
-                        className="text-left"
+                        className="block w-full text-left"
                         onClick={(event) => {
                           event.stopPropagation();
                           onSelect(row);

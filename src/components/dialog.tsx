@@ -1,5 +1,5 @@
 import { Dialog as Primitive } from 'radix-ui';
-import type { ReactNode } from 'react';
+import { useRef, type ReactNode } from 'react';
 import { Button } from './button.tsx';
 import { Icon } from './icon.tsx';
 
@@ -37,6 +37,8 @@ export function Dialog({
   widthPx = 460,
   onSubmit,
 }: DialogProps) {
+  // Opened by the page's state and not by a trigger of the library, which would know it.
+  const opener = useRef<Element>(null);
   const body = (
     <>
       <div className="min-h-0 flex-1 overflow-y-auto px-20 py-16">{children}</div>
@@ -53,7 +55,13 @@ export function Dialog({
           <Primitive.Content
             className="pointer-events-auto flex max-h-full w-full flex-col border-1.5 border-ink bg-panel text-ink shadow-sheet outline-none"
             style={{ maxWidth: widthPx }}
-            onOpenAutoFocus={focusFirstField}
+            onOpenAutoFocus={(event) => {
+              opener.current = document.activeElement;
+              focusFirstField(event);
+            }}
+            onCloseAutoFocus={() => {
+              if (opener.current instanceof HTMLElement) opener.current.focus();
+            }}
             {...(description === undefined ? { 'aria-describedby': undefined } : {})}
           >
             <div className="flex items-start gap-12 border-b border-rule-2 py-12 pr-12 pl-20">

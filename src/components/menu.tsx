@@ -1,5 +1,5 @@
 import { DropdownMenu as Primitive } from 'radix-ui';
-import { Fragment, type ReactElement, type ReactNode } from 'react';
+import { Fragment, useRef, type ReactElement, type ReactNode } from 'react';
 import { classNames } from '../lib/class-names.ts';
 import { Icon } from './icon.tsx';
 
@@ -38,6 +38,9 @@ const itemLook = classNames(
 
 /** A list of things to do that opens from a button. Groups are parted by a rule. */
 export function Menu({ trigger, groups, heading, align = 'start' }: MenuProps) {
+  // Done once the menu has closed and the focus is back at its button: a dialog that it opens then knows where to
+  // return to.
+  const chosen = useRef<() => void>(undefined);
   return (
     // Not modal: a modal menu would put a style element into the page, which the content security policy refuses.
     <Primitive.Root modal={false}>
@@ -47,6 +50,10 @@ export function Menu({ trigger, groups, heading, align = 'start' }: MenuProps) {
           align={align}
           sideOffset={5}
           collisionPadding={8}
+          onCloseAutoFocus={() => {
+            chosen.current?.();
+            chosen.current = undefined;
+          }}
           className="z-50 max-h-(--radix-dropdown-menu-content-available-height) min-w-180 overflow-y-auto border-1.5 border-ink bg-field py-4 shadow-sheet outline-none"
         >
           {heading !== undefined && <div className="border-b border-rule-2 px-12 pt-6 pb-9">{heading}</div>}
@@ -60,7 +67,9 @@ export function Menu({ trigger, groups, heading, align = 'start' }: MenuProps) {
                   <Primitive.Item
                     key={action.label}
                     disabled={action.disabled}
-                    onSelect={action.onSelect}
+                    onSelect={() => {
+                      chosen.current = action.onSelect;
+                    }}
                     className={classNames(itemLook, action.danger && 'text-red')}
                   >
                     <span className="flex-1">{action.label}</span>

@@ -84,16 +84,19 @@ export function SeverityCounts({ counts, worded = false, clear = 'clear' }: Seve
     );
   }
   return (
-    <span className={classNames('inline-flex items-center', worded ? 'gap-16' : 'gap-8')}>
+    <span className={classNames('inline-flex items-center', worded ? 'gap-16 max-sm:gap-10' : 'gap-8')}>
       {present.map((severity) => (
         <span
           key={severity}
-          className={classNames('inline-flex items-center gap-5 font-semibold', inks[severity])}
+          className={classNames(
+            'inline-flex items-center gap-5 font-semibold whitespace-nowrap',
+            inks[severity],
+          )}
         >
           <SeverityShape severity={severity} size={worded ? 14 : 13} />
           <span>
             {counts[severity]}
-            <span className={worded ? undefined : 'sr-only'}> {severity}</span>
+            <span className={worded ? 'max-sm:sr-only' : 'sr-only'}> {severity}</span>
           </span>
         </span>
       ))}

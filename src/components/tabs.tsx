@@ -33,8 +33,7 @@ export function Tabs({ label, tabs, value, onChange, trailing, children, classNa
               value={tab.value}
               className="relative flex items-center gap-8 border-r border-rule-2 px-14 text-base font-medium whitespace-nowrap text-ink-2 -outline-offset-2 hover:bg-hover data-[state=active]:font-semibold data-[state=active]:text-ink data-[state=active]:after:absolute data-[state=active]:after:inset-x-0 data-[state=active]:after:bottom-0 data-[state=active]:after:h-4 data-[state=active]:after:bg-ink"
             >
-              {tab.label}
-              {tab.count !== undefined && <span className="font-semibold">{tab.count}</span>}
+              {tab.label} {tab.count !== undefined && <span className="font-semibold">{tab.count}</span>}
             </Primitive.Trigger>
           ))}
         </Primitive.List>

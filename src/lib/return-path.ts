@@ -5,6 +5,8 @@ export function safeReturnPath(asked: string | null, origin: string = window.loc
   if (asked === null || !/^\/(?![/\\])/.test(asked) || /[\u0000-\u001f\\]/.test(asked)) return '/';
   const url = new URL(asked, origin);
   if (url.origin !== origin || url.pathname === '/sign-in') return '/';
+  // '/..//host' is a path of this origin until it is read once more.
+  if (url.pathname.startsWith('//')) return '/';
   return `${url.pathname}${url.search}${url.hash}`;
 }
 

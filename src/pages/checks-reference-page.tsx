@@ -17,7 +17,7 @@ export function ChecksReferencePage() {
   usePageTitle('Reference of checks');
   const { valueOf, change } = useSearchValues();
   const { hash } = useLocation();
-  const rules = useMemo(ruleReference, []);
+  const rules = useMemo(() => ruleReference(), []);
   const asked = valueOf('severity');
   const severity = isSeverity(asked) ? asked : null;
   const words = valueOf('q');

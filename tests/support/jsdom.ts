@@ -1,6 +1,9 @@
 import '@testing-library/jest-dom/vitest';
-import { cleanup } from '@testing-library/react';
+import { cleanup, configure } from '@testing-library/react';
 import { afterEach, vi } from 'vitest';
+
+// Pages load their parts when first gone to; on a busy machine that takes a while.
+configure({ asyncUtilTimeout: 10_000 });
 
 afterEach(() => {
   cleanup();

@@ -53,13 +53,12 @@ export function FindingRow({
             !selected && 'hover:bg-hover',
           )}
         >
-          <FindingNumber finding={finding} />
-          <SeverityMark severity={finding.severity} />
+          <FindingNumber finding={finding} /> <SeverityMark severity={finding.severity} />{' '}
           <span className="font-medium max-md:order-last max-md:col-span-4">
-            {finding.sentence}
-            {finding.waived === true && <span className="font-normal text-ink-3"> (waived)</span>}
-          </span>
-          <span className="text-ink-2 max-md:order-last max-md:col-span-4">{finding.elements}</span>
+            {finding.sentence}{' '}
+            {finding.waived === true && <span className="font-normal text-ink-3">(waived)</span>}
+          </span>{' '}
+          <span className="text-ink-2 max-md:order-last max-md:col-span-4">{finding.elements}</span>{' '}
           <span className="whitespace-nowrap text-ink-2">
             {finding.zone === undefined ? null : `at ${finding.zone}`}
           </span>

@@ -43,7 +43,7 @@ export function SignInForm() {
           <Mark width={48} />
           <span className="text-[22px]/28 font-semibold max-sm:text-title">Longpatch</span>
         </div>
-        <CellGrid className="border-ink sm:border-l [&>div:first-child]:p-0">
+        <CellGrid className="border-ink sm:border-l [&>div:first-child]:p-0 [&>div:last-child]:px-14 [&>div:last-child:not(:empty)]:pb-9">
           <div className="px-14 pt-7 pb-8">
             <span className="block text-label text-ink-3">Title</span>
             <h1 className="text-page font-semibold">Sign in</h1>
