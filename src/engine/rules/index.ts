@@ -20,6 +20,9 @@ import { endpointOnOneMember } from './endpoint-on-one-member.ts';
 import { frameExceedsPath } from './frame-exceeds-path.ts';
 import { ikeVersionMismatch } from './ike-version-mismatch.ts';
 import { portHoldsTwoCables } from './port-holds-two-cables.ts';
+import { stormAnyToAnyMesh } from './storm-any-to-any-mesh.ts';
+import { stormCustomerCable } from './storm-customer-cable.ts';
+import { stormLocal } from './storm-local.ts';
 import { transportFiltersNeeded } from './transport-filters-needed.ts';
 import { transportMtuUnknown } from './transport-mtu-unknown.ts';
 import { tunnelBareOnUntrusted } from './tunnel-bare-on-untrusted.ts';
@@ -57,6 +60,9 @@ export const rules: readonly Rule[] = [
   frameExceedsPath,
   ikeVersionMismatch,
   portHoldsTwoCables,
+  stormAnyToAnyMesh,
+  stormCustomerCable,
+  stormLocal,
   transportFiltersNeeded,
   transportMtuUnknown,
   tunnelBareOnUntrusted,

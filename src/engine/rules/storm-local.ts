@@ -1,0 +1,133 @@
+import type { Storm } from '../flood/storm.ts';
+import { isGateway } from '../model/devices.ts';
+import type { MergePatch } from '../model/merge-patch.ts';
+import type { Network } from '../network/network.ts';
+import { segmentPathFacts } from './carried-segments.ts';
+import { defineRule } from './define-rule.ts';
+import type { Fix } from './finding.ts';
+import { cutFix } from './storm-cuts.ts';
+import { stormBody, stormOfFault, stormsOf } from './storm-faults.ts';
+import { devicesOf, fateOf, ofSegments, sitesOf, stormSeen, stormWhy } from './storm-words.ts';
+import { counted, listed, sentenceCase } from './wording.ts';
+
+/** Spanning tree at every switch of a ring of switches; at gateways it would only see what crosses untagged. */
+const treeFix = ({ design }: Network, storm: Storm): readonly Fix[] => {
+  const switches = storm.devices.filter((id) => design.devices[id]!.kind === 'switch');
+  const off = switches.filter((id) => design.devices[id]!.settings?.spanningTree?.mode !== 'on');
+  if (switches.length < storm.devices.length || off.length === 0) return [];
+  const names = listed(off.map((id) => design.devices[id]!.name));
+  const patch: MergePatch = {
+    devices: Object.fromEntries(off.map((id) => [id, { settings: { spanningTree: { mode: 'on' } } }])),
+  };
+  return [
+    {
+      id: 'spanning-tree',
+      label: 'Turn on spanning tree',
+      sentence: `Turns on spanning tree at ${names}; it blocks the spare connection until it is needed.`,
+      patch,
+    },
+  ];
+};
+
+/** Pairs of which both members bridge. */
+const doublyActive = ({ design }: Network, storm: Storm): readonly string[] =>
+  storm.devices.filter((id) => {
+    const device = design.devices[id]!;
+    return device.kind === 'ha-pair' && device.mode === 'active-active';
+  });
+
+/** Whether two gateways of one site, or both members of a pair, are in the ring. */
+const hasTwoAtOneSite = (network: Network, storm: Storm): boolean => {
+  const { design } = network;
+  const gateways = storm.devices.filter((id) => isGateway(design.devices[id]!));
+  const sites = new Set(gateways.map((id) => design.devices[id]!.site));
+  return sites.size < gateways.length || doublyActive(network, storm).length > 0;
+};
+
+const standbyFix = (network: Network, storm: Storm): readonly Fix[] => {
+  const pairs = doublyActive(network, storm);
+  if (pairs.length === 0) return [];
+  const names = listed(pairs.map((id) => network.design.devices[id]!.name));
+  return [
+    {
+      id: 'standby',
+      label: 'Let one member stand by',
+      sentence: `Sets ${names} to active and standby, so that one member alone forwards frames.`,
+      patch: { devices: Object.fromEntries(pairs.map((id) => [id, { mode: 'active-standby' }])) },
+    },
+  ];
+};
+
+export const stormLocal = defineRule({
+  id: 'storm-local',
+  title: 'Cables of a site form no loop that nothing blocks',
+  severity: 'blocking',
+  looksAt: segmentPathFacts,
+  why: stormWhy,
+  seen: stormSeen,
+  sources: [{ document: 'RFC 4664', clause: 'section 3.4.1' }, 'common practice, no source'],
+  messages: {
+    within: {
+      words: 'broadcast storm',
+      sentence: (v: {
+        readonly cables: string;
+        readonly verb: string;
+        readonly devices: string;
+        readonly site: string;
+        readonly segments: string;
+        readonly fate: string;
+      }) => `${v.cables} at ${v.site} ${v.verb} a loop${v.segments} through ${v.devices}: ${v.fate}`,
+    },
+    through: {
+      words: 'broadcast storm',
+      sentence: (v: { readonly sites: string; readonly segments: string; readonly fate: string }) =>
+        `Cables and tunnels${v.segments} close a ring through ${v.sites}: ${v.fate}`,
+    },
+    twoWays: {
+      words: 'broadcast storm',
+      sentence: (v: { readonly sites: string; readonly segments: string; readonly fate: string }) =>
+        `Two gateways beside each other both bridge frames${v.segments}, which closes a ring through ${v.sites}: ${v.fate}`,
+      why: `Two gateways on one switch, both with a tunnel for the segment, are two ways between the same places, and no spanning tree sees both. ${stormWhy}`,
+    },
+  },
+  check: (network) => {
+    const { design } = network;
+    return stormsOf(network, 'local').map((storm) => {
+      const words = { segments: ofSegments(design, storm), fate: fateOf(storm) };
+      const body = stormBody(storm);
+      if (storm.tunnels.length > 0)
+        return {
+          message: hasTwoAtOneSite(network, storm) ? ('twoWays' as const) : ('through' as const),
+          values: { sites: sitesOf(design, storm), ...words },
+          ...body,
+          sources: [
+            { document: 'RFC 8365', clause: 'section 8.1.3' },
+            { document: 'RFC 4664', clause: 'section 3.4.1' },
+          ],
+        };
+      return {
+        message: 'within' as const,
+        values: {
+          cables: sentenceCase(
+            storm.cables.length === 1 ? 'a cable' : counted(storm.cables.length, 'cable', 'cables'),
+          ),
+          verb: storm.cables.length === 1 ? 'forms' : 'form',
+          devices: devicesOf(design, storm),
+          site: sitesOf(design, storm),
+          ...words,
+        },
+        ...body,
+        properties: storm.devices
+          .filter((id) => design.devices[id]!.kind === 'switch')
+          .map((id) => ({
+            ref: { collection: 'devices' as const, id },
+            path: ['settings', 'spanningTree', 'mode'],
+          })),
+      };
+    });
+  },
+  fixes: (fault, network) => {
+    const storm = stormOfFault(network, 'local', fault);
+    return [...treeFix(network, storm), ...standbyFix(network, storm), cutFix(network, storm)];
+  },
+});
