@@ -5,7 +5,7 @@ import { duplicateEndpoints } from './endpoint-address-duplicate.ts';
 import { insideSegments } from './endpoint-inside-segment.ts';
 import { associationPlaces } from './places.ts';
 import { coverPatch } from './selector-patch.ts';
-import { listed } from './wording.ts';
+import { listed, namedOrCounted } from './wording.ts';
 
 export const associationSelectorsMissLoopbacks = defineRule({
   id: 'association-selectors-miss-loopbacks',
@@ -58,7 +58,7 @@ export const associationSelectorsMissLoopbacks = defineRule({
           values: {
             association: association.name,
             places: listed(sides.map((side) => places[side])),
-            pairs: listed(pairs),
+            pairs: namedOrCounted(pairs, 'pairs of endpoints'),
           },
           elements: [
             ref,
@@ -80,7 +80,7 @@ export const associationSelectorsMissLoopbacks = defineRule({
       {
         id: 'add-selectors',
         label: 'Add the endpoints',
-        sentence: `Adds selectors for exactly ${fault.values.pairs} to ${fault.values.association} at ${fault.values.places}.`,
+        sentence: `Adds selectors for ${fault.values.pairs} to ${fault.values.association} at ${fault.values.places}.`,
         patch: coverPatch(network, tunnels),
       },
     ];

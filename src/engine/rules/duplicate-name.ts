@@ -4,7 +4,7 @@ import { joinPatches } from '../model/merge-patch.ts';
 import type { DesignFacts, Network } from '../network/network.ts';
 import { ends } from '../network/network.ts';
 import { defineRule, type Fault } from './define-rule.ts';
-import { listed } from './wording.ts';
+import { countWord, listed, sentenceCase } from './wording.ts';
 
 type Named =
   'sites' | 'devices' | 'transports' | 'associations' | 'tunnels' | 'segments' | 'endpoints' | 'forwarders';
@@ -70,7 +70,7 @@ const messages = {
   name: {
     words: 'name used twice',
     sentence: (v: { readonly count: number; readonly noun: string; readonly name: string }) =>
-      `${v.count === 2 ? 'Two' : String(v.count)} ${v.noun} are called ${v.name}`,
+      `${sentenceCase(countWord(v.count))} ${v.noun} are called ${v.name}`,
   },
   letter: {
     words: 'letter used twice',

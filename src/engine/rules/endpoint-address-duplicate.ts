@@ -6,7 +6,7 @@ import { perNetwork } from '../network/network.ts';
 import { defineRule } from './define-rule.ts';
 import { betterAddress, families, familyField, plainAddress, readdressPatch } from './endpoint-addresses.ts';
 import { sharedSets } from './grouping.ts';
-import { counted, listed } from './wording.ts';
+import { counted, listed, namedOrCounted, sentenceCase } from './wording.ts';
 
 /** Endpoints that have an address in common; the two members of one pair may share theirs. */
 export const duplicateEndpoints = perNetwork(({ design }): readonly (readonly string[])[] => {
@@ -59,12 +59,15 @@ export const endpointAddressDuplicate = defineRule({
       return {
         message: 'shared',
         values: {
-          endpoints: listed(
-            ids.map(
-              (id) =>
-                `${design.endpoints[id]!.name} on ${design.devices[design.endpoints[id]!.device]!.name}`,
-            ),
-          ),
+          endpoints:
+            ids.length > 3
+              ? sentenceCase(counted(ids.length, 'endpoint', 'endpoints'))
+              : listed(
+                  ids.map(
+                    (id) =>
+                      `${design.endpoints[id]!.name} on ${design.devices[design.endpoints[id]!.device]!.name}`,
+                  ),
+                ),
           addresses: listed(shared),
           isPair: ids.length === 2,
         },
@@ -104,7 +107,7 @@ export const endpointAddressDuplicate = defineRule({
       {
         id: 'move-others',
         label: `Readdress ${counted(others.length, 'endpoint', 'endpoints')}`,
-        sentence: `Leaves the address to ${design.endpoints[ids[0]!]!.name} and gives the others ${listed(addresses)}.`,
+        sentence: `Leaves the address to ${design.endpoints[ids[0]!]!.name} and gives the others ${namedOrCounted(addresses, 'free addresses')}.`,
         patch,
       },
     ];

@@ -1,5 +1,5 @@
 import type { Network } from '../network/network.ts';
-import { otherEnd } from '../network/network.ts';
+import { forwardingMembers, otherEnd } from '../network/network.ts';
 import { defineRule } from './define-rule.ts';
 
 /** Devices at the far ends of an endpoint's tunnels. */
@@ -44,7 +44,9 @@ export const endpointOnOneMember = defineRule({
           identity: [id],
           properties: [{ ref, path: ['member'] }],
           basis: [member],
-          severityReason: 'Nothing is wrong until the pair fails over; then all its tunnels are down.',
+          severityReason: forwardingMembers(pair).includes(member)
+            ? 'Nothing is wrong until the pair fails over; then all its tunnels are down.'
+            : 'That member stands by, so that its tunnels are down already.',
         },
       ];
     });

@@ -5,7 +5,7 @@ import { lowerSegment, raisePath } from './packet-size-fixes.ts';
 import { siteNameOf } from './places.ts';
 import { capacitiesOf, gatewaysOf, isFragmented, needOf, type Tight } from './segment-capacity.ts';
 import { outermostBytes } from './tunnel-capacity.ts';
-import { counted } from './wording.ts';
+import { counted, countWord, sentenceCase } from './wording.ts';
 
 const messages = {
   segment: {
@@ -116,7 +116,10 @@ export const frameExceedsPath = defineRule({
                 needBytes,
                 largestBytes: worst.largestBytes,
                 tunnel,
-                hosts: hosts.length === 1 ? design.devices[hosts[0]!]!.name : `${hosts.length} hosts`,
+                hosts:
+                  hosts.length === 1
+                    ? design.devices[hosts[0]!]!.name
+                    : sentenceCase(`${countWord(hosts.length)} hosts`),
               },
               properties: [{ ref, path: ['mtu'] }],
               ...body,

@@ -1,7 +1,7 @@
 import { associationStates, tunnelStates } from '../network/can-come-up.ts';
 import type { Network } from '../network/network.ts';
 import { defineRule } from './define-rule.ts';
-import { listed } from './wording.ts';
+import { listed, namedOrCounted } from './wording.ts';
 
 type Filter = 'esp' | 'udp-500' | 'udp-4500' | 'udp-4789';
 const filterNames: { readonly [F in Filter]: string } = {
@@ -48,8 +48,12 @@ export const transportFiltersNeeded = defineRule({
   messages: {
     filtered: {
       words: 'filtered on path',
-      sentence: (v: { readonly transport: string; readonly filters: string; readonly users: string }) =>
-        `${v.transport} filters ${v.filters}, which ${v.users} need${v.users.includes(' and ') ? '' : 's'}`,
+      sentence: (v: {
+        readonly transport: string;
+        readonly filters: string;
+        readonly users: string;
+        readonly isOne: boolean;
+      }) => `${v.transport} filters ${v.filters}, which ${v.users} need${v.isOne ? 's' : ''}`,
     },
   },
   check: (network) => {
@@ -70,7 +74,11 @@ export const transportFiltersNeeded = defineRule({
         values: {
           transport: design.transports[transport]!.name,
           filters: listed(filters.map((filter) => filterNames[filter])),
-          users: listed(users.map(({ collection, id }) => design[collection][id]!.name)),
+          users: namedOrCounted(
+            users.map(({ collection, id }) => design[collection][id]!.name),
+            'associations and tunnels',
+          ),
+          isOne: users.length === 1,
         },
         elements: [ref, ...users],
         identity: [transport],

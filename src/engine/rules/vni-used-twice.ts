@@ -5,7 +5,7 @@ import { VXLAN_UDP_PORT } from '../reference/vxlan.ts';
 import { defineRule } from './define-rule.ts';
 import { sharedSets } from './grouping.ts';
 import { freeVnis } from './vni-use.ts';
-import { counted, listed } from './wording.ts';
+import { counted, listed, namedOrCounted } from './wording.ts';
 
 type Scope = 'endpoint' | 'peer' | 'multipoint';
 
@@ -102,11 +102,11 @@ export const vniUsedTwice = defineRule({
         message: 'shared',
         values: {
           vni: listed(vnis.map(String)),
-          tunnels: ids.length > 3 ? counted(ids.length, 'tunnel', 'tunnels') : listed(names),
-          endpoints:
-            endpoints.length > 3
-              ? counted(endpoints.length, 'endpoint', 'endpoints')
-              : listed(endpoints.map((id) => design.endpoints[id]!.name)),
+          tunnels: namedOrCounted(names, 'tunnels'),
+          endpoints: namedOrCounted(
+            endpoints.map((id) => design.endpoints[id]!.name),
+            'endpoints',
+          ),
         },
         elements: [
           ...ids.map((id) => ({ collection: 'tunnels' as const, id })),
@@ -134,7 +134,10 @@ export const vniUsedTwice = defineRule({
           others.length === 1
             ? `Set ${design.tunnels[only!.id]!.name} to ${free[0]!}`
             : `Renumber ${counted(others.length, 'tunnel', 'tunnels')}`,
-        sentence: `Gives ${listed(others.map(({ id }, i) => `${design.tunnels[id]!.name} VNI ${free[i]!}`))}, at both ends.`,
+        sentence: `Gives ${namedOrCounted(
+          others.map(({ id }, i) => `${design.tunnels[id]!.name} VNI ${free[i]!}`),
+          'tunnels free VNIs of their own',
+        )}, at both ends.`,
         patch: joinPatches(
           design,
           others.map(({ id }, i) => ({ tunnels: { [id]: { a: { vni: free[i]! }, b: { vni: free[i]! } } } })),

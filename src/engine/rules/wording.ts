@@ -25,5 +25,9 @@ export const counted = (count: number, one: string, several: string): string =>
 export const listed = (items: readonly string[]): string =>
   items.length < 2 ? (items[0] ?? '') : `${items.slice(0, -1).join(', ')} and ${items.at(-1)!}`;
 
+/** Up to three items by name; more of them as a count, so that a sentence stays one. */
+export const namedOrCounted = (items: readonly string[], several: string): string =>
+  items.length > 3 ? `${countWord(items.length)} ${several}` : listed(items);
+
 /** The sentence with a capital at its start. */
 export const sentenceCase = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);

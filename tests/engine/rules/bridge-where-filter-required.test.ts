@@ -33,6 +33,21 @@ testRule(bridgeWhereFilterRequired, {
         },
       ],
     },
+    'a hub that only passes the segment on between its tunnels': {
+      design: changed(hubDesign(2), filtered, {
+        forwarders: {
+          'br-s0-a': { circuits: { access: null } },
+          'br-s2-a': { kind: 'cross-connect', policy },
+        },
+      }),
+      findings: [
+        {
+          sentence:
+            'Segment A must be filtered, but is bridged between Head office and Gullhaven through tn-s0-s1-a',
+          fixes: ['Filter at Gullhaven'],
+        },
+      ],
+    },
     'a hub, which can be filtered only at its spokes': {
       design: changed(hubDesign(2), filtered),
       findings: [

@@ -35,7 +35,7 @@ testRule(duplicateName, {
       }),
       findings: [
         {
-          sentence: '3 tunnels are called tn-s0-s1-a',
+          sentence: 'Three tunnels are called tn-s0-s1-a',
           severity: 'advisory',
           fixes: ['Rename all but one'],
         },

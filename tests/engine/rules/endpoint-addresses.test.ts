@@ -34,7 +34,9 @@ describe('segmentSubnetOf', () => {
 
   it('does not take IPv6 for IPv4', () => {
     const network = indexNetwork(
-      changed(pairDesign(), { segments: { a: { sites: { s0: { subnets: ['::/0'] }, s1: { subnets: [] } } } } }),
+      changed(pairDesign(), {
+        segments: { a: { sites: { s0: { subnets: ['::/0'] }, s1: { subnets: [] } } } },
+      }),
     );
     expect(segmentSubnetOf(network, '10.0.0.1/32')).toBeUndefined();
     expect(segmentSubnetOf(network, '2001:db8::1/128')).toEqual({ subnet: '::/0', segment: 'a' });

@@ -119,7 +119,7 @@ testRule(frameExceedsPath, {
       design: changed(pairDesign(), mtu(null)),
       findings: [
         {
-          sentence: '2 hosts of Segment A may send packets of 1500 bytes, but 1396 fit through tn-s0-s1-a',
+          sentence: 'Two hosts of Segment A may send packets of 1500 bytes, but 1396 fit through tn-s0-s1-a',
           fixes: ['Lower Segment A to 1396'],
         },
       ],

@@ -1,12 +1,13 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { Design } from '#engine/model/design.ts';
-import { applyPatch, inversePatch, type MergePatch } from '#engine/model/merge-patch.ts';
+import { applyPatch, inversePatch } from '#engine/model/merge-patch.ts';
 import { associationStates, tunnelStates } from '#engine/network/can-come-up.ts';
 import { indexNetwork } from '#engine/network/index-network.ts';
 import { compareFindings } from '#engine/rules/finding.ts';
 import { countBySeverity, runRules } from '#engine/rules/run-rules.ts';
 import { chainDesign, hubDesign, meshDesign, pairDesign } from '../../support/designs.ts';
+import { faults } from '../../support/faults.ts';
 
 const sound: { readonly [name: string]: Design } = {
   'a pair of sites': pairDesign(),
@@ -54,10 +55,10 @@ describe('runRules', { timeout: 60_000 }, () => {
 
   it('answers the same from memory as afresh, after any sequence of edits', () => {
     fc.assert(
-      fc.property(fc.array(fc.nat(edits.length - 1), { minLength: 1, maxLength: 8 }), (picks) => {
+      fc.property(fc.array(fc.nat(faults.length - 1), { minLength: 1, maxLength: 8 }), (picks) => {
         let design: Design = pairDesign({ segments: ['a', 'b'] });
         for (const pick of picks) {
-          const patch = edits[pick]!;
+          const patch = faults[pick]!;
           const undo = inversePatch(design, patch);
           const edited = applyPatch(design, patch);
           runRules(design);
@@ -72,9 +73,9 @@ describe('runRules', { timeout: 60_000 }, () => {
 
   it('names every tunnel and association that can’t come up in a blocking finding', () => {
     fc.assert(
-      fc.property(fc.uniqueArray(fc.nat(edits.length - 1), { minLength: 1, maxLength: 5 }), (picks) => {
+      fc.property(fc.uniqueArray(fc.nat(faults.length - 1), { minLength: 1, maxLength: 5 }), (picks) => {
         const design = picks.reduce<Design>(
-          (at, pick) => applyPatch(at, edits[pick]!),
+          (at, pick) => applyPatch(at, faults[pick]!),
           pairDesign({ segments: ['a', 'b'] }),
         );
         const network = indexNetwork(design);
@@ -101,46 +102,7 @@ describe('runRules', { timeout: 60_000 }, () => {
 const vnis = (a: number, b: number): Design =>
   applyPatch(pairDesign(), { tunnels: { 'tn-s0-s1-a': { a: { vni: a }, b: { vni: b } } } });
 
-const association = (patch: MergePatch): MergePatch => ({ associations: { 'as-s0-s1': patch } });
-const tunnel = (patch: MergePatch): MergePatch => ({ tunnels: { 'tn-s0-s1-a': patch } });
-
-/** Edits in every collection that a check looks at, most of them faults. */
-const edits: readonly MergePatch[] = [
-  tunnel({ b: { vni: 777 } }),
-  tunnel({ a: { vni: null } }),
-  tunnel({ a: { udpPort: 8472 } }),
-  tunnel({ association: null }),
-  tunnel({ family: 6 }),
-  tunnel({ a: { innerTags: 'keep' } }),
-  association({ a: { start: 'answers' } }),
-  association({ b: { liveness: 'off' } }),
-  association({ b: { ikeVersion: 1 } }),
-  association({ a: { authentication: { method: 'certificate', vaultEntry: null } } }),
-  association({ b: { espProposals: { first: { encryption: 'aes-cbc', integrity: 'hmac-sha1-96' } } } }),
-  association({ a: { ikeProposals: { first: { group: 2 } } } }),
-  association({ a: { selectors: { loopbacks: { local: '10.99.0.0/24' } } } }),
-  { endpoints: { 'lo-s1': { ipv4: '10.255.0.1/32' } } },
-  { endpoints: { 'lo-s1': { ipv4: '10.110.3.3/32' } } },
-  { endpoints: { 'lo-s1': { ipv4: null, ipv6: '2001:db8::1/128' } } },
-  { links: { 'ld-s0-coast': { nat: {} } } },
-  { links: { 'ld-s1-coast': { dynamic: true } } },
-  { links: { 'ld-s1-coast': { ipv4: null, ipv6: '2001:db8:9::1' } } },
-  { transports: { coast: { mtu: null } } },
-  { transports: { coast: { mtu: 1400 } } },
-  { transports: { coast: { filters: ['esp', 'udp-4500', 'udp-4789'] } } },
-  { transports: { coast: { trusted: true } } },
-  { devices: { 'fw-s1': { ports: { wan1: { shut: true } } } } },
-  { devices: { 'fw-s1': { name: 'fw-s0' } } },
-  { devices: { 'sw-s1': { ports: { p2: { stormLimitPps: null } } } } },
-  { segments: { a: { mustBeFiltered: true } } },
-  { segments: { a: { mtu: 1500 } } },
-  { segments: { b: { letter: 'A' } } },
-  { forwarders: { 'br-s0-a': { kind: 'cross-connect' } } },
-  { forwarders: { 'br-s0-a': { circuits: { access: null } } } },
-  { sites: { s1: { name: 'Head office' } } },
-];
-
 const faulty = [0, 7, 9, 25, 26, 27, 29].reduce<Design>(
-  (design, i) => applyPatch(design, edits[i]!),
+  (design, i) => applyPatch(design, faults[i]!),
   pairDesign({ segments: ['a', 'b'] }),
 );
