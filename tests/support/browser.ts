@@ -1,11 +1,13 @@
 import { chromium } from 'playwright-core';
-import type { Browser, Page } from 'playwright-core';
+import type { Browser, BrowserContext, Page } from 'playwright-core';
 import { inject } from 'vitest';
 import { chromiumProgram, ensureChromium } from '../../server/bootstrap/chromium.mjs';
 
 export interface PageOptions {
   readonly theme?: 'light' | 'dark';
   readonly viewport?: { readonly width: number; readonly height: number };
+  /** Cookies and storage of an earlier page, as when a browser is opened again. */
+  readonly storageState?: Awaited<ReturnType<BrowserContext['storageState']>>;
 }
 
 export interface TestBrowser {
@@ -32,13 +34,14 @@ export async function launchBrowser(): Promise<TestBrowser> {
     ],
   });
   return {
-    async newPage({ theme = 'light', viewport = { width: 1440, height: 900 } } = {}) {
+    async newPage({ theme = 'light', viewport = { width: 1440, height: 900 }, storageState } = {}) {
       const context = await browser.newContext({
         baseURL: inject('baseUrl'),
         colorScheme: theme,
         viewport: { ...viewport },
         locale: 'en-GB',
         timezoneId: 'UTC',
+        ...(storageState === undefined ? {} : { storageState }),
       });
       return context.newPage();
     },
