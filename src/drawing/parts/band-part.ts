@@ -15,7 +15,7 @@ const tickPx = 7;
 const tickStepPx = 6;
 const innerLinePx = 5;
 
-/** A band's end on the frame or on the furniture needs no line of its own; its long sides are drawn everywhere. */
+/** A band's end that lies all along the frame or the furniture needs no line of its own; its long sides are drawn everywhere. */
 const isHiddenEnd = (
   { from, to }: OutlineEdge,
   orientation: BandGeometry['orientation'],
@@ -23,11 +23,18 @@ const isHiddenEnd = (
 ): boolean => {
   const level = from.y === to.y;
   if (level !== (orientation === 'vertical')) return false;
-  const at = level ? from.y : from.x;
-  const borders = level
-    ? [frame.y, frame.y + frame.height, titleBlock.y, legend.y]
-    : [frame.x, frame.x + frame.width, titleBlock.x, legend.x + legend.width];
-  return borders.some((border) => Math.abs(border - at) < 1);
+  const [low, high] = level
+    ? [Math.min(from.x, to.x), Math.max(from.x, to.x)]
+    : [Math.min(from.y, to.y), Math.max(from.y, to.y)];
+  return [frame, titleBlock, legend].some((rect) => {
+    const [start, size] = level ? [rect.x, rect.width] : [rect.y, rect.height];
+    const sides = level ? [rect.y, rect.y + rect.height] : [rect.x, rect.x + rect.width];
+    return (
+      low >= start - 1 &&
+      high <= start + size + 1 &&
+      sides.some((side) => Math.abs(side - (level ? from.y : from.x)) < 1)
+    );
+  });
 };
 
 const edgePath = (edges: readonly OutlineEdge[]): string =>
@@ -99,7 +106,6 @@ export const bandPart = (band: BandGeometry, sheet: SheetFrame, facts: DrawingFa
           fill: 'none',
           stroke: paint('blue-soft'),
           strokeWidth: 9,
-          strokeLinecap: 'square',
         }),
         key: 'pencil',
       },

@@ -125,14 +125,17 @@ export const cutOpening = (
 };
 
 /** Two strokes and a slash: these two are not the same. */
-const unequal = (middle: Point): Shape => {
+const unequal = (middle: Point, scale: number): Shape => {
   const d = 'M-9 -4.5H9M-9 4.5H9M-7 11L7 -11';
   return group(
     [
       shape('path', { d, fill: 'none', stroke: paint('paper'), strokeWidth: 7, strokeLinecap: 'round' }),
       shape('path', { d, fill: 'none', stroke: paint('red'), strokeWidth: 2.6, strokeLinecap: 'round' }),
     ],
-    { key: 'unequal', attrs: { transform: `translate(${middle.x.toFixed(1)} ${middle.y.toFixed(1)})` } },
+    {
+      key: 'unequal',
+      attrs: { transform: `translate(${middle.x.toFixed(1)} ${middle.y.toFixed(1)}) scale(${scale})` },
+    },
   );
 };
 
@@ -191,10 +194,16 @@ export const cutMarks = (geometry: SheetGeometry, facts: DrawingFacts, look: Loo
                     ? { x: cut.middle.x + 26, y: cut.middle.y }
                     : cut.middle;
                 return [
-                  group([...flags(cut, lane, facts, look), differs && unequal(beside)], {
-                    key: `cut-${lane.tunnel}`,
-                    data: { ref: { collection: 'tunnels', id: lane.tunnel }, part: 'cut' },
-                  }),
+                  group(
+                    [
+                      ...flags(cut, lane, facts, look),
+                      differs && look.level !== 'far' && unequal(beside, look.level === 'plan' ? 1.4 : 1),
+                    ],
+                    {
+                      key: `cut-${lane.tunnel}`,
+                      data: { ref: { collection: 'tunnels', id: lane.tunnel }, part: 'cut' },
+                    },
+                  ),
                 ];
               }),
       );

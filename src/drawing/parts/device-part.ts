@@ -16,7 +16,7 @@ import { textLine } from './text-shape.ts';
 
 const pipNumber = (pip: PipGeometry, number: number, plate: Rect): Shape | undefined => {
   const inset = pipSize.numberInset;
-  const style = { sizePx: 11, weight: 500 as const, key: 'number' };
+  const style = { sizePx: 11.2, weight: 500 as const, key: 'number' };
   // Strips are dark and hold the name: numbers stand in the body only.
   const sideways = pip.side === 'left' || pip.side === 'right';
   if (pip.side === 'top' || (sideways && pip.at.y - 5 < plate.y + strip.height)) return undefined;

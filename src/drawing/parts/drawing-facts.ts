@@ -1,4 +1,4 @@
-import type { Design, Entry } from '../../engine/model/design.ts';
+import type { Design, ElementRef, Entry } from '../../engine/model/design.ts';
 import type { DeviceKind, Member } from '../../engine/model/devices.ts';
 import { paletteOf } from '../theme/segment-tokens.ts';
 import type { CorePalette } from '../theme/paint.ts';
@@ -35,6 +35,7 @@ export interface MemberFacts {
   readonly word: 'active' | 'standby';
 }
 export interface DeviceFacts {
+  readonly site: string;
   readonly kind: DeviceKind;
   readonly name: string;
   readonly glyph: GlyphName;
@@ -45,7 +46,7 @@ export interface DeviceFacts {
 }
 export interface NoteFacts {
   readonly text: string;
-  readonly target?: { readonly collection: string; readonly id: string };
+  readonly target?: ElementRef;
 }
 /** The cells of the title block (data fields of ISO 7200:2004, from memory). */
 export interface TitleBlockFacts {
@@ -72,6 +73,8 @@ export interface DrawingFacts {
   readonly transports: { readonly [id: string]: TransportWords };
   readonly tunnels: { readonly [id: string]: TunnelFacts };
   readonly notes: { readonly [id: string]: NoteFacts };
+  /** The device of each forwarder, which has no place of its own. */
+  readonly forwarders: { readonly [id: string]: string };
   readonly titleBlock: TitleBlockFacts;
 }
 
@@ -111,6 +114,7 @@ const deviceFacts = (design: Design): { readonly [id: string]: DeviceFacts } => 
     const secondLine = second(device);
     const members = membersOf(device);
     return {
+      site: device.site,
       kind: device.kind,
       name: device.name,
       // The members of a pair are firewalls to look at.
@@ -189,6 +193,7 @@ export const drawingFacts = (
       text,
       ...(target === undefined ? {} : { target }),
     })),
+    forwarders: mapEntries(design.forwarders, (forwarder) => forwarder.device),
     titleBlock: titleBlockFacts(design, titleBlock),
   };
 };

@@ -119,7 +119,8 @@ const bodyContent = (facts: FaceplateFacts, r: Rect, state: FaceplateState): Sha
   const middle = top + height / 2;
   const x = r.x + r.width / 2;
   if (state.level === 'plan') {
-    if (state.failed || height < 38) return undefined;
+    // Ports crowd a switch's body: its strip is enough.
+    if (state.failed || height < 38 || facts.kind === 'switch') return undefined;
     return {
       ...glyph(facts.glyph, { x: x - 13, y: middle - 14, size: 26, colour: paint('ink') }),
       key: 'glyph',

@@ -1,4 +1,3 @@
-import type { Plug } from '../../engine/model/underlay.ts';
 import type { Side } from '../../engine/model/layout.ts';
 import type { Path, Point, SheetGeometry } from '../geometry.ts';
 import { pathAt, pathData, pathLength } from '../path-geometry.ts';
@@ -101,8 +100,8 @@ const acceptSquare = (at: Point): Shape => {
 /** Cables that would cure something, in blue pencil, each with a square that accepts it. */
 export const ghostParts = (geometry: SheetGeometry, look: Look): readonly Shape[] =>
   look.decorations.ghosts.flatMap((ghost) => {
-    const from = plugSpot(geometry, ghost.from as Plug);
-    const to = plugSpot(geometry, ghost.to as Plug);
+    const from = plugSpot(geometry, ghost.from, ghost.to);
+    const to = plugSpot(geometry, ghost.to, ghost.from);
     if (from === undefined || to === undefined) return [];
     const path = ghostPath(from, to);
     const middle = pathAt(path, pathLength(path) / 2);

@@ -158,6 +158,7 @@ const wholeJacket = (
   const hidden = lanes.length > 0 && lanes.every((lane) => lane.hidden);
   const marked = tones.includes('selected') || tones.includes('hovered');
   const lit = tones.includes('lit');
+  const opacity = hidden ? hiddenOpacity : quiet || tones.includes('dimmed') ? dimmedOpacity : undefined;
   const body = group(
     [
       marked && stroke(jacket.path, 'blue', width + 12.2, 'pencil-edge'),
@@ -189,7 +190,7 @@ const wholeJacket = (
     ...lanes
       .map((lane) => cutOpening(jacket, lane.lane, geometry, look))
       .filter((part) => part !== undefined),
-    group(cuffs(jacket, look), { key: 'cuffs', ...opacityAttrs(hidden ? hiddenOpacity : undefined) }),
+    group(cuffs(jacket, look), { key: 'cuffs', ...opacityAttrs(opacity) }),
   ];
 };
 

@@ -2,7 +2,7 @@ import type { Rect, SheetFrame } from '../geometry.ts';
 import type { Shape } from '../shape.ts';
 import { group, shape } from '../shape.ts';
 import type { FitLimits } from '../text-width.ts';
-import { fitText } from '../text-width.ts';
+import { fitText, textWidth } from '../text-width.ts';
 import { paint } from '../theme/paint.ts';
 import type { TitleBlockFacts } from './drawing-facts.ts';
 import type { Level } from './level-of-detail.ts';
@@ -48,7 +48,7 @@ const fitted = (
     fill,
   });
 
-const cellPart = ({ key, label, value, rect, bold, whole }: Cell): Shape => {
+const cellPart = ({ key, label, value, rect, bold, whole }: Cell, labelPx: number): Shape => {
   const maxWidthPx = rect.width - 2 * inset + 3;
   const large = { maxWidthPx, sizePx: 13.5, minSizePx: 11.5, weight: bold ? 700 : 500 } as const;
   // A long value may have two small lines instead of one.
@@ -57,7 +57,11 @@ const cellPart = ({ key, label, value, rect, bold, whole }: Cell): Shape => {
   const tiny = twoLines && whole === true && fitText(value, small).shortened;
   return group(
     [
-      textLine(label, rect.x + inset, rect.y + 14, { sizePx: 11.5, fill: paint('ink-3'), key: 'label' }),
+      textLine(label, rect.x + inset, rect.y + 14, {
+        sizePx: Math.min(labelPx, ((rect.width - inset - 3) * labelPx) / textWidth(label, labelPx)),
+        fill: paint('ink-3'),
+        key: 'label',
+      }),
       ...(tiny
         ? fitted(value, rect.x + inset, rect.y + 30, 10, { ...large, sizePx: 9, minSizePx: 9, whole: true })
         : twoLines
@@ -68,7 +72,7 @@ const cellPart = ({ key, label, value, rect, bold, whole }: Cell): Shape => {
   );
 };
 
-const titleCell = (facts: TitleBlockFacts, rect: Rect): Shape => {
+const titleCell = (facts: TitleBlockFacts, rect: Rect, labelPx: number): Shape => {
   const limits = {
     maxWidthPx: rect.width - 2 * inset,
     maxLines: 2,
@@ -81,7 +85,7 @@ const titleCell = (facts: TitleBlockFacts, rect: Rect): Shape => {
   const first = title.lines.length === 1 ? rect.y + 38 : rect.y + 32;
   return group(
     [
-      textLine('Title', rect.x + inset, rect.y + 14, { sizePx: 11.5, fill: paint('ink-3'), key: 'label' }),
+      textLine('Title', rect.x + inset, rect.y + 14, { sizePx: labelPx, fill: paint('ink-3'), key: 'label' }),
       group(fitted(facts.title, rect.x + inset, first, step, limits), { key: 'title' }),
       facts.supplementaryTitle !== '' &&
         group(
@@ -100,7 +104,7 @@ const titleCell = (facts: TitleBlockFacts, rect: Rect): Shape => {
   );
 };
 
-const full = (facts: TitleBlockFacts, rect: Rect): readonly Shape[] => {
+const full = (facts: TitleBlockFacts, rect: Rect, labelPx: number): readonly Shape[] => {
   const { x, y } = rect;
   const second = x + columns[0];
   const third = second + columns[1];
@@ -139,8 +143,8 @@ const full = (facts: TitleBlockFacts, rect: Rect): readonly Shape[] => {
       `M${second} ${y}V${bottom}M${third} ${y}V${bottom}M${x} ${row1}H${third}M${x} ${row2}H${right}` +
         [rev, language, sheet].map((column) => `M${column} ${row2}V${bottom}`).join(''),
     ),
-    ...cells.map(cellPart),
-    titleCell(facts, { x: third, y, width: wide, height: 2 * rowPx }),
+    ...cells.map((cell) => cellPart(cell, labelPx)),
+    titleCell(facts, { x: third, y, width: wide, height: 2 * rowPx }, labelPx),
   ];
 };
 
@@ -196,6 +200,10 @@ const titleAlone = (facts: TitleBlockFacts, rect: Rect): readonly Shape[] => {
 export const titleBlockPart = (sheet: SheetFrame, facts: TitleBlockFacts, level: Level): Shape => {
   const rect = sheet.titleBlock;
   const inside =
-    level === 'far' ? titleAlone(facts, rect) : level === 'plan' ? brief(facts, rect) : full(facts, rect);
+    level === 'far'
+      ? titleAlone(facts, rect)
+      : level === 'plan'
+        ? brief(facts, rect)
+        : full(facts, rect, level === 'work' ? 13 : 11.5);
   return group([ground(rect), ...inside, outline(rect, level === 'far' ? 4 : 2.4)], { key: 'title-block' });
 };

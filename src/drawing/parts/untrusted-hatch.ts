@@ -15,17 +15,11 @@ export const untrustedHatch = (path: Path, level: Level, index: number): readonl
   const scale = width / 20;
   const length = pathLength(path);
   const lines: string[] = [];
-  // The hatch keeps its direction on the sheet while the cord turns, as a hatched area would.
+  // 45° to the cord wherever it turns: a hatch that kept its direction on the sheet would bunch up in the corners.
   for (let along = pitchPx / 2; along < length; along += pitchPx * scale) {
     const { x, y, angle } = pathAt(path, along);
-    const across = { x: -Math.sin(angle), y: Math.cos(angle) };
-    const slant = { x: Math.SQRT1_2, y: -Math.SQRT1_2 };
-    const rise = across.x * slant.x + across.y * slant.y;
-    // Along a piece that itself runs at 45° the strokes stand square to the cord.
-    const [dx, dy] =
-      Math.abs(rise) < 0.35
-        ? [across.x * half, across.y * half]
-        : [(slant.x / rise) * half, (slant.y / rise) * half];
+    const slant = angle - Math.PI / 4;
+    const [dx, dy] = [Math.cos(slant) * half * Math.SQRT2, Math.sin(slant) * half * Math.SQRT2];
     lines.push(
       `M${(x - dx).toFixed(1)} ${(y - dy).toFixed(1)}L${(x + dx).toFixed(1)} ${(y + dy).toFixed(1)}`,
     );

@@ -2,6 +2,7 @@ import type { Design } from '../../engine/model/design.ts';
 import type { Decorations, Tone } from '../decorations.ts';
 import { noDecorations } from '../decorations.ts';
 import type { SheetGeometry } from '../geometry.ts';
+import { balloonParts } from '../parts/balloon-part.ts';
 import { bandPart } from '../parts/band-part.ts';
 import { cablePart } from '../parts/cable-part.ts';
 import { cutMarks } from '../parts/cuts.ts';
@@ -14,7 +15,7 @@ import { legendPart } from '../parts/legend-part.ts';
 import type { Level } from '../parts/level-of-detail.ts';
 import type { Look } from '../parts/look.ts';
 import { loopChevrons } from '../parts/loop-chevrons.ts';
-import { standingNotesPart } from '../parts/notes-part.ts';
+import { pinnedNotePart, standingNotesPart } from '../parts/notes-part.ts';
 import { overhangParts } from '../parts/overhang-part.ts';
 import { framePart, paperPart } from '../parts/paper-part.ts';
 import { ringPart } from '../parts/ring-part.ts';
@@ -53,6 +54,7 @@ export const sheetShapes = (geometry: SheetGeometry, view: SheetView): readonly 
       name: 'furniture',
       shapes: present([
         standingNotesPart(geometry, facts, look),
+        ...geometry.notes.map(({ id }) => pinnedNotePart(id, geometry, facts, look)),
         legendPart(sheet, facts.segments, look.level),
         titleBlockPart(sheet, facts.titleBlock, look.level),
       ]),
@@ -66,6 +68,7 @@ export const sheetShapes = (geometry: SheetGeometry, view: SheetView): readonly 
         ...ghostParts(geometry, look),
       ],
     },
+    { name: 'balloons', shapes: balloonParts(geometry, facts, look) },
   ];
 };
 

@@ -30,13 +30,14 @@ const host: DeviceGeometry = {
 };
 const devices: { readonly [id: string]: DeviceFacts } = {
   'fw-gul': {
+    site: 'gul',
     kind: 'firewall',
     name: 'fw-gul',
     glyph: 'firewall',
     second: 'firewall',
     ports: { lan1: { number: 2, shut: false }, wan1: { number: 1, shut: false } },
   },
-  cam: { kind: 'host', name: 'cam-orr', glyph: 'camera', second: '10.130.1.32', ports: {} },
+  cam: { site: 'orr', kind: 'host', name: 'cam-orr', glyph: 'camera', second: '10.130.1.32', ports: {} },
 };
 const facts = factsWith({}, { devices });
 const drawn = (device: DeviceGeometry, level: Level, tones: readonly Tone[] = []): Shape =>

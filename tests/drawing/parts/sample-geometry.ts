@@ -100,6 +100,7 @@ export const factsWith = (
   devices: {},
   transports: {},
   notes: {},
+  forwarders: {},
   titleBlock: {
     legalOwner: 'Ternwick Net',
     createdBy: 'R. Halloran',

@@ -4,13 +4,17 @@ import { tunnelSegments } from '#engine/flood/tunnel-segments.ts';
 import type { Design } from '#engine/model/design.ts';
 import { applyPatch } from '#engine/model/merge-patch.ts';
 import { indexNetwork } from '#engine/network/index-network.ts';
-import type { Decorations, Tone } from '#drawing/decorations.ts';
+import type { Decorations, Severity, Tone } from '#drawing/decorations.ts';
 import { noDecorations } from '#drawing/decorations.ts';
+import { balloonParts } from '#drawing/parts/balloon-part.ts';
 import { drawingFacts } from '#drawing/parts/drawing-facts.ts';
 import { levels } from '#drawing/parts/level-of-detail.ts';
+import { pinnedNotePart } from '#drawing/parts/notes-part.ts';
+import { anchorOf } from '#drawing/routing/anchors.ts';
 import { route } from '#drawing/routing/route.ts';
 import type { Shape } from '#drawing/shape.ts';
 import { sheetShapes, sheetSvgText } from '#drawing/svg/sheet-svg.ts';
+import { thumbnailSvgText } from '#drawing/svg/thumbnail-svg.ts';
 import { themeColours, themes } from '#drawing/theme/tokens.ts';
 import { tidy } from '#drawing/tidy/tidy.ts';
 import { chainDesign, hubDesign, meshDesign, pairDesign } from '../../support/designs.ts';
@@ -115,6 +119,20 @@ describe.each(Object.entries(designs))('the sheet of a %s', (_name, design) => {
       ).toBe(true);
   });
 
+  it('prints no line thinner than 0.18 mm and no text smaller than 1.8 mm', () => {
+    // All sheets are drawn at one scale: A3's 420 mm are 1280 px.
+    const pxPerMm = 1280 / 420;
+    const shapes = sheetShapes(geometry, { level: 'near', decorations: noDecorations, facts })
+      .flatMap((layer) => layer.shapes)
+      .flatMap(allShapes);
+    const least = (attribute: string): number =>
+      Math.min(
+        ...shapes.flatMap(({ attrs }) => (attrs[attribute] === undefined ? [] : Number(attrs[attribute]))),
+      );
+    expect(least('strokeWidth') / pxPerMm).toBeGreaterThanOrEqual(0.18);
+    expect(least('fontSize') / pxPerMm).toBeGreaterThanOrEqual(1.8);
+  });
+
   it.each(themes)('is a file of its own in %s', (theme) => {
     const text = sheetSvgText(design, {
       theme,
@@ -177,5 +195,95 @@ describe('a sheet as SVG', () => {
     const order = ['paper', 'frame', 'sites', 'bands', 'cables', 'cords', 'devices', 'rings'];
     expect(names.filter((name) => order.includes(name))).toEqual(order);
     expect(names.indexOf('faults')).toBeGreaterThan(names.indexOf('rings'));
+  });
+});
+
+describe('a thumbnail', () => {
+  const design = designs['hub with a pair']!;
+  const [tunnel] = Object.keys(design.tunnels) as [string];
+  const finding = (number: number, severity: Severity, waived = false) => ({
+    number,
+    severity,
+    waived,
+    at: { collection: 'tunnels', id: tunnel } as const,
+  });
+  const drawn = (decorations: Decorations) =>
+    thumbnailSvgText(design, { theme: 'paper', tunnelSegments: segmentsOf(design), decorations });
+
+  it('is a small picture without words', () => {
+    const text = drawn(noDecorations);
+    expect(text).toContain('width="212" height="150"');
+    expect(text).not.toContain('<text');
+    expect(text).not.toContain('var(--');
+  });
+
+  it('wears an octagon for each blocking finding, and none for the others', () => {
+    const octagons = (decorations: Decorations): number =>
+      drawn(decorations).split('layer-balloons')[1]!.split('<path').length - 1;
+    const balloons = [
+      finding(1, 'blocking'),
+      finding(2, 'degrading'),
+      finding(3, 'blocking', true),
+      { ...finding(4, 'blocking'), at: { collection: 'devices', id: 'fw-s1' } as const },
+    ];
+    expect(octagons({ ...noDecorations, balloons })).toBe(2);
+  });
+
+  it('shows the design, not somebody’s selection', () => {
+    expect(drawn({ ...noDecorations, tones: { 'devices/fw-s1': ['selected'] } })).toBe(drawn(noDecorations));
+  });
+});
+
+describe('balloons', () => {
+  const design = designs['hub with a pair']!;
+  const geometry = route(design);
+  const facts = drawingFacts(design, segmentsOf(design));
+  const forwarder = Object.keys(design.forwarders)[0]!;
+  const balloons: Decorations['balloons'] = [
+    {
+      number: 1,
+      severity: 'blocking',
+      waived: false,
+      at: { collection: 'devices', id: 'fw-s1' },
+      words: 'one member',
+    },
+    {
+      number: 2,
+      severity: 'degrading',
+      waived: false,
+      at: { collection: 'forwarders', id: forwarder },
+      words: 'hidden',
+    },
+    { number: 3, severity: 'advisory', waived: false, at: { collection: 'segments', id: 'a' } },
+  ];
+
+  it('carry the number of every finding that has a place, and words for blocking ones only', () => {
+    const drawn = balloonParts(geometry, facts, {
+      level: 'near',
+      decorations: { ...noDecorations, balloons },
+    });
+    expect(drawn.flatMap(wordsOf)).toEqual(['1', 'one member', '2']);
+  });
+});
+
+describe('a pinned note', () => {
+  const base = designs['pair']!;
+  const design: Design = {
+    ...base,
+    notes: { n: { text: 'Swap this firewall in May.', target: { collection: 'devices', id: 'fw-s1' } } },
+  };
+
+  it('stands on a shelf with a leader to what it speaks of', () => {
+    const geometry = route(design);
+    const note = pinnedNotePart('n', geometry, drawingFacts(design, segmentsOf(design)), {
+      level: 'near',
+      decorations: noDecorations,
+    })!;
+    expect(wordsOf(note).join(' ')).toBe('Swap this firewall in May.');
+    const target = anchorOf(geometry, { collection: 'devices', id: 'fw-s1' })!;
+    expect(allShapes(note).find(({ el }) => el === 'circle')?.attrs).toMatchObject({
+      cx: target.x,
+      cy: target.y,
+    });
   });
 });
