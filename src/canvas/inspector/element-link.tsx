@@ -1,21 +1,31 @@
-import type { ReactNode } from 'react';
+import type { ButtonHTMLAttributes, ReactNode } from 'react';
 import type { ElementRef } from '../../engine/model/design.ts';
+import { classNames } from '../../lib/class-names.ts';
 import { useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { nameOf } from '../../workspace/operations/name-of.ts';
+
+/** Words that do something, among other text. */
+export function TextButton({ className, ...button }: ButtonHTMLAttributes<HTMLButtonElement>) {
+  return (
+    <button
+      type="button"
+      {...button}
+      className={classNames(
+        'max-w-full self-start text-left font-medium break-words text-blue underline decoration-blue-soft underline-offset-2 hover:decoration-blue',
+        className,
+      )}
+    />
+  );
+}
 
 /** An element's name that selects it. */
 export function ElementLink({ to, children }: { readonly to: ElementRef; readonly children?: ReactNode }) {
   const design = useOpenDesign();
   const name = useOpenState((state) => nameOf(state.document, to));
   return (
-    <button
-      type="button"
-      aria-label={`Select ${name}`}
-      onClick={() => design.select([to])}
-      className="max-w-full text-left font-medium break-words text-blue underline decoration-blue-soft underline-offset-2 hover:decoration-blue"
-    >
+    <TextButton aria-label={`Select ${name}`} onClick={() => design.select([to])}>
       {children ?? name}
-    </button>
+    </TextButton>
   );
 }
 

@@ -124,6 +124,8 @@ export interface SelectFieldProps<Value> extends FieldProps {
   /** It may not be made unknown. */
   readonly required?: boolean;
   readonly emptyWord?: string;
+  /** Which choice a stored value is, where it isn't the value itself. */
+  readonly read?: (stored: unknown) => Value | undefined;
   /** Takes the place of the field's own commit, where a choice changes more than itself. */
   readonly onChoose?: (value: Value | undefined) => void;
   readonly disabled?: boolean;
@@ -135,13 +137,15 @@ export function SelectField<Value extends string | number | boolean>({
   choices,
   required = false,
   emptyWord = unknownWord,
+  read,
   onChoose,
   ...cell
 }: SelectFieldProps<Value>) {
   const field = useField<Value>(path);
+  const stored = read === undefined ? field.value : read(field.value);
   const choose = (value: Value | undefined): void =>
     onChoose === undefined ? field.commit(cell.label, value) : onChoose(value);
-  const current = choices.find(({ value }) => value === field.value);
+  const current = choices.find(({ value }) => value === stored);
   if (!field.editable)
     return (
       <ReadCell {...cell} marked={field.marked}>

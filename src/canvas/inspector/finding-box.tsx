@@ -3,10 +3,11 @@ import { Button } from '../../components/button.tsx';
 import { Icon } from '../../components/icon.tsx';
 import { SeverityShape, severityWords, type Severity } from '../../components/severity-mark.tsx';
 import type { ElementRef } from '../../engine/model/design.ts';
-import type { Finding } from '../../engine/rules/finding.ts';
-import { sourceText } from '../../engine/rules/rule-reference.ts';
+import type { Finding, Source } from '../../engine/rules/finding.ts';
+import { listed } from '../../engine/rules/wording.ts';
 import { classNames } from '../../lib/class-names.ts';
 import { useChecks, useFixes } from '../../workspace/checks-context.tsx';
+import { TextButton } from './element-link.tsx';
 import { findingsAbout } from './field-marks.ts';
 import { useInspectorTools } from './inspector-context.ts';
 import { useCommit, useEditable } from './use-field.ts';
@@ -24,6 +25,19 @@ const inks: Readonly<Record<Severity, string>> = {
 
 // Each proposal of a fix costs a run of all checks, so only the first findings are open from the start.
 const openFromTheStart = 2;
+
+/** Sources in one line, the clauses of one document behind its name. */
+export const sourcesLine = (sources: readonly Source[]): string => {
+  const clauses = new Map<string, string[]>();
+  for (const source of sources) {
+    const document = typeof source === 'string' ? source : source.document;
+    const clause = typeof source === 'string' ? undefined : source.clause;
+    clauses.set(document, [...(clauses.get(document) ?? []), ...(clause === undefined ? [] : [clause])]);
+  }
+  return [...clauses]
+    .map(([document, list]) => (list.length === 0 ? document : `${document}, ${listed(list)}`))
+    .join('; ');
+};
 
 /** What the checks say about an element, with what can be done about it. */
 export function FindingBoxes({ about }: { readonly about: ElementRef }) {
@@ -75,12 +89,10 @@ function FindingBody({ finding }: { readonly finding: Finding }) {
       <p className="font-medium break-words">{sentence}.</p>
       <p>{why}</p>
       {severityReason !== undefined && <p className="text-ink-2">{severityReason}</p>}
-      <p className="text-note text-ink-2">{sources.map(sourceText).join('; ')}</p>
+      <p className="text-note text-ink-2">{sourcesLine(sources)}</p>
       <FixButtons finding={finding} />
       {onShowFinding !== undefined && (
-        <Button kind="quiet" small className="self-start" onClick={() => onShowFinding(finding.key)}>
-          Show in the list of findings
-        </Button>
+        <TextButton onClick={() => onShowFinding(finding.key)}>Show in the list of findings</TextButton>
       )}
     </div>
   );

@@ -7,6 +7,7 @@ import { showToast } from '../../components/toast.tsx';
 import { Tooltip } from '../../components/tooltip.tsx';
 import { useCommittedText } from '../../components/use-committed-text.ts';
 import type { Design, ElementRef } from '../../engine/model/design.ts';
+import { classNames } from '../../lib/class-names.ts';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { copyParts, pasteParts } from '../../workspace/operations/copy-parts.ts';
 import { isLocked, setLocked, type Standing } from '../../workspace/operations/move-parts.ts';
@@ -16,6 +17,8 @@ import { removeElements } from '../../workspace/operations/remove-parts.ts';
 import type { FieldPath } from './field-marks.ts';
 import { useInspectorTools } from './inspector-context.ts';
 import { refusalSentence, useEditable, useField } from './use-field.ts';
+
+const nameLook = 'text-title text-ink';
 
 // Far enough for a copy to be seen beside its original.
 const copyOffsetPx = 24;
@@ -50,16 +53,7 @@ export const usePerform = (): ((operation: Operation) => void) => {
 };
 
 /** Kind, name, lock and what else can be done with the whole element. */
-export function PanelHead({
-  of: ref,
-  namePath,
-  nameRequired = true,
-}: {
-  readonly of: ElementRef;
-  readonly namePath?: FieldPath;
-  /** False for what may go without a name of its own. */
-  readonly nameRequired?: boolean;
-}) {
+export function PanelHead({ of: ref, namePath }: { readonly of: ElementRef; readonly namePath?: FieldPath }) {
   const design = useOpenState((state) => state.document);
   const editable = useEditable();
   return (
@@ -67,9 +61,9 @@ export function PanelHead({
       <div className="min-w-0 flex-1">
         <p className="text-note text-ink-2">{kindOf(design, ref)}</p>
         {namePath !== undefined && editable ? (
-          <NameInput path={namePath} shown={nameOf(design, ref)} required={nameRequired} />
+          <NameInput path={namePath} />
         ) : (
-          <h2 className="text-panel break-words text-ink">{nameOf(design, ref)}</h2>
+          <h2 className={classNames(nameLook, 'break-words')}>{nameOf(design, ref)}</h2>
         )}
       </div>
       {editable && <LockButton of={ref} />}
@@ -78,38 +72,27 @@ export function PanelHead({
   );
 }
 
-function NameInput({
-  path,
-  shown,
-  required,
-}: {
-  readonly path: FieldPath;
-  readonly shown: string;
-  readonly required: boolean;
-}) {
+function NameInput({ path }: { readonly path: FieldPath }) {
   const { value, refusal, commit } = useField<string>(path);
   const id = useId();
   const { field, problem } = useCommittedText({
     value: value ?? '',
     validate: (text) =>
-      text === ''
-        ? required
-          ? refusalSentence('Name', '', 'it has to be given')
-          : undefined
-        : refusal('Name', text, text),
-    onCommit: (text) => commit('Name', text === '' ? undefined : text),
+      text === '' ? refusalSentence('Name', '', 'it has to be given') : refusal('Name', text, text),
+    onCommit: (text) => commit('Name', text),
   });
   return (
     <h2>
-      <span className="sr-only">{shown}</span>
+      <span className="sr-only">{value}</span>
       <input
         {...field}
         aria-label="Name"
         aria-invalid={problem === undefined ? undefined : true}
         aria-describedby={problem === undefined ? undefined : id}
-        // What an element without a name of its own is called by what it joins.
-        placeholder={shown}
-        className="-ml-5 w-full border border-transparent bg-transparent px-4 py-1 text-panel text-ellipsis text-ink hover:border-rule-2 hover:bg-field focus:bg-field"
+        className={classNames(
+          nameLook,
+          '-ml-5 w-full border border-transparent bg-transparent px-4 py-1 text-ellipsis hover:border-rule-2 hover:bg-field focus:bg-field',
+        )}
       />
       {problem !== undefined && <FieldError id={id}>{problem}</FieldError>}
     </h2>
@@ -129,7 +112,6 @@ function LockButton({ of: ref }: { readonly of: ElementRef }) {
         kind="quiet"
         iconOnly
         aria-label={words}
-        aria-pressed={locked}
         icon={<Icon name={locked ? 'lock' : 'unlock'} size={18} />}
         onClick={() => run(setLocked(design, standing, [ref], !locked))}
       />

@@ -57,7 +57,7 @@ export function TunnelPanel({ id }: { readonly id: string }) {
     <>
       <PanelHead of={ref} namePath={['tunnels', id, 'name']} />
       <TunnelCord segments={segments} vni={{ a: tunnel.a.vni, b: tunnel.b.vni }} />
-      <CellGrid columns={2}>
+      <CellGrid columns="minmax(0, 4fr) minmax(0, 3fr)">
         <ReadCell label={segments.length > 1 ? 'Segments' : 'Segment'}>
           {segments.length === 0 ? (
             <Unknown word="none reaches it" />
@@ -279,8 +279,7 @@ function Ends({ id, devices }: { readonly id: string; readonly devices: { readon
       {ends.map((end) => (
         <SelectField
           key={end}
-          label="Endpoint"
-          place={heads[end].place}
+          label={`Endpoint at ${heads[end].place}`}
           path={['tunnels', id, end, 'endpoint']}
           required
           choices={Object.entries(document.endpoints)

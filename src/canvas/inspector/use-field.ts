@@ -1,12 +1,11 @@
 import { showToast } from '../../components/toast.tsx';
 import type { CellMark } from '../../components/cell.tsx';
-import type { Design } from '../../engine/model/design.ts';
+import type { Collection, Design } from '../../engine/model/design.ts';
 import { applyPatch, diffPatch, patchAt, type MergePatch } from '../../engine/model/merge-patch.ts';
 import { changedProblems } from '../../engine/model/parse-design.ts';
 import { useChecks } from '../../workspace/checks-context.tsx';
 import { useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { nameOf } from '../../workspace/operations/name-of.ts';
-import type { Collection } from '../../engine/model/design.ts';
 import { markAt, type FieldPath } from './field-marks.ts';
 
 type Bag = { readonly [key: string]: unknown };
