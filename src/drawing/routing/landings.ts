@@ -161,7 +161,9 @@ export const landingWay = (
         cableManner,
       );
       if (found === undefined) break;
-      return done(edge, [...found.slice(0, -1), end]);
+      const corners = [...found.slice(0, -1), end];
+      if (corners.slice(1).some((q, k) => runIsBlocked(ground, corners[k]!, q, 1, 0))) continue;
+      return done(edge, corners);
     }
   }
   return undefined;

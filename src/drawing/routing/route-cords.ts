@@ -3,7 +3,7 @@ import type { BandPlace } from './bands.ts';
 import { meetings } from './corners.ts';
 import type { WayCrossing, WayOverlap } from './corners.ts';
 import { detour, knownRuns, withoutIdlePoints } from './detour.ts';
-import type { Cord, Ground, Way } from './ground.ts';
+import type { Cord, Corners, Ground, Way } from './ground.ts';
 import { wayIsBlocked } from './ground.ts';
 import { patternWay } from './patterns.ts';
 import { bottom, byText, grown, right, runRect } from './rects.ts';
@@ -11,6 +11,7 @@ import { settleTracks } from './tracks.ts';
 import type { TrackedWays } from './tracks.ts';
 
 const mostRipUps = 6;
+const mostIdleRipUps = 2;
 const mostWidenings = 3;
 const bandToFrame = 20;
 
@@ -22,11 +23,24 @@ export interface RoutedCords {
   readonly tracked: TrackedWays;
 }
 
+/** Searches done before with the same band, the same known ways and the same ground to avoid. */
+type Searches = Map<string, Corners | undefined>;
+
+const signature = (ground: Ground, cord: Cord, known: readonly Way[], avoid: readonly Rect[]): string =>
+  JSON.stringify([
+    cord.key,
+    cord.width,
+    ground.bands.map((band) => band.limbs.map((limb) => [limb.x, limb.width, limb.y, limb.height])),
+    known.map((way) => way.corners.map(({ x, y }) => [x, y])),
+    avoid.map(({ x, y, width, height }) => [x, y, width, height]),
+  ]);
+
 /** Patterns first, then a search for each cord that has none, in the order of their keys. */
 const firstWays = (
   ground: Ground,
   cords: readonly Cord[],
   avoided: ReadonlyMap<string, readonly Rect[]>,
+  searches: Searches,
 ): readonly Way[] => {
   const ways = new Map<string, Way>();
   for (const cord of cords) {
@@ -36,7 +50,11 @@ const firstWays = (
   }
   for (const cord of cords) {
     if (ways.has(cord.key)) continue;
-    const corners = detour(ground, cord, knownRuns([...ways.values()]), avoided.get(cord.key));
+    const known = [...ways.values()].filter((way) => way.found !== 'none');
+    const avoid = avoided.get(cord.key) ?? [];
+    const key = signature(ground, cord, known, avoid);
+    const corners = searches.has(key) ? searches.get(key) : detour(ground, cord, knownRuns(known), avoid);
+    searches.set(key, corners);
     ways.set(
       cord.key,
       corners === undefined
@@ -99,10 +117,11 @@ const settle = (
   start: Ground,
   cords: readonly Cord[],
   avoided: ReadonlyMap<string, readonly Rect[]>,
+  searches: Searches,
 ): State => {
   let ground = start;
   for (let round = 0; ; round += 1) {
-    const tracked = settleTracks(ground, firstWays(ground, cords, avoided));
+    const tracked = settleTracks(ground, firstWays(ground, cords, avoided, searches));
     const wider = round < mostWidenings ? widened(ground, tracked.needs) : undefined;
     if (wider !== undefined) {
       ground = { ...ground, bands: wider };
@@ -150,7 +169,7 @@ const lessBound = (
 
 /** How wide each band rectangle has to be for the plain ways of these cords, by `transport x y` of the rectangle. */
 export const bandNeeds = (ground: Ground, cords: readonly Cord[]): ReadonlyMap<string, number> =>
-  settleTracks(ground, firstWays(ground, cords, new Map())).needs;
+  settleTracks(ground, firstWays(ground, cords, new Map(), new Map())).needs;
 
 /**
  * A way for every cord. Where some overlap or run into an obstacle, the less bound ones are taken up and searched anew,
@@ -161,9 +180,11 @@ export const routeCords = (
   cords: readonly Cord[],
   ripUps: number = mostRipUps,
 ): RoutedCords => {
+  const searches: Searches = new Map();
   let avoided = new Map<string, readonly Rect[]>();
-  let state = settle(start, cords, avoided);
+  let state = settle(start, cords, avoided, searches);
   let best = state;
+  let idle = 0;
   for (let round = 0; round < ripUps; round += 1) {
     if (state.overlaps.length === 0 && state.blocked.length === 0) break;
     const next = new Map(avoided);
@@ -181,8 +202,11 @@ export const routeCords = (
       for (let run = 1; run < state.ways[way]!.corners.length - 2; run += 1)
         avoid(way, run, state.ways[way]!.cord.width / 2 + 2);
     avoided = next;
-    state = settle(start, cords, avoided);
-    if (badness(state) < badness(best)) best = state;
+    state = settle(start, cords, avoided, searches);
+    if (badness(state) < badness(best)) {
+      best = state;
+      idle = 0;
+    } else if ((idle += 1) === mostIdleRipUps) break;
   }
   const ways = best.ways.map((way, i): Way =>
     best.blocked.includes(i)
