@@ -1,11 +1,13 @@
 import { describe, expect, it } from 'vitest';
+import { indexNetwork } from '#engine/network/index-network.ts';
+import type { Network } from '#engine/network/network.ts';
 import { noContext, type CheckContext } from '#engine/rules/check-context.ts';
 import type { Rule } from '#engine/rules/define-rule.ts';
 import type { Finding, Mark, Severity } from '#engine/rules/finding.ts';
 import { fixesFor } from '#engine/rules/fixes-for.ts';
 import { rules } from '#engine/rules/index.ts';
 import { runRules, runTheseRules } from '#engine/rules/run-rules.ts';
-import type { Design, ElementRef } from '#engine/model/design.ts';
+import { collections, type Collection, type Design, type ElementRef } from '#engine/model/design.ts';
 import { applyPatch, inversePatch, type MergePatch } from '#engine/model/merge-patch.ts';
 import { parseDesign } from '#engine/model/parse-design.ts';
 
@@ -100,6 +102,58 @@ export const changed = (design: Design, ...patches: readonly MergePatch[]): Desi
   return parsed.value;
 };
 
+/** From which collections each list of the index comes. */
+const sourcesOfIndex: { readonly [F in Exclude<keyof Network, 'design'>]: readonly Collection[] } = {
+  deviceIds: ['devices'],
+  tunnelIds: ['tunnels'],
+  devicesBySite: ['devices'],
+  hostsBySegment: ['devices'],
+  cablesByPort: ['links'],
+  cablesByDevice: ['links'],
+  landingsByDevice: ['links'],
+  landingsByPort: ['links'],
+  landingsByTransport: ['links'],
+  endpointsByDevice: ['endpoints'],
+  tunnelsByEndpoint: ['tunnels'],
+  tunnelsByAssociation: ['tunnels'],
+  tunnelsByDevice: ['tunnels', 'endpoints'],
+  associationsByDevice: ['associations'],
+  forwardersByDevice: ['forwarders'],
+  circuitsByForwarder: ['forwarders'],
+  circuitsByTunnel: ['forwarders'],
+  circuitsByPort: ['forwarders'],
+  circuitsByPortVlan: ['forwarders'],
+  segmentsBySiteVlan: ['segments'],
+  portGroups: ['devices', 'links'],
+  portGroupByPlug: ['devices', 'links'],
+  portGroupsByDevice: ['devices', 'links'],
+  bundles: ['devices', 'links'],
+  bundleByCable: ['devices', 'links'],
+};
+
+/** The collections that a rule's check reads in a design, itself or through the index. */
+const collectionsRead = (rule: Rule, given: Design, context: CheckContext): readonly Collection[] => {
+  const network = indexNetwork(given);
+  const read = new Set<Collection>();
+  const design = new Proxy(network.design, {
+    get: (target, key) => {
+      if ((collections as readonly PropertyKey[]).includes(key)) read.add(key as Collection);
+      return Reflect.get(target, key) as unknown;
+    },
+  });
+  const watched = new Proxy(
+    { ...network, design },
+    {
+      get: (target, key) => {
+        for (const source of sourcesOfIndex[key as keyof typeof sourcesOfIndex] ?? []) read.add(source);
+        return Reflect.get(target, key) as unknown;
+      },
+    },
+  );
+  rule.check(watched, context);
+  return [...read].sort();
+};
+
 /** What a fresh copy gives: nothing of it is in any memory. */
 const fresh = (design: Design): Design => freezeDeep(structuredClone(design));
 
@@ -129,7 +183,8 @@ const expectCure = (design: Design, finding: Finding, context: CheckContext): re
 
 /**
  * Runs a rule over accepted and rejected designs. Unasked it also checks that the design was not changed, that a second
- * run and one on a design with its keys in another order agree, that memory never gives a stale answer after a fix, and
+ * run and one on a design with its keys in another order agree, that the check reads no collection it does not name, that memory never
+ * gives a stale answer after a fix, and
  * that every fix applies, cures, adds nothing that blocks and can be undone.
  */
 export const testRule = (rule: Rule, cases: RuleCases): void => {
@@ -155,6 +210,9 @@ export const testRule = (rule: Rule, cases: RuleCases): void => {
           runTheseRules([rule], freezeDeep(reversed(design)), context),
           'the order of keys does not matter',
         ).toEqual(found);
+        expect(rule.looksAt, 'looksAt names all that is read').toEqual(
+          expect.arrayContaining([...collectionsRead(rule, fresh(given), context)]),
+        );
         const fixes = found.map((finding) => expectCure(design, finding, context));
         expect(
           found.map((finding, i) => summary(finding, expected[i] ?? { sentence: '', fixes: [] }, fixes[i]!)),

@@ -71,6 +71,28 @@ describe('runRules', { timeout: 60_000 }, () => {
     );
   });
 
+  it.each([
+    'sites',
+    'devices',
+    'transports',
+    'endpoints',
+    'associations',
+    'tunnels',
+    'forwarders',
+    'segments',
+  ] as const)('tells the new names after a change of names in %s alone', (collection) => {
+    for (const fault of faults) {
+      const design = applyPatch<Design>(pairDesign({ segments: ['a', 'b'] }), fault);
+      runRules(design);
+      const renamed = applyPatch(design, {
+        [collection]: Object.fromEntries(
+          Object.entries(design[collection]).map(([id, { name }]) => [id, { name: `${name} anew` }]),
+        ),
+      });
+      expect(runRules(renamed)).toEqual(runRules(structuredClone(renamed)));
+    }
+  });
+
   it('names every tunnel and association that can’t come up in a blocking finding', () => {
     fc.assert(
       fc.property(fc.uniqueArray(fc.nat(faults.length - 1), { minLength: 1, maxLength: 5 }), (picks) => {
