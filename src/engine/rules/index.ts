@@ -18,11 +18,13 @@ import { endpointAddressDuplicate } from './endpoint-address-duplicate.ts';
 import { endpointInsideSegment } from './endpoint-inside-segment.ts';
 import { endpointOnOneMember } from './endpoint-on-one-member.ts';
 import { frameExceedsPath } from './frame-exceeds-path.ts';
+import { hostSingleHomed } from './host-single-homed.ts';
 import { ikeVersionMismatch } from './ike-version-mismatch.ts';
 import { portHoldsTwoCables } from './port-holds-two-cables.ts';
 import { stormAnyToAnyMesh } from './storm-any-to-any-mesh.ts';
 import { stormCustomerCable } from './storm-customer-cable.ts';
 import { stormLocal } from './storm-local.ts';
+import { switchSingleHomed } from './switch-single-homed.ts';
 import { transportFiltersNeeded } from './transport-filters-needed.ts';
 import { transportMtuUnknown } from './transport-mtu-unknown.ts';
 import { tunnelBareOnUntrusted } from './tunnel-bare-on-untrusted.ts';
@@ -58,11 +60,13 @@ export const rules: readonly Rule[] = [
   endpointInsideSegment,
   endpointOnOneMember,
   frameExceedsPath,
+  hostSingleHomed,
   ikeVersionMismatch,
   portHoldsTwoCables,
   stormAnyToAnyMesh,
   stormCustomerCable,
   stormLocal,
+  switchSingleHomed,
   transportFiltersNeeded,
   transportMtuUnknown,
   tunnelBareOnUntrusted,
