@@ -11,7 +11,7 @@ const characterWidth = (character: string, weight: FontWeight): number => {
   if (inAscii !== undefined) return inAscii;
   const sign = signWidths[character];
   if (sign !== undefined) return sign[signColumn[weight]];
-  const base = character.normalize('NFD');
+  const base = character.normalize('NFKD');
   return asciiWidths[weight][base.charCodeAt(0) - 32] ?? unknownWidth;
 };
 
@@ -22,7 +22,7 @@ export const textWidth = (text: string, sizePx: number, weight: FontWeight = 400
   return (thousandths * sizePx) / 1000;
 };
 
-/** Breaks text at spaces into lines no wider than `maxWidthPx`; a single word that is wider keeps a line to itself. */
+/** Breaks text at spaces, but not at no-break spaces, into lines no wider than `maxWidthPx`; a single word that is wider keeps a line to itself. */
 export const wrapText = (
   text: string,
   maxWidthPx: number,
@@ -31,7 +31,7 @@ export const wrapText = (
 ): readonly string[] => {
   const lines: string[] = [];
   let line = '';
-  for (const word of text.split(/\s+/).filter((part) => part !== '')) {
+  for (const word of text.split(/[ \t\r\n]+/).filter((part) => part !== '')) {
     const longer = line === '' ? word : `${line} ${word}`;
     if (line !== '' && textWidth(longer, sizePx, weight) > maxWidthPx) {
       lines.push(line);

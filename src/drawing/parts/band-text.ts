@@ -126,7 +126,8 @@ const flat = (words: TransportWords, rect: Rect, level: Level, dimmed: boolean):
     (fact): fact is string => fact !== undefined,
   );
   const sizePx = level === 'work' ? 13.6 : 14;
-  const rows = wrapText(facts.join(', ').replace(/ (?=[^,]*(,|$))/g, '\u00a0'), rect.width, sizePx, 400);
+  const unbroken = facts.map((fact) => fact.replaceAll(' ', '\u00a0')).join(', ');
+  const rows = wrapText(unbroken, rect.width, sizePx, 400);
   const list: readonly Line[] = [
     ...nameLines(words, rect.width, 15, 1),
     ...rows.map((text): Line => ({ text, weight: 400, sizePx, quiet: true, stepPx: 19 })),

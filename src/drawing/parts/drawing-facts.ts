@@ -107,7 +107,7 @@ const deviceFacts = (design: Design): { readonly [id: string]: DeviceFacts } => 
     if (device.kind === 'switch') return undefined;
     const hidden = (perSite.get(device.site) ?? 1) - 1;
     if (design.layout.sites?.[device.site]?.collapsed && hidden > 0)
-      return `and ${hidden} ${hidden === 1 ? 'device' : 'devices'}`;
+      return `${hidden} more ${hidden === 1 ? 'device' : 'devices'}`;
     return device.kind === 'ha-pair' ? undefined : device.kind;
   };
   return mapEntries(design.devices, (device): DeviceFacts => {

@@ -74,7 +74,7 @@ const stripName = (facts: FaceplateFacts, r: Rect, state: FaceplateState): reado
   const middle = r.y + strip.height / 2;
   const plan = state.level === 'plan';
   const fitted = plan
-    ? fitText(facts.name, { maxWidthPx: r.width - 12, sizePx: 21, minSizePx: 13, weight: 600 })
+    ? fitText(facts.name, { maxWidthPx: r.width - 12, sizePx: 21, minSizePx: 15, weight: 600 })
     : fitText(facts.name, {
         maxWidthPx: r.width - strip.nameAt - 8,
         sizePx: 16,
@@ -147,7 +147,12 @@ const hostContent = (facts: FaceplateFacts, r: Rect, state: FaceplateState): rea
   const name = (text: string, x: number, y: number, sizePx: number, width: number, centred: boolean): Shape =>
     group(
       (() => {
-        const fitted = fitText(text, { maxWidthPx: width, sizePx, minSizePx: 10.5, weight: 600 });
+        const fitted = fitText(text, {
+          maxWidthPx: width,
+          sizePx,
+          minSizePx: centred ? 14.5 : 10.5,
+          weight: 600,
+        });
         return fittedLines(fitted, text, x, y + fitted.sizePx * capShift, 0, {
           weight: 600,
           anchor: centred ? 'middle' : 'start',

@@ -14,23 +14,32 @@ const column = { cord: 14, name: 112, vlan: 240, subnet: 312, carries: 448 } as 
 const squarePx = 19;
 const samplePx = 66;
 
+interface CellOptions {
+  readonly sizePx?: number;
+  readonly bold?: boolean;
+  /** Numbers and subnets shrink instead of being cut. */
+  readonly whole?: boolean;
+  /** Names may take two small lines. */
+  readonly twoLines?: boolean;
+}
+
 const fittedCell = (
   text: string,
   x: number,
   y: number,
   widthPx: number,
-  options: { readonly sizePx?: number; readonly bold?: boolean; readonly whole?: boolean } = {},
+  { sizePx = 14, bold = false, whole = false, twoLines = false }: CellOptions = {},
 ): readonly Shape[] => {
-  const sizePx = options.sizePx ?? 14;
-  const weight = options.bold ? 600 : 400;
-  const fitted = fitText(text, {
-    maxWidthPx: widthPx,
-    sizePx,
-    minSizePx: sizePx * 0.7,
-    weight,
-    ...(options.whole ? { whole: true } : {}),
-  });
-  return fittedLines(fitted, text, x, y + fitted.sizePx * capShift, 0, { weight });
+  const weight = bold ? 600 : 400;
+  const limits = { maxWidthPx: widthPx, sizePx, minSizePx: sizePx * 0.78, weight, whole } as const;
+  const oneLine = fitText(text, limits);
+  const fitted =
+    oneLine.shortened && twoLines
+      ? fitText(text, { ...limits, maxLines: 2, sizePx: sizePx * 0.8, minSizePx: sizePx * 0.66 })
+      : oneLine;
+  const step = fitted.sizePx * 1.15;
+  const first = y + fitted.sizePx * capShift - ((fitted.lines.length - 1) * step) / 2;
+  return fittedLines(fitted, text, x, first, step, { weight });
 };
 
 const rules = (ys: readonly number[], rect: Rect): Shape => ({
@@ -69,11 +78,16 @@ const table = (segments: readonly SegmentFacts[], rect: Rect): readonly Shape[] 
       const y = rect.y + headerPx + (i + 0.5) * rowPx;
       const x = (name: keyof typeof column): number => rect.x + column[name];
       const sizePx = 14 * Math.min(1, scale * 1.1);
+      const twoLines = rowPx > 26;
       return group(
         [
           cordSample(segment, x('cord'), y, squarePx * scale, samplePx),
           group(
-            fittedCell(segment.name, x('name'), y, column.vlan - column.name - 10, { sizePx, bold: true }),
+            fittedCell(segment.name, x('name'), y, column.vlan - column.name - 10, {
+              sizePx,
+              bold: true,
+              twoLines,
+            }),
             {
               key: 'name',
             },
@@ -91,9 +105,15 @@ const table = (segments: readonly SegmentFacts[], rect: Rect): readonly Shape[] 
             }),
             { key: 'subnet' },
           ),
-          group(fittedCell(segment.carries, x('carries'), y, rect.width - column.carries - 10, { sizePx }), {
-            key: 'carries',
-          }),
+          group(
+            fittedCell(segment.carries, x('carries'), y, rect.width - column.carries - 10, {
+              sizePx,
+              twoLines,
+            }),
+            {
+              key: 'carries',
+            },
+          ),
         ],
         { key: segment.id, data: { ref: { collection: 'segments', id: segment.id }, part: 'row' } },
       );

@@ -12,6 +12,7 @@ import { site as size } from './sizes.ts';
 import { capShift, fittedLines } from './text-shape.ts';
 
 const nameSizes = { near: 16, work: 16, plan: 23, far: 44 } as const;
+const leastNameSizes = { near: 12, work: 13, plan: 18, far: 30 } as const;
 const aroundName = 10;
 
 /** A site: a chain line that its name interrupts at the top. */
@@ -24,7 +25,7 @@ export const sitePart = (site: SiteGeometry, facts: DrawingFacts, look: Look): S
   const fitted = fitText(name, {
     maxWidthPx: Math.max(60, width - size.nameAt - 24),
     sizePx,
-    minSizePx: Math.min(sizePx, 12),
+    minSizePx: leastNameSizes[look.level],
     weight: 600,
   });
   const nameWidth = fitted.widthPx;

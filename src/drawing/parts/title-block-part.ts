@@ -41,12 +41,15 @@ const fitted = (
   baseline: number,
   stepPx: number,
   limits: FitLimits,
-  fill: string = paint('ink'),
 ): readonly Shape[] =>
-  fittedLines(fitText(text, limits), text, x, baseline, stepPx, {
-    ...(limits.weight === undefined ? {} : { weight: limits.weight }),
-    fill,
-  });
+  fittedLines(
+    fitText(text, limits),
+    text,
+    x,
+    baseline,
+    stepPx,
+    limits.weight === undefined ? {} : { weight: limits.weight },
+  );
 
 const cellPart = ({ key, label, value, rect, bold, whole }: Cell, labelPx: number): Shape => {
   const maxWidthPx = rect.width - 2 * inset + 3;
@@ -81,21 +84,28 @@ const titleCell = (facts: TitleBlockFacts, rect: Rect, labelPx: number): Shape =
     weight: 600,
   } as const;
   const title = fitText(facts.title, limits);
+  const single = title.lines.length === 1;
   const step = title.sizePx * 1.18;
-  const first = title.lines.length === 1 ? rect.y + 38 : rect.y + 32;
+  const first = rect.y + (single ? 38 : 32);
+  const more = { maxWidthPx: rect.width - 2 * inset, sizePx: 14.5, minSizePx: 10.5 } as const;
+  const oneLine = fitText(facts.supplementaryTitle, more);
+  const supplementary =
+    single && oneLine.shortened
+      ? fitText(facts.supplementaryTitle, { ...more, maxLines: 2, sizePx: 11.5 })
+      : oneLine;
   return group(
     [
       textLine('Title', rect.x + inset, rect.y + 14, { sizePx: labelPx, fill: paint('ink-3'), key: 'label' }),
-      group(fitted(facts.title, rect.x + inset, first, step, limits), { key: 'title' }),
+      group(fittedLines(title, facts.title, rect.x + inset, first, step, { weight: 600 }), { key: 'title' }),
       facts.supplementaryTitle !== '' &&
         group(
-          fitted(
+          fittedLines(
+            supplementary,
             facts.supplementaryTitle,
             rect.x + inset,
-            title.lines.length === 1 ? rect.y + 60 : first + step + 16,
-            0,
-            { maxWidthPx: rect.width - 2 * inset, sizePx: 14.5, minSizePx: 10 },
-            paint('ink-2'),
+            single ? rect.y + (supplementary.lines.length === 1 ? 60 : 55) : first + step + 16,
+            13,
+            { fill: paint('ink-2') },
           ),
           { key: 'supplementary' },
         ),
@@ -155,26 +165,25 @@ const brief = (facts: TitleBlockFacts, rect: Rect): readonly Shape[] => {
   const [rev, status] = [x + width * 0.39, x + width * 0.62];
   const bottom = y + rect.height;
   const middle = (row + bottom) / 2;
-  const small = (value: string, from: number, to: number, bold = false): readonly Shape[] =>
+  const small = (value: string, from: number, to: number, more: Partial<FitLimits> = {}): readonly Shape[] =>
     fitted(value, from + 12, middle + 21 * capShift, 0, {
       maxWidthPx: to - from - 20,
       sizePx: 21,
       minSizePx: 14,
-      weight: bold ? 600 : 400,
+      ...more,
     });
+  const wide = { maxWidthPx: width - 28, sizePx: 29, minSizePx: 21, weight: 600 } as const;
+  const oneLine = fitText(facts.title, wide);
+  const title = oneLine.shortened
+    ? fitText(facts.title, { ...wide, maxLines: 2, sizePx: 22, minSizePx: 16 })
+    : oneLine;
+  const step = title.sizePx * 1.16;
+  const first = y + 33 + title.sizePx * capShift - ((title.lines.length - 1) * step) / 2;
   return [
     rules(`M${x} ${row}H${x + width}M${rev} ${row}V${bottom}M${status} ${row}V${bottom}`),
-    group(
-      fitted(facts.title, x + 14, y + 33 + 29 * capShift, 0, {
-        maxWidthPx: width - 28,
-        sizePx: 29,
-        minSizePx: 19,
-        weight: 600,
-      }),
-      { key: 'title' },
-    ),
-    group(small(facts.identification, x, rev), { key: 'number' }),
-    group(small(`Rev. ${facts.revision}`, rev, status, true), { key: 'revision' }),
+    group(fittedLines(title, facts.title, x + 14, first, step, { weight: 600 }), { key: 'title' }),
+    group(small(facts.identification, x, rev, { whole: true }), { key: 'number' }),
+    group(small(`Rev. ${facts.revision}`, rev, status, { weight: 600 }), { key: 'revision' }),
     group(small(facts.status, status, x + width), { key: 'status' }),
   ];
 };

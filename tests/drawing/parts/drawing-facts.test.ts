@@ -85,7 +85,7 @@ describe('what a drawing says', () => {
       ...design,
       layout: { sites: { s1: { x: 0, y: 0, width: 100, height: 100, collapsed: true } } },
     };
-    expect(drawingFacts(collapsed, none).devices['fw-s1']?.second).toBe('and 2 devices');
+    expect(drawingFacts(collapsed, none).devices['fw-s1']?.second).toBe('2 more devices');
     expect(drawingFacts(design, none).devices['fw-s1']?.second).toBe('firewall');
   });
 });
