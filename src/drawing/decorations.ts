@@ -44,6 +44,8 @@ export interface Decorations {
     readonly at: ElementRef;
     readonly words?: string;
   }[];
+  /** Numbers of a trace's steps, as its list repeats them; the step that fails stands out. */
+  readonly hops?: readonly { readonly number: number; readonly at: ElementRef; readonly failing: boolean }[];
   /** Segments whose cords are hidden from view (faded). */
   readonly hiddenSegments: readonly string[];
 }

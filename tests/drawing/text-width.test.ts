@@ -32,6 +32,14 @@ describe('wrapped text', () => {
   });
 });
 
+it('keeps words together that a no-break space joins', () => {
+  expect(wrapText('loss\u00a00.02\u00a0% at\u00a0most', 60, 14)).toEqual([
+    'loss\u00a00.02\u00a0%',
+    'at\u00a0most',
+  ]);
+  expect(textWidth('\u00a0', 100)).toBe(textWidth(' ', 100));
+});
+
 describe('fitted text', () => {
   it('shrinks before it shortens', () => {
     const fitted = fitText('berth-controller', { maxWidthPx: 100, sizePx: 16, minSizePx: 9, weight: 600 });

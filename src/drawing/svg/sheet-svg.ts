@@ -10,6 +10,7 @@ import { devicePart } from '../parts/device-part.ts';
 import type { DrawingFacts, TitleBlockFacts } from '../parts/drawing-facts.ts';
 import { drawingFacts } from '../parts/drawing-facts.ts';
 import { ghostParts } from '../parts/ghost-part.ts';
+import { hopMarks } from '../parts/hop-marks.ts';
 import { jacketPart } from '../parts/jacket-part.ts';
 import { legendPart } from '../parts/legend-part.ts';
 import type { Level } from '../parts/level-of-detail.ts';
@@ -68,7 +69,10 @@ export const sheetShapes = (geometry: SheetGeometry, view: SheetView): readonly 
         ...ghostParts(geometry, look),
       ],
     },
-    { name: 'balloons', shapes: balloonParts(geometry, facts, look) },
+    {
+      name: 'balloons',
+      shapes: [...hopMarks(geometry, facts, look), ...balloonParts(geometry, facts, look)],
+    },
   ];
 };
 
@@ -97,6 +101,7 @@ const printable = (decorations: Decorations): Decorations => ({
     ]),
   ),
   ghosts: [],
+  hops: [],
   hiddenSegments: [],
 });
 

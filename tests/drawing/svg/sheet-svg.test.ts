@@ -8,6 +8,7 @@ import type { Decorations, Severity, Tone } from '#drawing/decorations.ts';
 import { noDecorations } from '#drawing/decorations.ts';
 import { balloonParts } from '#drawing/parts/balloon-part.ts';
 import { drawingFacts } from '#drawing/parts/drawing-facts.ts';
+import { hopMarks } from '#drawing/parts/hop-marks.ts';
 import { levels } from '#drawing/parts/level-of-detail.ts';
 import { pinnedNotePart } from '#drawing/parts/notes-part.ts';
 import { anchorOf } from '#drawing/routing/anchors.ts';
@@ -263,6 +264,28 @@ describe('balloons', () => {
       decorations: { ...noDecorations, balloons },
     });
     expect(drawn.flatMap(wordsOf)).toEqual(['1', 'one member', '2']);
+  });
+});
+
+describe('numbers of a trace', () => {
+  const design = designs['hub with a pair']!;
+  const geometry = route(design);
+  const facts = drawingFacts(design, segmentsOf(design));
+
+  it('stand where its steps happen, beside cables, and the failing one is red', () => {
+    const [link] = Object.entries(design.links).find(([, { kind }]) => kind === 'cable')!;
+    const hops = [
+      { number: 1, at: { collection: 'links', id: link } as const, failing: false },
+      { number: 2, at: { collection: 'devices', id: 'fw-s1' } as const, failing: true },
+      { number: 3, at: { collection: 'segments', id: 'a' } as const, failing: false },
+    ];
+    const drawn = hopMarks(geometry, facts, { level: 'near', decorations: { ...noDecorations, hops } });
+    expect(drawn.flatMap(wordsOf)).toEqual(['1', '2']);
+    const circles = drawn.flatMap(allShapes).filter(({ el }) => el === 'circle');
+    expect(circles.map(({ attrs }) => attrs['fill'])).toEqual(['var(--strip)', 'var(--red)']);
+    const anchor = anchorOf(geometry, { collection: 'links', id: link })!;
+    const { cx, cy } = circles[0]!.attrs;
+    expect(Math.hypot(Number(cx) - anchor.x, Number(cy) - anchor.y)).toBeCloseTo(15.5, 6);
   });
 });
 
