@@ -21,27 +21,27 @@ export const sameJson = (a: unknown, b: unknown): boolean => {
 };
 
 // Object.fromEntries and a spread make own members of any name; a plain assignment to "__proto__" would set the prototype.
-const withKey = (bag: Bag, key: string, value: unknown): Bag => ({
-  ...bag,
-  ...Object.fromEntries([[key, value]]),
-});
+const setKey = (bag: Record<string, unknown>, key: string, value: unknown): void => {
+  // A plain assignment to "__proto__" would set the prototype instead of a member.
+  Object.defineProperty(bag, key, { value, enumerable: true, writable: true, configurable: true });
+};
 
 const mergeInto = (target: unknown, patch: unknown): unknown => {
   if (!isBag(patch)) return sameJson(target, patch) ? target : patch;
-  let result: Bag = isBag(target) ? target : {};
+  const before: Bag = isBag(target) ? target : {};
+  // Copied at the first change and once only: a patch may add thousands of entries to one collection.
+  let copy: Record<string, unknown> | undefined;
   for (const key of Object.keys(patch)) {
     const change = patch[key];
     if (change === null) {
-      if (!Object.hasOwn(result, key)) continue;
-      const { [key]: _removed, ...rest } = result;
-      result = rest;
+      if (Object.hasOwn(before, key)) delete (copy ??= { ...before })[key];
       continue;
     }
-    const before = own(result, key);
-    const after = mergeInto(before, change);
-    if (after !== before || !Object.hasOwn(result, key)) result = withKey(result, key, after);
+    const old = own(before, key);
+    const now = mergeInto(old, change);
+    if (now !== old || !Object.hasOwn(before, key)) setKey((copy ??= { ...before }), key, now);
   }
-  return result;
+  return copy ?? before;
 };
 
 /**

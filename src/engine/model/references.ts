@@ -1,7 +1,7 @@
 import type { Collection, Design, Entry } from './design.ts';
 import { collections } from './design.ts';
 import type { MergePatch } from './merge-patch.ts';
-import { applyPatch, diffPatch, patchAt } from './merge-patch.ts';
+import { applyPatch, diffPatch } from './merge-patch.ts';
 
 /** Something an entry names elsewhere in the design. */
 export interface Reference {
@@ -185,16 +185,21 @@ export const danglingPatch = (design: Design): MergePatch => {
   for (;;) {
     const dangling = listReferences(current).filter((reference) => !resolves(current, reference));
     if (dangling.length === 0) return diffPatch(design, current);
-    for (const reference of dangling)
-      if (holds(current, reference.removes)) current = applyPatch(current, patchAt(reference.removes, null));
+    const step: Removals = {};
+    for (const { removes } of dangling) markRemoved(step, removes);
+    current = applyPatch(current, step);
   }
 };
 
-const holds = (document: unknown, path: readonly string[]): boolean =>
-  path.reduce<unknown>(
-    (at, key) =>
-      typeof at === 'object' && at !== null && Object.hasOwn(at, key)
-        ? (at as Record<string, unknown>)[key]
-        : undefined,
-    document,
-  ) !== undefined;
+type Removals = { [key: string]: Removals | null };
+
+/** Written in place: where a site goes, thousands of entries may go with it. What lies in a removed place is gone already. */
+const markRemoved = (patch: Removals, path: readonly string[]): void => {
+  let at = patch;
+  for (const key of path.slice(0, -1)) {
+    const inner = at[key] === undefined ? (at[key] = {}) : at[key];
+    if (inner === null) return;
+    at = inner;
+  }
+  at[path.at(-1)!] = null;
+};

@@ -34,4 +34,23 @@ describe('an edit that meets a deletion', () => {
     expect(settle(mine, { sites: { s1: { name: 'G' } } })).toEqual(mine);
     expect(changedProblems(before, applyPatch(before, mine))).toHaveLength(1);
   });
+
+  it('lapses inside an entry whose id holds a dot', () => {
+    const site = { ...before.sites['s1']!, name: 'Quay 1.2' };
+    const dotted = applyPatch(before, { sites: { 'quay-1.2': site } });
+    const theirs = { sites: { 'quay-1.2': null } };
+    const mine = { sites: { 'quay-1.2': { notes: 'Ask for the key' }, s1: { notes: 'Ring first' } } };
+    expect(settlePatch(applyPatch(dotted, theirs), mine, [theirs])).toEqual({
+      sites: { s1: { notes: 'Ring first' } },
+    });
+  });
+
+  it('lapses where it sets what the thing no longer has, since it became another kind', () => {
+    const access = (change: MergePatch): MergePatch => ({
+      forwarders: { 'br-s0-a': { circuits: { access: change } } },
+    });
+    const theirs = access({ kind: 'tunnel', tunnel: 'tn-s0-s1-a', port: null, vlans: null });
+    expect(settle(access({ vlans: [120] }), theirs)).toEqual({});
+    expect(settle(access({ vlans: [120], isolation: 'far' }), theirs)).toEqual(access({ isolation: 'far' }));
+  });
 });
