@@ -6,6 +6,7 @@ import { applyPatch, isEmptyPatch } from '#engine/model/merge-patch.ts';
 import type { Problem } from '#engine/model/parse-design.ts';
 import { changedProblems, referenceProblems } from '#engine/model/parse-design.ts';
 import { danglingPatch } from '#engine/model/references.ts';
+import { settlePatch } from '#engine/model/settle-patch.ts';
 import { limits } from './limits.ts';
 
 export interface Edit {
@@ -20,13 +21,10 @@ export type Settled =
   | { readonly ok: true; readonly document: Design; readonly edits: readonly SettledEdit[] }
   | { readonly ok: false; readonly problems: readonly Problem[]; readonly reason: 'invalid' | 'too-large' };
 
-type Path = readonly string[];
-
 /**
  * The document after edits that were made on an older state of it. `since` are the patches that others logged meanwhile.
- * Edits merge by property, the later one standing. Where an edit changes inside what somebody removed meanwhile and what is
- * left of it makes no sense alone, the removal stands and that part of the edit is left out. What then names something that
- * is gone is removed by one repair. All edits are taken or none.
+ * Edits merge by property, the later one standing. Where an edit changes inside what somebody removed meanwhile, the removal
+ * stands (settlePatch). What then names something that is gone is removed by one repair. All edits are taken or none.
  */
 export function settleEdits(before: Design, edits: readonly Edit[], since: readonly MergePatch[]): Settled {
   let document = before;
@@ -34,7 +32,7 @@ export function settleEdits(before: Design, edits: readonly Edit[], since: reado
   for (const { editId, patch } of edits) {
     const reserved = reservedKeyIn(patch, []);
     if (reserved !== null) return { ok: false, reason: 'invalid', problems: [reserved] };
-    const kept = withoutOrphans(document, patch, since);
+    const kept = settlePatch(document, patch, since);
     const next = applyPatch(document, kept);
     const problems = changedProblems(document, next);
     if (problems.length > 0) return { ok: false, reason: 'invalid', problems };
@@ -85,7 +83,7 @@ export function countEntries(document: Design): number {
 const reservedKeys: ReadonlySet<string> = new Set(['__proto__', 'constructor', 'prototype']);
 
 // Such a key confuses code that treats a record as a plain object, and a schema of records passes over __proto__.
-function reservedKeyIn(value: unknown, path: Path): Problem | null {
+function reservedKeyIn(value: unknown, path: readonly string[]): Problem | null {
   if (typeof value !== 'object' || value === null) return null;
   for (const [key, inner] of Object.entries(value)) {
     if (reservedKeys.has(key)) {
@@ -95,53 +93,4 @@ function reservedKeyIn(value: unknown, path: Path): Problem | null {
     if (found !== null) return found;
   }
   return null;
-}
-
-/** The patch without what changes inside something removed meanwhile and is no whole by itself. */
-function withoutOrphans(document: Design, patch: MergePatch, since: readonly MergePatch[]): MergePatch {
-  let kept = patch;
-  let problems = changedProblems(document, applyPatch(document, kept));
-  if (problems.length === 0) return kept;
-  const removed = since
-    .flatMap((each) => removalsIn(each, []))
-    .filter((path) => valueAt(document, path) === undefined);
-  for (const path of removed) {
-    const wanted = valueAt(kept, path);
-    if (wanted === undefined || wanted === null) continue;
-    if (!problems.some((problem) => isInOneLine(problem.path, path.join('.')))) continue;
-    kept = withoutPath(kept, path);
-    problems = changedProblems(document, applyPatch(document, kept));
-    if (problems.length === 0) break;
-  }
-  return kept;
-}
-
-function removalsIn(patch: unknown, path: Path): readonly Path[] {
-  if (patch === null) return [path];
-  if (typeof patch !== 'object' || Array.isArray(patch)) return [];
-  return Object.entries(patch).flatMap(([key, inner]) => removalsIn(inner, [...path, key]));
-}
-
-function valueAt(root: unknown, path: Path): unknown {
-  return path.reduce<unknown>(
-    (at, key) =>
-      typeof at === 'object' && at !== null && Object.hasOwn(at, key)
-        ? (at as Record<string, unknown>)[key]
-        : undefined,
-    root,
-  );
-}
-
-// A problem is named at the entry or below it, the removal at the entry or at a property of it.
-function isInOneLine(a: string, b: string): boolean {
-  return a === b || a.startsWith(`${b}.`) || b.startsWith(`${a}.`);
-}
-
-function withoutPath(patch: MergePatch, path: Path): MergePatch {
-  const [key, ...rest] = path;
-  if (key === undefined) return patch;
-  const inner = patch[key];
-  const { [key]: _removed, ...others } = patch;
-  if (rest.length === 0 || typeof inner !== 'object' || inner === null || Array.isArray(inner)) return others;
-  return { ...others, [key]: withoutPath(inner as MergePatch, rest) };
 }

@@ -69,7 +69,7 @@ export const createDesignSchema = z.strictObject({
   from: z.discriminatedUnion('kind', [
     z.strictObject({ kind: z.literal('empty') }),
     z.strictObject({ kind: z.literal('demo'), demo: z.enum(demoDesigns) }),
-    z.strictObject({ kind: z.literal('copy'), designId: z.string() }),
+    z.strictObject({ kind: z.literal('copy'), designId: z.guid('expected the id of a design') }),
     // The design's own JSON; read by the engine, every problem named.
     z.strictObject({ kind: z.literal('document'), document: z.unknown() }),
   ]),

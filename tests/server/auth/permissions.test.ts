@@ -1,0 +1,182 @@
+import type { Test } from 'supertest';
+import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import type { Action, Role } from '#contract/session.ts';
+import { actions, roles } from '#contract/session.ts';
+import type { Access, Route } from '../../../server/auth/permissions.ts';
+import { permissions, permits, routes } from '../../../server/auth/permissions.ts';
+import type { TestApplication, TestBrowser, TestWorkspace } from '../../support/test-application.ts';
+import {
+  addDesign,
+  addEngagement,
+  addWorkspace,
+  openBrowser,
+  signIn,
+  startTestApplication,
+  testPassword,
+} from '../../support/test-application.ts';
+
+let application: TestApplication;
+let workspace: TestWorkspace;
+let engagementId: string;
+let designId: string;
+let stranger: TestBrowser;
+let nobody: TestBrowser;
+const members = {} as { [role in Role]: TestBrowser };
+
+beforeAll(async () => {
+  application = await startTestApplication();
+  workspace = await addWorkspace(application);
+  engagementId = await addEngagement(application, workspace.id);
+  designId = await addDesign(application, engagementId);
+  for (const role of roles) members[role] = await signIn(application, workspace.people[role]);
+  const elsewhere = await addWorkspace(application);
+  stranger = await signIn(application, elsewhere.people.owner);
+  nobody = await openBrowser(application);
+});
+afterAll(() => application.close());
+
+const missingId = '00000000-0000-4000-8000-000000000000';
+
+interface Ids {
+  readonly workspace: string;
+  readonly engagement: string;
+  readonly design: string;
+}
+
+/** A request to each route that succeeds for whoever may make it. */
+const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) => Test } = {
+  'GET /api/health': (browser) => browser.get('/api/health'),
+  'POST /api/engine/check': (browser) => browser.post('/api/engine/check', { design: {} }),
+  'POST /api/engine/wire': (browser) =>
+    browser.post('/api/engine/wire', { stack: {}, innerPacketBytes: 1500 }),
+  'GET /api/session': (browser) => browser.get('/api/session'),
+  'POST /api/session': (browser) =>
+    browser.post('/api/session', { email: 'nobody@ternwick.example', password: testPassword }),
+  'POST /api/session/demo': (browser) => browser.post('/api/session/demo', { role: 'owner' }),
+  'DELETE /api/session': (browser) => browser.delete('/api/session'),
+  'PUT /api/account/password': (browser) =>
+    browser.put('/api/account/password', { current: testPassword, next: testPassword }),
+  'GET /api/workspaces/:workspaceId/engagements': (browser, { workspace: id }) =>
+    browser.get(`/api/workspaces/${id}/engagements`),
+  'POST /api/workspaces/:workspaceId/engagements': (browser, { workspace: id }) =>
+    browser.post(`/api/workspaces/${id}/engagements`, { name: 'New' }),
+  'PATCH /api/engagements/:engagementId': (browser, { engagement: id }) =>
+    browser.patch(`/api/engagements/${id}`, { name: 'Renamed' }),
+  'POST /api/engagements/:engagementId/designs': (browser, { engagement: id }) =>
+    browser.post(`/api/engagements/${id}/designs`, { title: 'New', from: { kind: 'empty' } }),
+  'GET /api/designs/:designId': (browser, { design: id }) => browser.get(`/api/designs/${id}`),
+  'PATCH /api/designs/:designId': (browser, { design: id }) =>
+    browser.patch(`/api/designs/${id}`, { title: 'Renamed' }),
+  'GET /api/designs/:designId/patches': (browser, { design: id }) =>
+    browser.get(`/api/designs/${id}/patches?after=0`),
+  'POST /api/designs/:designId/patches': (browser, { design: id }) =>
+    browser.post(`/api/designs/${id}/patches`, {
+      baseSequence: 0,
+      edits: [{ editId: crypto.randomUUID(), patch: { meta: { documentType: 'Plan' } } }],
+    }),
+  'GET /api/designs/:designId/thumbnail': (browser, { design: id }) =>
+    browser.get(`/api/designs/${id}/thumbnail?v=0&theme=paper`),
+};
+
+const isAction = (access: Access): access is Action => (actions as readonly string[]).includes(access);
+const guarded = (Object.keys(routes) as Route[]).filter((route) => isAction(routes[route]));
+const ids = (): Ids => ({ workspace: workspace.id, engagement: engagementId, design: designId });
+
+describe('the table of roles', () => {
+  test('says what product owners agreed on', () => {
+    expect(permissions).toEqual({
+      owner: actions,
+      architect: actions,
+      reviewer: ['workspace.read', 'design.read'],
+      presales: ['workspace.read', 'design.read', 'design.create'],
+      installer: ['workspace.read'],
+    });
+  });
+
+  test('lists each route that the server answers, and no other', () => {
+    expect(Object.keys(requests).sort()).toEqual(Object.keys(routes).sort());
+    expect(guarded).toHaveLength(9);
+  });
+});
+
+describe.each(guarded)('%s', (route) => {
+  const action = routes[route] as Action;
+
+  test.each(roles)('answers a member by what the role %s may do', async (role) => {
+    const response = await requests[route](members[role], ids());
+    if (permits(role, action)) {
+      expect(response.status).toBeLessThan(300);
+    } else {
+      expect(response.status).toBe(403);
+      expect(response.body).toMatchObject({ code: 'not-allowed' });
+    }
+  });
+
+  test('tells a stranger and a member about what does not exist in the same words', async () => {
+    const answers = [
+      await requests[route](stranger, ids()),
+      await requests[route](stranger, { workspace: missingId, engagement: missingId, design: missingId }),
+      await requests[route](members.owner, {
+        workspace: missingId,
+        engagement: missingId,
+        design: missingId,
+      }),
+      await requests[route](members.owner, { workspace: 'x', engagement: '1; drop', design: '../x' }),
+    ];
+    const [first] = answers;
+    expect(first!.body).toMatchObject({ code: 'not-found' });
+    for (const answer of answers.slice(0, 3)) {
+      expect(answer.status).toBe(404);
+      expect({ ...(answer.body as object), requestId: '' }).toEqual({
+        ...(first!.body as object),
+        requestId: '',
+      });
+    }
+    expect(answers[3]!.status).toBe(404);
+  });
+
+  test('asks somebody who is not signed in to do so', async () => {
+    const response = await requests[route](nobody, ids());
+    expect(response.status).toBe(401);
+    expect(response.body).toMatchObject({ code: 'not-signed-in' });
+  });
+});
+
+describe('routes that belong to no workspace', () => {
+  test('a password is changed by its owner alone', async () => {
+    await requests['PUT /api/account/password'](nobody, ids()).expect(401);
+    const response = await requests['PUT /api/account/password'](stranger, ids()).expect(200);
+    stranger.csrfToken = (response.body as { csrfToken: string }).csrfToken;
+  });
+
+  test.each([
+    ['GET /api/health', 200],
+    ['POST /api/engine/check', 422],
+    ['POST /api/engine/wire', 200],
+    ['GET /api/session', 200],
+    ['POST /api/session', 401],
+    ['POST /api/session/demo', 404],
+  ] as const)('%s answers everybody', async (route, status) => {
+    await requests[route](nobody, ids()).expect(status);
+  });
+
+  test('signing out answers everybody', async () => {
+    await requests['DELETE /api/session'](await openBrowser(application), ids()).expect(204);
+  });
+});
+
+test('somebody whose role is taken away loses the right with the next request', async () => {
+  const { architect } = workspace.people;
+  const { knex } = application.database;
+  const setRole = (role: Role) =>
+    knex('memberships').where({ workspace_id: workspace.id, person_id: architect.id }).update({ role });
+  const save = () => requests['POST /api/designs/:designId/patches'](members.architect, ids());
+  const countPatches = async () => (await knex('design_patches').where({ design_id: designId })).length;
+  await save().expect(200);
+  const before = await countPatches();
+  await setRole('reviewer');
+  await save().expect(403);
+  await knex('memberships').where({ workspace_id: workspace.id, person_id: architect.id }).delete();
+  await save().expect(404);
+  expect(await countPatches()).toBe(before);
+});
