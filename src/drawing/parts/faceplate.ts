@@ -9,7 +9,7 @@ import { glyph } from './glyphs.ts';
 import type { Level } from './level-of-detail.ts';
 import { measures } from './level-of-detail.ts';
 import { plateOutline, stripOutline } from './outlines.ts';
-import { hostGlyphColumn, strip } from './sizes.ts';
+import { firewallChamfer, hostGlyphColumn, strip } from './sizes.ts';
 import { capShift, fittedLines } from './text-shape.ts';
 
 export interface FaceplateFacts {
@@ -45,22 +45,19 @@ const outlineStroke = (state: FaceplateState): Record<string, string | number | 
 };
 
 const hatchPitch = 6;
-/** 45° hatch of the open strip, cut to the strip's chamfered silhouette by leaving its corners free. */
+/** 45° hatch of the open strip, inside the silhouette's chamfers. */
 const stripHatch = (r: Rect): Shape => {
-  const [left, right, top, bottom] = [r.x + 1.4, r.x + r.width - 1.4, r.y + 1.4, r.y + strip.height];
-  const height = bottom - top;
+  const inset = 1.4;
+  const [left, right] = [r.x + inset, r.x + r.width - inset];
+  const [top, bottom] = [r.y + inset, r.y + strip.height];
   const lines: string[] = [];
-  for (let foot = left - height + hatchPitch; foot < right; foot += hatchPitch) {
+  // Each line rises from `foot` on the strip's lower edge: x + y is the same all along it, as along the left chamfer.
+  const firstFoot = left + top + firewallChamfer - bottom;
+  for (let foot = firstFoot + hatchPitch; foot < right; foot += hatchPitch) {
+    const onRightChamfer = (right - top - firewallChamfer + bottom + foot) / 2;
     const from = Math.max(foot, left);
-    const to = Math.min(foot + height, right);
-    // Near a chamfered corner the line begins or ends on the chamfer.
-    const startsAtTop = to < right || foot + height === right;
-    const cut = startsAtTop && to - left < 8 ? 8 - (to - left) : 0;
-    if (to - from <= cut) continue;
-    const shift = to >= right ? 4 : 0;
-    lines.push(
-      `M${from} ${bottom - (from - foot)}L${to - cut - shift} ${bottom - (to - foot) + cut + shift}`,
-    );
+    const to = Math.min(foot + bottom - top, right, onRightChamfer);
+    if (to > from) lines.push(`M${from} ${bottom - (from - foot)}L${to} ${bottom - (to - foot)}`);
   }
   return {
     ...shape('path', { d: lines.join(''), stroke: paint('rule-2'), strokeWidth: 1.4, fill: 'none' }),
@@ -87,9 +84,10 @@ const stripName = (facts: FaceplateFacts, r: Rect, state: FaceplateState): reado
   const gap = state.standby && {
     ...shape('rect', {
       x: plan ? x - width / 2 - 5 : r.x + strip.glyphAt - 3,
-      y: r.y + 1.4,
+      // Lower than the strip: the hatch shows along its edges.
+      y: r.y + 4.5,
       width: plan ? width + 10 : strip.nameAt - strip.glyphAt + width + 8,
-      height: strip.height - 2.4,
+      height: strip.height - 8.5,
       fill: paint('plate'),
     }),
     key: 'gap',

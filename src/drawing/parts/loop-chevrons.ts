@@ -62,15 +62,15 @@ const pathOfStep = (step: LoopStep, geometry: SheetGeometry): Path | undefined =
 
 const round = (value: number): number => Math.round(value * 100) / 100;
 
-/** Chevrons along every cord and cable of each loop, all turning the same way. `phasePx` lets them drift by up to one pitch. */
+/** Chevrons along every cord and cable of each loop, all turning the same way. `phasePx` lets them drift: 26 px is one pitch at every level. */
 export const loopChevrons = (geometry: SheetGeometry, look: Look, phasePx = 0): readonly Shape[] =>
   look.decorations.loops.map(({ steps }, i) =>
     group(
       steps.map((step) => {
         const path = pathOfStep(step, geometry);
         if (path === undefined) return undefined;
-        const places = chevronPlaces(path, look.level, phasePx);
-        const { scale } = chevronRun[look.level];
+        const { scale, pitchPx } = chevronRun[look.level];
+        const places = chevronPlaces(path, look.level, (phasePx / chevronRun.near.pitchPx) * pitchPx);
         const size = step.collection === 'links' ? scale * 0.72 : scale;
         return group(
           places.map(({ x, y, degrees }, k) => ({
