@@ -1,7 +1,8 @@
 import type { MergePatch } from '../model/merge-patch.ts';
 import type { Network } from '../network/network.ts';
 import { segmentsAt } from '../network/network.ts';
-import { segmentsByTunnel } from './carried-segments.ts';
+import { tunnelSegments } from '../flood/tunnel-segments.ts';
+import { segmentPathFacts } from './carried-segments.ts';
 import { defineRule } from './define-rule.ts';
 import { countWord, sentenceCase } from './wording.ts';
 
@@ -15,7 +16,7 @@ interface AccessPort {
 
 /** Access ports of each segment that tunnels carry, where nothing bounds broadcast. */
 const unlimitedPorts = (network: Network): ReadonlyMap<string, readonly AccessPort[]> => {
-  const stretched = new Set([...segmentsByTunnel(network).values()].flat());
+  const stretched = new Set([...tunnelSegments(network).values()].flat());
   const bySegment = new Map<string, AccessPort[]>();
   for (const device of network.deviceIds) {
     const { kind, site, ports } = network.design.devices[device]!;
@@ -42,7 +43,7 @@ export const accessPortWithoutStormLimit = defineRule({
   id: 'access-port-without-storm-limit',
   title: 'Every access port of a stretched segment limits broadcast',
   severity: 'advisory',
-  looksAt: ['devices', 'segments', 'tunnels', 'endpoints', 'forwarders'],
+  looksAt: segmentPathFacts,
   why: 'A loop made by one wrong cable at one site fills the tunnels and reaches every other site of the segment.',
   seen: 'Somebody plugs a cable back into the same switch, and all sites are down together.',
   sources: [{ document: 'RFC 4762', clause: 'section 14' }, 'common practice, no source'],

@@ -75,9 +75,9 @@ export const weaknessesOf = (
       algorithm: encryption,
       field: 'encryption',
       kind: 'clear',
-      // RFC 2410 section 3: NULL offers no confidentiality; from memory.
+      // RFC 2410 section 1: authentication and integrity without confidentiality.
       sources: [
-        { document: 'RFC 2410', clause: 'section 3' },
+        { document: 'RFC 2410', clause: 'section 1' },
         { document: 'RFC 7348', clause: 'section 7' },
       ],
     });

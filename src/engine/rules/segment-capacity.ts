@@ -47,7 +47,7 @@ export const capacitiesOf = (network: Network): ReadonlyMap<string, readonly Tig
   return bySegment;
 };
 
-export interface Need {
+interface Need {
   readonly needBytes: number;
   /** Hosts that want it, where the segment itself says nothing. */
   readonly hosts: readonly string[];

@@ -1,6 +1,6 @@
 import type { End, Network, PortCircuit, Tunnel } from '../network/network.ts';
 
-export type TagMode = 'keep' | 'strip';
+type TagMode = 'keep' | 'strip';
 
 /** What an end of a tunnel does with inner tags: what it says itself, else its device's setting, else the standard's default. */
 export const tagModeOf = ({ design }: Network, tunnel: Tunnel, end: End, device: string): TagMode =>

@@ -15,7 +15,7 @@ import { coverPatch } from './selector-patch.ts';
 import { strongEspProposal, strongIkeProposal, usualLiveness } from './strong-suite.ts';
 
 /** Whether a transport needs no protection: as stated, and where nothing is stated only one's own. */
-export const isTrusted = (transport: Entry<'transports'>): boolean =>
+const isTrusted = (transport: Entry<'transports'>): boolean =>
   transport.trusted ?? transport.kind === 'own-routed';
 
 const freeAssociationId = ({ design }: Network, stem: string): string => {
@@ -75,7 +75,7 @@ export const tunnelBareOnUntrusted = defineRule({
   title: 'Tunnels over transports that are not trusted run inside IPsec',
   severity: 'blocking',
   looksAt: ['tunnels', 'endpoints', 'links', 'transports', 'devices', 'associations'],
-  why: 'VXLAN neither hides nor authenticates anything: whoever is on the path reads every frame and can send his own into the segment.',
+  why: 'VXLAN neither hides nor authenticates anything: whoever is on the path reads every frame and can put more into the segment.',
   seen: 'Frames of the segment can be read in a capture anywhere on the transport; nothing else tells.',
   sources: [{ document: 'RFC 7348', clause: 'section 7' }],
   messages: {

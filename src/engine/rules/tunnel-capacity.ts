@@ -15,8 +15,6 @@ export interface EndCapacity {
   readonly largestBytes: number;
   /** What the outermost packet may have. */
   readonly mtuBytes: number;
-  /** Limited by the transport's MTU, by this end's WAN port, or by what its access line takes away. */
-  readonly limitedBy: 'transport' | 'port' | 'access';
   readonly stack: Stack;
 }
 
@@ -101,12 +99,6 @@ const capacityOf = (network: Network, id: string, innerTags: TagCount): EndCapac
       end,
       largestBytes: answer.ok ? answer.largestInnerPacketBytes : 0,
       mtuBytes: answer.ok ? answer.ipMtuBytes : ownLimit,
-      limitedBy:
-        answer.ok && answer.limitedBy === 'access'
-          ? 'access'
-          : port < transportMtuBytes
-            ? 'port'
-            : 'transport',
       stack,
     };
   });
