@@ -1,5 +1,4 @@
-import type { DeviceKind } from '../../engine/model/devices.ts';
-import type { hostFaces } from '../../engine/model/devices.ts';
+import type { DeviceKind, hostFaces } from '../../engine/model/devices.ts';
 import type { Shape } from '../shape.ts';
 import { group, shape } from '../shape.ts';
 import { paint } from '../theme/paint.ts';
