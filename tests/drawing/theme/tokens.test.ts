@@ -63,6 +63,8 @@ describe('tokens', () => {
       expect(on(theme, 'red-ink', 'red')).toBeGreaterThanOrEqual(4.5);
       expect(on(theme, 'blue-ink', 'blue')).toBeGreaterThanOrEqual(4.5);
       expect(on(theme, 'strip-ink', 'strip')).toBeGreaterThanOrEqual(4.5);
+    expect(on(theme, 'on-brass', 'brass')).toBeGreaterThanOrEqual(4.5);
+    expect(on(theme, 'seg-none-on', 'seg-none')).toBeGreaterThanOrEqual(4.5);
     },
   );
 
@@ -76,8 +78,10 @@ describe('tokens', () => {
     expect(on('paper', 'red', 'paper')).toBeGreaterThanOrEqual(4.5);
   });
 
-  it('shows H inside a jacket in every theme', () => {
-    for (const theme of themes) expect(on(theme, 'tracer-h', 'jacket'), theme).toBeGreaterThanOrEqual(3);
+  it('shows H and an empty core inside a jacket in every theme', () => {
+    for (const theme of themes)
+      for (const core of ['tracer-h', 'seg-none'])
+        expect(on(theme, core, 'jacket'), `${core} in ${theme}`).toBeGreaterThanOrEqual(3);
   });
 
   it('prints without any colour but grey, unless segments are asked for in colour', () => {
