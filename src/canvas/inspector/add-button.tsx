@@ -18,10 +18,10 @@ export function AddButton({ onClick, children, subject, disabled }: AddButtonPro
       disabled={disabled}
       icon={<Icon name="plus" size={14} />}
       className="self-start"
+      aria-label={subject === undefined ? undefined : `${children} ${subject}`}
       onClick={onClick}
     >
       {children}
-      {subject !== undefined && <span className="sr-only"> {subject}</span>}
     </Button>
   );
 }

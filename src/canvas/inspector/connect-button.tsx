@@ -25,9 +25,13 @@ export function ConnectButton({
   const editable = useEditable();
   if (onConnect === undefined || !editable) return null;
   return (
-    <Button kind="accent" small onClick={() => onConnect({ kind, from })}>
+    <Button
+      kind="accent"
+      small
+      aria-label={subject === undefined ? undefined : `${words[kind]} ${subject}`}
+      onClick={() => onConnect({ kind, from })}
+    >
       {words[kind]}
-      {subject !== undefined && <span className="sr-only"> {subject}</span>}
     </Button>
   );
 }

@@ -25,6 +25,8 @@ interface OrderedListProps<E extends Ranked> {
   readonly path: FieldPath;
   /** What one entry is called: 'IKE proposal'. */
   readonly noun: string;
+  /** More than one of them, where an s does not do. */
+  readonly nouns?: string;
   /** Whose list it is, for labels and undo steps. */
   readonly of: string;
   /** Said while there is none. */
@@ -39,6 +41,7 @@ interface OrderedListProps<E extends Ranked> {
 export function OrderedList<E extends Ranked>({
   path,
   noun,
+  nouns = `${noun}s`,
   of,
   empty,
   titleOf,
@@ -51,7 +54,7 @@ export function OrderedList<E extends Ranked>({
   const label = `${noun} of ${of}`;
   const entries = inRankOrder(map);
   return (
-    <div role="group" aria-label={`${noun}s of ${of}`} className="flex flex-col gap-6">
+    <div role="group" aria-label={`${nouns} of ${of}`} className="flex flex-col gap-6">
       {entries.length === 0 && <p className="text-note text-ink-3">{empty}</p>}
       {entries.length > 0 && (
         <ol className="flex flex-col gap-8">

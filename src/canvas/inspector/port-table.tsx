@@ -65,8 +65,8 @@ export function PortTable({ device: id }: { readonly device: string }) {
           <Menu
             align="end"
             trigger={
-              <Button kind="quiet" small icon={<Icon name="plus" size={14} />}>
-                Add<span className="sr-only"> a port</span>
+              <Button kind="quiet" small aria-label="Add a port" icon={<Icon name="plus" size={14} />}>
+                Add
               </Button>
             }
             groups={[

@@ -40,6 +40,7 @@ export function ViaList({
       <OrderedList<Step>
         path={path}
         noun="way out"
+        nouns="ways out"
         of={place}
         empty="any landing of its device"
         titleOf={({ landing }) => <ElementLink to={{ collection: 'links', id: landing }} />}
