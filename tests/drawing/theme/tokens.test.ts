@@ -63,8 +63,8 @@ describe('tokens', () => {
       expect(on(theme, 'red-ink', 'red')).toBeGreaterThanOrEqual(4.5);
       expect(on(theme, 'blue-ink', 'blue')).toBeGreaterThanOrEqual(4.5);
       expect(on(theme, 'strip-ink', 'strip')).toBeGreaterThanOrEqual(4.5);
-    expect(on(theme, 'on-brass', 'brass')).toBeGreaterThanOrEqual(4.5);
-    expect(on(theme, 'seg-none-on', 'seg-none')).toBeGreaterThanOrEqual(4.5);
+      expect(on(theme, 'on-brass', 'brass')).toBeGreaterThanOrEqual(4.5);
+      expect(on(theme, 'seg-none-on', 'seg-none')).toBeGreaterThanOrEqual(4.5);
     },
   );
 
