@@ -98,8 +98,8 @@ export const band = {
   width: 122,
   trustedWidth: 92,
   edgeToJacket: 22,
-  /** Height that a band's text needs, free of cuffs. */
-  textHeight: 118,
+  /** Lines of a band's words, baseline to baseline: name, kind and trust always, the others where they are known. */
+  words: { always: 54, nameLine: 18, latency: 25, mtu: 21, mtuUnderLatency: 32, loss: 19 },
 } as const;
 
 /** Site frame to band edge. */

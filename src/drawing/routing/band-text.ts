@@ -1,4 +1,4 @@
-import type { Design } from '../../engine/model/design.ts';
+import type { Design, Entry } from '../../engine/model/design.ts';
 import type { BandText, Rect } from '../geometry.ts';
 import { band as bandSizes } from '../parts/sizes.ts';
 import { wrapText } from '../text-width.ts';
@@ -43,6 +43,19 @@ const settle = (free: Interval, from: number, to: number, height: number): numbe
   return (free.from + free.to - height) / 2;
 };
 
+/** How high the words of a transport stand in a band of this width. */
+const wordsHeight = (transport: Entry<'transports'> | undefined, name: string, width: number): number => {
+  const { always, nameLine, latency, mtu, mtuUnderLatency, loss } = bandSizes.words;
+  const hasLatency = transport?.latencyUs !== undefined;
+  return (
+    always +
+    nameLine * (wrapText(name, width - 16, 15, 600).length - 1) +
+    (hasLatency ? latency : 0) +
+    (transport?.mtu === undefined ? 0 : hasLatency ? mtuUnderLatency : mtu) +
+    (transport?.lossPpm === undefined ? 0 : loss)
+  );
+};
+
 /** Where a band's words stand: in its longest free stretch, turned along its edge, beside it on paper, or its name alone. */
 export const bandText = (
   design: Design,
@@ -56,13 +69,12 @@ export const bandText = (
   const name = design.transports[band.id]?.name ?? band.id;
   const level = band.orientation === 'horizontal';
   const places = level ? (band.header === undefined ? band.limbs : [...band.limbs, band.header]) : band.limbs;
-  const heightIn = (width: number): number =>
-    bandSizes.textHeight + 18 * (wrapText(name, width - 16, 15, 600).length - 1);
+  const heightIn = (width: number): number => wordsHeight(design.transports[band.id], name, width);
 
   const stretches = places.flatMap((rect) => {
     const here = blockers.filter((box) => overlap(box, rect));
     if (level) {
-      if (rect.height < bandSizes.textHeight - 6) return [];
+      if (rect.height < heightIn(bandSizes.width)) return [];
       const free = longest(
         freeIntervals(
           rect.x,

@@ -7,7 +7,8 @@ import type {
   SheetFrame,
   SiteGeometry,
 } from '../geometry.ts';
-import { bareWidth, jacketWidth, leastRadius } from '../parts/sizes.ts';
+import { bareWidth, jacketWidth, leastRadius, text } from '../parts/sizes.ts';
+import { textWidth } from '../text-width.ts';
 import type { BandPlace } from './bands.ts';
 import { bandPlaces } from './bands.ts';
 import type { Bundle } from './bundles.ts';
@@ -65,20 +66,35 @@ const sameLoads = (a: ReadonlyMap<string, PortLoad>, b: ReadonlyMap<string, Port
     );
   });
 
+/** The name above a pair's first member, as far as no WAN pip stands under it. */
+const pairNameRect = (stand: Stand, pips: ReadonlyMap<string, PipGeometry>): Rect => {
+  const { x, y } = stand.plates[0]!.rect;
+  const words = textWidth(stand.device.name, 15, 600) + 6 + textWidth('HA pair', text.label);
+  const nearest = Math.min(
+    ...[...pips.values()]
+      .filter((pip) => pip.device === stand.id && pip.side === 'top' && pip.member === 1)
+      .map((pip) => pip.at.x - 8),
+  );
+  return { x, y: y - 22, width: Math.max(1, Math.min(words, nearest - x)), height: 19 };
+};
+
 const obstaclesOf = (
   sheet: SheetFrame,
   stands: ReadonlyMap<string, Stand>,
   rings: ReadonlyMap<string, RingGeometry>,
   seats: readonly RingSeat[],
+  pips: ReadonlyMap<string, PipGeometry>,
 ): readonly Obstacle[] => {
   const obstacles: Obstacle[] = [{ rect: sheet.titleBlock }, { rect: sheet.legend }];
-  for (const { id, plates } of stands.values()) {
+  for (const stand of stands.values()) {
+    const { id, plates } = stand;
     for (const { rect } of plates) obstacles.push({ rect, owner: id });
     const [first, second] = plates;
     if (first === undefined || second === undefined) continue;
     // The gap between a pair's members belongs to their own links.
     const gap = rectBetween(second.rect.x, bottom(first.rect), right(first.rect), second.rect.y);
     obstacles.push({ rect: gap, owner: id });
+    obstacles.push({ rect: pairNameRect(stand, pips) });
   }
   const bracketed = new Set<string>();
   for (const seat of seats) {
@@ -128,6 +144,7 @@ export const furnish = (design: Design): FurnishedSheet => {
         ringGeometry(design, seat, combOrder(design, seat, seatOf, bands)),
       ]),
     );
+    const pips = placePips(design, stands, spots, seats, wanSides);
     const sites = siteFrames(design, sheet, stands, [...rings.values()]);
     return {
       sheet,
@@ -135,7 +152,7 @@ export const furnish = (design: Design): FurnishedSheet => {
       bands,
       seats,
       rings,
-      pips: placePips(design, stands, spots, seats, wanSides),
+      pips,
       sites,
       bundles: allBundles.filter(
         (bundle) =>
@@ -145,7 +162,7 @@ export const furnish = (design: Design): FurnishedSheet => {
       ),
       ground: {
         sheet: sheet.frame,
-        obstacles: obstaclesOf(sheet, stands, rings, seats),
+        obstacles: obstaclesOf(sheet, stands, rings, seats, pips),
         frames: sites.map(({ id, rect }) => ({ site: id, rect })),
         bands,
       },

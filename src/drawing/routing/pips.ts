@@ -35,8 +35,8 @@ const firmness: { readonly [kind in DeviceKind]: number } = {
 };
 
 const wanInset = { plate: 36, pair: 16 } as const;
-/** Between WAN pips on one member: the address of the outer cable stands between their cables. */
-const wanStepOnMember = 40;
+/** Between WAN pips under the second member: the address of the outer cable stands between their cables. */
+const wanStepBelow = 40;
 
 /** Where a WAN cable leaves its gateway, given the combs on the side it looks at. */
 const wanPlaces = (
@@ -55,7 +55,7 @@ const wanPlaces = (
     const nth = counts.get(`${side} ${spot.member ?? ''}`) ?? 0;
     counts.set(`${side} ${spot.member ?? ''}`, nth + 1);
     if (spot.member !== undefined) {
-      const x = corner(wanInset.pair + wanStepOnMember * nth);
+      const x = corner(wanInset.pair + (spot.member === 2 ? wanStepBelow : pip.spacing) * nth);
       places.set(key, { at: { x, y: edgeOf(plate, spot.side) }, side: spot.side });
       continue;
     }

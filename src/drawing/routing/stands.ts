@@ -49,7 +49,7 @@ export const plateSize = (device: Device, load: PortLoad = noLoad): Size => {
       textWidth(hostAddress(device), text.hostAddress),
     );
     return {
-      width: Math.min(widestName.host, Math.max(base.width, Math.ceil(hostGlyphColumn + 14 + words), across)),
+      width: Math.min(widestName.host, Math.max(base.width, Math.ceil(hostGlyphColumn + 12 + words), across)),
       height: Math.max(base.height, 10 + pip.spacing * load.upright),
     };
   }

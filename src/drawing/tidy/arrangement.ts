@@ -53,6 +53,8 @@ export interface ArrangementOptions {
   readonly widths: BandWidths;
   /** All right columns are moved down by this much, so that runs of both sides don't meet. */
   readonly stagger?: number;
+  /** Columns begin at the top of their room instead of in its middle, so that the bands have room for words below. */
+  readonly lifted?: boolean;
   /** Answer even when the sheet is too small. */
   readonly force?: boolean;
 }
@@ -60,7 +62,10 @@ export interface ArrangementOptions {
 /** Lays columns of sites and the bands between them on one sheet; undefined when they don't fit. */
 export const arrange = (options: ArrangementOptions): Arrangement | undefined => {
   const { design, facts, size, seating, blockOf, widths } = options;
+  const lifted = options.lifted === true;
   const stagger = options.stagger ?? 0;
+  /** How far columns left and right of a band are moved down against each other. */
+  const down = { left: lifted ? Math.max(0, -stagger) : 0, right: lifted ? Math.max(0, stagger) : stagger };
   const sheet = sheetFrame(size, Object.keys(design.segments).length);
   const limbs = seating.columns.length / 2;
   const [main, ...others] = facts.transports;
@@ -117,12 +122,12 @@ export const arrange = (options: ArrangementOptions): Arrangement | undefined =>
   if ((tooHigh || tooWide) && options.force !== true) return undefined;
 
   const sites = new Map<string, Rect>();
-  const stand = (column: Column, x: number, down: number): boolean => {
+  const stand = (column: Column, x: number, by: number): boolean => {
     const n = column.sites.length;
     const spare = room - column.height;
     const gap = n < 2 ? 0 : Math.min(mostGap, Math.max(leastGap, leastGap + spare / (n + 1)));
     const total = column.height + (gap - leastGap) * Math.max(0, n - 1);
-    let y = Math.round(top + Math.max(0, (room - total) / 2) + down);
+    let y = Math.round(top + (lifted ? 0 : Math.max(0, (room - total) / 2)) + by);
     const start = y;
     for (const site of column.sites) {
       const block = blockOf(site, column.facing).size;
@@ -144,7 +149,7 @@ export const arrange = (options: ArrangementOptions): Arrangement | undefined =>
   columns.forEach((column, i) => {
     const isLeft = i % 2 === 0;
     if (i > 0 && isLeft && column.width > 0 && columns[i - 1]!.width > 0) x += backToBack;
-    fits = stand(column, x, isLeft ? 0 : stagger) && fits;
+    fits = stand(column, x, isLeft ? down.left : down.right) && fits;
     x += column.width;
     if (!isLeft) return;
     if (i === 0) firstGutter = x;

@@ -8,7 +8,7 @@ import { bundlesOf } from '../routing/bundles.ts';
 import { byText } from '../routing/rects.ts';
 import { cordsOf, furnish } from '../routing/furnish.ts';
 import { bandNeeds } from '../routing/route-cords.ts';
-import { routeSheetOnce } from '../routing/route.ts';
+import { route, routeSheetOnce } from '../routing/route.ts';
 import type { RoutedSheet } from '../routing/route.ts';
 import { sheetFrame } from '../routing/sheet-frame.ts';
 import type { Arrangement, Seating } from './arrangement.ts';
@@ -149,6 +149,7 @@ const layoutOf = (
 interface Tidied {
   readonly layout: Layout;
   readonly arrangement: Arrangement;
+  readonly stagger: number;
   readonly routed: RoutedSheet;
 }
 
@@ -170,10 +171,11 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
     seating: Seating,
     stagger: number,
     force: boolean,
+    lifted = false,
   ): Tidied | undefined => {
     let widths = new Map<string, number>();
     for (let round = 0; ; round += 1) {
-      const arrangement = arrange({ design, facts, size, seating, blockOf, widths, stagger, force });
+      const arrangement = arrange({ design, facts, size, seating, blockOf, widths, stagger, lifted, force });
       if (arrangement === undefined) return undefined;
       const layout = layoutOf(design, arrangement, blockOf, collapsed);
       const laidOut = withLayout(design, layout);
@@ -191,7 +193,7 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
         return laid === undefined || w <= laid.limbs[0]!.width + 0.5;
       });
       if (settled || round === mostWidthRounds - 1)
-        return { layout, arrangement, routed: routeSheetOnce(laidOut) };
+        return { layout, arrangement, stagger, routed: routeSheetOnce(laidOut) };
       widths = wider;
     }
   };
@@ -208,6 +210,19 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
       undefined,
     );
   };
+  /** Bands without room for their words in them. */
+  const wordless = ({ layout }: Tidied): number =>
+    route(withLayout(design, layout)).bands.filter((band) => band.text.mode !== 'in').length;
+  const withRoomForWords = (tidied: Tidied): Tidied => {
+    if (wordless(tidied) === 0) return tidied;
+    const { size, seating } = tidied.arrangement;
+    const lifted = attempt(size, seating, tidied.stagger, false, true);
+    const isBetter =
+      lifted !== undefined &&
+      wordless(lifted) < wordless(tidied) &&
+      scoreOf(lifted.routed).total <= scoreOf(tidied.routed).total;
+    return isBetter ? lifted : tidied;
+  };
   const find = (): Tidied => {
     for (const size of sheetSizes)
       for (let limbs = 1; limbs <= mostLimbs; limbs += 1)
@@ -220,7 +235,7 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
     return bestOf(last, seating, true)!;
   };
   const best = find();
-  const layout = refine(design, best.layout);
+  const layout = refine(design, withRoomForWords(best).layout);
   return diffPatch({ layout: design.layout }, { layout });
 };
 

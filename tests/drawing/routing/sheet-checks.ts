@@ -233,7 +233,12 @@ export const twistedTails = (geometry: SheetGeometry): readonly string[] =>
       const tails = jacket.lanes
         .map((lane) => lane.tails[end])
         .map((tail) => ({ from: tail[0]!.to, to: tail.at(-1)!.to }));
-      const upright = tails.every((t) => Math.abs(t.from.y - t.to.y) > Math.abs(t.from.x - t.to.x));
+      const ring = geometry.rings.find((r) =>
+        r.groups.some((group) =>
+          group.ferrules.some((f) => f.tunnel === jacket.lanes[0]?.tunnel && f.end === end),
+        ),
+      );
+      const upright = ring?.side === 'top' || ring?.side === 'bottom';
       const axis = upright ? 'x' : 'y';
       const byFerrule = [...tails].sort((p, q) => p.from[axis] - q.from[axis]);
       const inOrder = byFerrule.every((t, i) => i === 0 || byFerrule[i - 1]!.to[axis] < t.to[axis]);

@@ -88,6 +88,9 @@ describe.each(Object.entries(designs))('%s, tidied', (name, make) => {
   it('lays no cable on another', () => expect(coveredCables(geometry)).toEqual([]));
   it('lands every WAN cable in its band', () => expect(missedLandings(geometry, design)).toEqual([]));
   it('keeps words free of everything', () => expect(coveredWords(geometry)).toEqual([]));
+  it('has room for the words of its bands inside them', () => {
+    for (const band of geometry.bands) expect(['in', 'turned']).toContain(band.text.mode);
+  });
   it('comes out the same with every list reversed', () => {
     const turned = tidied(reversed(make()));
     expect(turned.layout).toEqual(design.layout);
@@ -102,6 +105,17 @@ describe.each(Object.entries(designs))('%s, tidied', (name, make) => {
 it('a mesh of 4 crosses at most twice', () => {
   const geometry = route(tidied(meshDesign(4, two)));
   expect(geometry.jackets.flatMap((jacket) => jacket.crossings).length).toBeLessThanOrEqual(2);
+});
+
+it('words stand upright in the usual designs', () => {
+  for (const design of [
+    pairDesign(two),
+    hubDesign(3, two),
+    chainDesign(5, two),
+    meshDesign(4, two),
+    ferriesDesign(),
+  ])
+    for (const band of route(tidied(design)).bands) expect(band.text.mode).toBe('in');
 });
 
 it('a chain has no crossing', () => {
