@@ -177,11 +177,13 @@ const wholeJacket = (
             stroke(jacket.path, 'jacket', width, 'body'),
           ]),
       ...lanes.filter((lane) => lane.dimmed && quiet).map((lane) => undim(tracer(lane, jacket, look))),
+      // Faded together with the jacket, so that it doesn't show through its own cuffs.
+      quiet && group(cuffs(jacket, look), { key: 'cuffs' }),
     ],
     {
       key: 'jacket',
       data: { ref, part: 'jacket' },
-      ...opacityAttrs(hidden ? hiddenOpacity : quiet || tones.includes('dimmed') ? dimmedOpacity : undefined),
+      ...opacityAttrs(opacity),
     },
   );
   return [
@@ -190,7 +192,7 @@ const wholeJacket = (
     ...lanes
       .map((lane) => cutOpening(jacket, lane.lane, geometry, look))
       .filter((part) => part !== undefined),
-    group(cuffs(jacket, look), { key: 'cuffs', ...opacityAttrs(opacity) }),
+    ...(quiet ? [] : [group(cuffs(jacket, look), { key: 'cuffs' })]),
   ];
 };
 
