@@ -8,7 +8,7 @@ const noteSize = 14;
 const lineHeight = 19;
 const headHeight = 26;
 const numberWidth = 18;
-const widths = [460, 380, 300, 240] as const;
+const widths = [530, 460, 380, 300, 240] as const;
 const pinnedWidth = 220;
 
 export interface NotePlace {
