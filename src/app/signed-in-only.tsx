@@ -1,13 +1,14 @@
-import { useQuery } from '@tanstack/react-query';
+import { useQuery, useQueryClient } from '@tanstack/react-query';
 import { Navigate, Outlet, useLocation } from 'react-router-dom';
 import { Button } from '../components/button.tsx';
 import { ErrorNotice } from '../components/notice.tsx';
 import { signInPath } from '../lib/return-path.ts';
-import { sessionQuery } from '../lib/session.ts';
+import { hasLeft, sessionQuery } from '../lib/session.ts';
 
 /** Shows what is inside to people who are signed in, and leads everybody else to the sign-in and back. */
 export function SignedInOnly() {
   const { data: session, error, refetch, isFetching } = useQuery(sessionQuery);
+  const queryClient = useQueryClient();
   const { pathname, search, hash } = useLocation();
   if (session === undefined && error !== null) {
     return (
@@ -25,6 +26,9 @@ export function SignedInOnly() {
     );
   }
   if (session === undefined) return null;
-  if (session.person === null) return <Navigate to={signInPath(`${pathname}${search}${hash}`)} replace />;
+  if (session.person === null) {
+    const back = hasLeft(queryClient) ? '/' : `${pathname}${search}${hash}`;
+    return <Navigate to={signInPath(back)} replace />;
+  }
   return <Outlet />;
 }

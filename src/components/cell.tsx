@@ -142,6 +142,10 @@ interface FieldIds {
   readonly describedBy: string | undefined;
 }
 
+/** Presses on words and signs beside a control fall through to the label behind them. */
+const throughToLabel =
+  'pointer-events-none relative z-1 [&_a]:pointer-events-auto [&_button]:pointer-events-auto [&_input]:pointer-events-auto [&_select]:pointer-events-auto [&_textarea]:pointer-events-auto';
+
 /** The frame of a cell that can be typed into or chosen in: label, value, and what is wrong beneath. */
 export function FieldCell({
   label,
@@ -183,9 +187,18 @@ export function FieldCell({
           <CellLabel label={label} place={place} />
         </span>
       ) : (
-        <CellLabel label={label} place={place} />
+        // Spread over the whole cell, which therefore takes a press for its control.
+        <label htmlFor={id} className="after:absolute after:inset-0">
+          <CellLabel label={label} place={place} />
+        </label>
       )}
-      <span className={classNames('flex min-h-18 items-center gap-8', alignRight && 'justify-end')}>
+      <span
+        className={classNames(
+          'flex min-h-18 items-center gap-8',
+          !group && throughToLabel,
+          alignRight && 'justify-end',
+        )}
+      >
         {children({ id, describedBy })}
         {after}
       </span>
@@ -202,22 +215,16 @@ export function FieldCell({
   );
   return (
     <>
-      {group ? (
-        <div
-          role="group"
-          aria-labelledby={`${id}-label`}
-          aria-describedby={describedBy}
-          title={marked?.sentence}
-          style={spanStyle(span)}
-          className={look}
-        >
-          {content}
-        </div>
-      ) : (
-        <label htmlFor={id} title={marked?.sentence} style={spanStyle(span)} className={look}>
-          {content}
-        </label>
-      )}
+      <div
+        {...(group
+          ? { role: 'group', 'aria-labelledby': `${id}-label`, 'aria-describedby': describedBy }
+          : {})}
+        title={marked?.sentence}
+        style={spanStyle(span)}
+        className={look}
+      >
+        {content}
+      </div>
       {marked !== undefined && (
         <span id={markId} hidden>
           {marked.sentence}

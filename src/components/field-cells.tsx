@@ -172,7 +172,8 @@ export function SelectCell<Value extends string>({
           }}
           className={classNames(
             bareInput,
-            'appearance-none text-ellipsis [&_option]:bg-field [&_option]:text-ink',
+            // As wide as the sign after it, too, which then opens it.
+            '-mr-22 appearance-none pr-22 text-ellipsis [&_option]:bg-field [&_option]:text-ink',
             cell.alignRight && '[text-align-last:right]',
             cell.marked ? markInks[cell.marked.severity] : value === '' && 'text-ink-3',
           )}

@@ -1,4 +1,4 @@
-import { queryOptions, useQuery, useQueryClient, useMutation } from '@tanstack/react-query';
+import { queryOptions, useMutation, useQuery, useQueryClient, type QueryClient } from '@tanstack/react-query';
 import type { Action, Membership, Role, Session, SignIn } from '../contract/session.ts';
 import { callApiForNothing, fetchSession } from './api-client.ts';
 import { rememberedWorkspace } from './workspace-path.ts';
@@ -8,6 +8,14 @@ export const sessionQuery = queryOptions({
   queryFn: ({ signal }) => fetchSession(signal),
   staleTime: Infinity,
 });
+
+const leftKey = ['left'];
+
+/**
+ * Whether the reader has signed out. Whoever signs in next has then nothing to do with where this reader was; a session
+ * that merely ended leads back there.
+ */
+export const hasLeft = (queryClient: QueryClient): boolean => queryClient.getQueryData(leftKey) === true;
 
 /** The session once it is known; screens behind the sign-in can rely on it. */
 export function useSession(): Session | undefined {
@@ -50,10 +58,15 @@ export function useDemoSignIn() {
 }
 
 export function useSignOut() {
+  const queryClient = useQueryClient();
   const takeOver = useTakeOver();
   return useMutation({
     mutationFn: () => callApiForNothing('/api/session', { method: 'DELETE' }),
-    onSuccess: takeOver,
+    onSuccess: () => {
+      const taken = takeOver();
+      queryClient.setQueryData(leftKey, true);
+      return taken;
+    },
   });
 }
 

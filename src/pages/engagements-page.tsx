@@ -19,6 +19,7 @@ import { StateFilter } from '../features/engagements/state-filter.tsx';
 import { useArchiving } from '../features/engagements/use-archiving.ts';
 import { usePageTitle } from '../lib/page-title.ts';
 import { may, useMembership } from '../lib/session.ts';
+import { useKeptFocus } from '../lib/use-kept-focus.ts';
 import { useSearchValues } from '../lib/use-search-values.ts';
 import { rememberWorkspace } from '../lib/workspace-path.ts';
 import { NotFoundPage } from './not-found-page.tsx';
@@ -44,6 +45,7 @@ export function EngagementsPage() {
     ...engagementsQuery(workspaceId, showArchived),
     enabled: membership !== undefined,
   });
+  useKeptFocus(data);
   useEffect(() => {
     if (membership !== undefined) rememberWorkspace(workspaceId);
   }, [membership, workspaceId]);

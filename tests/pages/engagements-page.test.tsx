@@ -284,6 +284,22 @@ test('archiving is done at once and can be undone', async () => {
   );
 });
 
+test('when an archived design leaves the list, the keyboard goes on from the start of the page', async () => {
+  let engagements = [ferries];
+  workspaceApi([], undefined, {
+    [`GET /api${path}`]: () => Response.json({ engagements }),
+    'PATCH /api/designs/d-1': () => {
+      engagements = [{ ...ferries, designs: ferries.designs.slice(1) }];
+      return Response.json(designSummary());
+    },
+  });
+  const { user } = renderRoute(path);
+  await ready();
+  await user.click(screen.getByRole('button', { name: 'What to do with Terminals stretch, phase 1' }));
+  await user.click(screen.getByRole('menuitem', { name: 'Archive' }));
+  await waitFor(() => expect(screen.getByRole('main')).toHaveFocus());
+});
+
 test('an archived design offers its way back and nothing that would change it', async () => {
   const archived = engagement({ designs: [designSummary({ archivedAt: '2026-01-01T00:00:00.000Z' })] });
   workspaceApi([archived], ['workspace.read', 'design.read', 'design.edit', 'design.archive']);

@@ -5,7 +5,6 @@ import {
   engagement,
   fakeApi,
   json,
-  nothing,
   refusal,
   sessionOf,
   strangerSession,
@@ -125,14 +124,14 @@ test('a way back that leads elsewhere is not gone', async () => {
 });
 
 test('signing out leads back to the sign-in and forgets what was shown', async () => {
-  signingInApi({ 'DELETE /api/session': nothing });
-  const { user } = renderRoute('/sign-in');
+  signingInApi();
+  const { user, address } = renderRoute('/sign-in');
   await user.click(await screen.findByRole('button', { name: /Rosa Halloran/ }));
   await heading('Engagements');
-  signingInApi();
   await user.click(screen.getByRole('button', { name: 'Account of Rosa Halloran' }));
   await user.click(screen.getByRole('menuitem', { name: 'Sign out' }));
   await heading('Sign in');
+  await waitFor(() => expect(address()).toBe('/sign-in'));
   expect(screen.queryByText('Saltmarsh Ferries')).not.toBeInTheDocument();
 });
 

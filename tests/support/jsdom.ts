@@ -3,7 +3,7 @@ import { cleanup, configure } from '@testing-library/react';
 import { afterEach, vi } from 'vitest';
 
 // Pages load their parts when first gone to; on a busy machine that takes a while.
-configure({ asyncUtilTimeout: 10_000 });
+configure({ asyncUtilTimeout: 4_000 });
 
 afterEach(() => {
   cleanup();

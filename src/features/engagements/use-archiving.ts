@@ -12,12 +12,13 @@ export function useArchiving(): Archiving {
   const engagements = useChangeEngagement();
   const designs = useChangeDesign();
   const say = (title: string, archived: boolean, back: () => void) => ({
-    onSuccess: () =>
-      void showToast({
+    onSuccess: () => {
+      showToast({
         tone: 'done',
         text: archived ? `${title} is in the archive.` : `${title} is back.`,
         action: { label: 'Undo', onSelect: back },
-      }),
+      });
+    },
     onError: (error: Error) =>
       void showToast({
         tone: 'failed',

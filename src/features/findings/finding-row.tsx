@@ -48,7 +48,7 @@ export function FindingRow({
           aria-controls={open ? detailsId : undefined}
           onClick={onPress}
           className={classNames(
-            'grid min-w-0 flex-1 grid-cols-[24px_86px_minmax(0,1fr)_minmax(0,148px)_72px_16px] items-center gap-x-14 py-4 pr-12 pl-12 text-left text-base -outline-offset-2',
+            'grid min-w-0 flex-1 grid-cols-[22px_84px_minmax(0,1fr)_minmax(0,122px)_56px_13px] items-center gap-x-12 py-4 pr-10 pl-12 text-left text-base -outline-offset-2',
             'max-md:grid-cols-[24px_86px_minmax(0,1fr)_16px] max-md:py-8',
             !selected && 'hover:bg-hover',
           )}
