@@ -43,6 +43,8 @@ export default defineConfig({
           fileParallelism: false,
           testTimeout: 90_000,
           hookTimeout: 120_000,
+          // What a person would wait for, on a machine that is busy.
+          expect: { poll: { timeout: 10_000 } },
         },
       },
     ],

@@ -89,6 +89,8 @@ export function FindDialog() {
   return searching ? <OpenFindDialog /> : null;
 }
 
+const focusAtOnce = (input: HTMLInputElement | null): void => input?.focus();
+
 function OpenFindDialog() {
   const open = useOpenDesign();
   const design = useOpenState((state) => state.document);
@@ -124,7 +126,7 @@ function OpenFindDialog() {
         aria-activedescendant={found.length > 0 ? `find-${chosen}` : undefined}
         aria-label="Name, address, VNI or VLAN"
         placeholder="Name, address, VNI or VLAN"
-        autoFocus
+        ref={focusAtOnce}
         className="w-full border border-rule-strong bg-field px-10 py-8 text-value"
         value={text}
         onChange={(event) => {
@@ -135,6 +137,8 @@ function OpenFindDialog() {
       />
       <ul id="find-results" role="listbox" aria-label="Found" className="mt-8 max-h-320 overflow-y-auto">
         {found.map((one, i) => (
+          // The text field keeps the focus and takes the keys, as a combobox's does.
+          // eslint-disable-next-line jsx-a11y/click-events-have-key-events
           <li
             key={`${one.ref.collection} ${one.ref.id}`}
             id={`find-${i}`}

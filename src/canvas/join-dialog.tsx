@@ -5,6 +5,8 @@ import { Dialog } from '../components/dialog.tsx';
 import { NumberCell, SelectCell } from '../components/field-cells.tsx';
 import type { Design } from '../engine/model/design.ts';
 import { isGateway } from '../engine/model/devices.ts';
+import { associationPath } from '../engine/network/association-path.ts';
+import { indexNetwork } from '../engine/network/index-network.ts';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
 import { linksIn } from '../workspace/operations/connect-ports.ts';
 import { freeVni } from '../workspace/operations/free-names.ts';
@@ -12,7 +14,9 @@ import {
   associateGateways,
   associationsBetween,
   joinEndpoints,
+  likelyTransport,
   mayGoBare,
+  sharedTransports,
   whyNoTunnel,
 } from '../workspace/operations/join-endpoints.ts';
 import type { Operation } from '../workspace/operations/operation.ts';
@@ -102,6 +106,11 @@ const endFrom = (kind: JoinRequest['kind'], side: 'a' | 'b', value: string): Con
   };
 };
 
+const runsOver = (design: Design, association: string, transport: string): boolean => {
+  const path = associationPath(indexNetwork(design), association);
+  return path.ok && path.transport === transport;
+};
+
 function OpenJoinDialog({ request }: { readonly request: JoinRequest }) {
   const open = useOpenDesign();
   const design = useOpenState((state) => state.document);
@@ -113,13 +122,23 @@ function OpenJoinDialog({ request }: { readonly request: JoinRequest }) {
     Object.entries(design.segments).length === 1 ? Object.keys(design.segments)[0]! : '',
   );
   const [chosen, setChosen] = useState<string>('');
+  const [chosenTransport, setChosenTransport] = useState<string>('');
   const [problem, setProblem] = useState<string>();
 
   const both = a !== '' && b !== '';
   const existing = kind === 'tunnel' && both ? associationsBetween(design, a, b) : [];
-  const bare =
-    kind === 'tunnel' && both && whyNoTunnel(design, a, b) === undefined && mayGoBare(design, a, b);
-  const offered = existing[0] ?? (bare ? 'none' : 'new');
+  const joinable = kind === 'tunnel' && both && whyNoTunnel(design, a, b) === undefined;
+  const shared = joinable
+    ? sharedTransports(design, design.endpoints[a]!.device, design.endpoints[b]!.device)
+    : [];
+  const transport = shared.includes(chosenTransport)
+    ? chosenTransport
+    : joinable
+      ? likelyTransport(design, a, b)
+      : undefined;
+  const bare = mayGoBare(design, transport);
+  const fitting = existing.find((id) => transport === undefined || runsOver(design, id, transport));
+  const offered = fitting ?? (bare ? 'none' : 'new');
   const association = chosen === '' ? offered : chosen;
 
   const operation = (): Operation => {
@@ -129,7 +148,14 @@ function OpenJoinDialog({ request }: { readonly request: JoinRequest }) {
         return { ok: false, why: 'VNI is empty. Type a whole number from 0 to 16777215.' };
       return joinEndpoints(
         design,
-        { a, b, vni, association, ...(segment === '' ? {} : { segment }) },
+        {
+          a,
+          b,
+          vni,
+          association,
+          ...(transport === undefined ? {} : { transport }),
+          ...(segment === '' ? {} : { segment }),
+        },
         newEntryId,
       );
     }
@@ -211,8 +237,14 @@ function OpenJoinDialog({ request }: { readonly request: JoinRequest }) {
               placeholder="Nothing yet"
             />
             <SelectCell
+              label="Over"
+              value={transport ?? ''}
+              options={shared.map((id) => ({ value: id, label: design.transports[id]!.name }))}
+              onChange={setChosenTransport}
+              placeholder="No transport in common yet"
+            />
+            <SelectCell
               label="Protected by"
-              span={2}
               value={association}
               options={[
                 ...existing.map((id) => ({ value: id, label: design.associations[id]!.name })),

@@ -14,6 +14,7 @@ import {
   useEffect,
   useMemo,
   useRef,
+  useState,
   type DragEvent,
   type KeyboardEvent,
   type MouseEvent,
@@ -54,11 +55,11 @@ const keyQuietMs = 400;
 // Below this many parts drawing them all is cheaper than deciding which are in view.
 const cullFrom = 400;
 
-const useLevel = (): Level => {
-  const last = useRef<Level | undefined>(undefined);
-  const level = useStore((state) => levelOf(state.transform[2], last.current));
-  last.current = level;
-  return level;
+const useLevel = (zoom: number): Level => {
+  const [level, setLevel] = useState(() => levelOf(zoom));
+  const next = levelOf(zoom, level);
+  if (next !== level) setLevel(next);
+  return next;
 };
 
 const tonesWith = (decorations: Decorations, selection: readonly ElementRef[]): Decorations => {
@@ -77,7 +78,7 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
   const { geometry, settled, facts, drag, setDrag, shown } = useDrawn();
   const flow = useReactFlow<FlowNode, FlowEdge>();
   const view = useView();
-  const level = useLevel();
+  const level = useLevel(view.zoom);
   const tool = useDesk((state) => state.tool);
   const placing = useDesk((state) => state.placing);
   const firstEnd = useDesk((state) => state.firstEnd);
@@ -272,6 +273,8 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
   const hint = placing === undefined ? undefined : placingHint(placing, firstEnd !== undefined);
   return (
     <DrawingContext value={drawing}>
+      {/* The parts inside take focus and keys themselves; this only catches what passes through. */}
+      {/* eslint-disable-next-line jsx-a11y/no-static-element-interactions */}
       <div
         className="sheet-canvas"
         data-placing={placing}

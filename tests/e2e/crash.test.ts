@@ -7,8 +7,7 @@ import { ensureWritableFolder, stateFolder } from '../../server/bootstrap/folder
 import { freeLoopbackPort } from '../../server/bootstrap/free-port.mjs';
 import { acquireCluster } from '../../server/bootstrap/postgres-cluster.mjs';
 import { clusterFolder } from '../../server/bootstrap/postgres-folder.mjs';
-import { withoutPostgresVariables } from '../../server/bootstrap/postgres-programs.mjs';
-import { postgresUser } from '../../server/bootstrap/postgres-programs.mjs';
+import { postgresUser, withoutPostgresVariables } from '../../server/bootstrap/postgres-programs.mjs';
 import { migrate, seedDemo } from '../../server/bootstrap/schema.mjs';
 
 const name = `crash-${process.pid}`;

@@ -7,13 +7,17 @@ import { sourceText } from '../../engine/rules/rule-reference.ts';
 import { nameOf } from '../../workspace/operations/name-of.ts';
 import type { FindingItem } from './finding-item.ts';
 
-// More names than this don't fit a row; the rest is counted.
-const namesShown = 3;
+// What a row has room for; names beyond it are counted.
+const lettersShown = 22;
 
 const elementsOf = (design: Design, finding: Finding): string => {
-  const names = [...new Set(finding.elements.map((ref) => nameOf(design, ref)))];
-  const shown = names.slice(0, namesShown).join(', ');
-  return names.length > namesShown ? `${shown} and ${names.length - namesShown} more` : shown;
+  const [first = '', ...others] = new Set(finding.elements.map((ref) => nameOf(design, ref)));
+  let text = first;
+  for (const [i, name] of others.entries()) {
+    if (text.length + name.length + 2 > lettersShown) return `${text} and ${others.length - i} more`;
+    text += `, ${name}`;
+  }
+  return text;
 };
 
 /** The zones of the sheet that a finding's elements lie in: one, or the first and the last. */

@@ -2,9 +2,11 @@ import type { DeepReadonly, Design } from '../../engine/model/design.ts';
 import type { Device, Member, Port } from '../../engine/model/devices.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { joinPatches } from '../../engine/model/merge-patch.ts';
+import { rankAtEnd } from '../../engine/model/rank.ts';
 import type { Plug } from '../../engine/model/underlay.ts';
 import type { NewId, Operation } from './operation.ts';
 import { refused } from './operation.ts';
+import { isUnclaimed, segmentBridge } from './segment-bridge.ts';
 
 /** One end of a cable that somebody pulls: a pip, or a device's body, which stands for its first fitting free port. */
 export interface PullEnd {
@@ -129,25 +131,34 @@ export const whyNoCable = (design: Design, a: PullEnd, b: PullEnd): string | und
   return undefined;
 };
 
-/** The VLAN that a switch's access port should have for the host that is plugged into it; undefined when nothing says so. */
-const accessVlan = (
-  design: Design,
-  host: DeepReadonly<Device>,
-  other: DeepReadonly<Device>,
-  port: DeepReadonly<Port> | undefined,
-): number | undefined => {
-  if (
-    host.kind !== 'host' ||
-    other.kind !== 'switch' ||
-    host.segment === undefined ||
-    port?.vlan !== undefined ||
-    port?.mode === 'trunk'
-  )
-    return undefined;
-  return design.segments[host.segment]?.sites[other.site]?.vlan;
+/**
+ * What a host needs of the port that it is plugged into, where nothing says otherwise yet: its segment's VLAN on a
+ * switch's access port, a place in its segment's bridge on a gateway.
+ */
+const setUpFor = (design: Design, host: DeepReadonly<Device>, plug: Plug): MergePatch => {
+  const other = design.devices[plug.device]!;
+  const port = other.ports[plug.port];
+  if (host.kind !== 'host' || host.segment === undefined) return {};
+  if (other.kind === 'switch') {
+    const vlan = design.segments[host.segment]?.sites[other.site]?.vlan;
+    if (vlan === undefined || port?.vlan !== undefined || port?.mode === 'trunk') return {};
+    return { devices: { [plug.device]: { ports: { [plug.port]: { mode: 'access', vlan } } } } };
+  }
+  const bridge = segmentBridge(design, plug.device, host.segment);
+  if (bridge === undefined || !isUnclaimed(design, plug.device, plug.port)) return {};
+  const circuit = {
+    kind: 'port',
+    rank: rankAtEnd(design.forwarders[bridge]!.circuits),
+    port: plug.port,
+    vlans: 'untagged',
+  };
+  return {
+    devices: { [plug.device]: { ports: { [plug.port]: { mode: 'access', allowedVlans: null } } } },
+    forwarders: { [bridge]: { circuits: { [`host-${plug.port}`]: circuit } } },
+  };
 };
 
-/** A cable between two pips or bodies. A host's segment gives the switch's access port its VLAN where it has none yet. */
+/** A cable between two pips or bodies; the port that a host goes into is set up for it. */
 export const pullCable = (design: Design, a: PullEnd, b: PullEnd, newId: NewId): Operation => {
   const why = whyNoCable(design, a, b);
   if (why !== undefined) return refused(why);
@@ -155,24 +166,16 @@ export const pullCable = (design: Design, a: PullEnd, b: PullEnd, newId: NewId):
   const endA = plugFor(design, a, deviceB, newId);
   const endB = plugFor(design, b, deviceA, newId);
   const id = newId('cb');
-  const patches: MergePatch[] = [
-    endA.patch,
-    endB.patch,
-    { links: { [id]: { kind: 'cable', a: { ...endA.plug }, b: { ...endB.plug } } } },
-  ];
-  for (const [host, other, plug] of [
-    [deviceA, deviceB, endB.plug],
-    [deviceB, deviceA, endA.plug],
-  ] as const) {
-    const vlan = accessVlan(design, host, other, other.ports[plug.port]);
-    if (vlan !== undefined)
-      patches.push({ devices: { [plug.device]: { ports: { [plug.port]: { mode: 'access', vlan } } } } });
-  }
-  const patch = joinPatches(design, patches);
   return {
     ok: true,
     label: `Cable ${deviceA.name} to ${deviceB.name}`,
-    patch,
+    patch: joinPatches(design, [
+      endA.patch,
+      endB.patch,
+      { links: { [id]: { kind: 'cable', a: { ...endA.plug }, b: { ...endB.plug } } } },
+      setUpFor(design, deviceA, endB.plug),
+      setUpFor(design, deviceB, endA.plug),
+    ]),
     created: [{ collection: 'links', id }],
   };
 };

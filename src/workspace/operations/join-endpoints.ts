@@ -2,11 +2,14 @@ import type { DeepReadonly, Design, Entry } from '../../engine/model/design.ts';
 import { isGateway } from '../../engine/model/devices.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { joinPatches } from '../../engine/model/merge-patch.ts';
-import type { AssociationEnd, Circuit, Endpoint, Forwarder } from '../../engine/model/overlay.ts';
+import type { AssociationEnd, Endpoint, Forwarder } from '../../engine/model/overlay.ts';
 import { firstRanks, inRankOrder, rankAtEnd } from '../../engine/model/rank.ts';
 import type { Landing } from '../../engine/model/underlay.ts';
+import { tunnelPath } from '../../engine/network/association-path.ts';
+import { indexNetwork } from '../../engine/network/index-network.ts';
 import { freeName } from './free-names.ts';
 import { linksIn } from './connect-ports.ts';
+import { segmentBridge } from './segment-bridge.ts';
 import type { NewId, Operation } from './operation.ts';
 import { refused } from './operation.ts';
 
@@ -16,6 +19,8 @@ export interface JoinChoice {
   readonly vni: number;
   /** The association that is to protect the tunnel, `new` to make one, `none` for a bare tunnel. */
   readonly association: string | 'new' | 'none';
+  /** The transport that a new association, or a bare tunnel, is to run over; every shared one where absent. */
+  readonly transport?: string;
   /** The segment that the tunnel is to carry: it is joined to that segment's bridge at both ends. */
   readonly segment?: string;
 }
@@ -66,11 +71,27 @@ export const associationsBetween = (design: Design, a: string, b: string): reado
     .sort();
 };
 
-/** True when a tunnel between the endpoints would cross only transports that are trusted. */
-export const mayGoBare = (design: Design, a: string, b: string): boolean => {
-  const shared = sharedTransports(design, design.endpoints[a]!.device, design.endpoints[b]!.device);
-  return shared.length > 0 && shared.every((id) => design.transports[id]!.trusted === true);
+/**
+ * The transport that a further tunnel between two endpoints most likely runs over: the one that a tunnel of theirs uses
+ * already, else the first that their devices share.
+ */
+export const likelyTransport = (design: Design, a: string, b: string): string | undefined => {
+  const [endA, endB] = [design.endpoints[a], design.endpoints[b]];
+  if (endA === undefined || endB === undefined) return undefined;
+  const shared = sharedTransports(design, endA.device, endB.device);
+  const network = indexNetwork(design);
+  const used = Object.entries(design.tunnels)
+    .filter(([, tunnel]) =>
+      [tunnel.a.endpoint, tunnel.b.endpoint].some((endpoint) => endpoint === a || endpoint === b),
+    )
+    .map(([id]) => tunnelPath(network, id))
+    .flatMap((path) => (path.ok ? [path.transport] : []));
+  return used.find((transport) => shared.includes(transport)) ?? shared[0];
 };
+
+/** True when a tunnel over the transport needs no protection of its own. */
+export const mayGoBare = (design: Design, transport: string | undefined): boolean =>
+  transport !== undefined && design.transports[transport]?.trusted === true;
 
 const sameFamily = (a: DeepReadonly<Endpoint>, b: DeepReadonly<Endpoint>): 4 | 6 =>
   a.ipv4 !== undefined && b.ipv4 !== undefined ? 4 : 6;
@@ -118,9 +139,9 @@ const newAssociation = (
   design: Design,
   deviceA: string,
   deviceB: string,
+  over: readonly string[],
   endpoints?: Ends,
 ): Entry<'associations'> => {
-  const shared = sharedTransports(design, deviceA, deviceB);
   const rank = firstRanks(1)[0]!;
   const family = endpoints === undefined ? undefined : sameFamily(...endpoints);
   const selectorsOf = (own: 0 | 1): Pick<AssociationEnd, 'selectors'> =>
@@ -146,13 +167,13 @@ const newAssociation = (
     ),
     a: {
       device: deviceA,
-      via: viaOf(design, deviceA, shared),
+      via: viaOf(design, deviceA, over),
       ...usualEnd(aStarts ? 'starts' : 'answers'),
       ...selectorsOf(0),
     },
     b: {
       device: deviceB,
-      via: viaOf(design, deviceB, shared),
+      via: viaOf(design, deviceB, over),
       ...usualEnd(bStarts ? 'starts' : 'answers'),
       ...selectorsOf(1),
     },
@@ -170,7 +191,7 @@ export const associateGateways = (design: Design, a: string, b: string, newId: N
         `${device.name} is a ${device.kind}: an association joins firewalls, HA pairs or routers.`,
       );
   const id = newId('as');
-  const association = newAssociation(design, a, b);
+  const association = newAssociation(design, a, b, sharedTransports(design, a, b));
   return {
     ok: true,
     label: `Associate ${deviceA.name} with ${deviceB.name}`,
@@ -189,15 +210,8 @@ const bridgeFor = (
   const site = design.devices[device]!.site;
   const plan = design.segments[segment]!;
   const vlan = plan.sites[site]?.vlan;
-  const takes = (circuit: DeepReadonly<Circuit>): boolean =>
-    circuit.kind === 'port' &&
-    (vlan === undefined
-      ? circuit.vlans === 'untagged'
-      : Array.isArray(circuit.vlans) && circuit.vlans.includes(vlan));
-  const found = Object.entries(design.forwarders)
-    .filter(([, forwarder]) => forwarder.device === device && Object.values(forwarder.circuits).some(takes))
-    .sort(([a], [b]) => (a < b ? -1 : 1))[0];
-  if (found !== undefined) return { id: found[0] };
+  const found = segmentBridge(design, device, segment);
+  if (found !== undefined) return { id: found };
   const ports = Object.entries(design.devices[device]!.ports)
     .filter(([, port]) => port.role === 'lan')
     .sort(
@@ -258,13 +272,14 @@ export const joinEndpoints = (design: Design, choice: JoinChoice, newId: NewId):
   if (why !== undefined) return refused(why);
   const [endA, endB] = [design.endpoints[choice.a]!, design.endpoints[choice.b]!];
   const family = sameFamily(endA, endB);
-  const shared = sharedTransports(design, endA.device, endB.device);
+  const over =
+    choice.transport === undefined ? sharedTransports(design, endA.device, endB.device) : [choice.transport];
   const patches: MergePatch[] = [];
   let association: string | undefined;
   if (choice.association === 'new') {
     association = newId('as');
     patches.push({
-      associations: { [association]: newAssociation(design, endA.device, endB.device, [endA, endB]) },
+      associations: { [association]: newAssociation(design, endA.device, endB.device, over, [endA, endB]) },
     } as unknown as MergePatch);
   } else if (choice.association !== 'none') {
     if (!associationsBetween(design, choice.a, choice.b).includes(choice.association))
@@ -279,7 +294,7 @@ export const joinEndpoints = (design: Design, choice: JoinChoice, newId: NewId):
     udpPort: 4789,
     outerDf: 'set',
     innerTags: 'strip',
-    ...(association === undefined ? { via: viaOf(design, device, shared) } : {}),
+    ...(association === undefined ? { via: viaOf(design, device, over) } : {}),
   });
   const letter =
     choice.segment === undefined ? undefined : design.segments[choice.segment]?.letter.toLowerCase();

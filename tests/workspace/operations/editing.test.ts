@@ -16,6 +16,7 @@ import {
 import {
   associationsBetween,
   joinEndpoints,
+  likelyTransport,
   mayGoBare,
 } from '../../../src/workspace/operations/join-endpoints.ts';
 import type { Standing } from '../../../src/workspace/operations/move-parts.ts';
@@ -84,7 +85,8 @@ describe('drawing a two-site overlay from nothing', () => {
     }
     const a = step(placeEndpoint(design, pair, newId));
     const b = step(placeEndpoint(design, wall, newId));
-    expect(mayGoBare(design, a, b)).toBe(false);
+    expect(likelyTransport(design, a, b)).toBe(coast);
+    expect(mayGoBare(design, coast)).toBe(false);
     const tunnel = step(
       joinEndpoints(design, { a, b, vni: freeVni(design), association: 'new', segment }, newId),
     );
@@ -169,6 +171,23 @@ describe('a refused connection says why', () => {
         (link) => link.kind === 'cable' && link.a.device === 'sw-s0' && link.b.device === 'sw-s1',
       ),
     ).toHaveLength(1);
+  });
+});
+
+describe('a host plugged into a gateway', () => {
+  it("gets a place in its segment's bridge, untagged", () => {
+    const design = pairDesign();
+    const loose = done(design, removeElements(design, [{ collection: 'links', id: 'cb-h-s0-a' }]));
+    const after = done(
+      loose,
+      pullCable(loose, { device: 'h-s0-a' }, { device: 'fw-s0', port: 'lan2' }, counter()),
+    );
+    expect(after.forwarders['br-s0-a']!.circuits['host-lan2']).toMatchObject({
+      kind: 'port',
+      port: 'lan2',
+      vlans: 'untagged',
+    });
+    expect(after.devices['fw-s0']!.ports.lan2).toMatchObject({ mode: 'access' });
   });
 });
 
