@@ -45,8 +45,10 @@ const partValue = (part: ProposalPart, proposal: IkeProposal | EspProposal): str
 };
 
 /** The differing part as a button names it. */
-const buttonValue = (part: ProposalPart, proposal: IkeProposal | EspProposal): string =>
-  part === 'group' ? `group ${partValue(part, proposal)}` : partValue(part, proposal);
+const buttonValue = (part: ProposalPart, proposal: IkeProposal | EspProposal): string => {
+  if (part === 'group') return `group ${partValue(part, proposal)}`;
+  return part === 'key length' ? `${proposal.keyBits ?? 'any'}-bit keys` : partValue(part, proposal);
+};
 
 const valuesAt = (association: Association, end: End, layer: Layer, part: ProposalPart): string =>
   [...new Set(proposalsOf(association, end, layer).map(([, proposal]) => partValue(part, proposal)))].join(

@@ -91,7 +91,11 @@ export const endpointAddressDuplicate = defineRule({
     const shared = fault.basis as readonly string[];
     const ids = fault.elements.map(({ id }) => id);
     if (ids.length === 2) {
-      const moves = ids.map((id) => ({ id, ...moveOff(network, [id], shared) }));
+      const tunnelCount = (id: string): number => (network.tunnelsByEndpoint.get(id) ?? []).length;
+      // The endpoint with fewer tunnels first: less has to be changed with it.
+      const moves = [...ids]
+        .sort((x, y) => tunnelCount(x) - tunnelCount(y))
+        .map((id) => ({ id, ...moveOff(network, [id], shared) }));
       // Where selectors still name the right address of one, moving the other would build on the slip.
       const named = moves.filter(({ isNamed }) => isNamed);
       return (named.length > 0 ? named : moves).map(({ id, patch, addresses, isNamed }) => ({

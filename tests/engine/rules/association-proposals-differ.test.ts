@@ -67,7 +67,7 @@ testRule(associationProposalsDiffer, {
       findings: [
         {
           sentence: 'ESP key length 128 bits at Head office, 256 bits at Gullhaven',
-          fixes: ['Add 256 bits at Head office', 'Add 128 bits at Gullhaven'],
+          fixes: ['Add 256-bit keys at Head office', 'Add 128-bit keys at Gullhaven'],
         },
         {
           sentence: 'IKE pseudorandom function and group have nothing in common at Head office and Gullhaven',

@@ -44,6 +44,17 @@ testRule(endpointAddressDuplicate, {
         },
       ],
     },
+    'a spare endpoint with the address of one in use, and offers to move the spare one first': {
+      design: changed(pairDesign(), {
+        endpoints: { spare: { device: 'fw-s1', name: 'lo-spare', ipv4: '10.255.0.1/32' } },
+      }),
+      findings: [
+        {
+          sentence: 'lo-s0 on fw-s0 and lo-spare on fw-s1 both have 10.255.0.1',
+          fixes: ['Set lo-spare to 10.255.0.3', 'Set lo-s0 to 10.255.0.3'],
+        },
+      ],
+    },
     'one address at three endpoints': {
       design: changed(hubDesign(2), address('lo-s1', '10.255.0.1/32'), address('lo-s2', '10.255.0.1/32')),
       findings: [
