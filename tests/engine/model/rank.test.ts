@@ -28,6 +28,23 @@ describe('ranks', () => {
     expect(rankBetween('a1', 'a1') > 'a1').toBe(true);
   });
 
+  it('find a place beside any text that the schema lets through', () => {
+    const text = fc.stringMatching(/^[0-9A-Za-z]{1,6}$/);
+    fc.assert(
+      fc.property(
+        fc.option(text, { nil: undefined }),
+        fc.option(text, { nil: undefined }),
+        (before, after) => {
+          const rank = rankBetween(before, after);
+          expect(rankSchema.safeParse(rank).success).toBe(true);
+          if (before !== undefined) expect(rank > before).toBe(true);
+          else if (after !== undefined && after !== '0') expect(rank < after).toBe(true);
+        },
+      ),
+    );
+    expect(rankBetween('z1', 'z2') < 'z2').toBe(true);
+  });
+
   it('order a map by rank, then by id', () => {
     const map = { x: { rank: 'a1' }, b: { rank: 'a0' }, a: { rank: 'a1' } };
     expect(inRankOrder(map).map(([id]) => id)).toEqual(['b', 'a', 'x']);
