@@ -18,6 +18,7 @@ import { healthRoutes } from './routes/health-routes.ts';
 import { sessionRoutes } from './routes/session-routes.ts';
 import type { Context } from './services/context.ts';
 import { createDocumentCache } from './services/stored-documents.ts';
+import { createThumbnailCache } from './services/thumbnails.ts';
 
 export interface AppOptions {
   readonly database: Database;
@@ -37,7 +38,12 @@ export function createApp({
   log = pino({ level: 'silent' }),
   clientFolder = builtClient,
 }: AppOptions): Express {
-  const context: Context = { database, clock, documents: createDocumentCache() };
+  const context: Context = {
+    database,
+    clock,
+    documents: createDocumentCache(),
+    thumbnails: createThumbnailCache(),
+  };
   const sessions = createSessions(database, config, (error) => log.error({ err: error }, 'session store'));
   const throttles = createThrottles(database.pool);
 

@@ -14,7 +14,7 @@ export interface Database {
 }
 
 export interface DatabaseOptions {
-  /** Hears of connections that broke while idle and of background work that failed. */
+  /** Hears of connections that failed or broke while idle, and of background work that failed. */
   readonly onError?: (error: unknown) => void;
 }
 
@@ -35,6 +35,8 @@ export function openDatabase(url: string, { onError = () => {} }: DatabaseOption
     acquireConnectionTimeout: 10_000,
     // Values of a failed statement would end up in logs.
     compileSqlOnError: false,
+    // Its own way to the terminal; each failure also reaches whoever asked.
+    log: { warn: onError, error: onError, deprecate: onError, debug: onError },
   });
   const pool = new pg.Pool({ ...connection, max: 5 });
   // Without a listener a connection that breaks while idle would end the process.

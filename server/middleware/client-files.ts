@@ -26,6 +26,7 @@ export function clientFiles(folder: string): Router {
       fallthrough: true,
     }),
     (_req, res) => {
+      noCache(res);
       res.status(404).type('text').send('No such file: the page was built again since. Load it anew.\n');
     },
   );

@@ -1,6 +1,6 @@
 import { Router } from 'express';
 import { z } from 'zod';
-import { changeDesignSchema, savePatchesSchema } from '#contract/designs.ts';
+import { changeDesignSchema, savePatchesSchema, thumbnailThemes } from '#contract/designs.ts';
 import type { MergePatch } from '#engine/model/merge-patch.ts';
 import { requirePerson } from '../auth/sessions.ts';
 import { jsonBody } from '../middleware/json-body.ts';
@@ -8,14 +8,21 @@ import type { Context } from '../services/context.ts';
 import { changeDesign, openDesign } from '../services/designs.ts';
 import { limits } from '../services/limits.ts';
 import { readPatches, saveEdits } from '../services/save-edits.ts';
+import { readThumbnail } from '../services/thumbnails.ts';
 import { mountRoute } from './mount-route.ts';
 import { readBody, readId, readQuery } from './read-request.ts';
 
+const sequenceSchema = z
+  .string()
+  .regex(/^\d{1,9}$/, 'expected a sequence number such as 17')
+  .transform(Number);
 const patchesQuerySchema = z.strictObject({
-  after: z
-    .string('expected the sequence number of the last patch that you have')
-    .regex(/^\d{1,9}$/, 'expected a sequence number such as 17')
-    .transform(Number),
+  after: sequenceSchema,
+});
+
+const thumbnailQuerySchema = z.strictObject({
+  v: sequenceSchema.optional(),
+  theme: z.enum(thumbnailThemes).default('paper'),
 });
 
 /** One design: its document, its log of patches, its place in the list. */
@@ -52,6 +59,17 @@ export function designRoutes(context: Context): Router {
         edits: edits.map(({ editId, patch }) => ({ editId, patch: patch as MergePatch })),
       }),
     );
+  });
+
+  mountRoute(router, 'GET /api/designs/:designId/thumbnail', async (req, res) => {
+    const person = requirePerson(req);
+    const designId = readId(req, 'designId', 'design');
+    const { v, theme } = readQuery(req, thumbnailQuerySchema);
+    const { sequence, svg } = await readThumbnail(context, person.id, designId, theme);
+    res.setHeader('Cache-Control', v === sequence ? 'private, max-age=86400' : 'private, no-cache');
+    // As a page of its own the picture may do nothing at all.
+    res.setHeader('Content-Security-Policy', "default-src 'none'; style-src 'unsafe-inline'; sandbox");
+    res.type('image/svg+xml').send(svg);
   });
 
   return router;

@@ -1,9 +1,11 @@
 import type { Database } from '../db/open-database.ts';
 import type { DocumentCache } from './stored-documents.ts';
+import type { ThumbnailCache } from './thumbnails.ts';
 
 /** What services work with: one per process. */
 export interface Context {
   readonly database: Database;
   readonly clock: () => Date;
   readonly documents: DocumentCache;
+  readonly thumbnails: ThumbnailCache;
 }

@@ -81,6 +81,12 @@ export const changeDesignSchema = z.strictObject({
   archived: z.boolean().optional(),
 });
 
+export const thumbnailThemes = ['paper', 'slate'] as const;
+/**
+ * GET /api/designs/:designId/thumbnail?v=sequence&theme=paper|slate → image/svg+xml of the design as it is now. `v` names the
+ * picture for the browser's cache: with the current sequence number the answer may be kept for a day.
+ */
+
 /** GET /api/designs/:designId */
 export const openDesignSchema = z.object({
   summary: designSummarySchema,

@@ -1,0 +1,128 @@
+import supertest from 'supertest';
+import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
+import { checkAnswerSchema } from '#contract/engine.ts';
+import { applyPatch } from '#engine/model/merge-patch.ts';
+import type { Design } from '#engine/model/design.ts';
+import { runRules } from '#engine/rules/run-rules.ts';
+import { computeWire } from '#engine/wire/compute-wire.ts';
+import { wireRequestSchema } from '#engine/wire/wire-request.ts';
+import { allowances } from '../../../server/auth/throttles.ts';
+import { limits } from '../../../server/services/limits.ts';
+import { pairDesign } from '../../support/designs.ts';
+import type { TestApplication } from '../../support/test-application.ts';
+import { startTestApplication, testConfig } from '../../support/test-application.ts';
+
+let application: TestApplication;
+
+beforeAll(async () => {
+  application = await startTestApplication();
+});
+afterAll(() => application.close());
+beforeEach(() => application.database.knex('rate_limits').delete());
+
+const post = (path: string, body: unknown) =>
+  supertest(application.server).post(path).set('Content-Type', 'application/json').send(JSON.stringify(body));
+
+const faulty = applyPatch(pairDesign(), { tunnels: { 'tn-s0-s1-a': { b: { vni: 10_210 } } } });
+
+function withNotes(count: number): Design {
+  const notes = Object.fromEntries(Array.from({ length: count }, (_, index) => [`n${index}`, { text: 'x' }]));
+  return { ...pairDesign(), notes };
+}
+
+describe('checking a design', () => {
+  test('answers the engine’s findings without a sign-in, a token or a cookie', async () => {
+    const response = await post('/api/engine/check', { design: faulty }).expect(200);
+    const answer = checkAnswerSchema.parse(response.body);
+    expect(answer.findings).toEqual(JSON.parse(JSON.stringify(runRules(faulty))));
+    expect(answer.counts.blocking).toBe(1);
+    expect(answer.engineVersion).toMatch(/^\d+\.\d+\.\d+$/);
+    expect(response.headers['set-cookie']).toBeUndefined();
+  });
+
+  test('adds fixes when they are asked for; each cures its finding', async () => {
+    const response = await post('/api/engine/check', { design: faulty, withFixes: true }).expect(200);
+    const { findings } = checkAnswerSchema.parse(response.body);
+    const mismatch = findings.find(({ rule }) => rule === 'tunnel-vni-mismatch');
+    const fixes = mismatch!['fixes'] as { patch: object }[];
+    expect(fixes.length).toBeGreaterThan(0);
+    const cured = applyPatch(faulty, fixes[0]!.patch as Parameters<typeof applyPatch>[1]);
+    expect(runRules(cured).map(({ rule }) => rule)).not.toContain('tunnel-vni-mismatch');
+  });
+
+  test('names every problem of what is no design', async () => {
+    const design = { ...pairDesign(), sites: { s0: { name: '' } }, extra: 1 };
+    const response = await post('/api/engine/check', { design }).expect(422);
+    const { code, details } = response.body as { code: string; details: { path: string }[] };
+    expect(code).toBe('invalid-design');
+    expect(details.map(({ path }) => path).sort()).toEqual(['design', 'design.sites.s0.name']);
+  });
+
+  test.each([null, 7, 'x', [], {}, { design: null }, { design: [] }, { design: 'x' }, { designs: {} }])(
+    'refuses %j',
+    async (body) => {
+      const response = await post('/api/engine/check', body);
+      expect([400, 422]).toContain(response.status);
+    },
+  );
+
+  test('bounds its work by the number of entries and says so', async () => {
+    const refused = await post('/api/engine/check', { design: withNotes(limits.checkedEntries) }).expect(413);
+    expect(refused.body).toMatchObject({ code: 'too-large' });
+    expect((refused.body as { message: string }).message).toContain(`at most ${limits.checkedEntries}`);
+    const many = withNotes(limits.checkedEntriesWithFixes);
+    await post('/api/engine/check', { design: many, withFixes: true }).expect(413);
+    await post('/api/engine/check', { design: many }).expect(200);
+  });
+
+  test('takes no body above its limit', async () => {
+    const design = { ...pairDesign(), padding: 'x'.repeat(limits.engineBodyBytes) };
+    const response = await post('/api/engine/check', { design }).expect(413);
+    expect(response.body).toMatchObject({ code: 'too-large' });
+  });
+});
+
+describe('computing bytes', () => {
+  const request = { stack: { vxlanOver: 'ipv4' }, innerPacketBytes: 1500 };
+
+  test('answers as the engine does', async () => {
+    const response = await post('/api/engine/wire', request).expect(200);
+    const { ok, ...expected } = computeWire(wireRequestSchema.parse(request));
+    expect(ok).toBe(true);
+    expect(response.body).toEqual({
+      engineVersion: expect.any(String) as string,
+      ...(JSON.parse(JSON.stringify(expected)) as object),
+    });
+    // RFC 7348 section 5: 20 bytes of IPv4, 8 of UDP, 8 of VXLAN around the inner frame's 14 + 1500.
+    expect(response.body).toMatchObject({
+      outward: { totals: { innerPacketBytes: 1500, outerIpPacketBytes: 1550 } },
+    });
+  });
+
+  test.each([
+    [{}, 'stack'],
+    [{ stack: {} }, 'innerPacketBytes'],
+    [{ stack: { vxlanOver: 'ipv5' }, innerPacketBytes: 1500 }, 'stack.vxlanOver'],
+    [{ stack: {}, innerPacketBytes: 1.5 }, 'innerPacketBytes'],
+    [{ stack: {}, innerPacketBytes: 1500, more: 1 }, 'more'],
+  ])('refuses %j and names the field', async (body, path) => {
+    const response = await post('/api/engine/wire', body).expect(400);
+    expect(response.body).toMatchObject({ code: 'invalid-request', details: [{ path }] });
+  });
+});
+
+describe('the throttle on the engine', () => {
+  test('counts by address, and believes a proxy only where there is one', async () => {
+    const { times } = allowances.engineRequest;
+    const behindProxy = await application.another({
+      config: { ...testConfig, publicUrl: 'https://plan.ternwick.example' },
+    });
+    const ask = (address: string, server = application.server) =>
+      supertest(server).post('/api/engine/wire').set('X-Forwarded-For', address).send({});
+    await application.database.knex('rate_limits').delete();
+    for (let count = 0; count < times; count += 1) await ask(`192.0.2.${count % 250}`).expect(400);
+    const refused = await ask('198.51.100.1').expect(429);
+    expect(refused.body).toMatchObject({ code: 'too-many-requests' });
+    await ask('198.51.100.1', behindProxy.server).expect(400);
+  });
+});
