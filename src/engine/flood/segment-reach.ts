@@ -168,9 +168,20 @@ const compute = (graph: FloodGraph, segment: Id): SegmentReach => {
     groups: groups.map((list) => ({
       points: list.flatMap((i) => clusters[i]!.all.map(({ point }) => point)),
     })),
-    partings,
+    partings: mirrored(partings),
     unattachedSites,
   };
+};
+
+/** Where one way is explained and the way back just finds nothing that leads on, it ends at the same thing. */
+const mirrored = (partings: readonly Parting[]): readonly Parting[] => {
+  const byWay = new Map(partings.map((parting) => [`${parting.from} ${parting.to}`, parting]));
+  return partings.map((parting) => {
+    const back = byWay.get(`${parting.to} ${parting.from}`);
+    return parting.barrier.code === 'not-joined' && back !== undefined && back.barrier.code !== 'not-joined'
+      ? { ...parting, barrier: back.barrier }
+      : parting;
+  });
 };
 
 const isCabled = ({ place }: PlacedPoint): boolean =>

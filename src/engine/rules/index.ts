@@ -21,6 +21,8 @@ import { frameExceedsPath } from './frame-exceeds-path.ts';
 import { hostSingleHomed } from './host-single-homed.ts';
 import { ikeVersionMismatch } from './ike-version-mismatch.ts';
 import { portHoldsTwoCables } from './port-holds-two-cables.ts';
+import { portVlanClaimedTwice } from './port-vlan-claimed-twice.ts';
+import { segmentHostsParted } from './segment-hosts-parted.ts';
 import { stormAnyToAnyMesh } from './storm-any-to-any-mesh.ts';
 import { stormCustomerCable } from './storm-customer-cable.ts';
 import { stormLocal } from './storm-local.ts';
@@ -36,6 +38,7 @@ import { tunnelUdpPortMismatch } from './tunnel-udp-port-mismatch.ts';
 import { tunnelVniMismatch } from './tunnel-vni-mismatch.ts';
 import { tunnelVniReserved } from './tunnel-vni-reserved.ts';
 import { tunnelVniUnset } from './tunnel-vni-unset.ts';
+import { vlanMissingOnPath } from './vlan-missing-on-path.ts';
 import { vniUsedTwice } from './vni-used-twice.ts';
 import { weakAlgorithm } from './weak-algorithm.ts';
 
@@ -63,6 +66,8 @@ export const rules: readonly Rule[] = [
   hostSingleHomed,
   ikeVersionMismatch,
   portHoldsTwoCables,
+  portVlanClaimedTwice,
+  segmentHostsParted,
   stormAnyToAnyMesh,
   stormCustomerCable,
   stormLocal,
@@ -78,6 +83,7 @@ export const rules: readonly Rule[] = [
   tunnelVniMismatch,
   tunnelVniReserved,
   tunnelVniUnset,
+  vlanMissingOnPath,
   vniUsedTwice,
   weakAlgorithm,
 ];

@@ -6,7 +6,8 @@ import { placesOf } from './places.ts';
 import { cableName, cutFix } from './storm-cuts.ts';
 import { cablesBetweenSites, stormBody, stormOfFault, stormsOf } from './storm-faults.ts';
 import { fateOf, ofSegments, stormSeen, stormWhy } from './storm-words.ts';
-import { counted, listed, sentenceCase } from './wording.ts';
+import { sentenceStart } from './sentence-start.ts';
+import { counted, listed } from './wording.ts';
 
 export const stormCustomerCable = defineRule({
   id: 'storm-customer-cable',
@@ -29,12 +30,12 @@ export const stormCustomerCable = defineRule({
         readonly segments: string;
         readonly fate: string;
       }) =>
-        `${sentenceCase(v.cable)} joins ${v.placeA} and ${v.placeB} beside the way${v.segments} through the overlay: ${v.fate}`,
+        `${sentenceStart(v.cable)} joins ${v.placeA} and ${v.placeB} beside the way${v.segments} through the overlay: ${v.fate}`,
     },
     around: {
       words: 'broadcast storm',
       sentence: (v: { readonly cables: string; readonly segments: string; readonly fate: string }) =>
-        `${sentenceCase(v.cables)} between sites close a ring${v.segments}: ${v.fate}`,
+        `${sentenceStart(v.cables)} between sites close a ring${v.segments}: ${v.fate}`,
     },
   },
   check: (network) => {

@@ -8,7 +8,8 @@ import type { Fix } from './finding.ts';
 import { cutFix } from './storm-cuts.ts';
 import { stormBody, stormOfFault, stormsOf } from './storm-faults.ts';
 import { devicesOf, fateOf, ofSegments, sitesOf, stormSeen, stormWhy } from './storm-words.ts';
-import { counted, listed, sentenceCase } from './wording.ts';
+import { sentenceStart } from './sentence-start.ts';
+import { counted, listed } from './wording.ts';
 
 /** Spanning tree at every switch of a ring of switches; at gateways it would only see what crosses untagged. */
 const treeFix = ({ design }: Network, storm: Storm): readonly Fix[] => {
@@ -108,7 +109,7 @@ export const stormLocal = defineRule({
       return {
         message: 'within' as const,
         values: {
-          cables: sentenceCase(
+          cables: sentenceStart(
             storm.cables.length === 1 ? 'a cable' : counted(storm.cables.length, 'cable', 'cables'),
           ),
           verb: storm.cables.length === 1 ? 'forms' : 'form',

@@ -7,6 +7,7 @@ import { defineRule } from './define-rule.ts';
 import type { Uplink } from './pair-uplinks.ts';
 import { freePorts, isUnplugged, membersReached, switchGroupOf, uplinksOf } from './pair-uplinks.ts';
 import { portLabel, portName } from './port-label.ts';
+import { unusedId } from './unused-id.ts';
 
 /** For each group of cabled switches that reaches one member alone: its first uplink. */
 const lonelySwitches = (network: Network): readonly Uplink[] => {
@@ -38,12 +39,6 @@ const secondPort = (network: Network, { device, port, pair, pairPort, member }: 
   const uplink = entryOf(network.design.devices, device).ports[port]!;
   const changes = (free: Port): number => Object.keys(like(uplink, free)).length;
   return [...freePorts(network, device)].sort(([, a], [, b]) => changes(a) - changes(b))[0]?.[0];
-};
-
-const unusedId = (taken: object, stem: string): Id => {
-  let id = stem;
-  for (let n = 2; Object.hasOwn(taken, id); n += 1) id = `${stem}-${n}`;
-  return id;
 };
 
 interface Values {
@@ -123,7 +118,7 @@ export const switchSingleHomed = defineRule({
     const setUp = like(ports[port]!, ports[free]!);
     const isSetUp = Object.keys(setUp).length > 0;
     const other = otherMember(member);
-    const id = unusedId(design.links, `${uplink.cable}-${other}`.slice(0, 60));
+    const id = unusedId(design.links, `${uplink.cable}-${other}`);
     return [
       {
         id: 'second-uplink',

@@ -86,7 +86,12 @@ describe('segmentReach', () => {
     ['a host that is not cabled', { links: { 'cb-h-s0-a': null } }, { code: 'not-cabled', device: 'h-s0-a' }],
     [
       'nothing between the sites',
-      { forwarders: { 'br-s0-a': { circuits: { 'tn-s0-s1-a': null } } } },
+      {
+        forwarders: {
+          'br-s0-a': { circuits: { 'tn-s0-s1-a': null } },
+          'br-s1-a': { circuits: { 'tn-s0-s1-a': null } },
+        },
+      },
       { code: 'not-joined', fromSite: 's0', toSite: 's1' },
     ],
     [
@@ -103,6 +108,13 @@ describe('segmentReach', () => {
     const { groups, partings } = of(pairDesign(), patch);
     const home = groups.findIndex(({ points }) => points.some(({ device }) => device === 'h-s0-a'));
     expect(partings.find(({ from }) => from === home)?.barrier).toMatchObject(barrier);
+  });
+
+  it('explains the way back by what explains the way there', () => {
+    const { partings } = of(pairDesign(), {
+      forwarders: { 'br-s1-a': { circuits: { 'tn-s0-s1-a': null } } },
+    });
+    expect(partings.map(({ barrier }) => barrier.code)).toEqual(['tunnel-unclaimed', 'tunnel-unclaimed']);
   });
 
   it('names the standby member that a lone uplink ends at', () => {
