@@ -56,6 +56,16 @@ const livenessStates = [
   { value: 'off', label: 'off' },
 ] as const;
 
+const renewalFields = [
+  'liveness',
+  'ikeLifetimeSeconds',
+  'childLifetimeSeconds',
+  'perfectForwardSecrecy',
+  'extendedSequence',
+  'replayWindow',
+  'natKeepaliveSeconds',
+] as const;
+
 /** An IPsec association: whether it can come up, both ends side by side, proposals, selectors and its tunnels. */
 export function AssociationPanel({ id }: { readonly id: string }) {
   const network = useNetwork();
@@ -82,7 +92,7 @@ export function AssociationPanel({ id }: { readonly id: string }) {
       <Proposals id={id} layer="ike" heads={heads} />
       <Proposals id={id} layer="esp" heads={heads} />
       <Selectors id={id} heads={heads} />
-      <Section title="Ways out" open={false}>
+      <Section title="Ways out" open={false} about={ends.map((end) => ['associations', id, end, 'via'])}>
         <p className="text-note text-ink-2">
           The first pair of landings on one transport carries the association; the others stand by.
         </p>
@@ -95,7 +105,11 @@ export function AssociationPanel({ id }: { readonly id: string }) {
           />
         ))}
       </Section>
-      <Section title="Keeping alive and renewing" open={false}>
+      <Section
+        title="Keeping alive and renewing"
+        open={false}
+        about={ends.flatMap((end) => renewalFields.map((field) => ['associations', id, end, field]))}
+      >
         <Mirror label="Keeping alive and renewing" entry={['associations', id]} heads={heads}>
           <RenewalRows id={id} association={association} heads={heads} />
         </Mirror>
@@ -298,7 +312,11 @@ function Proposals({
   const word = layer === 'ike' ? 'IKE' : 'ESP';
   const agreement = negotiate(association)[layer];
   return (
-    <Section title={`${word} proposals`} open={agreement.state === 'differ'}>
+    <Section
+      title={`${word} proposals`}
+      open={agreement.state === 'differ'}
+      about={ends.map((end) => ['associations', id, end, field])}
+    >
       <p className={agreement.state === 'differ' ? 'text-note text-red' : 'text-note text-ink-2'}>
         {agreementWords(agreement)}
       </p>
@@ -338,7 +356,7 @@ function Selectors({ id, heads }: { readonly id: string; readonly heads: Heads }
     return endpoint?.ipv4 ?? endpoint?.ipv6 ?? '0.0.0.0/0';
   };
   return (
-    <Section title="Selectors" open={false}>
+    <Section title="Selectors" open={false} about={ends.map((end) => ['associations', id, end, 'selectors'])}>
       {ends.map((end) => (
         <div key={end} className="flex flex-col gap-4">
           <h4 className="text-note text-ink-2">{heads[end].place}</h4>

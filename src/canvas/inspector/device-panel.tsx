@@ -59,7 +59,7 @@ export function DevicePanel({ id }: { readonly id: string }) {
       <PortTable device={id} />
       {gateway && <Overlay id={id} device={device} />}
       {device.kind !== 'host' && (
-        <Section title="Settings" open={false}>
+        <Section title="Settings" open={false} about={[at('settings')]}>
           {gateway && (
             <p className="text-note text-degr">
               These hold for the whole device: they touch all traffic through it, not only the tunnels.

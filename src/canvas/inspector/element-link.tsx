@@ -19,11 +19,14 @@ export function TextButton({ className, ...button }: ButtonHTMLAttributes<HTMLBu
 }
 
 /** An element's name that selects it. */
-export function ElementLink({ to, children }: { readonly to: ElementRef; readonly children?: ReactNode }) {
+export function ElementLink({ to, children }: { readonly to: ElementRef; readonly children?: string }) {
   const design = useOpenDesign();
   const name = useOpenState((state) => nameOf(state.document, to));
   return (
-    <TextButton aria-label={`Select ${name}`} onClick={() => design.select([to])}>
+    <TextButton
+      aria-label={children === undefined ? `Select ${name}` : `${children}, select ${name}`}
+      onClick={() => design.select([to])}
+    >
       {children ?? name}
     </TextButton>
   );

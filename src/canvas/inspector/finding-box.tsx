@@ -23,9 +23,6 @@ const inks: Readonly<Record<Severity, string>> = {
   advisory: 'text-advi',
 };
 
-// Each proposal of a fix costs a run of all checks, so only the first findings are open from the start.
-const openFromTheStart = 2;
-
 /** Sources in one line, the clauses of one document behind its name. */
 export const sourcesLine = (sources: readonly Source[]): string => {
   const clauses = new Map<string, string[]>();
@@ -47,7 +44,8 @@ export function FindingBoxes({ about }: { readonly about: ElementRef }) {
   return (
     <section aria-label="Findings" className="flex flex-col gap-8">
       {found.map((finding, at) => (
-        <FindingBox key={finding.key} finding={finding} open={at < openFromTheStart} />
+        // Each proposal of a fix costs a run of all checks, so only the first finding is open from the start.
+        <FindingBox key={finding.key} finding={finding} open={at === 0} />
       ))}
     </section>
   );

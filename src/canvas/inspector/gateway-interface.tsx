@@ -20,7 +20,7 @@ export function GatewayInterface({ id, of }: { readonly id: string; readonly of:
   const label = `Inside interface of ${of}`;
   const at = (...field: string[]) => [...path, ...field];
   return (
-    <Section title="Inside interface" open={gateway !== undefined}>
+    <Section title="Inside interface" open={gateway !== undefined} about={[path]}>
       {gateway === undefined ? (
         <>
           <p className="text-note text-ink-3">The device has no address on this segment.</p>

@@ -44,7 +44,7 @@ export function Inspector({ onConnect, onShowFinding, standing }: InspectorProps
     <InspectorContext value={{ onConnect, onShowFinding, standing, sections }}>
       <aside
         aria-label="Inspector"
-        className="w-304 shrink-0 overflow-x-hidden overflow-y-auto border-l-1.5 border-ink bg-panel"
+        className="h-full w-304 shrink-0 overflow-x-hidden overflow-y-auto border-l-1.5 border-ink bg-panel"
       >
         <div className="flex flex-col gap-12 p-14">
           {first === undefined ? (

@@ -1,11 +1,13 @@
 import type { ReactNode } from 'react';
 import { Button } from '../../components/button.tsx';
 import { Icon } from '../../components/icon.tsx';
+import { SeverityShape } from '../../components/severity-mark.tsx';
 import { patchAt, type MergePatch } from '../../engine/model/merge-patch.ts';
 import { inRankOrder, rankAtEnd, rankBetween } from '../../engine/model/rank.ts';
+import { useChecks } from '../../workspace/checks-context.tsx';
 import { newEntryId } from '../../workspace/open-design-context.tsx';
 import { AddButton } from './add-button.tsx';
-import type { FieldPath } from './field-marks.ts';
+import { markAt, type FieldPath } from './field-marks.ts';
 import { useAt, useCommit, useEditable } from './use-field.ts';
 
 interface Ranked {
@@ -51,10 +53,20 @@ export function OrderedList<E extends Ranked>({
   const map = useAt<RankedMap<E>>(path);
   const editable = useEditable();
   const commit = useCommit();
+  const { findings } = useChecks();
+  const marked = markAt(findings, path);
   const label = `${noun} of ${of}`;
   const entries = inRankOrder(map);
   return (
     <div role="group" aria-label={`${nouns} of ${of}`} className="flex flex-col gap-6">
+      {marked !== undefined && (
+        <p className="flex items-start gap-6 text-note text-ink">
+          <span className="mt-2">
+            <SeverityShape severity={marked.severity} size={12} />
+          </span>
+          {marked.sentence}.
+        </p>
+      )}
       {entries.length === 0 && <p className="text-note text-ink-3">{empty}</p>}
       {entries.length > 0 && (
         <ol className="flex flex-col gap-8">

@@ -84,7 +84,7 @@ export function ProfilePanel({ id }: { readonly id: string }) {
           </CellGrid>
         </Section>
       ))}
-      <Section title="Reserved group addresses" open={false}>
+      <Section title="Reserved group addresses" open={false} about={[at('reservedGroups')]}>
         <CellGrid columns={2}>
           {reservedOctets.map((octet) => (
             <SelectField

@@ -1,5 +1,8 @@
 import { useId, useState, type ReactNode } from 'react';
 import { Icon } from '../../components/icon.tsx';
+import { SeverityShape } from '../../components/severity-mark.tsx';
+import { useChecks } from '../../workspace/checks-context.tsx';
+import { markWithin, type FieldPath } from './field-marks.ts';
 import { useInspectorTools } from './inspector-context.ts';
 
 interface SectionProps {
@@ -8,13 +11,17 @@ interface SectionProps {
   readonly beside?: ReactNode;
   /** Open from the start; the rest of a long form is not. */
   readonly open?: boolean;
+  /** Parts of the document that it shows: a finding about them opens it and is marked beside its title. */
+  readonly about?: readonly FieldPath[];
   readonly children: ReactNode;
 }
 
 /** A named part of the panel that folds away. */
-export function Section({ title, beside, open = true, children }: SectionProps) {
+export function Section({ title, beside, open = true, about = [], children }: SectionProps) {
   const { sections } = useInspectorTools();
-  const [shown, setShown] = useState(sections.get(title) ?? open);
+  const { findings } = useChecks();
+  const mark = about.map((path) => markWithin(findings, path)).find((each) => each !== undefined);
+  const [shown, setShown] = useState(mark !== undefined || (sections.get(title) ?? open));
   const id = useId();
   return (
     <section aria-labelledby={id}>
@@ -32,6 +39,12 @@ export function Section({ title, beside, open = true, children }: SectionProps) 
           >
             <Icon name={shown ? 'chevron-down' : 'chevron-right'} size={14} />
             {title}
+            {mark !== undefined && (
+              <>
+                <SeverityShape severity={mark.severity} size={12} />
+                <span className="sr-only">, {mark.severity}</span>
+              </>
+            )}
           </button>
         </h3>
         {beside}

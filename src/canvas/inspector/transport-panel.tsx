@@ -65,7 +65,7 @@ export function TransportPanel({ id }: { readonly id: string }) {
         <FamiliesCell id={id} />
       </CellGrid>
       <FindingBoxes about={ref} />
-      <Section title="What it filters" open={transport.filters !== undefined}>
+      <Section title="What it filters" open={transport.filters !== undefined} about={[at('filters')]}>
         <CheckList label="Filtered" path={at('filters')} choices={filters} noneWords="it filters nothing" />
       </Section>
       <Section title={`Landings (${landings.length})`}>

@@ -95,7 +95,17 @@ export function TunnelPanel({ id }: { readonly id: string }) {
       </Mirror>
       <FindingBoxes about={ref} />
       <Sizes id={id} />
-      <Section title="Ends and way" open={false}>
+      <Section
+        title="Ends and way"
+        open={false}
+        about={[
+          ['tunnels', id, 'family'],
+          ...ends.flatMap((end) => [
+            ['tunnels', id, end, 'endpoint'],
+            ['tunnels', id, end, 'via'],
+          ]),
+        ]}
+      >
         <Ends id={id} devices={devices} />
         <CellGrid>
           <SelectField

@@ -2,11 +2,10 @@ import { SelectCell } from '../../components/field-cells.tsx';
 import { CellGrid } from '../../components/cell.tsx';
 import { patchAt } from '../../engine/model/merge-patch.ts';
 import { rankAtEnd } from '../../engine/model/rank.ts';
-import { useChecks } from '../../workspace/checks-context.tsx';
 import { newEntryId, useOpenState } from '../../workspace/open-design-context.tsx';
 import { nameOf } from '../../workspace/operations/name-of.ts';
 import { ElementLink } from './element-link.tsx';
-import { markAt, type FieldPath } from './field-marks.ts';
+import type { FieldPath } from './field-marks.ts';
 import { OrderedList } from './ordered-list.tsx';
 import { useAt, useCommit, useEditable } from './use-field.ts';
 
@@ -29,7 +28,6 @@ export function ViaList({
   const document = useOpenState((state) => state.document);
   const editable = useEditable();
   const commit = useCommit();
-  const { findings } = useChecks();
   const taken = new Set(Object.values(via ?? {}).map(({ landing }) => landing));
   const free = Object.entries(document.links).filter(
     ([id, link]) => link.kind === 'landing' && link.device === device && !taken.has(id),
@@ -52,7 +50,6 @@ export function ViaList({
             place={place}
             value=""
             placeholder="choose"
-            marked={markAt(findings, path)}
             options={free.map(([id]) => ({
               value: id,
               label: nameOf(document, { collection: 'links', id }),

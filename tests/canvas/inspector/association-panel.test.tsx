@@ -147,3 +147,16 @@ describe('the inspector of an association', () => {
     expect(document().tunnels).toEqual({});
   });
 });
+
+describe('the findings of an association', () => {
+  it('open the section that holds the field, mark its title and say what is wrong there', () => {
+    const missing = applyPatch(pairDesign(), {
+      associations: { [id]: { b: { selectors: { loopbacks: { local: '10.99.0.1/32' } } } } },
+    });
+    renderInspector(missing, { selection });
+    const section = screen.getByRole('button', { name: /^Selectors.*blocking/ });
+    expect(section).toHaveAttribute('aria-expanded', 'true');
+    const list = screen.getByRole('group', { name: 'selectors of Gullhaven' });
+    expect(list).toHaveTextContent(/10\.255\.0\.2/);
+  });
+});
