@@ -33,6 +33,9 @@ export const associationSelectorsMissLoopbacks = defineRule({
       const gaps = (network.tunnelsByAssociation.get(id) ?? []).flatMap((tunnelId) => {
         const tunnel = design.tunnels[tunnelId]!;
         if (ends.some((end) => unsettled.has(tunnel[end].endpoint))) return [];
+        // A tunnel that ends elsewhere is a fault of its own.
+        const [sideA, sideB] = ends.map((end) => associationEndOf(network, tunnel, association, end));
+        if (sideA === undefined || sideB === undefined || sideA === sideB) return [];
         const cover = selectorsCover(network, tunnelId);
         return cover.state === 'misses'
           ? cover.gaps.map((gap) => ({

@@ -1,5 +1,5 @@
 import { associationSelectorsMissLoopbacks } from '#engine/rules/association-selectors-miss-loopbacks.ts';
-import { pairDesign } from '../../support/designs.ts';
+import { hubDesign, pairDesign } from '../../support/designs.ts';
 import { changed, testRule } from '../../support/rule-tester.ts';
 
 const id = 'as-s0-s1';
@@ -17,6 +17,9 @@ testRule(associationSelectorsMissLoopbacks, {
     }),
     'endpoints that share an address, which is the cause': changed(pairDesign(), {
       endpoints: { 'lo-s1': { ipv4: '10.255.0.1/32' } },
+    }),
+    'a tunnel that ends on another device, which is the cause': changed(hubDesign(2), {
+      tunnels: { 'tn-s0-s2-a': { association: id } },
     }),
     'an endpoint inside a segment, which is the cause': changed(pairDesign(), {
       endpoints: { 'lo-s1': { ipv4: '10.110.7.7/32' } },

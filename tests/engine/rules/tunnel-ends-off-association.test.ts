@@ -25,7 +25,7 @@ testRule(tunnelEndsOffAssociation, {
           elements: ['tunnels/tn-s0-s2-a', 'associations/as-s0-s1'],
           properties: ['tunnels/tn-s0-s2-a: association', 'tunnels/tn-s0-s2-a: b.endpoint'],
           mark: { kind: 'cut', tunnel: 'tn-s0-s2-a' },
-          fixes: ['Use as-s0-s2', 'End it at lo-s1'],
+          fixes: ['Use as-s0-s2'],
         },
       ],
     },

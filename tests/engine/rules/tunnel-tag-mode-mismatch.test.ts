@@ -4,7 +4,12 @@ import { changed, testRule } from '../../support/rule-tester.ts';
 
 const id = 'tn-s0-s1-a';
 const keepAtHead = { tunnels: { [id]: { a: { innerTags: 'keep' } } } };
-const trunk = { forwarders: { 'br-s0-a': { circuits: { access: { vlans: [110, 120] } } } } };
+const trunk = {
+  forwarders: {
+    'br-s0-a': { circuits: { access: { vlans: [110, 120] } } },
+    'br-s1-a': { circuits: { access: { vlans: [110, 120] } } },
+  },
+};
 
 testRule(tunnelTagModeMismatch, {
   accepted: {
