@@ -9,14 +9,15 @@ import { terminalsStretch } from './terminals-stretch.ts';
 type DemoDesign = (typeof demoDesigns)[number];
 
 const builders: { readonly [name in DemoDesign]: () => Design } = {
-  'fault-free': () => terminalsStretch('Terminals stretch, phase 1', 'SMF-L2-004'),
+  'fault-free': () => laidOut(terminalsStretch('Terminals stretch, phase 1', 'SMF-L2-004')),
+  // Laid out before the faults go in: the two sheets differ by the faults alone.
   'planted-faults': () =>
-    plantFaults(terminalsStretch('Terminals stretch, with planted faults', 'SMF-L2-014')),
+    plantFaults(laidOut(terminalsStretch('Terminals stretch, with planted faults', 'SMF-L2-014'))),
 };
 
 /** One of the two designs of the story, laid out on its sheet. */
 export function demoDesign(name: DemoDesign): Design {
-  return laidOut(builders[name]());
+  return builders[name]();
 }
 
 /** What stands beside them in the demo's list. */

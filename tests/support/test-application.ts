@@ -34,6 +34,7 @@ export const testConfig: Config = {
 };
 
 export interface TestApplication {
+  readonly url: string;
   readonly database: Database;
   readonly server: Server;
   /** Everything the server logged, as text. */
@@ -70,6 +71,7 @@ async function startOn(url: string, options: Partial<AppOptions>): Promise<TestA
   const server = createServer(app);
   await new Promise<void>((resolve) => server.listen(0, '127.0.0.1', resolve));
   return {
+    url,
     database,
     server,
     logged: () => lines.join(''),

@@ -1,0 +1,59 @@
+import { afterAll, beforeAll, expect, test } from 'vitest';
+import { engagementListSchema, openDesignSchema } from '#contract/designs.ts';
+import { sessionSchema } from '#contract/session.ts';
+import { runRules } from '#engine/rules/run-rules.ts';
+import type { Design } from '#engine/model/design.ts';
+import { demoSignIns, seedDemo } from '../../../server/db/seed-demo.ts';
+import type { TestApplication } from '../../support/test-application.ts';
+import { openBrowser, signIn, startTestApplication } from '../../support/test-application.ts';
+
+let application: TestApplication;
+
+beforeAll(async () => {
+  application = await startTestApplication();
+});
+afterAll(() => application.close());
+
+test('the demo is seeded once, also by two starters at the same moment', async () => {
+  await Promise.all([seedDemo(application.url), seedDemo(application.url)]);
+  await seedDemo(application.url);
+  const { knex } = application.database;
+  const counts = await Promise.all(
+    ['workspaces', 'people', 'engagements', 'designs'].map(async (table) => (await knex(table)).length),
+  );
+  expect(counts).toEqual([1, 5, 1, 5]);
+});
+
+test('everybody of the demo can sign in, with the documented password or with one click', async () => {
+  const visitor = await openBrowser(application);
+  const { demo } = sessionSchema.parse((await visitor.get('/api/session')).body);
+  expect(demo.map(({ role, email }) => ({ role, email }))).toEqual(
+    demoSignIns.map(({ role, email }) => ({ role, email })),
+  );
+  for (const { role, email, password } of demoSignIns) {
+    await signIn(application, { email }, password);
+    const clicker = await openBrowser(application);
+    const session = sessionSchema.parse((await clicker.post('/api/session/demo', { role }).expect(200)).body);
+    expect(session.person?.email).toBe(email);
+  }
+});
+
+test('the list’s counts and titles are those of the documents', async () => {
+  const reviewer = await signIn(application, demoSignIns[2]!, demoSignIns[2]!.password);
+  const session = sessionSchema.parse((await reviewer.get('/api/session')).body);
+  const { workspaceId, workspaceName } = session.memberships[0]!;
+  expect(workspaceName).toBe('Ternwick Net');
+  const list = await reviewer.get(`/api/workspaces/${workspaceId}/engagements`).expect(200);
+  const { engagements } = engagementListSchema.parse(list.body);
+  expect(engagements.map(({ name }) => name)).toEqual(['Saltmarsh Ferries']);
+  for (const summary of engagements[0]!.designs) {
+    const opened = openDesignSchema.parse((await reviewer.get(`/api/designs/${summary.id}`)).body);
+    const document = opened.document as Design;
+    expect(summary.title).toBe(document.meta.title);
+    expect(document.meta.example).toBe(true);
+    const findings = runRules(document);
+    for (const severity of ['blocking', 'degrading', 'advisory'] as const)
+      expect(summary.counts[severity]).toBe(findings.filter((each) => each.severity === severity).length);
+    await reviewer.get(`/api/designs/${summary.id}/thumbnail?v=0`).expect(200);
+  }
+});

@@ -1,0 +1,125 @@
+import type { ChildProcess } from 'node:child_process';
+import { spawn } from 'node:child_process';
+import { once } from 'node:events';
+import { connect } from 'node:net';
+import { join } from 'node:path';
+import { setTimeout as delay } from 'node:timers/promises';
+import { afterAll, afterEach, beforeAll, describe, expect, test } from 'vitest';
+import { freeLoopbackPort } from '../../server/bootstrap/free-port.mjs';
+import { createTestDatabase } from '../support/test-database.ts';
+import type { TestDatabase } from '../support/test-database.ts';
+
+const projectFolder = join(import.meta.dirname, '..', '..');
+let database: TestDatabase;
+const started: Server[] = [];
+
+beforeAll(async () => {
+  database = await createTestDatabase();
+});
+afterAll(() => database.drop());
+afterEach(() => {
+  for (const { child } of started.splice(0)) child.kill('SIGKILL');
+});
+
+interface Server {
+  readonly child: ChildProcess;
+  readonly output: () => string;
+  readonly url: string;
+}
+
+async function start(environment: Record<string, string> = {}): Promise<Server> {
+  const port = await freeLoopbackPort();
+  const child = spawn(process.execPath, ['--import', 'tsx', 'server/main.ts'], {
+    cwd: projectFolder,
+    env: {
+      PATH: process.env['PATH'],
+      DATABASE_URL: database.url,
+      PORT: String(port),
+      SESSION_SECRET: 'a secret of more than thirty-two characters',
+      ...environment,
+    },
+  });
+  let output = '';
+  for (const stream of [child.stdout, child.stderr]) stream.on('data', (chunk) => (output += String(chunk)));
+  const server = { child, output: () => output, url: `http://127.0.0.1:${port}` };
+  started.push(server);
+  return server;
+}
+
+async function untilHealthy({ url, child, output }: Server): Promise<void> {
+  for (;;) {
+    if (child.exitCode !== null) throw new Error(output());
+    const status = await fetch(`${url}/api/health`).then(
+      (response) => response.status,
+      () => 0,
+    );
+    if (status === 200) return;
+    await delay(50);
+  }
+}
+
+const lines = (output: string): readonly { msg: string }[] =>
+  output
+    .trim()
+    .split('\n')
+    .map((line) => JSON.parse(line) as { msg: string });
+
+describe('the server as a process', () => {
+  test.each(['SIGTERM', 'SIGINT'] as const)(
+    'ends at %s after what it is doing, and closes its connections',
+    async (signal) => {
+      const server = await start();
+      await untilHealthy(server);
+      const { port } = new URL(server.url);
+      // A request on its way: its body is not there yet.
+      const body = '{"stack":{},"innerPacketBytes":1500}';
+      const socket = connect(Number(port), '127.0.0.1');
+      await once(socket, 'connect');
+      socket.write(
+        `POST /api/engine/wire HTTP/1.1\r\nHost: x\r\nContent-Type: application/json\r\nContent-Length: ${body.length}\r\n\r\n`,
+      );
+      let answer = '';
+      socket.on('data', (chunk) => (answer += String(chunk)));
+      await delay(100);
+      server.child.kill(signal);
+      await delay(100);
+      await expect(fetch(`${server.url}/api/health`)).rejects.toThrow();
+      socket.write(body);
+      const [code] = (await once(server.child, 'exit')) as [number | null];
+      expect(answer).toMatch(/^HTTP\/1\.1 200 /);
+      expect(code).toBe(0);
+      expect(lines(server.output()).map(({ msg }) => msg)).toEqual(
+        expect.arrayContaining(['listening', 'stopping', 'stopped']),
+      );
+    },
+  );
+
+  test('says in its log what is wrong with its configuration', async () => {
+    const server = await start({ SESSION_SECRET: 'short' });
+    const [code] = (await once(server.child, 'exit')) as [number | null];
+    expect(code).toBe(1);
+    expect(lines(server.output())).toMatchObject([
+      { level: 60, msg: expect.stringContaining('SESSION_SECRET') as string },
+    ]);
+  });
+
+  test('says that its port is taken', async () => {
+    const first = await start();
+    await untilHealthy(first);
+    const second = await start({ PORT: new URL(first.url).port });
+    const [code] = (await once(second.child, 'exit')) as [number | null];
+    expect(code).toBe(1);
+    expect(lines(second.output()).at(-1)?.msg).toContain(`port ${new URL(first.url).port}`);
+  });
+
+  test('answers health with 503, and stays, while its database is away', async () => {
+    const server = await start({ DATABASE_URL: 'postgresql://nobody@127.0.0.1:9/nothing' });
+    for (let answered = false; !answered; await delay(50)) {
+      const response = await fetch(`${server.url}/api/health`).catch(() => undefined);
+      answered = response !== undefined;
+      if (response !== undefined) expect(response.status).toBe(503);
+    }
+    expect(server.child.exitCode).toBeNull();
+    expect(() => lines(server.output())).not.toThrow();
+  });
+});
