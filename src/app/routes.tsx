@@ -1,6 +1,5 @@
 import type { RouteObject } from 'react-router-dom';
 import { PageError } from './page-error.tsx';
-import { Shell } from './shell.tsx';
 import { SignedInOnly } from './signed-in-only.tsx';
 import { StartPage } from './start-page.tsx';
 import { Root } from './root.tsx';
@@ -21,7 +20,7 @@ export const routes: RouteObject[] = [
         element: <SignedInOnly />,
         children: [
           {
-            element: <Shell />,
+            lazy: async () => ({ Component: (await import('./shell.tsx')).Shell }),
             children: [
               { index: true, element: <StartPage /> },
               {

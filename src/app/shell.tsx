@@ -8,7 +8,13 @@ export function Shell() {
   return (
     <div className="flex h-dvh flex-col">
       <WithBar end={<AccountMenu />}>
-        <Suspense fallback={null}>
+        <Suspense
+          fallback={
+            <p role="status" className="p-28 text-ink-2">
+              Loading…
+            </p>
+          }
+        >
           <Outlet />
         </Suspense>
       </WithBar>

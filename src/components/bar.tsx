@@ -26,7 +26,10 @@ export function WithBar({ end, children }: BarProps) {
           <Mark width={33} />
           <span className="max-md:sr-only">Longpatch</span>
         </Link>
-        <div ref={setSlot} className="flex min-w-0 flex-1 items-stretch" />
+        <div
+          ref={setSlot}
+          className="flex min-w-0 flex-1 items-stretch overflow-x-auto overflow-y-hidden [scrollbar-width:none]"
+        />
         <div className="flex shrink-0 items-center gap-8 px-12 max-md:px-8">{end}</div>
       </header>
       {children}

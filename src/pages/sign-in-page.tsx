@@ -1,7 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { Navigate, useSearchParams } from 'react-router-dom';
 import { Cautions } from '../features/sign-in/cautions.tsx';
-import { CordInTheGround } from '../features/sign-in/cord-in-the-ground.tsx';
+import { CordInTheGround, workingLine } from '../features/sign-in/cord-in-the-ground.tsx';
 import { DemoPeople } from '../features/sign-in/demo-people.tsx';
 import { SheetFrame } from '../features/sign-in/sheet-frame.tsx';
 import { SignInForm } from '../features/sign-in/sign-in-form.tsx';
@@ -26,10 +26,9 @@ export function SignInPage() {
     >
       <SheetFrame>
         <div className="relative max-lg:order-2 max-lg:overflow-hidden max-lg:border-t max-lg:border-ink">
-          <p className="pointer-events-none absolute inset-x-0 top-[12%] text-center text-[clamp(22px,2.2vw,31px)] leading-[1.26] font-medium text-balance max-lg:static max-lg:mx-auto max-lg:max-w-310 max-lg:pt-24 max-lg:pb-16">
-            A patch lead that is
-            <br className="max-lg:hidden" /> 400 km long, planned before
-            <br className="max-lg:hidden" /> anyone plugs it in.
+          {/* On wide screens the drawing has the line in it, so that it keeps clear of the cord at any size. */}
+          <p className="mx-auto max-w-310 px-14 pt-24 pb-16 text-center text-[22px]/28 font-medium text-balance lg:sr-only">
+            {workingLine.join(' ')}
           </p>
           <CordInTheGround
             view="whole"
@@ -40,7 +39,7 @@ export function SignInPage() {
             className="mx-auto block w-full max-w-540 overflow-visible lg:hidden"
           />
         </div>
-        <div className="mt-auto flex items-end justify-between gap-28 max-lg:order-1 max-lg:mt-0 max-lg:flex-col max-lg:items-stretch max-lg:gap-0">
+        <div className="mt-auto flex items-end justify-between gap-28 pt-16 max-lg:order-1 max-lg:mt-0 max-lg:flex-col max-lg:pt-0 max-lg:items-stretch max-lg:gap-0">
           <div className="flex min-w-0 flex-1 flex-col gap-18 max-lg:order-2 max-lg:gap-0">
             <div className="px-28 max-lg:order-2 max-lg:border-t max-lg:border-ink max-lg:px-14 max-lg:py-20">
               <Cautions />

@@ -60,7 +60,7 @@ test('going to another page names the tab after it and puts the focus at its con
   expect(document.title).toBe('Engagements – Longpatch');
   await user.click(screen.getByRole('link', { name: 'Checks' }));
   await heading('Reference of checks');
-  expect(document.title).toBe('Reference of checks – Longpatch');
+  await waitFor(() => expect(document.title).toBe('Reference of checks – Longpatch'));
   await waitFor(() => expect(screen.getByRole('main')).toHaveFocus());
 });
 

@@ -102,7 +102,7 @@ function Thumbnail({ design, canOpen }: { readonly design: DesignSummary; readon
         />
       ) : (
         <p className="px-14 text-center text-note text-ink-3">
-          {canOpen ? 'Its picture cannot be shown just now' : 'Drafts open to you once they are approved'}
+          {canOpen ? 'Its picture cannot be shown just now' : 'Opens to you once it is approved'}
         </p>
       )}
     </div>

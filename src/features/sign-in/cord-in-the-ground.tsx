@@ -13,6 +13,9 @@ const middle = 720;
 const ink = 'var(--ink)';
 const casing = 'var(--casing)';
 
+/** What this is, in the lines in which the drawing has it. */
+export const workingLine = ['A patch lead that is', '400 km long, planned before', 'anyone plugs it in.'];
+
 /** Two segments in one jacket, from here to there through the ground, with a break line at 400 km. */
 export function CordInTheGround({
   view,
@@ -35,6 +38,13 @@ export function CordInTheGround({
           <End name="here" switchName="sw-a" />
           <g transform={`translate(${2 * middle} 0) scale(-1 1)`}>
             <End name="there" switchName="sw-b" mirrored />
+          </g>
+          <g fontSize="31" fontWeight="500" textAnchor="middle" fill={ink}>
+            {workingLine.map((words, at) => (
+              <text key={words} x={middle} y={143 + 39 * at}>
+                {words}
+              </text>
+            ))}
           </g>
           <g fontSize="15">
             <text x="90" y="400" fontWeight="600" fill={ink}>
