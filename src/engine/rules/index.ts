@@ -20,6 +20,7 @@ import { endpointOnOneMember } from './endpoint-on-one-member.ts';
 import { frameExceedsPath } from './frame-exceeds-path.ts';
 import { hostSingleHomed } from './host-single-homed.ts';
 import { ikeVersionMismatch } from './ike-version-mismatch.ts';
+import { isolationMissingLeg } from './isolation-missing-leg.ts';
 import { portHoldsTwoCables } from './port-holds-two-cables.ts';
 import { portVlanClaimedTwice } from './port-vlan-claimed-twice.ts';
 import { segmentHostsParted } from './segment-hosts-parted.ts';
@@ -65,6 +66,7 @@ export const rules: readonly Rule[] = [
   frameExceedsPath,
   hostSingleHomed,
   ikeVersionMismatch,
+  isolationMissingLeg,
   portHoldsTwoCables,
   portVlanClaimedTwice,
   segmentHostsParted,

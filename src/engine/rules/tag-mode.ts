@@ -1,3 +1,4 @@
+import { circuitRemovesTag } from '../network/frame-tags.ts';
 import type { End, Network, PortCircuit, Tunnel } from '../network/network.ts';
 
 type TagMode = 'keep' | 'strip';
@@ -8,5 +9,5 @@ export const tagModeOf = ({ design }: Network, tunnel: Tunnel, end: End, device:
   tunnel[end].innerTags ?? (design.devices[device]!.settings?.keepInnerTags === true ? 'keep' : 'strip');
 
 /** True when frames keep their VLAN tag inside the forwarder that a port's circuit leads to. */
-export const keepsTags = ({ vlans, tag }: PortCircuit): boolean =>
-  vlans !== 'untagged' && (tag ?? (vlans !== 'all' && vlans.length === 1 ? 'removed' : 'kept')) === 'kept';
+export const keepsTags = (circuit: PortCircuit): boolean =>
+  circuit.vlans !== 'untagged' && !circuitRemovesTag(circuit);
