@@ -101,7 +101,7 @@ export interface RingGeometry {
   /** Absent with a single tunnel. */
   readonly comb?: { readonly arm: readonly [Point, Point]; readonly spine: readonly [Point, Point] };
   readonly groups: readonly CombGroup[];
-  /** Present with more than eight groups: they are drawn as one brass bar. */
+  /** Present with more than eight groups: they are drawn as one brass bar, whose box stands for every ferrule. */
   readonly manifold?: { readonly rect: Rect; readonly tunnels: number };
   readonly label: LabelGeometry;
 }
@@ -126,7 +126,7 @@ export interface LaneGeometry {
   readonly tunnel: string;
   /** Cuff to cuff, in the direction from the tunnel's own end a to its end b. */
   readonly path: Path;
-  /** Ferrule to cuff at each end of the tunnel. */
+  /** Ferrule to cuff at each end of the tunnel; empty where the lane comes out of a trunk. */
   readonly tails: { readonly a: Path; readonly b: Path };
 }
 export interface JacketGeometry {
@@ -156,6 +156,23 @@ export interface JacketGeometry {
   readonly noWay: boolean;
 }
 
+/**
+ * The common way of the jackets of one manifold, thinning as they part towards their sites. Each of its jackets begins
+ * or ends at the trunk's edge, with a cuff as its collar.
+ */
+export interface TrunkGeometry {
+  readonly endpoint: string;
+  /** False when every cord in it is bare. */
+  readonly isProtected: boolean;
+  /** Thinnest first, so that thicker ones cover their ends; joints are round. */
+  readonly pieces: readonly {
+    readonly path: Path;
+    readonly width: number;
+    /** Jackets and bare tunnels still in it. */
+    readonly jackets: readonly string[];
+  }[];
+}
+
 export interface CableGeometry {
   /** All links of one aggregation share a line; otherwise one. */
   readonly links: readonly string[];
@@ -183,6 +200,7 @@ export interface SheetGeometry {
   readonly devices: readonly DeviceGeometry[];
   readonly rings: readonly RingGeometry[];
   readonly jackets: readonly JacketGeometry[];
+  readonly trunks: readonly TrunkGeometry[];
   readonly cables: readonly CableGeometry[];
   /** `at` is the top left corner of a note's words, `rect` the room kept for them at 14 px; standing notes leave 18 px for their number and 26 px above the first for a heading. */
   readonly notes: readonly {

@@ -1,13 +1,13 @@
 import type { Design } from '../../engine/model/design.ts';
 import type { EndName, FerruleGeometry, Point, Rect, RingGeometry } from '../geometry.ts';
-import { comb, cuff, ferrule, ferruleWidth, ring, text } from '../parts/sizes.ts';
+import { comb, cuff, ferrule, ferruleWidth, manifold, ring, text } from '../parts/sizes.ts';
 import { textWidth } from '../text-width.ts';
 import type { BandPlace } from './bands.ts';
 import { otherEnd } from './bundles.ts';
 import { endpointLabel } from './label-text.ts';
 import { around, bottom, byText, centre, isUpright, outward, rectBetween } from './rects.ts';
 import type { RingSeat, SeatGroup } from './ring-seats.ts';
-import { laneCount, nearestLimb } from './ring-seats.ts';
+import { isManifold, laneCount, nearestLimb } from './ring-seats.ts';
 import type { Side } from '../../engine/model/layout.ts';
 
 interface Rank {
@@ -76,8 +76,37 @@ export const combOrder = (
 const travelsForward = (side: Side, end: EndName): boolean =>
   (side === 'right' || side === 'bottom') === (end === 'a');
 
+/** A ring with more groups than a comb can hold: one bar, and one mouth for all. */
+const manifoldGeometry = (design: Design, seat: RingSeat, groups: readonly SeatGroup[]): RingGeometry => {
+  const near = seat.x + outward[seat.side].x * ring.toFerrule;
+  const far = near + outward[seat.side].x * manifold.width;
+  const rect = rectBetween(near, seat.combAt - manifold.height / 2, far, seat.combAt + manifold.height / 2);
+  return {
+    endpoint: seat.endpoint,
+    device: seat.device,
+    side: seat.side,
+    centre: { x: seat.x, y: seat.y },
+    docksOn: seat.docksOn,
+    groups: groups.map(({ bundle, end }) => ({
+      jacket: bundle.id,
+      part: bundle.part,
+      end,
+      mouth: { x: far, y: seat.combAt },
+      ferrules: bundle.tunnels.map((tunnel) => ({
+        tunnel: tunnel.id,
+        end: tunnel.turned ? otherEnd(end) : end,
+        rect,
+        capSide: seat.side,
+      })),
+    })),
+    manifold: { rect, tunnels: groups.reduce((sum, { bundle }) => sum + bundle.tunnels.length, 0) },
+    label: labelBeside(endpointLabel(design, seat.endpoint), rect, seat, 'below'),
+  };
+};
+
 /** Everything a ring carries: its comb, the ferrules in lane order, and where its cords begin. */
 export const ringGeometry = (design: Design, seat: RingSeat, groups: readonly SeatGroup[]): RingGeometry => {
+  if (isManifold(groups.length, seat.side)) return manifoldGeometry(design, seat, groups);
   const upright = isUpright(seat.side);
   const out = outward[seat.side];
   const pitch = upright ? ferrule.flagPitch : comb.ferrulePitch;
@@ -187,6 +216,11 @@ export const combRect = (geometry: RingGeometry): Rect => {
     ...geometry.groups.map((group) => group.mouth),
     ...(geometry.comb === undefined ? [] : geometry.comb.spine),
   ];
+  if (geometry.manifold !== undefined)
+    points.push(
+      { x: geometry.manifold.rect.x, y: geometry.manifold.rect.y },
+      { x: geometry.manifold.rect.x, y: bottom(geometry.manifold.rect) },
+    );
   const boxes: Rect[] = points.map((p) => ({ x: p.x, y: p.y, width: 0, height: 0 }));
   for (const group of geometry.groups) {
     boxes.push(...group.ferrules.map((f) => f.rect));

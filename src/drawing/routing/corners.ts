@@ -1,7 +1,7 @@
 import type { Path, PathStep, Point } from '../geometry.ts';
 import { cord as cordSizes } from '../parts/sizes.ts';
 import type { Corners, Way } from './ground.ts';
-import { isLevelRun } from './ground.ts';
+import { isLevelRun, isTrunkRun, runWidth } from './ground.ts';
 import { clamp } from './rects.ts';
 
 /** Where two ways cross at right angles: the run of each, and the point. */
@@ -24,6 +24,8 @@ interface Run {
   readonly from: number;
   readonly to: number;
   readonly width: number;
+  /** The manifold in whose trunk it lies. */
+  readonly trunk?: string;
 }
 
 const runsOf = (ways: readonly Way[]): readonly Run[] =>
@@ -40,34 +42,59 @@ const runsOf = (ways: readonly Way[]): readonly Run[] =>
             at: level ? p.y : p.x,
             from: level ? Math.min(p.x, q.x) : Math.min(p.y, q.y),
             to: level ? Math.max(p.x, q.x) : Math.max(p.y, q.y),
-            width: way.cord.width,
+            width: runWidth(way, run),
+            ...(isTrunkRun(way, run) ? { trunk: way.cord.trunk!.endpoint } : {}),
           };
         }),
   );
 
-/** Every place where ways meet: crossings, the later way above, and stretches that overlap. */
+/** True when two runs belong together: of one way, or of one trunk and its branches. */
+const isSameStem = (ways: readonly Way[], p: Run, q: Run): boolean => {
+  if (p.way === q.way) return true;
+  // A jacket between two manifolds runs into the other one's mouth along its trunk.
+  const joins = (way: Way, trunk: string | undefined): boolean =>
+    trunk !== undefined && (way.cord.a.endpoint === trunk || way.cord.b.endpoint === trunk);
+  return joins(ways[p.way]!, q.trunk) || joins(ways[q.way]!, p.trunk);
+};
+
+/**
+ * Every place where ways meet: crossings, the later way above but a trunk below all, and stretches that overlap. A trunk
+ * meets another way once, however many jackets it holds.
+ */
 export const meetings = (
   ways: readonly Way[],
 ): { readonly crossings: readonly WayCrossing[]; readonly overlaps: readonly WayOverlap[] } => {
   const runs = runsOf(ways);
   const crossings: WayCrossing[] = [];
   const overlaps: WayOverlap[] = [];
+  const seen = new Set<string>();
+  const isFirst = (p: Run, q: Run, what: string): boolean => {
+    if (p.trunk === undefined && q.trunk === undefined) return true;
+    const name = (run: Run): string => run.trunk ?? `${run.way} ${run.run}`;
+    const key = `${name(p)} ${name(q)} ${what}`;
+    if (seen.has(key)) return false;
+    seen.add(key);
+    return true;
+  };
   for (let i = 0; i < runs.length; i += 1)
     for (let j = i + 1; j < runs.length; j += 1) {
       const p = runs[i]!;
       const q = runs[j]!;
-      if (p.way === q.way) continue;
+      if (isSameStem(ways, p, q)) continue;
       if (p.level === q.level) {
         const close = Math.abs(p.at - q.at) < (p.width + q.width) / 2 - 0.6;
-        if (close && Math.min(p.to, q.to) - Math.max(p.from, q.from) > 1)
+        if (close && Math.min(p.to, q.to) - Math.max(p.from, q.from) > 1 && isFirst(p, q, 'beside'))
           overlaps.push({ ways: [p.way, q.way], runs: [p.run, q.run] });
         continue;
       }
       if (q.at <= p.from || q.at >= p.to || p.at <= q.from || p.at >= q.to) continue;
+      const at = p.level ? { x: q.at, y: p.at } : { x: p.at, y: q.at };
+      if (!isFirst(p, q, `${at.x} ${at.y}`)) continue;
+      const [under, over] = q.trunk !== undefined && p.trunk === undefined ? [q, p] : [p, q];
       crossings.push({
-        under: { way: p.way, run: p.run },
-        over: { way: q.way, run: q.run },
-        at: p.level ? { x: q.at, y: p.at } : { x: p.at, y: q.at },
+        under: { way: under.way, run: under.run },
+        over: { way: over.way, run: over.run },
+        at,
       });
     }
   return { crossings, overlaps };

@@ -7,6 +7,7 @@ import type {
   RingGeometry,
   SheetFrame,
   SiteGeometry,
+  TrunkGeometry,
 } from '../geometry.ts';
 import { site as siteSizes, text } from '../parts/sizes.ts';
 import { textWidth } from '../text-width.ts';
@@ -69,6 +70,16 @@ export const solidBoxes = (
 
 export const jacketBoxes = (jackets: readonly JacketGeometry[]): readonly Rect[] =>
   jackets.flatMap((jacket) => (jacket.noWay ? [] : runRects(jacket.polyline, jacket.width / 2)));
+
+export const trunkBoxes = (trunks: readonly TrunkGeometry[]): readonly Rect[] =>
+  trunks.flatMap(({ pieces }) =>
+    pieces.flatMap(({ path, width }) =>
+      runRects(
+        path.map((step) => step.to),
+        width / 2,
+      ),
+    ),
+  );
 
 export const cableBoxes = (cables: readonly CableGeometry[]): readonly Rect[] =>
   cables.flatMap((cable) => (cable.noWay ? [] : runRects(cable.polyline, cable.aggregated ? 6 : 1.5)));

@@ -170,6 +170,18 @@ export const furnish = (design: Design): FurnishedSheet => {
   }
 };
 
+/** The manifold that a bundle leaves in a trunk: of two the one with more groups. */
+const trunkOf = (rings: ReadonlyMap<string, RingGeometry>, bundle: Bundle): Cord['trunk'] => {
+  const ends = (['a', 'b'] as const)
+    .map((end) => ({ end, ring: rings.get(bundle[end].endpoint)! }))
+    .filter(({ ring }) => ring.manifold !== undefined)
+    .sort((p, q) => q.ring.groups.length - p.ring.groups.length || byText(p.ring.endpoint, q.ring.endpoint));
+  const owner = ends[0];
+  return owner === undefined
+    ? undefined
+    : { endpoint: owner.ring.endpoint, end: owner.end, jackets: owner.ring.groups.length };
+};
+
 /** The cords to be routed, one for each bundle, with lanes this far apart. */
 export const cordsOf = (
   { bundles, rings, stands }: FurnishedSheet,
@@ -190,6 +202,7 @@ export const cordsOf = (
         site: stands.get(device)!.device.site,
       };
     };
+    const trunk = trunkOf(rings, bundle);
     const pitch = pitchOf(bundle.transport);
     const lanes = laneCount(bundle);
     return {
@@ -197,6 +210,7 @@ export const cordsOf = (
       ...(bundle.transport === undefined ? {} : { transport: bundle.transport }),
       width: bundle.kind === 'bare' ? bareWidth : jacketWidth(lanes, pitch),
       leastRadius: leastRadius(lanes, pitch),
+      ...(trunk === undefined ? {} : { trunk }),
       a: mouth('a'),
       b: mouth('b'),
     };

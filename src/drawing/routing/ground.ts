@@ -1,5 +1,6 @@
 import type { Side } from '../../engine/model/layout.ts';
-import type { Point, Rect } from '../geometry.ts';
+import type { EndName, Point, Rect } from '../geometry.ts';
+import { trunkWidth } from '../parts/sizes.ts';
 import type { BandPlace } from './bands.ts';
 import { bandRects } from './bands.ts';
 import { overlap, runRect } from './rects.ts';
@@ -39,6 +40,8 @@ export interface Cord {
   readonly transport?: string;
   readonly width: number;
   readonly leastRadius: number;
+  /** Set when it leaves a manifold: all its jackets share one trunk until they part. */
+  readonly trunk?: { readonly endpoint: string; readonly end: EndName; readonly jackets: number };
   readonly a: Mouth;
   readonly b: Mouth;
 }
@@ -53,6 +56,16 @@ export interface Way {
   /** How it was found: a plain pattern, a search round obstacles, or not at all. */
   readonly found: 'pattern' | 'search' | 'none';
 }
+
+/** Whether the n-th run of a way lies in its manifold's trunk: all but the branch to its own mouth. */
+export const isTrunkRun = ({ cord, corners, found }: Way, run: number): boolean =>
+  cord.trunk !== undefined &&
+  found === 'pattern' &&
+  (cord.trunk.end === 'a' ? run < corners.length - 2 : run > 0);
+
+/** How wide the n-th run of a way is: the trunk where it lies in one. */
+export const runWidth = (way: Way, run: number): number =>
+  isTrunkRun(way, run) ? trunkWidth(way.cord.trunk!.jackets) : way.cord.width;
 
 export const isLevelRun = (p: Point, q: Point): boolean => Math.abs(p.y - q.y) <= Math.abs(p.x - q.x);
 
@@ -83,12 +96,12 @@ export const runIsBlocked = (
 };
 
 /** True when any run of a way passes over an obstacle. */
-export const wayIsBlocked = (ground: Ground, way: Pick<Way, 'cord' | 'corners'>, clear = 0): boolean => {
+export const wayIsBlocked = (ground: Ground, way: Way, clear = 0): boolean => {
   const { cord, corners } = way;
-  const half = cord.width / 2 + clear;
   for (let i = 0; i + 1 < corners.length; i += 1) {
     const p = corners[i]!;
     const q = corners[i + 1]!;
+    const half = runWidth(way, i) / 2 + clear;
     const own = (obstacle: Obstacle): boolean =>
       (i === 0 && isOwn(obstacle, cord.a)) || (i === corners.length - 2 && isOwn(obstacle, cord.b));
     const inner = i > 0 && i < corners.length - 2;

@@ -18,7 +18,9 @@ import type { Bundle } from './bundles.ts';
 import { cornerRadii, pathThrough, shortRuns } from './corners.ts';
 import type { WayCrossing } from './corners.ts';
 import type { Way } from './ground.ts';
-import { centre, contains, isUpright, right } from './rects.ts';
+import { isTrunkRun, runWidth } from './ground.ts';
+import { branchOf, isBranch } from './trunks.ts';
+import { centre, contains, isUpright, opposite, right } from './rects.ts';
 import { laneCount } from './ring-seats.ts';
 
 /** Where a ferrule hands its cord over. */
@@ -104,31 +106,26 @@ export const jacketGeometries = (
   bands: readonly BandPlace[],
 ): readonly JacketGeometry[] => {
   const grounds = bands.flatMap(bandRects);
+  const ways = shaped.map(({ way }) => way);
   return shaped.map(({ bundle, way, pitch }, index): JacketGeometry => {
     const lanes = laneCount(bundle);
     const noWay = way.found === 'none';
+    const branch = isBranch(way);
+    const hasOwnMouth = (end: EndName): boolean => !branch || way.cord.trunk!.end !== end;
     const mine = crossings.flatMap(({ under, over, at }) => {
-      if (under.way === index)
-        return [
-          { run: under.run, at, width: shaped[over.way]!.way.cord.width, above: false, with: over.way },
-        ];
-      if (over.way === index)
-        return [
-          { run: over.run, at, width: shaped[under.way]!.way.cord.width, above: true, with: under.way },
-        ];
-      return [];
+      const [own, other] = under.way === index ? [under, over] : over.way === index ? [over, under] : [];
+      if (own === undefined || other === undefined || isTrunkRun(way, own.run)) return [];
+      const width = runWidth(shaped[other.way]!.way, other.run);
+      return [{ run: own.run, at, width, above: own === over, with: other.way }];
     });
-    const radii = noWay ? [] : cornerRadii(way, mine);
-    const path: Path = noWay
-      ? [
-          { kind: 'move', to: way.cord.a.at },
-          { kind: 'line', to: way.cord.b.at },
-        ]
-      : pathThrough(way.corners, radii, shortRuns(way));
+    const corners = noWay ? [way.cord.a.at, way.cord.b.at] : branch ? branchOf(way, ways) : way.corners;
+    const radii = corners.length < 3 ? [] : cornerRadii(way, mine);
+    const path = pathThrough(corners, radii, corners.length < 3 ? [] : shortRuns(way));
     const ends = { a: groupAt(rings, bundle, 'a'), b: groupAt(rings, bundle, 'b') };
     const laneGeometries = bundle.tunnels.map((tunnel, k): LaneGeometry => {
       const lanePath = offsetPath(path, (k - (lanes - 1) / 2) * pitch);
       const tailAt = (end: EndName): Path => {
+        if (!hasOwnMouth(end)) return [];
         const ferrule = ends[end].ferrules.find((f) => f.tunnel === tunnel.id)!;
         const meeting = end === 'a' ? lanePath[0]!.to : lanePath.at(-1)!.to;
         return tail(capPoint(ferrule), meeting, way.cord[end].side);
@@ -145,7 +142,7 @@ export const jacketGeometries = (
       part: bundle.part,
       kind: bundle.kind,
       ...(bundle.transport === undefined ? {} : { transport: bundle.transport }),
-      polyline: noWay ? [way.cord.a.at, way.cord.b.at] : way.corners,
+      polyline: corners,
       radii,
       path,
       width: way.cord.width,
@@ -154,11 +151,14 @@ export const jacketGeometries = (
       cuffs:
         bundle.kind === 'bare'
           ? []
-          : (['a', 'b'] as const).map((end) => ({
-              end,
-              rect: cuffRect(way.cord[end].at, way.cord[end].side, lanes),
-              side: way.cord[end].side,
-            })),
+          : (['a', 'b'] as const).map((end) => {
+              // Out of a trunk the cuff is a collar; it faces the branch's own mouth.
+              const at = end === 'a' ? corners[0]! : corners.at(-1)!;
+              const side = hasOwnMouth(end)
+                ? way.cord[end].side
+                : opposite[way.cord[end === 'a' ? 'b' : 'a'].side];
+              return { end, rect: cuffRect(at, side, lanes), side };
+            }),
       crossings: mine
         .filter(({ above }) => above)
         .map(({ at, width, with: other }) => {

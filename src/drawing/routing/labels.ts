@@ -17,7 +17,10 @@ export const placeRingLabels = (
 ): readonly { readonly ring: RingGeometry; readonly crowded: boolean }[] =>
   rings.map((ring) => {
     const { label } = ring;
-    const boxes = ring.groups.flatMap((group) => group.ferrules.map((f) => f.rect));
+    const boxes = [
+      ...ring.groups.flatMap((group) => group.ferrules.map((f) => f.rect)),
+      ...(ring.manifold === undefined ? [] : [ring.manifold.rect]),
+    ];
     const bounds = around(boxes);
     const candidates: readonly LabelGeometry[] =
       bounds === undefined

@@ -2,7 +2,7 @@ import type { Point, Rect } from '../geometry.ts';
 import { band as bandSizes } from '../parts/sizes.ts';
 import { bandRects } from './bands.ts';
 import type { Ground, Way } from './ground.ts';
-import { bandOf, foreignBands } from './ground.ts';
+import { bandOf, foreignBands, isTrunkRun, runWidth } from './ground.ts';
 import { isUpright } from './rects.ts';
 
 /** Which coordinate is being chosen: `x` for upright runs, `y` for level ones. */
@@ -20,8 +20,10 @@ export interface Stub {
 /** A run that needs a track. */
 export interface Net {
   readonly id: string;
+  /** The run it stands for; in a trunk the first of several. */
   readonly way: number;
   readonly run: number;
+  readonly members: readonly { readonly way: number; readonly run: number }[];
   readonly width: number;
   readonly from: number;
   readonly to: number;
@@ -63,7 +65,7 @@ const boundsOf = (
   const { cord, corners } = way;
   const p = corners[run]!;
   const q = corners[run + 1]!;
-  const half = cord.width / 2;
+  const half = runWidth(way, run) / 2;
   const at = p[axis];
   const along = other(axis);
   const from = Math.min(p[along], q[along]) - half;
@@ -100,7 +102,7 @@ const boundsOf = (
   }
   const keepOff = (mouth: Point, next: Point): void => {
     const towards = sign(next[axis] - mouth[axis]);
-    const reach = cord.leastRadius + 2;
+    const reach = Math.max(cord.leastRadius, isTrunkRun(way, run) ? half + 4 : 0) + 2;
     if (towards > 0) lo = Math.max(lo, mouth[axis] + reach);
     if (towards < 0) hi = Math.min(hi, mouth[axis] - reach);
   };
@@ -118,6 +120,9 @@ const boundsOf = (
 
 /** Every run along one axis, with the room it has. */
 export const netsOf = (ground: Ground, ways: readonly Way[], axis: Axis): readonly Net[] =>
+  withTrunksMerged(ways, runNets(ground, ways, axis));
+
+const runNets = (ground: Ground, ways: readonly Way[], axis: Axis): readonly Net[] =>
   ways.flatMap((way, index) => {
     if (way.found === 'none') return [];
     const { cord, corners } = way;
@@ -141,7 +146,8 @@ export const netsOf = (ground: Ground, ways: readonly Way[], axis: Axis): readon
           id: `${cord.key} ${run}`,
           way: index,
           run,
-          width: cord.width,
+          members: [{ way: index, run }],
+          width: runWidth(way, run),
           from: Math.min(p[along], q[along]),
           to: Math.max(p[along], q[along]),
           at: p[axis],
@@ -152,3 +158,37 @@ export const netsOf = (ground: Ground, ways: readonly Way[], axis: Axis): readon
       ];
     });
   });
+
+/** All runs of one trunk in one rectangle, or out of its mouth, are one net. */
+const withTrunksMerged = (ways: readonly Way[], nets: readonly Net[]): readonly Net[] => {
+  const trunks = new Map<string, Net>();
+  const merged: Net[] = [];
+  for (const net of nets) {
+    const way = ways[net.way]!;
+    if (!isTrunkRun(way, net.run)) {
+      merged.push(net);
+      continue;
+    }
+    const key = `${way.cord.trunk!.endpoint} ${net.fixed ? 'mouth' : (net.bandKey ?? net.at)}`;
+    const before = trunks.get(key);
+    if (before === undefined) {
+      trunks.set(key, net);
+      continue;
+    }
+    const lo = Math.max(before.lo, net.lo);
+    const hi = Math.min(before.hi, net.hi);
+    const middle = (lo + hi) / 2;
+    const isNew = (stub: Stub): boolean =>
+      !before.stubs.some((other) => other.at === stub.at && other.towards === stub.towards);
+    trunks.set(key, {
+      ...before,
+      members: [...before.members, ...net.members],
+      from: Math.min(before.from, net.from),
+      to: Math.max(before.to, net.to),
+      lo: lo > hi ? middle : lo,
+      hi: lo > hi ? middle : hi,
+      stubs: [...before.stubs, ...net.stubs.filter(isNew)],
+    });
+  }
+  return [...merged, ...trunks.values()];
+};

@@ -2,7 +2,7 @@ import type { Design } from '../../engine/model/design.ts';
 import type { Member } from '../../engine/model/devices.ts';
 import type { Side } from '../../engine/model/layout.ts';
 import type { EndName, Rect } from '../geometry.ts';
-import { bracket, comb, ferrule, ring } from '../parts/sizes.ts';
+import { bracket, comb, ferrule, manifold, ring } from '../parts/sizes.ts';
 import type { BandPlace } from './bands.ts';
 import type { Bundle, BundleEnd } from './bundles.ts';
 import { bottom, byText, centre, clamp, isUpright, right } from './rects.ts';
@@ -37,6 +37,14 @@ export const combLengthOf = (lanes: readonly number[], side: Side = 'right'): nu
   const apart = isUpright(side) ? ferrule.flagPitch + 14 : comb.groupPitch;
   return lanes.reduce((sum, n) => sum + (n - 1) * pitch, 0) + Math.max(0, lanes.length - 1) * apart;
 };
+
+/** Whether so many groups at one ring are drawn as one bar; upright combs always show their ferrules. */
+export const isManifold = (groups: number, side: Side): boolean =>
+  groups > manifold.mostGroups && !isUpright(side);
+
+/** How long a ring's comb is, or the bar that stands for it. */
+export const combLengthFor = (lanes: readonly number[], side: Side = 'right'): number =>
+  isManifold(lanes.length, side) ? manifold.height - ferrule.height : combLengthOf(lanes, side);
 
 const distanceTo = (limb: Rect, x: number): number => Math.max(limb.x - x, x - right(limb), 0);
 
@@ -98,7 +106,7 @@ export const bracketRect = (stand: Stand, side: Side): Rect => {
 
 const placeAlong = (seats: readonly Unseated[], stand: Stand, side: Side, onBracket: boolean): RingSeat[] => {
   const lengths = seats.map((seat) =>
-    combLengthOf(
+    combLengthFor(
       seat.groups.map((group) => laneCount(group.bundle)),
       side,
     ),

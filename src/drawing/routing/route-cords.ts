@@ -4,7 +4,7 @@ import { meetings } from './corners.ts';
 import type { WayCrossing, WayOverlap } from './corners.ts';
 import { detour, knownRuns, withoutIdlePoints } from './detour.ts';
 import type { Cord, Corners, Ground, Way } from './ground.ts';
-import { wayIsBlocked } from './ground.ts';
+import { isTrunkRun, wayIsBlocked } from './ground.ts';
 import { patternWay } from './patterns.ts';
 import { bottom, byText, grown, right, runRect } from './rects.ts';
 import { settleTracks } from './tracks.ts';
@@ -113,6 +113,12 @@ interface State {
   readonly blocked: readonly number[];
 }
 
+/** Corners rounded to half pixels. Those in a trunk all stay: the branches are told from it by their number. */
+const tidied = (way: Way): Corners => {
+  const rounded = way.corners.map(({ x, y }) => ({ x: Math.round(x * 2) / 2, y: Math.round(y * 2) / 2 }));
+  return isTrunkRun(way, way.cord.trunk?.end === 'a' ? 0 : 1) ? rounded : withoutIdlePoints(rounded);
+};
+
 const settle = (
   start: Ground,
   cords: readonly Cord[],
@@ -132,9 +138,7 @@ const settle = (
         ? way
         : {
             ...way,
-            corners: withoutIdlePoints(
-              way.corners.map(({ x, y }) => ({ x: Math.round(x * 2) / 2, y: Math.round(y * 2) / 2 })),
-            ),
+            corners: tidied(way),
           },
     );
     const blocked = ways.flatMap((way, i) =>

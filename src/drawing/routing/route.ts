@@ -6,8 +6,9 @@ import { bandRects } from './bands.ts';
 import { cableGeometries } from './cables.ts';
 import type { FurnishedSheet } from './furnish.ts';
 import { cordsOf, deviceGeometries, furnish } from './furnish.ts';
-import { cableBoxes, jacketBoxes, occupied, solidBoxes } from './free-places.ts';
+import { cableBoxes, jacketBoxes, occupied, solidBoxes, trunkBoxes } from './free-places.ts';
 import { placeLandingLabels, placeRingLabels } from './labels.ts';
+import { trunkGeometries } from './trunks.ts';
 import { placeNotes } from './note-places.ts';
 import { jacketGeometries } from './jackets.ts';
 import type { RoutedCords } from './route-cords.ts';
@@ -92,12 +93,14 @@ const draw = (design: Design): SheetGeometry => {
   }));
   const devices = deviceGeometries(furnished);
   const jackets = jacketGeometries(shaped, cords.crossings, furnished.rings, cords.bands);
+  const trunks = trunkGeometries(bundles, cords.ways);
   const laid = cableGeometries(design, furnished, { ...ground, bands: cords.bands }, jackets);
   const rawRings = [...furnished.rings.values()];
 
+  const cordBoxes = [...jacketBoxes(jackets), ...trunkBoxes(trunks)];
   const taken = occupied([
     ...solidBoxes(design, { sheet, sites, devices, rings: rawRings, jackets }),
-    ...jacketBoxes(jackets),
+    ...cordBoxes,
     ...cableBoxes(laid.map(({ geometry }) => geometry)),
   ]);
   const rings = placeRingLabels(rawRings, taken);
@@ -106,7 +109,7 @@ const draw = (design: Design): SheetGeometry => {
     geometry.landing === undefined ? [] : [geometry.landing.bar],
   );
   const bands = cords.bands.map((band): BandGeometry => {
-    const text = bandText(design, band, jacketBoxes(jackets), landings, taken, sheet.frame);
+    const text = bandText(design, band, cordBoxes, landings, taken, sheet.frame);
     taken.add(text.rect);
     return {
       id: band.id,
@@ -156,6 +159,7 @@ const draw = (design: Design): SheetGeometry => {
     devices,
     rings: rings.map(({ ring }) => ring),
     jackets,
+    trunks,
     cables: cables.map(({ geometry }) => geometry),
     notes: notes.notes,
     crowded,

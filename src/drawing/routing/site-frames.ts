@@ -1,9 +1,11 @@
 import type { Design } from '../../engine/model/design.ts';
 import type { RingGeometry, Rect, SheetFrame, SiteGeometry } from '../geometry.ts';
-import { site as siteSizes } from '../parts/sizes.ts';
+import { cuff, ferrule, manifold, site as siteSizes } from '../parts/sizes.ts';
 import { around, bottom, byText, grown, overlap, outward, right } from './rects.ts';
 import type { Stand } from './stands.ts';
 
+/** A bar is shorter than ferrules with their tails; its frame lies where it would lie with those. */
+const manifoldToFrame = ferrule.width + cuff.fromFerrule - 8 - manifold.width;
 const emptySite = { width: 240, height: 110 } as const;
 
 /** The room a device wants inside its site's frame: plates, name above a pair, and its combs up to short of their mouths. */
@@ -24,8 +26,9 @@ const roomOf = (stand: Stand, rings: readonly RingGeometry[]): Rect => {
     const out = outward[ring.side];
     for (const { mouth } of ring.groups) {
       // A cuff stands on the frame, a little outside it.
-      const x = mouth.x - out.x * 8;
-      const y = mouth.y - out.y * 8;
+      const past = ring.manifold === undefined ? -8 : manifoldToFrame;
+      const x = mouth.x + out.x * past;
+      const y = mouth.y + out.y * past;
       boxes.push({
         x,
         y: y - (out.y === 0 ? siteSizes.nameLine + 11 : 0),

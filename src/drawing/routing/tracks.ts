@@ -44,9 +44,11 @@ const settleAxis = (ground: Ground, ways: readonly Way[], axis: Axis): Pass => {
     for (const [key, need] of placed.needs) needs.set(key, Math.max(needs.get(key) ?? 0, need));
     for (const [net, at] of placed.places) {
       if (net.fixed) continue;
-      const own = corners[net.way]!;
-      own[net.run] = { ...own[net.run]!, [axis]: at };
-      own[net.run + 1] = { ...own[net.run + 1]!, [axis]: at };
+      for (const { way, run } of net.members) {
+        const own = corners[way]!;
+        own[run] = { ...own[run]!, [axis]: at };
+        own[run + 1] = { ...own[run + 1]!, [axis]: at };
+      }
     }
   }
   return {
@@ -68,7 +70,11 @@ const withDogleg = (
   const along = axis === 'x' ? 'y' : 'x';
   const candidates = [first, second]
     .filter(
-      (net) => !net.fixed && net.to - net.from > leastSplitLength && !split.has(ways[net.way]!.cord.key),
+      (net) =>
+        !net.fixed &&
+        net.members.length === 1 &&
+        net.to - net.from > leastSplitLength &&
+        !split.has(ways[net.way]!.cord.key),
     )
     .sort((a, b) => b.to - b.from - (a.to - a.from));
   const net = candidates[0];

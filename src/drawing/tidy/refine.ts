@@ -1,6 +1,7 @@
 import type { Design } from '../../engine/model/design.ts';
 import type { Layout } from '../../engine/model/layout.ts';
 import { combOrder } from '../routing/combs.ts';
+import { isManifold } from '../routing/ring-seats.ts';
 import { cornerRadii } from '../routing/corners.ts';
 import { byText } from '../routing/rects.ts';
 import { routeSheetOnce } from '../routing/route.ts';
@@ -41,7 +42,7 @@ export const refine = (design: Design, start: Layout): Layout => {
   for (;;) {
     let gained = false;
     const endpoints = [...routed.furnished.seats]
-      .filter((seat) => seat.groups.length > 1)
+      .filter((seat) => seat.groups.length > 1 && !isManifold(seat.groups.length, seat.side))
       .map((seat) => seat.endpoint)
       .sort(byText);
     for (const endpoint of endpoints) {

@@ -2,7 +2,7 @@ import type { Design, Entry } from '../../engine/model/design.ts';
 import { isGateway } from '../../engine/model/devices.ts';
 import type { Bundle } from '../routing/bundles.ts';
 import { byText } from '../routing/rects.ts';
-import { combLengthOf, laneCount } from '../routing/ring-seats.ts';
+import { combLengthFor, laneCount } from '../routing/ring-seats.ts';
 import { comb, ferrule, ferruleWidth } from '../parts/sizes.ts';
 
 export type Device = Entry<'devices'>;
@@ -83,7 +83,7 @@ export const combNeedOf = (
     if (entry.device !== device) continue;
     const own = bundles.filter((b) => b.a.endpoint === endpoint || b.b.endpoint === endpoint);
     const side = sideOf(mostUsed(own.map((b) => b.transport)));
-    lengths[side].push(combLengthOf(own.map(laneCount)));
+    lengths[side].push(combLengthFor(own.map(laneCount)));
     for (const tunnel of own.flatMap((b) => b.tunnels))
       widths[side] = Math.max(widths[side], ferruleWidth(tunnel.digits));
   }

@@ -85,6 +85,7 @@ export const sheetWith = (parts: Partial<SheetGeometry>): SheetGeometry => ({
   devices: [],
   rings: [],
   jackets: [],
+  trunks: [],
   cables: [],
   notes: [],
   crowded: [],

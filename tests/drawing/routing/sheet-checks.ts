@@ -151,6 +151,8 @@ export const crookedRuns = (geometry: SheetGeometry): readonly string[] =>
         r.groups.some((g) => g.jacket === jacket.id && g.end === end && (g.part ?? 0) === (jacket.part ?? 0)),
       )!;
       const [p, q] = end === 'a' ? jacket.polyline : [...jacket.polyline].reverse();
+      // A branch begins at its trunk, not at the manifold's mouth.
+      if (ring.manifold !== undefined && p!.x !== ring.groups[0]!.mouth.x) continue;
       const leaves =
         ring.side === 'left'
           ? q!.x < p!.x
