@@ -1,5 +1,6 @@
+import { tunnelStates } from '../network/can-come-up.ts';
 import { ends } from '../network/network.ts';
-import { associationEndOf, selectorsCover } from '../network/selectors-cover.ts';
+import { associationEndOf } from '../network/selectors-cover.ts';
 import { defineRule } from './define-rule.ts';
 import { duplicateEndpoints } from './endpoint-address-duplicate.ts';
 import { insideSegments } from './endpoint-inside-segment.ts';
@@ -11,7 +12,7 @@ export const associationSelectorsMissLoopbacks = defineRule({
   id: 'association-selectors-miss-loopbacks',
   title: 'The selectors of an association take in the endpoints of its tunnels',
   severity: 'blocking',
-  looksAt: ['associations', 'tunnels', 'endpoints', 'devices', 'sites', 'segments'],
+  looksAt: ['associations', 'tunnels', 'endpoints', 'devices', 'sites', 'segments', 'links', 'transports'],
   why: 'IPsec carries only packets that match its selectors at both ends. VXLAN between endpoints that no selector names is dropped, or leaves in clear.',
   seen: 'The association is up, its byte counters stand still, and pings between the endpoints fail.',
   sources: [{ document: 'RFC 7296', clause: 'section 2.9' }],
@@ -33,17 +34,16 @@ export const associationSelectorsMissLoopbacks = defineRule({
       const gaps = (network.tunnelsByAssociation.get(id) ?? []).flatMap((tunnelId) => {
         const tunnel = design.tunnels[tunnelId]!;
         if (ends.some((end) => unsettled.has(tunnel[end].endpoint))) return [];
-        // A tunnel that ends elsewhere is a fault of its own.
-        const [sideA, sideB] = ends.map((end) => associationEndOf(network, tunnel, association, end));
-        if (sideA === undefined || sideB === undefined || sideA === sideB) return [];
-        const cover = selectorsCover(network, tunnelId);
-        return cover.state === 'misses'
-          ? cover.gaps.map((gap) => ({
-              ...gap,
-              tunnel: tunnelId,
-              side: associationEndOf(network, tunnel, association, gap.end)!,
-            }))
-          : [];
+        const { reasons } = tunnelStates(network).get(tunnelId)!;
+        return reasons.flatMap((reason) =>
+          reason.code === 'selectors-miss'
+            ? reason.gaps.map((gap) => ({
+                ...gap,
+                tunnel: tunnelId,
+                side: associationEndOf(network, tunnel, association, gap.end)!,
+              }))
+            : [],
+        );
       });
       if (gaps.length === 0) return [];
       const places = associationPlaces(design, association);
