@@ -1,14 +1,7 @@
 import { screen, waitFor, within } from '@testing-library/react';
 import { expect, test } from 'vitest';
 import type { Session } from '#contract/session.ts';
-import {
-  engagement,
-  fakeApi,
-  json,
-  refusal,
-  sessionOf,
-  strangerSession,
-} from '../support/fake-api.ts';
+import { engagement, fakeApi, json, refusal, sessionOf, strangerSession } from '../support/fake-api.ts';
 import { renderRoute } from '../support/render-route.tsx';
 
 /** A server at which signing in works. */
