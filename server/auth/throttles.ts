@@ -19,7 +19,8 @@ export interface Throttles {
   passwordAttempt(personId: string): Promise<void>;
   passwordFound(personId: string): Promise<void>;
   demoSignIn(address: string): Promise<void>;
-  engineRequest(address: string): Promise<void>;
+  /** `weight` is how many ordinary requests the work of this one amounts to. */
+  engineRequest(address: string, weight?: number): Promise<void>;
 }
 
 export const allowances = {
@@ -73,13 +74,13 @@ export function createThrottles(pool: Pool): Throttles {
       await currentPassword.delete(personId);
     },
     demoSignIn: (address) => take(demo, addressKey(address)),
-    engineRequest: (address) => take(engine, addressKey(address)),
+    engineRequest: (address, weight = 1) => take(engine, addressKey(address), weight),
   };
 }
 
-async function take(limiter: RateLimiterPostgres, key: string): Promise<void> {
+async function take(limiter: RateLimiterPostgres, key: string, points = 1): Promise<void> {
   try {
-    await limiter.consume(key);
+    await limiter.consume(key, points);
   } catch (error) {
     if (!(error instanceof RateLimiterRes)) throw error;
     const retryAfterSeconds = Math.max(1, Math.ceil(error.msBeforeNext / 1000));

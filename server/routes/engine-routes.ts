@@ -9,6 +9,9 @@ import { limits } from '../services/limits.ts';
 import { mountRoute } from './mount-route.ts';
 import { readBody } from './read-request.ts';
 
+// Working out fixes runs the checks many times over.
+const weightOfFixes = 10;
+
 /** The engine for everybody: no sign-in, nothing kept, each address so many requests a minute. */
 export function engineRoutes(throttles: Throttles): Router {
   const router = Router();
@@ -18,8 +21,9 @@ export function engineRoutes(throttles: Throttles): Router {
   };
   const body = [throttle, ...jsonBody(limits.engineBodyBytes)];
 
-  mountRoute(router, 'POST /api/engine/check', ...body, (req, res) => {
+  mountRoute(router, 'POST /api/engine/check', ...body, async (req, res) => {
     const { design, withFixes = false } = readBody(req, checkRequestSchema);
+    if (withFixes) await throttles.engineRequest(req.ip ?? '', weightOfFixes - 1);
     res.json(checkDesign(design, withFixes));
   });
 

@@ -40,8 +40,10 @@ export function checkDesign(input: unknown, withFixes: boolean): z.infer<typeof 
   return {
     engineVersion: manifest.version,
     counts: countBySeverity(findings),
-    findings: findings.map((finding) =>
-      withFixes ? { ...finding, fixes: fixesFor(parsed.value, finding) } : { ...finding },
+    findings: findings.map((finding, index) =>
+      withFixes && index < limits.findingsWithFixes
+        ? { ...finding, fixes: fixesFor(parsed.value, finding) }
+        : { ...finding },
     ),
   };
 }

@@ -12,6 +12,7 @@ export const limits = {
   designEntries: 20_000,
   /** A design that is checked without being stored. */
   checkedEntries: 5_000,
-  /** Each finding's fixes cost some runs of all checks. */
+  /** Each finding's fixes cost some runs of all checks: fewer entries then, and fixes for the first findings only. */
   checkedEntriesWithFixes: 500,
+  findingsWithFixes: 20,
 } as const;

@@ -5,12 +5,12 @@ import { z } from 'zod';
 /** POST /api/engine/check: a design's own JSON in, findings out; nothing is kept. */
 export const checkRequestSchema = z.strictObject({
   design: z.unknown(),
-  /** Fixes cost a run of all rules each; left out unless asked for. */
+  /** Left out unless asked for, and then worked out for the 20 most severe findings: fixes cost a run of all checks each. */
   withFixes: z.boolean().optional(),
 });
 export const checkAnswerSchema = z.object({
   engineVersion: z.string(),
   counts: z.object({ blocking: z.int(), degrading: z.int(), advisory: z.int() }),
-  /** The engine's findings, most severe first; each with its `fixes` when they were asked for. */
+  /** The engine's findings, most severe first; the first with their `fixes` when they were asked for. */
   findings: z.array(z.record(z.string(), z.unknown())),
 });

@@ -8,7 +8,7 @@ import { computeWire } from '#engine/wire/compute-wire.ts';
 import { wireRequestSchema } from '#engine/wire/wire-request.ts';
 import { allowances } from '../../../server/auth/throttles.ts';
 import { limits } from '../../../server/services/limits.ts';
-import { pairDesign } from '../../support/designs.ts';
+import { hubDesign, pairDesign } from '../../support/designs.ts';
 import type { TestApplication } from '../../support/test-application.ts';
 import { startTestApplication, testConfig } from '../../support/test-application.ts';
 
@@ -48,6 +48,25 @@ describe('checking a design', () => {
     expect(fixes.length).toBeGreaterThan(0);
     const cured = applyPatch(faulty, fixes[0]!.patch as Parameters<typeof applyPatch>[1]);
     expect(runRules(cured).map(({ rule }) => rule)).not.toContain('tunnel-vni-mismatch');
+  });
+
+  test('works fixes out for the most severe findings only, and counts them for more', async () => {
+    const design = hubDesign(limits.findingsWithFixes + 5);
+    const tunnels = Object.fromEntries(
+      Object.keys(design.tunnels).map((id, index) => [id, { b: { vni: 20_000 + index } }]),
+    );
+    const body = { design: applyPatch(design, { tunnels }), withFixes: true };
+    const response = await post('/api/engine/check', body).expect(200);
+    const { findings } = checkAnswerSchema.parse(response.body);
+    expect(findings.length).toBeGreaterThan(limits.findingsWithFixes);
+    expect(findings.filter((finding) => 'fixes' in finding)).toEqual(
+      findings.slice(0, limits.findingsWithFixes),
+    );
+    const statuses: number[] = [];
+    for (let request = 0; request < 12; request += 1)
+      statuses.push((await post('/api/engine/check', { design: pairDesign(), withFixes: true })).status);
+    expect(statuses.filter((status) => status === 200)).toHaveLength(11);
+    expect(statuses.at(-1)).toBe(429);
   });
 
   test('names every problem of what is no design', async () => {
