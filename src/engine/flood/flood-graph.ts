@@ -36,9 +36,6 @@ export interface FloodGraph {
   readonly nodeOf: (element: number, direction: Direction, tags: Tags) => number;
 }
 
-const nodeKey = (element: number, direction: Direction, tags: Tags): number =>
-  (element * 2 + direction) * 0x100_0000 + tags;
-
 /** VLANs that mean something at a site: of its segments, its access ports, trunks' lists and native VLANs, and circuits. */
 const vlansOfSites = (network: Network): ReadonlyMap<Id, readonly number[]> => {
   const { design } = network;
@@ -100,7 +97,8 @@ const seedsOf = (network: Network, forwarding: Forwarding): readonly Seed[] => {
 
 const build = (network: Network): FloodGraph => {
   const forwarding = forwardingOf(network, { blocked: blockedPorts(network) });
-  const nodes = new Map<number, number>();
+  // By element and direction, then by tags: small keys, which maps are quickest with.
+  const nodes: (Map<Tags, number> | undefined)[] = [];
   const element: number[] = [];
   const direction: number[] = [];
   const tags: number[] = [];
@@ -110,11 +108,11 @@ const build = (network: Network): FloodGraph => {
   const edgeClasses: number[] = [];
   let hasFilters = false;
   const nodeFor = (crossed: number, way: Direction, wire: Tags): number => {
-    const key = nodeKey(crossed, way, wire);
-    const known = nodes.get(key);
+    const byTags = (nodes[crossed * 2 + way] ??= new Map<Tags, number>());
+    const known = byTags.get(wire);
     if (known !== undefined) return known;
     const fresh = element.length;
-    nodes.set(key, fresh);
+    byTags.set(wire, fresh);
     element.push(crossed);
     direction.push(way);
     tags.push(wire);
@@ -158,7 +156,7 @@ const build = (network: Network): FloodGraph => {
     edgeTo: Int32Array.from(edgeTo),
     edgeClasses: Uint8Array.from(edgeClasses),
     hasFilters,
-    nodeOf: (crossed, way, wire) => nodes.get(nodeKey(crossed, way, wire)) ?? -1,
+    nodeOf: (crossed, way, wire) => nodes[crossed * 2 + way]?.get(wire) ?? -1,
   };
 };
 
