@@ -1,3 +1,4 @@
+import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { findStorms } from '#engine/flood/find-storms.ts';
 import { floodGraph } from '#engine/flood/flood-graph.ts';
@@ -135,5 +136,66 @@ describe('spanning tree across the overlay', () => {
       { host: 'h-s1-a', copies: 1 },
       { host: 'h-s2-a', copies: 1 },
     ]);
+  });
+});
+
+describe('spanning tree among any switches cabled in any way', () => {
+  const cabled = fc.array(fc.tuple(fc.nat(4), fc.nat(4)), { minLength: 1, maxLength: 10 });
+  /** Five switches with a host each, and a cable for each pair given. */
+  const hall = (pairs: readonly (readonly [number, number])[], isOn: boolean) => {
+    const ports = (i: number) => ({
+      host: { number: 1, role: 'lan', mode: 'access', vlan: 110 },
+      ...Object.fromEntries(
+        pairs.flatMap((pair, n) =>
+          ([0, 1] as const)
+            .filter((side) => pair[side] === i)
+            .map((side) => [
+              `c${n}-${side}`,
+              { number: 2 * n + side + 2, role: 'lan', mode: 'trunk', speedBps: 1_000_000 * (n + 1) },
+            ]),
+        ),
+      ),
+    });
+    const indices = [0, 1, 2, 3, 4];
+    return applyPatch(pairDesign(), {
+      devices: Object.fromEntries(
+        indices.flatMap((i) => [
+          [
+            `x${i}`,
+            { kind: 'switch', site: 's0', name: `x${i}`, ...(isOn ? { settings: on } : {}), ports: ports(i) },
+          ],
+          [
+            `host${i}`,
+            {
+              kind: 'host',
+              site: 's0',
+              name: `host${i}`,
+              segment: 'a',
+              ports: { p1: { number: 1, role: 'lan' } },
+            },
+          ],
+        ]),
+      ),
+      links: Object.fromEntries([
+        ...indices.map((i) => [`h${i}`, cable(`host${i}`, 'p1', `x${i}`, 'host')]),
+        ...pairs.map(([a, b], n) => [`c${n}`, cable(`x${a}`, `c${n}-0`, `x${b}`, `c${n}-1`)]),
+      ]),
+    } as MergePatch);
+  };
+
+  it('leaves no storm and takes one copy to everybody that any cable leads to', () => {
+    fc.assert(
+      fc.property(cabled, (pairs) => {
+        const [open, treed] = [indexNetwork(hall(pairs, false)), indexNetwork(hall(pairs, true))];
+        expect(findStorms(floodGraph(treed))).toEqual([]);
+        for (const host of ['host0', 'host3']) {
+          const before = reach(open, { host }).deliveries.map(({ host: to }) => to);
+          const after = reach(treed, { host }).deliveries;
+          expect(after.map(({ host: to }) => to)).toEqual(before.filter((to) => to !== host));
+          expect(after.every(({ copies }) => copies === 1)).toBe(true);
+        }
+      }),
+      { numRuns: 150 },
+    );
   });
 });
