@@ -30,7 +30,7 @@ export interface SearchManner {
 const searchClearance = 12;
 const leastClearance = 4;
 
-export const cordManner: SearchManner = {
+const cordManner: SearchManner = {
   ownBand: 1,
   open: 3,
   throughBand: true,

@@ -29,10 +29,10 @@ export const occupied = (boxes: readonly Rect[]): Occupied => {
 };
 
 /** The ground that a polyline covers, run by run. */
-export const runRects = (polyline: readonly Point[], half: number): readonly Rect[] =>
+const runRects = (polyline: readonly Point[], half: number): readonly Rect[] =>
   polyline.slice(1).map((q, i) => runRect(polyline[i]!, q, half, half));
 
-export const siteNameRect = (design: Design, { id, rect }: SiteGeometry): Rect => ({
+const siteNameRect = (design: Design, { id, rect }: SiteGeometry): Rect => ({
   x: rect.x + siteSizes.nameAt - 4,
   y: rect.y - 10,
   width: textWidth(design.sites[id]?.name ?? '', text.siteName, 600) + 8,

@@ -41,8 +41,7 @@ export interface Net {
 const other = (axis: Axis): Axis => (axis === 'x' ? 'y' : 'x');
 
 /** Whether the n-th run of a way is upright; runs alternate from the first, which follows its mouth. */
-export const runIsUpright = (way: Way, run: number): boolean =>
-  isUpright(way.cord.a.side) !== (run % 2 === 1);
+const runIsUpright = (way: Way, run: number): boolean => isUpright(way.cord.a.side) !== (run % 2 === 1);
 
 interface Interval {
   readonly start: number;

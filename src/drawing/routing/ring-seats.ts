@@ -32,7 +32,7 @@ export interface RingSeat {
 export const laneCount = (bundle: Bundle): number => Math.max(1, bundle.tunnels.length);
 
 /** From the first ferrule of a comb to the last, centre to centre. On top and bottom edges ferrules are flags and stand wider apart. */
-export const combLengthOf = (lanes: readonly number[], side: Side = 'right'): number => {
+const combLengthOf = (lanes: readonly number[], side: Side = 'right'): number => {
   const pitch = isUpright(side) ? ferrule.flagPitch : comb.ferrulePitch;
   const apart = isUpright(side) ? ferrule.flagPitch + 14 : comb.groupPitch;
   return lanes.reduce((sum, n) => sum + (n - 1) * pitch, 0) + Math.max(0, lanes.length - 1) * apart;
@@ -74,9 +74,6 @@ export const sideTowards = (
   const { x } = centre(rect);
   return centre(nearestLimb(band, x)).x < x ? 'left' : 'right';
 };
-
-export const endsAt = (bundle: Bundle, endpoint: string): readonly EndName[] =>
-  (['a', 'b'] as const).filter((end) => bundle[end].endpoint === endpoint);
 
 interface Unseated {
   readonly endpoint: string;

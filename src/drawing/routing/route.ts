@@ -32,7 +32,7 @@ export const routeSheetOnce = (design: Design): RoutedSheet => {
 };
 
 /** Routes all cords, with lanes drawn closer on transports whose jackets would overlap otherwise. */
-export const routeSheet = (design: Design): RoutedSheet => {
+const routeSheet = (design: Design): RoutedSheet => {
   const furnished = furnish(design);
   const pitches = new Map<string, number>();
   let best: RoutedSheet | undefined;

@@ -66,7 +66,7 @@ export const plateSize = (device: Device, load: PortLoad = noLoad): Size => {
 };
 
 /** A device's plates from the top left corner of its first one. */
-export const standAt = (id: string, device: Device, x: number, y: number, load?: PortLoad): Stand => {
+const standAt = (id: string, device: Device, x: number, y: number, load?: PortLoad): Stand => {
   const size = plateSize(device, load);
   if (device.kind !== 'ha-pair') {
     const rect = { x, y, ...size };
@@ -82,11 +82,11 @@ export const standAt = (id: string, device: Device, x: number, y: number, load?:
 const kindOrder = { firewall: 0, 'ha-pair': 0, router: 1, switch: 2, host: 3 } as const;
 
 /** Devices in the order in which a reader meets them: gateways, routers, switches, hosts; by id among equals. */
-export const inReadingOrder = (a: readonly [string, Device], b: readonly [string, Device]): number =>
+const inReadingOrder = (a: readonly [string, Device], b: readonly [string, Device]): number =>
   kindOrder[a[1].kind] - kindOrder[b[1].kind] || byText(a[0], b[0]);
 
 /** Devices that a collapsed site keeps back: all but its gateways with endpoints. */
-export const hiddenDevices = (design: Design): ReadonlySet<string> => {
+const hiddenDevices = (design: Design): ReadonlySet<string> => {
   const collapsed = new Set(
     Object.entries(design.layout.sites ?? {})
       .filter(([, place]) => place.collapsed === true)

@@ -22,6 +22,7 @@ import { framePart, paperPart } from '../parts/paper-part.ts';
 import { ringPart } from '../parts/ring-part.ts';
 import { sitePart } from '../parts/site-part.ts';
 import { titleBlockPart } from '../parts/title-block-part.ts';
+import { trunkPart } from '../parts/trunk-part.ts';
 import { route } from '../routing/route.ts';
 import type { Shape } from '../shape.ts';
 import type { Theme } from '../theme/tokens.ts';
@@ -48,7 +49,13 @@ export const sheetShapes = (geometry: SheetGeometry, view: SheetView): readonly 
     { name: 'sites', shapes: geometry.sites.map((site) => sitePart(site, facts, look)) },
     { name: 'bands', shapes: geometry.bands.map((band) => bandPart(band, sheet, facts, look)) },
     { name: 'cables', shapes: geometry.cables.map((cable) => cablePart(cable, look)) },
-    { name: 'cords', shapes: geometry.jackets.map((jacket) => jacketPart(jacket, geometry, facts, look)) },
+    {
+      name: 'cords',
+      shapes: [
+        ...geometry.trunks.map((trunk) => trunkPart(trunk, geometry, facts, look)),
+        ...geometry.jackets.map((jacket) => jacketPart(jacket, geometry, facts, look)),
+      ],
+    },
     { name: 'devices', shapes: geometry.devices.map((device) => devicePart(device, facts, look)) },
     { name: 'rings', shapes: geometry.rings.map((ring) => ringPart(ring, facts, look)) },
     {

@@ -29,7 +29,7 @@ export interface Arrangement {
 /** What routing reported back: how wide each transport's limbs and header have to be. */
 export type BandWidths = ReadonlyMap<string, number>;
 
-export const widthOfBand = (design: Design, transport: string, widths: BandWidths): number =>
+const widthOfBand = (design: Design, transport: string, widths: BandWidths): number =>
   Math.max(
     widths.get(transport) ?? 0,
     design.transports[transport]?.trusted === true ? bandSizes.trustedWidth : bandSizes.width,

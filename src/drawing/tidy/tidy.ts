@@ -4,24 +4,19 @@ import { sheetSizes } from '../../engine/model/layout.ts';
 import { diffPatch } from '../../engine/model/merge-patch.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { band as bandSizes, lane } from '../parts/sizes.ts';
-import { bundlesOf } from '../routing/bundles.ts';
-import { byText } from '../routing/rects.ts';
 import { cordsOf, furnish } from '../routing/furnish.ts';
 import { bandNeeds } from '../routing/route-cords.ts';
 import { route, routeSheetOnce } from '../routing/route.ts';
 import type { RoutedSheet } from '../routing/route.ts';
 import { sheetFrame } from '../routing/sheet-frame.ts';
 import type { Arrangement, Seating } from './arrangement.ts';
+import { layoutOf } from './arranged-layout.ts';
 import { arrange } from './arrangement.ts';
+import { siteBlocks } from './site-blocks.ts';
 import { refine, scoreOf } from './refine.ts';
 import { seatings } from './seatings.ts';
-import type { SiteBlock } from './site-block.ts';
-import { columnsBlock, mirrored, rowBlock, sizeOfDevice, stackBlock } from './site-block.ts';
-import type { SiteGraphFacts } from './site-graph.ts';
 import type { SiteLayout } from './site-layout.ts';
 import { siteGraphFacts } from './site-graph.ts';
-import type { CombNeed, Level } from './site-parts.ts';
-import { combNeedOf, sitePartsOf } from './site-parts.ts';
 
 export interface TidyOptions {
   /** Layouts computed for the sites that `unusualSites` names. */
@@ -30,121 +25,8 @@ export interface TidyOptions {
 
 const mostLimbs = 4;
 const mostWidthRounds = 4;
-const collapseOver = 24;
 /** Steps in px by which right columns may be moved, so that runs of both sides don't meet. */
 const staggers = [16, -16, 24, -24, 32, -32, 44, -44, 58, -58];
-
-/** Blocks of all sites for either facing; each is built once. */
-const blocksOf = (
-  design: Design,
-  facts: SiteGraphFacts,
-  options: TidyOptions,
-): {
-  readonly blockOf: (site: string, facing: Level) => SiteBlock;
-  readonly collapsed: ReadonlySet<string>;
-} => {
-  const parts = sitePartsOf(design);
-  const bundles = bundlesOf(design);
-  const collapses = parts.size > collapseOver;
-  const collapsed = new Set(
-    [...parts.values()]
-      .filter((site) =>
-        collapses
-          ? site.shape === 'stack' && site.hosts.length + site.switches.length > 0
-          : design.layout.sites?.[site.id]?.collapsed === true && site.shape === 'stack',
-      )
-      .map((site) => site.id),
-  );
-  const known = new Map<string, SiteBlock>();
-  const build = (id: string, facing: Level): SiteBlock => {
-    const site = parts.get(id)!;
-    // A further transport's band lies right of everything; whoever stands on its far side looks left at it.
-    const sideOf = (transport: string | undefined): Level =>
-      transport === undefined || transport === facts.main || isHome(facts, id, transport) ? facing : 'right';
-    const needOf = (device: string): CombNeed => combNeedOf(design, device, bundles, sideOf);
-    const given = options.siteLayouts?.[id];
-    if (site.shape === 'stack') return stackBlock(site, needOf(site.gateways[0]![0]), collapsed.has(id));
-    if (site.shape === 'row') {
-      const need = needOf(site.gateways[0]![0]);
-      // All rings of a pair dock on its one bracket.
-      const widest = Math.max(need.ferruleWidth.left, need.ferruleWidth.right);
-      return rowBlock(site, { ...need, ferruleWidth: { left: widest, right: widest } }, facing);
-    }
-    if (given === undefined) return columnsBlock(site, needOf, facing);
-    const block: SiteBlock = { positions: new Map(Object.entries(given.positions)), size: given.size };
-    return facing === 'right'
-      ? block
-      : mirrored(block, (device) => sizeOfDevice(design.devices[device]!).width);
-  };
-  return {
-    collapsed,
-    blockOf: (site, facing) => {
-      const key = `${facing} ${site}`;
-      const before = known.get(key);
-      if (before !== undefined) return before;
-      const block = build(site, facing);
-      known.set(key, block);
-      return block;
-    },
-  };
-};
-
-const isHome = (facts: SiteGraphFacts, site: string, transport: string): boolean =>
-  facts.main !== undefined &&
-  !(facts.landedOn.get(site)?.has(facts.main) ?? false) &&
-  (facts.landedOn.get(site)?.has(transport) ?? false);
-
-/** The layout that an arrangement stands for; what a person locked keeps its place. */
-const layoutOf = (
-  design: Design,
-  arrangement: Arrangement,
-  blockOf: (site: string, facing: Level) => SiteBlock,
-  collapsed: ReadonlySet<string>,
-): Layout => {
-  const facing = new Map<string, Level>();
-  arrangement.seating.columns.forEach((sites, i) =>
-    sites.forEach((site) => facing.set(site, i % 2 === 0 ? 'right' : 'left')),
-  );
-  arrangement.seating.further.forEach((sites) => sites.forEach((site) => facing.set(site, 'left')));
-  const before = design.layout;
-  const sites: NonNullable<Layout['sites']> = {};
-  const devices: NonNullable<Layout['devices']> = {};
-  for (const [id, rect] of [...arrangement.sites].sort(([a], [b]) => byText(a, b))) {
-    const was = before.sites?.[id];
-    const block = blockOf(id, facing.get(id)!);
-    if (was?.locked === true) sites[id] = was;
-    else sites[id] = { ...rect, ...(collapsed.has(id) ? { collapsed: true } : {}) };
-    for (const [device, at] of block.positions) {
-      const own = before.devices?.[device];
-      devices[device] =
-        own?.locked === true || was?.locked === true
-          ? (own ?? { x: rect.x + at.x, y: rect.y + at.y })
-          : { x: Math.round((rect.x + at.x) * 2) / 2, y: Math.round((rect.y + at.y) * 2) / 2 };
-    }
-    if (collapsed.has(id))
-      for (const [device, { site }] of Object.entries(design.devices))
-        if (site === id && devices[device] === undefined)
-          devices[device] = before.devices?.[device] ?? { x: rect.x + 40, y: rect.y + rect.height };
-  }
-  const transports: NonNullable<Layout['transports']> = {};
-  for (const [id, { limbs, header }] of arrangement.bands) {
-    const was = before.transports?.[id];
-    transports[id] =
-      was?.locked === true
-        ? { ...was, limbs: was.limbs.map((limb) => ({ ...limb })) }
-        : {
-            limbs: limbs.map((limb) => ({ ...limb })),
-            ...(header === undefined ? {} : { header: { ...header } }),
-          };
-  }
-  return {
-    sheet: arrangement.size,
-    sites,
-    devices,
-    transports,
-    ...(before.notes === undefined ? {} : { notes: before.notes }),
-  };
-};
 
 interface Tidied {
   readonly layout: Layout;
@@ -154,7 +36,7 @@ interface Tidied {
 }
 
 /** The design with another layout. */
-export const withLayout = (design: Design, layout: Layout): Design => ({ ...design, layout });
+const withLayout = (design: Design, layout: Layout): Design => ({ ...design, layout });
 
 /**
  * Lays out the whole sheet and answers the patch on the design that does it: sites in columns along their transports'
@@ -163,7 +45,7 @@ export const withLayout = (design: Design, layout: Layout): Design => ({ ...desi
  */
 export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
   const facts = siteGraphFacts(design);
-  const { blockOf, collapsed } = blocksOf(design, facts, options);
+  const { blockOf, collapsed } = siteBlocks(design, facts, options.siteLayouts ?? {});
   const heightOf = (site: string): number => blockOf(site, 'left').size.height + 16;
 
   const attempt = (

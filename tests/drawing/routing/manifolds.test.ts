@@ -1,9 +1,13 @@
 import { describe, expect, it } from 'vitest';
 import type { Design } from '#engine/model/design.ts';
 import { applyPatch } from '#engine/model/merge-patch.ts';
+import { noDecorations } from '#drawing/decorations.ts';
 import type { Point, SheetGeometry } from '#drawing/geometry.ts';
+import { drawingFacts } from '#drawing/parts/drawing-facts.ts';
 import { pathAt, pathLength } from '#drawing/path-geometry.ts';
 import { route } from '#drawing/routing/route.ts';
+import { sheetShapes } from '#drawing/svg/sheet-svg.ts';
+import { toSvgText } from '#drawing/svg/to-svg-text.ts';
 import { tidy } from '#drawing/tidy/tidy.ts';
 import { hubDesign } from '../../support/designs.ts';
 import {
@@ -125,4 +129,41 @@ it('a spoke thrown behind the hub leaves the trunk to the others and finds its o
 it('comes out the same with every list reversed', () => {
   const design = tidied(hubDesign(11, { segments: ['a'] }));
   expect(route(reversed(design))).toEqual(route(design));
+});
+
+it('draws the trunk under its branches, with a hairline for each segment', () => {
+  const design = tidied(hubDesign(12, { segments: ['a', 'b'] }));
+  const geometry = route(design);
+  const segments = new Map(
+    Object.keys(design.tunnels).map((id) => [id, [id.endsWith('-a') ? 'a' : 'b']] as const),
+  );
+  const facts = drawingFacts(design, segments);
+  const layers = sheetShapes(geometry, { level: 'near', decorations: noDecorations, facts });
+  const cords = layers.find((layer) => layer.name === 'cords')!.shapes;
+  expect(cords[0]!.key).toBe('trunk-endpoints/lo-s0');
+  expect(cords).toHaveLength(1 + geometry.jackets.length);
+  const text = toSvgText([cords[0]!]);
+  const pieces = geometry.trunks[0]!.pieces.length;
+  expect(text.match(/var\(--jacket\)/g)).toHaveLength(pieces);
+  expect(text.match(/var\(--seg-a\)/g)).toHaveLength(pieces);
+  expect(text.match(/var\(--seg-b\)/g)).toHaveLength(pieces);
+});
+
+it('a site that tidying collapsed stands in order when it is opened', () => {
+  const design = tidied(hubDesign(26, { segments: ['a'] }));
+  expect(design.layout.sites!['s3']!.collapsed).toBe(true);
+  expect(route(design).devices.map((device) => device.id)).not.toContain('h-s3-a');
+  const opened = applyPatch(design, { layout: { sites: { s3: { collapsed: null } } } });
+  const devices = route(opened).devices.filter((device) => opened.devices[device.id]!.site === 's3');
+  expect(devices.map((device) => device.id)).toEqual(['fw-s3', 'h-s3-a', 'sw-s3']);
+  devices.forEach((device, i) => {
+    for (const other of devices.slice(i + 1)) {
+      const apart =
+        device.rect.x + device.rect.width <= other.rect.x ||
+        other.rect.x + other.rect.width <= device.rect.x ||
+        device.rect.y + device.rect.height <= other.rect.y ||
+        other.rect.y + other.rect.height <= device.rect.y;
+      expect(apart, `${device.id} and ${other.id}`).toBe(true);
+    }
+  });
 });
