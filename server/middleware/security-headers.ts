@@ -11,9 +11,7 @@ export function securityHeaders(config: Config): RequestHandler {
       directives: {
         defaultSrc: ["'none'"],
         scriptSrc: ["'self'"],
-        // Positions and sizes on the sheet are style attributes set by script.
         styleSrc: ["'self'"],
-        styleSrcAttr: ["'unsafe-inline'"],
         fontSrc: ["'self'", 'data:'],
         imgSrc: ["'self'", 'data:', 'blob:'],
         connectSrc: ["'self'", 'data:'],

@@ -4,8 +4,18 @@ import { once } from 'node:events';
 import { connect } from 'node:net';
 import { join } from 'node:path';
 import { setTimeout as delay } from 'node:timers/promises';
+import supertest from 'supertest';
 import { afterAll, afterEach, beforeAll, describe, expect, test } from 'vitest';
 import { freeLoopbackPort } from '../../server/bootstrap/free-port.mjs';
+import { patchListSchema, savedPatchesSchema } from '#contract/designs.ts';
+import { openDatabase } from '../../server/db/open-database.ts';
+import {
+  addDesign,
+  addEngagement,
+  addWorkspace,
+  testPassword,
+  tokenOf,
+} from '../support/test-application.ts';
 import { createTestDatabase } from '../support/test-database.ts';
 import type { TestDatabase } from '../support/test-database.ts';
 
@@ -93,6 +103,49 @@ describe('the server as a process', () => {
       );
     },
   );
+
+  test('has kept every edit that it acknowledged when it is killed and started again', async () => {
+    const own = openDatabase(database.url);
+    const workspace = await addWorkspace({ database: own });
+    const engagementId = await addEngagement({ database: own }, workspace.id);
+    const designId = await addDesign({ database: own }, engagementId);
+    await own.close();
+    const { email } = workspace.people.architect;
+    let acknowledged = 0;
+    for (let life = 0; life < 2; life += 1) {
+      const server = await start();
+      await untilHealthy(server);
+      const agent = supertest.agent(server.url);
+      const visitor = tokenOf(await agent.get('/api/session'));
+      const session = await agent
+        .post('/api/session')
+        .set('X-CSRF-Token', visitor)
+        .send({ email, password: testPassword })
+        .expect(200);
+      const kept = await agent.get(`/api/designs/${designId}/patches?after=0`).expect(200);
+      const { sequence } = patchListSchema.parse(kept.body);
+      // The one that was on its way may have arrived too.
+      expect([acknowledged, acknowledged + 1]).toContain(sequence);
+      acknowledged = sequence;
+      const exit = once(server.child, 'exit');
+      setTimeout(() => server.child.kill('SIGKILL'), 400);
+      for (;;) {
+        const saved = await agent
+          .post(`/api/designs/${designId}/patches`)
+          .set('X-CSRF-Token', tokenOf(session))
+          .send({
+            baseSequence: acknowledged,
+            edits: [{ editId: crypto.randomUUID(), patch: { meta: { revision: `${acknowledged}` } } }],
+          })
+          .catch(() => undefined);
+        if (saved === undefined) break;
+        expect(saved.status).toBe(200);
+        acknowledged = savedPatchesSchema.parse(saved.body).sequence;
+      }
+      await exit;
+    }
+    expect(acknowledged).toBeGreaterThan(2);
+  });
 
   test('says in its log what is wrong with its configuration', async () => {
     const server = await start({ SESSION_SECRET: 'short' });

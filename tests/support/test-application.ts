@@ -97,7 +97,7 @@ export interface TestWorkspace {
 let serial = 0;
 
 /** A workspace with one person of each role. */
-export async function addWorkspace({ database }: TestApplication): Promise<TestWorkspace> {
+export async function addWorkspace({ database }: Pick<TestApplication, 'database'>): Promise<TestWorkspace> {
   serial += 1;
   const id = await insertWorkspace(database.knex, `Workspace ${serial}`);
   const people = {} as { [role in Role]: TestPerson };
@@ -116,7 +116,10 @@ export async function addPerson({ knex }: Database, name: string): Promise<TestP
   return { id: await insertPerson(knex, { name, email, passwordHash: await passwordHash }), name, email };
 }
 
-export async function addEngagement({ database }: TestApplication, workspaceId: string): Promise<string> {
+export async function addEngagement(
+  { database }: Pick<TestApplication, 'database'>,
+  workspaceId: string,
+): Promise<string> {
   serial += 1;
   const words = { workspaceId, name: `Engagement ${serial}`, summary: '' };
   return (await insertEngagement(database.knex, words, new Date())).id;
@@ -124,7 +127,7 @@ export async function addEngagement({ database }: TestApplication, workspaceId: 
 
 /** A design in an engagement, as if created: its document is the snapshot at 0. */
 export async function addDesign(
-  { database }: TestApplication,
+  { database }: Pick<TestApplication, 'database'>,
   engagementId: string,
   document: Design = emptyDesign('A design'),
 ): Promise<string> {

@@ -1,3 +1,5 @@
+import { readFileSync, readdirSync } from 'node:fs';
+import { join } from 'node:path';
 import type { Test } from 'supertest';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import type { Action, Role } from '#contract/session.ts';
@@ -91,6 +93,15 @@ describe('the table of roles', () => {
       presales: ['workspace.read', 'design.read', 'design.create'],
       installer: ['workspace.read'],
     });
+  });
+
+  test('is the only way to put up a route', () => {
+    const folder = join(import.meta.dirname, '..', '..', '..', 'server', 'routes');
+    const files = readdirSync(folder).filter((name) => name !== 'mount-route.ts');
+    const source = files.map((name) => readFileSync(join(folder, name), 'utf8')).join('\n');
+    expect(source).not.toMatch(/\brouter\s*(\.|\[)/);
+    const mounted = [...source.matchAll(/mountRoute\(router, '([^']+)'/g)].map(([, route]) => route);
+    expect(mounted.sort()).toEqual(Object.keys(routes).sort());
   });
 
   test('lists each route that the server answers, and no other', () => {
