@@ -237,6 +237,10 @@ const edgesOf = ({ design, geometry, selected }: FlowInput): FlowEdge[] => {
     const link = design.links[id];
     if (link === undefined) continue;
     const ref: ElementRef = { collection: 'links', id };
+    // Both members of a pair land the same link, each by a line of its own.
+    const line = edges.filter(
+      (edge) => edge.data?.ref?.collection === 'links' && edge.data.ref.id === id,
+    ).length;
     const from = link.kind === 'cable' ? link.a.device : link.device;
     const to =
       link.kind === 'cable'
@@ -245,6 +249,7 @@ const edgesOf = ({ design, geometry, selected }: FlowInput): FlowEdge[] => {
     if (!drawn.has(from)) continue;
     edges.push({
       ...part(ref),
+      id: line === 0 ? elementKey(ref) : `${elementKey(ref)}#${line}`,
       type: 'cable',
       source: elementKey({ collection: 'devices', id: from }),
       sourceHandle: bodyHandle,

@@ -1,11 +1,12 @@
-import type { Point, SheetGeometry } from '../drawing/geometry.ts';
-import { plateSizes } from '../drawing/parts/sizes.ts';
+import type { Point, Rect, SheetGeometry } from '../drawing/geometry.ts';
+import { plateSizes, type Size } from '../drawing/parts/sizes.ts';
 import type { Design } from '../engine/model/design.ts';
 import type { DeviceKind } from '../engine/model/devices.ts';
 import { isGateway } from '../engine/model/devices.ts';
 import type { NewId, Operation } from '../workspace/operations/operation.ts';
 import { refused } from '../workspace/operations/operation.ts';
 import {
+  newSiteSize,
   placeDevice,
   placeEndpoint,
   placeNote,
@@ -54,22 +55,27 @@ export const endAt = (geometry: SheetGeometry, at: Point): ConnectEnd | undefine
   return band === undefined ? undefined : { kind: 'transport', id: band.id };
 };
 
-/** Puts a part from the tray down at a point of the sheet. */
+/** Puts a part from the tray down at a point of the sheet; a device goes into `site`, or the one whose frame is there. */
 export const placePart = (
   design: Design,
   geometry: SheetGeometry,
   part: PlacedPart,
   at: Point,
   newId: NewId,
+  site: string | undefined = siteAt(geometry, at),
 ): Operation => {
   const { frame, titleBlock } = geometry.sheet;
   if (isDeviceKind(part)) {
     const size = plateSizes[part];
     const corner = { x: Math.round(at.x - size.width / 2), y: Math.round(at.y - size.height / 2) };
-    return placeDevice(design, part, corner, siteAt(geometry, at), newId);
+    return placeDevice(design, part, corner, site, newId);
   }
   if (part === 'site')
-    return placeSite(design, { x: Math.round(at.x - 180), y: Math.round(at.y - 125) }, newId);
+    return placeSite(
+      design,
+      { x: Math.round(at.x - newSiteSize.width / 2), y: Math.round(at.y - newSiteSize.height / 2) },
+      newId,
+    );
   if (part === 'note') return placeNote({ x: Math.round(at.x), y: Math.round(at.y) }, newId);
   if (part === 'transport') {
     const overTitle =
@@ -109,22 +115,49 @@ export const freePlace = (
       ? middle
       : { x: gateway.rect.x + gateway.rect.width / 2, y: gateway.rect.y + gateway.rect.height / 2 };
   }
-  const size = isDeviceKind(part) ? plateSizes[part] : { width: 140, height: 80 };
-  const frame =
-    site === undefined ? undefined : geometry.sites.find((candidate) => candidate.id === site)?.rect;
-  const start =
-    frame === undefined ? middle : { x: frame.x + 30 + size.width / 2, y: frame.y + 44 + size.height / 2 };
+  const size = isDeviceKind(part)
+    ? plateSizes[part]
+    : part === 'site'
+      ? newSiteSize
+      : { width: 140, height: 80 };
+  const taken =
+    part === 'site'
+      ? [...geometry.sites.map((each) => each.rect), ...geometry.bands.flatMap((band) => band.limbs)]
+      : geometry.devices.map((device) => device.rect);
   const free = (at: Point): boolean =>
-    geometry.devices.every(
-      ({ rect }) =>
-        Math.abs(rect.x + rect.width / 2 - at.x) > (rect.width + size.width) / 2 + 12 ||
-        Math.abs(rect.y + rect.height / 2 - at.y) > (rect.height + size.height) / 2 + 12,
+    taken.every(
+      (rect) =>
+        Math.abs(rect.x + rect.width / 2 - at.x) > (rect.width + size.width) / 2 + roomPx ||
+        Math.abs(rect.y + rect.height / 2 - at.y) > (rect.height + size.height) / 2 + roomPx,
     );
-  const step = { x: size.width + 30, y: size.height + 26 };
-  const columns = frame === undefined ? 3 : Math.max(1, Math.floor((frame.width - 40) / step.x));
-  for (let i = 0; i < 60; i += 1) {
-    const at = { x: start.x + (i % columns) * step.x, y: start.y + Math.floor(i / columns) * step.y };
-    if (free(at)) return at;
-  }
-  return start;
+  const frame = part === 'site' ? undefined : geometry.sites.find((candidate) => candidate.id === site)?.rect;
+  const places = frame === undefined ? placesOver(geometry.sheet.frame, size, middle) : rowsIn(frame, size);
+  return places.find(free) ?? places[0] ?? middle;
+};
+
+const roomPx = 12;
+
+/** Places in a site's frame, row by row and on below it: a frame grows with what stands in it. */
+const rowsIn = (frame: Rect, size: Size): readonly Point[] => {
+  const step = { x: size.width + 2 * roomPx + 2, y: size.height + 2 * roomPx + 2 };
+  const columns = Math.max(1, Math.floor((frame.width - 40) / step.x));
+  return Array.from({ length: 40 }, (_, i) => ({
+    x: frame.x + 30 + size.width / 2 + (i % columns) * step.x,
+    y: frame.y + 44 + size.height / 2 + Math.floor(i / columns) * step.y,
+  }));
+};
+
+/** Places over the whole sheet, the nearest to the middle of the view first. */
+const placesOver = (frame: Rect, size: Size, middle: Point): readonly Point[] => {
+  const stepPx = 20;
+  const along = (from: number, length: number, own: number): number[] =>
+    Array.from(
+      { length: Math.max(1, Math.floor((length - own - 2 * roomPx) / stepPx) + 1) },
+      (_, i) => from + roomPx + own / 2 + i * stepPx,
+    );
+  const distance = (at: Point): number => Math.hypot(at.x - middle.x, at.y - middle.y);
+  return along(frame.y, frame.height, size.height)
+    .flatMap((y) => along(frame.x, frame.width, size.width).map((x) => ({ x, y })))
+    .concat(middle)
+    .sort((a, b) => distance(a) - distance(b) || a.y - b.y || a.x - b.x);
 };

@@ -40,13 +40,15 @@ export function SheetBar({ engagementName, workspaceId, summary }: SheetBarProps
         <Stamp state={summary.state} prefix={revision} />
       </BarCell>
       <SaveCell />
-      <BarNav
-        label="Design"
-        destinations={[
-          { to: designPath(summary.id), label: 'Sheet', end: true },
-          { to: '/checks', label: 'Checks' },
-        ]}
-      />
+      <div className="flex max-md:hidden">
+        <BarNav
+          label="Design"
+          destinations={[
+            { to: designPath(summary.id), label: 'Sheet', end: true },
+            { to: '/checks', label: 'Checks' },
+          ]}
+        />
+      </div>
       <div className="ml-auto flex items-center gap-4 pl-8">
         {editable && <Travel />}
         {editable && <TidyButton />}

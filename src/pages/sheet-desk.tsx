@@ -4,6 +4,7 @@ import { useCallback, useEffect, useMemo, useState } from 'react';
 import { GeometryProvider, useDrawn } from '../canvas/geometry-context.tsx';
 import '../canvas/canvas.css';
 import { askToJoin, clearDesk } from '../canvas/desk-state.ts';
+import { standingOf } from '../canvas/flow-changes-to-patch.ts';
 import { FindDialog } from '../canvas/find-dialog.tsx';
 import { Inspector } from '../canvas/inspector/inspector.tsx';
 import { JoinDialog } from '../canvas/join-dialog.tsx';
@@ -37,6 +38,8 @@ import { designServer } from '../workspace/design-server.ts';
 import { browserEditStorage } from '../workspace/edit-storage.ts';
 import { openDesign, type OpenDesign } from '../workspace/open-design.ts';
 import { OpenDesignProvider, useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
+
+const phone = '(max-width: 767px)';
 
 /** Opens one design and lays out everything to work on it with: bar, tray, sheet, drawer, inspector. */
 export function SheetDesk({ designId }: { readonly designId: string }) {
@@ -108,7 +111,8 @@ function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonl
     openDesign({
       document,
       sequence: answer.sequence,
-      editable: answer.actions.includes('design.edit'),
+      // A phone shows the sheet; to draw on it takes a larger screen.
+      editable: answer.actions.includes('design.edit') && !window.matchMedia(phone).matches,
       server: designServer(id),
       storage: browserEditStorage(localStorage, id, Date.now),
       newEditId: () => crypto.randomUUID(),
@@ -141,8 +145,10 @@ function Surface() {
   const { findings, document } = useChecks();
   const editable = useOpenState((state) => state.editable);
   const title = useOpenState((state) => state.document.meta.title);
+  const anySelected = useOpenState((state) => state.selection.length > 0);
   const { settled } = useDrawn();
   const view = useView();
+  const standing = useMemo(() => standingOf(settled), [settled]);
   const fixes = useFindingFixes();
   const [selectedKey, setSelectedKey] = useState<string | null>(null);
   usePageTitle(title);
@@ -191,7 +197,8 @@ function Surface() {
   const acceptGhost = useCallback((id: string) => apply(id), [apply]);
 
   return (
-    <main id="main" tabIndex={-1} className="flex min-h-0 flex-1 outline-none">
+    <main id="main" tabIndex={-1} className="sheet-desk" data-selected={anySelected}>
+      <h1 className="sr-only">{title}</h1>
       <PartsTray />
       <div className="flex min-w-0 flex-1 flex-col">
         <SheetCanvas
@@ -230,6 +237,7 @@ function Surface() {
           askToJoin({ kind, ...(end === undefined ? {} : { a: end }) });
         }}
         onShowFinding={select}
+        standing={standing}
       />
     </main>
   );

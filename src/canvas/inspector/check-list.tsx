@@ -35,10 +35,11 @@ export function CheckList<Value extends string>({ label, path, choices, noneWord
       title={marked?.sentence}
     >
       <legend className="mb-4 text-label text-ink-3">{label}</legend>
-      <div className="grid grid-cols-2 gap-x-8 gap-y-4">
+      <div className="grid grid-cols-2 gap-x-8 gap-y-2">
         {choices.map((choice) => (
           <CheckBox
             key={choice.value}
+            className="min-h-24"
             checked={value?.includes(choice.value) === true}
             onChange={(event) =>
               commit(

@@ -28,9 +28,18 @@ import { FaultMarks } from './fault-marks.tsx';
 import { Shapes } from '../../components/shapes.tsx';
 
 /** An SVG whose inside is the sheet's world, whatever corner of it the node begins at. */
-function World({ origin, children }: { readonly origin: Point; readonly children: ReactNode }) {
+function World({
+  origin,
+  silent = true,
+  children,
+}: {
+  readonly origin: Point;
+  /** Nothing in it is for a screen reader: the node itself has a name. */
+  readonly silent?: boolean;
+  readonly children: ReactNode;
+}) {
   return (
-    <svg className="part" width={1} height={1} aria-hidden="true">
+    <svg className="part" width={1} height={1} aria-hidden={silent || undefined}>
       <g transform={`translate(${-origin.x} ${-origin.y})`}>{children}</g>
     </svg>
   );
@@ -214,7 +223,7 @@ const Marks = memo(function Marks(_props: NodeProps<MarksNode>) {
   const { facts, look, geometry } = useDrawing();
   const balloons = useMemo(() => [balloonParts(geometry, facts, look)].flat(), [geometry, facts, look]);
   return (
-    <World origin={{ x: 0, y: 0 }}>
+    <World origin={{ x: 0, y: 0 }} silent={false}>
       <FaultMarks />
       <Shapes shapes={balloons.filter((shape) => shape !== undefined)} />
     </World>

@@ -156,7 +156,7 @@ function PartButton({ part, name }: { readonly part: TrayPart; readonly name: st
           ? document.devices[first.id]?.site
           : undefined;
     const at = freePlace(document, settled, part, site, view.middle());
-    const done = perform(open, placePart(document, settled, part, at, newEntryId));
+    const done = perform(open, placePart(document, settled, part, at, newEntryId, site));
     if (!done.ok) showToast({ tone: 'failed', text: done.why });
     else view.showPoint(at);
   };
@@ -223,7 +223,7 @@ function Segments({ editable }: { readonly editable: boolean }) {
             </button>
             <button
               type="button"
-              className="mr-8 p-4 text-ink-3 hover:text-ink"
+              className="mr-6 flex size-24 items-center justify-center text-ink-3 hover:text-ink"
               aria-pressed={hidden.includes(id)}
               aria-label={hidden.includes(id) ? `Show ${segment.name}` : `Fade ${segment.name}`}
               onClick={() => toggleSegment(id)}

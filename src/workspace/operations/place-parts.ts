@@ -121,6 +121,10 @@ export const placeDevice = (
   };
 };
 
+/** The frame that an empty site starts with. */
+export const newSiteSize = { width: 360, height: 250 } as const;
+
+/** An empty site whose frame begins at `at`. */
 export const placeSite = (design: Design, at: Place, newId: NewId): Operation => {
   const id = newId('site');
   const name = freeName(design.sites, 'Site');
@@ -129,7 +133,7 @@ export const placeSite = (design: Design, at: Place, newId: NewId): Operation =>
     label: `Place ${name}`,
     patch: {
       sites: { [id]: { name } },
-      layout: { sites: { [id]: { x: at.x, y: at.y, width: 360, height: 250 } } },
+      layout: { sites: { [id]: { x: at.x, y: at.y, ...newSiteSize } } },
     },
     created: [{ collection: 'sites', id }],
   };

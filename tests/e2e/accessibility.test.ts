@@ -1,0 +1,100 @@
+import AxeBuilder from '@axe-core/playwright';
+import type { Page } from 'playwright-core';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { launchBrowser, type TestBrowser } from '../support/browser.ts';
+import { node, signInAs } from './desk.ts';
+
+let browser: TestBrowser;
+beforeAll(async () => {
+  browser = await launchBrowser();
+});
+afterAll(() => browser.close());
+
+/** Findings of axe-core (WCAG 2.2 A and AA) that are serious or critical, in words. */
+const seriousFindings = async (page: Page): Promise<readonly string[]> => {
+  const result = await new AxeBuilder({ page })
+    .withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'])
+    .analyze();
+  return result.violations
+    .filter((violation) => violation.impact === 'serious' || violation.impact === 'critical')
+    .map(
+      (violation) =>
+        `${violation.id}: ${violation.help} (${violation.nodes
+          .map((at) => at.target.join(' '))
+          .slice(0, 3)
+          .join('; ')})`,
+    );
+};
+
+const openSheet = async (page: Page, title: string): Promise<void> => {
+  await page
+    .getByRole('link', { name: new RegExp(title) })
+    .first()
+    .click();
+  await node(page, 'sheet').waitFor();
+};
+
+const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
+  ['sign-in', async (page) => void (await page.goto('/'))],
+  ['engagements', (page) => signInAs(page, 'architect')],
+  [
+    'a new design',
+    async (page) => {
+      await signInAs(page, 'architect');
+      await page.getByRole('main').getByRole('button', { name: 'New design' }).first().click();
+      await page.getByRole('dialog').waitFor();
+    },
+  ],
+  [
+    'a sheet with faults and a selection',
+    async (page) => {
+      await signInAs(page, 'architect');
+      await openSheet(page, 'with planted faults');
+      await page.getByRole('list', { name: 'Findings' }).getByRole('button').first().click();
+    },
+  ],
+  [
+    'a sheet that may only be read',
+    async (page) => {
+      await signInAs(page, 'reviewer');
+      await openSheet(page, 'phase 1');
+    },
+  ],
+  [
+    'the reference of checks',
+    async (page) => {
+      await signInAs(page, 'reviewer');
+      await page.goto('/checks');
+      await page
+        .getByRole('heading', { name: /Checks/ })
+        .first()
+        .waitFor();
+    },
+  ],
+  [
+    'a page that does not exist',
+    async (page) => {
+      await signInAs(page, 'reviewer');
+      await page.goto('/nowhere');
+      await page.getByRole('heading').first().waitFor();
+    },
+  ],
+];
+
+describe.each(['light', 'dark'] as const)('in %s', (theme) => {
+  it.each(pages)('%s has no serious accessibility finding', async (_name, open) => {
+    const page = await browser.newPage({ theme });
+    await open(page);
+    expect(await seriousFindings(page)).toEqual([]);
+    await page.context().close();
+  });
+});
+
+describe('on a phone of 390 px', () => {
+  it.each(pages)('%s shows nothing wider than the screen', async (_name, open) => {
+    const page = await browser.newPage({ viewport: { width: 390, height: 844 } });
+    await open(page);
+    expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(390);
+    await page.context().close();
+  });
+});
