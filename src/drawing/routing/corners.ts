@@ -1,8 +1,9 @@
-import type { Path, PathStep, Point } from '../geometry.ts';
+import type { Path, PathStep, Point, Rect } from '../geometry.ts';
 import { cord as cordSizes } from '../parts/sizes.ts';
 import type { Corners, Way } from './ground.ts';
 import { isLevelRun, isTrunkRun, runWidth } from './ground.ts';
-import { clamp } from './rects.ts';
+import { pathAt, pathLength } from '../path-geometry.ts';
+import { clamp, overlap } from './rects.ts';
 
 /** Where two ways cross at right angles: the run of each, and the point. */
 export interface WayCrossing {
@@ -147,6 +148,61 @@ export const cornerRadii = (
     }
     return Math.max(0, r);
   });
+};
+
+const shrinkBy = 0.7;
+const leastClear = 1;
+
+/** True when any of the sampled points, taken at half a width, lies over one of the rectangles. */
+const touches = (points: readonly Point[], half: number, rects: readonly Rect[]): boolean =>
+  rects.some((rect) =>
+    points.some((p) => {
+      const dx = Math.max(rect.x - p.x, p.x - rect.x - rect.width, 0);
+      const dy = Math.max(rect.y - p.y, p.y - rect.y - rect.height, 0);
+      return Math.hypot(dx, dy) < half - leastClear;
+    }),
+  );
+
+const samples = (path: Path): readonly Point[] => {
+  const length = pathLength(path);
+  return Array.from({ length: Math.ceil(length / 5) + 1 }, (_, i) => pathAt(path, i * 5));
+};
+
+/**
+ * The radii made smaller where a round corner would cut across something that its corner goes round: a bend tighter than
+ * usual is better than a cord over a plate.
+ */
+export const radiiClearOf = (
+  { cord, corners }: Pick<Way, 'cord' | 'corners'>,
+  radii: readonly number[],
+  rects: readonly Rect[],
+): readonly number[] => {
+  const short = shortRuns({ cord, corners });
+  const clear = [...radii];
+  for (let i = 1; i < corners.length - 1; i += 1) {
+    const isShort = short.includes(i);
+    const piece = isShort ? corners.slice(i - 1, i + 3) : corners.slice(i - 1, i + 2);
+    const own = (): readonly number[] => clear.slice(i - 1, i - 1 + piece.length - 2);
+    const near = rects.filter((rect) => {
+      const reach = Math.max(...own()) + cord.width;
+      return piece
+        .slice(1, -1)
+        .some((c) => overlap(rect, { x: c.x - reach, y: c.y - reach, width: 2 * reach, height: 2 * reach }));
+    });
+    const turn = (): Path => {
+      const path = pathThrough(piece, own(), isShort ? [1] : []);
+      const bend = path.slice(1).findIndex((step) => step.kind !== 'line');
+      return bend < 0 ? [] : [{ kind: 'move', to: path[bend]!.to }, path[bend + 1]!];
+    };
+    while (
+      near.length > 0 &&
+      Math.max(...own()) > leastClear &&
+      touches(samples(turn()), cord.width / 2, near)
+    )
+      for (let k = 0; k < piece.length - 2; k += 1) clear[i - 1 + k]! *= shrinkBy;
+    if (isShort) i += 1;
+  }
+  return clear;
 };
 
 /** The smooth path through corners: quarter circles, and one cubic for each short S. */

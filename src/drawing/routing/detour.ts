@@ -173,7 +173,8 @@ const attempt = (
         xs.push(run.from.x - off, run.from.x + off);
     }
   }
-  const edge = grown(ground.sheet, 240);
+  // What lies outside the window is not known to this search, so it must stay inside.
+  const edge = window ?? grown(ground.sheet, 240);
   const columns = sortedUnique(xs.filter((x) => x === p.x || x === q.x || (x > edge.x && x < right(edge))));
   const rows = sortedUnique(ys.filter((y) => y === p.y || y === q.y || (y > edge.y && y < bottom(edge))));
   const costs = gridCosts(columns, rows, manner.open);

@@ -15,7 +15,7 @@ import { nearestAlong, offsetPath, pathAt, pathLength, reversePath, subPath } fr
 import type { BandPlace } from './bands.ts';
 import { bandRects } from './bands.ts';
 import type { Bundle } from './bundles.ts';
-import { cornerRadii, pathThrough, shortRuns } from './corners.ts';
+import { cornerRadii, pathThrough, radiiClearOf, shortRuns } from './corners.ts';
 import type { WayCrossing } from './corners.ts';
 import type { Way } from './ground.ts';
 import { isTrunkRun, runWidth } from './ground.ts';
@@ -104,6 +104,7 @@ export const jacketGeometries = (
   crossings: readonly WayCrossing[],
   rings: ReadonlyMap<string, RingGeometry>,
   bands: readonly BandPlace[],
+  plates: readonly Rect[],
 ): readonly JacketGeometry[] => {
   const grounds = bands.flatMap(bandRects);
   const ways = shaped.map(({ way }) => way);
@@ -119,7 +120,7 @@ export const jacketGeometries = (
       return [{ run: own.run, at, width, above: own === over, with: other.way }];
     });
     const corners = noWay ? [way.cord.a.at, way.cord.b.at] : branch ? branchOf(way, ways) : way.corners;
-    const radii = corners.length < 3 ? [] : cornerRadii(way, mine);
+    const radii = corners.length < 3 ? [] : radiiClearOf(way, cornerRadii(way, mine), plates);
     const path = pathThrough(corners, radii, corners.length < 3 ? [] : shortRuns(way));
     const ends = { a: groupAt(rings, bundle, 'a'), b: groupAt(rings, bundle, 'b') };
     const laneGeometries = bundle.tunnels.map((tunnel, k): LaneGeometry => {

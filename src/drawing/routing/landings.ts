@@ -9,7 +9,7 @@ import type { KnownRun } from './detour.ts';
 import { detour } from './detour.ts';
 import type { Corners, Ground } from './ground.ts';
 import { bandOf, foreignBands, runIsBlocked } from './ground.ts';
-import { bottom, clamp, isUpright, opposite, outward, overlap, right, runRect } from './rects.ts';
+import { bottom, clamp, contains, isUpright, opposite, outward, overlap, right, runRect } from './rects.ts';
 
 /** Where a WAN cable ends: on an edge of its band, a little inside. */
 export interface LandedWay {
@@ -26,6 +26,13 @@ export interface ElbowRoom {
 const inset = 8;
 const elbowStep = 14;
 const mostElbows = 8;
+/** Room that a searched way needs in front of its landing, and how many searches one landing is worth. */
+const approach = 16;
+const mostSearches = 6;
+/** Where along an edge to try, off the nearest place: the near ones first. */
+const landingOffsets = [
+  0, 14, -14, 28, -28, 56, -56, 84, -84, 126, -126, 180, -180, 260, -260, 360, -360,
+] as const;
 
 const barAt = (end: Point, side: Side): Rect => {
   const { width, height } = landingSizes.bar;
@@ -63,6 +70,8 @@ interface Edge {
   readonly rect: Rect;
   /** The side of the band that the cable comes to. */
   readonly side: Side;
+  /** A limb's short end lies at the edge of the sheet: good only where no long side can be reached. */
+  readonly isLimbEnd: boolean;
 }
 
 const edgesOf = (band: BandPlace): readonly Edge[] =>
@@ -71,6 +80,7 @@ const edgesOf = (band: BandPlace): readonly Edge[] =>
       key: `${band.id} ${i} ${side}`,
       rect,
       side,
+      isLimbEnd: i < band.limbs.length && isUpright(side) === (band.orientation === 'vertical'),
     })),
   );
 
@@ -103,13 +113,14 @@ export const landingWay = (
   };
   const nearness = (edge: Edge): number => {
     const spot = spotOn(edge, isUpright(edge.side) ? at.x : at.y);
-    return Math.abs(spot.x - at.x) + Math.abs(spot.y - at.y);
+    return Math.abs(spot.x - at.x) + Math.abs(spot.y - at.y) + (edge.isLimbEnd ? 4000 : 0);
   };
   const near = [...edges].sort((p, q) => nearness(p) - nearness(q));
 
   if (!isUpright(side)) {
     for (const edge of near) {
-      if (edge.side !== opposite[side]) continue;
+      // From outside to the band's near side, or from inside to the side ahead.
+      if (edge.side !== (contains(edge.rect, at) ? side : opposite[side])) continue;
       const end = spotOn(edge, at.y);
       if (Math.abs(end.y - at.y) > 0.01 || (end.x - at.x) * outward[side].x < 12) continue;
       if (register.isFree(edge.key, at.y) && isClear(ground, run, site, [at, end]))
@@ -137,15 +148,17 @@ export const landingWay = (
         return done(edge, [at, end]);
     }
   }
+  let searches = 0;
   for (const edge of near) {
     const upright = isUpright(edge.side);
-    const wish = upright ? at.x : at.y;
-    for (let i = 0; i < mostElbows; i += 1) {
-      const off = Math.ceil(i / 2) * landingSizes.spacing * (i % 2 === 0 ? 1 : -1);
-      const end = spotOn(edge, wish + off);
-      if (!register.isFree(edge.key, upright ? end.x : end.y)) continue;
-      const out = outward[edge.side];
+    const out = outward[edge.side];
+    for (const off of landingOffsets) {
+      const end = spotOn(edge, (upright ? at.x : at.y) + off);
       const outside = { x: end.x + out.x * landingSizes.depth, y: end.y + out.y * landingSizes.depth };
+      const before = { x: outside.x + out.x * approach, y: outside.y + out.y * approach };
+      if (!register.isFree(edge.key, upright ? end.x : end.y)) continue;
+      if (runIsBlocked(ground, before, end, 1, 4) || searches >= mostSearches) continue;
+      searches += 1;
       const found = detour(
         ground,
         {
@@ -160,7 +173,7 @@ export const landingWay = (
         [],
         cableManner,
       );
-      if (found === undefined) break;
+      if (found === undefined) continue;
       const corners = [...found.slice(0, -1), end];
       if (corners.slice(1).some((q, k) => runIsBlocked(ground, corners[k]!, q, 1, 0))) continue;
       return done(edge, corners);

@@ -92,7 +92,11 @@ const draw = (design: Design): SheetGeometry => {
     pitch: pitches.get(bundle.transport ?? '') ?? lane.pitch,
   }));
   const devices = deviceGeometries(furnished);
-  const jackets = jacketGeometries(shaped, cords.crossings, furnished.rings, cords.bands);
+  const jackets = jacketGeometries(shaped, cords.crossings, furnished.rings, cords.bands, [
+    sheet.titleBlock,
+    sheet.legend,
+    ...devices.flatMap((device) => device.plates.map((plate) => plate.rect)),
+  ]);
   const trunks = trunkGeometries(bundles, cords.ways);
   const laid = cableGeometries(design, furnished, { ...ground, bands: cords.bands }, jackets);
   const rawRings = [...furnished.rings.values()];
