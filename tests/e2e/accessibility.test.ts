@@ -66,7 +66,7 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
       await signInAs(page, 'reviewer');
       await page.goto('/checks');
       await page
-        .getByRole('heading', { name: /Checks/ })
+        .getByRole('heading', { name: 'Reference of checks' })
         .first()
         .waitFor();
     },

@@ -36,7 +36,7 @@ describe('faults drawn into a sound design and mended where they show', () => {
     expect(await page.locator('.chevron').count()).toBeGreaterThan(9);
     expect(await loop.textContent()).toMatch(/Blocking/);
     await loop
-      .getByRole('button', { name: /Remove/ })
+      .getByRole('button', { name: /Isolate|Remove/ })
       .first()
       .click();
     await expect.poll(() => page.locator('.chevron').count()).toBe(0);
