@@ -78,13 +78,18 @@ export const route = (design: Design): SheetGeometry => {
   const before = drawn.get(design.layout);
   if (before !== undefined && routedParts.every((part) => before.design[part] === design[part]))
     return before.geometry;
-  const geometry = draw(design);
+  const geometry = draw(design, routeSheet(design));
   drawn.set(design.layout, { design, geometry });
   return geometry;
 };
 
-const draw = (design: Design): SheetGeometry => {
-  const { furnished, cords, pitches } = routeSheet(design);
+/**
+ * A drawing quick enough for every step of a drag: as `route`, but overlaps are not mended until the drop, when `route`
+ * answers for good.
+ */
+export const routeWhileDragging = (design: Design): SheetGeometry => draw(design, routeSheetOnce(design));
+
+const draw = (design: Design, { furnished, cords, pitches }: RoutedSheet): SheetGeometry => {
   const { sheet, sites, bundles, ground } = furnished;
   const shaped = bundles.map((bundle, i) => ({
     bundle,

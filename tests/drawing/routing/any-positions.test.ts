@@ -3,7 +3,7 @@ import { describe, expect, it, vi } from 'vitest';
 import type { Design } from '#engine/model/design.ts';
 import { applyPatch } from '#engine/model/merge-patch.ts';
 import type { MergePatch } from '#engine/model/merge-patch.ts';
-import { route } from '#drawing/routing/route.ts';
+import { route, routeWhileDragging } from '#drawing/routing/route.ts';
 import { tidy } from '#drawing/tidy/tidy.ts';
 import { chainDesign, hubDesign, meshDesign, pairDesign } from '../../support/designs.ts';
 import { ferriesDesign } from '../tidy/ferries.ts';
@@ -183,6 +183,14 @@ describe('dragging', () => {
         route(dragged);
       }
       expect(route(dragged)).toEqual(route(moveSite(design, site, -360, 80)));
+    }
+  });
+  it('draws a clean sheet the same while dragging and on the drop, and never a cord over a plate', () => {
+    for (const design of tidied) {
+      expect(routeWhileDragging(design)).toEqual(route(design));
+      const site = Object.keys(design.sites).sort().at(-1)!;
+      for (let step = 1; step <= 12; step += 1)
+        expect(overPlates(routeWhileDragging(moveSite(design, site, -40 * step, 11 * step)))).toEqual([]);
     }
   });
   it('keeps the ways of jackets that have nothing to do with what moves', () => {
