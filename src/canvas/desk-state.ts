@@ -17,6 +17,10 @@ interface DeskState {
   readonly firstEnd: ConnectEnd | undefined;
   readonly join: JoinRequest | undefined;
   readonly searching: boolean;
+  /** The inspector stands beside the sheet; a selection opens it, its button shuts it. */
+  readonly inspecting: boolean;
+  /** Nobody has moved over the sheet since it was last fitted: it stays fitted while the room for it changes. */
+  readonly fitted: boolean;
   readonly hiddenSegments: readonly string[];
 }
 
@@ -26,6 +30,8 @@ const atRest: DeskState = {
   firstEnd: undefined,
   join: undefined,
   searching: false,
+  inspecting: false,
+  fitted: true,
   hiddenSegments: [],
 };
 
@@ -39,6 +45,8 @@ export const startPlacing = (placing: TrayPart | undefined): void =>
 export const askToJoin = (join: JoinRequest | undefined): void =>
   useDesk.setState({ join, placing: undefined, firstEnd: undefined });
 export const setSearching = (searching: boolean): void => useDesk.setState({ searching });
+export const setInspecting = (inspecting: boolean): void => useDesk.setState({ inspecting });
+export const setFitted = (fitted: boolean): void => useDesk.setState({ fitted });
 export const toggleSegment = (id: string): void =>
   useDesk.setState(({ hiddenSegments }) => ({
     hiddenSegments: hiddenSegments.includes(id)

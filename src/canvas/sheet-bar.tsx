@@ -11,6 +11,7 @@ import type { DesignSummary } from '../contract/designs.ts';
 import { designPath, engagementsPath } from '../lib/workspace-path.ts';
 import { useTheme } from '../lib/theme.ts';
 import { useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
+import { setInspecting, useDesk } from './desk-state.ts';
 import { designBlob, download, fileNameOf, sheetPng } from './export-sheet.ts';
 import { SaveCell } from './save-cell.tsx';
 import { TidyButton } from './tidy-button.tsx';
@@ -52,9 +53,26 @@ export function SheetBar({ engagementName, workspaceId, summary }: SheetBarProps
       <div className="ml-auto flex items-center gap-4 pl-8">
         {editable && <Travel />}
         {editable && <TidyButton />}
+        <InspectorButton />
         <ExportMenu />
       </div>
     </BarContents>
+  );
+}
+
+function InspectorButton() {
+  const inspecting = useDesk((state) => state.inspecting);
+  return (
+    <Tooltip text={inspecting ? 'Put the inspector away' : 'Show the inspector'}>
+      <Button
+        kind="quiet"
+        iconOnly
+        aria-label="Show the inspector"
+        aria-expanded={inspecting}
+        icon={<Icon name="panel" />}
+        onClick={() => setInspecting(!inspecting)}
+      />
+    </Tooltip>
   );
 }
 

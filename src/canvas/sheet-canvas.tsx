@@ -22,6 +22,7 @@ import {
 import { showToast } from '../components/toast.tsx';
 import type { Decorations, Tone } from '../drawing/decorations.ts';
 import { elementKey } from '../drawing/decorations.ts';
+import type { SheetFrame } from '../drawing/geometry.ts';
 import { levelOf, type Level } from '../drawing/parts/level-of-detail.ts';
 import type { ElementRef } from '../engine/model/design.ts';
 import type { MergePatch } from '../engine/model/merge-patch.ts';
@@ -30,7 +31,7 @@ import { newEntryId, perform, useOpenDesign, useOpenState } from '../workspace/o
 import { isLocked } from '../workspace/operations/move-parts.ts';
 import { connectEnds, endOf, whyNotConnect, type ConnectEnd } from './connect-ends.ts';
 import { designToFlow, type FlowEdge, type FlowNode } from './design-to-flow.ts';
-import { askToJoin, startPlacing, useDesk } from './desk-state.ts';
+import { askToJoin, setFitted, startPlacing, useDesk } from './desk-state.ts';
 import { DrawingContext, type Drawing } from './drawing-context.ts';
 import { edgeTypes } from './edges/part-edges.tsx';
 import { dropToPatch, movesIn, movesToPatch, type MovedNode } from './flow-changes-to-patch.ts';
@@ -40,7 +41,7 @@ import { endAt, isJoining, placePart, type TrayPart } from './place-part.ts';
 import { PullLine } from './pull-line.tsx';
 import { readPartDrag } from './parts-tray/part-drag.ts';
 import { refAt } from './ref-at.ts';
-import { useView, zoomLimits } from './use-view.ts';
+import { useView, zoomLimits, type View } from './use-view.ts';
 
 interface SheetCanvasProps {
   /** What features want shown on top of the drawing. */
@@ -60,6 +61,30 @@ const useLevel = (zoom: number): Level => {
   const next = levelOf(zoom, level);
   if (next !== level) setLevel(next);
   return next;
+};
+
+/** Fits the sheet when it is opened, and again when the room for it changes while nobody has moved over it. */
+const useKeptFit = (sheet: SheetFrame, view: View): void => {
+  const width = useStore((state) => state.width);
+  const height = useStore((state) => state.height);
+  const latest = useRef({ sheet, view });
+  const fittedBefore = useRef(false);
+  useEffect(() => {
+    latest.current = { sheet, view };
+  });
+  useEffect(() => {
+    if (width === 0 || height === 0 || !useDesk.getState().fitted) return;
+    const fit = (): void => {
+      if (!useDesk.getState().fitted) return;
+      latest.current.view.fit(latest.current.sheet, fittedBefore.current);
+      fittedBefore.current = true;
+    };
+    // Not under a hand that drags something.
+    const held = document.querySelector('.react-flow__node.dragging, .react-flow__connection') !== null;
+    if (!held) return fit();
+    window.addEventListener('pointerup', fit, { once: true });
+    return () => window.removeEventListener('pointerup', fit);
+  }, [width, height, sheet.width, sheet.height]);
 };
 
 const tonesWith = (decorations: Decorations, selection: readonly ElementRef[]): Decorations => {
@@ -261,14 +286,7 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
     if (event.key === 'Escape' && placing !== undefined) startPlacing(undefined);
   };
 
-  // The first fit, once the canvas knows its size; later sizes of the window keep what is being looked at.
-  const fitted = useRef(false);
-  const width = useStore((state) => state.width);
-  useEffect(() => {
-    if (fitted.current || width === 0) return;
-    fitted.current = true;
-    view.fit(geometry.sheet, false);
-  }, [width, view, geometry.sheet]);
+  useKeptFit(geometry.sheet, view);
 
   const hint = placing === undefined ? undefined : placingHint(placing, firstEnd !== undefined);
   return (
@@ -296,6 +314,10 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
           onEdgesChange={onEdgesChange}
           onNodeClick={onPartClick}
           onEdgeClick={onPartClick}
+          onMoveStart={(event) => {
+            // Without an event the move is a fit of our own.
+            if (event !== null) setFitted(false);
+          }}
           onPaneClick={() => open.select([])}
           onConnect={onConnect}
           onConnectEnd={onConnectEnd}

@@ -1,6 +1,7 @@
 import { useReactFlow, useStore } from '@xyflow/react';
 import { useCallback, useMemo } from 'react';
 import type { Point, SheetFrame } from '../drawing/geometry.ts';
+import { setFitted } from './desk-state.ts';
 
 export const zoomLimits = { least: 0.1, most: 3 } as const;
 // 10 to 14 px of desk show round a fitted sheet.
@@ -27,6 +28,7 @@ export function useView(): View {
   const fit = useCallback(
     (sheet: SheetFrame, animated = true) => {
       if (width === 0 || height === 0) return;
+      setFitted(true);
       const next = Math.min((width - 2 * deskPx) / sheet.width, (height - 2 * deskPx) / sheet.height, 1.2);
       const x = (width - sheet.width * next) / 2;
       const y = (height - sheet.height * next) / 2;
@@ -37,10 +39,12 @@ export function useView(): View {
   return useMemo(
     () => ({
       zoom,
-      zoomTo: (next) =>
+      zoomTo: (next) => {
+        setFitted(false);
         void flow.zoomTo(Math.min(zoomLimits.most, Math.max(zoomLimits.least, next)), {
           duration: still() ? 0 : 120,
-        }),
+        });
+      },
       fit,
       showPoint: (at) => {
         const viewport = flow.getViewport();
@@ -48,6 +52,7 @@ export function useView(): View {
         const margin = 60;
         if (screen.x > margin && screen.y > margin && screen.x < width - margin && screen.y < height - margin)
           return;
+        setFitted(false);
         void flow.setCenter(at.x, at.y, { zoom: viewport.zoom, duration: still() ? 0 : panMs });
       },
       middle: () => {

@@ -3,7 +3,7 @@ import { useQuery } from '@tanstack/react-query';
 import { useCallback, useEffect, useMemo, useState } from 'react';
 import { GeometryProvider, useDrawn } from '../canvas/geometry-context.tsx';
 import '../canvas/canvas.css';
-import { askToJoin, clearDesk } from '../canvas/desk-state.ts';
+import { askToJoin, clearDesk, setInspecting, useDesk } from '../canvas/desk-state.ts';
 import { standingOf } from '../canvas/flow-changes-to-patch.ts';
 import { FindDialog } from '../canvas/find-dialog.tsx';
 import { Inspector } from '../canvas/inspector/inspector.tsx';
@@ -146,12 +146,16 @@ function Surface() {
   const editable = useOpenState((state) => state.editable);
   const title = useOpenState((state) => state.document.meta.title);
   const anySelected = useOpenState((state) => state.selection.length > 0);
+  const inspecting = useDesk((state) => state.inspecting);
   const { settled } = useDrawn();
   const view = useView();
   const standing = useMemo(() => standingOf(settled), [settled]);
   const fixes = useFindingFixes();
   const [selectedKey, setSelectedKey] = useState<string | null>(null);
   usePageTitle(title);
+  useEffect(() => {
+    if (anySelected) setInspecting(true);
+  }, [anySelected]);
 
   const decorations = useMemo(
     () => findingsToDecorations(findings, selectedKey ?? undefined),
@@ -226,19 +230,21 @@ function Surface() {
           />
         </FindingsDrawer>
       </div>
-      <Inspector
-        onConnect={({ kind, from }) => {
-          const end = endOf(
-            elementKey({ collection: from.collection, id: from.id }),
-            from.port === undefined
-              ? undefined
-              : `port:${from.port}${from.member === undefined ? '' : `@${from.member}`}`,
-          );
-          askToJoin({ kind, ...(end === undefined ? {} : { a: end }) });
-        }}
-        onShowFinding={select}
-        standing={standing}
-      />
+      {inspecting && (
+        <Inspector
+          onConnect={({ kind, from }) => {
+            const end = endOf(
+              elementKey({ collection: from.collection, id: from.id }),
+              from.port === undefined
+                ? undefined
+                : `port:${from.port}${from.member === undefined ? '' : `@${from.member}`}`,
+            );
+            askToJoin({ kind, ...(end === undefined ? {} : { a: end }) });
+          }}
+          onShowFinding={select}
+          standing={standing}
+        />
+      )}
     </main>
   );
 }

@@ -15,7 +15,8 @@ const usual = 180;
 
 /** The drawer under the sheet. Its edge stays in view when it is shut and can be dragged, or moved by arrow keys. */
 export function FindingsDrawer({ count, counts, children }: FindingsDrawerProps) {
-  const [open, setOpen] = useState(true);
+  // With nothing to say at first it leaves its room to the sheet.
+  const [open, setOpen] = useState(count > 0);
   const [height, setHeight] = useState(usual);
   const resize = (next: number): void => setHeight(Math.max(least, Math.min(most, next)));
   const onKeyDown = (event: KeyboardEvent): void => {
