@@ -59,11 +59,12 @@ const leader = (a: Point, b: Point): Pick<CableGeometry, 'polyline' | 'path' | '
 /** How far the combs beside a plate reach, labels included: WAN cables turn above or below them. */
 const elbowRoomOf = (furnished: FurnishedSheet, end: CableEnd): ElbowRoom => {
   const rings = [...furnished.rings.values()].filter((ring) => ring.device === end.device);
-  const plate = furnished.stands.get(end.device)!.rect;
+  const { rect: plate, device } = furnished.stands.get(end.device)!;
+  const off = device.kind === 'ha-pair' ? 18 : 10;
   return {
-    above: Math.min(plate.y - 18, ...rings.map((ring) => combRect(ring).y - 15)),
+    above: Math.min(plate.y - off, ...rings.map((ring) => combRect(ring).y - 15)),
     below: Math.max(
-      bottom(plate) + 18,
+      bottom(plate) + off,
       ...rings.map((ring) => Math.max(bottom(combRect(ring)), bottom(ring.label.rect)) + 12),
     ),
   };

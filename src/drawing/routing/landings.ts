@@ -128,7 +128,7 @@ export const landingWay = (
     }
   } else {
     const away = outward[side].y;
-    const start = side === 'top' ? Math.min(at.y - 18, elbow.above) : Math.max(at.y + 18, elbow.below);
+    const start = side === 'top' ? Math.min(at.y - 10, elbow.above) : Math.max(at.y + 10, elbow.below);
     for (let i = 0; i < mostElbows; i += 1) {
       const y = start + away * elbowStep * i;
       for (const edge of near) {

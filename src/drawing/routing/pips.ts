@@ -62,7 +62,7 @@ const wanPlaces = (
     const here = seats.filter((seat) => seat.side === side);
     const top = Math.min(...here.map((seat) => combSpan(seat).from));
     const y = Math.min(plate.y + 19, top - 15) - pip.spacing * nth;
-    if (y >= plate.y + 11) places.set(key, { at: { x: edgeOf(plate, side), y }, side });
+    if (y >= plate.y + 8) places.set(key, { at: { x: edgeOf(plate, side), y }, side });
     else places.set(key, { at: { x: corner(wanInset.plate + pip.spacing * nth), y: plate.y }, side: 'top' });
   }
   return places;
