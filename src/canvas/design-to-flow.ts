@@ -32,8 +32,11 @@ export type BandNode = Node<Common & { readonly band: BandGeometry }, 'band'>;
 export type DeviceNode = Node<Common & { readonly device: DeviceGeometry }, 'device'>;
 export type RingNode = Node<Common & { readonly ring: RingGeometry }, 'ring'>;
 export type NoteNode = Node<Common & { readonly note: string }, 'note'>;
+/** The trunks of manifolds, drawn under the jackets that leave them. */
+export type TrunksNode = Node<Common, 'trunks'>;
 export type MarksNode = Node<Common, 'marks'>;
-export type FlowNode = SheetNode | SiteNode | BandNode | DeviceNode | RingNode | NoteNode | MarksNode;
+export type FlowNode =
+  SheetNode | SiteNode | BandNode | DeviceNode | RingNode | NoteNode | TrunksNode | MarksNode;
 
 export type CableEdge = Edge<Common & { readonly cable: CableGeometry }, 'cable'>;
 export type JacketEdge = Edge<Common & { readonly jacket: JacketGeometry }, 'jacket'>;
@@ -204,15 +207,10 @@ const nodesOf = ({ design, geometry, selected, editable, isLocked }: FlowInput):
       zIndex: depth.note,
     });
   }
-  nodes.push({
-    id: 'marks',
-    type: 'marks',
-    ...box(whole),
-    data: {},
-    zIndex: depth.marks,
-    style: { pointerEvents: 'none' },
-    ...still,
-  });
+  const overlay = { ...box(whole), data: {}, style: { pointerEvents: 'none' as const }, ...still };
+  if (geometry.trunks.length > 0)
+    nodes.push({ id: 'trunks', type: 'trunks', zIndex: depth.jacket, ...overlay });
+  nodes.push({ id: 'marks', type: 'marks', zIndex: depth.marks, ...overlay });
   return nodes;
 };
 

@@ -2,7 +2,7 @@ import { createContext, use, useMemo, useState, type ReactNode } from 'react';
 import type { SheetGeometry } from '../drawing/geometry.ts';
 import { drawingFacts } from '../drawing/parts/drawing-facts.ts';
 import type { DrawingFacts } from '../drawing/parts/drawing-facts.ts';
-import { route } from '../drawing/routing/route.ts';
+import { route, routeWhileDragging } from '../drawing/routing/route.ts';
 import { tunnelSegments } from '../engine/flood/tunnel-segments.ts';
 import type { Design } from '../engine/model/design.ts';
 import type { MergePatch } from '../engine/model/merge-patch.ts';
@@ -29,7 +29,10 @@ export function GeometryProvider({ children }: { readonly children: ReactNode })
   const [drag, setDrag] = useState<MergePatch>();
   const shown = useMemo(() => (drag === undefined ? design : applyPatch(design, drag)), [design, drag]);
   const settled = useMemo(() => route(design), [design]);
-  const geometry = useMemo(() => (shown === design ? settled : route(shown)), [shown, design, settled]);
+  const geometry = useMemo(
+    () => (shown === design ? settled : routeWhileDragging(shown)),
+    [shown, design, settled],
+  );
   const network = indexNetwork(design);
   const facts = useMemo(() => drawingFacts(design, tunnelSegments(network)), [design, network]);
   const drawn = useMemo(

@@ -343,6 +343,7 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
           proOptions={{ hideAttribution: true }}
           aria-label={`Sheet of ${design.meta.title}`}
         />
+        <CrowdedNotice />
         {hint !== undefined && (
           <p className="sheet-hint" role="status">
             {hint}
@@ -350,6 +351,20 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
         )}
       </div>
     </DrawingContext>
+  );
+}
+
+/** Said while cords found no way or no room where things stand now. */
+function CrowdedNotice() {
+  const { settled } = useDrawn();
+  const editable = useOpenState((state) => state.editable);
+  const tight = settled.crowded.filter((entry) => entry.what !== 'text').length;
+  if (tight === 0) return null;
+  return (
+    <p className="crowded-notice" role="status">
+      {tight === 1 ? 'One line finds no room here.' : `${tight} lines find no room here.`}
+      {editable && ' Move things apart, or let Tidy lay the sheet out.'}
+    </p>
   );
 }
 

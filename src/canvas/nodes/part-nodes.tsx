@@ -10,6 +10,7 @@ import { framePart, paperPart } from '../../drawing/parts/paper-part.ts';
 import { ringPart } from '../../drawing/parts/ring-part.ts';
 import { site as siteSizes } from '../../drawing/parts/sizes.ts';
 import { sitePart } from '../../drawing/parts/site-part.ts';
+import { trunkPart } from '../../drawing/parts/trunk-part.ts';
 import { titleBlockPart } from '../../drawing/parts/title-block-part.ts';
 import type { Shape } from '../../drawing/shape.ts';
 import type {
@@ -21,6 +22,7 @@ import type {
   RingNode,
   SheetNode,
   SiteNode,
+  TrunksNode,
 } from '../design-to-flow.ts';
 import { bodyHandle, pipHandle } from '../design-to-flow.ts';
 import { useDrawing } from '../drawing-context.ts';
@@ -219,13 +221,40 @@ const Note = memo(function Note({ data, positionAbsoluteX, positionAbsoluteY }: 
   );
 });
 
-const Marks = memo(function Marks(_props: NodeProps<MarksNode>) {
+const Trunks = memo(function Trunks(_props: NodeProps<TrunksNode>) {
   const { facts, look, geometry } = useDrawing();
-  const balloons = useMemo(() => [balloonParts(geometry, facts, look)].flat(), [geometry, facts, look]);
+  const shapes = useMemo(
+    () => geometry.trunks.map((trunk) => trunkPart(trunk, geometry, facts, look)),
+    [geometry, facts, look],
+  );
+  return <Part origin={{ x: 0, y: 0 }} shapes={shapes} />;
+});
+
+function Balloons() {
+  const { facts, look, geometry, pickBalloon } = useDrawing();
+  const balloons = useMemo(() => balloonParts(geometry, facts, look), [geometry, facts, look]);
+  return balloons.map((shape) => (
+    // The list of findings is the keyboard's way to the same.
+    // eslint-disable-next-line jsx-a11y/click-events-have-key-events, jsx-a11y/no-static-element-interactions
+    <g
+      key={shape.key}
+      aria-hidden="true"
+      className="balloon-button"
+      onClick={(event) => {
+        event.stopPropagation();
+        pickBalloon(Number(shape.key?.split('-')[1]));
+      }}
+    >
+      <Shapes shapes={[shape]} />
+    </g>
+  ));
+}
+
+const Marks = memo(function Marks(_props: NodeProps<MarksNode>) {
   return (
     <World origin={{ x: 0, y: 0 }} silent={false}>
       <FaultMarks />
-      <Shapes shapes={balloons.filter((shape) => shape !== undefined)} />
+      <Balloons />
     </World>
   );
 });
@@ -237,5 +266,6 @@ export const nodeTypes = {
   device: Device,
   ring: Ring,
   note: Note,
+  trunks: Trunks,
   marks: Marks,
 } satisfies Record<FlowNode['type'] & string, unknown>;
