@@ -61,7 +61,7 @@ export const endingWords = (design: DesignFacts, barrier: Barrier, frame: FrameC
     case 'tag-not-carried':
       return `a circuit of ${forwarder(barrier.forwarder)} can’t send ${tagged(barrier.vlan)}`;
     case 'isolation':
-      return `isolation group ${barrier.group} of ${forwarder(barrier.forwarder)} keeps circuits apart that it should join`;
+      return `isolation group ${barrier.group} of ${forwarder(barrier.forwarder)} keeps circuits apart`;
     case 'split-horizon':
       return `${forwarder(barrier.forwarder)} passes nothing between tunnels of one VNI`;
     case 'filter':

@@ -21,7 +21,7 @@ export const endpointOnOneMember = defineRule({
     owned: {
       words: 'one member only',
       sentence: (v: { readonly endpoint: string; readonly member: string; readonly pair: string }) =>
-        `${v.endpoint} belongs to ${v.member} alone and does not move when ${v.pair} fails over`,
+        `${v.endpoint} belongs to ${v.member} alone and doesn’t fail over`,
     },
   },
   check: (network) => {

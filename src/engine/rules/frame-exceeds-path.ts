@@ -17,18 +17,18 @@ const messages = {
       readonly tunnel: string;
       readonly others: number;
     }) =>
-      `${v.segment} needs packets of ${v.needBytes} bytes, but ${v.largestBytes} fit through ${v.tunnel}${v.others === 0 ? '' : ` and fewer than needed through ${counted(v.others, 'other tunnel', 'other tunnels')}`}`,
+      `${v.segment} needs ${v.needBytes}-byte packets, ${v.others === 0 ? `${v.tunnel} takes ${v.largestBytes}` : `${counted(v.others + 1, 'tunnel', 'tunnels')} take less`}`,
   },
   hosts: {
     words: 'packets too large',
     sentence: (v: {
-      readonly segment: string;
       readonly needBytes: number;
       readonly hosts: string;
+      readonly isOne: boolean;
       readonly largestBytes: number;
       readonly tunnel: string;
     }) =>
-      `${v.hosts} of ${v.segment} may send packets of ${v.needBytes} bytes, but ${v.largestBytes} fit through ${v.tunnel}`,
+      `${v.hosts} send${v.isOne ? 's' : ''} ${v.needBytes}-byte packets, ${v.tunnel} takes ${v.largestBytes}`,
   },
   gateway: {
     words: 'gateway MTU large',
@@ -37,9 +37,7 @@ const messages = {
       readonly place: string;
       readonly mtuBytes: number;
       readonly largestBytes: number;
-      readonly segment: string;
-    }) =>
-      `The gateway on ${v.forwarder} at ${v.place} sends up to ${v.mtuBytes} bytes into ${v.segment}, where ${v.largestBytes} fit through`,
+    }) => `${v.forwarder} at ${v.place} sends ${v.mtuBytes}-byte packets, ${v.largestBytes} fit`,
     why: 'A bridge can’t answer that a packet is too big. The gateway could, for everything that comes from elsewhere, if its own MTU were right.',
     seen: 'Downloads from other networks to hosts of the far sites stall, while those hosts reach each other.',
   },
@@ -112,10 +110,10 @@ export const frameExceedsPath = defineRule({
           : {
               message: 'hosts',
               values: {
-                segment: name,
                 needBytes,
                 largestBytes: worst.largestBytes,
                 tunnel,
+                isOne: hosts.length === 1,
                 hosts:
                   hosts.length === 1
                     ? design.devices[hosts[0]!]!.name
@@ -174,7 +172,6 @@ const gatewayFaults = (
           place: siteNameOf(design, forwarder.device),
           mtuBytes,
           largestBytes,
-          segment: design.segments[segment]!.name,
         },
         elements: [ref, { collection: 'segments', id: segment }],
         properties: [{ ref, path: ['gateway', 'mtu'] }],

@@ -83,13 +83,11 @@ export const hostSingleHomed = defineRule({
   messages: {
     atRisk: {
       words: 'one member only',
-      sentence: (v: Values) =>
-        `${v.host} is wired to ${v.member} alone and is cut off when ${v.other} takes over`,
+      sentence: (v: Values) => `${v.host} is wired to ${v.member} alone, not to ${v.other}`,
     },
     cutOff: {
       words: 'wired to standby',
-      sentence: (v: Values) =>
-        `${v.host} is wired to ${v.member} alone, which stands by and forwards nothing`,
+      sentence: (v: Values) => `${v.host} is wired to ${v.member} alone, which stands by`,
       seen: 'The link light is on and nobody answers until the pair fails over.',
     },
   },

@@ -1,10 +1,9 @@
-import type { AttachmentPoint } from '../flood/attachment-points.ts';
 import type { Barrier } from '../flood/barrier.ts';
 import { inLetterOrder } from '../flood/segment-nodes.ts';
-import type { Parting, SegmentReach } from '../flood/segment-reach.ts';
+import type { SegmentReach } from '../flood/segment-reach.ts';
 import { segmentReach } from '../flood/segment-reach.ts';
 import type { Id } from '../model/scalars.ts';
-import type { DesignFacts, Network } from '../network/network.ts';
+import type { Network } from '../network/network.ts';
 import { entryOf, perNetwork } from '../network/network.ts';
 
 /** Segments of which some don't hear some others, in order of letter. */
@@ -47,19 +46,3 @@ export const isolatesTunnels = (network: Network, forwarder: Id, group: string):
   (network.circuitsByForwarder.get(forwarder) ?? []).every(
     ({ circuit }) => circuit.isolation !== group || circuit.kind === 'tunnel',
   );
-
-/** A point by the name that people know it by. */
-export const pointName = (design: DesignFacts, { device }: AttachmentPoint): string =>
-  entryOf(design.devices, device).name;
-
-/** Who is parted: sites by name where they differ, hosts otherwise. */
-export const partedNames = (
-  design: DesignFacts,
-  { groups }: SegmentReach,
-  { from, to }: Parting,
-): { readonly from: string; readonly to: string } => {
-  const [a, b] = [groups[from]!.points[0]!, groups[to]!.points[0]!];
-  return a.site === b.site
-    ? { from: pointName(design, a), to: pointName(design, b) }
-    : { from: entryOf(design.sites, a.site).name, to: entryOf(design.sites, b.site).name };
-};

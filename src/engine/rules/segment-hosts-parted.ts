@@ -10,7 +10,7 @@ import { segmentPathFacts, segmentsByForwarder } from './carried-segments.ts';
 import { defineRule } from './define-rule.ts';
 import { endingWords, shutPlugs } from './ending-words.ts';
 import type { Fix } from './finding.ts';
-import { isVlanBarrier, isolatesTunnels, partedNames, partedSegments } from './parted-segments.ts';
+import { isVlanBarrier, isolatesTunnels, partedSegments } from './parted-segments.ts';
 import { portLabel, portRef } from './port-label.ts';
 import { unusedId } from './unused-id.ts';
 import { sentenceStart } from './sentence-start.ts';
@@ -117,14 +117,6 @@ const placeOf = ({ design }: Network, barrier: Barrier): readonly ElementRef[] =
   return [];
 };
 
-/** Who doesn't hear whom, in a few words. */
-const consequence = (network: Network, { reach, partings }: Cause): string => {
-  const [first] = partings;
-  const { from, to } = partedNames(network.design, reach, first!);
-  const isMutual = partings.some((other) => other.from === first!.to && other.to === first!.from);
-  return isMutual ? `${from} and ${to} don’t hear each other` : `${to} doesn’t hear ${from}`;
-};
-
 const openPorts = (network: Network, barrier: Extract<Barrier, { code: 'port-shut' }>): Fix => {
   const { design } = network;
   const shut = shutPlugs(design, barrier.cable);
@@ -196,7 +188,7 @@ const permitFrames = (network: Network, { reach }: Cause, forwarder: Id): Fix | 
 };
 
 /** Parts with more than this in all are counted, not listed. */
-const namedAtMost = 8;
+const namedAtMost = 4;
 
 const apartFault = ({ design }: Network, cause: Cause) => {
   const { segment } = cause.reach;
@@ -224,7 +216,6 @@ const endsFault = (network: Network, cause: Cause) => {
     message: 'ends' as const,
     values: {
       cause: sentenceStart(endingWords(network.design, barrier, reach.frame)),
-      consequence: consequence(network, cause),
       segment: entryOf(network.design.segments, reach.segment).letter,
     },
     elements: [...placeOf(network, barrier), { collection: 'segments' as const, id: reach.segment }],
@@ -245,12 +236,12 @@ export const segmentHostsParted = defineRule({
     apart: {
       words: 'segment parted',
       sentence: (v: { readonly segment: string; readonly count: string; readonly parts: string }) =>
-        `Segment ${v.segment} falls into ${v.count} parts that nothing joins${v.parts}`,
+        `Nothing joins ${v.count} parts of segment ${v.segment}${v.parts}`,
     },
     ends: {
       words: 'hosts parted',
-      sentence: (v: { readonly cause: string; readonly consequence: string; readonly segment: string }) =>
-        `${v.cause}: in segment ${v.segment} ${v.consequence}`,
+      sentence: (v: { readonly cause: string; readonly segment: string }) =>
+        `${v.cause}: segment ${v.segment} is parted`,
     },
   },
   check: (network) =>

@@ -4,14 +4,17 @@ import { defineRule } from './define-rule.ts';
 import type { Fix } from './finding.ts';
 import { cutFix } from './storm-cuts.ts';
 import { stormBody, stormOfFault, stormsOf } from './storm-faults.ts';
-import { fateOf, ofSegments, sitesOf, stormSeen, stormWhy } from './storm-words.ts';
-import { counted } from './wording.ts';
+import { ofSegments, stormSeen, stormWhy } from './storm-words.ts';
+import { counted, sentenceCase } from './wording.ts';
 
 interface Values {
+  readonly tunnels: string;
   readonly segments: string;
-  readonly sites: string;
-  readonly fate: string;
+  readonly isOne: boolean;
 }
+
+const sentence = (v: Values): string =>
+  `${v.tunnels}${v.segments} ${v.isOne ? 'closes' : 'close'} a loop that nothing blocks`;
 
 export const stormAnyToAnyMesh = defineRule({
   id: 'storm-any-to-any-mesh',
@@ -27,13 +30,10 @@ export const stormAnyToAnyMesh = defineRule({
   messages: {
     mesh: {
       words: 'broadcast storm',
-      sentence: (v: Values) =>
-        `Tunnels${v.segments} join ${v.sites} any to any and every gateway relays between them: ${v.fate}`,
+      sentence,
+      why: `Each site has a tunnel to each other one, and every gateway passes on what came through one tunnel into the others. ${stormWhy}`,
     },
-    ring: {
-      words: 'broadcast storm',
-      sentence: (v: Values) => `Tunnels${v.segments} form a ring through ${v.sites}: ${v.fate}`,
-    },
+    ring: { words: 'broadcast storm', sentence },
   },
   check: (network) =>
     stormsOf(network, 'mesh').map((storm) => {
@@ -43,9 +43,9 @@ export const stormAnyToAnyMesh = defineRule({
       return {
         message: isFull ? ('mesh' as const) : ('ring' as const),
         values: {
+          tunnels: sentenceCase(counted(storm.tunnels.length, 'tunnel', 'tunnels')),
           segments: ofSegments(network.design, storm),
-          sites: sitesOf(network.design, storm),
-          fate: fateOf(storm),
+          isOne: storm.tunnels.length === 1,
         },
         ...stormBody(storm),
         properties: circuits.map(({ forwarder, id }) => ({

@@ -5,7 +5,7 @@ import type { Fix } from './finding.ts';
 import { placesOf } from './places.ts';
 import { cableName, cutFix } from './storm-cuts.ts';
 import { cablesBetweenSites, stormBody, stormOfFault, stormsOf } from './storm-faults.ts';
-import { fateOf, ofSegments, stormSeen, stormWhy } from './storm-words.ts';
+import { ofSegments, stormSeen, stormWhy } from './storm-words.ts';
 import { sentenceStart } from './sentence-start.ts';
 import { counted, listed } from './wording.ts';
 
@@ -23,26 +23,20 @@ export const stormCustomerCable = defineRule({
   messages: {
     beside: {
       words: 'broadcast storm',
-      sentence: (v: {
-        readonly cable: string;
-        readonly placeA: string;
-        readonly placeB: string;
-        readonly segments: string;
-        readonly fate: string;
-      }) =>
-        `${sentenceStart(v.cable)} joins ${v.placeA} and ${v.placeB} beside the way${v.segments} through the overlay: ${v.fate}`,
+      sentence: (v: { readonly cable: string; readonly segments: string }) =>
+        `${sentenceStart(v.cable)} closes a loop${v.segments} beside the overlay`,
     },
     around: {
       words: 'broadcast storm',
-      sentence: (v: { readonly cables: string; readonly segments: string; readonly fate: string }) =>
-        `${sentenceStart(v.cables)} between sites close a ring${v.segments}: ${v.fate}`,
+      sentence: (v: { readonly cables: string; readonly segments: string }) =>
+        `${sentenceStart(v.cables)} between sites close a loop${v.segments}`,
     },
   },
   check: (network) => {
     const { design } = network;
     return stormsOf(network, 'customer-cable').map((storm) => {
       const cables = cablesBetweenSites(network, storm);
-      const words = { segments: ofSegments(design, storm), fate: fateOf(storm) };
+      const words = { segments: ofSegments(design, storm) };
       const body = stormBody(
         storm,
         cables.map((id) => ({ collection: 'links', id })),
@@ -58,7 +52,7 @@ export const stormCustomerCable = defineRule({
       const places = placesOf(design, link.a.device, link.b.device);
       return {
         message: 'beside' as const,
-        values: { cable: cableName(network, only!), placeA: places.a, placeB: places.b, ...words },
+        values: { cable: link.name ?? `a cable ${places.a} – ${places.b}`, ...words },
         ...body,
       };
     });

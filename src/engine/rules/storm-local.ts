@@ -7,7 +7,7 @@ import { defineRule } from './define-rule.ts';
 import type { Fix } from './finding.ts';
 import { cutFix } from './storm-cuts.ts';
 import { stormBody, stormOfFault, stormsOf } from './storm-faults.ts';
-import { devicesOf, fateOf, ofSegments, sitesOf, stormSeen, stormWhy } from './storm-words.ts';
+import { ofSegments, sitesOf, stormSeen, stormWhy } from './storm-words.ts';
 import { sentenceStart } from './sentence-start.ts';
 import { counted, listed } from './wording.ts';
 
@@ -37,12 +37,14 @@ const doublyActive = ({ design }: Network, storm: Storm): readonly string[] =>
     return device.kind === 'ha-pair' && device.mode === 'active-active';
   });
 
-/** Whether two gateways of one site, or both members of a pair, are in the ring. */
-const hasTwoAtOneSite = (network: Network, storm: Storm): boolean => {
+/** A site of which two gateways, or both members of a pair, are in the ring. */
+const siteOfTwo = (network: Network, storm: Storm): string | undefined => {
   const { design } = network;
-  const gateways = storm.devices.filter((id) => isGateway(design.devices[id]!));
-  const sites = new Set(gateways.map((id) => design.devices[id]!.site));
-  return sites.size < gateways.length || doublyActive(network, storm).length > 0;
+  const sites = storm.devices
+    .filter((id) => isGateway(design.devices[id]!))
+    .concat(doublyActive(network, storm))
+    .map((id) => design.devices[id]!.site);
+  return sites.find((site, i) => sites.indexOf(site) < i);
 };
 
 const standbyFix = (network: Network, storm: Storm): readonly Fix[] => {
@@ -73,39 +75,40 @@ export const stormLocal = defineRule({
       sentence: (v: {
         readonly cables: string;
         readonly verb: string;
-        readonly devices: string;
         readonly site: string;
         readonly segments: string;
-        readonly fate: string;
-      }) => `${v.cables} at ${v.site} ${v.verb} a loop${v.segments} through ${v.devices}: ${v.fate}`,
+      }) => `${v.cables} at ${v.site} ${v.verb} a loop${v.segments}`,
     },
     through: {
       words: 'broadcast storm',
-      sentence: (v: { readonly sites: string; readonly segments: string; readonly fate: string }) =>
-        `Cables and tunnels${v.segments} close a ring through ${v.sites}: ${v.fate}`,
+      sentence: (v: { readonly sites: string; readonly segments: string }) =>
+        `A loop${v.segments} runs through ${v.sites}`,
     },
     twoWays: {
       words: 'broadcast storm',
-      sentence: (v: { readonly sites: string; readonly segments: string; readonly fate: string }) =>
-        `Two gateways beside each other both bridge frames${v.segments}, which closes a ring through ${v.sites}: ${v.fate}`,
+      sentence: (v: { readonly site: string; readonly segments: string }) =>
+        `Two gateways at ${v.site} both bridge frames${v.segments}`,
       why: `Two gateways on one switch, both with a tunnel for the segment, are two ways between the same places, and no spanning tree sees both. ${stormWhy}`,
     },
   },
   check: (network) => {
     const { design } = network;
     return stormsOf(network, 'local').map((storm) => {
-      const words = { segments: ofSegments(design, storm), fate: fateOf(storm) };
+      const words = { segments: ofSegments(design, storm) };
       const body = stormBody(storm);
-      if (storm.tunnels.length > 0)
-        return {
-          message: hasTwoAtOneSite(network, storm) ? ('twoWays' as const) : ('through' as const),
-          values: { sites: sitesOf(design, storm), ...words },
+      if (storm.tunnels.length > 0) {
+        const site = siteOfTwo(network, storm);
+        const about = {
           ...body,
           sources: [
             { document: 'RFC 8365', clause: 'section 8.1.3' },
             { document: 'RFC 4664', clause: 'section 3.4.1' },
           ],
         };
+        return site === undefined
+          ? { message: 'through' as const, values: { sites: sitesOf(design, storm), ...words }, ...about }
+          : { message: 'twoWays' as const, values: { site: design.sites[site]!.name, ...words }, ...about };
+      }
       return {
         message: 'within' as const,
         values: {
@@ -113,7 +116,6 @@ export const stormLocal = defineRule({
             storm.cables.length === 1 ? 'a cable' : counted(storm.cables.length, 'cable', 'cables'),
           ),
           verb: storm.cables.length === 1 ? 'forms' : 'form',
-          devices: devicesOf(design, storm),
           site: sitesOf(design, storm),
           ...words,
         },

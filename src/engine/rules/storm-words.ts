@@ -2,30 +2,17 @@ import type { Storm } from '../flood/storm.ts';
 import type { DesignFacts } from '../network/network.ts';
 import { countWord, listed } from './wording.ts';
 
-/** Sites and devices are named one by one up to here; more would be a list that nobody hears out. */
-const namedAtMost = 6;
-
-/** 'Head office, Gullhaven and Skerry', or 'nine sites'. */
+/** 'Head office and Gullhaven', or 'nine sites' where a list would be too long for a row. */
 export const sitesOf = (design: DesignFacts, storm: Storm): string =>
-  storm.sites.length > namedAtMost
+  storm.sites.length > 2
     ? `${countWord(storm.sites.length)} sites`
     : listed(storm.sites.map((id) => design.sites[id]!.name));
-
-/** 'sw-gul and sw-gul-2', or 'nine devices'. */
-export const devicesOf = (design: DesignFacts, storm: Storm): string =>
-  storm.devices.length > namedAtMost
-    ? `${countWord(storm.devices.length)} devices`
-    : listed(storm.devices.map((id) => design.devices[id]!.name));
 
 /** ' of segment A', ' of segments A and B'; nothing where no segment's frames get in. */
 export const ofSegments = (design: DesignFacts, storm: Storm): string =>
   storm.segments.length === 0
     ? ''
     : ` of segment${storm.segments.length === 1 ? '' : 's'} ${listed(storm.segments.map((id) => design.segments[id]!.letter))}`;
-
-/** What becomes of one broadcast. */
-export const fateOf = (storm: Storm): string =>
-  storm.copies === 'multiply' ? 'a broadcast multiplies without end' : 'a broadcast circles without end';
 
 export const stormSeen =
   'At the first broadcast after the last plug goes in, port counters of every device on the way jump to line rate, hosts of the whole segment lose each other, and switches report addresses that move from port to port. Pulling one of the connections ends it at once.';

@@ -58,13 +58,11 @@ export const switchSingleHomed = defineRule({
   messages: {
     atRisk: {
       words: 'one member only',
-      sentence: (v: Values) =>
-        `${v.switch} is wired to ${v.member} alone and is cut off when ${v.other} takes over`,
+      sentence: (v: Values) => `${v.switch} is wired to ${v.member} alone, not to ${v.other}`,
     },
     cutOff: {
       words: 'wired to standby',
-      sentence: (v: Values) =>
-        `${v.switch} is wired to ${v.member} alone, which stands by and forwards nothing`,
+      sentence: (v: Values) => `${v.switch} is wired to ${v.member} alone, which stands by`,
       seen: 'The link light is on and nobody behind the switch reaches another site until the pair fails over.',
     },
   },

@@ -172,7 +172,6 @@ interface Values {
   readonly has: number;
   readonly segment: string;
   readonly port: string;
-  readonly device: string;
 }
 
 export const vlanMissingOnPath = defineRule({
@@ -195,20 +194,17 @@ export const vlanMissingOnPath = defineRule({
     },
     'no-native-vlan': {
       words: 'no native VLAN',
-      sentence: (v: Values) =>
-        sentenceStart(
-          `${v.port} is a trunk without native VLAN and drops the untagged frames of segment ${v.segment}`,
-        ),
+      sentence: (v: Values) => sentenceStart(`${v.port} drops the untagged frames of segment ${v.segment}`),
     },
     'tag-at-access-port': {
       words: 'tags not taken',
       sentence: (v: Values) =>
-        `Frames of segment ${v.segment} reach ${v.port} with tag ${v.vlan}, and an access port takes none`,
+        sentenceStart(`${v.port} takes no tags; segment ${v.segment} comes with ${v.vlan}`),
     },
     'no-circuit': {
       words: 'VLAN unclaimed',
       sentence: (v: Values) =>
-        `No forwarder of ${v.device} takes ${v.vlan === 0 ? 'the untagged frames' : `VLAN ${v.vlan}`} of segment ${v.segment} from ${v.port}`,
+        `No forwarder takes ${v.vlan === 0 ? 'untagged frames' : `VLAN ${v.vlan}`} of segment ${v.segment} at ${v.port}`,
     },
   },
   check: (network) => {
@@ -227,7 +223,6 @@ export const vlanMissingOnPath = defineRule({
           has,
           segment: entryOf(design.segments, segment).letter,
           port: portLabel(design, device, port),
-          device: entryOf(design.devices, device).name,
         },
         elements: [ref, { collection: 'segments' as const, id: segment }],
         identity: identityOf(gap),

@@ -31,7 +31,7 @@ testRule(endpointOnOneMember, {
       design: owned(1),
       findings: [
         {
-          sentence: 'lo-s0 belongs to fw-s0-1 alone and does not move when fw-s0 fails over',
+          sentence: 'lo-s0 belongs to fw-s0-1 alone and doesn’t fail over',
           words: 'one member only',
           severity: 'blocking',
           elements: ['endpoints/lo-s0', 'devices/fw-s0'],
@@ -44,7 +44,7 @@ testRule(endpointOnOneMember, {
       design: owned(2),
       findings: [
         {
-          sentence: 'lo-s0 belongs to fw-s0-2 alone and does not move when fw-s0 fails over',
+          sentence: 'lo-s0 belongs to fw-s0-2 alone and doesn’t fail over',
           fixes: ['Give it to fw-s0'],
         },
       ],

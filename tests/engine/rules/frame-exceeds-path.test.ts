@@ -36,7 +36,7 @@ testRule(frameExceedsPath, {
       design: changed(pairDesign(), mtu(1500)),
       findings: [
         {
-          sentence: 'Segment A needs packets of 1500 bytes, but 1396 fit through tn-s0-s1-a',
+          sentence: 'Segment A needs 1500-byte packets, tn-s0-s1-a takes 1396',
           words: 'packets too large',
           severity: 'blocking',
           elements: ['tunnels/tn-s0-s1-a', 'segments/a'],
@@ -50,7 +50,7 @@ testRule(frameExceedsPath, {
       design: changed(pairDesign(), mtu(fits + 1)),
       findings: [
         {
-          sentence: 'Segment A needs packets of 1397 bytes, but 1396 fit through tn-s0-s1-a',
+          sentence: 'Segment A needs 1397-byte packets, tn-s0-s1-a takes 1396',
           fixes: ['Lower Segment A to 1396'],
         },
       ],
@@ -59,7 +59,7 @@ testRule(frameExceedsPath, {
       design: changed(pairDesign(), { links: { 'ld-s0-coast': { nat: {} } } }),
       findings: [
         {
-          sentence: 'Segment A needs packets of 1396 bytes, but 1388 fit through tn-s0-s1-a',
+          sentence: 'Segment A needs 1396-byte packets, tn-s0-s1-a takes 1388',
           fixes: ['Lower Segment A to 1388'],
         },
       ],
@@ -68,7 +68,7 @@ testRule(frameExceedsPath, {
       design: changed(pairDesign(), { links: { 'ld-s1-coast': { accessOverhead: 'pppoe' } } }),
       findings: [
         {
-          sentence: 'Segment A needs packets of 1396 bytes, but 1388 fit through tn-s0-s1-a',
+          sentence: 'Segment A needs 1396-byte packets, tn-s0-s1-a takes 1388',
           mark: { kind: 'overhang', tunnel: 'tn-s0-s1-a', end: 'b', packetBytes: 1500, mtuBytes: 1492 },
           fixes: ['Lower Segment A to 1388', 'Raise WAN ports to 1508'],
         },
@@ -81,7 +81,7 @@ testRule(frameExceedsPath, {
       }),
       findings: [
         {
-          sentence: 'Segment A needs packets of 1396 bytes, but 1392 fit through tn-s0-s1-a',
+          sentence: 'Segment A needs 1396-byte packets, tn-s0-s1-a takes 1392',
           fixes: ['Lower Segment A to 1392'],
         },
       ],
@@ -90,7 +90,7 @@ testRule(frameExceedsPath, {
       design: changed(pairDesign(), own, mtu(1500)),
       findings: [
         {
-          sentence: 'Segment A needs packets of 1500 bytes, but 1396 fit through tn-s0-s1-a',
+          sentence: 'Segment A needs 1500-byte packets, tn-s0-s1-a takes 1396',
           fixes: ['Lower Segment A to 1396', 'Raise Coastal access to 1604'],
         },
       ],
@@ -99,7 +99,7 @@ testRule(frameExceedsPath, {
       design: changed(pairDesign(), mtu(1500), { transports: { coast: { mtu: 9000 } } }),
       findings: [
         {
-          sentence: 'Segment A needs packets of 1500 bytes, but 1396 fit through tn-s0-s1-a',
+          sentence: 'Segment A needs 1500-byte packets, tn-s0-s1-a takes 1396',
           fixes: ['Lower Segment A to 1396', 'Raise WAN ports to 1604'],
         },
       ],
@@ -108,8 +108,7 @@ testRule(frameExceedsPath, {
       design: changed(hubDesign(3), mtu(1500)),
       findings: [
         {
-          sentence:
-            'Segment A needs packets of 1500 bytes, but 1396 fit through tn-s0-s1-a and fewer than needed through two other tunnels',
+          sentence: 'Segment A needs 1500-byte packets, three tunnels take less',
           elements: ['tunnels/tn-s0-s1-a', 'segments/a', 'tunnels/tn-s0-s2-a', 'tunnels/tn-s0-s3-a'],
           fixes: ['Lower Segment A to 1396'],
         },
@@ -119,7 +118,7 @@ testRule(frameExceedsPath, {
       design: changed(pairDesign(), mtu(null)),
       findings: [
         {
-          sentence: 'Two hosts of Segment A may send packets of 1500 bytes, but 1396 fit through tn-s0-s1-a',
+          sentence: 'Two hosts send 1500-byte packets, tn-s0-s1-a takes 1396',
           fixes: ['Lower Segment A to 1396'],
         },
       ],
@@ -130,7 +129,7 @@ testRule(frameExceedsPath, {
       }),
       findings: [
         {
-          sentence: 'Segment A needs packets of 1500 bytes, but 1396 fit through tn-s0-s1-a',
+          sentence: 'Segment A needs 1500-byte packets, tn-s0-s1-a takes 1396',
           severity: 'degrading',
           fixes: ['Lower Segment A to 1396'],
         },
@@ -142,8 +141,7 @@ testRule(frameExceedsPath, {
       }),
       findings: [
         {
-          sentence:
-            'The gateway on br-110 at Head office sends up to 1500 bytes into Segment A, where 1396 fit through',
+          sentence: 'br-110 at Head office sends 1500-byte packets, 1396 fit',
           words: 'gateway MTU large',
           severity: 'degrading',
           elements: ['forwarders/br-s0-a', 'segments/a'],
@@ -156,7 +154,7 @@ testRule(frameExceedsPath, {
       design: changed(pairDesign(), mtu(1500), { forwarders: { 'br-s0-a': { gateway: { mtu: 1500 } } } }),
       findings: [
         {
-          sentence: 'Segment A needs packets of 1500 bytes, but 1396 fit through tn-s0-s1-a',
+          sentence: 'Segment A needs 1500-byte packets, tn-s0-s1-a takes 1396',
           fixes: ['Lower Segment A to 1396'],
         },
       ],
@@ -168,7 +166,7 @@ testRule(frameExceedsPath, {
       }),
       findings: [
         {
-          sentence: 'Segment A needs packets of 1400 bytes, but 1276 fit through tn-s0-s1-a',
+          sentence: 'Segment A needs 1400-byte packets, tn-s0-s1-a takes 1276',
           fixes: [],
         },
       ],

@@ -42,8 +42,7 @@ testRule(stormAnyToAnyMesh, {
       design: mesh,
       findings: [
         {
-          sentence:
-            'Tunnels of segment A join Head office, Gullhaven and Orrin Point any to any and every gateway relays between them: a broadcast circles without end',
+          sentence: 'Three tunnels of segment A close a loop that nothing blocks',
           words: 'broadcast storm',
           severity: 'blocking',
           elements: ['tunnels/tn-s0-s1-a', 'tunnels/tn-s0-s2-a', 'tunnels/tn-s1-s2-a'],
@@ -70,7 +69,7 @@ testRule(stormAnyToAnyMesh, {
     'a mesh of four sites in each of two segments': {
       design: meshDesign(4, { segments: ['a', 'b'] }),
       findings: ['A', 'B'].map((letter) => ({
-        sentence: `Tunnels of segment ${letter} join Head office, Gullhaven, Orrin Point and Skerry any to any and every gateway relays between them: a broadcast multiplies without end`,
+        sentence: `Six tunnels of segment ${letter} close a loop that nothing blocks`,
         fixes: ['Isolate the tunnels', 'Remove three tunnels'],
       })),
     },
@@ -78,18 +77,16 @@ testRule(stormAnyToAnyMesh, {
       design: without(['s1', 's3'], without(['s0', 's2'], meshDesign(4))),
       findings: [
         {
-          sentence:
-            'Tunnels of segment A form a ring through Head office, Gullhaven, Orrin Point and Skerry: a broadcast circles without end',
+          sentence: 'Four tunnels of segment A close a loop that nothing blocks',
           fixes: ['Remove tn-s2-s3-a'],
         },
       ],
     },
-    'a mesh of more sites than a sentence can name': {
+    'a mesh of eight sites': {
       design: meshDesign(8),
       findings: [
         {
-          sentence:
-            'Tunnels of segment A join eight sites any to any and every gateway relays between them: a broadcast multiplies without end',
+          sentence: '28 tunnels of segment A close a loop that nothing blocks',
           fixes: ['Isolate the tunnels', 'Remove 21 tunnels'],
         },
       ],

@@ -35,8 +35,7 @@ testRule(stormCustomerCable, {
       design: closed,
       findings: [
         {
-          sentence:
-            'Harbour fibre joins Head office and Gullhaven beside the way of segment A through the overlay: a broadcast circles without end',
+          sentence: 'Harbour fibre closes a loop of segment A beside the overlay',
           words: 'broadcast storm',
           severity: 'blocking',
           elements: ['links/cb-quay9', 'tunnels/tn-s0-s1-a', 'links/cb-s0-up1', 'links/cb-s1-up1'],
@@ -48,8 +47,7 @@ testRule(stormCustomerCable, {
       design: changed(hubDesign(2), quay('sw-s1', 'sw-s2')),
       findings: [
         {
-          sentence:
-            'The cable sw-s1 fibre9 – sw-s2 fibre9 joins Gullhaven and Orrin Point beside the way of segment A through the overlay: a broadcast circles without end',
+          sentence: 'A cable Gullhaven – Orrin Point closes a loop of segment A beside the overlay',
           fixes: ['Remove the cable sw-s1 fibre9 – sw-s2 fibre9', 'Remove tn-s0-s2-a'],
         },
       ],
@@ -58,7 +56,7 @@ testRule(stormCustomerCable, {
       design: changed(pairDesign(), quay('sw-s0', 'sw-s1'), quay('sw-s0', 'sw-s1', 8)),
       findings: [
         {
-          sentence: 'Two cables between sites close a ring of segment A: a broadcast multiplies without end',
+          sentence: 'Two cables between sites close a loop of segment A',
           fixes: ['Remove two cables', 'Remove one tunnel and one cable'],
         },
       ],

@@ -69,8 +69,7 @@ testRule(stormLocal, {
       design: changed(pairDesign(), doubled()),
       findings: [
         {
-          sentence:
-            'Two cables at Head office form a loop of segment A through sw-hall and sw-s0: a broadcast circles without end',
+          sentence: 'Two cables at Head office form a loop of segment A',
           words: 'broadcast storm',
           severity: 'blocking',
           elements: ['links/cb-x1', 'links/cb-x2'],
@@ -103,8 +102,7 @@ testRule(stormLocal, {
       }),
       findings: [
         {
-          sentence:
-            'A cable at Head office forms a loop of segment A through sw-s0: a broadcast circles without end',
+          sentence: 'A cable at Head office forms a loop of segment A',
           fixes: ['Turn on spanning tree', 'Remove patch 4'],
         },
       ],
@@ -113,8 +111,7 @@ testRule(stormLocal, {
       design: perMember,
       findings: [
         {
-          sentence:
-            'Two gateways beside each other both bridge frames of segment A, which closes a ring through Head office and Gullhaven: a broadcast circles without end',
+          sentence: 'Two gateways at Head office both bridge frames of segment A',
           elements: ['tunnels/second', 'tunnels/tn-s0-s1-a', 'links/cb-s0-up1', 'links/cb-s0-up2'],
           fixes: ['Let one member stand by'],
         },

@@ -76,8 +76,7 @@ testRule(vlanMissingOnPath, {
       design: changed(pair, port('sw-s1', 'p2', { mode: 'trunk', vlan: null, allowedVlans: [110] })),
       findings: [
         {
-          sentence:
-            'Port 2 of sw-s1 is a trunk without native VLAN and drops the untagged frames of segment A',
+          sentence: 'Port 2 of sw-s1 drops the untagged frames of segment A',
           fixes: ['Make it an access port'],
         },
       ],
@@ -86,7 +85,7 @@ testRule(vlanMissingOnPath, {
       design: changed(pair, port('h-s1-a', 'p1', { mode: 'trunk', allowedVlans: [110] })),
       findings: [
         {
-          sentence: 'Frames of segment A reach port 2 of sw-s1 with tag 110, and an access port takes none',
+          sentence: 'Port 2 of sw-s1 takes no tags; segment A comes with 110',
           fixes: ['Let h-s1-a send untagged'],
         },
       ],
@@ -95,7 +94,7 @@ testRule(vlanMissingOnPath, {
       design: changed(pair, port('sw-s1', 'p1', { mode: 'access', vlan: 1, allowedVlans: null })),
       findings: [
         {
-          sentence: 'Frames of segment A reach port 1 of sw-s1 with tag 110, and an access port takes none',
+          sentence: 'Port 1 of sw-s1 takes no tags; segment A comes with 110',
           fixes: ['Make it a trunk'],
         },
       ],
@@ -104,7 +103,7 @@ testRule(vlanMissingOnPath, {
       design: changed(pair, { forwarders: { 'br-s1-a': { circuits: { access: { vlans: [111] } } } } }),
       findings: [
         {
-          sentence: 'No forwarder of fw-s1 takes VLAN 110 of segment A from lan1 of fw-s1',
+          sentence: 'No forwarder takes VLAN 110 of segment A at lan1 of fw-s1',
           words: 'VLAN unclaimed',
           fixes: ['Take it into br-110'],
         },
