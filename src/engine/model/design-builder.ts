@@ -292,6 +292,7 @@ export const designBuilder = (title: string): DesignBuilder => {
       replayWindow: 128,
       mode: 'tunnel',
       outerDf: 'set',
+      whenDown: 'drop',
       ...(plan.protectedBy === false ? {} : plan.protectedBy),
     };
   };

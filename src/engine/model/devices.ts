@@ -4,6 +4,7 @@ import {
   countSchema,
   durationUsSchema,
   idSchema,
+  ipSchema,
   mtuSchema,
   nameSchema,
   rateBpsSchema,
@@ -45,6 +46,8 @@ const deviceSettingsSchema = z.strictObject({
   ignoreDf: z.boolean().optional(),
   multicastRouting: z.boolean().optional(),
   keepInnerTags: z.boolean().optional(),
+  /** From whom the WAN ports take VXLAN outside IPsec. */
+  vxlanFrom: z.enum(['anyone', 'peers', 'nobody']).optional(),
   spanningTree: spanningTreeSchema.optional(),
 });
 
@@ -53,6 +56,8 @@ const common = {
   name: nameSchema,
   profile: idSchema.optional(),
   settings: deviceSettingsSchema.optional(),
+  /** Where the device is administered. */
+  managementAddress: ipSchema.optional(),
   ports: z.record(idSchema, portSchema),
   notes: textSchema.optional(),
 };

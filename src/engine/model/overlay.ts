@@ -112,6 +112,8 @@ export const associationEndSchema = z.strictObject({
   mode: z.enum(['tunnel', 'transport']).optional(),
   outerDf: z.enum(['copy', 'set', 'clear']).optional(),
   natKeepaliveSeconds: secondsSchema.optional(),
+  /** What becomes of the tunnels' packets while the association is down. */
+  whenDown: z.enum(['drop', 'clear']).optional(),
 });
 export const associationSchema = z.strictObject({
   name: nameSchema,
@@ -126,6 +128,9 @@ export const tunnelEndSchema = z.strictObject({
   udpPort: udpPortSchema.optional(),
   outerDf: z.enum(['set', 'clear', 'inherit']).optional(),
   innerTags: z.enum(['keep', 'strip']).optional(),
+  /** Over IPv6: what the outer UDP header says when this end sends, and whether it takes packets that say zero. */
+  udpChecksum: z.enum(['computed', 'zero']).optional(),
+  takesZeroChecksum: z.boolean().optional(),
   via: viaSchema.optional(),
 });
 export const tunnelSchema = z.strictObject({

@@ -9,10 +9,16 @@ import {
   mtuSchema,
   nameSchema,
   rateBpsSchema,
+  secondsSchema,
   textSchema,
 } from './scalars.ts';
 
-export const siteSchema = z.strictObject({ name: nameSchema, notes: textSchema.optional() });
+export const siteSchema = z.strictObject({
+  name: nameSchema,
+  /** Sites of one zone trust each other's hosts. */
+  zone: nameSchema.optional(),
+  notes: textSchema.optional(),
+});
 
 export const transportSchema = z.strictObject({
   name: nameSchema,
@@ -65,7 +71,13 @@ export const landingSchema = z.strictObject({
   ipv6: ipv6Schema.optional(),
   dynamic: z.boolean().optional(),
   dynamicName: nameSchema.optional(),
-  nat: z.strictObject({ forwarded: z.boolean().optional() }).optional(),
+  nat: z
+    .strictObject({
+      forwarded: z.boolean().optional(),
+      /** After how long without a packet the translation of a UDP flow is forgotten. */
+      mappingSeconds: secondsSchema.optional(),
+    })
+    .optional(),
   accessOverhead: z.union([z.literal('pppoe'), z.int().min(0).max(256)]).optional(),
   rateUpBps: rateBpsSchema.optional(),
   rateDownBps: rateBpsSchema.optional(),
@@ -109,5 +121,7 @@ export const profileSchema = z.strictObject({
   multicastTtl: z.enum(['kept', 'lowered']).optional(),
   oversizeDf: z.enum(['silent', 'icmp', 'fragment']).optional(),
   macTable: countSchema.optional(),
+  /** Bits of the integrity value that HMAC-SHA2-256 leaves on a packet. */
+  hmacSha256Bits: z.union([z.literal(96), z.literal(128)], 'expected 96 or 128 bits').optional(),
 });
 export type Profile = z.infer<typeof profileSchema>;

@@ -16,7 +16,7 @@ export const associationBothBehindNat = defineRule({
     bothBehindNat: {
       words: 'NAT at both',
       sentence: (v: { readonly association: string; readonly placeA: string; readonly placeB: string }) =>
-        `Neither end of ${v.association} can be reached: ${v.placeA} and ${v.placeB} are both behind NAT that forwards nothing`,
+        `${v.placeA} and ${v.placeB} are both behind NAT that forwards nothing`,
     },
   },
   check: (network) => {

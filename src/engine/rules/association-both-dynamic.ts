@@ -16,7 +16,7 @@ export const associationBothDynamic = defineRule({
     bothDynamic: {
       words: 'both dynamic',
       sentence: (v: { readonly association: string; readonly placeA: string; readonly placeB: string }) =>
-        `Neither end of ${v.association} can find the other: ${v.placeA} and ${v.placeB} both have changing addresses without a name`,
+        `${v.placeA} and ${v.placeB} both have changing addresses and no name`,
     },
   },
   check: (network) => {

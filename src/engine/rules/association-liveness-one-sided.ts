@@ -14,7 +14,7 @@ export const associationLivenessOneSided = defineRule({
     oneSided: {
       words: 'liveness one-sided',
       sentence: (v: { readonly place: string; readonly association: string }) =>
-        `Only ${v.place} checks that its peer on ${v.association} is alive`,
+        `Only ${v.place} checks that its peer is alive`,
     },
   },
   check: ({ design }) =>

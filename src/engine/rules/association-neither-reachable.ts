@@ -16,7 +16,7 @@ export const associationNeitherReachable = defineRule({
     mixed: {
       words: 'neither reachable',
       sentence: (v: { readonly association: string; readonly dynamic: string; readonly behindNat: string }) =>
-        `Neither end of ${v.association} can be reached: the address of ${v.dynamic} changes, ${v.behindNat} is behind NAT that forwards nothing`,
+        `The address of ${v.dynamic} changes, and ${v.behindNat} is behind NAT`,
     },
   },
   check: (network) => {

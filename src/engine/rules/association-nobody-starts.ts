@@ -14,7 +14,7 @@ export const associationNobodyStarts = defineRule({
     bothAnswer: {
       words: 'nobody starts',
       sentence: (v: { readonly association: string; readonly placeA: string; readonly placeB: string }) =>
-        `Nobody starts ${v.association}: ${v.placeA} and ${v.placeB} both only answer`,
+        `Nobody starts: ${v.placeA} and ${v.placeB} both only answer`,
     },
   },
   check: ({ design }) =>

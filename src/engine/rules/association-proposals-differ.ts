@@ -74,12 +74,12 @@ const messages = {
       readonly parts: string;
       readonly placeA: string;
       readonly placeB: string;
-    }) => `${v.layer} ${v.parts} have nothing in common at ${v.placeA} and ${v.placeB}`,
+    }) => `${v.layer} ${v.parts} differ at ${v.placeA} and ${v.placeB}`,
   },
   noWhole: {
     words: 'proposals differ',
     sentence: (v: { readonly layer: string; readonly placeA: string; readonly placeB: string }) =>
-      `No ${v.layer} proposal is whole in common at ${v.placeA} and ${v.placeB}, though each part is`,
+      `No ${v.layer} proposal is alike at ${v.placeA} and ${v.placeB}`,
   },
 };
 

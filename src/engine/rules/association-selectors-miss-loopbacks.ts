@@ -6,7 +6,7 @@ import { duplicateEndpoints } from './endpoint-address-duplicate.ts';
 import { insideSegments } from './endpoint-inside-segment.ts';
 import { associationPlaces } from './places.ts';
 import { coverPatch } from './selector-patch.ts';
-import { listed, namedOrCounted } from './wording.ts';
+import { namedOrCounted } from './wording.ts';
 
 export const associationSelectorsMissLoopbacks = defineRule({
   id: 'association-selectors-miss-loopbacks',
@@ -20,7 +20,7 @@ export const associationSelectorsMissLoopbacks = defineRule({
     missed: {
       words: 'selectors miss endpoints',
       sentence: (v: { readonly association: string; readonly places: string; readonly pairs: string }) =>
-        `Selectors of ${v.association} at ${v.places} leave out ${v.pairs}`,
+        `Selectors at ${v.places} leave out ${v.pairs}`,
     },
   },
   check: (network) => {
@@ -60,7 +60,7 @@ export const associationSelectorsMissLoopbacks = defineRule({
           message: 'missed',
           values: {
             association: association.name,
-            places: listed(sides.map((side) => places[side])),
+            places: sides.length === 2 ? 'both ends' : places[sides[0]!],
             pairs: namedOrCounted(pairs, 'pairs of endpoints'),
           },
           elements: [

@@ -15,12 +15,12 @@ export const associationWrongInitiator = defineRule({
     behindNat: {
       words: 'wrong end starts',
       sentence: (v: { readonly association: string; readonly place: string }) =>
-        `${v.place} only answers on ${v.association}, but is behind NAT that forwards nothing`,
+        `${v.place} only answers, but NAT lets nobody in to ask`,
     },
     dynamic: {
       words: 'wrong end starts',
       sentence: (v: { readonly association: string; readonly place: string }) =>
-        `${v.place} only answers on ${v.association}, but its address changes`,
+        `${v.place} only answers, but its address changes`,
     },
   },
   check: (network) => {

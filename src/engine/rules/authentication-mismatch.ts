@@ -3,11 +3,12 @@ import type { Association } from '../network/network.ts';
 import { ends, otherEnd } from '../network/network.ts';
 import { defineRule } from './define-rule.ts';
 import { associationPlaces } from './places.ts';
+import { sentenceCase } from './wording.ts';
 
 type Authentication = NonNullable<Association['a']['authentication']>;
 
 const described = (authentication: Authentication): string =>
-  authentication.method === 'certificate' ? 'a certificate' : `the key "${authentication.vaultEntry}"`;
+  authentication.method === 'certificate' ? 'certificate' : `key "${authentication.vaultEntry}"`;
 
 const same = (a: Authentication, b: Authentication): boolean =>
   a.method === 'pre-shared-key' && b.method === 'pre-shared-key'
@@ -30,7 +31,7 @@ export const authenticationMismatch = defineRule({
         readonly placeA: string;
         readonly byB: string;
         readonly placeB: string;
-      }) => `${v.placeA} uses ${v.byA}, ${v.placeB} ${v.byB}`,
+      }) => sentenceCase(`${v.byA} at ${v.placeA}, ${v.byB} at ${v.placeB}`),
     },
   },
   check: ({ design }) =>
@@ -66,7 +67,7 @@ export const authenticationMismatch = defineRule({
         {
           id: `as-${from}`,
           label: `${authentication.method === 'certificate' ? 'Certificate' : 'Same key'} at ${places[to]}`,
-          sentence: `Lets ${places[to]} use ${described(authentication)} too, as ${places[from]} does.`,
+          sentence: `Lets ${places[to]} use the ${described(authentication)} too, as ${places[from]} does.`,
           patch: { associations: { [id]: { [to]: { authentication: patch } } } },
         },
       ];

@@ -43,8 +43,7 @@ export const bridgeWhereFilterRequired = defineRule({
         readonly placeA: string;
         readonly placeB: string;
         readonly tunnel: string;
-      }) =>
-        `${v.segment} must be filtered, but is bridged between ${v.placeA} and ${v.placeB} through ${v.tunnel}`,
+      }) => `${v.segment} must be filtered, but ${v.tunnel} bridges it`,
     },
   },
   check: (network) => {

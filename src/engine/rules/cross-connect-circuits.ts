@@ -20,7 +20,7 @@ export const crossConnectCircuits = defineRule({
         readonly place: string;
         readonly ports: string;
         readonly tunnels: string;
-      }) => `${v.forwarder} at ${v.place} joins ${v.ports} and ${v.tunnels}, not one of each`,
+      }) => `${v.forwarder} at ${v.place} joins ${v.ports} and ${v.tunnels}`,
     },
   },
   check: ({ design }) =>

@@ -15,7 +15,7 @@ export const crossConnectWithoutPolicy = defineRule({
     none: {
       words: 'no policy',
       sentence: (v: { readonly forwarder: string; readonly place: string }) =>
-        `${v.forwarder} at ${v.place} has no filter policy, so that nothing passes`,
+        `${v.forwarder} at ${v.place} has no policy: nothing passes`,
     },
     deniesAll: {
       words: 'nothing permitted',

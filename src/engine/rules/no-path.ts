@@ -16,22 +16,19 @@ interface AtOneEnd {
 export const noPathMessages = {
   noLanding: {
     words: 'no WAN port',
-    sentence: (v: AtOneEnd) => `${v.runner} has no path: ${v.place} has no WAN port on any transport`,
+    sentence: (v: AtOneEnd) => `No path: ${v.place} has no WAN port on any transport`,
   },
   offDevice: {
     words: 'no common path',
-    sentence: (v: AtOneEnd) =>
-      `${v.runner} has no path: at ${v.place} it names only WAN ports of other devices`,
+    sentence: (v: AtOneEnd) => `No path: ${v.place} names only WAN ports of other devices`,
   },
   shut: {
     words: 'WAN port shut',
-    sentence: (v: AtOneEnd) =>
-      `${v.runner} has no path: at ${v.place} it may use only WAN ports that are shut`,
+    sentence: (v: AtOneEnd) => `No path: every WAN port it may use at ${v.place} is shut`,
   },
   standby: {
     words: 'WAN port silent',
-    sentence: (v: AtOneEnd) =>
-      `${v.runner} has no path: no open WAN port of the active member at ${v.place} is plugged into a transport`,
+    sentence: (v: AtOneEnd) => `No path: the active member at ${v.place} has no open WAN port`,
   },
   noTransport: {
     words: 'no common path',
@@ -41,12 +38,12 @@ export const noPathMessages = {
       readonly transportsA: string;
       readonly placeB: string;
       readonly transportsB: string;
-    }) => `${v.runner} has no path: ${v.placeA} lands on ${v.transportsA}, ${v.placeB} on ${v.transportsB}`,
+    }) => `No path: ${v.placeA} on ${v.transportsA}, ${v.placeB} on ${v.transportsB}`,
   },
   noFamily: {
     words: 'no common family',
     sentence: (v: { readonly runner: string; readonly transports: string }) =>
-      `${v.runner} has no path: its ends share no address family on ${v.transports}`,
+      `No path: no common address family on ${v.transports}`,
   },
 } as const;
 

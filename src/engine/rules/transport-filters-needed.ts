@@ -6,7 +6,7 @@ import { listed, namedOrCounted } from './wording.ts';
 type Filter = 'esp' | 'udp-500' | 'udp-4500' | 'udp-4789';
 const filterNames: { readonly [F in Filter]: string } = {
   // RFC 4303 section 2; RFC 7296 section 2 and section 2.23; RFC 7348 section 5.
-  esp: 'ESP (IP protocol 50)',
+  esp: 'ESP',
   'udp-500': 'UDP 500',
   'udp-4500': 'UDP 4500',
   'udp-4789': 'UDP 4789',

@@ -1,4 +1,3 @@
-import type { Entry } from '../model/design.ts';
 import type { MergePatch } from '../model/merge-patch.ts';
 import { applyPatch, joinPatches } from '../model/merge-patch.ts';
 import { rankBetween } from '../model/rank.ts';
@@ -13,10 +12,7 @@ import { isHidden } from './other-path.ts';
 import { tunnelDevices } from './places.ts';
 import { coverPatch } from './selector-patch.ts';
 import { strongEspProposal, strongIkeProposal, usualLiveness } from './strong-suite.ts';
-
-/** Whether a transport needs no protection: as stated, and where nothing is stated only one's own. */
-const isTrusted = (transport: Entry<'transports'>): boolean =>
-  transport.trusted ?? transport.kind === 'own-routed';
+import { isTrusted } from './trusted-transport.ts';
 
 const freeAssociationId = ({ design }: Network, stem: string): string => {
   const base = stem.slice(0, 60);
@@ -82,7 +78,7 @@ export const tunnelBareOnUntrusted = defineRule({
     bare: {
       words: 'not protected',
       sentence: (v: { readonly tunnel: string; readonly transport: string }) =>
-        `${v.tunnel} runs outside IPsec over ${v.transport}, which is not trusted`,
+        `${v.tunnel} runs outside IPsec over ${v.transport}`,
     },
   },
   check: (network) => {

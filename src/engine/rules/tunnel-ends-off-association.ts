@@ -23,7 +23,7 @@ export const tunnelEndsOffAssociation = defineRule({
         readonly association: string;
         readonly placeA: string;
         readonly placeB: string;
-      }) => `${v.tunnel} ends on ${v.device}, but ${v.association} joins ${v.placeA} and ${v.placeB}`,
+      }) => `${v.tunnel} ends on ${v.device}, off ${v.association}`,
     },
   },
   check: (network) => {

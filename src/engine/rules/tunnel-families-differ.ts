@@ -54,12 +54,12 @@ const messages = {
       readonly familyA: number;
       readonly placeB: string;
       readonly familyB: number;
-    }) => `The endpoint at ${v.placeA} has only IPv${v.familyA}, the one at ${v.placeB} only IPv${v.familyB}`,
+    }) => `Only IPv${v.familyA} at ${v.placeA}, only IPv${v.familyB} at ${v.placeB}`,
   },
   asked: {
     words: 'family missing',
     sentence: (v: { readonly tunnel: string; readonly family: number; readonly place: string }) =>
-      `${v.tunnel} is to run over IPv${v.family}, which the endpoint at ${v.place} does not have`,
+      `${v.place} has no IPv${v.family} address for ${v.tunnel}`,
   },
 };
 

@@ -29,7 +29,7 @@ export const tunnelTagModeMismatch = defineRule({
     differ: {
       words: 'tag modes differ',
       sentence: (v: { readonly keeper: string; readonly stripper: string; readonly tunnel: string }) =>
-        `${v.keeper} keeps inner tags on ${v.tunnel}, ${v.stripper} strips and discards them`,
+        `Inner tags kept at ${v.keeper}, discarded at ${v.stripper}`,
     },
   },
   check: (network) => {

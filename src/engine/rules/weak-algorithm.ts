@@ -15,7 +15,6 @@ import { weaknessesOf, type Weakness } from './algorithm-weakness.ts';
 import { defineRule } from './define-rule.ts';
 import { associationPlaces } from './places.ts';
 import { strongEspProposal, strongIkeProposal } from './strong-suite.ts';
-import { listed } from './wording.ts';
 
 type Layer = 'ike' | 'esp';
 const layers = ['ike', 'esp'] as const;
@@ -47,7 +46,7 @@ const algorithmName = ({ part, algorithm }: Weakness): string => {
     case 'prf':
       return prfName(algorithm as NonNullable<IkeProposal['prf']>);
     case 'group':
-      return `key-exchange group ${algorithm} (${keyExchangeGroupNames[Number(algorithm)] ?? 'unnamed'})`;
+      return `group ${algorithm} (${keyExchangeGroupNames[Number(algorithm)] ?? 'unnamed'})`;
     case 'no-integrity':
       return `${encryptionName(algorithm as IkeProposal['encryption'])} without integrity`;
   }
@@ -125,7 +124,7 @@ export const weakAlgorithm = defineRule({
         readonly layer: string;
         readonly algorithm: string;
         readonly places: string;
-      }) => `${v.association} proposes ${v.algorithm} for ${v.layer} at ${v.places}, which must not be used`,
+      }) => `Forbidden ${v.layer} ${v.algorithm} in ${v.association} at ${v.places}`,
     },
     fading: {
       words: 'weak algorithm',
@@ -134,8 +133,7 @@ export const weakAlgorithm = defineRule({
         readonly layer: string;
         readonly algorithm: string;
         readonly places: string;
-      }) =>
-        `${v.association} proposes ${v.algorithm} for ${v.layer} at ${v.places}, which should no longer be used`,
+      }) => `Weak ${v.layer} ${v.algorithm} in ${v.association} at ${v.places}`,
     },
     clear: {
       words: 'not encrypted',
@@ -144,7 +142,7 @@ export const weakAlgorithm = defineRule({
         readonly layer: string;
         readonly algorithm: string;
         readonly places: string;
-      }) => `${v.association} may leave its packets unencrypted: it proposes NULL at ${v.places}`,
+      }) => `${v.association} may run unencrypted: NULL at ${v.places}`,
       why: 'With NULL encryption packets are protected against change but can be read by anyone on the path.',
       seen: 'Frames of the segments can be read in a capture on the transport, although the association is up.',
     },
@@ -165,9 +163,9 @@ export const weakAlgorithm = defineRule({
             association: association.name,
             layer: weakness.layer === 'ike' ? 'IKE' : 'ESP',
             algorithm: algorithmName(weakness),
-            places: listed(
-              ends.filter((end) => these.some((use) => use.end === end)).map((end) => places[end]),
-            ),
+            places: ends.every((end) => these.some((use) => use.end === end))
+              ? 'both ends'
+              : places[these[0]!.end],
           },
           elements: [ref],
           identity: [id, key],

@@ -22,7 +22,7 @@ testRule(associationLivenessOneSided, {
       design: liveness('', 'off'),
       findings: [
         {
-          sentence: 'Only Head office checks that its peer on as-s0-s1 is alive',
+          sentence: 'Only Head office checks that its peer is alive',
           words: 'liveness one-sided',
           severity: 'degrading',
           elements: [`associations/${id}`],

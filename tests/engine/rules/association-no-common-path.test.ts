@@ -31,7 +31,7 @@ testRule(associationNoCommonPath, {
       design: changed(withRing, viaRingAtOneEnd),
       findings: [
         {
-          sentence: 'as-s0-s1 has no path: Head office lands on Coastal access, Gullhaven on Terminal ring',
+          sentence: 'No path: Head office on Coastal access, Gullhaven on Terminal ring',
           words: 'no common path',
           severity: 'blocking',
           elements: ['associations/as-s0-s1', 'devices/fw-s0', 'devices/fw-s1'],
@@ -44,7 +44,7 @@ testRule(associationNoCommonPath, {
       design: changed(pairDesign(), { links: { 'ld-s1-coast': { ipv4: null, ipv6: '2001:db8:9::1' } } }),
       findings: [
         {
-          sentence: 'as-s0-s1 has no path: its ends share no address family on Coastal access',
+          sentence: 'No path: no common address family on Coastal access',
           words: 'no common family',
           fixes: [],
         },
@@ -57,7 +57,7 @@ testRule(associationNoCommonPath, {
       }),
       findings: [
         {
-          sentence: 'as-s0-s1 has no path: Gullhaven has no WAN port on any transport',
+          sentence: 'No path: Gullhaven has no WAN port on any transport',
           words: 'no WAN port',
           fixes: [],
         },
@@ -69,7 +69,7 @@ testRule(associationNoCommonPath, {
       }),
       findings: [
         {
-          sentence: 'as-s0-s1 has no path: at Gullhaven it names only WAN ports of other devices',
+          sentence: 'No path: Gullhaven names only WAN ports of other devices',
           fixes: ['Use Coastal access'],
         },
       ],
@@ -78,7 +78,7 @@ testRule(associationNoCommonPath, {
       design: changed(pairDesign(), { devices: { 'fw-s1': { ports: { wan1: { shut: true } } } } }),
       findings: [
         {
-          sentence: 'as-s0-s1 has no path: at Gullhaven it may use only WAN ports that are shut',
+          sentence: 'No path: every WAN port it may use at Gullhaven is shut',
           words: 'WAN port shut',
           fixes: ['Open wan1'],
         },
@@ -88,8 +88,7 @@ testRule(associationNoCommonPath, {
       design: changed(hubDesign(1, { hub: 'ha-pair' }), { links: { 'ld-s0-coast': { members: '2' } } }),
       findings: [
         {
-          sentence:
-            'as-s0-s1 has no path: no open WAN port of the active member at Head office is plugged into a transport',
+          sentence: 'No path: the active member at Head office has no open WAN port',
           words: 'WAN port silent',
           fixes: ['Plug in both members'],
         },

@@ -18,7 +18,7 @@ testRule(associationNobodyStarts, {
       design: changed(pairDesign(), start('answers', 'answers')),
       findings: [
         {
-          sentence: 'Nobody starts as-s0-s1: Head office and Gullhaven both only answer',
+          sentence: 'Nobody starts: Head office and Gullhaven both only answer',
           words: 'nobody starts',
           severity: 'blocking',
           elements: [`associations/${id}`],
@@ -33,7 +33,7 @@ testRule(associationNobodyStarts, {
       }),
       findings: [
         {
-          sentence: 'Nobody starts as-s0-s1: Head office and Gullhaven both only answer',
+          sentence: 'Nobody starts: Head office and Gullhaven both only answer',
           fixes: ['Let Gullhaven start'],
         },
       ],

@@ -70,7 +70,7 @@ testRule(associationProposalsDiffer, {
           fixes: ['Add 256-bit keys at Head office', 'Add 128-bit keys at Gullhaven'],
         },
         {
-          sentence: 'IKE pseudorandom function and group have nothing in common at Head office and Gullhaven',
+          sentence: 'IKE pseudorandom function and group differ at Head office and Gullhaven',
           fixes: ['Add HMAC-SHA2-512 at Gullhaven', 'Add HMAC-SHA2-256 at Head office'],
         },
       ],
@@ -107,7 +107,7 @@ testRule(associationProposalsDiffer, {
       }),
       findings: [
         {
-          sentence: 'No IKE proposal is whole in common at Head office and Gullhaven, though each part is',
+          sentence: 'No IKE proposal is alike at Head office and Gullhaven',
           fixes: ['Add AES-GCM at Gullhaven', 'Add AES-GCM at Head office'],
         },
       ],

@@ -30,7 +30,7 @@ testRule(associationSelectorsMissLoopbacks, {
       design: changed(pairDesign(), selectorAtHead({ local: '10.99.0.0/24' })),
       findings: [
         {
-          sentence: 'Selectors of as-s0-s1 at Head office leave out 10.255.0.1 to 10.255.0.2',
+          sentence: 'Selectors at Head office leave out 10.255.0.1 to 10.255.0.2',
           words: 'selectors miss endpoints',
           severity: 'blocking',
           elements: [`associations/${id}`, 'tunnels/tn-s0-s1-a'],
@@ -43,7 +43,7 @@ testRule(associationSelectorsMissLoopbacks, {
       design: changed(pairDesign(), selectorAtHead({ udpPort: 500 })),
       findings: [
         {
-          sentence: 'Selectors of as-s0-s1 at Head office leave out 10.255.0.1 to 10.255.0.2',
+          sentence: 'Selectors at Head office leave out 10.255.0.1 to 10.255.0.2',
           fixes: ['Add the endpoints'],
         },
       ],
@@ -54,7 +54,7 @@ testRule(associationSelectorsMissLoopbacks, {
       }),
       findings: [
         {
-          sentence: 'Selectors of as-s0-s1 at Head office and Gullhaven leave out 10.255.0.1 to 10.255.0.77',
+          sentence: 'Selectors at both ends leave out 10.255.0.1 to 10.255.0.77',
           elements: [`associations/${id}`, 'tunnels/tn-s0-s1-a', 'tunnels/tn-s0-s1-b'],
           fixes: ['Add the endpoints'],
         },

@@ -22,7 +22,7 @@ testRule(associationWrongInitiator, {
       design: changed(pairDesign(), roomy, { links: { 'ld-s1-coast': { nat: {} } } }),
       findings: [
         {
-          sentence: 'Gullhaven only answers on as-s0-s1, but is behind NAT that forwards nothing',
+          sentence: 'Gullhaven only answers, but NAT lets nobody in to ask',
           words: 'wrong end starts',
           severity: 'blocking',
           elements: [`associations/${id}`, 'links/ld-s1-coast'],
@@ -35,7 +35,7 @@ testRule(associationWrongInitiator, {
       design: changed(pairDesign(), { links: { 'ld-s1-coast': { dynamic: true } } }),
       findings: [
         {
-          sentence: 'Gullhaven only answers on as-s0-s1, but its address changes',
+          sentence: 'Gullhaven only answers, but its address changes',
           properties: [`associations/${id}: b.start`, 'links/ld-s1-coast: dynamic'],
           fixes: ['Let Gullhaven start'],
         },

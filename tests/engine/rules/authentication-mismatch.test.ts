@@ -20,7 +20,7 @@ testRule(authenticationMismatch, {
       design: changed(pairDesign(), { associations: { [id]: { a: certificate } } }),
       findings: [
         {
-          sentence: 'Head office uses a certificate, Gullhaven the key "ipsec s0 s1"',
+          sentence: 'Certificate at Head office, key "ipsec s0 s1" at Gullhaven',
           words: 'authentication differs',
           severity: 'blocking',
           elements: [`associations/${id}`],
@@ -35,7 +35,7 @@ testRule(authenticationMismatch, {
       }),
       findings: [
         {
-          sentence: 'Head office uses the key "ipsec s0 s1", Gullhaven the key "ipsec s1 s0"',
+          sentence: 'Key "ipsec s0 s1" at Head office, key "ipsec s1 s0" at Gullhaven',
           fixes: ['Same key at Gullhaven', 'Same key at Head office'],
         },
       ],

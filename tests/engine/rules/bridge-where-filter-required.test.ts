@@ -23,8 +23,7 @@ testRule(bridgeWhereFilterRequired, {
       design: changed(pairDesign(), filtered),
       findings: [
         {
-          sentence:
-            'Segment A must be filtered, but is bridged between Head office and Gullhaven through tn-s0-s1-a',
+          sentence: 'Segment A must be filtered, but tn-s0-s1-a bridges it',
           words: 'not filtered',
           severity: 'blocking',
           elements: ['tunnels/tn-s0-s1-a', 'segments/a', 'forwarders/br-s0-a', 'forwarders/br-s1-a'],
@@ -42,8 +41,7 @@ testRule(bridgeWhereFilterRequired, {
       }),
       findings: [
         {
-          sentence:
-            'Segment A must be filtered, but is bridged between Head office and Gullhaven through tn-s0-s1-a',
+          sentence: 'Segment A must be filtered, but tn-s0-s1-a bridges it',
           fixes: ['Filter at Gullhaven'],
         },
       ],
@@ -52,13 +50,11 @@ testRule(bridgeWhereFilterRequired, {
       design: changed(hubDesign(2), filtered),
       findings: [
         {
-          sentence:
-            'Segment A must be filtered, but is bridged between Head office and Gullhaven through tn-s0-s1-a',
+          sentence: 'Segment A must be filtered, but tn-s0-s1-a bridges it',
           fixes: ['Filter at Gullhaven'],
         },
         {
-          sentence:
-            'Segment A must be filtered, but is bridged between Head office and Orrin Point through tn-s0-s2-a',
+          sentence: 'Segment A must be filtered, but tn-s0-s2-a bridges it',
           fixes: ['Filter at Orrin Point'],
         },
       ],

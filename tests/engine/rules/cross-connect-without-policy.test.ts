@@ -22,7 +22,7 @@ testRule(crossConnectWithoutPolicy, {
       design: crossConnect({}),
       findings: [
         {
-          sentence: 'br-110 at Head office has no filter policy, so that nothing passes',
+          sentence: 'br-110 at Head office has no policy: nothing passes',
           words: 'no policy',
           severity: 'blocking',
           elements: ['forwarders/br-s0-a'],

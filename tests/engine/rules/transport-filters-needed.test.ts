@@ -14,7 +14,7 @@ testRule(transportFiltersNeeded, {
       design: changed(pairDesign(), filters('esp', 'multicast')),
       findings: [
         {
-          sentence: 'Coastal access filters ESP (IP protocol 50), which as-s0-s1 needs',
+          sentence: 'Coastal access filters ESP, which as-s0-s1 needs',
           words: 'filtered on path',
           severity: 'blocking',
           elements: ['transports/coast', 'associations/as-s0-s1'],

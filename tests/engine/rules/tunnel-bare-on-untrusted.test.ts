@@ -5,7 +5,7 @@ import { changed, testRule } from '../../support/rule-tester.ts';
 const id = 'tn-s0-s1-a';
 const bare = pairDesign({ join: { protectedBy: false } });
 const finding = {
-  sentence: 'tn-s0-s1-a runs outside IPsec over Coastal access, which is not trusted',
+  sentence: 'tn-s0-s1-a runs outside IPsec over Coastal access',
   words: 'not protected',
   severity: 'blocking',
   elements: [`tunnels/${id}`, 'transports/coast'],

@@ -19,7 +19,7 @@ testRule(tunnelEndsOffAssociation, {
       design: changed(hub, { tunnels: { 'tn-s0-s2-a': { association: 'as-s0-s1' } } }),
       findings: [
         {
-          sentence: 'tn-s0-s2-a ends on fw-s2, but as-s0-s1 joins Head office and Gullhaven',
+          sentence: 'tn-s0-s2-a ends on fw-s2, off as-s0-s1',
           words: 'ends off association',
           severity: 'blocking',
           elements: ['tunnels/tn-s0-s2-a', 'associations/as-s0-s1'],
@@ -33,7 +33,7 @@ testRule(tunnelEndsOffAssociation, {
       design: changed(pairDesign(), { tunnels: { 'tn-s0-s1-a': { b: { endpoint: 'lo-s0' } } } }),
       findings: [
         {
-          sentence: 'tn-s0-s1-a ends on fw-s0, but as-s0-s1 joins Head office and Gullhaven',
+          sentence: 'tn-s0-s1-a ends on fw-s0, off as-s0-s1',
           fixes: ['End it at lo-s1'],
         },
       ],

@@ -23,7 +23,7 @@ testRule(tunnelFamiliesDiffer, {
       }),
       findings: [
         {
-          sentence: 'The endpoint at Head office has only IPv4, the one at Gullhaven only IPv6',
+          sentence: 'Only IPv4 at Head office, only IPv6 at Gullhaven',
           words: 'IPv4 meets IPv6',
           severity: 'blocking',
           elements: [`tunnels/${id}`, 'endpoints/lo-s0', 'endpoints/lo-s1'],
@@ -38,7 +38,7 @@ testRule(tunnelFamiliesDiffer, {
         design: changed(pairDesign({ segments: ['a', 'b'] }), onlyV6),
         findings: [
           {
-            sentence: 'The endpoint at Head office has only IPv4, the one at Gullhaven only IPv6',
+            sentence: 'Only IPv4 at Head office, only IPv6 at Gullhaven',
             elements: [`tunnels/${id}`, 'tunnels/tn-s0-s1-b', 'endpoints/lo-s0', 'endpoints/lo-s1'],
             fixes: ['Give lo-s1 10.255.0.2'],
           },
@@ -48,7 +48,7 @@ testRule(tunnelFamiliesDiffer, {
       design: changed(pairDesign(), { tunnels: { [id]: { family: 6 } } }),
       findings: [
         {
-          sentence: 'tn-s0-s1-a is to run over IPv6, which the endpoint at Head office does not have',
+          sentence: 'Head office has no IPv6 address for tn-s0-s1-a',
           words: 'family missing',
           properties: [`tunnels/${id}: family`, `tunnels/${id}: a.endpoint`],
           fixes: ['Run over IPv4'],

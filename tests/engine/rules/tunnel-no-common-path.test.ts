@@ -19,7 +19,7 @@ testRule(tunnelNoCommonPath, {
       design: changed(bare, { devices: { 'fw-s1': { ports: { wan1: { shut: true } } } } }),
       findings: [
         {
-          sentence: 'tn-s0-s1-a has no path: at Gullhaven it may use only WAN ports that are shut',
+          sentence: 'No path: every WAN port it may use at Gullhaven is shut',
           words: 'WAN port shut',
           severity: 'blocking',
           elements: [`tunnels/${id}`],
@@ -33,7 +33,7 @@ testRule(tunnelNoCommonPath, {
       design: changed(bare, { tunnels: { [id]: { a: { via: { first: { landing: 'ld-s1-coast' } } } } } }),
       findings: [
         {
-          sentence: 'tn-s0-s1-a has no path: at Head office it names only WAN ports of other devices',
+          sentence: 'No path: Head office names only WAN ports of other devices',
           fixes: ['Use Coastal access'],
         },
       ],

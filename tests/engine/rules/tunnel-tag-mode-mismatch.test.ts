@@ -27,7 +27,7 @@ testRule(tunnelTagModeMismatch, {
       design: changed(pairDesign(), trunk, keepAtHead, { segments: { a: { mtu: 1392 } } }),
       findings: [
         {
-          sentence: 'Head office keeps inner tags on tn-s0-s1-a, Gullhaven strips and discards them',
+          sentence: 'Inner tags kept at Head office, discarded at Gullhaven',
           words: 'tag modes differ',
           severity: 'blocking',
           elements: [`tunnels/${id}`],
@@ -43,7 +43,7 @@ testRule(tunnelTagModeMismatch, {
       }),
       findings: [
         {
-          sentence: 'Head office keeps inner tags on tn-s0-s1-a, Gullhaven strips and discards them',
+          sentence: 'Inner tags kept at Head office, discarded at Gullhaven',
           fixes: ['Keep tags at Gullhaven'],
         },
       ],

@@ -33,7 +33,7 @@ testRule(weakAlgorithm, {
       ),
       findings: [
         {
-          sentence: 'as-s0-s1 proposes DES-CBC for ESP at Head office and Gullhaven, which must not be used',
+          sentence: 'Forbidden ESP DES-CBC in as-s0-s1 at both ends',
           words: 'forbidden algorithm',
           severity: 'blocking',
           elements: [`associations/${id}`],
@@ -54,15 +54,13 @@ testRule(weakAlgorithm, {
       ),
       findings: [
         {
-          sentence:
-            'as-s0-s1 proposes 3DES-CBC for ESP at Head office and Gullhaven, which should no longer be used',
+          sentence: 'Weak ESP 3DES-CBC in as-s0-s1 at both ends',
           words: 'weak algorithm',
           severity: 'degrading',
           fixes: ['Replace all that is weak', 'Replace at both ends'],
         },
         {
-          sentence:
-            'as-s0-s1 proposes key-exchange group 5 (1536-bit MODP) for IKE at Head office and Gullhaven, which should no longer be used',
+          sentence: 'Weak IKE group 5 (1536-bit MODP) in as-s0-s1 at both ends',
           fixes: ['Replace all that is weak', 'Replace at both ends'],
         },
       ],
@@ -76,13 +74,11 @@ testRule(weakAlgorithm, {
       ),
       findings: [
         {
-          sentence:
-            'as-s0-s1 proposes HMAC-SHA1-96 for ESP at Head office and Gullhaven, which should no longer be used',
+          sentence: 'Weak ESP HMAC-SHA1-96 in as-s0-s1 at both ends',
           fixes: ['Replace all that is weak', 'Replace at both ends'],
         },
         {
-          sentence:
-            'as-s0-s1 proposes HMAC-SHA1 for IKE at Head office and Gullhaven, which should no longer be used',
+          sentence: 'Weak IKE HMAC-SHA1 in as-s0-s1 at both ends',
           fixes: ['Replace all that is weak', 'Replace at both ends'],
         },
       ],
@@ -91,8 +87,7 @@ testRule(weakAlgorithm, {
       design: changed(pairDesign(), roomy, esp({ encryption: 'aes-cbc' })),
       findings: [
         {
-          sentence:
-            'as-s0-s1 proposes AES-CBC without integrity for ESP at Head office and Gullhaven, which must not be used',
+          sentence: 'Forbidden ESP AES-CBC without integrity in as-s0-s1 at both ends',
           severity: 'blocking',
           properties: [
             `associations/${id}: a.espProposals.first.integrity`,
@@ -110,8 +105,7 @@ testRule(weakAlgorithm, {
       ),
       findings: [
         {
-          sentence:
-            'as-s0-s1 may leave its packets unencrypted: it proposes NULL at Head office and Gullhaven',
+          sentence: 'as-s0-s1 may run unencrypted: NULL at both ends',
           words: 'not encrypted',
           severity: 'degrading',
           fixes: ['Replace at both ends'],
@@ -129,8 +123,7 @@ testRule(weakAlgorithm, {
       ),
       findings: [
         {
-          sentence:
-            'as-s0-s1 proposes key-exchange group 2 (1024-bit MODP) for IKE at Head office and Gullhaven, which should no longer be used',
+          sentence: 'Weak IKE group 2 (1024-bit MODP) in as-s0-s1 at both ends',
           properties: [
             `associations/${id}: a.ikeProposals.older.group`,
             `associations/${id}: b.ikeProposals.older.group`,
