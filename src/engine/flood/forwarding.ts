@@ -51,6 +51,8 @@ export interface Forwarding {
 
 export interface ForwardingOptions {
   readonly blocked?: Blocked;
+  /** Frames cross every tunnel, whatever stands against it: for who decides about tunnels apart. */
+  readonly everyTunnelUp?: true;
   /** Goes on past what stops a frame and names it, as somebody looking for the cause would; gives the VLAN that a site means. */
   readonly pastBarriers?: {
     readonly vlanAt: (site: Id) => number | undefined;
@@ -161,7 +163,7 @@ export const forwardingOf = (network: Network, options: ForwardingOptions = {}):
     const id = network.tunnelIds[element - bundleCount]!;
     const tunnel = entryOf(design.tunnels, id);
     const state = states.get(id)!;
-    if (!state.up && past === undefined) return;
+    if (!state.up && past === undefined && options.everyTunnelUp !== true) return;
     const down: Barrier | undefined = state.up
       ? undefined
       : { code: 'tunnel-down', tunnel: id, reasons: state.reasons };
