@@ -1,7 +1,9 @@
 import { accessPortWithoutStormLimit } from './access-port-without-storm-limit.ts';
 import { associationBothBehindNat } from './association-both-behind-nat.ts';
 import { associationBothDynamic } from './association-both-dynamic.ts';
+import { associationClearWhenDown } from './association-clear-when-down.ts';
 import { associationLivenessOneSided } from './association-liveness-one-sided.ts';
+import { associationModeMismatch } from './association-mode-mismatch.ts';
 import { associationNeitherReachable } from './association-neither-reachable.ts';
 import { associationNoCommonPath } from './association-no-common-path.ts';
 import { associationNobodyStarts } from './association-nobody-starts.ts';
@@ -13,22 +15,37 @@ import { bridgeWhereFilterRequired } from './bridge-where-filter-required.ts';
 import { crossConnectCircuits } from './cross-connect-circuits.ts';
 import { crossConnectWithoutPolicy } from './cross-connect-without-policy.ts';
 import type { Rule } from './define-rule.ts';
+import { dhcpAnsweredTwice } from './dhcp-answered-twice.ts';
+import { dhcpServerAtOneSite } from './dhcp-server-at-one-site.ts';
 import { duplicateName } from './duplicate-name.ts';
 import { endpointAddressDuplicate } from './endpoint-address-duplicate.ts';
 import { endpointInsideSegment } from './endpoint-inside-segment.ts';
 import { endpointOnOneMember } from './endpoint-on-one-member.ts';
+import { forwardSecrecyMismatch } from './forward-secrecy-mismatch.ts';
+import { forwardSecrecyOff } from './forward-secrecy-off.ts';
 import { frameExceedsPath } from './frame-exceeds-path.ts';
+import { gatewayAddressDuplicate } from './gateway-address-duplicate.ts';
+import { gatewayGroupAcrossSites } from './gateway-group-across-sites.ts';
+import { gatewayMtusDiffer } from './gateway-mtus-differ.ts';
 import { hostSingleHomed } from './host-single-homed.ts';
+import { identityFollowsAddress } from './identity-follows-address.ts';
 import { ikeVersionMismatch } from './ike-version-mismatch.ts';
+import { ikeVersionOutdated } from './ike-version-outdated.ts';
 import { isolationMissingLeg } from './isolation-missing-leg.ts';
+import { natKeepaliveTooSlow } from './nat-keepalive-too-slow.ts';
 import { portHoldsTwoCables } from './port-holds-two-cables.ts';
 import { portVlanClaimedTwice } from './port-vlan-claimed-twice.ts';
+import { preSharedKeyReused } from './pre-shared-key-reused.ts';
+import { replayProtectionOff } from './replay-protection-off.ts';
+import { routerAdvertisementsTwice } from './router-advertisements-twice.ts';
+import { segmentCouldBeRouted } from './segment-could-be-routed.ts';
 import { segmentHostsParted } from './segment-hosts-parted.ts';
 import { stormAnyToAnyMesh } from './storm-any-to-any-mesh.ts';
 import { stormCustomerCable } from './storm-customer-cable.ts';
 import { stormLocal } from './storm-local.ts';
 import { switchSingleHomed } from './switch-single-homed.ts';
 import { transportFiltersNeeded } from './transport-filters-needed.ts';
+import { transportModeThroughNat } from './transport-mode-through-nat.ts';
 import { transportMtuUnknown } from './transport-mtu-unknown.ts';
 import { tunnelBareOnUntrusted } from './tunnel-bare-on-untrusted.ts';
 import { tunnelEndsOffAssociation } from './tunnel-ends-off-association.ts';
@@ -48,7 +65,9 @@ export const rules: readonly Rule[] = [
   accessPortWithoutStormLimit,
   associationBothBehindNat,
   associationBothDynamic,
+  associationClearWhenDown,
   associationLivenessOneSided,
+  associationModeMismatch,
   associationNeitherReachable,
   associationNoCommonPath,
   associationNobodyStarts,
@@ -59,22 +78,37 @@ export const rules: readonly Rule[] = [
   bridgeWhereFilterRequired,
   crossConnectCircuits,
   crossConnectWithoutPolicy,
+  dhcpAnsweredTwice,
+  dhcpServerAtOneSite,
   duplicateName,
   endpointAddressDuplicate,
   endpointInsideSegment,
   endpointOnOneMember,
+  forwardSecrecyMismatch,
+  forwardSecrecyOff,
   frameExceedsPath,
+  gatewayAddressDuplicate,
+  gatewayGroupAcrossSites,
+  gatewayMtusDiffer,
   hostSingleHomed,
+  identityFollowsAddress,
   ikeVersionMismatch,
+  ikeVersionOutdated,
   isolationMissingLeg,
+  natKeepaliveTooSlow,
   portHoldsTwoCables,
   portVlanClaimedTwice,
+  preSharedKeyReused,
+  replayProtectionOff,
+  routerAdvertisementsTwice,
+  segmentCouldBeRouted,
   segmentHostsParted,
   stormAnyToAnyMesh,
   stormCustomerCable,
   stormLocal,
   switchSingleHomed,
   transportFiltersNeeded,
+  transportModeThroughNat,
   transportMtuUnknown,
   tunnelBareOnUntrusted,
   tunnelEndsOffAssociation,
