@@ -1,0 +1,67 @@
+import ipaddr from 'ipaddr.js';
+import type { Protocol } from '../model/intent.ts';
+import { tunnelSegments } from '../flood/tunnel-segments.ts';
+import { segmentPathFacts } from './carried-segments.ts';
+import { defineRule } from './define-rule.ts';
+
+/** What routers carry between subnets as well. DHCP crosses them by relay. */
+const routable: readonly Protocol[] = ['ipv4', 'ipv6', 'dhcp'];
+
+const overlaps = (one: string, other: string): boolean => {
+  const [a, aBits] = ipaddr.parseCIDR(one);
+  const [b, bBits] = ipaddr.parseCIDR(other);
+  return a.kind() === b.kind() && a.match([b, Math.min(aBits, bBits)]);
+};
+
+/** Whether every site has subnets and shares none with another. */
+const hasOwnSubnets = (sites: readonly (readonly string[])[]): boolean =>
+  sites.length > 1 &&
+  sites.every(
+    (own, i) =>
+      own.length > 0 &&
+      sites.slice(i + 1).every((others) => !own.some((one) => others.some((other) => overlaps(one, other)))),
+  );
+
+export const segmentCouldBeRouted = defineRule({
+  id: 'segment-could-be-routed',
+  title: 'What could be routed is not stretched',
+  severity: 'advisory',
+  looksAt: segmentPathFacts,
+  why: 'Each site has its own subnets and the segment needs nothing but IP, which routers carry just as well. Stretched, it joins the failure domains of all its sites for nothing in return.',
+  seen: 'Nothing, until a storm or a false address at one site takes down the others.',
+  sources: [{ document: 'RFC 3378', clause: 'section 3' }],
+  messages: {
+    routable: {
+      words: 'could be routed',
+      sentence: (v: { readonly segment: string }) =>
+        `${v.segment} has other subnets at each site and could be routed`,
+    },
+  },
+  check: (network) => {
+    const stretched = new Set([...tunnelSegments(network).values()].flat());
+    return Object.entries(network.design.segments).flatMap(([id, { name, protocols, sites }]) => {
+      if (
+        !stretched.has(id) ||
+        protocols === undefined ||
+        protocols.length === 0 ||
+        !protocols.every((each) => routable.includes(each)) ||
+        !hasOwnSubnets(Object.values(sites).map(({ subnets }) => subnets ?? []))
+      )
+        return [];
+      const ref = { collection: 'segments' as const, id };
+      return [
+        {
+          message: 'routable',
+          values: { segment: name },
+          elements: [ref],
+          properties: [
+            { ref, path: ['protocols'] },
+            ...Object.keys(sites)
+              .sort()
+              .map((site) => ({ ref, path: ['sites', site, 'subnets'] })),
+          ],
+        },
+      ];
+    });
+  },
+});
