@@ -141,7 +141,16 @@ const nodesOf = ({ design, geometry, selected, editable, isLocked }: FlowInput):
   const { sheet } = geometry;
   const whole = { x: 0, y: 0, width: sheet.width, height: sheet.height };
   const nodes: FlowNode[] = [
-    { id: 'sheet', type: 'sheet', ...box(whole), data: { frame: sheet }, zIndex: depth.sheet, ...still },
+    {
+      id: 'sheet',
+      type: 'sheet',
+      ...box(whole),
+      data: { frame: sheet },
+      // The paper is ground: a marquee may start on it, a click on it deselects.
+      style: { pointerEvents: 'none' },
+      zIndex: depth.sheet,
+      ...still,
+    },
   ];
   for (const site of geometry.sites) {
     const ref: ElementRef = { collection: 'sites', id: site.id };

@@ -1,11 +1,11 @@
 import type { NodeChange, NodePositionChange, XYPosition } from '@xyflow/react';
-import type { Point, Rect, RingGeometry, SheetGeometry } from '../drawing/geometry.ts';
+import type { Point, Rect, SheetGeometry } from '../drawing/geometry.ts';
 import type { Design, ElementRef } from '../engine/model/design.ts';
 import type { Side } from '../engine/model/layout.ts';
 import type { MergePatch } from '../engine/model/merge-patch.ts';
 import { applyPatch, joinPatches } from '../engine/model/merge-patch.ts';
 import type { Standing } from '../workspace/operations/move-parts.ts';
-import { dockEndpoint, moveElements, rehome } from '../workspace/operations/move-parts.ts';
+import { moveElements, rehome } from '../workspace/operations/move-parts.ts';
 import type { FlowNode } from './design-to-flow.ts';
 
 const inside = (rect: Rect, at: Point): boolean =>
@@ -46,12 +46,30 @@ export const nearestSide = (plate: Rect, at: XYPosition): Side => {
   return dy < 0 ? 'top' : 'bottom';
 };
 
-const ringOf = (geometry: SheetGeometry, endpoint: string): RingGeometry | undefined =>
-  geometry.rings.find((ring) => ring.endpoint === endpoint);
+const dockReachPx = 70;
+
+/**
+ * The side that a ring docks on when it is let go at `at`; undefined when that is too far from its device, or the side
+ * it is on already.
+ */
+export const dockingSide = (geometry: SheetGeometry, endpoint: string, at: Point): Side | undefined => {
+  const ring = geometry.rings.find((candidate) => candidate.endpoint === endpoint);
+  const plate = geometry.devices.find((device) => device.id === ring?.device)?.rect;
+  if (ring === undefined || plate === undefined) return undefined;
+  const room = {
+    x: plate.x - dockReachPx,
+    y: plate.y - dockReachPx,
+    width: plate.width + 2 * dockReachPx,
+    height: plate.height + 2 * dockReachPx,
+  };
+  if (!inside(room, at)) return undefined;
+  const side = nearestSide(plate, at);
+  return side === ring.side ? undefined : side;
+};
 
 /**
  * What moving nodes to new places means for the design: one patch on its layout. All nodes of a drag move by the same
- * distance, which is read off the first; a ring alone docks on the side of its device that it is held nearest to.
+ * distance, which is read off the first.
  */
 export const movesToPatch = (
   design: Design,
@@ -67,14 +85,6 @@ export const movesToPatch = (
   });
   const first = known[0];
   if (first === undefined) return {};
-  if (first.ref.collection === 'endpoints') {
-    const ring = ringOf(geometry, first.ref.id);
-    const device = geometry.devices.find((candidate) => candidate.id === ring?.device);
-    if (ring === undefined || device === undefined) return {};
-    const side = nearestSide(device.rect, { x: first.to.x + 14, y: first.to.y + 14 });
-    const docked = dockEndpoint(design, first.ref.id, side);
-    return docked.ok && side !== ring.side ? docked.patch : {};
-  }
   const dx = Math.round(first.to.x - first.node.position.x);
   const dy = Math.round(first.to.y - first.node.position.y);
   const operation = moveElements(

@@ -28,13 +28,13 @@ import type { ElementRef } from '../engine/model/design.ts';
 import type { MergePatch } from '../engine/model/merge-patch.ts';
 import { isEmptyPatch } from '../engine/model/merge-patch.ts';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
-import { isLocked } from '../workspace/operations/move-parts.ts';
+import { dockEndpoint, isLocked } from '../workspace/operations/move-parts.ts';
 import { connectEnds, endOf, whyNotConnect, type ConnectEnd } from './connect-ends.ts';
 import { designToFlow, type FlowEdge, type FlowNode } from './design-to-flow.ts';
 import { askToJoin, setFitted, startPlacing, useDesk } from './desk-state.ts';
 import { DrawingContext, type Drawing } from './drawing-context.ts';
 import { edgeTypes } from './edges/part-edges.tsx';
-import { dropToPatch, movesIn, movesToPatch, type MovedNode } from './flow-changes-to-patch.ts';
+import { dockingSide, dropToPatch, movesIn, movesToPatch, type MovedNode } from './flow-changes-to-patch.ts';
 import { useDrawn } from './geometry-context.tsx';
 import { nodeTypes } from './nodes/part-nodes.tsx';
 import { endAt, isJoining, placePart, type TrayPart } from './place-part.ts';
@@ -241,13 +241,24 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
     const [a, b] = endsOf(connection);
     if (a !== undefined && b !== undefined) connect(a, b);
   };
-  const onConnectEnd = (_event: unknown, state: FinalConnectionState): void => {
-    if (state.isValid !== false || state.fromNode === null || state.toNode === null) return;
+  const onConnectEnd = (event: globalThis.MouseEvent | TouchEvent, state: FinalConnectionState): void => {
+    if (state.isValid === true || state.fromNode === null) return;
     const a = endOf(state.fromNode.id, state.fromHandle?.id);
-    const b = endOf(state.toNode.id, state.toHandle?.id);
+    if (a?.kind === 'endpoint' && dockAt(a.id, event)) return;
+    const b = state.toNode === null ? undefined : endOf(state.toNode.id, state.toHandle?.id);
     if (a === undefined || b === undefined || JSON.stringify(a) === JSON.stringify(b)) return;
     const why = whyNotConnect(design, a, b);
     if (why !== undefined) say(why);
+  };
+  /** A ring that is let go beside its own device docks on that side of it. */
+  const dockAt = (endpoint: string, event: globalThis.MouseEvent | TouchEvent): boolean => {
+    const at = 'changedTouches' in event ? event.changedTouches[0] : event;
+    if (at === undefined) return false;
+    const side = dockingSide(settled, endpoint, flow.screenToFlowPosition({ x: at.clientX, y: at.clientY }));
+    if (side === undefined) return false;
+    const done = perform(open, dockEndpoint(design, endpoint, side));
+    if (!done.ok) say(done.why);
+    return true;
   };
 
   // ---- placing from the tray ----------------------------------------------------------------------------------

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { designToFlow, pipHandle, readPipHandle } from '../../src/canvas/design-to-flow.ts';
 import {
+  dockingSide,
   dropToPatch,
   movesIn,
   movesToPatch,
@@ -110,14 +111,15 @@ describe('what moving nodes means for the design', () => {
     ]);
   });
 
-  it('docks a ring on the side it is held nearest to', () => {
-    const device = geometry.devices.find((candidate) => candidate.id === 'fw-s1')!;
+  it('docks a ring on the side of its device that it is let go beside', () => {
+    const plate = geometry.devices.find((candidate) => candidate.id === 'fw-s1')!.rect;
     const ring = geometry.rings.find((candidate) => candidate.endpoint === 'lo-s1')!;
-    const away = ring.side === 'left' ? device.rect.width + 60 : -device.rect.width - 60;
-    const patch = movesToPatch(design, geometry, nodes, [held('endpoints/lo-s1', away, 0)]);
-    expect(patch).toEqual({
-      layout: { endpoints: { 'lo-s1': { side: ring.side === 'left' ? 'right' : 'left' } } },
-    });
+    const middle = plate.y + plate.height / 2;
+    const beside = { left: plate.x - 30, right: plate.x + plate.width + 30 };
+    const [own, other] = ring.side === 'left' ? (['left', 'right'] as const) : (['right', 'left'] as const);
+    expect(dockingSide(geometry, 'lo-s1', { x: beside[other], y: middle })).toBe(other);
+    expect(dockingSide(geometry, 'lo-s1', { x: beside[own], y: middle })).toBeUndefined();
+    expect(dockingSide(geometry, 'lo-s1', { x: plate.x - 300, y: middle })).toBeUndefined();
     expect(nearestSide({ x: 0, y: 0, width: 100, height: 50 }, { x: 50, y: -40 })).toBe('top');
     expect(nearestSide({ x: 0, y: 0, width: 100, height: 50 }, { x: 50, y: 90 })).toBe('bottom');
   });

@@ -65,10 +65,7 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
     async (page) => {
       await signInAs(page, 'reviewer');
       await page.goto('/checks');
-      await page
-        .getByRole('heading', { name: 'Reference of checks' })
-        .first()
-        .waitFor();
+      await page.getByRole('heading', { name: 'Reference of checks' }).first().waitFor();
     },
   ],
   [

@@ -60,6 +60,15 @@ export const placePart = async (page: Page, part: string, share: Spot): Promise<
 /** Waits until the bar says that everything is saved. */
 export const saved = (page: Page): Promise<void> => page.getByText('Saved', { exact: true }).waitFor();
 
+/** Opens the drawer under the sheet unless it stands open. */
+export const openDrawer = async (page: Page): Promise<void> => {
+  const shut = page.getByRole('button', { name: 'Open the drawer' });
+  if ((await shut.count()) === 0) return;
+  await shut.click();
+  // The sheet keeps itself fitted to the room that is left, in a glide of 240 ms.
+  await page.waitForTimeout(500);
+};
+
 /** The rows of the findings list that say something. */
 export const finding = (page: Page, words: RegExp): Locator =>
   page.getByRole('list', { name: 'Findings' }).getByRole('listitem').filter({ hasText: words });

@@ -1,6 +1,16 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { launchBrowser, type TestBrowser } from '../support/browser.ts';
-import { drag, finding, middleOf, newDesign, node, saved, signInAs, storedDesign } from './desk.ts';
+import {
+  drag,
+  finding,
+  middleOf,
+  newDesign,
+  node,
+  openDrawer,
+  saved,
+  signInAs,
+  storedDesign,
+} from './desk.ts';
 
 let browser: TestBrowser;
 beforeAll(async () => {
@@ -15,6 +25,7 @@ const openDemo = async (title: string) => {
   await expect
     .poll(() => page.getByText(/All \d+ checks pass/).count(), { timeout: 15_000 })
     .toBeGreaterThan(0);
+  await openDrawer(page);
   return page;
 };
 

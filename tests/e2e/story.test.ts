@@ -8,6 +8,7 @@ import {
   newDesign,
   node,
   nodes,
+  openDrawer,
   placePart,
   saved,
   signInAs,
@@ -66,6 +67,7 @@ describe('an architect on a real design', () => {
     await dialog.waitFor({ state: 'detached' });
 
     // One end gets a VNI that differs by a digit.
+    await openDrawer(page);
     const inspector = page.getByRole('complementary', { name: 'Inspector' });
     const far = inspector.getByLabel('VNI').last();
     await far.fill('10011');

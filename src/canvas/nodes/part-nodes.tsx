@@ -235,7 +235,7 @@ function Balloons() {
   const balloons = useMemo(() => balloonParts(geometry, facts, look), [geometry, facts, look]);
   return balloons.map((shape) => (
     // The list of findings is the keyboard's way to the same.
-     
+
     <g
       key={shape.key}
       aria-hidden="true"
