@@ -41,7 +41,7 @@ describe('faults drawn into a sound design and mended where they show', () => {
     await dialog.getByLabel('Carries').selectOption({ label: 'A  Ticketing' });
     await dialog.getByRole('button', { name: 'Pull the tunnel' }).click();
 
-    const loop = finding(page, /broadcast/);
+    const loop = finding(page, /loop|broadcast/i);
     await expect.poll(() => loop.count()).toBe(1);
     await page.locator('.chevron').first().waitFor({ state: 'attached' });
     expect(await page.locator('.chevron').count()).toBeGreaterThan(9);
