@@ -30,16 +30,18 @@ export const siteId = (index: number): string => `s${index}`;
 /** A builder that holds `count` sites on one untrusted transport, nothing joined yet. */
 export const sitesOnCoast = (count: number, options: PlanOptions = {}): DesignBuilder => {
   const segments = options.segments ?? ['a'];
-  const builder = designBuilder(`Sites on the coast, ${count}`).transport('coast', {
-    name: 'Coastal access',
-    kind: 'internet',
-    trusted: false,
-    mtu: 1500,
-    latencyUs: 18_000,
-    jitterUs: 3_000,
-    lossPpm: 200,
-    families: [4],
-  });
+  const builder = designBuilder(`Sites on the coast, ${count}`)
+    .meta({ title: `Sites on the coast, ${count}`, example: true })
+    .transport('coast', {
+      name: 'Coastal access',
+      kind: 'internet',
+      trusted: false,
+      mtu: 1500,
+      latencyUs: 18_000,
+      jitterUs: 3_000,
+      lossPpm: 200,
+      families: [4],
+    });
   for (const id of segments)
     builder.segment(id, {
       letter: id.toUpperCase(),

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { indexNetwork } from '#engine/network/index-network.ts';
 import type { Network } from '#engine/network/network.ts';
 import { noContext, type CheckContext } from '#engine/rules/check-context.ts';
-import type { Rule } from '#engine/rules/define-rule.ts';
+import type { Fact, Rule } from '#engine/rules/define-rule.ts';
 import type { Finding, Mark, Severity } from '#engine/rules/finding.ts';
 import { fixesFor } from '#engine/rules/fixes-for.ts';
 import { rules } from '#engine/rules/index.ts';
@@ -131,13 +131,13 @@ const sourcesOfIndex: { readonly [F in Exclude<keyof Network, 'design'>]: readon
   bundleByCable: ['devices', 'links'],
 };
 
-/** The collections that a rule's check reads in a design, itself or through the index. */
-const collectionsRead = (rule: Rule, given: Design, context: CheckContext): readonly Collection[] => {
+/** What a rule's check reads in a design, itself or through the index. */
+const factsRead = (rule: Rule, given: Design, context: CheckContext): readonly Fact[] => {
   const network = indexNetwork(given);
-  const read = new Set<Collection>();
+  const read = new Set<Fact>();
   const design = new Proxy(network.design, {
     get: (target, key) => {
-      if ((collections as readonly PropertyKey[]).includes(key)) read.add(key as Collection);
+      if (key === 'meta' || (collections as readonly PropertyKey[]).includes(key)) read.add(key as Fact);
       return Reflect.get(target, key) as unknown;
     },
   });
@@ -211,7 +211,7 @@ export const testRule = (rule: Rule, cases: RuleCases): void => {
           'the order of keys does not matter',
         ).toEqual(found);
         expect(rule.looksAt, 'looksAt names all that is read').toEqual(
-          expect.arrayContaining([...collectionsRead(rule, fresh(given), context)]),
+          expect.arrayContaining([...factsRead(rule, fresh(given), context)]),
         );
         const fixes = found.map((finding) => expectCure(design, finding, context));
         expect(

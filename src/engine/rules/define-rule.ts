@@ -15,6 +15,8 @@ export interface Message<Values> {
   readonly seen?: string;
 }
 type Messages = { readonly [name: string]: Message<never> };
+/** What a rule may look at: a collection, or what the design says of itself. */
+export type Fact = Collection | 'meta';
 type JsonRecord = { readonly [name: string]: JsonValue };
 
 /** What every fault says about itself beside its message. */
@@ -47,7 +49,7 @@ export interface RuleDefinition<M extends Messages> {
   readonly title: string;
   readonly severity: Severity;
   /** Collections that the check reads, names for its sentences included: untouched ones let an earlier answer stand. */
-  readonly looksAt: readonly [Collection, ...Collection[]];
+  readonly looksAt: readonly [Fact, ...Fact[]];
   /** Why it hurts. */
   readonly why: string;
   /** What will be seen on site when the fault is real. */
@@ -64,7 +66,7 @@ export interface Rule {
   readonly id: string;
   readonly title: string;
   readonly severity: Severity;
-  readonly looksAt: readonly Collection[];
+  readonly looksAt: readonly Fact[];
   readonly why: string;
   readonly seen: string;
   readonly sources: readonly Source[];

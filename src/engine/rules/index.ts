@@ -1,4 +1,6 @@
 import { accessPortWithoutStormLimit } from './access-port-without-storm-limit.ts';
+import { activeActiveSharesAssociation } from './active-active-shares-association.ts';
+import { aggregateEndsApart } from './aggregate-ends-apart.ts';
 import { associationBothBehindNat } from './association-both-behind-nat.ts';
 import { associationBothDynamic } from './association-both-dynamic.ts';
 import { associationClearWhenDown } from './association-clear-when-down.ts';
@@ -9,6 +11,8 @@ import { associationNoCommonPath } from './association-no-common-path.ts';
 import { associationNobodyStarts } from './association-nobody-starts.ts';
 import { associationProposalsDiffer } from './association-proposals-differ.ts';
 import { associationSelectorsMissLoopbacks } from './association-selectors-miss-loopbacks.ts';
+import { associationWithoutLiveness } from './association-without-liveness.ts';
+import { associationWithoutSecondPath } from './association-without-second-path.ts';
 import { associationWrongInitiator } from './association-wrong-initiator.ts';
 import { authenticationMismatch } from './authentication-mismatch.ts';
 import { bridgeWhereFilterRequired } from './bridge-where-filter-required.ts';
@@ -21,28 +25,41 @@ import { duplicateName } from './duplicate-name.ts';
 import { endpointAddressDuplicate } from './endpoint-address-duplicate.ts';
 import { endpointInsideSegment } from './endpoint-inside-segment.ts';
 import { endpointOnOneMember } from './endpoint-on-one-member.ts';
+import { firstHopGroupUsedTwice } from './first-hop-group-used-twice.ts';
 import { forwardSecrecyMismatch } from './forward-secrecy-mismatch.ts';
 import { forwardSecrecyOff } from './forward-secrecy-off.ts';
 import { frameExceedsPath } from './frame-exceeds-path.ts';
 import { gatewayAddressDuplicate } from './gateway-address-duplicate.ts';
 import { gatewayGroupAcrossSites } from './gateway-group-across-sites.ts';
 import { gatewayMtusDiffer } from './gateway-mtus-differ.ts';
+import { gatewayTakesVxlanFromAnyone } from './gateway-takes-vxlan-from-anyone.ts';
+import { hostAddressDuplicate } from './host-address-duplicate.ts';
 import { hostSingleHomed } from './host-single-homed.ts';
 import { identityFollowsAddress } from './identity-follows-address.ts';
 import { ikeVersionMismatch } from './ike-version-mismatch.ts';
 import { ikeVersionOutdated } from './ike-version-outdated.ts';
+import { integrityTruncationDiffers } from './integrity-truncation-differs.ts';
 import { isolationMissingLeg } from './isolation-missing-leg.ts';
+import { landingAddressUnroutable } from './landing-address-unroutable.ts';
+import { landingInsideSegment } from './landing-inside-segment.ts';
+import { landingOnOneMember } from './landing-on-one-member.ts';
+import { livenessShorterThanFailover } from './liveness-shorter-than-failover.ts';
+import { managementInsideSegment } from './management-inside-segment.ts';
 import { natKeepaliveTooSlow } from './nat-keepalive-too-slow.ts';
+import { pairWithoutMemberLink } from './pair-without-member-link.ts';
+import { pairWithoutStateSync } from './pair-without-state-sync.ts';
 import { portHoldsTwoCables } from './port-holds-two-cables.ts';
 import { portVlanClaimedTwice } from './port-vlan-claimed-twice.ts';
 import { preSharedKeyReused } from './pre-shared-key-reused.ts';
 import { replayProtectionOff } from './replay-protection-off.ts';
+import { replayWindowTooSmall } from './replay-window-too-small.ts';
 import { routerAdvertisementsTwice } from './router-advertisements-twice.ts';
 import { segmentCouldBeRouted } from './segment-could-be-routed.ts';
 import { segmentHostsParted } from './segment-hosts-parted.ts';
 import { stormAnyToAnyMesh } from './storm-any-to-any-mesh.ts';
 import { stormCustomerCable } from './storm-customer-cable.ts';
 import { stormLocal } from './storm-local.ts';
+import { subnetInTwoSegments } from './subnet-in-two-segments.ts';
 import { switchSingleHomed } from './switch-single-homed.ts';
 import { transportFiltersNeeded } from './transport-filters-needed.ts';
 import { transportModeThroughNat } from './transport-mode-through-nat.ts';
@@ -59,10 +76,13 @@ import { tunnelVniUnset } from './tunnel-vni-unset.ts';
 import { vlanMissingOnPath } from './vlan-missing-on-path.ts';
 import { vniUsedTwice } from './vni-used-twice.ts';
 import { weakAlgorithm } from './weak-algorithm.ts';
+import { zeroChecksumRefused } from './zero-checksum-refused.ts';
 
 /** Every check, one line each. */
 export const rules: readonly Rule[] = [
   accessPortWithoutStormLimit,
+  activeActiveSharesAssociation,
+  aggregateEndsApart,
   associationBothBehindNat,
   associationBothDynamic,
   associationClearWhenDown,
@@ -73,6 +93,8 @@ export const rules: readonly Rule[] = [
   associationNobodyStarts,
   associationProposalsDiffer,
   associationSelectorsMissLoopbacks,
+  associationWithoutLiveness,
+  associationWithoutSecondPath,
   associationWrongInitiator,
   authenticationMismatch,
   bridgeWhereFilterRequired,
@@ -84,28 +106,41 @@ export const rules: readonly Rule[] = [
   endpointAddressDuplicate,
   endpointInsideSegment,
   endpointOnOneMember,
+  firstHopGroupUsedTwice,
   forwardSecrecyMismatch,
   forwardSecrecyOff,
   frameExceedsPath,
   gatewayAddressDuplicate,
   gatewayGroupAcrossSites,
   gatewayMtusDiffer,
+  gatewayTakesVxlanFromAnyone,
+  hostAddressDuplicate,
   hostSingleHomed,
   identityFollowsAddress,
   ikeVersionMismatch,
   ikeVersionOutdated,
+  integrityTruncationDiffers,
   isolationMissingLeg,
+  landingAddressUnroutable,
+  landingInsideSegment,
+  landingOnOneMember,
+  livenessShorterThanFailover,
+  managementInsideSegment,
   natKeepaliveTooSlow,
+  pairWithoutMemberLink,
+  pairWithoutStateSync,
   portHoldsTwoCables,
   portVlanClaimedTwice,
   preSharedKeyReused,
   replayProtectionOff,
+  replayWindowTooSmall,
   routerAdvertisementsTwice,
   segmentCouldBeRouted,
   segmentHostsParted,
   stormAnyToAnyMesh,
   stormCustomerCable,
   stormLocal,
+  subnetInTwoSegments,
   switchSingleHomed,
   transportFiltersNeeded,
   transportModeThroughNat,
@@ -122,4 +157,5 @@ export const rules: readonly Rule[] = [
   vlanMissingOnPath,
   vniUsedTwice,
   weakAlgorithm,
+  zeroChecksumRefused,
 ];

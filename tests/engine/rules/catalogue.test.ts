@@ -26,7 +26,7 @@ describe('the catalogue of checks', () => {
     expect(rule.sources.length).toBeGreaterThan(0);
     for (const source of rule.sources) expect(sourceText(source).length).toBeGreaterThan(3);
     expect(new Set(rule.looksAt).size).toBe(rule.looksAt.length);
-    for (const collection of rule.looksAt) expect(collections).toContain(collection);
+    for (const collection of rule.looksAt) expect(['meta', ...collections]).toContain(collection);
   });
 
   it('is told whole by the reference, in order of id', () => {
