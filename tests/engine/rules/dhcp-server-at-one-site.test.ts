@@ -22,7 +22,7 @@ testRule(dhcpServerAtOneSite, {
         {
           sentence: 'DHCP of segment A is served at Head office alone',
           words: 'one DHCP server',
-          severity: 'advisory',
+          severity: 'degrading',
           elements: ['forwarders/br-s0-a', 'segments/a'],
           fixes: [],
         },
