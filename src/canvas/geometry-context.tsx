@@ -11,7 +11,7 @@ import { indexNetwork } from '../engine/network/index-network.ts';
 import { useOpenState } from '../workspace/open-design-context.tsx';
 
 interface Drawn {
-  /** The design as the sheet shows it: with what is being dragged where the pointer holds it. */
+  /** The design as the sheet shows it: with what is being dragged, or what a fix would do. */
   readonly shown: Design;
   readonly geometry: SheetGeometry;
   /** The geometry of the committed design. */
@@ -19,6 +19,9 @@ interface Drawn {
   readonly facts: DrawingFacts;
   readonly drag: MergePatch | undefined;
   readonly setDrag: (patch: MergePatch | undefined) => void;
+  /** Shows the design as a patch would make it, until it is taken away again. */
+  readonly preview: MergePatch | undefined;
+  readonly setPreview: (patch: MergePatch | undefined) => void;
 }
 
 const GeometryContext = createContext<Drawn | null>(null);
@@ -27,17 +30,21 @@ const GeometryContext = createContext<Drawn | null>(null);
 export function GeometryProvider({ children }: { readonly children: ReactNode }) {
   const design = useOpenState((state) => state.document);
   const [drag, setDrag] = useState<MergePatch>();
-  const shown = useMemo(() => (drag === undefined ? design : applyPatch(design, drag)), [design, drag]);
+  const [preview, setPreview] = useState<MergePatch>();
+  const over = drag ?? preview;
+  const shown = useMemo(() => (over === undefined ? design : applyPatch(design, over)), [design, over]);
   const settled = useMemo(() => route(design), [design]);
   const geometry = useMemo(
     () => (shown === design ? settled : routeWhileDragging(shown)),
     [shown, design, settled],
   );
-  const network = indexNetwork(design);
-  const facts = useMemo(() => drawingFacts(design, tunnelSegments(network)), [design, network]);
+  // A drag moves things only: what they say stays.
+  const said = drag === undefined ? shown : design;
+  const network = indexNetwork(said);
+  const facts = useMemo(() => drawingFacts(said, tunnelSegments(network)), [said, network]);
   const drawn = useMemo(
-    () => ({ shown, geometry, settled, facts, drag, setDrag }),
-    [shown, geometry, settled, facts, drag],
+    () => ({ shown, geometry, settled, facts, drag, setDrag, preview, setPreview }),
+    [shown, geometry, settled, facts, drag, preview],
   );
   return <GeometryContext value={drawn}>{children}</GeometryContext>;
 }

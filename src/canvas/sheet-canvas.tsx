@@ -100,7 +100,7 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
   const design = useOpenState((state) => state.document);
   const editable = useOpenState((state) => state.editable);
   const selection = useOpenState((state) => state.selection);
-  const { geometry, settled, facts, drag, setDrag, shown } = useDrawn();
+  const { geometry, settled, facts, drag, setDrag, preview, shown } = useDrawn();
   const flow = useReactFlow<FlowNode, FlowEdge>();
   const view = useView();
   const level = useLevel(view.zoom);
@@ -299,7 +299,12 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
 
   useKeptFit(geometry.sheet, view);
 
-  const hint = placing === undefined ? undefined : placingHint(placing, firstEnd !== undefined);
+  const hint =
+    placing !== undefined
+      ? placingHint(placing, firstEnd !== undefined)
+      : preview !== undefined
+        ? 'The sheet as this fix would leave it.'
+        : undefined;
   return (
     <DrawingContext value={drawing}>
       {/* The parts inside take focus and keys themselves; this only catches what passes through. */}

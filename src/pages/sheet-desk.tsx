@@ -28,7 +28,7 @@ import { rules } from '../engine/rules/index.ts';
 import { FindingsDrawer } from '../features/findings/findings-drawer.tsx';
 import { findingItem } from '../features/findings/finding-words.ts';
 import { FindingsList } from '../features/findings/findings-list.tsx';
-import { findingsToDecorations } from '../features/findings/findings-to-decorations.ts';
+import { useFindingDecorations } from '../features/findings/use-finding-decorations.ts';
 import { useFindingFixes } from '../features/findings/use-finding-fixes.ts';
 import { callApi } from '../lib/api-client.ts';
 import { asApiError } from '../lib/api-error.ts';
@@ -147,7 +147,7 @@ function Surface() {
   const title = useOpenState((state) => state.document.meta.title);
   const anySelected = useOpenState((state) => state.selection.length > 0);
   const inspecting = useDesk((state) => state.inspecting);
-  const { settled } = useDrawn();
+  const { settled, preview, setPreview } = useDrawn();
   const view = useView();
   const standing = useMemo(() => standingOf(settled), [settled]);
   const fixes = useFindingFixes();
@@ -157,10 +157,7 @@ function Surface() {
     if (anySelected) setInspecting(true);
   }, [anySelected]);
 
-  const decorations = useMemo(
-    () => findingsToDecorations(findings, selectedKey ?? undefined),
-    [findings, selectedKey],
-  );
+  const decorations = useFindingDecorations(selectedKey, preview);
   const items = useMemo(
     () =>
       findings.map((finding, i) => findingItem(finding, i + 1, document, settled, fixes.get(finding.key))),
@@ -182,6 +179,7 @@ function Surface() {
     (findingKey: string, fixId?: string) => {
       const fix = fixes.get(findingKey)?.find((candidate) => fixId === undefined || candidate.id === fixId);
       if (fix === undefined) return;
+      setPreview(undefined);
       const done = open.commit(fix.label, fix.patch);
       if (done.ok)
         showToast({
@@ -195,7 +193,7 @@ function Surface() {
           text: done.problems.map((problem) => `${problem.path}: ${problem.expected}`).join('; '),
         });
     },
-    [fixes, open],
+    [fixes, open, setPreview],
   );
   // A ghost is drawn for one finding and stands for its first cure.
   const acceptGhost = useCallback((id: string) => apply(id), [apply]);
@@ -226,6 +224,13 @@ function Surface() {
             onSelect={select}
             canFix={editable}
             onApplyFix={apply}
+            onPreviewFix={(asked) =>
+              setPreview(
+                asked === null
+                  ? undefined
+                  : fixes.get(asked.findingKey)?.find((fix) => fix.id === asked.fixId)?.patch,
+              )
+            }
             empty={`All ${rules.length} checks pass. They run again with every change.`}
           />
         </FindingsDrawer>

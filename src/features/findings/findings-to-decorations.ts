@@ -5,9 +5,9 @@ import type { Finding } from '../../engine/rules/finding.ts';
 const collect = <T>(findings: readonly Finding[], pick: (finding: Finding) => T | undefined): readonly T[] =>
   findings.flatMap((finding) => pick(finding) ?? []);
 
-/** Each tunnel is cut once, with the VNIs where they are the reason. */
-const cutsOf = (findings: readonly Finding[]): Decorations['cuts'] => {
-  const cuts = new Map<string, Decorations['cuts'][number]>();
+/** Each tunnel that is down or marked by a finding is cut once, with the VNIs where they are the reason. */
+const cutsOf = (findings: readonly Finding[], down: readonly string[]): Decorations['cuts'] => {
+  const cuts = new Map<string, Decorations['cuts'][number]>(down.map((tunnel) => [tunnel, { tunnel }]));
   for (const { mark } of findings) {
     if (mark?.kind !== 'cut') continue;
     if (mark.vnis !== undefined || !cuts.has(mark.tunnel))
@@ -26,12 +26,17 @@ const portsAtFault = (findings: readonly Finding[]): { readonly [key: string]: r
 
 /**
  * How findings show on the sheet: a balloon for each that is blocking or degrading, and for the selected one whatever its
- * severity; words only beside the blocking; and the faults that can be drawn, drawn. Numbers are those of the list.
+ * severity; words only beside the blocking; and the faults that can be drawn, drawn. `down` are the tunnels that can't come
+ * up, whatever the reason. Numbers are those of the list.
  */
-export const findingsToDecorations = (findings: readonly Finding[], selectedKey?: string): Decorations => ({
+export const findingsToDecorations = (
+  findings: readonly Finding[],
+  down: readonly string[],
+  selectedKey?: string,
+): Decorations => ({
   ...noDecorations,
   tones: portsAtFault(findings),
-  cuts: cutsOf(findings),
+  cuts: cutsOf(findings, down),
   loops: collect(findings, ({ mark }) => (mark?.kind === 'loop' ? { steps: mark.steps } : undefined)),
   ghosts: collect(findings, ({ mark, key }) =>
     mark?.kind === 'ghost' ? { id: key, from: mark.from, to: mark.to, label: mark.label } : undefined,
