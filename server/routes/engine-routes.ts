@@ -1,10 +1,10 @@
 import type { RequestHandler } from 'express';
 import { Router } from 'express';
-import { checkRequestSchema } from '#contract/engine.ts';
+import { checkRequestSchema, traceRequestSchema } from '#contract/engine.ts';
 import { wireRequestSchema } from '#engine/wire/wire-request.ts';
 import type { Throttles } from '../auth/throttles.ts';
 import { jsonBody } from '../middleware/json-body.ts';
-import { checkDesign, wireAnswer } from '../services/engine-answers.ts';
+import { checkDesign, traceAnswer, wireAnswer } from '../services/engine-answers.ts';
 import { limits } from '../services/limits.ts';
 import { mountRoute } from './mount-route.ts';
 import { readBody } from './read-request.ts';
@@ -29,6 +29,11 @@ export function engineRoutes(throttles: Throttles): Router {
 
   mountRoute(router, 'POST /api/engine/wire', ...body, (req, res) => {
     res.json(wireAnswer(readBody(req, wireRequestSchema)));
+  });
+
+  mountRoute(router, 'POST /api/engine/trace', ...body, (req, res) => {
+    const { design, probe } = readBody(req, traceRequestSchema);
+    res.json(traceAnswer(design, probe));
   });
 
   return router;

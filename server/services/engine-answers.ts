@@ -2,9 +2,13 @@ import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import type { z } from 'zod';
 import type { checkAnswerSchema } from '#contract/engine.ts';
+import type { Design } from '#engine/model/design.ts';
 import { parseDesign } from '#engine/model/parse-design.ts';
 import { fixesFor } from '#engine/rules/fixes-for.ts';
 import { countBySeverity, runRules } from '#engine/rules/run-rules.ts';
+import type { Probe } from '#engine/trace/probe.ts';
+import { traceFrame } from '#engine/trace/trace-frame.ts';
+import type { Problem } from '#engine/wire/problem.ts';
 import { computeWire } from '#engine/wire/compute-wire.ts';
 import type { WireRequest } from '#engine/wire/wire-request.ts';
 import { Refusal } from '../errors.ts';
@@ -17,8 +21,8 @@ const manifest = JSON.parse(readFileSync(join(import.meta.dirname, '..', '..', '
 
 const mostProblemsShown = 200;
 
-/** Checks a design that is not stored. The work is bounded by the number of its entries. */
-export function checkDesign(input: unknown, withFixes: boolean): z.infer<typeof checkAnswerSchema> {
+/** A design that is not stored; refuses what is none, and more entries than the work on it may have. */
+function readDesign(input: unknown, most: number, howToHaveMore: string): Design {
   const parsed = parseDesign(input);
   if (!parsed.ok) {
     throw new Refusal('invalid-design', `The design has problems: ${parsed.problems.length}.`, {
@@ -29,37 +33,54 @@ export function checkDesign(input: unknown, withFixes: boolean): z.infer<typeof 
     });
   }
   const entries = countEntries(parsed.value);
-  const most = withFixes ? limits.checkedEntriesWithFixes : limits.checkedEntries;
   if (entries > most) {
     throw new Refusal(
       'too-large',
-      `The design has ${entries} entries; at most ${most} are checked here${withFixes ? ' with fixes, more without' : ''}.`,
+      `The design has ${entries} entries; at most ${most} are checked here${howToHaveMore}.`,
     );
   }
-  const findings = runRules(parsed.value);
+  return parsed.value;
+}
+
+/** Checks a design that is not stored. The work is bounded by the number of its entries. */
+export function checkDesign(input: unknown, withFixes: boolean): z.infer<typeof checkAnswerSchema> {
+  const design = withFixes
+    ? readDesign(input, limits.checkedEntriesWithFixes, ' with fixes, more without')
+    : readDesign(input, limits.checkedEntries, '');
+  const findings = runRules(design);
   return {
     engineVersion: manifest.version,
     counts: countBySeverity(findings),
     findings: findings.map((finding, index) =>
       withFixes && index < limits.findingsWithFixes
-        ? { ...finding, fixes: fixesFor(parsed.value, finding) }
+        ? { ...finding, fixes: fixesFor(design, finding) }
         : { ...finding },
     ),
   };
 }
 
-/** The bytes of a stack of headers, with their working. */
-export function wireAnswer(request: WireRequest): object {
-  const answer = computeWire(request);
-  if (answer.ok) {
-    const { ok: _ok, ...result } = answer;
-    return { engineVersion: manifest.version, ...result };
-  }
-  throw new Refusal('invalid-request', 'These figures do not go together.', {
-    details: answer.problems.map(({ field, value, expected }) => ({
+const refusalOf = (message: string, problems: readonly Problem[]): Refusal =>
+  new Refusal('invalid-request', message, {
+    details: problems.map(({ field, value, expected }) => ({
       path: field,
       value: value === undefined ? 'missing' : (JSON.stringify(value) ?? String(value)),
       expected: `expected ${expected}`,
     })),
   });
+
+/** The bytes of a stack of headers, with their working. */
+export function wireAnswer(request: WireRequest): object {
+  const answer = computeWire(request);
+  if (!answer.ok) throw refusalOf('These figures do not go together.', answer.problems);
+  const { ok: _ok, ...result } = answer;
+  return { engineVersion: manifest.version, ...result };
+}
+
+/** What happens to one frame in a design that is not stored, with the findings that would have told. */
+export function traceAnswer(input: unknown, probe: Probe): object {
+  const design = readDesign(input, limits.checkedEntries, '');
+  const answer = traceFrame(design, probe, { findings: runRules(design) });
+  if (!answer.ok) throw refusalOf('The design does not hold what the probe names.', answer.problems);
+  const { ok: _ok, ...result } = answer;
+  return { engineVersion: manifest.version, ...result };
 }

@@ -1,9 +1,10 @@
 import supertest from 'supertest';
 import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
-import { checkAnswerSchema } from '#contract/engine.ts';
+import { checkAnswerSchema, traceAnswerSchema } from '#contract/engine.ts';
 import { applyPatch } from '#engine/model/merge-patch.ts';
 import type { Design } from '#engine/model/design.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
+import { traceFrame } from '#engine/trace/trace-frame.ts';
 import { computeWire } from '#engine/wire/compute-wire.ts';
 import { wireRequestSchema } from '#engine/wire/wire-request.ts';
 import { allowances } from '../../../server/auth/throttles.ts';
@@ -127,6 +128,45 @@ describe('computing bytes', () => {
   ])('refuses %j and names the field', async (body, path) => {
     const response = await post('/api/engine/wire', body).expect(400);
     expect(response.body).toMatchObject({ code: 'invalid-request', details: [{ path }] });
+  });
+});
+
+describe('following a frame', () => {
+  const probe = {
+    source: { host: 'h-s0-a' },
+    destination: { kind: 'host', host: 'h-s1-a' },
+    packet: { kind: 'ip', version: 'ipv4', packetBytes: 84 },
+  } as const;
+
+  test('answers as the engine does and points at the finding that would have told', async () => {
+    const response = await post('/api/engine/trace', { design: faulty, probe }).expect(200);
+    const { ok, ...expected } = traceFrame(faulty, probe, { findings: runRules(faulty) });
+    expect(ok).toBe(true);
+    const answer = traceAnswerSchema.parse(response.body);
+    expect(response.body).toEqual({
+      engineVersion: answer.engineVersion,
+      ...(JSON.parse(JSON.stringify(expected)) as object),
+    });
+    expect(answer.steps.at(-1)).toMatchObject({
+      verdict: {
+        reason: { code: 'no-such-vni', sent: 10_000, has: 10_210 },
+        explains: [{ rule: 'tunnel-vni-mismatch', key: expect.any(String) as string }],
+      },
+    });
+  });
+
+  test.each([
+    [{ ...probe, source: { host: 'h-nowhere' } }, 'probe.source.host'],
+    [{ ...probe, packet: { ...probe.packet, packetBytes: 19 } }, 'probe.packet.packetBytes'],
+    [{ ...probe, hops: 3 }, 'probe.hops'],
+  ])('refuses %j and names the field', async (wrong, path) => {
+    const response = await post('/api/engine/trace', { design: faulty, probe: wrong }).expect(400);
+    expect(response.body).toMatchObject({ code: 'invalid-request', details: [{ path }] });
+  });
+
+  test('names the problems of what is no design', async () => {
+    const response = await post('/api/engine/trace', { design: {}, probe }).expect(422);
+    expect(response.body).toMatchObject({ code: 'invalid-design' });
   });
 });
 
