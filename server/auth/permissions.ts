@@ -21,6 +21,8 @@ export const routes = {
   'GET /api/health': 'anyone',
   'POST /api/engine/check': 'anyone',
   'POST /api/engine/wire': 'anyone',
+  'POST /api/engine/load': 'anyone',
+  'POST /api/engine/outage': 'anyone',
   'POST /api/engine/trace': 'anyone',
   'GET /api/session': 'anyone',
   'POST /api/session': 'anyone',

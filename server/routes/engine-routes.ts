@@ -1,16 +1,29 @@
 import type { RequestHandler } from 'express';
 import { Router } from 'express';
-import { checkRequestSchema, traceRequestSchema } from '#contract/engine.ts';
+import {
+  checkRequestSchema,
+  loadRequestSchema,
+  outageRequestSchema,
+  traceRequestSchema,
+} from '#contract/engine.ts';
 import { wireRequestSchema } from '#engine/wire/wire-request.ts';
 import type { Throttles } from '../auth/throttles.ts';
 import { jsonBody } from '../middleware/json-body.ts';
-import { checkDesign, traceAnswer, wireAnswer } from '../services/engine-answers.ts';
+import {
+  checkDesign,
+  loadAnswer,
+  outageAnswer,
+  traceAnswer,
+  wireAnswer,
+} from '../services/engine-answers.ts';
 import { limits } from '../services/limits.ts';
 import { mountRoute } from './mount-route.ts';
 import { readBody } from './read-request.ts';
 
 // Working out fixes runs the checks many times over.
 const weightOfFixes = 10;
+// Following each demand or host is more work than a check.
+const weightOfFollowing = 4;
 
 /** The engine for everybody: no sign-in, nothing kept, each address so many requests a minute. */
 export function engineRoutes(throttles: Throttles): Router {
@@ -34,6 +47,18 @@ export function engineRoutes(throttles: Throttles): Router {
   mountRoute(router, 'POST /api/engine/trace', ...body, (req, res) => {
     const { design, probe } = readBody(req, traceRequestSchema);
     res.json(traceAnswer(design, probe));
+  });
+
+  mountRoute(router, 'POST /api/engine/load', ...body, async (req, res) => {
+    const request = readBody(req, loadRequestSchema);
+    await throttles.engineRequest(req.ip ?? '', weightOfFollowing - 1);
+    res.json(loadAnswer(request));
+  });
+
+  mountRoute(router, 'POST /api/engine/outage', ...body, async (req, res) => {
+    const request = readBody(req, outageRequestSchema);
+    await throttles.engineRequest(req.ip ?? '', weightOfFollowing - 1);
+    res.json(outageAnswer(request));
   });
 
   return router;

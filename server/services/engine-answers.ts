@@ -1,9 +1,11 @@
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import type { z } from 'zod';
-import type { checkAnswerSchema } from '#contract/engine.ts';
+import type { checkAnswerSchema, loadRequestSchema, outageRequestSchema } from '#contract/engine.ts';
+import { loadOf } from '#engine/load/load-of.ts';
 import type { Design } from '#engine/model/design.ts';
 import { parseDesign } from '#engine/model/parse-design.ts';
+import { outage } from '#engine/outage/outage.ts';
 import { fixesFor } from '#engine/rules/fixes-for.ts';
 import { countBySeverity, runRules } from '#engine/rules/run-rules.ts';
 import type { Probe } from '#engine/trace/probe.ts';
@@ -83,4 +85,24 @@ export function traceAnswer(input: unknown, probe: Probe): object {
   if (!answer.ok) throw refusalOf('The design does not hold what the probe names.', answer.problems);
   const { ok: _ok, ...result } = answer;
   return { engineVersion: manifest.version, ...result };
+}
+
+/** What a design's demands put on it. */
+export function loadAnswer({ design, ...options }: z.infer<typeof loadRequestSchema>): object {
+  const answer = loadOf(readDesign(design, limits.followedEntries, ' for load'), options);
+  if (!answer.ok) throw refusalOf('The load can’t be worked out.', answer.problems);
+  const { ok: _ok, ...report } = answer;
+  return { engineVersion: manifest.version, ...report };
+}
+
+/** What a design loses with some of its elements. */
+export function outageAnswer({ design, failed, pairs }: z.infer<typeof outageRequestSchema>): object {
+  const read =
+    pairs === true
+      ? readDesign(design, limits.followedEntriesWithPairs, ' for an outage with its pairs, more without')
+      : readDesign(design, limits.followedEntries, ' for an outage');
+  const answer = outage(read, failed, { pairs });
+  if (!answer.ok) throw refusalOf('The design does not hold what is to fail.', answer.problems);
+  const { ok: _ok, ...report } = answer;
+  return { engineVersion: manifest.version, ...report };
 }

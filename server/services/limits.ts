@@ -15,4 +15,8 @@ export const limits = {
   /** Each finding's fixes cost some runs of all checks: fewer entries then, and fixes for the first findings only. */
   checkedEntriesWithFixes: 500,
   findingsWithFixes: 20,
+  /** A design whose load or outage is worked out without being stored: each demand and each host is followed on its own. */
+  followedEntries: 2_000,
+  /** An outage with all pairs of hosts listed: they grow with the square of the hosts. */
+  followedEntriesWithPairs: 500,
 } as const;

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { collections } from '../engine/model/design.ts';
 import { probeSchema } from '../engine/trace/probe.ts';
 
 // No route of the engine needs a sign-in or a token. POST /api/engine/wire is described by the engine's wireRequestSchema.
@@ -27,4 +28,51 @@ export const traceAnswerSchema = z.object({
   deliveries: z.array(z.record(z.string(), z.unknown())),
   storm: z.record(z.string(), z.unknown()).optional(),
   assumptions: z.array(z.record(z.string(), z.unknown())),
+});
+
+const record = z.record(z.string(), z.unknown());
+
+/** POST /api/engine/load: what the design's demands put on it. */
+export const loadRequestSchema = z.strictObject({
+  design: z.unknown(),
+  /** All rates times this. */
+  multiplier: z.number().optional(),
+  /** The window of a TCP flow. */
+  windowBytes: z.number().optional(),
+});
+export const loadAnswerSchema = z.object({
+  engineVersion: z.string(),
+  demands: z.array(record),
+  elements: z.array(record),
+  /** The fullest first. */
+  limits: z.array(record),
+  bottleneck: record.optional(),
+  missing: z.array(record),
+});
+
+/** POST /api/engine/outage: what parts once these elements have failed together. */
+export const outageRequestSchema = z.strictObject({
+  design: z.unknown(),
+  failed: z
+    .array(
+      z.strictObject({
+        collection: z.enum(collections),
+        id: z.string(),
+        port: z.string().optional(),
+        member: z.union([z.literal(1), z.literal(2)], 'expected member 1 or 2').optional(),
+      }),
+    )
+    .min(1, 'expected at least one element')
+    .max(200, 'expected at most 200 elements'),
+  /** Lists the pairs of hosts that are parted, not only how many they are. */
+  pairs: z.boolean().optional(),
+});
+export const outageAnswerSchema = z.object({
+  engineVersion: z.string(),
+  segments: z.array(record),
+  pairCount: z.int(),
+  gone: z.array(record),
+  tunnelsDown: z.array(record),
+  tunnelsMoved: z.array(record),
+  failedOver: z.array(record),
 });

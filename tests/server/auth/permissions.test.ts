@@ -51,6 +51,9 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
   'POST /api/engine/check': (browser) => browser.post('/api/engine/check', { design: {} }),
   'POST /api/engine/wire': (browser) =>
     browser.post('/api/engine/wire', { stack: {}, innerPacketBytes: 1500 }),
+  'POST /api/engine/load': (browser) => browser.post('/api/engine/load', { design: {} }),
+  'POST /api/engine/outage': (browser) =>
+    browser.post('/api/engine/outage', { design: {}, failed: [{ collection: 'sites', id: 's0' }] }),
   'POST /api/engine/trace': (browser) => browser.post('/api/engine/trace', { design: {}, probe: {} }),
   'GET /api/session': (browser) => browser.get('/api/session'),
   'POST /api/session': (browser) =>
@@ -165,6 +168,8 @@ describe('routes that belong to no workspace', () => {
     ['GET /api/health', 200],
     ['POST /api/engine/check', 422],
     ['POST /api/engine/wire', 200],
+    ['POST /api/engine/load', 422],
+    ['POST /api/engine/outage', 422],
     ['POST /api/engine/trace', 400],
     ['GET /api/session', 200],
     ['POST /api/session', 401],

@@ -1,10 +1,17 @@
 import supertest from 'supertest';
 import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
-import { checkAnswerSchema, traceAnswerSchema } from '#contract/engine.ts';
+import {
+  checkAnswerSchema,
+  loadAnswerSchema,
+  outageAnswerSchema,
+  traceAnswerSchema,
+} from '#contract/engine.ts';
 import { applyPatch } from '#engine/model/merge-patch.ts';
 import type { Design } from '#engine/model/design.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
 import { traceFrame } from '#engine/trace/trace-frame.ts';
+import { loadOf } from '#engine/load/load-of.ts';
+import { outage } from '#engine/outage/outage.ts';
 import { computeWire } from '#engine/wire/compute-wire.ts';
 import { wireRequestSchema } from '#engine/wire/wire-request.ts';
 import { allowances } from '../../../server/auth/throttles.ts';
@@ -167,6 +174,61 @@ describe('following a frame', () => {
   test('names the problems of what is no design', async () => {
     const response = await post('/api/engine/trace', { design: {}, probe }).expect(422);
     expect(response.body).toMatchObject({ code: 'invalid-design' });
+  });
+});
+
+describe('following what a design carries and what it loses', () => {
+  const busy = applyPatch(pairDesign(), {
+    demands: {
+      d: {
+        segment: 'a',
+        from: { site: 's0' },
+        to: { site: 's1' },
+        forwardBps: 50_000_000,
+        reverseBps: 5_000_000,
+        mix: [{ packetBytes: 1396, weight: 1 }],
+        flows: 2,
+      },
+    },
+  });
+  const failed = [{ collection: 'tunnels' as const, id: 'tn-s0-s1-a' }];
+  const asSent = (answer: { readonly ok: boolean }): object => {
+    const { ok, ...rest } = answer;
+    expect(ok).toBe(true);
+    return JSON.parse(JSON.stringify(rest)) as object;
+  };
+
+  test('answers the load as the engine does', async () => {
+    const response = await post('/api/engine/load', { design: busy, multiplier: 2 }).expect(200);
+    const { engineVersion, ...report } = response.body as { engineVersion: string };
+    expect(engineVersion).toMatch(/^\d+\.\d+\.\d+$/);
+    expect(report).toEqual(asSent(loadOf(busy, { multiplier: 2 })));
+    expect(loadAnswerSchema.parse(response.body).limits.length).toBeGreaterThan(0);
+  });
+
+  test('answers an outage as the engine does', async () => {
+    const response = await post('/api/engine/outage', { design: busy, failed, pairs: true }).expect(200);
+    const { engineVersion: _version, ...report } = response.body as { engineVersion: string };
+    expect(report).toEqual(asSent(outage(busy, failed, { pairs: true })));
+    expect(outageAnswerSchema.parse(response.body).pairCount).toBe(1);
+  });
+
+  test.each([
+    ['/api/engine/load', { multiplier: -1 }, 'multiplier'],
+    ['/api/engine/load', { windowBytes: 0.5 }, 'windowBytes'],
+    ['/api/engine/outage', { failed: [] }, 'failed'],
+    ['/api/engine/outage', { failed: [{ collection: 'tunnels', id: 'none' }] }, 'failed.0.id'],
+    ['/api/engine/outage', { failed: [{ collection: 'segments', id: 'a' }] }, 'failed.0.collection'],
+  ])('refuses at %s %j and names the field', async (path, more, field) => {
+    const response = await post(path, { design: busy, ...more }).expect(400);
+    expect(response.body).toMatchObject({ code: 'invalid-request', details: [{ path: field }] });
+  });
+
+  test('bounds its work by the number of entries', async () => {
+    const many = withNotes(limits.followedEntriesWithPairs);
+    await post('/api/engine/outage', { design: many, failed, pairs: true }).expect(413);
+    await post('/api/engine/outage', { design: many, failed }).expect(200);
+    await post('/api/engine/load', { design: withNotes(limits.followedEntries) }).expect(413);
   });
 });
 
