@@ -104,6 +104,28 @@ export const band = {
 
 /** Site frame to band edge. */
 export const gutter = 24;
+
+/** How much air `tidy` leaves round things; all of it horizontal. */
+export interface Spacing {
+  /** Site frame to band edge, at least: cuffs stand just outside the band. */
+  readonly gutter: number;
+  /** What a gutter may grow to where the sheet has width to spare. */
+  readonly widestGutter: number;
+  /** Frame of the sheet to what stands next to it. */
+  readonly margin: number;
+  /** In a row: frame to hosts, hosts to switch, switch to pair. */
+  readonly row: { readonly lead: number; readonly hostsToSwitch: number; readonly switchToPair: number };
+}
+/** The usual spacing, and what is tried before a larger sheet is taken. */
+export const spacings: { readonly roomy: Spacing; readonly snug: Spacing } = {
+  roomy: { gutter, widestGutter: gutter, margin: 16, row: { lead: 14, hostsToSwitch: 26, switchToPair: 40 } },
+  snug: {
+    gutter: 13,
+    widestGutter: gutter,
+    margin: 6,
+    row: { lead: 8, hostsToSwitch: 20, switchToPair: 30 },
+  },
+};
 export const site = {
   /** Frame to a plate that has a ring or a host on that side, and to one that has none. */
   toCordedEdge: 122,

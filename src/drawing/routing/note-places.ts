@@ -2,7 +2,7 @@ import type { Design } from '../../engine/model/design.ts';
 import type { Point, Rect, SheetFrame } from '../geometry.ts';
 import { wrapText } from '../text-width.ts';
 import type { Occupied } from './free-places.ts';
-import { bottom, byText, right } from './rects.ts';
+import { bottom, byText, covers, right } from './rects.ts';
 
 const noteSize = 14;
 const lineHeight = 19;
@@ -29,6 +29,28 @@ const freePlace = (sheet: SheetFrame, width: number, height: number, taken: Occu
     for (let x = frame.x + 20; x + width <= right(frame) - 14; x += 24)
       if (!taken.hits({ x: x - 6, y: y - 4, width: width + 12, height: height + 8 })) return { x, y };
   return undefined;
+};
+
+/** The free place for a block that lies nearest to where it is wished; undefined where there is none. */
+const nearestFreePlace = (
+  { frame }: SheetFrame,
+  wished: Point,
+  width: number,
+  height: number,
+  taken: Occupied,
+): Point | undefined => {
+  const isFree = (at: Point): boolean =>
+    !taken.hits({ x: at.x - 6, y: at.y - 4, width: width + 12, height: height + 8 });
+  let best: Point | undefined;
+  let distance = Infinity;
+  for (let y = frame.y + 16; y + height <= bottom(frame) - 10; y += 20)
+    for (let x = frame.x + 20; x + width <= right(frame) - 14; x += 20) {
+      const away = Math.hypot(x - wished.x, y - wished.y);
+      if (away >= distance || !isFree({ x, y })) continue;
+      best = { x, y };
+      distance = away;
+    }
+  return isFree(wished) && covers(frame, { ...wished, width, height }) ? wished : best;
 };
 
 /** Where notes stand: standing ones in one block, numbered by their ids, the others where they were put. */
@@ -80,10 +102,11 @@ export const placeNotes = (
         ? { x: sheet.frame.x + 24, y: sheet.frame.y + 24 }
         : { x: right(target) + 24, y: target.y - height - 16 });
     const box = (at: Point): Rect => ({ x: at.x, y: at.y, width: pinnedWidth, height });
-    let at = { x: wished.x, y: wished.y };
-    if (put === undefined) {
-      for (let step = 0; step < 24 && taken.hits(box(at)); step += 1) at = { x: at.x, y: at.y + 20 };
-    }
+    const at =
+      put === undefined
+        ? (nearestFreePlace(sheet, wished, pinnedWidth, height, taken) ?? wished)
+        : { x: put.x, y: put.y };
+    if (put === undefined && taken.hits(box(at))) crowded.push(id);
     taken.add(box(at));
     notes.push({ id, at, standing: false, rect: box(at) });
   }

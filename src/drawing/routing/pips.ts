@@ -2,7 +2,7 @@ import type { Design } from '../../engine/model/design.ts';
 import type { DeviceKind } from '../../engine/model/devices.ts';
 import type { Side } from '../../engine/model/layout.ts';
 import type { PipGeometry, PipShape, Point, Rect } from '../geometry.ts';
-import { pip, strip } from '../parts/sizes.ts';
+import { firewallChamfer, pip, strip } from '../parts/sizes.ts';
 import type { PortSpot } from './port-sides.ts';
 import { plateRect, spotKey } from './port-sides.ts';
 import { bottom, byText, centre, clamp, isUpright, right } from './rects.ts';
@@ -19,10 +19,31 @@ const shapeOf = (design: Design, spot: PortSpot): PipShape => {
   return port.mode === 'access' || (port.mode === undefined && device.kind === 'host') ? 'round' : 'square';
 };
 
-/** The stretch of a side on which pips may sit: below a name strip, clear of the corners. */
+/** The stretch of a side on which pips may sit: below a name strip, clear of corners and chamfers. */
 const stretch = (kind: DeviceKind, plate: Rect, side: Side): readonly [number, number] => {
-  if (isUpright(side)) return [plate.x + 14, right(plate) - 14];
-  return [plate.y + (kind === 'host' ? 8 : strip.height + 8), bottom(plate) - 8];
+  if (isUpright(side)) return [plate.x + 16, right(plate) - 16];
+  const isCut = kind === 'firewall' || kind === 'ha-pair';
+  return [
+    plate.y + (kind === 'host' ? 8 : strip.height + 8),
+    bottom(plate) - (isCut ? firewallChamfer + pip.size / 2 + 1 : 8),
+  ];
+};
+
+/** Free pips beside cabled ones: after them, else before them, as far apart as there is room for up to a wide step. */
+const besideCabled = (
+  cabled: readonly number[],
+  count: number,
+  [from, to]: readonly [number, number],
+  wide: number,
+): readonly number[] | undefined => {
+  const [first, last] = [cabled[0], cabled.at(-1)];
+  if (first === undefined || last === undefined) return undefined;
+  for (const step of [wide, pip.spacing]) {
+    if (last + count * step <= to) return Array.from({ length: count }, (_, i) => last + (i + 1) * step);
+    if (first - count * step >= from)
+      return Array.from({ length: count }, (_, i) => first - (count - i) * step);
+  }
+  return undefined;
 };
 
 // A host's pip stands fast, a gateway's next, and a switch's follow them, so that as many cables as possible run straight.
@@ -34,6 +55,8 @@ const firmness: { readonly [kind in DeviceKind]: number } = {
   switch: 2,
 };
 
+/** Between free pips on a plate's top or bottom, where there is room. */
+const freeStep = 28;
 const wanInset = { plate: 36, pair: 16 } as const;
 /** Between WAN pips under the second member: the address of the outer cable stands between their cables. */
 const wanStepBelow = 40;
@@ -59,10 +82,14 @@ const wanPlaces = (
       places.set(key, { at: { x, y: edgeOf(plate, spot.side) }, side: spot.side });
       continue;
     }
-    const here = seats.filter((seat) => seat.side === side);
-    const top = Math.min(...here.map((seat) => combSpan(seat).from));
-    const y = Math.min(plate.y + 19, top - 15) - pip.spacing * nth;
-    if (y >= plate.y + 8) places.set(key, { at: { x: edgeOf(plate, side), y }, side });
+    // WAN cables to both sides leave at one height, unless a high comb pushes its own over the top.
+    const topOf = (which: readonly RingSeat[]): number =>
+      Math.min(...which.map((seat) => combSpan(seat).from));
+    const heights = [seats, seats.filter((seat) => seat.side === side)].map(
+      (which) => Math.min(plate.y + 19, topOf(which) - 15) - pip.spacing * nth,
+    );
+    const y = heights.find((height) => height >= plate.y + 8);
+    if (y !== undefined) places.set(key, { at: { x: edgeOf(plate, side), y }, side });
     else places.set(key, { at: { x: corner(wanInset.plate + pip.spacing * nth), y: plate.y }, side: 'top' });
   }
   return places;
@@ -159,14 +186,8 @@ export const placePips = (
         const room = spread(total, middle, range);
         const centred = kind === 'host' ? (upright ? centre(plate).x : centre(plate).y) : middle;
         const positions = spread(cables.length, fast ? centred : mean, range);
-        const ends = positions.length === 0 ? undefined : positions.at(-1)!;
-        const fits = ends === undefined || ends + free.length * pip.spacing <= range[1];
-        const all =
-          free.length === 0
-            ? positions
-            : fits && ends !== undefined
-              ? [...positions, ...free.map((_, i) => ends + (i + 1) * pip.spacing)]
-              : room;
+        const beside = besideCabled(positions, free.length, range, upright ? freeStep : pip.spacing);
+        const all = free.length === 0 ? positions : beside === undefined ? room : [...positions, ...beside];
         [...cables.map(({ spot }) => spot), ...free].forEach((spot, i) => {
           let along = all[i]!;
           while (blocked.some((b) => Math.abs(b - along) < pip.spacing) && along + pip.spacing <= range[1])

@@ -18,7 +18,7 @@ const zones: { readonly [size in SheetSize]: { readonly columns: number; readonl
 };
 
 const titleBlock = { width: 486, height: 114 };
-const legend = { width: 585, height: 114, header: 25, leastRow: 22.25 };
+const legend = { width: 572, height: 114, header: 25, leastRow: 22.25 };
 
 /** Where the frame, the zones, the title block and the legend of a sheet lie; the legend grows with its segments. */
 export const sheetFrame = (size: SheetSize, segments: number): SheetFrame => {

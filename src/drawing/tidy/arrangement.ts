@@ -1,7 +1,8 @@
 import type { Design } from '../../engine/model/design.ts';
 import type { SheetSize } from '../../engine/model/layout.ts';
 import type { Rect, SheetFrame } from '../geometry.ts';
-import { band as bandSizes, bareWidth, gutter, jacketWidth } from '../parts/sizes.ts';
+import { band as bandSizes, bareWidth, jacketWidth } from '../parts/sizes.ts';
+import type { Spacing } from '../parts/sizes.ts';
 import { bandFoot } from '../routing/bands.ts';
 import { bundlesOf } from '../routing/bundles.ts';
 import { bottom, right } from '../routing/rects.ts';
@@ -35,6 +36,7 @@ const widthOfBand = (design: Design, transport: string, widths: BandWidths): num
     design.transports[transport]?.trusted === true ? bandSizes.trustedWidth : bandSizes.width,
   );
 
+/** Frame of the sheet to the columns' first and last site. */
 const edgeRoom = 16;
 const backToBack = 40;
 const leastGap = 16;
@@ -49,10 +51,13 @@ export interface ArrangementOptions {
   readonly facts: SiteGraphFacts;
   readonly size: SheetSize;
   readonly seating: Seating;
+  readonly spacing: Spacing;
   readonly blockOf: (site: string, facing: Level) => SiteBlock;
   readonly widths: BandWidths;
   /** All right columns are moved down by this much, so that runs of both sides don't meet. */
   readonly stagger?: number;
+  /** The first column is moved down by this much, so that a cord of its hub runs straight. */
+  readonly hubDown?: number;
   /** Columns begin at the top of their room instead of in its middle, so that the bands have room for words below. */
   readonly lifted?: boolean;
   /** Answer even when the sheet is too small. */
@@ -61,11 +66,12 @@ export interface ArrangementOptions {
 
 /** Lays columns of sites and the bands between them on one sheet; undefined when they don't fit. */
 export const arrange = (options: ArrangementOptions): Arrangement | undefined => {
-  const { design, facts, size, seating, blockOf, widths } = options;
+  const { design, facts, size, seating, spacing, blockOf, widths } = options;
   const lifted = options.lifted === true;
   const stagger = options.stagger ?? 0;
   /** How far columns left and right of a band are moved down against each other. */
   const down = { left: lifted ? Math.max(0, -stagger) : 0, right: lifted ? Math.max(0, stagger) : stagger };
+  const hubDown = options.hubDown ?? 0;
   const sheet = sheetFrame(size, Object.keys(design.segments).length);
   const limbs = seating.columns.length / 2;
   const [main, ...others] = facts.transports;
@@ -102,24 +108,34 @@ export const arrange = (options: ArrangementOptions): Arrangement | undefined =>
   };
   const columns = seating.columns.map((sites, i) => columnOf(sites, facingOf(i)));
   const further = seating.further.map((sites) => columnOf(sites, 'left'));
-  const gutters = headers.map(({ transport }) => 40 + reachWidth(design, transport, inLeft));
-  const leftGutter = gutter + gutters.reduce((sum, w) => sum + w, 0);
+  /** Room beside the first gutter for what goes round the first limb. */
+  const reach = headers.reduce((sum, { transport }) => sum + 40 + reachWidth(design, transport, inLeft), 0);
 
-  let width = 0;
+  let solid = reach;
+  let gutters = 0;
   columns.forEach((column, i) => {
     const isLeft = i % 2 === 0;
-    width += column.width;
-    if (i > 0 && isLeft && column.width > 0 && columns[i - 1]!.width > 0) width += backToBack;
-    if (isLeft) width += (i === 0 ? leftGutter : gutter) + mainWidth + gutter;
+    solid += column.width;
+    if (i > 0 && isLeft && column.width > 0 && columns[i - 1]!.width > 0) solid += backToBack;
+    if (!isLeft) return;
+    solid += mainWidth;
+    gutters += 2;
   });
   others.forEach((t, i) => {
-    width +=
-      gutter + widthOfBand(design, t, widths) + (further[i]!.width > 0 ? gutter + further[i]!.width : 0);
+    solid += widthOfBand(design, t, widths) + further[i]!.width;
+    gutters += further[i]!.width > 0 ? 2 : 1;
   });
+  const spareWidth = sheet.frame.width - 2 * spacing.margin - solid - gutters * spacing.gutter;
   const all = [...columns, ...further];
   const tooHigh = all.some((column) => column.height > room);
-  const tooWide = width > sheet.frame.width - 2 * edgeRoom;
-  if ((tooHigh || tooWide) && options.force !== true) return undefined;
+  if ((tooHigh || spareWidth < 0) && options.force !== true) return undefined;
+  // Gutters and both margins share what is left.
+  const gutter = Math.min(
+    spacing.widestGutter,
+    spacing.gutter + Math.max(0, Math.floor(spareWidth / (gutters + 2))),
+  );
+  const leftGutter = gutter + reach;
+  const width = solid + gutters * gutter;
 
   const sites = new Map<string, Rect>();
   const stand = (column: Column, x: number, by: number): boolean => {
@@ -142,14 +158,14 @@ export const arrange = (options: ArrangementOptions): Arrangement | undefined =>
     return n === 0 || (start >= top - 0.5 && y - gap <= columnFoot + 0.5);
   };
 
-  let x = Math.round(sheet.frame.x + Math.max(edgeRoom, (sheet.frame.width - width) / 2));
+  let x = Math.round(sheet.frame.x + Math.max(spacing.margin, (sheet.frame.width - width) / 2));
   const mainLimbs: { x: number }[] = [];
   let firstGutter = x;
   let fits = true;
   columns.forEach((column, i) => {
     const isLeft = i % 2 === 0;
     if (i > 0 && isLeft && column.width > 0 && columns[i - 1]!.width > 0) x += backToBack;
-    fits = stand(column, x, isLeft ? down.left : down.right) && fits;
+    fits = stand(column, x, isLeft ? down.left + (i === 0 ? hubDown : 0) : down.right) && fits;
     x += column.width;
     if (!isLeft) return;
     if (i === 0) firstGutter = x;

@@ -65,7 +65,9 @@ export const seatings = (
   const result: Seating[] = [];
 
   if (hub !== undefined) {
-    const spokes = between.length > 0 ? [...between, ...rest] : free.filter((s) => !pairsOnBoth.includes(s));
+    const spokes = free.filter((site) => !pairsOnBoth.includes(site));
+    // Spread over both sides of the band, those on a further transport stay on its side of it.
+    const nearFirst = [...between, ...rest];
     const withHub = around(hub, pairsOnBoth);
     const alone = empty();
     alone[0] = [...withHub];
@@ -78,7 +80,7 @@ export const seatings = (
     const order = [1, 0, ...Array.from({ length: 2 * (limbs - 1) }, (_, i) => i + 2)];
     const taken = order.map((c) => (c === 0 ? withHub.reduce((sum, site) => sum + heightOf(site), 0) : 0));
     const spread = empty();
-    chunks(spokes, order.length, heightOf, room, taken).forEach((chunk, i) => {
+    chunks(nearFirst, order.length, heightOf, room, taken).forEach((chunk, i) => {
       const column = order[i]!;
       spread[column] = column === 0 ? [...around(hub, [...pairsOnBoth, ...chunk])] : [...chunk];
     });

@@ -1,6 +1,6 @@
 import type { Point } from '../geometry.ts';
 import { cuff, ferrule, pair, plateSizes, ring, site as siteSizes, bracket, strip } from '../parts/sizes.ts';
-import type { Size } from '../parts/sizes.ts';
+import type { Size, Spacing } from '../parts/sizes.ts';
 import { plateSize } from '../routing/stands.ts';
 import type { CombNeed, Device, Level, Named, SiteParts } from './site-parts.ts';
 
@@ -126,7 +126,12 @@ const freePorts = (device: Device, cabled: number): number =>
   Math.max(0, Object.keys(device.ports).length - cabled);
 
 /** Hosts, switch and HA pair in a row towards the band. */
-export const rowBlock = (parts: SiteParts, need: CombNeed, facing: Level): SiteBlock => {
+export const rowBlock = (
+  parts: SiteParts,
+  need: CombNeed,
+  facing: Level,
+  { lead, hostsToSwitch, switchToPair }: Spacing['row'],
+): SiteBlock => {
   const [pairId, pairDevice] = parts.gateways[0]!;
   const access = parts.switches[0];
   const pairSize = sizeOfDevice(pairDevice);
@@ -162,10 +167,10 @@ export const rowBlock = (parts: SiteParts, need: CombNeed, facing: Level): SiteB
   );
   const centre = Math.round(above);
   const zone = bracketZone(need, facing);
-  const hostsSpace = parts.hosts.length === 0 ? 0 : hostWidth + 26;
-  const switchSpace = access === undefined ? 0 : switchSize.width + 40;
+  const hostsSpace = parts.hosts.length === 0 ? 0 : hostWidth + hostsToSwitch;
+  const switchSpace = access === undefined ? 0 : switchSize.width + switchToPair;
   const width =
-    (parts.hosts.length === 0 ? siteSizes.toPlainEdge : 14) +
+    (parts.hosts.length === 0 ? siteSizes.toPlainEdge : lead) +
     hostsSpace +
     switchSpace +
     pairSize.width +
@@ -174,7 +179,7 @@ export const rowBlock = (parts: SiteParts, need: CombNeed, facing: Level): SiteB
   const put = (id: string, x: number, y: number, w: number): void => {
     positions.set(id, { x: facing === 'right' ? x : width - x - w, y });
   };
-  let x = parts.hosts.length === 0 ? siteSizes.toPlainEdge : 14;
+  let x = parts.hosts.length === 0 ? siteSizes.toPlainEdge : lead;
   parts.hosts.forEach(([id], i) => {
     const size = hostSizes[i]!;
     const y = centre + (i - (parts.hosts.length - 1) / 2) * hostPitch.row - size.height / 2;

@@ -1,5 +1,6 @@
 import type { Design } from '../../engine/model/design.ts';
 import { bundlesOf } from '../routing/bundles.ts';
+import type { Spacing } from '../parts/sizes.ts';
 import type { SiteBlock } from './site-block.ts';
 import { columnsBlock, mirrored, rowBlock, sizeOfDevice, stackBlock } from './site-block.ts';
 import type { SiteGraphFacts } from './site-graph.ts';
@@ -26,6 +27,7 @@ export const siteBlocks = (
   design: Design,
   facts: SiteGraphFacts,
   siteLayouts: { readonly [site: string]: SiteLayout },
+  spacing: Spacing,
 ): {
   readonly blockOf: (site: string, facing: Level) => SiteBlock;
   readonly collapsed: ReadonlySet<string>;
@@ -59,7 +61,7 @@ export const siteBlocks = (
       const need = needOf(site.gateways[0]![0]);
       // All rings of a pair dock on its one bracket.
       const widest = Math.max(need.ferruleWidth.left, need.ferruleWidth.right);
-      return rowBlock(site, { ...need, ferruleWidth: { left: widest, right: widest } }, facing);
+      return rowBlock(site, { ...need, ferruleWidth: { left: widest, right: widest } }, facing, spacing.row);
     }
     if (given === undefined) return columnsBlock(site, needOf, facing);
     const block: SiteBlock = { positions: new Map(Object.entries(given.positions)), size: given.size };

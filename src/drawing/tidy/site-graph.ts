@@ -19,6 +19,29 @@ export interface SiteGraphFacts {
 
 const hubShare = 0.6;
 
+/** Names as people read them, s2 before s10; ids decide between equal names. */
+const byName =
+  (design: Design) =>
+  (a: string, b: string): number =>
+    (design.sites[a]?.name ?? '').localeCompare(design.sites[b]?.name ?? '', 'en', { numeric: true }) ||
+    byText(a, b);
+
+/** Spokes in the order given, but those that are joined to each other too stand next to one another. */
+const sideBySide = (
+  sites: readonly string[],
+  neighbours: ReadonlyMap<string, ReadonlySet<string>>,
+): readonly string[] => {
+  const left = new Set(sites);
+  const order: string[] = [];
+  const visit = (site: string): void => {
+    if (!left.delete(site)) return;
+    order.push(site);
+    for (const next of sites) if (neighbours.get(site)?.has(next)) visit(next);
+  };
+  for (const site of sites) visit(site);
+  return order;
+};
+
 /** The hub, the order of the other sites, and who is on which transport. */
 export const siteGraphFacts = (design: Design): SiteGraphFacts => {
   const sites = Object.keys(design.sites).sort(byText);
@@ -76,7 +99,8 @@ export const siteGraphFacts = (design: Design): SiteGraphFacts => {
     transports,
     landedOn,
     hub,
-    order: hub === undefined ? walk(others, neighbours) : others,
+    order:
+      hub === undefined ? walk(others, neighbours) : sideBySide([...others].sort(byName(design)), neighbours),
     hasPair: pairs,
   };
 };

@@ -3,7 +3,11 @@ import type { Layout, SheetSize } from '../../engine/model/layout.ts';
 import { sheetSizes } from '../../engine/model/layout.ts';
 import { diffPatch } from '../../engine/model/merge-patch.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
-import { band as bandSizes, lane } from '../parts/sizes.ts';
+import { band as bandSizes, lane, spacings } from '../parts/sizes.ts';
+import type { Spacing } from '../parts/sizes.ts';
+import type { Bundle } from '../routing/bundles.ts';
+import { otherEnd } from '../routing/bundles.ts';
+import type { FurnishedSheet } from '../routing/furnish.ts';
 import { cordsOf, furnish } from '../routing/furnish.ts';
 import { bandNeeds } from '../routing/route-cords.ts';
 import { route, routeSheetOnce } from '../routing/route.ts';
@@ -31,6 +35,7 @@ const staggers = [16, -16, 24, -24, 32, -32, 44, -44, 58, -58];
 interface Tidied {
   readonly layout: Layout;
   readonly arrangement: Arrangement;
+  readonly spacing: Spacing;
   readonly stagger: number;
   readonly routed: RoutedSheet;
 }
@@ -40,28 +45,54 @@ const withLayout = (design: Design, layout: Layout): Design => ({ ...design, lay
 
 /**
  * Lays out the whole sheet and answers the patch on the design that does it: sites in columns along their transports'
- * bands, on the smallest sheet that holds them. The same design gives the same layout, whatever it looked like before;
- * only what a person locked or collapsed stays.
+ * bands, on the smallest sheet that holds them, snug where the usual spacing would take a larger one. The same design
+ * gives the same layout, whatever it looked like before; only what a person locked or collapsed stays.
  */
 export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
   const facts = siteGraphFacts(design);
-  const { blockOf, collapsed } = siteBlocks(design, facts, options.siteLayouts ?? {});
-  const heightOf = (site: string): number => blockOf(site, 'left').size.height + 16;
+  const blocks = new Map(
+    [spacings.roomy, spacings.snug].map((spacing) => [
+      spacing,
+      siteBlocks(design, facts, options.siteLayouts ?? {}, spacing),
+    ]),
+  );
+  const heightOf = (site: string): number =>
+    blocks.get(spacings.roomy)!.blockOf(site, 'left').size.height + 16;
 
   const attempt = (
     size: SheetSize,
+    spacing: Spacing,
     seating: Seating,
     stagger: number,
     force: boolean,
     lifted = false,
   ): Tidied | undefined => {
+    const { blockOf, collapsed } = blocks.get(spacing)!;
     let widths = new Map<string, number>();
     for (let round = 0; ; round += 1) {
-      const arrangement = arrange({ design, facts, size, seating, blockOf, widths, stagger, lifted, force });
-      if (arrangement === undefined) return undefined;
-      const layout = layoutOf(design, arrangement, blockOf, collapsed);
+      const lay = (hubDown: number) => {
+        const arrangement = arrange({
+          design,
+          facts,
+          size,
+          seating,
+          spacing,
+          blockOf,
+          widths,
+          stagger,
+          hubDown,
+          lifted,
+          force,
+        });
+        if (arrangement === undefined) return undefined;
+        const layout = layoutOf(design, arrangement, blockOf, collapsed);
+        return { arrangement, layout, furnished: furnish(withLayout(design, layout)) };
+      };
+      const centred = lay(0);
+      if (centred === undefined) return undefined;
+      const bend = facts.hub === undefined ? 0 : leastBend(facts.hub, centred.furnished);
+      const { arrangement, layout, furnished } = (bend === 0 ? undefined : lay(bend)) ?? centred;
       const laidOut = withLayout(design, layout);
-      const furnished = furnish(laidOut);
       const wider = new Map(widths);
       for (const [key, need] of bandNeeds(
         furnished.ground,
@@ -75,16 +106,21 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
         return laid === undefined || w <= laid.limbs[0]!.width + 0.5;
       });
       if (settled || round === mostWidthRounds - 1)
-        return { layout, arrangement, stagger, routed: routeSheetOnce(laidOut) };
+        return { layout, arrangement, spacing, stagger, routed: routeSheetOnce(laidOut) };
       widths = wider;
     }
   };
 
   /** The best of a seating's arrangements on one sheet: as it comes, or with the right columns moved a little. */
-  const bestOf = (size: SheetSize, seating: Seating, force: boolean): Tidied | undefined => {
-    const plain = attempt(size, seating, 0, force);
+  const bestOf = (
+    size: SheetSize,
+    spacing: Spacing,
+    seating: Seating,
+    force: boolean,
+  ): Tidied | undefined => {
+    const plain = attempt(size, spacing, seating, 0, force);
     if (plain !== undefined && (force || scoreOf(plain.routed).steps === 0)) return plain;
-    const candidates = staggers.flatMap((stagger) => attempt(size, seating, stagger, false) ?? []);
+    const candidates = staggers.flatMap((stagger) => attempt(size, spacing, seating, stagger, false) ?? []);
     if (plain !== undefined) candidates.unshift(plain);
     return candidates.reduce<Tidied | undefined>(
       (best, next) =>
@@ -98,7 +134,7 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
   const withRoomForWords = (tidied: Tidied): Tidied => {
     if (wordless(tidied) === 0) return tidied;
     const { size, seating } = tidied.arrangement;
-    const lifted = attempt(size, seating, tidied.stagger, false, true);
+    const lifted = attempt(size, tidied.spacing, seating, tidied.stagger, false, true);
     const isBetter =
       lifted !== undefined &&
       wordless(lifted) < wordless(tidied) &&
@@ -107,18 +143,43 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
   };
   const find = (): Tidied => {
     for (const size of sheetSizes)
-      for (let limbs = 1; limbs <= mostLimbs; limbs += 1)
-        for (const seating of seatings(facts, limbs, heightOf, roomOn(design, size, limbs))) {
-          const tidied = bestOf(size, seating, false);
-          if (tidied !== undefined) return tidied;
-        }
+      for (const spacing of [spacings.roomy, spacings.snug])
+        for (let limbs = 1; limbs <= mostLimbs; limbs += 1)
+          for (const seating of seatings(facts, limbs, heightOf, roomOn(design, size, limbs))) {
+            const tidied = bestOf(size, spacing, seating, false);
+            // Snug never costs clearances: where it does, the next sheet is better.
+            if (tidied !== undefined && (spacing === spacings.roomy || scoreOf(tidied.routed).steps === 0))
+              return tidied;
+          }
     const last = sheetSizes.at(-1)!;
     const seating = seatings(facts, mostLimbs, heightOf, roomOn(design, last, mostLimbs)).at(-1)!;
-    return bestOf(last, seating, true)!;
+    return bestOf(last, spacings.snug, seating, true)!;
   };
   const best = find();
   const layout = refine(design, withRoomForWords(best).layout);
   return diffPatch({ layout: design.layout }, { layout });
+};
+
+/** Cords that bend by more are better left to turn properly. */
+const mostLevelled = 60;
+
+/** How far the hub has to move down for that cord of it to run straight which bends least; 0 where none comes near. */
+const leastBend = (hub: string, { bundles, rings, stands }: FurnishedSheet): number => {
+  const mouthAt = (bundle: Bundle, end: 'a' | 'b'): number =>
+    rings
+      .get(bundle[end].endpoint)!
+      .groups.find(
+        (group) => group.jacket === bundle.id && group.end === end && (group.part ?? 0) === bundle.part,
+      )!.mouth.y;
+  const bends = bundles.flatMap((bundle) => {
+    const atHub = (['a', 'b'] as const).find((end) => stands.get(bundle[end].device)!.device.site === hub);
+    if (atHub === undefined) return [];
+    const far = otherEnd(atHub);
+    const faces = rings.get(bundle[atHub].endpoint)!.side !== rings.get(bundle[far].endpoint)!.side;
+    return faces ? [mouthAt(bundle, far) - mouthAt(bundle, atHub)] : [];
+  });
+  const least = bends.reduce((best, bend) => (Math.abs(bend) < Math.abs(best) ? bend : best), Infinity);
+  return Math.abs(least) <= mostLevelled ? least : 0;
 };
 
 /** Height that a column may take on a sheet, to fill columns evenly. */

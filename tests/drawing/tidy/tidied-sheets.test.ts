@@ -23,6 +23,7 @@ import {
   touchingPaths,
   twistedTails,
 } from '../routing/sheet-checks.ts';
+import { terminalsStretch } from '../../../seeds/demo-designs/terminals-stretch.ts';
 import { ferriesDesign } from './ferries.ts';
 
 const two = { segments: ['a', 'b'] } as const;
@@ -44,6 +45,7 @@ const designs: { readonly [name: string]: () => Design } = {
   'a mesh of 4': () => meshDesign(4, two),
   'a mesh of 4 with an HA pair': () => meshDesign(4, { segments: ['a'], hub: 'ha-pair' }),
   'two transports': () => ferriesDesign(),
+  'the demo with its notes': () => terminalsStretch('Terminals stretch', 'SMF-L2-004'),
   'two transports with the hub on both': () => ferriesDesign({ hubOnBoth: true }),
 };
 
@@ -97,7 +99,7 @@ describe.each(Object.entries(designs))('%s, tidied', (name, make) => {
     expect(route(reversed(design))).toEqual(geometry);
   });
   it('stays as it is when tidied again', () => expect(tidy(design)).toEqual({}));
-  if (hubs.includes(name))
+  if (hubs.includes(name) || name === 'two transports' || name.startsWith('the demo'))
     it('has no crossing, being a hub', () =>
       expect(geometry.jackets.flatMap((j) => j.crossings)).toEqual([]));
 });
@@ -127,8 +129,30 @@ it('takes the smallest sheet that holds the design', () => {
   expect(sizeOf(pairDesign(two))).toBe('A3');
   expect(sizeOf(hubDesign(3, { ...two, hub: 'ha-pair' }))).toBe('A3');
   expect(sizeOf(meshDesign(4, two))).toBe('A3');
+  expect(sizeOf(ferriesDesign())).toBe('A3');
+  expect(sizeOf(terminalsStretch('Terminals stretch', 'SMF-L2-004'))).toBe('A3');
   expect(sizeOf(chainDesign(5, two))).toBe('A2');
   expect(sizeOf(hubDesign(8, { ...two, hub: 'ha-pair' }))).toBe('A1');
+});
+
+describe('spokes of a hub stand', () => {
+  const order = (design: Design): readonly string[] => {
+    const { layout } = tidied(design);
+    return Object.keys(design.sites)
+      .filter((id) => layout.sites![id]!.x > layout.transports!['coast']!.limbs[0]!.x)
+      .sort((a, b) => layout.sites![a]!.y - layout.sites![b]!.y);
+  };
+  it('in the order in which their names are read', () => {
+    const renamed = applyPatch(hubDesign(3, { segments: ['a'] }), {
+      sites: { s1: { name: 'Pier 10' }, s2: { name: 'Pier 2' }, s3: { name: 'Marl' } },
+    });
+    expect(order(renamed)).toEqual(['s3', 's2', 's1']);
+  });
+  it('next to each other where a second transport joins them', () => {
+    expect(order(ferriesDesign())).toEqual(['gul', 'orr', 'ske']);
+    const renamed = applyPatch(ferriesDesign(), { sites: { orr: { name: 'Abbot Point' } } });
+    expect(order(renamed)).toEqual(['orr', 'ske', 'gul']);
+  });
 });
 
 it('leaves locked devices and sites where they are', () => {
