@@ -27,6 +27,19 @@ export default defineConfig({
       {
         extends: true,
         test: {
+          name: 'kernel',
+          environment: 'node',
+          include: ['tests/kernel/**/*.test.ts'],
+          globalSetup: ['tests/kernel/say-what-lacks.ts'],
+          // A storm takes the whole machine for a moment.
+          fileParallelism: false,
+          testTimeout: 60_000,
+          hookTimeout: 60_000,
+        },
+      },
+      {
+        extends: true,
+        test: {
           name: 'client',
           environment: 'jsdom',
           include: ['tests/{app,canvas,components,features,lib,pages,workspace}/**/*.test.{ts,tsx}'],

@@ -1,4 +1,4 @@
-import { existsSync, mkdirSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdirSync, symlinkSync, writeFileSync } from 'node:fs';
 import { dirname } from 'node:path';
 import { setupLog } from './folders.mjs';
 import { lastLines, runCommand } from './run-command.mjs';
@@ -18,6 +18,25 @@ export const postgresPackage = {
     if (existsSync(settings)) return;
     mkdirSync(dirname(settings), { recursive: true });
     writeFileSync(settings, 'create_main_cluster = false\n');
+  },
+};
+
+/** What raises network namespaces and looks into them. */
+export const namespacePackages = {
+  name: 'iproute2 python3',
+  purpose: 'what the comparison with the kernel needs',
+  alternative: '',
+  beforeInstall() {},
+};
+
+/** An IKE daemon that carries ESP by itself, kept from being started for this machine: the tests start their own. */
+export const ipsecPackages = {
+  name: 'charon-systemd strongswan-swanctl libcharon-extra-plugins libstrongswan-standard-plugins libstrongswan-extra-plugins',
+  purpose: 'IPsec in user space',
+  alternative: '',
+  beforeInstall() {
+    const unit = '/etc/systemd/system/strongswan.service';
+    if (existsSync('/run/systemd/system') && !existsSync(unit)) symlinkSync('/dev/null', unit);
   },
 };
 

@@ -4,6 +4,7 @@ import { join } from 'node:path';
 import { ensureChromium } from './chromium.mjs';
 import { ensureDependencies } from './dependencies.mjs';
 import { ensureWritableFolder, projectFolder, stateFolder } from './folders.mjs';
+import { ensureKernelPrograms } from './kernel-programs.mjs';
 import { acquireCluster } from './postgres-cluster.mjs';
 import { withoutPostgresVariables } from './postgres-programs.mjs';
 import { withSetupLock } from './setup-lock.mjs';
@@ -44,7 +45,7 @@ export async function runTests(lifetime, args) {
       counts.push(count);
       const note = count.note === undefined ? '' : `: ${count.note}`;
       const seconds = ((Date.now() - startedAt) / 1000).toFixed(1);
-      say(`── ${step.name}: ${count.passed} passed, ${count.failed} failed in ${seconds} s${note}`);
+      say(`── ${step.name}: ${closingLine([count])} in ${seconds} s${note}`);
     }
   } catch (error) {
     if (lifetime.signal.aborted) throw error;
@@ -71,11 +72,12 @@ async function runStep(lifetime, step, rest) {
   const { signal } = lifetime;
   if (step.needsDatabase) await holdDatabase(lifetime);
   if (step.needsBrowser) await withSetupLock(say, () => ensureChromium({ say, signal }));
+  if (step.needsKernel) await withSetupLock(say, () => ensureKernelPrograms({ say, signal }));
   if (step.vitest === null) return runChecks(step.checks, signal);
   const report = join(ensureWritableFolder(join(stateFolder, 'test')), `${step.name}.json`);
   rmSync(report, { force: true });
   const exitCode = await runNode(vitestCommand(report, step.vitest, rest), signal);
-  return countVitestReport(readReport(report), exitCode);
+  return countVitestReport(readReport(report), exitCode, { maySkip: step.needsKernel });
 }
 
 /**

@@ -8,6 +8,7 @@ import { projectFolder } from './folders.mjs';
  * @property {readonly string[] | null} vitest arguments that choose the step's tests; null for a step of checks
  * @property {boolean} needsDatabase
  * @property {boolean} needsBrowser
+ * @property {boolean} needsKernel tests that skip themselves where this machine's kernel or user allows no comparison
  */
 
 /**
@@ -16,17 +17,17 @@ import { projectFolder } from './folders.mjs';
  * @returns {TestStep}
  */
 function checks(name, checks) {
-  return { name, checks, vitest: null, needsDatabase: false, needsBrowser: false };
+  return { name, checks, vitest: null, needsDatabase: false, needsBrowser: false, needsKernel: false };
 }
 
 /**
  * @param {string} name
  * @param {readonly string[]} vitest
- * @param {{ needsDatabase?: boolean, needsBrowser?: boolean }} [needs]
+ * @param {{ needsDatabase?: boolean, needsBrowser?: boolean, needsKernel?: boolean }} [needs]
  * @returns {TestStep}
  */
-function tests(name, vitest, { needsDatabase = false, needsBrowser = false } = {}) {
-  return { name, checks: [], vitest, needsDatabase, needsBrowser };
+function tests(name, vitest, { needsDatabase = false, needsBrowser = false, needsKernel = false } = {}) {
+  return { name, checks: [], vitest, needsDatabase, needsBrowser, needsKernel };
 }
 
 const typescript = join('node_modules', 'typescript', 'bin', 'tsc');
@@ -44,6 +45,7 @@ export const testSteps = [
   ]),
   tests('layout', ['--project=engine', 'tests/layout/']),
   tests('engine', ['--project=engine', '--exclude=tests/layout/**']),
+  tests('kernel', ['--project=kernel'], { needsKernel: true }),
   tests('server', ['--project=server'], { needsDatabase: true }),
   tests('client', ['--project=client']),
   tests('e2e', ['--project=e2e'], { needsDatabase: true, needsBrowser: true }),

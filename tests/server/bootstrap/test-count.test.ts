@@ -11,6 +11,7 @@ function report(...files: (readonly string[] | 'broken')[]) {
   return {
     numPassedTests: all.filter((status) => status === 'passed').length,
     numFailedTests: all.filter((status) => status === 'failed').length,
+    numPendingTests: all.filter((status) => status === 'skipped').length,
     testResults: results,
   };
 }
@@ -40,6 +41,18 @@ describe('counting a run', () => {
     expect(count.note).toBeDefined();
   });
 
+  test('lets a run that may do so skip its tests, and counts them as skipped', () => {
+    const skipped = report(['skipped', 'skipped'], ['passed']);
+    expect(countVitestReport(skipped, 0, { maySkip: true })).toEqual({ passed: 1, failed: 0, skipped: 2 });
+    expect(countVitestReport(report(['skipped']), 0, { maySkip: true })).toEqual({
+      passed: 0,
+      failed: 0,
+      skipped: 1,
+    });
+    expect(countVitestReport(report(['skipped', 'failed']), 1, { maySkip: true }).failed).toBe(1);
+    expect(countVitestReport(report(), 0, { maySkip: true }).failed).toBe(1);
+  });
+
   test('closes with the sum of all steps', () => {
     expect(
       closingLine([
@@ -48,6 +61,12 @@ describe('counting a run', () => {
       ]),
     ).toBe('21 passed, 2 failed');
     expect(closingLine([])).toBe('0 passed, 0 failed');
+    expect(
+      closingLine([
+        { passed: 1, failed: 0 },
+        { passed: 0, failed: 0, skipped: 3 },
+      ]),
+    ).toBe('1 passed, 0 failed, 3 skipped');
   });
 });
 
@@ -75,7 +94,7 @@ describe('the arguments of npm test', () => {
     expect(chooseSteps(['enigne'])).toEqual({
       ok: false,
       problem:
-        "'enigne' is not a step of npm test; name one or more of types, lint, format, layout, engine, server, client, e2e.",
+        "'enigne' is not a step of npm test; name one or more of types, lint, format, layout, engine, kernel, server, client, e2e.",
     });
   });
 });
