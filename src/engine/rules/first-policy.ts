@@ -1,11 +1,20 @@
 import type { MergePatch } from '../model/merge-patch.ts';
+import type { Protocol } from '../model/intent.ts';
 import { firstRanks } from '../model/rank.ts';
 import type { DesignFacts } from '../network/network.ts';
+import { passesProtocol, protocolFrames, type PolicyRule } from './protocol-frames.ts';
 
 type Rule = { readonly [field: string]: string | number | boolean | readonly string[] };
 
 // RFC 2328 appendix A.1, RFC 7761 section 4.9, RFC 9568 section 5.1: these speak to link-local groups.
-const multicastSpeakers = ['multicast', 'igmp', 'ospf', 'pim', 'vrrp'];
+const multicastSpeakers: readonly Protocol[] = ['multicast', 'igmp', 'ospf', 'pim', 'vrrp'];
+
+const ranked = (rules: { readonly [id: string]: Rule }): { readonly [id: string]: PolicyRule } => {
+  const ranks = firstRanks(Object.keys(rules).length);
+  return Object.fromEntries(
+    Object.entries(rules).map(([id, rule], i) => [id, { rank: ranks[i]!, ...rule } as unknown as PolicyRule]),
+  );
+};
 
 /**
  * A policy to begin with: address resolution, IP between the segments' own subnets, multicast where a segment needs it,
@@ -16,7 +25,7 @@ export const firstPolicy = (design: DesignFacts, segments: readonly string[]): M
   const subnets = [
     ...new Set(entries.flatMap(({ sites }) => Object.values(sites).flatMap((site) => site.subnets ?? []))),
   ].sort();
-  const protocols = new Set<string>(entries.flatMap((segment) => segment.protocols ?? []));
+  const protocols = new Set<Protocol>(entries.flatMap((segment) => segment.protocols ?? []));
   const within = (isV6: boolean): Rule => {
     const own = subnets.filter((subnet) => subnet.includes(':') === isV6);
     return own.length === 0 ? {} : { sources: own, destinations: own };
@@ -53,8 +62,16 @@ export const firstPolicy = (design: DesignFacts, segments: readonly string[]): M
     ...(multicastSpeakers.some((protocol) => protocols.has(protocol))
       ? { multicast: { name: 'Multicast', action: 'permit', direction: 'both', frames: 'multicast' } }
       : {}),
-    rest: { name: 'Everything else', action: 'deny', direction: 'both', frames: 'any', log: true },
   };
-  const ranks = firstRanks(Object.keys(rules).length);
-  return Object.fromEntries(Object.entries(rules).map(([id, rule], i) => [id, { rank: ranks[i]!, ...rule }]));
+  const more = [...protocols].sort().flatMap((protocol): (readonly [string, Rule])[] => {
+    const { name, permit } = protocolFrames[protocol];
+    return permit === undefined || passesProtocol(ranked(rules), protocol)
+      ? []
+      : [[protocol, { name, action: 'permit', direction: 'both', ...permit }]];
+  });
+  return ranked({
+    ...rules,
+    ...Object.fromEntries(more),
+    rest: { name: 'Everything else', action: 'deny', direction: 'both', frames: 'any', log: true },
+  }) as unknown as MergePatch;
 };

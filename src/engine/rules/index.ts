@@ -16,6 +16,7 @@ import { associationWithoutSecondPath } from './association-without-second-path.
 import { associationWrongInitiator } from './association-wrong-initiator.ts';
 import { authenticationMismatch } from './authentication-mismatch.ts';
 import { bridgeWhereFilterRequired } from './bridge-where-filter-required.ts';
+import { clockOverJitter } from './clock-over-jitter.ts';
 import { crossConnectCircuits } from './cross-connect-circuits.ts';
 import { crossConnectWithoutPolicy } from './cross-connect-without-policy.ts';
 import type { Rule } from './define-rule.ts';
@@ -45,17 +46,26 @@ import { landingInsideSegment } from './landing-inside-segment.ts';
 import { landingOnOneMember } from './landing-on-one-member.ts';
 import { livenessShorterThanFailover } from './liveness-shorter-than-failover.ts';
 import { managementInsideSegment } from './management-inside-segment.ts';
+import { multicastDroppedOnPath } from './multicast-dropped-on-path.ts';
 import { natKeepaliveTooSlow } from './nat-keepalive-too-slow.ts';
 import { pairWithoutMemberLink } from './pair-without-member-link.ts';
 import { pairWithoutStateSync } from './pair-without-state-sync.ts';
+import { policyDropsAddressResolution } from './policy-drops-address-resolution.ts';
+import { policyDropsProtocol } from './policy-drops-protocol.ts';
+import { policyOneDirection } from './policy-one-direction.ts';
+import { policyWithoutLoggedDenial } from './policy-without-logged-denial.ts';
 import { portHoldsTwoCables } from './port-holds-two-cables.ts';
+import { portRoutedAndBridged } from './port-routed-and-bridged.ts';
 import { portVlanClaimedTwice } from './port-vlan-claimed-twice.ts';
 import { preSharedKeyReused } from './pre-shared-key-reused.ts';
 import { replayProtectionOff } from './replay-protection-off.ts';
 import { replayWindowTooSmall } from './replay-window-too-small.ts';
+import { reservedGroupNotPassed } from './reserved-group-not-passed.ts';
 import { routerAdvertisementsTwice } from './router-advertisements-twice.ts';
 import { segmentCouldBeRouted } from './segment-could-be-routed.ts';
 import { segmentHostsParted } from './segment-hosts-parted.ts';
+import { segmentsMerged } from './segments-merged.ts';
+import { snoopingWithoutQuerier } from './snooping-without-querier.ts';
 import { stormAnyToAnyMesh } from './storm-any-to-any-mesh.ts';
 import { stormCustomerCable } from './storm-customer-cable.ts';
 import { stormLocal } from './storm-local.ts';
@@ -98,6 +108,7 @@ export const rules: readonly Rule[] = [
   associationWrongInitiator,
   authenticationMismatch,
   bridgeWhereFilterRequired,
+  clockOverJitter,
   crossConnectCircuits,
   crossConnectWithoutPolicy,
   dhcpAnsweredTwice,
@@ -126,17 +137,26 @@ export const rules: readonly Rule[] = [
   landingOnOneMember,
   livenessShorterThanFailover,
   managementInsideSegment,
+  multicastDroppedOnPath,
   natKeepaliveTooSlow,
   pairWithoutMemberLink,
   pairWithoutStateSync,
+  policyDropsAddressResolution,
+  policyDropsProtocol,
+  policyOneDirection,
+  policyWithoutLoggedDenial,
   portHoldsTwoCables,
+  portRoutedAndBridged,
   portVlanClaimedTwice,
   preSharedKeyReused,
   replayProtectionOff,
   replayWindowTooSmall,
+  reservedGroupNotPassed,
   routerAdvertisementsTwice,
   segmentCouldBeRouted,
   segmentHostsParted,
+  segmentsMerged,
+  snoopingWithoutQuerier,
   stormAnyToAnyMesh,
   stormCustomerCable,
   stormLocal,
