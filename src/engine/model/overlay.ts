@@ -112,6 +112,8 @@ export const associationEndSchema = z.strictObject({
   mode: z.enum(['tunnel', 'transport']).optional(),
   outerDf: z.enum(['copy', 'set', 'clear']).optional(),
   natKeepaliveSeconds: secondsSchema.optional(),
+  /** Whether long IKE messages are cut by IKE itself, and not by IP. */
+  ikeFragmentation: z.boolean().optional(),
   /** What becomes of the tunnels' packets while the association is down. */
   whenDown: z.enum(['drop', 'clear']).optional(),
 });
@@ -216,6 +218,8 @@ export const forwarderSchema = z.strictObject({
   spanningTree: spanningTreeSchema.optional(),
   policy: rankedMap(policyRuleSchema).optional(),
   multicast: z.enum(['flood', 'snoop', 'drop']).optional(),
+  /** Whether it asks the segment who is a member of which group. */
+  querier: z.boolean().optional(),
   gateway: gatewayInterfaceSchema.optional(),
 });
 
