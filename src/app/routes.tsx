@@ -17,6 +17,16 @@ export const routes: RouteObject[] = [
         lazy: async () => ({ Component: (await import('../pages/sign-in-page.tsx')).SignInPage }),
       },
       {
+        lazy: async () => ({ Component: (await import('./shell.tsx')).Shell }),
+        children: [
+          {
+            path: 'wire',
+            ErrorBoundary: PageError,
+            lazy: async () => ({ Component: (await import('../pages/wire-page.tsx')).WirePage }),
+          },
+        ],
+      },
+      {
         element: <SignedInOnly />,
         children: [
           {

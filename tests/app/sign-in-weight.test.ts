@@ -39,3 +39,13 @@ test('the list of engagements loads neither the canvas nor the checks', () => {
     [...loaded].filter((path) => /^src\/(canvas|workspace|engine\/rules)\/|^@xyflow/.test(path)),
   ).toEqual([]);
 });
+
+test('the wire calculator loads neither the canvas nor the checks nor layout code', () => {
+  const loaded = loadedWith(['src/main.tsx', 'src/pages/wire-page.tsx', 'src/app/shell.tsx']);
+  expect(loaded).toContain('src/engine/wire/stack-layers.ts');
+  // How rates and times are written is shared with the sheet's inspector; it draws nothing.
+  const inWords = /^src\/canvas\/inspector\/((rate|share|duration)-text|written-value)\.ts$/;
+  const heavy =
+    /^src\/(canvas|workspace|engine\/(rules|flood|network)|drawing\/(routing|tidy|svg))\/|^(@xyflow|elkjs|html-to-image)/;
+  expect([...loaded].filter((path) => heavy.test(path) && !inWords.test(path))).toEqual([]);
+});

@@ -36,6 +36,21 @@ const openSheet = async (page: Page, title: string): Promise<void> => {
 
 const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
   ['sign-in', async (page) => void (await page.goto('/'))],
+  [
+    'the wire calculator before sign-in',
+    async (page) => {
+      await page.goto('/wire');
+      await page.getByRole('heading', { name: 'Padding around the limit' }).waitFor();
+      for (const table of await page.getByText('The same in a table').all()) await table.click();
+    },
+  ],
+  [
+    'the wire calculator with inputs that cannot be',
+    async (page) => {
+      await page.goto('/wire?mtu=67&tags=1&vxlan=none');
+      await page.getByText('Nothing is computed until this is mended.').waitFor();
+    },
+  ],
   ['engagements', (page) => signInAs(page, 'architect')],
   [
     'a new design',

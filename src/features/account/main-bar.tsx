@@ -25,6 +25,7 @@ export function MainBar({ workspaceId, children }: MainBarProps) {
             destinations={[
               { to: engagementsPath(here), label: 'Engagements' },
               { to: '/checks', label: 'Checks' },
+              { to: '/wire', label: 'Wire' },
             ]}
           />
         </>

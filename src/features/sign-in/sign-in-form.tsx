@@ -1,6 +1,7 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useState, type ReactNode } from 'react';
 import { useForm } from 'react-hook-form';
+import { Link } from 'react-router-dom';
 import type { z } from 'zod';
 import { version } from '../../../package.json';
 import { Button } from '../../components/button.tsx';
@@ -95,8 +96,14 @@ export function SignInForm() {
           Sign in
         </Button>
       </div>
-      <div className="grid grid-cols-[198px_1fr_90px_90px] border-t border-ink max-sm:grid-cols-[1fr_1fr_1fr]">
+      <div className="grid grid-cols-[84px_128px_1fr_74px_74px] border-t border-ink max-sm:grid-cols-[1fr_1fr_1fr]">
         <Fact label="Language">English</Fact>
+        <div className="border-l border-ink px-13 py-6 max-sm:col-span-3 max-sm:row-start-3 max-sm:border-t max-sm:border-l-0">
+          <span className="block text-label text-ink-3">Without signing in</span>
+          <Link to="/wire" className="text-value text-blue underline">
+            Wire
+          </Link>
+        </div>
         <div className="border-l border-ink px-13 py-6 max-sm:col-span-3 max-sm:row-start-2 max-sm:border-t max-sm:border-l-0">
           <span className="mb-3 block text-label text-ink-3">Theme</span>
           <SegmentedChoice
