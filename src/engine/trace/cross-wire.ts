@@ -5,7 +5,7 @@ import type { End as TunnelSide } from '../network/network.ts';
 import { deviceOfTunnelEnd, entryOf, otherEnd } from '../network/network.ts';
 import type { Id } from '../model/scalars.ts';
 import type { ElementRef } from '../model/design.ts';
-import type { Stack, TagCount } from '../wire/stack.ts';
+import type { TagCount } from '../wire/stack.ts';
 import { bareStack } from '../wire/stack.ts';
 import type { Crossing, End, Following, Hop } from './follower.ts';
 import { dropped, namesOf } from './follower.ts';
@@ -100,7 +100,7 @@ const crossTunnel = (following: Following, crossing: Crossing, bytesOf: BytesOf)
   const from: TunnelSide = crossing.direction === 0 ? 'a' : 'b';
   const tunnel = entryOf(network.design.tunnels, ref.id);
   const { reasons } = tunnelStates(network).get(ref.id)!;
-  const pipe = tunnelPipe(network, ref.id, from);
+  const pipe = tunnelPipe(network, ref.id, from, tagCount(crossing));
   const elements: ElementRef[] = [ref];
   if (tunnel.association !== undefined) elements.push({ collection: 'associations', id: tunnel.association });
   if (pipe !== undefined) {
@@ -113,8 +113,7 @@ const crossTunnel = (following: Following, crossing: Crossing, bytesOf: BytesOf)
   if (atSender !== undefined || pipe === undefined)
     return { ...base, facts: [], end: atSender ?? dropped({ code: 'tunnel-down', tunnel: ref.id, reasons }) };
 
-  const stack: Stack | undefined =
-    pipe.stack === undefined ? undefined : { ...pipe.stack, innerTags: tagCount(crossing) };
+  const { stack } = pipe;
   const bytes = stack === undefined ? undefined : bytesOf(stack);
   const { transport } = pipe.path;
   if (bytes === undefined)
@@ -123,7 +122,7 @@ const crossTunnel = (following: Following, crossing: Crossing, bytesOf: BytesOf)
       ref,
       `How long packets become in ${tunnel.name} isn’t known: addresses of its endpoints or a common ESP proposal are missing. They are taken to fit.`,
     );
-  else if (!pipe.isTransportKnown)
+  else if (pipe.missing.some((one) => one.ref.collection === 'transports'))
     assume(
       'mtu-unknown',
       { collection: 'transports', id: transport },
