@@ -1,4 +1,4 @@
-import { readFileSync } from 'node:fs';
+import { copyFileSync, readFileSync } from 'node:fs';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { launchBrowser, type TestBrowser } from '../support/browser.ts';
 import {
@@ -108,8 +108,10 @@ describe('an architect on a real design', () => {
     expect(picture.suggestedFilename()).toBe('standby-controller.png');
     const png = readFileSync((await picture.path())!);
     expect(png.subarray(1, 4).toString('latin1')).toBe('PNG');
-    // A3 at two pixels per pixel of the sheet.
-    expect([png.readUInt32BE(16), png.readUInt32BE(20)]).toEqual([2560, 1810]);
+    // A3 and the line of caution under it, at two pixels per pixel of the sheet.
+    expect([png.readUInt32BE(16), png.readUInt32BE(20)]).toEqual([2560, 1858]);
+    if (process.env['KEEP_PICTURE'] !== undefined)
+      copyFileSync((await picture.path())!, process.env['KEEP_PICTURE']);
     expect(png.length).toBeGreaterThan(50_000);
 
     await later.getByRole('button', { name: 'Export' }).click();
