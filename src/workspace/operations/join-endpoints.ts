@@ -1,7 +1,7 @@
 import type { DeepReadonly, Design, Entry } from '../../engine/model/design.ts';
 import { isGateway } from '../../engine/model/devices.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
-import { joinPatches } from '../../engine/model/merge-patch.ts';
+import { applyPatch, joinPatches } from '../../engine/model/merge-patch.ts';
 import type { AssociationEnd, Endpoint, Forwarder } from '../../engine/model/overlay.ts';
 import { firstRanks, inRankOrder, rankAtEnd } from '../../engine/model/rank.ts';
 import type { Landing } from '../../engine/model/underlay.ts';
@@ -9,7 +9,7 @@ import { tunnelPath } from '../../engine/network/association-path.ts';
 import { indexNetwork } from '../../engine/network/index-network.ts';
 import { freeName } from './free-names.ts';
 import { linksIn } from './connect-ports.ts';
-import { segmentBridge } from './segment-bridge.ts';
+import { landSegment, segmentBridge } from './segment-bridge.ts';
 import type { NewId, Operation } from './operation.ts';
 import { refused } from './operation.ts';
 
@@ -311,9 +311,16 @@ export const joinEndpoints = (design: Design, choice: JoinChoice, newId: NewId):
       },
     },
   } as unknown as MergePatch);
-  if (choice.segment !== undefined)
+  if (choice.segment !== undefined) {
+    let landed = design;
+    for (const device of [endA.device, endB.device]) {
+      const landing = landSegment(landed, choice.segment, design.devices[device]!.site);
+      landed = applyPatch(landed, landing);
+      patches.push(landing);
+    }
     for (const device of [endA.device, endB.device])
-      patches.push(joinBridge(design, device, choice, id, newId));
+      patches.push(joinBridge(landed, device, choice, id, newId));
+  }
   return {
     ok: true,
     label: `Pull ${name}`,

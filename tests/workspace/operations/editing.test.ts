@@ -215,6 +215,27 @@ describe('numbers and names offered', () => {
   const counter2 = counter();
 });
 
+describe('a tunnel that carries a segment which lands nowhere yet', () => {
+  it('lets it land at both sites, on one VLAN', () => {
+    const design = pairDesign();
+    const nowhere = done(
+      design,
+      placeSegment(emptyOfSites(design), () => 'seg-b'),
+    );
+    const after = done(
+      nowhere,
+      joinEndpoints(
+        nowhere,
+        { a: 'lo-s0', b: 'lo-s1', vni: 77, association: 'as-s0-s1', segment: 'seg-b' },
+        counter(),
+      ),
+    );
+    expect(after.segments['seg-b']!.sites).toEqual({ s0: { vlan: 120 }, s1: { vlan: 120 } });
+  });
+  /** The same design to an operation that looks for sites and finds none. */
+  const emptyOfSites = (design: Design): Design => ({ ...design, sites: {} });
+});
+
 describe('a tunnel pulled into an isolated mesh', () => {
   it('joins the isolation group of its neighbours', () => {
     const design = meshDesign(3, { join: { isolation: 'overlay' } });
