@@ -2,7 +2,6 @@ import type { Design } from '#engine/model/design.ts';
 import type { MergePatch } from '#engine/model/merge-patch.ts';
 import { applyPatch } from '#engine/model/merge-patch.ts';
 import { rankAtEnd } from '#engine/model/rank.ts';
-import { onlyRank } from './saltmarsh.ts';
 
 /** A fault put into the fault-free design on purpose, and the check that has to find it. */
 export interface PlantedFault {
@@ -70,36 +69,6 @@ export const plantedFaults: readonly PlantedFault[] = [
     patch: () => ({ segments: { b: { mtu: 1500 } } }),
   },
   {
-    rule: 'tunnel-bare-on-untrusted',
-    what: 'the CCTV tunnel from the head office to Skerry lost its IPsec association',
-    patch: () => ({
-      tunnels: {
-        'tn-ho-ske-c': {
-          association: null,
-          a: { via: { first: { rank: onlyRank, landing: 'ld-ho-coast' } } },
-          b: { via: { first: { rank: onlyRank, landing: 'ld-ske-coast' } } },
-        },
-      },
-    }),
-  },
-  {
-    rule: 'association-selectors-miss-loopbacks',
-    what: 'the head office’s selectors name a loopback that Gullhaven does not have',
-    patch: () => ({
-      associations: { 'as-ho-gul': { a: { selectors: { loopbacks: { remote: '10.255.0.10/32' } } } } },
-    }),
-  },
-  {
-    rule: 'association-proposals-differ',
-    what: 'Gullhaven offers ESP with 128-bit keys, the head office with 256',
-    patch: () => ({ associations: { 'as-ho-gul': { b: { espProposals: { first: { keyBits: 128 } } } } } }),
-  },
-  {
-    rule: 'association-nobody-starts',
-    what: 'both ends of the association with Gullhaven wait for the other',
-    patch: () => ({ associations: { 'as-ho-gul': { a: { start: 'answers' } } } }),
-  },
-  {
     rule: 'association-liveness-one-sided',
     what: 'Skerry does not check that the head office is alive',
     patch: () => ({ associations: { 'as-ho-ske': { b: { liveness: 'off' } } } }),
@@ -121,7 +90,13 @@ export const plantedFaults: readonly PlantedFault[] = [
     what: 'a spare loopback at Gullhaven has Orrin Point’s address',
     patch: () => ({
       endpoints: { 'lo-gul-spare': { device: 'fw-gul', name: 'lo-gul-spare', ipv4: '10.255.0.12/32' } },
+      layout: { endpoints: { 'lo-gul-spare': { side: 'right' } } },
     }),
+  },
+  {
+    rule: 'pair-without-state-sync',
+    what: 'the members of the head office’s pair do not share the state of their associations',
+    patch: () => ({ devices: { 'fw-ho': { stateSync: false } } }),
   },
   {
     rule: 'vlan-missing-on-path',

@@ -1,7 +1,6 @@
 import type { DesignBuilder, SegmentPlan, SitePlan } from '#engine/model/design-builder.ts';
 import { designBuilder } from '#engine/model/design-builder.ts';
 import type { Design } from '#engine/model/design.ts';
-import { firstRanks } from '#engine/model/rank.ts';
 
 /** What all demo designs share: the customer's segments, transports and sites. Everything is invented. */
 
@@ -94,6 +93,3 @@ export function fitHostMtus(design: Design): Design {
   });
   return { ...design, devices: Object.fromEntries(devices) };
 }
-
-/** The first rank of a list, for entries that stand alone in theirs. */
-export const onlyRank = firstRanks(1)[0]!;
