@@ -1,31 +1,10 @@
 import type { MergePatch } from '../model/merge-patch.ts';
-import type { End, Network } from '../network/network.ts';
-import { deviceOfTunnelEnd, ends } from '../network/network.ts';
 import { tunnelSegments } from '../flood/tunnel-segments.ts';
-import { segmentPathFacts, segmentsByForwarder, segmentsOfCircuit } from './carried-segments.ts';
+import { bridgesOfTunnel } from './bridged-ends.ts';
+import { segmentPathFacts, segmentsByForwarder } from './carried-segments.ts';
 import { defineRule } from './define-rule.ts';
 import { firstPolicy } from './first-policy.ts';
 import { siteNameOf, tunnelPlaces } from './places.ts';
-
-/** Forwarders that lead the segment on from this end of the tunnel, to a port or into another tunnel. */
-const forwardersAt = (network: Network, tunnel: string, segment: string, end: End): readonly string[] => {
-  const device = deviceOfTunnelEnd(network, network.design.tunnels[tunnel]!, end);
-  return (network.circuitsByTunnel.get(tunnel) ?? [])
-    .filter((at) => at.device === device)
-    .map(({ forwarder }) => forwarder)
-    .filter((forwarder) =>
-      network.circuitsByForwarder
-        .get(forwarder)!
-        .some(({ circuit }) =>
-          circuit.kind === 'port'
-            ? segmentsOfCircuit(network, device, circuit).includes(segment)
-            : circuit.tunnel !== tunnel && tunnelSegments(network).get(circuit.tunnel)!.includes(segment),
-        ),
-    );
-};
-
-const isBridge = ({ design }: Network, forwarder: string): boolean =>
-  design.forwarders[forwarder]!.kind === 'bridge';
 
 export const bridgeWhereFilterRequired = defineRule({
   id: 'bridge-where-filter-required',
@@ -51,13 +30,8 @@ export const bridgeWhereFilterRequired = defineRule({
     return [...tunnelSegments(network)].flatMap(([tunnel, segments]) =>
       segments.flatMap((segment) => {
         if (design.segments[segment]!.mustBeFiltered !== true) return [];
-        const at = {
-          a: forwardersAt(network, tunnel, segment, 'a'),
-          b: forwardersAt(network, tunnel, segment, 'b'),
-        };
-        const bridges = ends.flatMap((end) => at[end].filter((forwarder) => isBridge(network, forwarder)));
-        // One filtered end is enough, and an end that doesn't lead the segment on lets nothing pass.
-        if (!ends.every((end) => at[end].some((forwarder) => isBridge(network, forwarder)))) return [];
+        const bridges = bridgesOfTunnel(network, tunnel, segment);
+        if (bridges.length === 0) return [];
         const places = tunnelPlaces(design, design.tunnels[tunnel]!);
         return [
           {

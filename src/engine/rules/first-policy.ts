@@ -4,16 +4,14 @@ import { firstRanks } from '../model/rank.ts';
 import type { DesignFacts } from '../network/network.ts';
 import { passesProtocol, protocolFrames, type PolicyRule } from './protocol-frames.ts';
 
-type Rule = { readonly [field: string]: string | number | boolean | readonly string[] };
+type Rule = Omit<PolicyRule, 'rank'>;
 
 // RFC 2328 appendix A.1, RFC 7761 section 4.9, RFC 9568 section 5.1: these speak to link-local groups.
 const multicastSpeakers: readonly Protocol[] = ['multicast', 'igmp', 'ospf', 'pim', 'vrrp'];
 
 const ranked = (rules: { readonly [id: string]: Rule }): { readonly [id: string]: PolicyRule } => {
   const ranks = firstRanks(Object.keys(rules).length);
-  return Object.fromEntries(
-    Object.entries(rules).map(([id, rule], i) => [id, { rank: ranks[i]!, ...rule } as unknown as PolicyRule]),
-  );
+  return Object.fromEntries(Object.entries(rules).map(([id, rule], i) => [id, { rank: ranks[i]!, ...rule }]));
 };
 
 /**
@@ -26,7 +24,7 @@ export const firstPolicy = (design: DesignFacts, segments: readonly string[]): M
     ...new Set(entries.flatMap(({ sites }) => Object.values(sites).flatMap((site) => site.subnets ?? []))),
   ].sort();
   const protocols = new Set<Protocol>(entries.flatMap((segment) => segment.protocols ?? []));
-  const within = (isV6: boolean): Rule => {
+  const within = (isV6: boolean): Pick<Rule, 'sources' | 'destinations'> => {
     const own = subnets.filter((subnet) => subnet.includes(':') === isV6);
     return own.length === 0 ? {} : { sources: own, destinations: own };
   };

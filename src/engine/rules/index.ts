@@ -13,6 +13,7 @@ import { associationProposalsDiffer } from './association-proposals-differ.ts';
 import { associationSelectorsMissLoopbacks } from './association-selectors-miss-loopbacks.ts';
 import { associationWithoutLiveness } from './association-without-liveness.ts';
 import { associationWithoutSecondPath } from './association-without-second-path.ts';
+import { associationWithoutTunnel } from './association-without-tunnel.ts';
 import { associationWrongInitiator } from './association-wrong-initiator.ts';
 import { authenticationMismatch } from './authentication-mismatch.ts';
 import { bridgeWhereFilterRequired } from './bridge-where-filter-required.ts';
@@ -34,9 +35,11 @@ import { gatewayAddressDuplicate } from './gateway-address-duplicate.ts';
 import { gatewayGroupAcrossSites } from './gateway-group-across-sites.ts';
 import { gatewayMtusDiffer } from './gateway-mtus-differ.ts';
 import { gatewayTakesVxlanFromAnyone } from './gateway-takes-vxlan-from-anyone.ts';
+import { hopLimitLowered } from './hop-limit-lowered.ts';
 import { hostAddressDuplicate } from './host-address-duplicate.ts';
 import { hostSingleHomed } from './host-single-homed.ts';
 import { identityFollowsAddress } from './identity-follows-address.ts';
+import { ikeFragmentsDropped } from './ike-fragments-dropped.ts';
 import { ikeVersionMismatch } from './ike-version-mismatch.ts';
 import { ikeVersionOutdated } from './ike-version-outdated.ts';
 import { integrityTruncationDiffers } from './integrity-truncation-differs.ts';
@@ -45,6 +48,8 @@ import { landingAddressUnroutable } from './landing-address-unroutable.ts';
 import { landingInsideSegment } from './landing-inside-segment.ts';
 import { landingOnOneMember } from './landing-on-one-member.ts';
 import { livenessShorterThanFailover } from './liveness-shorter-than-failover.ts';
+import { macLimitTooLow } from './mac-limit-too-low.ts';
+import { macTableTooSmall } from './mac-table-too-small.ts';
 import { managementInsideSegment } from './management-inside-segment.ts';
 import { multicastDroppedOnPath } from './multicast-dropped-on-path.ts';
 import { natKeepaliveTooSlow } from './nat-keepalive-too-slow.ts';
@@ -55,6 +60,7 @@ import { policyDropsProtocol } from './policy-drops-protocol.ts';
 import { policyOneDirection } from './policy-one-direction.ts';
 import { policyWithoutLoggedDenial } from './policy-without-logged-denial.ts';
 import { portHoldsTwoCables } from './port-holds-two-cables.ts';
+import { portMtuBelowSegment } from './port-mtu-below-segment.ts';
 import { portRoutedAndBridged } from './port-routed-and-bridged.ts';
 import { portVlanClaimedTwice } from './port-vlan-claimed-twice.ts';
 import { preSharedKeyReused } from './pre-shared-key-reused.ts';
@@ -62,9 +68,14 @@ import { replayProtectionOff } from './replay-protection-off.ts';
 import { replayWindowTooSmall } from './replay-window-too-small.ts';
 import { reservedGroupNotPassed } from './reserved-group-not-passed.ts';
 import { routerAdvertisementsTwice } from './router-advertisements-twice.ts';
+import { secondPathTooSmall } from './second-path-too-small.ts';
 import { segmentCouldBeRouted } from './segment-could-be-routed.ts';
 import { segmentHostsParted } from './segment-hosts-parted.ts';
+import { segmentIpv6BelowMinimum } from './segment-ipv6-below-minimum.ts';
+import { segmentNeedsUnknown } from './segment-needs-unknown.ts';
+import { segmentTooLarge } from './segment-too-large.ts';
 import { segmentsMerged } from './segments-merged.ts';
+import { selectorsLoseFragments } from './selectors-lose-fragments.ts';
 import { snoopingWithoutQuerier } from './snooping-without-querier.ts';
 import { stormAnyToAnyMesh } from './storm-any-to-any-mesh.ts';
 import { stormCustomerCable } from './storm-customer-cable.ts';
@@ -72,6 +83,7 @@ import { stormLocal } from './storm-local.ts';
 import { subnetInTwoSegments } from './subnet-in-two-segments.ts';
 import { switchSingleHomed } from './switch-single-homed.ts';
 import { transportFiltersNeeded } from './transport-filters-needed.ts';
+import { transportHidesTooBig } from './transport-hides-too-big.ts';
 import { transportModeThroughNat } from './transport-mode-through-nat.ts';
 import { transportMtuUnknown } from './transport-mtu-unknown.ts';
 import { tunnelBareOnUntrusted } from './tunnel-bare-on-untrusted.ts';
@@ -83,10 +95,12 @@ import { tunnelUdpPortMismatch } from './tunnel-udp-port-mismatch.ts';
 import { tunnelVniMismatch } from './tunnel-vni-mismatch.ts';
 import { tunnelVniReserved } from './tunnel-vni-reserved.ts';
 import { tunnelVniUnset } from './tunnel-vni-unset.ts';
+import { tunnelWithoutCircuit } from './tunnel-without-circuit.ts';
 import { vlanMissingOnPath } from './vlan-missing-on-path.ts';
 import { vniUsedTwice } from './vni-used-twice.ts';
 import { weakAlgorithm } from './weak-algorithm.ts';
 import { zeroChecksumRefused } from './zero-checksum-refused.ts';
+import { zonesJoinedUnfiltered } from './zones-joined-unfiltered.ts';
 
 /** Every check, one line each. */
 export const rules: readonly Rule[] = [
@@ -105,6 +119,7 @@ export const rules: readonly Rule[] = [
   associationSelectorsMissLoopbacks,
   associationWithoutLiveness,
   associationWithoutSecondPath,
+  associationWithoutTunnel,
   associationWrongInitiator,
   authenticationMismatch,
   bridgeWhereFilterRequired,
@@ -125,9 +140,11 @@ export const rules: readonly Rule[] = [
   gatewayGroupAcrossSites,
   gatewayMtusDiffer,
   gatewayTakesVxlanFromAnyone,
+  hopLimitLowered,
   hostAddressDuplicate,
   hostSingleHomed,
   identityFollowsAddress,
+  ikeFragmentsDropped,
   ikeVersionMismatch,
   ikeVersionOutdated,
   integrityTruncationDiffers,
@@ -136,6 +153,8 @@ export const rules: readonly Rule[] = [
   landingInsideSegment,
   landingOnOneMember,
   livenessShorterThanFailover,
+  macLimitTooLow,
+  macTableTooSmall,
   managementInsideSegment,
   multicastDroppedOnPath,
   natKeepaliveTooSlow,
@@ -146,6 +165,7 @@ export const rules: readonly Rule[] = [
   policyOneDirection,
   policyWithoutLoggedDenial,
   portHoldsTwoCables,
+  portMtuBelowSegment,
   portRoutedAndBridged,
   portVlanClaimedTwice,
   preSharedKeyReused,
@@ -153,9 +173,14 @@ export const rules: readonly Rule[] = [
   replayWindowTooSmall,
   reservedGroupNotPassed,
   routerAdvertisementsTwice,
+  secondPathTooSmall,
   segmentCouldBeRouted,
   segmentHostsParted,
+  segmentIpv6BelowMinimum,
+  segmentNeedsUnknown,
+  segmentTooLarge,
   segmentsMerged,
+  selectorsLoseFragments,
   snoopingWithoutQuerier,
   stormAnyToAnyMesh,
   stormCustomerCable,
@@ -163,6 +188,7 @@ export const rules: readonly Rule[] = [
   subnetInTwoSegments,
   switchSingleHomed,
   transportFiltersNeeded,
+  transportHidesTooBig,
   transportModeThroughNat,
   transportMtuUnknown,
   tunnelBareOnUntrusted,
@@ -174,8 +200,10 @@ export const rules: readonly Rule[] = [
   tunnelVniMismatch,
   tunnelVniReserved,
   tunnelVniUnset,
+  tunnelWithoutCircuit,
   vlanMissingOnPath,
   vniUsedTwice,
   weakAlgorithm,
   zeroChecksumRefused,
+  zonesJoinedUnfiltered,
 ];
