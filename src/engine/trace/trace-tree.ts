@@ -44,7 +44,11 @@ export const traceTree = (
     return undefined;
   };
   const cutBefore = (parent: number): number | undefined => {
-    for (let at: number | undefined = parent; at !== undefined; at = steps[at]!.parent)
+    for (
+      let at: number | undefined = parent < 0 ? undefined : parent;
+      at !== undefined;
+      at = steps[at]!.parent
+    )
       if (steps[at]!.pieces !== undefined) return at;
     return undefined;
   };
@@ -64,7 +68,7 @@ export const traceTree = (
     const { end } = hop;
     if (end === undefined) return undefined;
     if (end.code === 'delivered') {
-      if (hop.crossing !== undefined) arrivals.set(end.to.id, [...(arrivals.get(end.to.id) ?? []), index]);
+      arrivals.set(end.to.id, [...(arrivals.get(end.to.id) ?? []), index]);
       return arrived(end.to, hop.pieces === undefined ? cutBefore(parent) : index);
     }
     const explains = end.byDesign ? [] : explainDrop(end.reason, association, findings);
@@ -128,14 +132,18 @@ export const traceTree = (
       queue.push({ hop: graph.hops.get(target)!, parent: index });
     for (const stopped of hop.stopped) queue.push({ hop: stopped, parent: index });
   }
-  return { steps, deliveries: deliveriesOf(graph, arrivals) };
+  return { steps, deliveries: deliveriesOf(source, graph, arrivals) };
 };
 
 const deliveriesOf = (
+  source: Hop,
   { hops, copies }: CrossingGraph,
   arrivals: ReadonlyMap<Id, readonly number[]>,
 ): Trace['deliveries'] => {
-  const counts = new Map<Id, number | 'endless'>();
+  // A frame that comes from outside may be for the very device it comes to.
+  const counts = new Map<Id, number | 'endless'>(
+    source.end?.code === 'delivered' ? [[source.end.to.id, 1]] : [],
+  );
   for (const [key, { end }] of hops) {
     if (end?.code !== 'delivered') continue;
     const before = counts.get(end.to.id) ?? 0;
