@@ -1,5 +1,5 @@
-import ipaddr from 'ipaddr.js';
 import type { Design } from '../../engine/model/design.ts';
+import { freeLoopbacks, freeVnis } from '../../engine/numbering/free-numbers.ts';
 
 const lowestFree = (taken: (n: number) => boolean, from: number): number => {
   let n = from;
@@ -37,26 +37,14 @@ export const freeVlan = (design: Design): number => {
 
 /** The lowest VNI from 10001 that no end of a tunnel has, so that every tunnel gets a number of its own. */
 export const freeVni = (design: Design): number => {
-  const taken = new Set(Object.values(design.tunnels).flatMap((tunnel) => [tunnel.a.vni, tunnel.b.vni]));
-  return lowestFree((n) => taken.has(n), 10_001);
+  const answer = freeVnis(design, 1);
+  if (!answer.ok) throw new Error('the design holds every VNI there is');
+  return answer.vnis[0]!;
 };
 
-const hostOf = (cidr: string): string => cidr.split('/')[0]!;
-
-/** The lowest loopback address from 10.255.0.1 that no endpoint has and that no segment's subnet holds. */
+/** The lowest loopback address from 10.255.0.1 that nobody has and that no segment's subnet holds. */
 export const freeLoopback = (design: Design): string => {
-  const taken = new Set(
-    Object.values(design.endpoints).flatMap((endpoint) =>
-      endpoint.ipv4 === undefined ? [] : [hostOf(endpoint.ipv4)],
-    ),
-  );
-  const subnets = Object.values(design.segments)
-    .flatMap((segment) => Object.values(segment.sites).flatMap((at) => at.subnets ?? []))
-    .filter((subnet) => !subnet.includes(':'))
-    .map((subnet) => ipaddr.IPv4.parseCIDR(subnet));
-  const address = (n: number): string => `10.255.${Math.floor(n / 254) % 256}.${(n % 254) + 1}`;
-  const clash = (n: number): boolean =>
-    n < 65_000 &&
-    (taken.has(address(n)) || subnets.some((subnet) => ipaddr.IPv4.parse(address(n)).match(subnet)));
-  return `${address(lowestFree(clash, 0))}/32`;
+  const answer = freeLoopbacks(design, 4, 1);
+  // Where segments take all usual ranges in, the checks say that this endpoint lies in one.
+  return answer.ok ? answer.loopbacks[0]! : '10.255.0.1/32';
 };
