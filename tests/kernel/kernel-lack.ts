@@ -1,5 +1,5 @@
 import { spawnSync } from 'node:child_process';
-import { existsSync } from 'node:fs';
+import { existsSync, readFileSync } from 'node:fs';
 
 const succeeds = (program: string, ...args: readonly string[]): boolean =>
   spawnSync(program, args, { stdio: 'ignore', timeout: 10_000 }).status === 0;
@@ -36,10 +36,19 @@ export const kernelLack: string | undefined = findLack();
 export const ikeDaemon = '/usr/sbin/charon-systemd';
 export const ikeControl = '/usr/sbin/swanctl';
 
+const isConfined = (): boolean => {
+  try {
+    return readFileSync('/sys/kernel/security/apparmor/profiles', 'utf8').includes(`${ikeDaemon} (enforce)`);
+  } catch {
+    return false;
+  }
+};
+
 const findIpsecLack = (): string | undefined => {
   if (kernelLack !== undefined) return kernelLack;
   if (!existsSync(ikeDaemon) || !existsSync(ikeControl))
     return "install 'charon-systemd strongswan-swanctl libcharon-extra-plugins libstrongswan-standard-plugins libstrongswan-extra-plugins'";
+  if (isConfined()) return 'AppArmor keeps the IKE daemon from reading what the tests write';
   return succeeds('sh', '-c', 'exec 3<>/dev/net/tun') ? undefined : 'this system has no /dev/net/tun';
 };
 
