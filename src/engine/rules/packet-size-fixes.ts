@@ -11,14 +11,18 @@ import { gatewaysOf, type Tight } from './segment-capacity.ts';
 import { outermostBytes } from './tunnel-capacity.ts';
 import { counted } from './wording.ts';
 
-// RFC 791 section 3.1: every host accepts packets of 576 bytes; RFC 8200 section 5 asks 1280 of every link.
-const leastMtuBytes = (network: Network, segment: string): number => {
+/** Whether a segment carries IPv6: by what it must carry, or by its subnets. */
+export const carriesIpv6 = (network: Network, segment: string): boolean => {
   const { protocols, sites } = network.design.segments[segment]!;
-  const hasV6 =
+  return (
     protocols?.includes('ipv6') === true ||
-    Object.values(sites).some((site) => site.subnets?.some((subnet) => subnet.includes(':')) === true);
-  return hasV6 ? SMALLEST_LINK_MTU_BYTES.ipv6 : 576;
+    Object.values(sites).some((site) => site.subnets?.some((subnet) => subnet.includes(':')) === true)
+  );
 };
+
+// RFC 791 section 3.1: every host accepts packets of 576 bytes; RFC 8200 section 5 asks 1280 of every link.
+const leastMtuBytes = (network: Network, segment: string): number =>
+  carriesIpv6(network, segment) ? SMALLEST_LINK_MTU_BYTES.ipv6 : 576;
 
 /** Commits the segment, and its gateways, to what fits through all its tunnels. */
 export const lowerSegment = (

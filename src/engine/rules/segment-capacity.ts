@@ -12,7 +12,7 @@ export interface Tight extends EndCapacity {
 }
 
 /** Tags that the segment's frames keep inside a tunnel, at the end that keeps more. */
-const innerTagsOf = (network: Network, tunnel: string, segment: string): TagCount => {
+export const innerTagsOf = (network: Network, tunnel: string, segment: string): TagCount => {
   const entry = network.design.tunnels[tunnel]!;
   return ends.some((end) => {
     const device = deviceOfTunnelEnd(network, entry, end);

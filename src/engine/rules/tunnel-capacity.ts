@@ -1,4 +1,5 @@
 import { associationEndOf, tunnelFamily } from '../network/selectors-cover.ts';
+import type { Path } from '../network/association-path.ts';
 import { landingOf, tunnelPath } from '../network/association-path.ts';
 import { negotiate } from '../network/negotiate.ts';
 import type { End, Landing, Network } from '../network/network.ts';
@@ -59,9 +60,14 @@ const largestThrough = (
   return answer;
 };
 
-const capacityOf = (network: Network, id: string, innerTags: TagCount): EndCapacity | undefined => {
+/** What the tunnel would let through on a path, its own or another that it may turn to. */
+export const capacityOnPath = (
+  network: Network,
+  id: string,
+  innerTags: TagCount,
+  path: Path,
+): EndCapacity | undefined => {
   const tunnel = entryOf(network.design.tunnels, id);
-  const path = tunnelPath(network, id);
   const family = tunnelFamily(network, tunnel);
   if (!path.ok || family === undefined) return undefined;
   if (
@@ -118,7 +124,7 @@ export const tunnelCapacity = (
 ): EndCapacity | undefined => {
   const known = remembered(network);
   const key = `${innerTags} ${id}`;
-  if (!known.has(key)) known.set(key, capacityOf(network, id, innerTags));
+  if (!known.has(key)) known.set(key, capacityOnPath(network, id, innerTags, tunnelPath(network, id)));
   return known.get(key);
 };
 
