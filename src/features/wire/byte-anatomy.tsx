@@ -148,6 +148,7 @@ function Row({
         <rect x={payload.x} y={barY} width={payload.width} height={BAR_PX} fill={fills.packet} />
       </g>
       {payload.breakX !== undefined && <LongBreak x={payload.breakX} y={barY} />}
+      {pipe !== undefined && <Pipe pipe={pipe} barY={barY} hatch={hatch} />}
       <g fontSize={numberSizePx} fontWeight={600} textAnchor="middle">
         {blocks.map(({ block, x, width }) => (
           <BlockNumber key={block.id} bytes={block.bytes} x={x} y={barY} width={width} look={block.look} />
@@ -160,7 +161,14 @@ function Row({
           look="packet"
         />
       </g>
-      {pipe !== undefined && <Pipe pipe={pipe} barY={barY} hatch={hatch} widthPx={geometry.width} />}
+      {pipe?.overEnd !== undefined && (
+        <OverLabel
+          text={`${pipe.overBytes} B over`}
+          from={pipe.end}
+          to={payload.x + payload.width}
+          y={barY + 3}
+        />
+      )}
     </g>
   );
 }
@@ -173,9 +181,7 @@ const Halo = ({ children }: { readonly children: ReactNode }) => (
 );
 
 function measureOf({ ipPacketBytes, pipeBytes }: AnatomyRow): string {
-  return pipeBytes === undefined
-    ? `${ipPacketBytes} B, no pipe yet`
-    : `${ipPacketBytes} B in a ${pipeBytes} B pipe`;
+  return pipeBytes === undefined ? `${ipPacketBytes} B` : `${ipPacketBytes} B in a ${pipeBytes} B pipe`;
 }
 
 function BlockNumber({
@@ -194,7 +200,16 @@ function BlockNumber({
   const text = String(bytes);
   if (textWidth(text, numberSizePx, 600) > width - 1) return null;
   return (
-    <text x={x + width / 2} y={y + BAR_PX / 2 + 4} className={textClasses[look]}>
+    <text
+      x={x + width / 2}
+      y={y + BAR_PX / 2 + 4}
+      // Numbers of what hangs over stand on its hatching.
+      stroke={fills[look]}
+      strokeWidth={3}
+      strokeLinejoin="round"
+      paintOrder="stroke"
+      className={textClasses[look]}
+    >
       {text}
     </text>
   );
@@ -214,16 +229,14 @@ function Pipe({
   pipe,
   barY,
   hatch,
-  widthPx,
 }: {
   readonly pipe: PlacedPipe;
   readonly barY: number;
   readonly hatch: string;
-  readonly widthPx: number;
 }) {
   const top = barY - WALL_OFF_PX;
   const bottom = barY + BAR_PX + WALL_OFF_PX;
-  const { x, end, overEnd, overBytes } = pipe;
+  const { x, end, overEnd } = pipe;
   return (
     <>
       {overEnd !== undefined && (
@@ -244,26 +257,24 @@ function Pipe({
         stroke={paint(overEnd === undefined ? 'ink' : 'red')}
         strokeWidth={3.6}
       />
-      {overEnd !== undefined && (
-        <OverLabel text={`${overBytes} B over`} middle={(end + overEnd) / 2} y={barY + 3} widthPx={widthPx} />
-      )}
     </>
   );
 }
 
+/** Over the hatching of the payload; where that is too short to be seen beneath, before the pipe's end. */
 function OverLabel({
   text,
-  middle,
+  from,
+  to,
   y,
-  widthPx,
 }: {
   readonly text: string;
-  readonly middle: number;
+  readonly from: number;
+  readonly to: number;
   readonly y: number;
-  readonly widthPx: number;
 }) {
   const width = textWidth(text, numberSizePx, 600) + 14;
-  const x = Math.min(widthPx - width, Math.max(0, middle - width / 2));
+  const x = to - from >= width + 8 ? (from + to - width) / 2 : from - width - 7;
   return (
     <>
       <rect x={x} y={y} width={width} height={BAR_PX - 6} rx={2} fill={paint('red')} />

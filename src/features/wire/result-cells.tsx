@@ -6,13 +6,9 @@ export function ResultCells({ groups }: { readonly groups: readonly ResultGroup[
   return groups.map(({ title, results }) => (
     <section key={title} aria-label={title}>
       <h2 className="mb-8 text-section font-semibold">{title}</h2>
-      <CellGrid columns="repeat(auto-fill, minmax(min(100%, 252px), 1fr))">
-        {results.map(({ label, value, working, source, warning }) => (
-          <ReadCell
-            key={label}
-            label={label}
-            marked={warning === undefined ? undefined : { severity: 'degrading', sentence: warning }}
-          >
+      <CellGrid columns="repeat(auto-fill, minmax(min(100%, 380px), 1fr))">
+        {results.map(({ label, value, working, source, mark }) => (
+          <ReadCell key={label} label={label} marked={mark}>
             <span className="text-title">{value}</span>
             <span className="mt-2 block text-note font-normal text-ink-2">{working}</span>
             <span className="block text-label font-normal text-ink-3">{source}</span>

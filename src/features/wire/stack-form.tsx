@@ -2,6 +2,7 @@ import type { ReactNode } from 'react';
 import { CellGrid } from '../../components/cell.tsx';
 import { CheckCell, ChoiceCell, CommitCell, SelectCell } from '../../components/field-cells.tsx';
 import { espTransforms } from '../../engine/reference/esp.ts';
+import { mixLetterFrameBytes, simpleImix } from '../../engine/reference/frame-mixes.ts';
 import { presetOf, stackPresets, textsOfPreset } from './stack-presets.ts';
 import {
   textProblem,
@@ -50,13 +51,13 @@ export function StackForm(form: FormProps) {
         <ChoiceNamed {...form} name="vxlan" field={wireFields.vxlan} />
         <EspCells {...form} />
       </Group>
-      <Group title="Way">
+      <Group title="Path">
         <AccessCells {...form} />
         <TextCell {...form} name="mtu" unit="B" />
         <TextCell {...form} name="link" />
       </Group>
       <Group title="Traffic">
-        <ChoiceNamed {...form} name="mix" span={2} field={wireFields.mix} />
+        <ChoiceNamed {...form} name="mix" span={2} field={wireFields.mix} hint={mixHints[texts.mix]} />
         {texts.mix === 'letters' && <TextCell {...form} name="letters" span={2} />}
         <TextCell {...form} name="window" unit="B" />
         <YesNoCell {...form} name="timestamps" />
@@ -73,6 +74,14 @@ const Group = ({ title, children }: { readonly title: string; readonly children:
     <CellGrid columns={2}>{children}</CellGrid>
   </section>
 );
+
+const sizesByLetter = Object.entries(mixLetterFrameBytes).map(([letter, bytes]) => `${letter} ${bytes}`);
+
+/** What a mix consists of, said beneath its cell. */
+const mixHints: Readonly<Record<string, string>> = {
+  imix: `${simpleImix.map(({ ipBytes, weight }) => `${weight} of ${ipBytes} B`).join(', ')}, IP headers included: common practice, no source.`,
+  letters: `Frames in bytes: ${sizesByLetter.join(', ')}; z is as long as the host MTU allows. RFC 6985 section 4.`,
+};
 
 function EspCells(form: FormProps) {
   const { texts, problems, onChange } = form;
@@ -156,13 +165,22 @@ interface ChoosingCellProps extends NamedCellProps {
   readonly field: Pick<ChoiceField<unknown, string>, 'options'>;
 }
 
-function ChoiceNamed({ name, texts, problems, onChange, span, field }: ChoosingCellProps) {
+function ChoiceNamed({
+  name,
+  texts,
+  problems,
+  onChange,
+  span,
+  field,
+  hint,
+}: ChoosingCellProps & { readonly hint?: string }) {
   return (
     <ChoiceCell
       label={wireFields[name].label}
       span={span}
       value={texts[name]}
       options={field.options}
+      hint={hint}
       error={problems[name]}
       onChange={(text) => onChange({ [name]: text })}
     />

@@ -53,7 +53,7 @@ export function StaircaseChart({
           const before = treads[at - 1];
           return (
             <g key={tread.fromBytes}>
-              <path d={`M${x} ${y}V${floor + 4}`} stroke={paint('rule-2')} />
+              <path d={`M${end} ${y}V${floor + 4}`} stroke={paint('rule-2')} />
               {before !== undefined && (
                 <path
                   d={`M${x} ${yOf(before.outerBytes)}V${y}`}
@@ -72,8 +72,14 @@ export function StaircaseChart({
               >
                 {tread.outerBytes}
               </text>
-              <text x={x} y={floor + 16} textAnchor="start" className="fill-ink-2">
-                {tread.fromBytes}
+              <text
+                x={end}
+                y={floor + 16}
+                textAnchor="end"
+                fontWeight={tread.toBytes === largestInnerPacketBytes ? 700 : 500}
+                className={tread.toBytes === largestInnerPacketBytes ? 'fill-ink' : 'fill-ink-2'}
+              >
+                {tread.toBytes}
               </text>
             </g>
           );
@@ -88,7 +94,7 @@ export function StaircaseChart({
           {limitBytes} limit
         </text>
         <text x={widthPx - RIGHT_PX + 10} y={floor + 16} className="fill-ink-2">
-          inner, B
+          inner up to
         </text>
       </svg>
     </div>

@@ -22,8 +22,9 @@ export interface SentMix {
   readonly mix: FrameMix;
   /** Whether sizes were longer and count as the largest that passes. */
   readonly shortened: boolean;
-  /** Packets in one turn of the mix, and what they take on the wire together. */
+  /** Packets in one turn of the mix, and their lengths together: as hosts send them, and on the wire. */
   readonly packets: number;
+  readonly innerBytes: number;
   readonly wireBytes: number;
 }
 
@@ -97,6 +98,7 @@ export function wireFigures(inputs: WireInputs): FiguresAnswer {
         mix,
         shortened: asked.some(({ ipBytes }) => ipBytes > mtuBytes),
         packets: Number(totals.weight),
+        innerBytes: Number(totals.innerPacketBytes),
         wireBytes: Number(totals.wireBytes),
       },
       capacity,

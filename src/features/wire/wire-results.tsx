@@ -23,7 +23,7 @@ export function WireResults({
   const treads = paddingStaircase(largestInnerPacketBytes, stack, innerIpVersion);
   const { innerPacketBytes, outerIpPacketBytes } = outward.totals;
   return (
-    <div className="flex min-w-0 flex-col gap-24">
+    <div className="flex max-w-1130 min-w-0 flex-col gap-24">
       <section aria-label="The packet, byte by byte" className="border border-rule-strong bg-paper">
         <div className="px-14 pt-12 pb-14 max-sm:px-10">
           <ByteAnatomy
@@ -72,7 +72,7 @@ function Verdict({
         over > 0 ? 'border-red bg-red-wash' : 'border-ok bg-ok-wash'
       }`}
     >
-      <p role="status" className="flex min-w-0 flex-1 items-center gap-10">
+      <p role="status" className="flex min-w-0 flex-1 items-center gap-10 max-sm:basis-full">
         {over > 0 ? (
           <>
             <SeverityShape severity="blocking" size={18} />

@@ -1,3 +1,4 @@
+import type { CellMark } from '../../components/cell.tsx';
 import {
   INTER_FRAME_GAP_BYTES,
   JUMBO_PAYLOAD_BYTES,
@@ -25,7 +26,7 @@ export interface WorkedResult {
   readonly working: string;
   readonly source: string;
   /** What is bad about the value, where something is. */
-  readonly warning?: string;
+  readonly mark?: CellMark;
 }
 
 export interface ResultGroup {
@@ -78,7 +79,10 @@ function asAsked({ inputs, stack, outward, inward }: WireFigures): readonly Work
       source: `${limitSource(inward)}${over > 0 ? `; ${fragmentSources[outward.outerIpVersion]}` : ''}`,
       ...(over > 0
         ? {
-            warning: `Hosts may send ${inward.largestInnerPacketBytes} B at most, or the transport has to carry ${outer} B.`,
+            mark: {
+              severity: 'blocking',
+              sentence: `Hosts may send ${inward.largestInnerPacketBytes} B at most, or the transport has to carry ${outer} B.`,
+            },
           }
         : {}),
     },
@@ -105,7 +109,10 @@ function whole({ stack, inward, innerIpVersion }: WireFigures): readonly WorkedR
       ...(settings.ipv6MinimumMet
         ? {}
         : {
-            warning: `IPv6 needs ${SMALLEST_LINK_MTU_BYTES.ipv6} B on every link (RFC 8200 section 5): this segment cannot carry it.`,
+            mark: {
+              severity: 'degrading',
+              sentence: `IPv6 needs ${SMALLEST_LINK_MTU_BYTES.ipv6} B on every link (RFC 8200 section 5): this segment cannot carry it.`,
+            },
           }),
     },
     {
@@ -155,8 +162,8 @@ function onTheLink(figures: WireFigures): readonly WorkedResult[] {
     {
       label: 'Hosts’ packets',
       value: rateAtMost(capacity.innerRateBps),
-      working: `${groupedNumber(capacity.innerRateBps)} bit/s of inner IP packets; ${shareAtMost(capacity.sharePerMillion)} of ${groupedNumber(capacity.barePacketsPerSecond)} packets per s without the stack`,
-      source: 'Frames times their inner packets',
+      working: `${link} × ${groupedNumber(sent.innerBytes)} / ${groupedNumber(sent.wireBytes)}; ${groupedNumber(capacity.barePacketsPerSecond)} packets per s pass without the stack, ${shareAtMost(capacity.sharePerMillion)} of them with it`,
+      source: 'Inner packets over their time on the wire, RFC 2544 appendix B',
     },
   ];
   if (goodput !== undefined) {

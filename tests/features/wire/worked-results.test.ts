@@ -32,7 +32,10 @@ describe('1500 B in VXLAN, AES-GCM tunnel mode, MTU 1500', () => {
     expect(results['In the transport']).toMatchObject({
       value: '104 B over',
       working: '1604 − 1500 = 104; cut, it would be 1500 + 124',
-      warning: 'Hosts may send 1396 B at most, or the transport has to carry 1604 B.',
+      mark: {
+        severity: 'blocking',
+        sentence: 'Hosts may send 1396 B at most, or the transport has to carry 1604 B.',
+      },
     });
   });
 
@@ -111,8 +114,8 @@ test('access overhead is named as what limits, and counted in the payload that t
 
 test('a host MTU under 1280 is said to be too small for IPv6', () => {
   const results = resultsFor({ mtu: '1280', packet: '1000' });
-  expect(results['Host and gateway MTU']?.warning).toMatch(/^IPv6 needs 1280 B on every link/);
-  expect(resultsFor()['Host and gateway MTU']).not.toHaveProperty('warning');
+  expect(results['Host and gateway MTU']?.mark?.sentence).toMatch(/^IPv6 needs 1280 B on every link/);
+  expect(resultsFor()['Host and gateway MTU']).not.toHaveProperty('mark');
 });
 
 test('a mix is counted by its packets, and its source is told', () => {
