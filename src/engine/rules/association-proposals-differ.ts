@@ -69,12 +69,8 @@ const messages = {
   },
   severalParts: {
     words: 'proposals differ',
-    sentence: (v: {
-      readonly layer: string;
-      readonly parts: string;
-      readonly placeA: string;
-      readonly placeB: string;
-    }) => `${v.layer} ${v.parts} differ at ${v.placeA} and ${v.placeB}`,
+    sentence: (v: { readonly layer: string; readonly parts: string }) =>
+      `${v.layer} ${v.parts} differ between the ends`,
   },
   noWhole: {
     words: 'proposals differ',
@@ -113,7 +109,11 @@ export const associationProposalsDiffer = defineRule({
         if (first === undefined) return [{ message: 'noWhole', values: shared, ...body }];
         if (more.length > 0)
           return [
-            { message: 'severalParts', values: { ...shared, parts: listed(agreement.parts) }, ...body },
+            {
+              message: 'severalParts',
+              values: { layer: layerName[layer], parts: listed(agreement.parts) },
+              ...body,
+            },
           ];
         return [
           {

@@ -11,7 +11,6 @@ import {
   passesFamily,
   protocolFrames,
 } from './protocol-frames.ts';
-import { listed } from './wording.ts';
 
 interface Missing {
   readonly packets: string;
@@ -56,7 +55,7 @@ export const policyDropsAddressResolution = defineRule({
         readonly place: string;
         readonly packets: string;
         readonly resolution: string;
-      }) => `${v.forwarder} at ${v.place} permits ${v.packets}, but no ${v.resolution}`,
+      }) => `${v.forwarder} at ${v.place} permits ${v.packets} without ${v.resolution}`,
     },
   },
   check: (network) =>
@@ -71,7 +70,7 @@ export const policyDropsAddressResolution = defineRule({
             forwarder: each.forwarder.name,
             place: siteNameOf(network.design, each.forwarder.device),
             packets: missing.length === 2 ? 'IP' : missing[0]!.packets,
-            resolution: listed(missing.map(({ resolution }) => resolution)),
+            resolution: missing.map(({ resolution }) => resolution).join(' or '),
           },
           elements: [ref],
           properties: [{ ref, path: ['policy'] }],
@@ -86,7 +85,7 @@ export const policyDropsAddressResolution = defineRule({
       {
         id: 'permit',
         label: 'Permit it first',
-        sentence: `Permits ${fault.values.resolution} both ways before all other rules of ${fault.values.forwarder}.`,
+        sentence: `Permits ${fault.values.resolution.replace(' or ', ' and ')} both ways before all other rules of ${fault.values.forwarder}.`,
         patch: {
           forwarders: {
             [id]: {

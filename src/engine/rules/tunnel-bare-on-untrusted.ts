@@ -51,6 +51,7 @@ const newAssociation = (network: Network, id: string): Fix[] => {
     liveness: usualLiveness,
     perfectForwardSecrecy: true,
     mode: 'tunnel',
+    whenDown: 'drop',
   });
   const association = freeAssociationId(network, `as-${devices.a}-${devices.b}`);
   return [

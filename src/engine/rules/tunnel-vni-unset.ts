@@ -15,7 +15,7 @@ const messages = {
       readonly vni: number;
       readonly place: string;
       readonly other: string;
-    }) => `${v.tunnel} has VNI ${v.vni} at ${v.other} and none at ${v.place} yet`,
+    }) => `VNI ${v.vni} at ${v.other}, none yet at ${v.place}`,
   },
 };
 

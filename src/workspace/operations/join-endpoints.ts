@@ -129,6 +129,7 @@ const usualEnd = (start: 'starts' | 'answers'): Omit<AssociationEnd, 'device'> =
     extendedSequence: true,
     mode: 'tunnel',
     outerDf: 'set',
+    whenDown: 'drop',
   };
 };
 

@@ -70,7 +70,7 @@ testRule(associationProposalsDiffer, {
           fixes: ['Add 256-bit keys at Head office', 'Add 128-bit keys at Gullhaven'],
         },
         {
-          sentence: 'IKE pseudorandom function and group differ at Head office and Gullhaven',
+          sentence: 'IKE pseudorandom function and group differ between the ends',
           fixes: ['Add HMAC-SHA2-512 at Gullhaven', 'Add HMAC-SHA2-256 at Head office'],
         },
       ],

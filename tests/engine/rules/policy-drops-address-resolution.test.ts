@@ -21,7 +21,7 @@ testRule(policyDropsAddressResolution, {
       design: filtered([ipv4!, logTheRest]),
       findings: [
         {
-          sentence: 'br-110 at Gullhaven permits IPv4, but no ARP',
+          sentence: 'br-110 at Gullhaven permits IPv4 without ARP',
           words: 'resolution dropped',
           severity: 'blocking',
           elements: ['forwarders/br-s1-a'],
@@ -32,13 +32,13 @@ testRule(policyDropsAddressResolution, {
     },
     'ARP one way only': {
       design: filtered([permit({ frames: 'arp', direction: 'to-tunnel' }), ipv4!, logTheRest]),
-      findings: [{ sentence: 'br-110 at Gullhaven permits IPv4, but no ARP', fixes: ['Permit it first'] }],
+      findings: [{ sentence: 'br-110 at Gullhaven permits IPv4 without ARP', fixes: ['Permit it first'] }],
     },
     'IPv6 between subnets, which leaves out the groups of neighbour discovery': {
       design: filtered([permit({ frames: 'ipv6', destinations: ['2001:db8:110::/64'] }), logTheRest], both),
       findings: [
         {
-          sentence: 'br-110 at Gullhaven permits IPv6, but no neighbour discovery',
+          sentence: 'br-110 at Gullhaven permits IPv6 without neighbour discovery',
           fixes: ['Permit it first'],
         },
       ],
@@ -51,7 +51,7 @@ testRule(policyDropsAddressResolution, {
       ]),
       findings: [
         {
-          sentence: 'br-110 at Gullhaven permits IP, but no ARP and neighbour discovery',
+          sentence: 'br-110 at Gullhaven permits IP without ARP or neighbour discovery',
           fixes: ['Permit it first'],
         },
       ],

@@ -10,7 +10,8 @@ testRule(tunnelUdpPortMismatch, {
   accepted: {
     'the assigned port at both ends': withPorts(4789, 4789),
     'another port at both ends': withPorts(8472, 8472),
-    'an end whose port is not known': withPorts(8472, null),
+    'an end whose port is not known beside the assigned one': withPorts(4789, null),
+    'ports of which none is known': withPorts(null, null),
   },
   rejected: {
     'an older port at one end': {
@@ -33,6 +34,18 @@ testRule(tunnelUdpPortMismatch, {
         {
           sentence: 'UDP port 8472 at Head office, 8473 at Gullhaven',
           fixes: ['Set both ends to 4789', 'Set Gullhaven to 8472', 'Set Head office to 8473'],
+        },
+      ],
+    },
+    'another port beside an end of which nothing is known': {
+      design: withPorts(null, 8472),
+      findings: [
+        {
+          sentence: 'UDP port 8472 at Gullhaven, not stated at Head office',
+          words: 'UDP port unstated',
+          severity: 'advisory',
+          properties: [`tunnels/${id}: a.udpPort`],
+          fixes: ['Set Head office to 8472'],
         },
       ],
     },

@@ -24,7 +24,7 @@ testRule(tunnelVniUnset, {
       design: changed(pairDesign(), { tunnels: { [id]: { b: { vni: null } } } }),
       findings: [
         {
-          sentence: 'tn-s0-s1-a has VNI 10000 at Head office and none at Gullhaven yet',
+          sentence: 'VNI 10000 at Head office, none yet at Gullhaven',
           properties: [`tunnels/${id}: b.vni`],
           fixes: ['Set both ends to 10000'],
         },
