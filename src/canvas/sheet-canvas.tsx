@@ -3,7 +3,6 @@ import {
   ReactFlow,
   SelectionMode,
   useReactFlow,
-  useStore,
   type Connection,
   type EdgeChange,
   type FinalConnectionState,
@@ -11,7 +10,6 @@ import {
 } from '@xyflow/react';
 import {
   useCallback,
-  useEffect,
   useMemo,
   useRef,
   useState,
@@ -22,7 +20,6 @@ import {
 import { showToast } from '../components/toast.tsx';
 import type { Decorations, Tone } from '../drawing/decorations.ts';
 import { elementKey } from '../drawing/decorations.ts';
-import type { SheetFrame } from '../drawing/geometry.ts';
 import { levelOf, type Level } from '../drawing/parts/level-of-detail.ts';
 import type { ElementRef } from '../engine/model/design.ts';
 import type { MergePatch } from '../engine/model/merge-patch.ts';
@@ -41,7 +38,9 @@ import { endAt, isJoining, placePart, type TrayPart } from './place-part.ts';
 import { PullLine } from './pull-line.tsx';
 import { readPartDrag } from './parts-tray/part-drag.ts';
 import { refAt } from './ref-at.ts';
-import { useView, zoomLimits, type View } from './use-view.ts';
+import { CrowdedNotice, SheetHint } from './sheet-hints.tsx';
+import { useKeptFit } from './use-kept-fit.ts';
+import { useView, zoomLimits } from './use-view.ts';
 
 interface SheetCanvasProps {
   /** What features want shown on top of the drawing. */
@@ -63,30 +62,6 @@ const useLevel = (zoom: number): Level => {
   return next;
 };
 
-/** Fits the sheet when it is opened, and again when the room for it changes while nobody has moved over it. */
-const useKeptFit = (sheet: SheetFrame, view: View): void => {
-  const width = useStore((state) => state.width);
-  const height = useStore((state) => state.height);
-  const latest = useRef({ sheet, view });
-  const fittedBefore = useRef(false);
-  useEffect(() => {
-    latest.current = { sheet, view };
-  });
-  useEffect(() => {
-    if (width === 0 || height === 0 || !useDesk.getState().fitted) return;
-    const fit = (): void => {
-      if (!useDesk.getState().fitted) return;
-      latest.current.view.fit(latest.current.sheet, fittedBefore.current);
-      fittedBefore.current = true;
-    };
-    // Not under a hand that drags something.
-    const held = document.querySelector('.react-flow__node.dragging, .react-flow__connection') !== null;
-    if (!held) return fit();
-    window.addEventListener('pointerup', fit, { once: true });
-    return () => window.removeEventListener('pointerup', fit);
-  }, [width, height, sheet.width, sheet.height]);
-};
-
 const tonesWith = (decorations: Decorations, selection: readonly ElementRef[]): Decorations => {
   if (selection.length === 0) return decorations;
   const tones: { [key: string]: readonly Tone[] } = { ...decorations.tones };
@@ -100,7 +75,7 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
   const design = useOpenState((state) => state.document);
   const editable = useOpenState((state) => state.editable);
   const selection = useOpenState((state) => state.selection);
-  const { geometry, settled, facts, drag, setDrag, preview, shown } = useDrawn();
+  const { geometry, settled, facts, drag, setDrag, shown } = useDrawn();
   const flow = useReactFlow<FlowNode, FlowEdge>();
   const view = useView();
   const level = useLevel(view.zoom);
@@ -299,12 +274,6 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
 
   useKeptFit(geometry.sheet, view);
 
-  const hint =
-    placing !== undefined
-      ? placingHint(placing, firstEnd !== undefined)
-      : preview !== undefined
-        ? 'The sheet as this fix would leave it.'
-        : undefined;
   return (
     <DrawingContext value={drawing}>
       {/* The parts inside take focus and keys themselves; this only catches what passes through. */}
@@ -360,41 +329,8 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
           aria-label={`Sheet of ${design.meta.title}`}
         />
         <CrowdedNotice />
-        {hint !== undefined && (
-          <p className="sheet-hint" role="status">
-            {hint}
-          </p>
-        )}
+        <SheetHint />
       </div>
     </DrawingContext>
   );
 }
-
-/** Said while cords found no way or no room where things stand now. */
-function CrowdedNotice() {
-  const { settled } = useDrawn();
-  const editable = useOpenState((state) => state.editable);
-  const tight = settled.crowded.filter((entry) => entry.what !== 'text').length;
-  if (tight === 0) return null;
-  return (
-    <p className="crowded-notice" role="status">
-      {tight === 1 ? 'One line finds no room here.' : `${tight} lines find no room here.`}
-      {editable && ' Move things apart, or let Tidy lay the sheet out.'}
-    </p>
-  );
-}
-
-const placingHint = (part: TrayPart, hasFirst: boolean): string => {
-  if (part === 'tunnel')
-    return hasFirst ? 'Now the ring at the other end. Esc stops.' : 'Pick the ring at one end. Esc stops.';
-  if (part === 'association')
-    return hasFirst
-      ? 'Now the gateway at the other end. Esc stops.'
-      : 'Pick the gateway at one end. Esc stops.';
-  if (part === 'cable')
-    return hasFirst
-      ? 'Now the port, device or transport at the other end. Esc stops.'
-      : 'Pick a port or a device. Esc stops.';
-  if (part === 'endpoint') return 'Click a firewall, an HA pair or a router. Esc stops.';
-  return 'Click where it is to stand. Esc stops.';
-};
