@@ -79,6 +79,7 @@ import { selectorsLoseFragments } from './selectors-lose-fragments.ts';
 import { snoopingWithoutQuerier } from './snooping-without-querier.ts';
 import { stormAnyToAnyMesh } from './storm-any-to-any-mesh.ts';
 import { stormCustomerCable } from './storm-customer-cable.ts';
+import { stormLimitTooLow } from './storm-limit-too-low.ts';
 import { stormLocal } from './storm-local.ts';
 import { subnetInTwoSegments } from './subnet-in-two-segments.ts';
 import { switchSingleHomed } from './switch-single-homed.ts';
@@ -184,6 +185,7 @@ export const rules: readonly Rule[] = [
   snoopingWithoutQuerier,
   stormAnyToAnyMesh,
   stormCustomerCable,
+  stormLimitTooLow,
   stormLocal,
   subnetInTwoSegments,
   switchSingleHomed,

@@ -1,43 +1,8 @@
-import { expectedForwarding } from '../flood/expected-forwarding.ts';
-import { portKey, type Network } from '../network/network.ts';
 import { segmentPathFacts } from './carried-segments.ts';
 import { defineRule } from './define-rule.ts';
+import { limitedPorts } from './hosts-behind-port.ts';
 import { portLabel } from './port-label.ts';
 import { counted } from './wording.ts';
-
-interface LimitedPort {
-  readonly device: string;
-  readonly port: string;
-  readonly limit: number;
-}
-
-const limitedPorts = ({ design, deviceIds }: Network): readonly LimitedPort[] =>
-  deviceIds.flatMap((device) =>
-    Object.keys(design.devices[device]!.ports)
-      .sort()
-      .flatMap((port) => {
-        const limit = design.devices[device]!.ports[port]!.macLimit;
-        return limit === undefined ? [] : [{ device, port, limit }];
-      }),
-  );
-
-/** Hosts of the design whose MAC addresses the port learns: those behind a gateway's circuits, or plugged into a switch's port. */
-const hostsBehind = (network: Network, { device, port }: LimitedPort): ReadonlySet<string> => {
-  const { design } = network;
-  const hosts = new Set<string>();
-  for (const { forwarder, id, circuit } of network.circuitsByPort.get(portKey(device, port)) ?? []) {
-    if (circuit.kind !== 'port') continue;
-    const learned = expectedForwarding(network, forwarder).find((each) => each.circuit === id);
-    for (const host of learned?.hosts ?? []) hosts.add(host);
-  }
-  for (const { cable, end } of network.cablesByPort.get(portKey(device, port)) ?? []) {
-    const link = design.links[cable]!;
-    if (link.kind !== 'cable') continue;
-    const far = link[end === 'a' ? 'b' : 'a'].device;
-    if (design.devices[far]!.kind === 'host') hosts.add(far);
-  }
-  return hosts;
-};
 
 // Common practice, no source: room for half as many again.
 const roomFor = (hosts: number): number => Math.ceil(1.5 * hosts);
@@ -62,8 +27,8 @@ export const macLimitTooLow = defineRule({
   },
   check: (network) => {
     const { design } = network;
-    return limitedPorts(network).flatMap((each) => {
-      const hosts = hostsBehind(network, each).size;
+    return limitedPorts(network, 'macLimit').flatMap((each) => {
+      const { hosts } = each;
       if (hosts <= each.limit) return [];
       const ref = { collection: 'devices', id: each.device, port: each.port } as const;
       return [

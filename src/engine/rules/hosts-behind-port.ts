@@ -1,0 +1,41 @@
+import { expectedForwarding } from '../flood/expected-forwarding.ts';
+import { portKey, type Network } from '../network/network.ts';
+
+/** Hosts of the design whose frames a port takes in: those behind a gateway's circuits, or plugged into a switch's port. */
+export const hostsBehindPort = (network: Network, device: string, port: string): ReadonlySet<string> => {
+  const { design } = network;
+  const hosts = new Set<string>();
+  for (const { forwarder, id, circuit } of network.circuitsByPort.get(portKey(device, port)) ?? []) {
+    if (circuit.kind !== 'port') continue;
+    const learned = expectedForwarding(network, forwarder).find((each) => each.circuit === id);
+    for (const host of learned?.hosts ?? []) hosts.add(host);
+  }
+  for (const { cable, end } of network.cablesByPort.get(portKey(device, port)) ?? []) {
+    const link = design.links[cable]!;
+    if (link.kind !== 'cable') continue;
+    const far = link[end === 'a' ? 'b' : 'a'].device;
+    if (design.devices[far]!.kind === 'host') hosts.add(far);
+  }
+  return hosts;
+};
+
+/** A port with a limit of some kind, and the hosts behind it. */
+export interface LimitedPort {
+  readonly device: string;
+  readonly port: string;
+  readonly limit: number;
+  readonly hosts: number;
+}
+
+/** Ports on which a limit is set that counts hosts or their frames, in order of device and port. */
+export const limitedPorts = (network: Network, field: 'macLimit' | 'stormLimitPps'): readonly LimitedPort[] =>
+  network.deviceIds.flatMap((device) =>
+    Object.keys(network.design.devices[device]!.ports)
+      .sort()
+      .flatMap((port) => {
+        const limit = network.design.devices[device]!.ports[port]![field];
+        return limit === undefined
+          ? []
+          : [{ device, port, limit, hosts: hostsBehindPort(network, device, port).size }];
+      }),
+  );
