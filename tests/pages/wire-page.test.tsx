@@ -81,7 +81,7 @@ describe('what is typed and chosen', () => {
     expect(verdict()).toHaveTextContent('1388 B is the largest');
     await user.selectOptions(screen.getByRole('combobox', { name: 'Integrity' }), 'HMAC-SHA2-512-256');
     expect(verdict()).toHaveTextContent('1372 B is the largest');
-    expect(presets).toHaveDisplayValue('a stack of its own');
+    expect(presets).toHaveDisplayValue('your own combination');
   });
 
   it('takes along the integrity that a transform needs, and leaves it off where none goes with it', async () => {

@@ -261,7 +261,7 @@ function Pipe({
   );
 }
 
-/** Over the hatching of the payload; where that is too short to be seen beneath, before the pipe's end. */
+/** Over the hatching of the payload; where that is too short to be seen beneath, at the payload's end. */
 function OverLabel({
   text,
   from,
@@ -274,7 +274,7 @@ function OverLabel({
   readonly y: number;
 }) {
   const width = textWidth(text, numberSizePx, 600) + 14;
-  const x = to - from >= width + 8 ? (from + to - width) / 2 : from - width - 7;
+  const x = to - from >= width + 8 ? (from + to - width) / 2 : Math.min(from - 7, to) - width;
   return (
     <>
       <rect x={x} y={y} width={width} height={BAR_PX - 6} rx={2} fill={paint('red')} />

@@ -1,6 +1,6 @@
-const grouped = new Intl.NumberFormat('en-GB');
+const grouped = new Intl.NumberFormat('en-GB', { useGrouping: 'min2' });
 
-/** A number with its thousands apart. */
+/** A number with its thousands apart, from 10,000 on: lengths in bytes stay as they are written elsewhere. */
 export const groupedNumber = (value: number): string => grouped.format(value);
 
 const units = [

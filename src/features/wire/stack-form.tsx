@@ -38,7 +38,7 @@ export function StackForm(form: FormProps) {
           label="Start from"
           span={2}
           value={presetOf(texts)?.id ?? ''}
-          placeholder="a stack of its own"
+          placeholder="your own combination"
           options={stackPresets.map(({ id, label }) => ({ value: id, label }))}
           onChange={(id) => {
             const preset = stackPresets.find((each) => each.id === id);
@@ -79,8 +79,8 @@ const sizesByLetter = Object.entries(mixLetterFrameBytes).map(([letter, bytes]) 
 
 /** What a mix consists of, said beneath its cell. */
 const mixHints: Readonly<Record<string, string>> = {
-  imix: `${simpleImix.map(({ ipBytes, weight }) => `${weight} of ${ipBytes} B`).join(', ')}, IP headers included: common practice, no source.`,
-  letters: `Frames in bytes: ${sizesByLetter.join(', ')}; z is as long as the host MTU allows. RFC 6985 section 4.`,
+  imix: `Simple IMIX is ${simpleImix.map(({ ipBytes, weight }) => `${weight} of ${ipBytes} B`).join(', ')}, IP headers included: common practice, no source.`,
+  letters: `Mix letters are frames of so many bytes: ${sizesByLetter.join(', ')}; z is as long as the host MTU allows. RFC 6985 section 4.`,
 };
 
 function EspCells(form: FormProps) {

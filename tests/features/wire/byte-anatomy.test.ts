@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { layOutAnatomy } from '../../../src/features/wire/anatomy-geometry.ts';
+import { textWidth } from '#drawing/text-width.ts';
+import { layOutAnatomy, NAME_SIZE_PX } from '../../../src/features/wire/anatomy-geometry.ts';
 import { anatomyRows, type AnatomyRow } from '../../../src/features/wire/anatomy-rows.ts';
 import type { WireTexts } from '../../../src/features/wire/wire-fields.ts';
 import { figuresFor } from './wire-inputs.ts';
@@ -103,8 +104,15 @@ describe('the drawing', () => {
           expect(pipe === undefined || pipe.end > pipe.x).toBe(true);
           expect(barY + 24).toBeLessThanOrEqual(height);
         }
-        const places = names.map(({ x, y }) => `${Math.round(x / 8)} ${y}`);
-        expect(new Set(places).size).toBe(places.length);
+        const spans = names.map(({ text, x, y }) => {
+          const half = textWidth(text, NAME_SIZE_PX, 500) / 2;
+          return { y, from: x - half, to: x + half };
+        });
+        for (const [at, one] of spans.entries()) {
+          expect(one.y).toBeGreaterThan(0);
+          const beside = spans.slice(at + 1).filter(({ y }) => y === one.y);
+          expect(beside.filter(({ from, to }) => from < one.to && one.from < to)).toEqual([]);
+        }
       }),
       { numRuns: 60 },
     );

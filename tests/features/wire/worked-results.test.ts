@@ -121,12 +121,10 @@ test('a host MTU under 1280 is said to be too small for IPv6', () => {
 test('a mix is counted by its packets, and its source is told', () => {
   const imix = resultsFor({ mix: 'imix' })['Frames'];
   // 7 × 40, 4 × 576 and, in place of 1500, 1396: 7 × 190 (frames padded) + 4 × 718 + 1538 B on the wire.
-  expect(imix?.working).toBe(
-    '1,000,000,000 / (8 × 5,740 B of 12 packets) × 12; sizes over 1396 sent at that',
-  );
+  expect(imix?.working).toBe('1,000,000,000 / (8 × 5740 B of 12 packets) × 12; sizes over 1396 sent at that');
   expect(imix?.source).toMatch(/common practice, no source$/);
   const letters = resultsFor({ mix: 'letters', letters: 'zz' })['Frames'];
-  expect(letters?.working).toBe('1,000,000,000 / (8 × 3,076 B of 2 packets) × 2');
+  expect(letters?.working).toBe('1,000,000,000 / (8 × 3076 B of 2 packets) × 2');
   expect(letters?.source).toBe('RFC 2544 appendix B; RFC 6985 section 4');
 });
 
