@@ -23,7 +23,8 @@ const tagCount = (crossing: Crossing): TagCount => tagList(crossing.tags).length
 const crossCable = ({ network, frame }: Following, crossing: Crossing, bytesOf: BytesOf): Crossed => {
   const { step, from, to, ref } = namesOf(network, crossing);
   const bundle = network.bundles[crossing.element]!;
-  const bytes = bytesOf({ ...bareStack, outerTags: tagCount(crossing) });
+  const outerTags = tagCount(crossing);
+  const bytes = bytesOf(`cable ${outerTags}`, { ...bareStack, outerTags });
   const ports = (crossing.direction === 0 ? [bundle.a, bundle.b] : [bundle.b, bundle.a]).map((group) => ({
     device: group.device,
     port: group.port,
@@ -114,7 +115,7 @@ const crossTunnel = (following: Following, crossing: Crossing, bytesOf: BytesOf)
     return { ...base, facts: [], end: atSender ?? dropped({ code: 'tunnel-down', tunnel: ref.id, reasons }) };
 
   const { stack } = pipe;
-  const bytes = stack === undefined ? undefined : bytesOf(stack);
+  const bytes = stack === undefined ? undefined : bytesOf(pipe.stackKey, stack);
   const { transport } = pipe.path;
   if (bytes === undefined)
     assume(

@@ -9,11 +9,10 @@ type Bytes = Omit<HopWire, 'mtuBytes'> & { readonly outerIpVersion: 'ipv4' | 'ip
 const withoutIp = (layer: Layer): Layer =>
   layer.id === 'inner-packet' ? { ...layer, name: 'Payload of the host' } : layer;
 
-/** Computes the bytes of one frame on any wire, each stack once; undefined for packets that no length field can name. */
-export const bytesOnWire = (frame: TracedFrame): ((stack: Stack) => Bytes | undefined) => {
+/** Computes the bytes of one frame in any stack, once for all stacks of one key; undefined for packets that no length field can name. */
+export const bytesOnWire = (frame: TracedFrame): ((key: string, stack: Stack) => Bytes | undefined) => {
   const known = new Map<string, Bytes | undefined>();
-  return (stack) => {
-    const key = JSON.stringify(stack);
+  return (key, stack) => {
     if (known.has(key)) return known.get(key);
     const answer = stackLayers({
       innerPacketBytes: frame.payloadBytes,

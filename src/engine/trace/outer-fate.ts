@@ -1,6 +1,6 @@
 import type { Id } from '../model/scalars.ts';
 import type { End, Network } from '../network/network.ts';
-import { deviceOfTunnelEnd, entryOf } from '../network/network.ts';
+import { deviceOfTunnelEnd, entryOf, perNetwork } from '../network/network.ts';
 import { associationEndOf } from '../network/selectors-cover.ts';
 import type { Fragment } from '../wire/fragments-of.ts';
 import { fragmentsOf } from '../wire/fragments-of.ts';
@@ -74,14 +74,24 @@ const outermostDf = (
   return { of: 'esp', isSet: outerDf !== 'clear' };
 };
 
-const largestThrough = (outer: OuterPacket, frame: TracedFrame): number => {
-  const answer = largestInnerPacket({
-    transportMtuBytes: outer.mtuBytes,
-    innerIpVersion: frame.ipVersion ?? 'ipv4',
-    // The access overhead is taken from the pipe's MTU already.
-    stack: { ...outer.stack, accessOverhead: 'none' },
-  });
-  return answer.ok ? answer.largestInnerPacketBytes : 0;
+const largestKnown = perNetwork((_network) => new Map<string, number>());
+
+const largestThrough = (
+  network: Network,
+  { pipe, stack, mtuBytes }: OuterPacket,
+  frame: TracedFrame,
+): number => {
+  const known = largestKnown(network);
+  const innerIpVersion = frame.ipVersion ?? 'ipv4';
+  const key = `${mtuBytes} ${innerIpVersion} ${pipe.stackKey}`;
+  const before = known.get(key);
+  if (before !== undefined) return before;
+  // The access overhead is taken from the pipe's MTU already.
+  const bare: Stack = { ...stack, accessOverhead: 'none' };
+  const answer = largestInnerPacket({ transportMtuBytes: mtuBytes, innerIpVersion, stack: bare });
+  const largestBytes = answer.ok ? answer.largestInnerPacketBytes : 0;
+  known.set(key, largestBytes);
+  return largestBytes;
 };
 
 /** What the host hears of a packet that is dropped: nothing, unless its packet can't be cut and the gateway speaks up. */
@@ -155,7 +165,7 @@ export const outerFate = (
       where,
       packetBytes: outer.packetBytes,
       mtuBytes: outer.mtuBytes,
-      largestBytes: largestThrough(outer, frame),
+      largestBytes: largestThrough(network, outer, frame),
       answer: answerTo(network, outer, frame, habit),
       because: isV6 ? 'outer-ipv6' : 'df-set',
       ...(df === undefined ? {} : { df: df.of }),

@@ -83,8 +83,8 @@ const copiesByRound = (
 
 /** The storm that a frame gets into, and how the number of its copies grows from round to round; undefined without one. */
 export const stormGrowth = (graph: CrossingGraph): TraceStorm | undefined => {
+  if (graph.copies.size === graph.hops.size) return undefined;
   const inside = returning(graph);
-  if (inside.size === 0) return undefined;
   let cycle: readonly number[] | undefined;
   for (const start of [...inside].slice(0, startsTried)) {
     const found = cycleThrough(graph, start, inside);

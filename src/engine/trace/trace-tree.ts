@@ -10,8 +10,8 @@ import type { Trace, TraceStep, Verdict } from './trace.ts';
 import type { Names } from './trace-words.ts';
 import { decisionWords, reasonWords } from './trace-words.ts';
 
-/** Beyond this many hops a way that is followed already isn't followed again; every way is followed once. */
-export const mostRepeatedSteps = 2_000;
+/** Beyond this many hops no copy is listed that takes a way which is followed already; every way is followed once. */
+export const mostRepeatedSteps = 1_000;
 
 interface TreeContext {
   readonly names: Names;
@@ -22,6 +22,8 @@ interface TreeContext {
 interface Open {
   readonly hop: Hop;
   readonly parent: number;
+  /** The hop that takes the same way already; this one is a leaf then. */
+  readonly again?: number;
 }
 
 /** The hops of every copy, nearest first. In a storm, and where copies are very many, each way is followed once. */
@@ -96,41 +98,60 @@ export const traceTree = (
       ...(explains.length === 0 ? {} : { explains }),
     };
   };
+  const keyOf = ({ crossing }: Hop): number | undefined =>
+    crossing === undefined ? undefined : crossingKey(crossing);
+  const isEndless = (hop: Hop): boolean => {
+    const key = keyOf(hop);
+    return key !== undefined && !graph.copies.has(key);
+  };
+  const targetsOf = (hop: Hop): readonly number[] => {
+    const key = keyOf(hop);
+    return key === undefined ? graph.starts : graph.next.get(key)!;
+  };
   const add = (hop: Hop, parent: number, verdict: Verdict | undefined): void => {
     const { crossing, step, from, to, elements, facts, wire, pieces } = hop;
-    steps.push({
+    // Built field by field: traces of large designs have a thousand of these.
+    const added: { -readonly [field in keyof TraceStep]: TraceStep[field] } = {
       index: steps.length,
-      ...(parent < 0 ? {} : { parent }),
-      ...(from === undefined ? {} : { from }),
-      ...(to === undefined ? {} : { to }),
       elements,
-      ...(step === undefined ? {} : { crossing: step }),
       tags: tagsOf(crossing),
-      ...(crossing === undefined || crossing.hopLimit === 0 ? {} : { hopLimit: crossing.hopLimit }),
       decisions: facts.map((fact) => ({ ...fact, words: decisionWords(names, fact) })),
-      ...(wire === undefined ? {} : { wire }),
-      ...(pieces === undefined ? {} : { pieces }),
-      ...(verdict === undefined ? {} : { verdict }),
-    });
+    };
+    if (parent >= 0) added.parent = parent;
+    if (from !== undefined) added.from = from;
+    if (to !== undefined) added.to = to;
+    if (step !== undefined) added.crossing = step;
+    if (crossing !== undefined && crossing.hopLimit > 0) added.hopLimit = crossing.hopLimit;
+    if (wire !== undefined) added.wire = wire;
+    if (pieces !== undefined) added.pieces = pieces;
+    if (verdict !== undefined) added.verdict = verdict;
+    steps.push(added);
   };
 
+  // A hop's place in the queue is its index, since each becomes one step.
   const queue: Open[] = [{ hop: source, parent: -1 }];
-  for (let i = 0; i < queue.length; i += 1) {
-    const { hop, parent } = queue[i]!;
-    const index = steps.length;
-    const key = hop.crossing === undefined ? undefined : crossingKey(hop.crossing);
-    const before = key === undefined ? undefined : first.get(key);
-    const isEndless = key !== undefined && !graph.copies.has(key);
-    if (before !== undefined && (isEndless || index >= mostRepeatedSteps)) {
-      add(hop, parent, againVerdict(before, parent, isEndless));
+  for (let index = 0; index < queue.length; index += 1) {
+    const { hop, parent, again } = queue[index]!;
+    if (again !== undefined) {
+      add(hop, parent, againVerdict(again, parent, isEndless(hop)));
       continue;
     }
-    if (key !== undefined && before === undefined) first.set(key, index);
-    add(hop, parent, verdictOf(hop, index, parent));
-    const targets = key === undefined ? graph.starts : hop.onward.map((crossing) => crossingKey(crossing));
-    for (const target of hop.end === undefined ? targets : [])
-      queue.push({ hop: graph.hops.get(target)!, parent: index });
+    let left: { readonly sameAs: number; readonly hop: Hop } | undefined;
+    const before = queue.length;
+    for (const target of hop.end === undefined ? targetsOf(hop) : []) {
+      const next = graph.hops.get(target)!;
+      const sameAs = first.get(target);
+      const isOpened = sameAs === undefined || (!isEndless(next) && queue.length < mostRepeatedSteps);
+      if (sameAs === undefined) first.set(target, queue.length);
+      if (isOpened) queue.push({ hop: next, parent: index });
+      else if (queue.length < mostRepeatedSteps) queue.push({ hop: next, parent: index, again: sameAs });
+      else left ??= { sameAs, hop: next };
+    }
     for (const stopped of hop.stopped) queue.push({ hop: stopped, parent: index });
+    const isLast = left !== undefined && queue.length === before;
+    add(hop, parent, verdictOf(hop, index, parent));
+    if (isLast)
+      steps[index] = { ...steps[index]!, verdict: againVerdict(left!.sameAs, index, isEndless(left!.hop)) };
   }
   return { steps, deliveries: deliveriesOf(source, graph, arrivals) };
 };

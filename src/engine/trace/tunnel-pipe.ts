@@ -10,6 +10,8 @@ import { tunnelStack } from '../wire/tunnel-stack.ts';
 
 /** What one end of a tunnel puts around a frame, and who meets the limit of the way to the other end. */
 export interface TunnelPipe extends TunnelStack {
+  /** The same for equal stacks: most tunnels of a design are built alike. */
+  readonly stackKey: string;
   /** The sending gateway at its own WAN port, or a router underway. */
   readonly limitedBy: 'gateway' | 'underway';
 }
@@ -23,7 +25,11 @@ const pipeOf = (network: Network, id: Id, from: End, innerTags: TagCount): Tunne
   // A port with access overhead in front of it is a plain Ethernet port unless it says otherwise.
   const payloadBytes = portMtu ?? (overheadBytes === 0 ? Infinity : bareStack.accessPayloadBytes);
   const isOwn = payloadBytes - overheadBytes <= (stack.mtuBytes ?? Infinity);
-  return { ...stack, limitedBy: isOwn ? 'gateway' : 'underway' };
+  return {
+    ...stack,
+    stackKey: JSON.stringify(stack.stack ?? null),
+    limitedBy: isOwn ? 'gateway' : 'underway',
+  };
 };
 
 const remembered = perNetwork((_network) => new Map<string, TunnelPipe | undefined>());
