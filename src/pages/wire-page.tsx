@@ -15,6 +15,7 @@ import { WireResults } from '../features/wire/wire-results.tsx';
 import { usePageTitle } from '../lib/page-title.ts';
 import { signInPath } from '../lib/return-path.ts';
 import { useSession } from '../lib/session.ts';
+import { useKeptFocus } from '../lib/use-kept-focus.ts';
 import { useSearchValues } from '../lib/use-search-values.ts';
 
 /** /wire?packet=…&mtu=…: what a packet becomes on the wire and what still fits, for anybody, without a design. */
@@ -23,6 +24,8 @@ export function WirePage() {
   const session = useSession();
   const { pathname, search } = useLocation();
   const { valueOf, change } = useSearchValues();
+  // Buttons go with what they were for.
+  useKeptFocus(search);
   const texts = textsFrom(valueOf);
   const read = readTexts(texts);
   const answer = read.ok ? wireFigures(read.inputs) : read;

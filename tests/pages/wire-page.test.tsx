@@ -101,6 +101,7 @@ describe('what is typed and chosen', () => {
     expect(address()).toBe('/wire?packet=1396');
     expect(verdict()).toHaveTextContent('Passes whole. 1500 B in 1500 B, 0 to spare');
     expect(screen.queryByRole('button', { name: /instead/ })).toBeNull();
+    expect(screen.getByRole('main')).toHaveFocus();
   });
 
   it('counts the bytes of an access link of which only the overhead is known', async () => {
