@@ -29,6 +29,13 @@ interface MenuProps {
   /** Stands above the groups; takes no part in the keyboard's way through the menu. */
   readonly heading?: ReactNode;
   readonly align?: 'start' | 'end';
+  /** For a menu that is opened from elsewhere as well, such as by the context-menu key of the row it belongs to. */
+  readonly opened?: {
+    readonly open: boolean;
+    readonly onOpenChange: (open: boolean) => void;
+    /** Takes the focus when the menu closes, in its button's place. */
+    readonly returnFocus: () => void;
+  };
 }
 
 const itemLook = classNames(
@@ -37,20 +44,25 @@ const itemLook = classNames(
 );
 
 /** A list of things to do that opens from a button. Groups are parted by a rule. */
-export function Menu({ trigger, groups, heading, align = 'start' }: MenuProps) {
+export function Menu({ trigger, groups, heading, align = 'start', opened }: MenuProps) {
   // Done once the menu has closed and the focus is back at its button: a dialog that it opens then knows where to
   // return to.
   const chosen = useRef<() => void>(undefined);
   return (
     // Not modal: a modal menu would put a style element into the page, which the content security policy refuses.
-    <Primitive.Root modal={false}>
+    <Primitive.Root modal={false} open={opened?.open} onOpenChange={opened?.onOpenChange}>
       <Primitive.Trigger asChild>{trigger}</Primitive.Trigger>
       <Primitive.Portal>
         <Primitive.Content
           align={align}
           sideOffset={5}
           collisionPadding={8}
-          onCloseAutoFocus={() => {
+          onCloseAutoFocus={(event) => {
+            // Somebody who pressed outside has the focus where they want it.
+            if (opened !== undefined && document.activeElement === document.body) {
+              event.preventDefault();
+              opened.returnFocus();
+            }
             chosen.current?.();
             chosen.current = undefined;
           }}

@@ -25,14 +25,17 @@ import type { Design } from '../engine/model/design.ts';
 import { parseDesign } from '../engine/model/parse-design.ts';
 import { countBySeverity } from '../engine/rules/run-rules.ts';
 import { rules } from '../engine/rules/index.ts';
-import { FindingsDrawer } from '../features/findings/findings-drawer.tsx';
+import { SheetDrawer } from '../features/drawer/sheet-drawer.tsx';
 import { findingItem } from '../features/findings/finding-words.ts';
 import { FindingsList } from '../features/findings/findings-list.tsx';
 import { useFindingDecorations } from '../features/findings/use-finding-decorations.ts';
 import { useFindingFixes } from '../features/findings/use-finding-fixes.ts';
+import { Outline } from '../features/outline/outline.tsx';
+import { createOutlineView } from '../features/outline/outline-view.ts';
 import { callApi } from '../lib/api-client.ts';
 import { asApiError } from '../lib/api-error.ts';
 import { usePageTitle } from '../lib/page-title.ts';
+import { useSearchValues } from '../lib/use-search-values.ts';
 import { ChecksProvider, useChecks } from '../workspace/checks-context.tsx';
 import { designServer } from '../workspace/design-server.ts';
 import { browserEditStorage } from '../workspace/edit-storage.ts';
@@ -40,6 +43,8 @@ import { openDesign, type OpenDesign } from '../workspace/open-design.ts';
 import { OpenDesignProvider, useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
 
 const phone = '(max-width: 767px)';
+// As they stand in the address; the first is open where it says nothing.
+const drawerTabs = ['findings', 'outline'] as const;
 
 /** Opens one design and lays out everything to work on it with: bar, tray, sheet, drawer, inspector. */
 export function SheetDesk({ designId }: { readonly designId: string }) {
@@ -152,6 +157,9 @@ function Surface() {
   const standing = useMemo(() => standingOf(settled), [settled]);
   const fixes = useFindingFixes();
   const [selectedKey, setSelectedKey] = useState<string | null>(null);
+  const [outline] = useState(createOutlineView);
+  const { valueOf, change } = useSearchValues();
+  const drawer = drawerTabs.find((tab) => tab === valueOf('drawer')) ?? 'findings';
   usePageTitle(title);
   useEffect(() => {
     if (anySelected) setInspecting(true);
@@ -208,8 +216,11 @@ function Surface() {
           onAcceptGhost={acceptGhost}
           onPickBalloon={(number) => findings[number - 1] !== undefined && select(findings[number - 1]!.key)}
         />
-        <FindingsDrawer
-          count={findings.length}
+        <SheetDrawer
+          value={drawer}
+          onChange={(tab) => change({ drawer: tab === 'findings' ? '' : tab })}
+          // With nothing to say at first it leaves its room to the sheet.
+          openAtFirst={findings.length > 0 || drawer !== 'findings'}
           counts={
             <SeverityCounts
               counts={countBySeverity(findings)}
@@ -217,23 +228,26 @@ function Surface() {
               clear={`All ${rules.length} checks pass`}
             />
           }
-        >
-          <FindingsList
-            findings={items}
-            selectedKey={selectedKey}
-            onSelect={select}
-            canFix={editable}
-            onApplyFix={apply}
-            onPreviewFix={(asked) =>
-              setPreview(
-                asked === null
-                  ? undefined
-                  : fixes.get(asked.findingKey)?.find((fix) => fix.id === asked.fixId)?.patch,
-              )
-            }
-            empty={`All ${rules.length} checks pass. They run again with every change.`}
-          />
-        </FindingsDrawer>
+          tabs={[
+            {
+              value: 'findings',
+              label: 'Findings',
+              count: findings.length,
+              usualHeightPx: 180,
+              panel: (
+                <FindingsList
+                  findings={items}
+                  selectedKey={selectedKey}
+                  onSelect={select}
+                  canFix={editable}
+                  onApplyFix={apply}
+                  empty={`All ${rules.length} checks pass. They run again with every change.`}
+                />
+              ),
+            },
+            { value: 'outline', label: 'Outline', usualHeightPx: 300, panel: <Outline view={outline} /> },
+          ]}
+        />
       </div>
       {inspecting && (
         <Inspector

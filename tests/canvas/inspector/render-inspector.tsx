@@ -35,7 +35,8 @@ const loggingServer = (): OpenDesignServer => {
   };
 };
 
-const openInMemory = (document: Design, editable: boolean): OpenDesign =>
+/** A design that is open, saved to a server in memory. */
+export const openInMemory = (document: Design, editable: boolean): OpenDesign =>
   openDesign({
     document,
     sequence: 0,

@@ -1,0 +1,211 @@
+import { useEffect, useLayoutEffect, useMemo, useReducer, useRef, useState, type KeyboardEvent } from 'react';
+import { standingOf } from '../../canvas/flow-changes-to-patch.ts';
+import { useDrawn } from '../../canvas/geometry-context.tsx';
+import { elementKey } from '../../drawing/decorations.ts';
+import type { ElementRef } from '../../engine/model/design.ts';
+import { useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
+import { lineId, type LineTools } from './outline-line.tsx';
+import type { OutlineRow } from './outline-row.ts';
+import { setFilter, setOpenings, type OutlineViewStore } from './outline-view.ts';
+import { namePathOf, rowMenu } from './row-menu.ts';
+import { neighbourOf, treeStep, type TreeStep } from './tree-keys.ts';
+import type { OutlineRows } from './use-outline-rows.ts';
+import { useRowActions } from './use-row-actions.ts';
+import { keyOfElement, keysAbove, type VisibleRow } from './visible-rows.ts';
+
+// As long as somebody takes between two letters of one name.
+const typingMs = 700;
+
+interface Tree {
+  readonly tools: LineTools;
+  readonly onKeyDown: (event: KeyboardEvent) => void;
+  readonly menuKey: string | undefined;
+  /** The row whose name is being changed, and where that is kept. */
+  readonly renaming: { readonly key: string; readonly path: readonly string[] } | undefined;
+}
+
+/** Lets keyboard and pointer work on the rows, and keeps selection, focus and what is in view together. */
+export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
+  const open = useOpenDesign();
+  const selection = useOpenState((state) => state.selection);
+  const { settled } = useDrawn();
+  const [menuKey, setMenuKey] = useState<string>();
+  const [renaming, setRenaming] = useState<Tree['renaming']>();
+  const { rows, at, roots } = shown;
+  const here = rows[at];
+  const hereKey = here?.row.key;
+
+  // The row has to be there before it can take the focus.
+  const wantsFocus = useRef(false);
+  const [, drawAgain] = useReducer((count: number) => count + 1, 0);
+  useLayoutEffect(() => {
+    if (!wantsFocus.current || hereKey === undefined) return;
+    wantsFocus.current = false;
+    document.getElementById(lineId(hereKey))?.focus();
+  });
+  useEffect(() => {
+    if (hereKey !== undefined) document.getElementById(lineId(hereKey))?.scrollIntoView({ block: 'nearest' });
+  }, [hereKey]);
+
+  const latest = useRef({ ...shown, settled });
+  useEffect(() => {
+    latest.current = { ...shown, settled };
+  });
+  /** The selection that the rows show already. */
+  const known = useRef<readonly ElementRef[]>([]);
+  const wasMade = useRef(false);
+
+  const move = useMemo(() => {
+    const focusCurrent = (): void => {
+      wantsFocus.current = true;
+      drawAgain();
+    };
+    const select = (refs: readonly ElementRef[]): void => {
+      known.current = refs;
+      open.select(refs);
+    };
+    /** To a row, with it alone selected, all from the anchor to it, or nothing changed. */
+    const goTo = ({ row }: VisibleRow, how: 'select' | 'extend' | 'only'): void => {
+      view.setState({ current: row.key });
+      focusCurrent();
+      if (how === 'only') return;
+      if (how === 'select') {
+        view.setState({ anchor: row.key });
+        return select(row.ref === undefined ? [] : [row.ref]);
+      }
+      const { rows } = latest.current;
+      const placeOfKey = (key: string | undefined): number => rows.findIndex((one) => one.row.key === key);
+      const [from, to] = [placeOfKey(view.getState().anchor), placeOfKey(row.key)].sort((a, b) => a - b) as [
+        number,
+        number,
+      ];
+      const refs = rows.slice(Math.max(from, 0), to + 1).flatMap((one) => one.row.ref ?? []);
+      select([...new Map(refs.map((ref) => [elementKey(ref), ref])).values()]);
+    };
+    const toggleSelection = ({ ref, key }: OutlineRow): void => {
+      view.setState({ anchor: key, current: key });
+      if (ref === undefined) return;
+      const { selection } = open.store.getState();
+      const without = selection.filter((one) => elementKey(one) !== elementKey(ref));
+      select(without.length < selection.length ? without : [...selection, ref]);
+    };
+    return { focusCurrent, goTo, toggleSelection };
+  }, [open, view]);
+
+  const actions = useRowActions({
+    startRenaming: (row) => {
+      const path = namePathOf(open.store.getState().document, row);
+      if (path === undefined) return;
+      view.setState({ current: row.key });
+      setRenaming({ key: row.key, path });
+    },
+    onMade: () => {
+      wasMade.current = true;
+      setFilter(view, '');
+    },
+    onRemoved: (row) => {
+      const next = neighbourOf(
+        rows,
+        rows.findIndex((one) => one.row.key === row.key),
+      );
+      if (next !== undefined) move.goTo(next, 'only');
+    },
+  });
+
+  // What was selected elsewhere is brought to light here.
+  useEffect(() => {
+    const [first] = selection;
+    if (first === undefined || selection === known.current) return;
+    const key = keyOfElement(roots, first);
+    // Not in the outline yet: the rows of a newer design are on their way.
+    if (key === undefined) return;
+    known.current = selection;
+    setOpenings(view, keysAbove(key), true);
+    view.setState({ current: key, anchor: key });
+    if (!wasMade.current) return;
+    wasMade.current = false;
+    move.focusCurrent();
+  }, [selection, roots, view, move]);
+
+  const tools = useMemo(
+    (): LineTools => ({
+      pick: (row, { extend, toggle }) => {
+        const visible = latest.current.rows.find((one) => one.row.key === row.key);
+        if (visible === undefined) return;
+        if (toggle) move.toggleSelection(row);
+        else move.goTo(visible, extend ? 'extend' : 'select');
+      },
+      focus: ({ key }) => {
+        if (view.getState().current !== key) view.setState({ current: key });
+      },
+      toggle: ({ row, isOpen }) => {
+        setOpenings(view, [row.key], isOpen !== true);
+        view.setState({ current: row.key });
+        move.focusCurrent();
+      },
+      openMenu: ({ key }) => {
+        view.setState({ current: key });
+        setMenuKey(key);
+      },
+      shutMenu: ({ key }) => setMenuKey((now) => (now === key ? undefined : now)),
+      returnFocus: () => move.focusCurrent(),
+      menuOf: (row) => {
+        const { document, selection, editable } = open.store.getState();
+        const standing = standingOf(latest.current.settled);
+        return rowMenu(row, { design: document, standing, selection, editable }, actions);
+      },
+      endRenaming: (_row, returnFocus) => {
+        setRenaming(undefined);
+        if (returnFocus) move.focusCurrent();
+      },
+      addTo: (group) => actions.addTo(group),
+    }),
+    [open, view, move, actions],
+  );
+
+  const typed = useRef({ text: '', atMs: 0 });
+  const typedWith = (event: KeyboardEvent): string => {
+    if (event.key.length !== 1 || event.key === ' ') return '';
+    const isOn = event.timeStamp - typed.current.atMs < typingMs;
+    typed.current = { text: (isOn ? typed.current.text : '') + event.key, atMs: event.timeStamp };
+    return typed.current.text;
+  };
+  const follow = (step: TreeStep, visible: VisibleRow, event: KeyboardEvent): void => {
+    const { row } = visible;
+    const isControl = event.ctrlKey || event.metaKey;
+    const { editable } = open.store.getState();
+    switch (step.does) {
+      case 'go':
+        return move.goTo(
+          step.to,
+          event.shiftKey && event.key.length > 1 ? 'extend' : isControl ? 'only' : 'select',
+        );
+      case 'open':
+      case 'shut':
+        return setOpenings(
+          view,
+          step.rows.map((one) => one.row.key),
+          step.does === 'open',
+        );
+      case 'toggle-selection':
+        return move.toggleSelection(row);
+      case 'inspect':
+        return row.ref === undefined ? tools.toggle(visible) : actions.inspect(row);
+      case 'menu':
+        return row.ref === undefined ? undefined : tools.openMenu(row);
+      case 'rename':
+        return editable ? actions.rename(row) : undefined;
+      case 'remove':
+        return actions.remove(row);
+    }
+  };
+  const onKeyDown = (event: KeyboardEvent): void => {
+    const isOnButton = event.target instanceof Element && event.target.closest('button') !== null;
+    if (here === undefined || (isOnButton && (event.key === 'Enter' || event.key === ' '))) return;
+    const step = treeStep(rows, at, event, typedWith(event));
+    if (step === undefined) return;
+    event.preventDefault();
+    follow(step, here, event);
+  };
+  return { tools, onKeyDown, menuKey, renaming };
+};
