@@ -212,10 +212,14 @@ const distinct = (all: readonly Missing[]): readonly Missing[] =>
  * hop puts around their packets, and how much of each limit that is. Rates are bit/s and rounded up. Refuses a multiplier
  * outside its bounds and demands that outgrow what can be computed.
  */
-export const loadOf = (design: DesignFacts, options: LoadOptions = {}): Answer<LoadReport> => {
+export const loadOf = (design: DesignFacts, options: LoadOptions = {}): Answer<LoadReport> =>
+  loadOfNetwork(indexNetwork(design), options);
+
+/** The same for a design that is indexed already. */
+export const loadOfNetwork = (network: Network, options: LoadOptions = {}): Answer<LoadReport> => {
   const problems = [...optionProblems(options)];
   if (problems.length > 0) return refuse(problems);
-  const network = indexNetwork(design);
+  const { design } = network;
   const { multiplier = 1, windowBytes } = options;
   const elements = tally<Part>();
   const sums = tally<{ readonly limit: Limit; readonly measure: keyof HopLoad }>();

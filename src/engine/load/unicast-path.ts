@@ -10,7 +10,7 @@ import type { Id } from '../model/scalars.ts';
 import type { Tags } from '../network/frame-tags.ts';
 import { untagged } from '../network/frame-tags.ts';
 import type { End, Network } from '../network/network.ts';
-import { entryOf } from '../network/network.ts';
+import { entryOf, perNetwork } from '../network/network.ts';
 
 /** One crossing of a cable (or aggregate) or a tunnel, on the way that learned frames take. */
 export interface Crossing {
@@ -27,9 +27,18 @@ export interface Crossing {
 
 type Place = Entry<'demands'>['from'];
 
+const knownPoints = perNetwork((_network) => new Map<Id, readonly PlacedPoint[]>());
+
+const pointsOf = (network: Network, segment: Id): readonly PlacedPoint[] => {
+  const known = knownPoints(network);
+  const points = known.get(segment) ?? attachmentPoints(floodGraph(network), segment).points;
+  known.set(segment, points);
+  return points;
+};
+
 /** Where a demand begins or ends: its host, or for a site the first host of the segment there, else a port in its VLAN. */
 export const pointOf = (network: Network, segment: Id, at: Place): PlacedPoint | undefined => {
-  const { points } = attachmentPoints(floodGraph(network), segment);
+  const points = pointsOf(network, segment);
   if ('site' in at) return points.find(({ point }) => point.site === at.site);
   const known = points.find(({ point }) => point.device === at.host && point.port === undefined);
   if (known !== undefined) return known;

@@ -3,9 +3,9 @@ import type { MergePatch } from '../model/merge-patch.ts';
 import { applyPatch, joinPatches, patchAt } from '../model/merge-patch.ts';
 import type { Id } from '../model/scalars.ts';
 import type { DesignFacts } from '../network/network.ts';
-import { ends, entryOf, otherEnd } from '../network/network.ts';
+import { ends, entryOf } from '../network/network.ts';
 import type { Problem } from '../wire/problem.ts';
-import { freeLoopbacks, freeVlans, freeVnis } from './free-numbers.ts';
+import { freeLoopbacks, freeVlans, freeVnis, lowestLoopbacks, lowestVnis } from './free-numbers.ts';
 import type { NumberingContext } from './numbering-context.ts';
 import { isInRanges, noNumberingContext } from './numbering-context.ts';
 import { vlansAt } from './numbers-of.ts';
@@ -25,13 +25,13 @@ export interface Allocation {
   readonly problems: readonly Problem[];
 }
 
-/** The family of the tunnels at an endpoint that has no address yet: IPv6 where they ask for it, else IPv4. */
-const familyAt = (design: DesignFacts, endpoint: Id): 4 | 6 =>
-  Object.values(design.tunnels).some(
-    ({ a, b, family }) => family === 6 && (a.endpoint === endpoint || b.endpoint === endpoint),
-  )
-    ? 6
-    : 4;
+/** Endpoints of tunnels that ask for IPv6. */
+const sixAsked = (design: DesignFacts): ReadonlySet<Id> =>
+  new Set(
+    Object.values(design.tunnels).flatMap(({ a, b, family }) =>
+      family === 6 ? [a.endpoint, b.endpoint] : [],
+    ),
+  );
 
 /**
  * Numbers for all that has none: endpoints without an address, tunnels without a VNI, sites of segments without a VLAN. Both
@@ -42,7 +42,6 @@ export const allocateUnset = <D extends DesignFacts>(
   design: D,
   context: NumberingContext = noNumberingContext,
 ): Allocation => {
-  let now: DesignFacts = design;
   const patches: MergePatch[] = [];
   const allocated: Allocated[] = [];
   const problems: Problem[] = [];
@@ -52,55 +51,86 @@ export const allocateUnset = <D extends DesignFacts>(
     path: readonly string[],
     value: number | string,
   ) => {
-    const patch = patchAt([collection, id, ...path], value);
-    patches.push(patch);
-    now = applyPatch(now, patch);
+    patches.push(patchAt([collection, id, ...path], value));
     allocated.push({ ref: { collection, id }, path, value });
   };
-  const fail = (place: string, found: readonly Problem[]): void => {
+  const now = (): DesignFacts => patches.reduce<DesignFacts>(applyPatch, design);
+  const fail = (places: readonly string[], found: readonly Problem[]): void => {
     problems.push(
-      ...found.map(({ expected, ...problem }) => ({ ...problem, expected: `${expected}, for ${place}` })),
+      ...found.map(({ expected, ...problem }) => ({
+        ...problem,
+        expected: `${expected}, for ${places.join(', ')}`,
+      })),
     );
   };
 
-  for (const id of Object.keys(design.endpoints).sort()) {
-    const { ipv4, ipv6 } = entryOf(design.endpoints, id);
-    if (ipv4 !== undefined || ipv6 !== undefined) continue;
-    const family = familyAt(design, id);
-    const answer = freeLoopbacks(now, family, 1, context);
-    if (answer.ok) give('endpoints', id, [family === 4 ? 'ipv4' : 'ipv6'], answer.loopbacks[0]!);
-    else fail(`endpoints.${id}`, answer.problems);
+  const bare = Object.keys(design.endpoints)
+    .sort()
+    .filter((id) => {
+      const { ipv4, ipv6 } = entryOf(design.endpoints, id);
+      return ipv4 === undefined && ipv6 === undefined;
+    });
+  const isV6 = sixAsked(design);
+  for (const family of [4, 6] as const) {
+    const own = bare.filter((id) => isV6.has(id) === (family === 6));
+    const loopbacks = lowestLoopbacks(design, family, own.length, context);
+    own.forEach((id, i) => {
+      const loopback = loopbacks[i];
+      if (loopback !== undefined) give('endpoints', id, [family === 4 ? 'ipv4' : 'ipv6'], loopback);
+    });
+    const left = own.slice(loopbacks.length);
+    const answer = left.length === 0 ? undefined : freeLoopbacks(now(), family, left.length, context);
+    if (answer?.ok === false)
+      fail(
+        left.map((id) => `endpoints.${id}`),
+        answer.problems,
+      );
   }
 
-  for (const id of Object.keys(design.tunnels).sort()) {
-    const tunnel = entryOf(design.tunnels, id);
-    const unset = ends.filter((end) => tunnel[end].vni === undefined);
-    if (unset.length === 0) continue;
-    const known = tunnel[otherEnd(unset[0]!)].vni;
-    const answer = known === undefined ? freeVnis(now, 1, context) : { ok: true as const, vnis: [known] };
-    if (answer.ok) for (const end of unset) give('tunnels', id, [end, 'vni'], answer.vnis[0]!);
-    else fail(`tunnels.${id}`, answer.problems);
+  const open = Object.keys(design.tunnels)
+    .sort()
+    .filter((id) => ends.some((end) => entryOf(design.tunnels, id)[end].vni === undefined));
+  const knownVni = (id: Id): number | undefined => {
+    const { a, b } = entryOf(design.tunnels, id);
+    return a.vni ?? b.vni;
+  };
+  const fresh = open.filter((id) => knownVni(id) === undefined);
+  const vnis = lowestVnis(design, fresh.length, context);
+  const freshVni = new Map(fresh.map((id, i) => [id, vnis[i]]));
+  for (const id of open) {
+    const vni = knownVni(id) ?? freshVni.get(id);
+    if (vni === undefined) continue;
+    for (const end of ends)
+      if (entryOf(design.tunnels, id)[end].vni === undefined) give('tunnels', id, [end, 'vni'], vni);
   }
+  const left = fresh.slice(vnis.length);
+  const answer = left.length === 0 ? undefined : freeVnis(now(), left.length, context);
+  if (answer?.ok === false)
+    fail(
+      left.map((id) => `tunnels.${id}`),
+      answer.problems,
+    );
 
   for (const id of Object.keys(design.segments).sort()) {
     const { sites } = entryOf(design.segments, id);
     const names = Object.keys(sites).sort();
     const unset = names.filter((site) => sites[site]!.vlan === undefined);
     if (unset.length === 0) continue;
+    const current = now();
     const isFree = (site: Id, vlan: number): boolean =>
-      !isInRanges(context.reserved?.vlans, vlan) && !vlansAt(now, site).has(vlan);
+      !isInRanges(context.reserved?.vlans, vlan) && !vlansAt(current, site).has(vlan);
     const known = names.map((site) => sites[site]!.vlan).filter((vlan) => vlan !== undefined);
     const common =
       known.find((vlan) => unset.every((site) => isFree(site, vlan))) ??
-      (known.length === 0 ? commonVlan(now, unset, context) : undefined);
+      (known.length === 0 ? commonVlan(current, unset, context) : undefined);
     for (const site of unset) {
       const own = common ?? known.find((vlan) => isFree(site, vlan));
       const answer =
         own === undefined
-          ? freeVlans(now, 1, { sites: [site] }, context)
+          ? freeVlans(current, 1, { sites: [site] }, context)
           : { ok: true as const, vlans: [own] };
       if (answer.ok) give('segments', id, ['sites', site, 'vlan'], answer.vlans[0]!);
-      else fail(`segments.${id}.sites.${site}`, answer.problems);
+      else fail([`segments.${id}.sites.${site}`], answer.problems);
     }
   }
   return { patch: joinPatches(design, patches), allocated, problems };

@@ -40,21 +40,33 @@ const exhausted = (field: string, value: string, what: string, count: number, fo
     },
   ]);
 
+/** The lowest free VNIs, fewer than wanted where the pools end. */
+export const lowestVnis = (
+  design: DesignFacts,
+  count: number,
+  context: NumberingContext,
+): readonly number[] => {
+  const used = new Set([
+    ...numbersOf(design).vnis,
+    ...(context.otherDesigns ?? []).flatMap(({ vnis }) => vnis ?? []),
+  ]);
+  return lowestOf(
+    context.pools?.vnis ?? usualVnis,
+    (vni) => used.has(vni) || isInRanges(context.reserved?.vnis, vni),
+    count,
+  );
+};
+
 /** The lowest VNIs, as many as are wanted, that no tunnel of this or another design has and that nothing is reserved for. */
 export const freeVnis = (
   design: DesignFacts,
   count: number,
   context: NumberingContext = noNumberingContext,
 ): Answer<{ readonly vnis: readonly number[] }> => {
-  const used = new Set([
-    ...numbersOf(design).vnis,
-    ...(context.otherDesigns ?? []).flatMap(({ vnis }) => vnis ?? []),
-  ]);
-  const ranges = context.pools?.vnis ?? usualVnis;
-  const vnis = lowestOf(ranges, (vni) => used.has(vni) || isInRanges(context.reserved?.vnis, vni), count);
+  const vnis = lowestVnis(design, count, context);
   return vnis.length === count
     ? { ok: true, vnis }
-    : exhausted('pools.vnis', rangeText(ranges), 'VNI', count, vnis.length);
+    : exhausted('pools.vnis', rangeText(context.pools?.vnis ?? usualVnis), 'VNI', count, vnis.length);
 };
 
 /**
@@ -105,20 +117,19 @@ const takenAddresses = (
 const looksLikeNetwork = (family: 4 | 6, address: bigint): boolean =>
   family === 4 ? (address & 0xffn) === 0n || (address & 0xffn) === 0xffn : false;
 
-/** The lowest loopback addresses that are free, with their host prefix. IPv6 needs a pool: no range of it is everybody's. */
-export const freeLoopbacks = (
+const loopbackPools = (context: NumberingContext): readonly string[] =>
+  context.pools?.loopbacks ?? usualLoopbacks;
+
+/** The lowest free loopbacks, fewer than wanted where the pools end. */
+export const lowestLoopbacks = (
   design: DesignFacts,
   family: 4 | 6,
   count: number,
-  context: NumberingContext = noNumberingContext,
-): Answer<{ readonly loopbacks: readonly string[] }> => {
-  const given = context.pools?.loopbacks;
-  const pools = (given ?? usualLoopbacks).map(rangeOf).filter((pool) => pool.family === family);
-  const field = 'pools.loopbacks';
-  if (pools.length === 0)
-    return refuse([
-      { field, value: given?.join(', '), expected: `a prefix of IPv${family} from which to take loopbacks` },
-    ]);
+  context: NumberingContext,
+): readonly string[] => {
+  const pools = loopbackPools(context)
+    .map(rangeOf)
+    .filter((pool) => pool.family === family);
   const taken = takenAddresses(design, context, family);
   const loopbacks: string[] = [];
   for (const { first, last } of pools) {
@@ -137,9 +148,30 @@ export const freeLoopbacks = (
       address += 1n;
     }
   }
+  return loopbacks;
+};
+
+/** The lowest loopback addresses that are free, with their host prefix. IPv6 needs a pool: no range of it is everybody's. */
+export const freeLoopbacks = (
+  design: DesignFacts,
+  family: 4 | 6,
+  count: number,
+  context: NumberingContext = noNumberingContext,
+): Answer<{ readonly loopbacks: readonly string[] }> => {
+  const field = 'pools.loopbacks';
+  const pools = loopbackPools(context);
+  if (!pools.some((pool) => rangeOf(pool).family === family))
+    return refuse([
+      {
+        field,
+        value: context.pools?.loopbacks?.join(', '),
+        expected: `a prefix of IPv${family} from which to take loopbacks`,
+      },
+    ]);
+  const loopbacks = lowestLoopbacks(design, family, count, context);
   return loopbacks.length === count
     ? { ok: true, loopbacks }
-    : exhausted(field, (given ?? usualLoopbacks).join(', '), 'loopback', count, loopbacks.length);
+    : exhausted(field, pools.join(', '), 'loopback', count, loopbacks.length);
 };
 
 /** The first of `base`, `base-2`, `base-3` … that no tunnel of this or another design is called. */

@@ -73,44 +73,53 @@ const segmentOutage = (
   const count = ways.points.length;
   const losses = segmentLosses(spread, change);
   if (losses.size === 0) return undefined;
-  const ofPair = (a: number, b: number): number => a * count + b;
-  const lost = new Set<number>();
-  for (const [from, targets] of losses)
-    if (!gone.has(from)) for (const to of targets) if (!gone.has(to)) lost.add(ofPair(from, to));
-  if (lost.size === 0) return undefined;
-  const lostByPoint = new Map<number, number>();
+  const isLost = (from: number, to: number): boolean => has(losses.get(from), to);
+  const lostByPoint = new Int32Array(count);
   const pairs: PartedPair[] = [];
   let pairCount = 0;
-  for (const key of [...lost].sort((x, y) => x - y)) {
-    const [from, to] = [Math.floor(key / count), key % count];
-    for (const point of [from, to]) lostByPoint.set(point, (lostByPoint.get(point) ?? 0) + 1);
-    const isBoth = lost.has(ofPair(to, from));
-    if (isBoth && from > to) continue;
-    pairCount += 1;
-    if (!withPairs) continue;
-    const [a, b] = [Math.min(from, to), Math.max(from, to)];
-    pairs.push({
-      a: ways.points[a]!,
-      b: ways.points[b]!,
-      lost: isBoth ? 'both' : from < to ? 'a-to-b' : 'b-to-a',
-    });
+  for (const [from, targets] of losses) {
+    if (gone.has(from)) continue;
+    for (const to of targets) {
+      if (gone.has(to)) continue;
+      lostByPoint[from]! += 1;
+      lostByPoint[to]! += 1;
+      const isBoth = isLost(to, from);
+      if (isBoth && from > to) continue;
+      pairCount += 1;
+      if (!withPairs) continue;
+      const [a, b] = [Math.min(from, to), Math.max(from, to)];
+      pairs.push({
+        a: ways.points[a]!,
+        b: ways.points[b]!,
+        lost: isBoth ? 'both' : from < to ? 'a-to-b' : 'b-to-a',
+      });
+    }
   }
+  if (pairCount === 0) return undefined;
   const reaches = (from: number, to: number): number => (spreads[from]!.position[count + to]! >= 0 ? 1 : 0);
   const hadWays = (point: number): number => {
     let had = joined[point]!;
     for (const other of gone) had -= reaches(point, other) + reaches(other, point);
     return had;
   };
-  const cutOff = [...lostByPoint]
-    .filter(([point, lostWays]) => lostWays === hadWays(point))
-    .map(([point]) => point)
-    .sort((a, b) => a - b);
+  const cutOff = ways.points.filter((_point, i) => lostByPoint[i]! > 0 && lostByPoint[i] === hadWays(i));
   return {
     segment: ways.segment,
     pairCount,
-    cutOff: cutOff.map((point) => ways.points[point]!),
+    cutOff,
     ...(withPairs ? { pairs } : {}),
   };
+};
+
+/** Whether an ordered list holds a number. */
+const has = (list: readonly number[] | undefined, wanted: number): boolean => {
+  let [low, high] = [0, list?.length ?? 0];
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (list![middle]! < wanted) low = middle + 1;
+    else high = middle;
+  }
+  return list?.[low] === wanted;
 };
 
 const tunnelsAfter = (

@@ -85,7 +85,7 @@ const reachedFrom = (ways: SegmentWays, source: number, standing: Standing): Uin
   return reached;
 };
 
-/** Which points the frames of a point no longer get to. */
+/** Which points the frames of a point no longer get to, in order. */
 type LostTargets = readonly number[];
 
 /** Branches that lost elements cut off, as nodes at which they begin; a branch inside another is left out. */
@@ -120,29 +120,53 @@ const lostTargets = (
   if (nodes === 0) return [];
   // Where little is left, walking that is less work than looking for ways back into what is cut.
   if (nodes * 2 > order.length) return missing(ways, spread, reachedFrom(ways, source, standing), source);
-  const cut = new Set<number>();
-  for (const start of branches)
-    for (let i = start; i < start + branchSize[start]!; i += 1) cut.add(order[i]!);
+  const restored = new Set<number>();
+  const isCut = (node: number): boolean =>
+    position[node]! >= 0 && isInBranch(branches, branchSize, position[node]!) && !restored.has(node);
   const found: number[] = [];
-  for (const node of cut)
+  eachOf(branches, branchSize, (at) => {
+    const node = order[at]!;
+    const crossed = ways.element[node]!;
+    if (crossed >= 0 && standing.elements[crossed] !== 1) return;
     for (let back = ways.backStart[node]!; back < ways.backStart[node + 1]!; back += 1) {
       const from = ways.backFrom[back]!;
-      if (position[from]! >= 0 && !cut.has(from) && isOpen(ways, ways.backEdge[back]!, standing)) {
+      if (position[from]! >= 0 && !isCut(from) && isOpen(ways, ways.backEdge[back]!, standing)) {
         found.push(node);
-        break;
+        return;
       }
     }
-  for (const node of found) cut.delete(node);
+  });
+  for (const node of found) restored.add(node);
   for (const node of found)
     for (let edge = ways.edgeStart[node]!; edge < ways.edgeStart[node + 1]!; edge += 1) {
       const to = ways.edgeTo[edge]!;
-      if (cut.has(to) && isOpen(ways, edge, standing)) {
-        cut.delete(to);
-        found.push(to);
-      }
+      if (!isCut(to) || !isOpen(ways, edge, standing)) continue;
+      restored.add(to);
+      found.push(to);
     }
   const count = ways.points.length;
-  return [...cut].filter((node) => isTarget(count, source, node)).map((node) => node - count);
+  const targets: number[] = [];
+  eachOf(branches, branchSize, (at) => {
+    const node = order[at]!;
+    if (isTarget(count, source, node) && !restored.has(node)) targets.push(node - count);
+  });
+  return targets.sort((x, y) => x - y);
+};
+
+const eachOf = (branches: readonly number[], branchSize: Int32Array, take: (at: number) => void): void => {
+  for (const start of branches) for (let at = start; at < start + branchSize[start]!; at += 1) take(at);
+};
+
+/** Whether a place in the order lies in one of the branches, which come in order and apart from each other. */
+const isInBranch = (branches: readonly number[], branchSize: Int32Array, at: number): boolean => {
+  let [low, high] = [0, branches.length];
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (branches[middle]! <= at) low = middle + 1;
+    else high = middle;
+  }
+  const start = branches[low - 1];
+  return start !== undefined && at < start + branchSize[start]!;
 };
 
 const isTarget = (count: number, source: number, node: number): boolean =>

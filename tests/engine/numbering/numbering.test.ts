@@ -194,6 +194,28 @@ describe('giving numbers to all that has none', () => {
   });
 });
 
+describe('a pool that is too small', () => {
+  it('serves as many as it can and names those left without', () => {
+    const design = applyPatch(hubDesign(2), {
+      endpoints: { 'lo-s1': { ipv4: null }, 'lo-s2': { ipv4: null } },
+      tunnels: { 'tn-s0-s2-a': { a: { vni: null }, b: { vni: null } } },
+    });
+    const context = { pools: { loopbacks: ['10.255.9.9/32'], vnis: [{ from: 10_000, to: 10_000 }] } };
+    const { allocated, problems } = allocateUnset(design, context);
+    expect(allocated.map(({ ref, value }) => [ref.id, value])).toEqual([['lo-s1', '10.255.9.9/32']]);
+    expect(problems.map(({ field, expected }) => [field, expected])).toEqual([
+      [
+        'pools.loopbacks',
+        'a free loopback in the pool, which has 0: widen the pool or give numbers back, for endpoints.lo-s2',
+      ],
+      [
+        'pools.vnis',
+        'a free VNI in the pool, which has 0: widen the pool or give numbers back, for tunnels.tn-s0-s2-a',
+      ],
+    ]);
+  });
+});
+
 describe('clashes', () => {
   it('are none in a design that is numbered well', () => {
     const other = applyPatch(meshDesign(3), { meta: { title: 'Ferry lights' } });

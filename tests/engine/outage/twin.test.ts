@@ -163,7 +163,7 @@ describe('whatever fails', () => {
       }),
       { numRuns: 100 },
     );
-  });
+  }, 60_000);
 
   // Pairs that fail over and aggregates that change sides may join again what a first failure parted.
   it('never joins again what less of it parted, where nothing stands by', () => {
@@ -184,5 +184,5 @@ describe('whatever fails', () => {
       }),
       { numRuns: 150 },
     );
-  });
+  }, 60_000);
 });
