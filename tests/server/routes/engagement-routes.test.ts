@@ -144,7 +144,7 @@ describe('designs in an engagement', () => {
     const copy = designSummarySchema.parse(body);
     expect(copy).toMatchObject({ title: 'Copy', identification: null, revision: null });
     const opened = await open(copy.id);
-    expect(opened.document).toEqual({ ...original, meta: { title: 'Copy' } });
+    expect(opened.document).toEqual({ ...original, meta: { ...original.meta, title: 'Copy' } });
   });
 
   test('are not copied from a workspace that one is not in', async () => {
