@@ -6,6 +6,7 @@ import type { End, Network } from '../network/network.ts';
 import { ends, entryOf } from '../network/network.ts';
 import { defineRule } from './define-rule.ts';
 import { unusedId } from './unused-id.ts';
+import { counted, sentenceCase } from './wording.ts';
 
 interface Spare {
   readonly association: Id;
@@ -44,6 +45,20 @@ const spareOf = (network: Network, id: Id): Spare | undefined => {
   return undefined;
 };
 
+/** Associations that leave the same transport out in favour of the same other: one fault, however many they are. */
+const spares = (network: Network): ReadonlyMap<string, readonly Spare[]> => {
+  const byTransports = new Map<string, Spare[]>();
+  for (const id of Object.keys(network.design.associations).sort()) {
+    const spare = spareOf(network, id);
+    if (spare === undefined) continue;
+    const key = `${spare.used} ${spare.transport}`;
+    const list = byTransports.get(key);
+    if (list === undefined) byTransports.set(key, [spare]);
+    else list.push(spare);
+  }
+  return byTransports;
+};
+
 export const associationWithoutSecondPath = defineRule({
   id: 'association-without-second-path',
   title: 'An association may turn to every transport that joins its ends',
@@ -55,49 +70,55 @@ export const associationWithoutSecondPath = defineRule({
   messages: {
     unused: {
       words: 'second path unused',
-      sentence: (v: { readonly association: string; readonly used: string; readonly spare: string }) =>
-        `${v.association} uses ${v.used} alone, not ${v.spare}`,
+      sentence: (v: {
+        readonly associations: string;
+        readonly isOne: boolean;
+        readonly used: string;
+        readonly spare: string;
+      }) => `${v.associations} ${v.isOne ? 'uses' : 'use'} ${v.used} alone, not ${v.spare}`,
     },
   },
   check: (network) => {
     const { design } = network;
-    return Object.keys(design.associations).flatMap((id) => {
-      const spare = spareOf(network, id);
-      if (spare === undefined) return [];
-      const ref = { collection: 'associations' as const, id };
-      return [
-        {
-          message: 'unused',
-          values: {
-            association: entryOf(design.associations, id).name,
-            used: entryOf(design.transports, spare.used).name,
-            spare: entryOf(design.transports, spare.transport).name,
-          },
-          elements: [ref, { collection: 'transports' as const, id: spare.transport }],
-          identity: [id],
-          properties: ends.map((end) => ({ ref, path: [end, 'via'] })),
-          basis: [spare.used, spare.transport],
+    return [...spares(network).values()].map((list) => {
+      const { used, transport } = list[0]!;
+      const refs = list.map(({ association }) => ({ collection: 'associations' as const, id: association }));
+      return {
+        message: 'unused',
+        values: {
+          associations:
+            refs.length === 1
+              ? entryOf(design.associations, refs[0]!.id).name
+              : sentenceCase(counted(refs.length, 'association', 'associations')),
+          isOne: refs.length === 1,
+          used: entryOf(design.transports, used).name,
+          spare: entryOf(design.transports, transport).name,
         },
-      ];
+        elements: [...refs, { collection: 'transports' as const, id: transport }],
+        identity: [used, transport],
+        properties: refs.flatMap((ref) => ends.map((end) => ({ ref, path: [end, 'via'] }))),
+        basis: refs.map(({ id }) => id),
+      };
     });
   },
   fixes: (fault, network) => {
-    const { id } = fault.elements[0]!;
-    const spare = spareOf(network, id);
-    if (spare === undefined) return [];
-    const association = entryOf(network.design.associations, id);
-    const added = (end: End): MergePatch => {
-      const { via } = association[end];
-      if (via === undefined || Object.values(via).some(({ landing }) => landing === spare.landings[end]))
-        return {};
-      return { via: { [unusedId(via, 'second')]: { rank: rankAtEnd(via), landing: spare.landings[end] } } };
+    const list = spares(network).get(fault.identity!.join(' ')) ?? [];
+    const added = ({ association, landings }: Spare, end: End): MergePatch => {
+      const { via } = entryOf(network.design.associations, association)[end];
+      if (via === undefined || Object.values(via).some(({ landing }) => landing === landings[end])) return {};
+      return { via: { [unusedId(via, 'second')]: { rank: rankAtEnd(via), landing: landings[end] } } };
     };
+    const { spare, used } = fault.values;
     return [
       {
         id: 'add-path',
-        label: `Add ${fault.values.spare}`,
-        sentence: `Lets ${fault.values.association} turn to ${fault.values.spare} when ${fault.values.used} fails; both ends must be able to move it, or hold a second one.`,
-        patch: { associations: { [id]: { a: added('a'), b: added('b') } } },
+        label: `Add ${spare}`,
+        sentence: `Lets ${list.length === 1 ? 'the association' : 'the associations'} turn to ${spare} when ${used} fails; both ends must be able to move it, or hold a second one.`,
+        patch: {
+          associations: Object.fromEntries(
+            list.map((each) => [each.association, { a: added(each, 'a'), b: added(each, 'b') }]),
+          ),
+        },
       },
     ];
   },

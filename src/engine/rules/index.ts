@@ -21,6 +21,8 @@ import { clockOverJitter } from './clock-over-jitter.ts';
 import { crossConnectCircuits } from './cross-connect-circuits.ts';
 import { crossConnectWithoutPolicy } from './cross-connect-without-policy.ts';
 import type { Rule } from './define-rule.ts';
+import { demandFlowLimited } from './demand-flow-limited.ts';
+import { demandTooLate } from './demand-too-late.ts';
 import { dhcpAnsweredTwice } from './dhcp-answered-twice.ts';
 import { dhcpServerAtOneSite } from './dhcp-server-at-one-site.ts';
 import { duplicateName } from './duplicate-name.ts';
@@ -47,6 +49,7 @@ import { isolationMissingLeg } from './isolation-missing-leg.ts';
 import { landingAddressUnroutable } from './landing-address-unroutable.ts';
 import { landingInsideSegment } from './landing-inside-segment.ts';
 import { landingOnOneMember } from './landing-on-one-member.ts';
+import { limitOverloaded } from './limit-overloaded.ts';
 import { livenessShorterThanFailover } from './liveness-shorter-than-failover.ts';
 import { macLimitTooLow } from './mac-limit-too-low.ts';
 import { macTableTooSmall } from './mac-table-too-small.ts';
@@ -76,6 +79,7 @@ import { segmentNeedsUnknown } from './segment-needs-unknown.ts';
 import { segmentTooLarge } from './segment-too-large.ts';
 import { segmentsMerged } from './segments-merged.ts';
 import { selectorsLoseFragments } from './selectors-lose-fragments.ts';
+import { sequenceNumbersRunOut } from './sequence-numbers-run-out.ts';
 import { snoopingWithoutQuerier } from './snooping-without-querier.ts';
 import { stormAnyToAnyMesh } from './storm-any-to-any-mesh.ts';
 import { stormCustomerCable } from './storm-customer-cable.ts';
@@ -127,6 +131,8 @@ export const rules: readonly Rule[] = [
   clockOverJitter,
   crossConnectCircuits,
   crossConnectWithoutPolicy,
+  demandFlowLimited,
+  demandTooLate,
   dhcpAnsweredTwice,
   dhcpServerAtOneSite,
   duplicateName,
@@ -153,6 +159,7 @@ export const rules: readonly Rule[] = [
   landingAddressUnroutable,
   landingInsideSegment,
   landingOnOneMember,
+  limitOverloaded,
   livenessShorterThanFailover,
   macLimitTooLow,
   macTableTooSmall,
@@ -182,6 +189,7 @@ export const rules: readonly Rule[] = [
   segmentTooLarge,
   segmentsMerged,
   selectorsLoseFragments,
+  sequenceNumbersRunOut,
   snoopingWithoutQuerier,
   stormAnyToAnyMesh,
   stormCustomerCable,

@@ -8,7 +8,7 @@ import { tunnelSegments } from '../flood/tunnel-segments.ts';
 import { segmentPathFacts } from './carried-segments.ts';
 import { defineRule } from './define-rule.ts';
 import { lowerSegment } from './packet-size-fixes.ts';
-import { innerTagsOf, needOf, type Tight } from './segment-capacity.ts';
+import { capacitiesOf, innerTagsOf, needOf, type Tight } from './segment-capacity.ts';
 import { capacityOnPath } from './tunnel-capacity.ts';
 
 /** Landings that the tunnel's end names, the first included; none where it names none and every one will do. */
@@ -36,10 +36,11 @@ const mayUse = (network: Network, id: Id, end: End): readonly Id[] => {
 
 /** The paths that a tunnel may turn to when its first one fails. */
 const otherPaths = (network: Network, id: Id): readonly Extract<Path, { ok: true }>[] => {
+  const [atA, atB] = [mayUse(network, id, 'a'), mayUse(network, id, 'b')];
+  if (atA.length < 2 && atB.length < 2) return [];
   const first = tunnelPath(network, id);
   if (!first.ok) return [];
-  const atB = mayUse(network, id, 'b');
-  return mayUse(network, id, 'a').flatMap((landingA) =>
+  return atA.flatMap((landingA) =>
     atB.flatMap((landingB): readonly Extract<Path, { ok: true }>[] => {
       const { transport } = landingOf(network, landingA);
       if (landingOf(network, landingB).transport !== transport) return [];
@@ -61,31 +62,22 @@ interface Small extends Tight {
 /** For each segment the narrowest path that one of its tunnels may turn to, where the paths in use are wide enough. */
 const smallPaths = (network: Network): readonly Small[] => {
   const worst = new Map<Id, Small>();
-  const tooNarrow = new Set<Id>();
   for (const [tunnel, segments] of tunnelSegments(network)) {
-    if (segments.length === 0) continue;
-    const paths = otherPaths(network, tunnel);
-    for (const segment of segments) {
-      const need = needOf(network, segment);
-      if (need === undefined) continue;
-      const tags = innerTagsOf(network, tunnel, segment);
-      const own = capacityOnPath(network, tunnel, tags, tunnelPath(network, tunnel));
-      if (own !== undefined && own.largestBytes < need.needBytes) tooNarrow.add(segment);
-      for (const path of paths) {
-        const capacity = capacityOnPath(network, tunnel, tags, path);
-        if (capacity === undefined || capacity.largestBytes >= need.needBytes) continue;
+    const paths = segments.length === 0 ? [] : otherPaths(network, tunnel);
+    for (const path of paths)
+      for (const segment of segments) {
+        const needBytes = needOf(network, segment)?.needBytes ?? 0;
+        const capacity = capacityOnPath(network, tunnel, innerTagsOf(network, tunnel, segment), path);
+        if (capacity === undefined || capacity.largestBytes >= needBytes) continue;
         if (capacity.largestBytes >= (worst.get(segment)?.largestBytes ?? Infinity)) continue;
-        worst.set(segment, {
-          ...capacity,
-          tunnel,
-          segment,
-          transport: path.transport,
-          needBytes: need.needBytes,
-        });
+        worst.set(segment, { ...capacity, tunnel, segment, transport: path.transport, needBytes });
       }
-    }
   }
-  return [...worst.values()].filter(({ segment }) => !tooNarrow.has(segment));
+  if (worst.size === 0) return [];
+  const capacities = capacitiesOf(network);
+  return [...worst.values()].filter(
+    ({ segment, needBytes }) => (capacities.get(segment)?.[0]?.largestBytes ?? Infinity) >= needBytes,
+  );
 };
 
 export const secondPathTooSmall = defineRule({

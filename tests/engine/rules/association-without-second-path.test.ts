@@ -1,6 +1,6 @@
 import type { MergePatch } from '#engine/model/merge-patch.ts';
 import { associationWithoutSecondPath } from '#engine/rules/association-without-second-path.ts';
-import { pairDesign } from '../../support/designs.ts';
+import { hubDesign, pairDesign } from '../../support/designs.ts';
 import { changed, testRule } from '../../support/rule-tester.ts';
 
 const ring = (...sites: readonly string[]): MergePatch => ({
@@ -46,6 +46,16 @@ testRule(associationWithoutSecondPath, {
           severity: 'degrading',
           elements: ['associations/as-s0-s1', 'transports/ring'],
           properties: ['associations/as-s0-s1: a.via', 'associations/as-s0-s1: b.via'],
+          fixes: ['Add Terminal ring'],
+        },
+      ],
+    },
+    'several associations as one fault': {
+      design: changed(hubDesign(2), ring('s0', 's1', 's2')),
+      findings: [
+        {
+          sentence: 'Two associations use Coastal access alone, not Terminal ring',
+          elements: ['associations/as-s0-s1', 'associations/as-s0-s2', 'transports/ring'],
           fixes: ['Add Terminal ring'],
         },
       ],
