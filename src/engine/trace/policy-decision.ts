@@ -2,6 +2,7 @@ import ipaddr from 'ipaddr.js';
 import { inRankOrder } from '../model/rank.ts';
 import type { Id } from '../model/scalars.ts';
 import type { Forwarder } from '../network/network.ts';
+import { parsePrefix } from '../network/parse-prefix.ts';
 
 /** What a filter can tell about a frame. */
 export interface FrameFacts {
@@ -22,7 +23,7 @@ const matchesPrefixes = (prefixes: Rule['sources'], addresses: readonly string[]
   if (prefixes === undefined) return 'yes';
   if (addresses.length === 0) return 'unknown';
   const isIn = prefixes.some((prefix) => {
-    const [network, bits] = ipaddr.parseCIDR(prefix);
+    const [network, bits] = parsePrefix(prefix);
     return addresses.some((address) => {
       const single = ipaddr.parse(address);
       return single.kind() === network.kind() && single.match([network, bits]);

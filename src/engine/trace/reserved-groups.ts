@@ -5,7 +5,7 @@ import type { Place } from '../flood/places.ts';
 
 export type ReservedTreatment = 'drop' | 'pass' | 'peer';
 
-// IEEE 802.1Q-2022 table 8-1 as quoted by section 8.6.3's readers; names of 07, 0b from memory.
+// IEEE 802.1Q-2022 table 8-1, read at second hand; the name of 07 from memory.
 export const reservedGroupNames: { readonly [octet: string]: string } = {
   '00': 'spanning tree',
   '01': 'MAC control',

@@ -71,5 +71,9 @@ describe('unicast that the bridges have learned', () => {
     const trace = follow(pairDesign({ segments: ['a', 'b'] }), packetTo('h-s1-b', 84));
     expect(trace.steps[0]!.decisions.map(({ code }) => code)).toContain('other-segment');
     expect(receivers(trace)).toEqual({});
+    // A switch learns for each VLAN apart: in this one it has never heard the destination.
+    expect(crossed(trace, 'cb-h-s0-a').decisions).toContainEqual(
+      expect.objectContaining({ code: 'flooded', because: 'not-learned' }),
+    );
   });
 });

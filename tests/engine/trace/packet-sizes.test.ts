@@ -152,6 +152,9 @@ describe('a packet that is too large for the tunnel', () => {
     expect(reasonsOf(told)).toMatchObject([{ where: 'underway', answer: 'icmp' }]);
     const hidden = follow(changed(pairDesign(), profile('icmp'), narrow(['packet-too-big'])), large);
     expect(reasonsOf(hidden)).toMatchObject([{ where: 'underway', answer: 'none' }]);
+    const own: MergePatch = { transports: { coast: { filters: ['packet-too-big'] } } };
+    const itself = follow(changed(pairDesign(), profile('icmp'), own), large);
+    expect(reasonsOf(itself)).toMatchObject([{ where: 'gateway', answer: 'icmp' }]);
   });
 
   it('is cut by a gateway that ignores DF, which touches all traffic, as the trace says', () => {

@@ -245,6 +245,23 @@ describe('a cross-connect', () => {
     expect(passes({ frames: 'any', direction: 'from-tunnel' })).toBe(false);
   });
 
+  it('takes what goes from port to port for traffic towards a tunnel, as its rules have it', () => {
+    const more: MergePatch = {
+      forwarders: {
+        'br-s0-a': { circuits: { more: { kind: 'port', rank: 'z', port: 'lan2', vlans: 'untagged' } } },
+      },
+    };
+    const reached = (direction: string) =>
+      receivers(
+        follow(changed(pairDesign(), more, crossConnect(rule({ direction }))), {
+          ...arpFrom('h-s0-a'),
+          source: { device: 'fw-s0', port: 'lan2' },
+        }),
+      );
+    expect(reached('to-tunnel')).toEqual({ 'h-s0-a': 1, 'h-s1-a': 1 });
+    expect(reached('from-tunnel')).toEqual({});
+  });
+
   it('names the rule that denies a frame, and the rule that permits it', () => {
     expect(reason(crossConnect(rule({ action: 'deny' })))).toMatchObject({ code: 'filter', rule: 'rule' });
     const trace = follow(changed(pairDesign(), crossConnect(rule({}))), ping);
@@ -360,6 +377,22 @@ describe('frames to reserved groups', () => {
     expect(reasonsOf(dropping)).toMatchObject([{ says: 'profile' }]);
     const peer = follow(changed(pairDesign(), made('0e', 'peer')), reservedFrom('h-s0-a', '0e'));
     expect(receivers(peer)).toEqual({ 'sw-s0': 1 });
+  });
+
+  it('are not taken by the member of a pair that stands by', () => {
+    const pair = changed(pairDesign({ hub: 'ha-pair' }), {
+      profiles: {
+        pass: { name: 'Passing', reservedGroups: { '0e': 'pass' } },
+        peer: { name: 'Listening', reservedGroups: { '0e': 'peer' } },
+      },
+      devices: {
+        'sw-s0': { profile: 'pass', ports: { p1: { nativeVlan: 110 }, p2: { nativeVlan: 110 } } },
+        'fw-s0': { profile: 'peer' },
+      },
+    });
+    const trace = follow(pair, reservedFrom('h-s0-a', '0e'));
+    expect(crossed(trace, 'cb-s0-up1').verdict).toMatchObject({ code: 'delivered', to: { id: 'fw-s0' } });
+    expect(crossed(trace, 'cb-s0-up2').verdict).toMatchObject({ reason: { code: 'standby', member: 2 } });
   });
 
   it('are taken by a bridge in spanning tree, and of slow protocols by an aggregate', () => {
