@@ -1,6 +1,6 @@
-import ipaddr from 'ipaddr.js';
 import type { Entry } from '../model/design.ts';
 import { inRankOrder } from '../model/rank.ts';
+import { parsePrefix } from '../network/parse-prefix.ts';
 
 /**
  * Frames that flood, told apart only as far as filters and multicast settings do: ARP requests, IPv4 broadcasts, IPv6
@@ -24,8 +24,8 @@ const udp = 17; // RFC 768
 const icmp6 = 58; // RFC 4443 section 1
 
 const overlaps = (prefix: string, group: string): boolean => {
-  const [mine, mineBits] = ipaddr.parseCIDR(prefix);
-  const [other, otherBits] = ipaddr.parseCIDR(group);
+  const [mine, mineBits] = parsePrefix(prefix);
+  const [other, otherBits] = parsePrefix(group);
   const bits = Math.min(mineBits, otherBits);
   return mine.kind() === other.kind() && mine.match([other, bits]);
 };

@@ -1,6 +1,7 @@
 import ipaddr from 'ipaddr.js';
 import { inRankOrder } from '../model/rank.ts';
 import type { Id } from '../model/scalars.ts';
+import { parsePrefix } from './parse-prefix.ts';
 import type { Family } from './association-path.ts';
 import type { Association, End, Network, Tunnel } from './network.ts';
 import { deviceOfTunnelEnd, ends, entryOf, otherEnd } from './network.ts';
@@ -35,9 +36,9 @@ export const associationEndOf = (
 const contains = (prefix: string, address: string): boolean => {
   // Nearly all selectors are the endpoint's own host prefix: parsing each would be most of the work in a large design.
   if (prefix === `${address}/32` || prefix === `${address}/128`) return true;
-  const network = ipaddr.parseCIDR(prefix);
+  const [network, bits] = parsePrefix(prefix);
   const single = ipaddr.parse(address);
-  return network[0].kind() === single.kind() && single.match(network);
+  return network.kind() === single.kind() && single.match([network, bits]);
 };
 
 // RFC 7348 section 5: the destination port assigned to VXLAN.

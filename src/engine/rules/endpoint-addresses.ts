@@ -5,6 +5,7 @@ import type { Family } from '../network/association-path.ts';
 import type { DesignFacts, Network } from '../network/network.ts';
 import { ends, perNetwork } from '../network/network.ts';
 import { indexNetwork } from '../network/index-network.ts';
+import { parsePrefix } from '../network/parse-prefix.ts';
 import { associationEndOf } from '../network/selectors-cover.ts';
 import { coverPatch } from './selector-patch.ts';
 
@@ -30,7 +31,7 @@ const subnetIndex = perNetwork(({ design }): ReadonlyMap<string, ReadonlyMap<str
   for (const segment of Object.keys(design.segments).sort())
     for (const { subnets } of Object.values(design.segments[segment]!.sites))
       for (const subnet of subnets ?? []) {
-        const [address, length] = ipaddr.parseCIDR(subnet);
+        const [address, length] = parsePrefix(subnet);
         const bytes = address.toByteArray();
         const group = `${bytes.length} ${length}`;
         const bits = firstBits(bytes, length);

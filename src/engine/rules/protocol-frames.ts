@@ -1,7 +1,7 @@
-import ipaddr from 'ipaddr.js';
 import type { Entry } from '../model/design.ts';
 import type { Protocol } from '../model/intent.ts';
 import { inRankOrder } from '../model/rank.ts';
+import { parsePrefix } from '../network/parse-prefix.ts';
 
 export type PolicyRule = NonNullable<Entry<'forwarders'>['policy']>[string];
 export type Direction = 'to-tunnel' | 'from-tunnel';
@@ -156,8 +156,8 @@ export const protocolFrames: { readonly [P in Protocol]: Carried } = {
 };
 
 const overlaps = (prefix: string, other: string): boolean => {
-  const [mine, mineBits] = ipaddr.parseCIDR(prefix);
-  const [far, farBits] = ipaddr.parseCIDR(other);
+  const [mine, mineBits] = parsePrefix(prefix);
+  const [far, farBits] = parsePrefix(other);
   return mine.kind() === far.kind() && mine.match([far, Math.min(mineBits, farBits)]);
 };
 
@@ -165,8 +165,8 @@ const isFamily = (prefix: string, etherType: number): boolean =>
   prefix.includes(':') === (etherType === ipv6);
 
 const isOfGroups = (prefix: string): boolean => {
-  const [address, bits] = ipaddr.parseCIDR(prefix);
-  const [groups, groupBits] = ipaddr.parseCIDR(address.kind() === 'ipv4' ? multicastV4 : multicastV6);
+  const [address, bits] = parsePrefix(prefix);
+  const [groups, groupBits] = parsePrefix(address.kind() === 'ipv4' ? multicastV4 : multicastV6);
   return bits >= groupBits && address.match([groups, groupBits]);
 };
 

@@ -1,26 +1,32 @@
-import ipaddr from 'ipaddr.js';
 import type { Protocol } from '../model/intent.ts';
 import { tunnelSegments } from '../flood/tunnel-segments.ts';
+import { parsePrefix } from '../network/parse-prefix.ts';
 import { segmentPathFacts } from './carried-segments.ts';
 import { defineRule } from './define-rule.ts';
 
 /** What routers carry between subnets as well. DHCP crosses them by relay. */
 const routable: readonly Protocol[] = ['ipv4', 'ipv6', 'dhcp'];
 
-const overlaps = (one: string, other: string): boolean => {
-  const [a, aBits] = ipaddr.parseCIDR(one);
-  const [b, bBits] = ipaddr.parseCIDR(other);
-  return a.kind() === b.kind() && a.match([b, Math.min(aBits, bBits)]);
-};
+type Prefix = ReturnType<typeof parsePrefix>;
+
+const overlaps = ([a, aBits]: Prefix, [b, bBits]: Prefix): boolean =>
+  a.kind() === b.kind() && a.match([b, Math.min(aBits, bBits)]);
 
 /** Whether every site has subnets and shares none with another. */
-const hasOwnSubnets = (sites: readonly (readonly string[])[]): boolean =>
-  sites.length > 1 &&
-  sites.every(
-    (own, i) =>
-      own.length > 0 &&
-      sites.slice(i + 1).every((others) => !own.some((one) => others.some((other) => overlaps(one, other)))),
+const hasOwnSubnets = (sites: readonly (readonly string[])[]): boolean => {
+  // Many sites are compared each with each: nothing is parsed twice.
+  const parsed = sites.map((own) => own.map(parsePrefix));
+  return (
+    parsed.length > 1 &&
+    parsed.every(
+      (own, i) =>
+        own.length > 0 &&
+        parsed
+          .slice(i + 1)
+          .every((others) => !own.some((one) => others.some((other) => overlaps(one, other)))),
+    )
   );
+};
 
 export const segmentCouldBeRouted = defineRule({
   id: 'segment-could-be-routed',

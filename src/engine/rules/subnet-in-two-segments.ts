@@ -1,5 +1,5 @@
-import ipaddr from 'ipaddr.js';
 import type { DesignFacts } from '../network/network.ts';
+import { parsePrefix } from '../network/parse-prefix.ts';
 import { defineRule } from './define-rule.ts';
 
 interface Subnet {
@@ -19,7 +19,7 @@ const subnetsOf = (design: DesignFacts): readonly Subnet[] =>
     .flatMap((segment) => {
       const own = Object.values(design.segments[segment]!.sites).flatMap(({ subnets }) => subnets ?? []);
       return [...new Set(own)].sort().map((subnet): Subnet => {
-        const [address, length] = ipaddr.parseCIDR(subnet);
+        const [address, length] = parsePrefix(subnet);
         const family = address.kind() === 'ipv4' ? '4' : '6';
         return {
           segment,
