@@ -7,6 +7,9 @@ import type { Level } from './level-of-detail.ts';
 import { octagon, severityToken } from './severity-mark.ts';
 import { centredLine } from './text-shape.ts';
 
+/** How much larger than near balloons are drawn at each level. */
+export const balloonScale: { readonly [level in Level]: number } = { near: 1, work: 1, plan: 1.46, far: 2.6 };
+
 const sizes = {
   near: { octagon: 13, ring: 11.8, number: 14, words: 14.5, dot: 3.2, leader: 1.6, rim: 4.5 },
   work: { octagon: 13, ring: 11.8, number: 14, words: 14.5, dot: 3.2, leader: 1.6, rim: 4.5 },

@@ -1,4 +1,4 @@
-import type { JacketGeometry, LaneGeometry, Point, SheetGeometry } from '../geometry.ts';
+import type { JacketGeometry, LaneGeometry, Point, Rect, SheetGeometry } from '../geometry.ts';
 import { longestRun, nearestAlong, pathAt, pathLength } from '../path-geometry.ts';
 import type { Shape } from '../shape.ts';
 import { group, shape } from '../shape.ts';
@@ -139,10 +139,18 @@ const unequal = (middle: Point, scale: number): Shape => {
   );
 };
 
-const flags = (cut: Cut, lane: LaneGeometry, facts: DrawingFacts, look: Look): readonly Shape[] => {
+/** A severed end's flag: which end, its number, and its box. */
+interface Flag {
+  readonly end: 'a' | 'b';
+  readonly vni: number | undefined;
+  readonly farVni: number | undefined;
+  readonly rect: Rect;
+  readonly capSide: 'left' | 'right';
+}
+
+const flagsOf = (cut: Cut, lane: LaneGeometry, look: Look): readonly Flag[] => {
   const vnis = look.decorations.cuts.find((c) => c.tunnel === lane.tunnel)?.vnis;
-  const tunnel = facts.tunnels[lane.tunnel];
-  if (vnis === undefined || tunnel === undefined || look.level === 'plan' || look.level === 'far') return [];
+  if (vnis === undefined || look.level === 'plan' || look.level === 'far') return [];
   const upright = Math.abs(cut.along.y) > Math.abs(cut.along.x);
   // On a short level run the ferrules are near enough to be read; flags would cover what is left of the cord.
   if (!upright && cut.stubPx < ferrule.width + 40) return [];
@@ -158,10 +166,24 @@ const flags = (cut: Cut, lane: LaneGeometry, facts: DrawingFacts, look: Look): r
       : side * cut.along.x > 0
         ? anchor.x - 2
         : anchor.x - width + 2;
-    return group(
+    return {
+      end,
+      vni,
+      farVni,
+      rect: { x, y: anchor.y - ferrule.height / 2, width, height: ferrule.height },
+      capSide: upright || side * cut.along.x > 0 ? 'left' : 'right',
+    };
+  });
+};
+
+const flags = (cut: Cut, lane: LaneGeometry, facts: DrawingFacts, look: Look): readonly Shape[] => {
+  const tunnel = facts.tunnels[lane.tunnel];
+  if (tunnel === undefined) return [];
+  return flagsOf(cut, lane, look).map(({ end, vni, farVni, rect, capSide }) =>
+    group(
       ferruleMark({
-        rect: { x, y: anchor.y - ferrule.height / 2, width, height: ferrule.height },
-        capSide: upright || side * cut.along.x > 0 ? 'left' : 'right',
+        rect,
+        capSide,
         segments: tunnel.segments,
         level: 'near',
         fault: true,
@@ -169,9 +191,29 @@ const flags = (cut: Cut, lane: LaneGeometry, facts: DrawingFacts, look: Look): r
         ...(farVni === undefined ? {} : { farVni }),
       }),
       { key: `flag-${end}` },
-    );
-  });
+    ),
+  );
 };
+
+/** ≠ stands beside an upright lane of a jacket, and in the gap of any other. */
+const unequalAt = (cut: Cut, jacket: JacketGeometry): Point =>
+  Math.abs(cut.along.y) > Math.abs(cut.along.x) && jacket.kind === 'jacket'
+    ? { x: cut.middle.x + 26, y: cut.middle.y }
+    : cut.middle;
+
+/** The room that flags and ≠ take, for what is placed after them. */
+export const cutBoxes = (geometry: SheetGeometry, look: Look): readonly Rect[] =>
+  geometry.jackets.flatMap((jacket) =>
+    jacket.lanes.flatMap((lane) => {
+      const cut = isCut(look, lane.tunnel) && !jacket.noWay ? cutOf(jacket, lane, look.level) : undefined;
+      if (cut === undefined) return [];
+      const { x, y } = unequalAt(cut, jacket);
+      return [
+        ...flagsOf(cut, lane, look).map(({ rect }) => rect),
+        { x: x - 12, y: y - 12, width: 24, height: 24 },
+      ];
+    }),
+  );
 
 /** Flags with each end's VNI at the severed ends, and ≠ in the gap between them. */
 export const cutMarks = (geometry: SheetGeometry, facts: DrawingFacts, look: Look): readonly Shape[] =>
@@ -188,16 +230,13 @@ export const cutMarks = (geometry: SheetGeometry, facts: DrawingFacts, look: Loo
                 const differs = look.decorations.cuts.some(
                   (c) => c.tunnel === lane.tunnel && c.vnis !== undefined,
                 );
-                const upright = Math.abs(cut.along.y) > Math.abs(cut.along.x);
-                const beside =
-                  upright && jacket.kind === 'jacket'
-                    ? { x: cut.middle.x + 26, y: cut.middle.y }
-                    : cut.middle;
                 return [
                   group(
                     [
                       ...flags(cut, lane, facts, look),
-                      differs && look.level !== 'far' && unequal(beside, look.level === 'plan' ? 1.4 : 1),
+                      differs &&
+                        look.level !== 'far' &&
+                        unequal(unequalAt(cut, jacket), look.level === 'plan' ? 1.4 : 1),
                     ],
                     {
                       key: `cut-${lane.tunnel}`,

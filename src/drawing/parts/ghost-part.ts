@@ -1,6 +1,9 @@
 import type { Side } from '../../engine/model/layout.ts';
-import type { Path, Point, SheetGeometry } from '../geometry.ts';
+import type { Path, Point, Rect, SheetGeometry } from '../geometry.ts';
 import { pathAt, pathData, pathLength } from '../path-geometry.ts';
+import type { Crowd } from '../routing/callouts.ts';
+import { crowdOf } from '../routing/callouts.ts';
+import { overlap, runRect } from '../routing/rects.ts';
 import type { Shape } from '../shape.ts';
 import { group, shape } from '../shape.ts';
 import { textWidth } from '../text-width.ts';
@@ -97,43 +100,95 @@ const acceptSquare = (at: Point): Shape => {
   );
 };
 
-/** Cables that would cure something, in blue pencil, each with a square that accepts it. */
-export const ghostParts = (geometry: SheetGeometry, look: Look): readonly Shape[] =>
-  look.decorations.ghosts.flatMap((ghost) => {
+interface StandingGhost {
+  readonly ghost: Look['decorations']['ghosts'][number];
+  readonly from: Point;
+  readonly to: Point;
+  readonly path: Path;
+  /** Where it is accepted. */
+  readonly middle: Point;
+  readonly label: GhostLabel;
+}
+
+interface GhostLabel {
+  readonly x: number;
+  readonly baseline: number;
+  readonly width: number;
+}
+
+const standingGhosts = (geometry: SheetGeometry, look: Look): readonly StandingGhost[] => {
+  if (look.decorations.ghosts.length === 0) return [];
+  const crowd = crowdOf(geometry);
+  return look.decorations.ghosts.flatMap((ghost) => {
     const from = plugSpot(geometry, ghost.from, ghost.to);
     const to = plugSpot(geometry, ghost.to, ghost.from);
     if (from === undefined || to === undefined) return [];
     const path = ghostPath(from, to);
     const middle = pathAt(path, pathLength(path) / 2);
-    const words = look.level === 'near' || look.level === 'work';
-    const upright = Math.abs(Math.sin(middle.angle)) > 0.7;
-    const width = textWidth(ghost.label, 13, 600);
     return [
-      group(
-        [
-          {
-            ...shape('path', {
-              d: pathData(path),
-              fill: 'none',
-              stroke: paint('blue'),
-              strokeWidth: 2.6,
-              strokeDasharray: '7 5',
-            }),
-            key: 'line',
-          },
-          hollowEnd(from.at, 'from'),
-          hollowEnd(to.at, 'to'),
-          acceptSquare(middle),
-          words &&
-            ghost.label !== '' &&
-            textLine(
-              ghost.label,
-              upright ? middle.x + acceptPx / 2 + 8 : middle.x - width / 2,
-              upright ? middle.y + 4.5 : middle.y + acceptPx / 2 + 15,
-              { sizePx: 13, weight: 600, fill: paint('blue'), haloPx: 4, key: 'label' },
-            ),
-        ],
-        { key: ghost.id, data: { part: 'accept' }, attrs: { className: 'ghost' } },
-      ),
+      { ghost, from: from.at, to: to.at, path, middle, label: labelFor(ghost.label, middle, path, crowd) },
     ];
+  });
+};
+
+const labelRect = ({ x, baseline, width }: GhostLabel): Rect => ({ x, y: baseline - 12, width, height: 15 });
+
+/** Beside the square, on the side where the words cover least. */
+const labelFor = (words: string, { x, y }: Point, path: Path, crowd: Crowd): GhostLabel => {
+  const width = textWidth(words, 13, 600);
+  const off = acceptPx / 2;
+  const candidates: readonly GhostLabel[] = [
+    { x: x - width / 2, baseline: y + off + 15, width },
+    { x: x + off + 8, baseline: y + 4.5, width },
+    { x: x - width / 2, baseline: y - off - 6, width },
+    { x: x - off - 8 - width, baseline: y + 4.5, width },
+    { x: x - width / 2, baseline: y + off + 28, width },
+  ];
+  const own = path.slice(1).map(({ to }, i) => runRect(path[i]!.to, to, 2, 2));
+  const covered = (label: GhostLabel): number => {
+    const rect = labelRect(label);
+    const hits = (rects: readonly Rect[]): number => rects.filter((other) => overlap(other, rect)).length;
+    return 10 * hits(crowd.solid) + 3 * hits(crowd.cords) + 3 * hits(own);
+  };
+  return candidates.reduce((best, next) => (covered(next) < covered(best) ? next : best));
+};
+
+/** The room that ghosts' squares and words take, for what is placed after them. */
+export const ghostBoxes = (geometry: SheetGeometry, look: Look): readonly Rect[] =>
+  standingGhosts(geometry, look).flatMap(({ middle, label }) => [
+    { x: middle.x - acceptPx / 2, y: middle.y - acceptPx / 2, width: acceptPx, height: acceptPx },
+    labelRect(label),
+  ]);
+
+/** Cables that would cure something, in blue pencil, each with a square that accepts it. */
+export const ghostParts = (geometry: SheetGeometry, look: Look): readonly Shape[] =>
+  standingGhosts(geometry, look).map(({ ghost, from, to, path, middle, label }) => {
+    const words = look.level === 'near' || look.level === 'work';
+    return group(
+      [
+        {
+          ...shape('path', {
+            d: pathData(path),
+            fill: 'none',
+            stroke: paint('blue'),
+            strokeWidth: 2.6,
+            strokeDasharray: '7 5',
+          }),
+          key: 'line',
+        },
+        hollowEnd(from, 'from'),
+        hollowEnd(to, 'to'),
+        acceptSquare(middle),
+        words &&
+          ghost.label !== '' &&
+          textLine(ghost.label, label.x, label.baseline, {
+            sizePx: 13,
+            weight: 600,
+            fill: paint('blue'),
+            haloPx: 4,
+            key: 'label',
+          }),
+      ],
+      { key: ghost.id, data: { part: 'accept' }, attrs: { className: 'ghost' } },
+    );
   });

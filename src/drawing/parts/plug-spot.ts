@@ -2,6 +2,8 @@ import type { Side } from '../../engine/model/layout.ts';
 import type { Plug } from '../../engine/model/underlay.ts';
 import type { Point, Rect, SheetGeometry } from '../geometry.ts';
 
+const besideCabled = 14;
+
 interface Spot {
   readonly at: Point;
   readonly side: Side;
@@ -30,9 +32,17 @@ export const plugSpot = (geometry: SheetGeometry, plug: Plug, other: Plug): Spot
   const pip = device.pips.find(
     (candidate) => candidate.port === plug.port && (candidate.member ?? member) === member,
   );
-  if (pip !== undefined) return { at: pip.at, side: pip.side };
-  const plate = device.plates.find((candidate) => (candidate.member ?? member) === member);
   const facing = geometry.devices.find((candidate) => candidate.id === other.device);
+  if (pip !== undefined) {
+    const { at, side, cabled } = pip;
+    if (!cabled || facing === undefined) return { at, side };
+    // Beside a pip that holds a cable already, on the side of what it would lead to.
+    const there = middleOf(facing.rect);
+    return side === 'left' || side === 'right'
+      ? { at: { x: at.x, y: at.y + Math.sign(there.y - at.y) * besideCabled }, side }
+      : { at: { x: at.x + Math.sign(there.x - at.x) * besideCabled, y: at.y }, side };
+  }
+  const plate = device.plates.find((candidate) => (candidate.member ?? member) === member);
   return plate === undefined || facing === undefined
     ? undefined
     : edgeTowards(plate.rect, middleOf(facing.rect));

@@ -59,8 +59,9 @@ export const anchorOf = (geometry: SheetGeometry, ref: ElementRef, design?: Desi
         ? undefined
         : device.pips.find((p) => p.port === port && (member === undefined || p.member === member));
     if (pip !== undefined) return pip.at;
-    const plate = device.plates.find((p) => p.member === member) ?? device.plates[0]!;
-    return rightEdge(plate.rect);
+    const { rect } = device.plates.find((p) => p.member === member) ?? device.plates[0]!;
+    // A pair has WAN pips at the corners; it is pointed at from the gap that its bracket leaves, or from its free side.
+    return device.kind === 'ha-pair' ? { x: rect.x, y: rect.y + 13 } : rightEdge(rect);
   };
   switch (ref.collection) {
     case 'devices':

@@ -32,7 +32,8 @@ export const occupied = (boxes: readonly Rect[]): Occupied => {
 const runRects = (polyline: readonly Point[], half: number): readonly Rect[] =>
   polyline.slice(1).map((q, i) => runRect(polyline[i]!, q, half, half));
 
-const siteNameRect = (design: Design, { id, rect }: SiteGeometry): Rect => ({
+/** The room of a site's name on the top line of its frame. */
+export const siteNameRect = (design: Design, { id, rect }: SiteGeometry): Rect => ({
   x: rect.x + siteSizes.nameAt - 4,
   y: rect.y - 10,
   width: textWidth(design.sites[id]?.name ?? '', text.siteName, 600) + 8,

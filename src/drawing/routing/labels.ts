@@ -5,7 +5,7 @@ import { textWidth } from '../text-width.ts';
 import type { LandingRun } from './cable-ends.ts';
 import type { Occupied } from './free-places.ts';
 import { landingLabel } from './label-text.ts';
-import { around, contains, outward, right } from './rects.ts';
+import { around, contains, frameLines, grown, outward, overlap, right } from './rects.ts';
 import { labelBeside } from './combs.ts';
 
 const height = 16;
@@ -94,16 +94,21 @@ export const placeLandingLabels = (
   cables: readonly { readonly geometry: CableGeometry; readonly landing?: LandingRun }[],
   sites: readonly SiteGeometry[],
   taken: Occupied,
-): readonly { readonly geometry: CableGeometry; readonly crowded: boolean }[] =>
-  cables.map(({ geometry, landing }) => {
+): readonly { readonly geometry: CableGeometry; readonly crowded: boolean }[] => {
+  const lines = sites.flatMap((site) => frameLines(site.rect));
+  return cables.map(({ geometry, landing }) => {
     if (landing === undefined || geometry.noWay) return { geometry, crowded: false };
     const device = design.devices[landing.from.device];
     const words = landingLabel(landing.landing, device, landing.from.member);
     if (words === '') return { geometry, crowded: false };
     const frame = sites.find((site) => site.id === device?.site)?.rect;
     const candidates = candidatesFor(words, geometry, frame);
-    const free = candidates.find((candidate) => !taken.hits(candidate.rect));
+    const fitting = candidates.filter((candidate) => !taken.hits(candidate.rect));
+    // Rather off the lines of frames than on them, where there is the choice.
+    const free =
+      fitting.find(({ rect }) => !lines.some((line) => overlap(line, grown(rect, 1)))) ?? fitting[0];
     const label = free ?? candidates[0]!;
     taken.add(label.rect);
     return { geometry: { ...geometry, label }, crowded: free === undefined };
   });
+};

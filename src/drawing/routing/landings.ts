@@ -9,7 +9,18 @@ import type { KnownRun } from './detour.ts';
 import { detour } from './detour.ts';
 import type { Corners, Ground } from './ground.ts';
 import { bandOf, foreignBands, runIsBlocked } from './ground.ts';
-import { bottom, clamp, contains, isUpright, opposite, outward, overlap, right, runRect } from './rects.ts';
+import {
+  bottom,
+  clamp,
+  contains,
+  frameLines,
+  isUpright,
+  opposite,
+  outward,
+  overlap,
+  right,
+  runRect,
+} from './rects.ts';
 
 /** Where a WAN cable ends: on an edge of its band, a little inside. */
 export interface LandedWay {
@@ -24,6 +35,7 @@ export interface ElbowRoom {
 }
 
 const inset = 8;
+const fromFrameLine = 5;
 const elbowStep = 14;
 const mostElbows = 8;
 /** Room that a searched way needs in front of its landing, and how many searches one landing is worth. */
@@ -59,7 +71,13 @@ const isClear = (ground: Ground, run: LandingRun, site: string, corners: Corners
     const p = corners[i]!;
     if (runIsBlocked(ground, p, q, 1, 2)) return false;
     const room = runRect(p, q, 1);
+    // Not along the top or bottom line of a frame, where it would be taken for a part of it.
+    const beside = runRect(p, q, fromFrameLine);
+    const isAlongLine = ground.frames.some(({ rect }) =>
+      frameLines(rect).some((line) => p.y === q.y && line.width > line.height && overlap(line, beside)),
+    );
     return (
+      !isAlongLine &&
       !ground.frames.some((frame) => frame.site !== site && overlap(frame.rect, room)) &&
       !foreignBands(ground, run.landing.transport).some((rect) => overlap(rect, room))
     );

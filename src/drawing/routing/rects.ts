@@ -47,6 +47,14 @@ export const runRect = (p: Point, q: Point, half: number, past = 0): Rect => {
   return grown(rectBetween(p.x, p.y, q.x, q.y), flat ? past : half, flat ? half : past);
 };
 
+/** The four sides of a rectangle as drawn: 2 px wide. */
+export const frameLines = ({ x, y, width, height }: Rect): readonly Rect[] => [
+  { x, y: y - 1, width, height: 2 },
+  { x, y: y + height - 1, width, height: 2 },
+  { x: x - 1, y, width: 2, height },
+  { x: x + width - 1, y, width: 2, height },
+];
+
 /** The unit step away from a plate's side. */
 export const outward: { readonly [side in Side]: Point } = {
   left: { x: -1, y: 0 },

@@ -6,7 +6,7 @@ import { bandRects } from './bands.ts';
 import { cableGeometries } from './cables.ts';
 import type { FurnishedSheet } from './furnish.ts';
 import { cordsOf, deviceGeometries, furnish } from './furnish.ts';
-import { cableBoxes, jacketBoxes, occupied, solidBoxes, trunkBoxes } from './free-places.ts';
+import { cableBoxes, jacketBoxes, occupied, siteNameRect, solidBoxes, trunkBoxes } from './free-places.ts';
 import { placeLandingLabels, placeRingLabels } from './labels.ts';
 import { trunkGeometries } from './trunks.ts';
 import { placeNotes } from './note-places.ts';
@@ -103,7 +103,17 @@ const draw = (design: Design, { furnished, cords, pitches }: RoutedSheet): Sheet
     ...devices.flatMap((device) => device.plates.map((plate) => plate.rect)),
   ]);
   const trunks = trunkGeometries(bundles, cords.ways);
-  const laid = cableGeometries(design, furnished, { ...ground, bands: cords.bands }, jackets);
+  const laid = cableGeometries(
+    design,
+    furnished,
+    {
+      ...ground,
+      bands: cords.bands,
+      // Cables keep off the names of sites; cords have no choice.
+      obstacles: [...ground.obstacles, ...sites.map((site) => ({ rect: siteNameRect(design, site) }))],
+    },
+    jackets,
+  );
   const rawRings = [...furnished.rings.values()];
 
   const cordBoxes = [...jacketBoxes(jackets), ...trunkBoxes(trunks)];

@@ -175,8 +175,11 @@ const leastBend = (hub: string, { bundles, rings, stands }: FurnishedSheet): num
     const atHub = (['a', 'b'] as const).find((end) => stands.get(bundle[end].device)!.device.site === hub);
     if (atHub === undefined) return [];
     const far = otherEnd(atHub);
-    const faces = rings.get(bundle[atHub].endpoint)!.side !== rings.get(bundle[far].endpoint)!.side;
-    return faces ? [mouthAt(bundle, far) - mouthAt(bundle, atHub)] : [];
+    const [mine, theirs] = [rings.get(bundle[atHub].endpoint)!, rings.get(bundle[far].endpoint)!];
+    // A trunk needs room to turn in, so that its branches leave it sideways.
+    const canBeStraight =
+      mine.side !== theirs.side && mine.manifold === undefined && theirs.manifold === undefined;
+    return canBeStraight ? [mouthAt(bundle, far) - mouthAt(bundle, atHub)] : [];
   });
   const least = bends.reduce((best, bend) => (Math.abs(bend) < Math.abs(best) ? bend : best), Infinity);
   return Math.abs(least) <= mostLevelled ? least : 0;
