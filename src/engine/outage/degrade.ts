@@ -7,7 +7,8 @@ import type { Casualties } from './casualties.ts';
 // No id may hold a tilde, so that no port of the design is called so.
 const deadPort = '~dead';
 
-const afterLoss = (device: Device, lost: Member | undefined): Device =>
+/** A device after one of its members is lost: the other one stands alone. */
+export const deviceAfter = (device: Device, lost: Member | undefined): Device =>
   lost === undefined || device.kind !== 'ha-pair'
     ? device
     : { ...device, mode: 'active-standby', active: lost === 1 ? 2 : 1 };
@@ -21,7 +22,7 @@ export const degrade = (design: DesignFacts, casualties: Casualties): DesignFact
   const kept = Object.fromEntries(
     Object.entries(design.devices).map(([id, device]): [Id, Device] => [
       id,
-      afterLoss(device, members.get(id)),
+      deviceAfter(device, members.get(id)),
     ]),
   );
   const links: { [id: Id]: DesignFacts['links'][string] } = {};

@@ -13,7 +13,7 @@ import type { Answer } from '../wire/problem.ts';
 import type { Casualties } from './casualties.ts';
 import { casualtiesOf } from './casualties.ts';
 import type { SegmentSpread } from './segment-losses.ts';
-import { segmentLosses, segmentSpreads } from './segment-losses.ts';
+import { segmentLosses, segmentSpreads, touchedSpreads } from './segment-losses.ts';
 import type { Change } from './standing.ts';
 import { standingAfter } from './standing.ts';
 
@@ -66,13 +66,17 @@ const isGone = (
 const segmentOutage = (
   spread: SegmentSpread,
   change: Change,
-  gone: ReadonlySet<number>,
+  isOut: (point: AttachmentPoint) => boolean,
   withPairs: boolean,
 ): SegmentOutage | undefined => {
   const { ways, spreads, joined } = spread;
   const count = ways.points.length;
   const losses = segmentLosses(spread, change);
   if (losses.size === 0) return undefined;
+  const gone = new Set<number>();
+  ways.points.forEach((point, i) => {
+    if (isOut(point)) gone.add(i);
+  });
   const isLost = (from: number, to: number): boolean => has(losses.get(from), to);
   const lostByPoint = new Int32Array(count);
   const pairs: PartedPair[] = [];
@@ -165,19 +169,15 @@ export const outageOf = (
 ): Outage => {
   const change = standingAfter(network, casualties);
   const ports = new Set(failed.flatMap(({ id, port }) => (port === undefined ? [] : [`${id}/${port}`])));
-  const segments: SegmentOutage[] = [];
+  const isOut = (point: AttachmentPoint): boolean => isGone(point, casualties, ports);
+  const segments = touchedSpreads(network, change)
+    .map((spread) => segmentOutage(spread, change, isOut, options.pairs === true))
+    .filter((one) => one !== undefined);
   const gone = new Map<string, AttachmentPoint>();
-  for (const spread of segmentSpreads(network)) {
-    const own = new Set<number>();
-    if (casualties.devices.size > 0 || ports.size > 0)
-      spread.ways.points.forEach((point, i) => {
-        if (!isGone(point, casualties, ports)) return;
-        own.add(i);
-        gone.set(`${point.device}/${point.port ?? ''}`, point);
-      });
-    const one = segmentOutage(spread, change, own, options.pairs === true);
-    if (one !== undefined) segments.push(one);
-  }
+  if (casualties.devices.size > 0 || ports.size > 0)
+    for (const { ways } of segmentSpreads(network))
+      for (const point of ways.points)
+        if (isOut(point)) gone.set(`${point.device}/${point.port ?? ''}`, point);
   return {
     segments,
     pairCount: segments.reduce((sum, { pairCount }) => sum + pairCount, 0),

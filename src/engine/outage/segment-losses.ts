@@ -1,3 +1,4 @@
+import type { Network } from '../network/network.ts';
 import { perNetwork } from '../network/network.ts';
 import type { SegmentWays } from './segment-ways.ts';
 import { isOpen, segmentWays } from './segment-ways.ts';
@@ -188,11 +189,6 @@ export const segmentLosses = (
   change: Change,
 ): ReadonlyMap<number, LostTargets> => {
   const losses = new Map<number, LostTargets>();
-  const isTouched =
-    change.lost.some((element) => ways.nodesByElement.has(element)) ||
-    change.gained.some((element) => ways.nodesByElement.has(element)) ||
-    change.changedPlaces.some((place) => ways.places.has(place));
-  if (!isTouched) return losses;
   spreads.forEach((spread, source) => {
     const targets = change.isLossOnly
       ? lostTargets(ways, spread, source, change.lost, change.standing)
@@ -200,4 +196,27 @@ export const segmentLosses = (
     if (targets.length > 0) losses.set(source, targets);
   });
   return losses;
+};
+
+const spreadsByElement = perNetwork((network): ReadonlyMap<number, readonly SegmentSpread[]> => {
+  const byElement = new Map<number, SegmentSpread[]>();
+  for (const spread of segmentSpreads(network))
+    for (const element of spread.ways.nodesByElement.keys()) {
+      const list = byElement.get(element);
+      if (list === undefined) byElement.set(element, [spread]);
+      else list.push(spread);
+    }
+  return byElement;
+});
+
+/** The segments whose ways a change touches, in order of id. */
+export const touchedSpreads = (network: Network, change: Change): readonly SegmentSpread[] => {
+  const byElement = spreadsByElement(network);
+  const touched = new Set<SegmentSpread>();
+  for (const element of [...change.lost, ...change.gained])
+    for (const spread of byElement.get(element) ?? []) touched.add(spread);
+  if (change.changedPlaces.length > 0)
+    for (const spread of segmentSpreads(network))
+      if (change.changedPlaces.some((place) => spread.ways.places.has(place))) touched.add(spread);
+  return [...touched].sort((x, y) => (x.ways.segment < y.ways.segment ? -1 : 1));
 };

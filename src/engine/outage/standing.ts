@@ -3,14 +3,13 @@ import { blockKey } from '../flood/forwarding.ts';
 import type { Place } from '../flood/places.ts';
 import { placesOf } from '../flood/places.ts';
 import { blockedPorts } from '../flood/spanning-tree.ts';
-import type { Member } from '../model/devices.ts';
 import type { Id } from '../model/scalars.ts';
 import { tunnelStates } from '../network/can-come-up.ts';
 import { indexNetwork } from '../network/index-network.ts';
 import type { Device, Network } from '../network/network.ts';
 import { entryOf, forwardingMembers, otherEnd, perNetwork } from '../network/network.ts';
 import type { Casualties } from './casualties.ts';
-import { degrade, partOfDevices, partOfTunnels } from './degrade.ts';
+import { degrade, deviceAfter, partOfDevices, partOfTunnels } from './degrade.ts';
 import type { PossibleFlood } from './possible-flood.ts';
 import { memberTakingTunnels, outKey, possibleFlood } from './possible-flood.ts';
 import { spanningTrees } from './spanning-trees.ts';
@@ -44,11 +43,6 @@ export interface Change {
 
 export const FORWARDS = 1;
 export const TAKES_TUNNELS = 2;
-
-const deviceAfter = (device: Device, lost: Member | undefined): Device =>
-  lost === undefined || device.kind !== 'ha-pair'
-    ? device
-    : { ...device, mode: 'active-standby', active: lost === 1 ? 2 : 1 };
 
 const placeState = (device: Device, place: Place): number => {
   if (place.kind !== 'forwarder') return FORWARDS | TAKES_TUNNELS;

@@ -122,7 +122,7 @@ describe('an outage and the document without what failed', () => {
       fc.property(withFailures(generatedDesign), ({ design, failed }) => {
         expect(ways(design, failed)).toEqual(outageTwin(design, failed));
       }),
-      { numRuns: 300 },
+      { numRuns: 150 },
     );
   }, 120_000);
 
@@ -131,7 +131,7 @@ describe('an outage and the document without what failed', () => {
       fc.property(withFailures(withFallback), ({ design, failed }) => {
         expect(ways(design, failed)).toEqual(outageTwin(design, failed));
       }),
-      { numRuns: 200 },
+      { numRuns: 100 },
     );
   }, 120_000);
 
@@ -142,7 +142,7 @@ describe('an outage and the document without what failed', () => {
       fc.property(withFailures(withTrees), ({ design, failed }) => {
         expect(ways(design, failed)).toEqual(outageTwin(design, failed, hears));
       }),
-      { numRuns: 200 },
+      { numRuns: 100 },
     );
   }, 120_000);
 });
