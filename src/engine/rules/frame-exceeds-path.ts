@@ -159,6 +159,7 @@ const gatewayFaults = (
   const { design } = network;
   const largestBytes = capacities[0]?.largestBytes;
   if (largestBytes === undefined) return [];
+  const { protocols } = design.segments[segment]!;
   return gatewaysOf(network, segment).flatMap((id): Fault<typeof messages>[] => {
     const forwarder = design.forwarders[id]!;
     const mtuBytes = forwarder.gateway!.mtu!;
@@ -176,9 +177,19 @@ const gatewayFaults = (
         elements: [ref, { collection: 'segments', id: segment }],
         properties: [{ ref, path: ['gateway', 'mtu'] }],
         basis: [mtuBytes, largestBytes],
-        severity: 'degrading',
-        severityReason: 'Hosts that keep to the segment’s own MTU are not touched.',
-        sources: [{ document: 'RFC 1191', clause: 'section 4' }],
+        // RFC 2328 section 10.6, RFC 3719 section 6: their full-size packets decide whether routers become neighbours.
+        ...(protocols?.includes('ospf') === true || protocols?.includes('is-is') === true
+          ? {
+              sources: [
+                { document: 'RFC 2328', clause: 'section 10.6' },
+                { document: 'RFC 3719', clause: 'section 6' },
+              ],
+            }
+          : {
+              severity: 'degrading' as const,
+              severityReason: 'Hosts that keep to the segment’s own MTU are not touched.',
+              sources: [{ document: 'RFC 1191', clause: 'section 4' }],
+            }),
       },
     ];
   });

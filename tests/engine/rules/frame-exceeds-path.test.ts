@@ -150,6 +150,19 @@ testRule(frameExceedsPath, {
         },
       ],
     },
+    'a router with too large an MTU on a segment that carries OSPF': {
+      design: changed(pairDesign(), {
+        segments: { a: { protocols: ['ipv4', 'ospf'] } },
+        forwarders: { 'br-s0-a': { gateway: { mtu: 1500 } } },
+      }),
+      findings: [
+        {
+          sentence: 'br-110 at Head office sends 1500-byte packets, 1396 fit',
+          severity: 'blocking',
+          fixes: ['Set its MTU to 1396'],
+        },
+      ],
+    },
     'a segment and its gateway, cured together': {
       design: changed(pairDesign(), mtu(1500), { forwarders: { 'br-s0-a': { gateway: { mtu: 1500 } } } }),
       findings: [
