@@ -69,6 +69,15 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
     },
   ],
   [
+    'the outline of a sheet with a selection',
+    async (page) => {
+      await signInAs(page, 'architect');
+      await openSheet(page, 'with planted faults');
+      await page.getByRole('tab', { name: 'Outline' }).click();
+      await page.getByRole('treeitem', { name: /^Site Gullhaven/ }).click();
+    },
+  ],
+  [
     'a sheet that may only be read',
     async (page) => {
       await signInAs(page, 'reviewer');

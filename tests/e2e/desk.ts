@@ -60,13 +60,23 @@ export const placePart = async (page: Page, part: string, share: Spot): Promise<
 /** Waits until the bar says that everything is saved. */
 export const saved = (page: Page): Promise<void> => page.getByText('Saved', { exact: true }).waitFor();
 
+/** Waits until the sheet, which keeps itself fitted to its room, has stopped gliding. */
+export const atRest = async (page: Page): Promise<void> => {
+  const where = () => page.locator('.react-flow__viewport').getAttribute('style');
+  let [before, now] = [await where(), ''];
+  for (let quiet = 0; quiet < 3; quiet = now === before ? quiet + 1 : 0) {
+    before = now;
+    await page.waitForTimeout(150);
+    now = (await where()) ?? '';
+  }
+};
+
 /** Opens the drawer under the sheet unless it stands open. */
 export const openDrawer = async (page: Page): Promise<void> => {
   const shut = page.getByRole('button', { name: 'Open the drawer' });
   if ((await shut.count()) === 0) return;
   await shut.click();
-  // The sheet keeps itself fitted to the room that is left, in a glide of 240 ms.
-  await page.waitForTimeout(500);
+  await atRest(page);
 };
 
 /** The rows of the findings list that say something. */

@@ -1,7 +1,18 @@
 import { afterAll, beforeAll, beforeEach, afterEach, describe, expect, it } from 'vitest';
 import type { Page } from 'playwright-core';
 import { launchBrowser, type TestBrowser } from '../support/browser.ts';
-import { drag, finding, middleOf, newDesign, node, nodes, saved, signInAs, storedDesign } from './desk.ts';
+import {
+  atRest,
+  drag,
+  finding,
+  middleOf,
+  newDesign,
+  node,
+  nodes,
+  saved,
+  signInAs,
+  storedDesign,
+} from './desk.ts';
 
 let browser: TestBrowser;
 let page: Page;
@@ -14,6 +25,7 @@ beforeEach(async () => {
   await signInAs(page, 'architect');
   await newDesign(page, `Editing ${crypto.randomUUID().slice(0, 8)}`, 'Demo');
   await nodes(page, 'ring').first().waitFor();
+  await atRest(page);
 });
 afterEach(() => page.context().close());
 
@@ -34,7 +46,7 @@ describe('gestures on the sheet', () => {
     await expect.poll(() => selected.count()).toBe(3);
     // The inspector has opened beside the sheet, which keeps itself fitted: the hand goes where things stand now.
     await page.getByRole('complementary', { name: 'Inspector' }).waitFor();
-    await page.waitForTimeout(600);
+    await atRest(page);
     const held = await middleOf(node(page, 'devices/gate-gul'));
     await drag(page, held, { x: held.x - 10, y: held.y + 30 });
     await expect
