@@ -105,9 +105,8 @@ describe('edits on the newest state', () => {
       ]),
     );
     const large = settled(design, [{ devices }]).document;
-    const startedAt = performance.now();
+    // Once a removal looked at all references again for each device, which took minutes: the test's own limit would tell.
     expect(Object.keys(settled(large, [{ sites: { s1: null } }]).document.devices)).not.toContain('sw-7');
-    expect(performance.now() - startedAt).toBeLessThan(5_000);
   });
 
   test('that would make the design too large are refused with its size', () => {
