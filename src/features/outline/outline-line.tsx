@@ -59,7 +59,6 @@ export const OutlineLine = memo(function OutlineLine({
     // eslint-disable-next-line jsx-a11y/click-events-have-key-events
     <div
       id={lineId(row.key)}
-      data-row={row.key}
       role="treeitem"
       aria-label={rowWords(row)}
       aria-level={level}
@@ -76,7 +75,7 @@ export const OutlineLine = memo(function OutlineLine({
         tools.openMenu(row);
       }}
       className={classNames(
-        'outline-line group flex min-h-29 cursor-default items-center gap-x-8 border-b border-rule pr-6 -outline-offset-2 max-md:min-h-44',
+        'group flex min-h-29 scroll-mt-42 cursor-default items-center gap-x-8 border-b border-rule pr-6 -outline-offset-2 max-md:min-h-44',
         isSelected ? 'bg-blue-wash shadow-[inset_4px_0_0_var(--blue)]' : 'hover:bg-hover',
       )}
       style={{ paddingLeft: 8 + (level - 1) * indentPx }}
@@ -113,22 +112,26 @@ export const OutlineLine = memo(function OutlineLine({
           />
         )}
         <span className="text-note text-ink-2">{facts.join(', ')}</span>
+        {canAdd && group !== undefined && addWords !== undefined && (
+          <Button
+            kind="accent"
+            small
+            tabIndex={isCurrent ? 0 : -1}
+            onClick={(event) => {
+              event.stopPropagation();
+              tools.addTo(group);
+            }}
+          >
+            {addWords}
+          </Button>
+        )}
       </span>
       {severities.some((severity) => counts[severity] > 0) && <SeverityCounts counts={counts} worded />}
-      {canAdd && group !== undefined && addWords !== undefined && (
-        <Button
-          kind="accent"
-          small
-          tabIndex={isCurrent ? 0 : -1}
-          onClick={(event) => {
-            event.stopPropagation();
-            tools.addTo(group);
-          }}
-        >
-          {addWords}
-        </Button>
+      {ref === undefined ? (
+        <span className="w-24 shrink-0" />
+      ) : (
+        <LineMenu row={row} tools={tools} isCurrent={isCurrent} isOpen={isMenuOpen} />
       )}
-      {ref !== undefined && <LineMenu row={row} tools={tools} isCurrent={isCurrent} isOpen={isMenuOpen} />}
     </div>
   );
 });

@@ -34,14 +34,7 @@ export function Outline({ view }: { readonly view: OutlineViewStore }) {
         </p>
       </div>
       {shown.rows.length > 0 && (
-        <div
-          role="tree"
-          aria-label="Outline"
-          aria-multiselectable="true"
-          tabIndex={-1}
-          className="scroll-pt-42"
-          onKeyDown={onKeyDown}
-        >
+        <div role="tree" aria-label="Outline" aria-multiselectable="true" tabIndex={-1} onKeyDown={onKeyDown}>
           {shown.rows.map((visible, at) => (
             <OutlineLine
               key={visible.row.key}
