@@ -65,7 +65,10 @@ describe.skipIf(ipsecLack !== undefined)('an association', () => {
     'carries frames exactly where the engine says so: $what',
     async ({ tunnel, host, index }) => {
       const hex = frameOf({ from: index + 1, to: macOf(0) });
-      const { captured } = await lab.probe.exchange({ frames: [{ from: host, hex }] });
+      const { captured } = await lab.probe.exchange({
+        frames: [{ from: host, hex }],
+        atLeast: isUp(tunnel) ? { 'h-s0-a': 1 } : {},
+      });
       expect(captured['h-s0-a']!.some(([frame]) => frame === hex)).toBe(isUp(tunnel));
     },
   );
@@ -74,22 +77,27 @@ describe.skipIf(ipsecLack !== undefined)('an association', () => {
     'makes ESP packets as long as the engine computes: $what',
     async ({ tunnel, host, landing, index }) => {
       const stack = measuredStack(tunnel);
-      for (const innerPacketBytes of innerLengths) {
-        const predicted = stackLayers({ innerPacketBytes, innerIpVersion: 'ipv4', stack });
-        if (!predicted.ok) throw new Error(JSON.stringify(predicted.problems));
-        const hex = frameOf({
+      const predicted = innerLengths.map((innerPacketBytes) => {
+        const answer = stackLayers({ innerPacketBytes, innerIpVersion: 'ipv4', stack });
+        if (!answer.ok) throw new Error(JSON.stringify(answer.problems));
+        return answer.totals.outerIpPacketBytes;
+      });
+      const frames = innerLengths.map((innerPacketBytes) => ({
+        from: host,
+        hex: frameOf({
           from: index + 1,
           to: macOf(0),
           etherType: 0x0800,
           payload: ipv4Packet(innerPacketBytes, innerPacketBytes),
-        });
-        const { captured } = await lab.probe.exchange({ frames: [{ from: host, hex }], quietMs: 60 });
-        const lengths = captured[`underlay ${landing}`]!.flatMap(([frame]) => {
-          const packet = underlayPacketOf(frame);
-          return packet?.udpPort === 4500 ? [packet.ipPacketBytes] : [];
-        });
-        expect(lengths).toEqual([predicted.totals.outerIpPacketBytes]);
-      }
+        }),
+      }));
+      const underlay = `underlay ${landing}`;
+      const { captured } = await lab.probe.exchange({ frames, atLeast: { [underlay]: frames.length } });
+      const lengths = captured[underlay]!.flatMap(([frame]) => {
+        const packet = underlayPacketOf(frame);
+        return packet?.udpPort === 4500 ? [packet.ipPacketBytes] : [];
+      });
+      expect(lengths.sort((x, y) => x - y)).toEqual(predicted);
     },
   );
 });

@@ -3,8 +3,9 @@
 Reads one JSON command a line from standard input and answers each with one line of JSON; ends when its input ends.
 
 open      sockets {name: {netns, interface}}, cut [{netns, interfaces}]: raw sockets on interfaces, and what to take down in a storm
-exchange  frames [{from, hex}], quietMs, atMostMs, atMostFrames: sends, then listens until nothing came for quietMs; when one of
-          the limits is reached first, takes the interfaces to cut down at once, so that no storm outlives its measurement
+exchange  frames [{from, hex}], atLeast {name: count}, patienceMs, quietMs, atMostMs, atMostFrames: sends, then listens until each
+          socket had as many frames as it is to have, or patience is over, and nothing came for quietMs; when frames keep coming
+          beyond a limit, takes the interfaces to cut down at once, so that no storm outlives its measurement
 """
 
 import ctypes
@@ -106,7 +107,13 @@ class Probe:
         total = 0
         is_cut = False
         captured = {name: {} for name in self.sockets}
-        while time.monotonic() - last < command['quietMs'] / 1000:
+        came = dict.fromkeys(self.sockets, 0)
+        while True:
+            now = time.monotonic()
+            has_all = all(came[name] >= count for name, count in command['atLeast'].items())
+            may_end = has_all or now - started > command['patienceMs'] / 1000
+            if may_end and now - last > command['quietMs'] / 1000:
+                break
             for key, _events in listening.select(0.01):
                 for _ in range(64):
                     frame = receive(key.fileobj)
@@ -115,6 +122,7 @@ class Probe:
                     total += 1
                     if not frame.startswith(IPV6_MULTICAST):
                         last = time.monotonic()
+                        came[key.data] += 1
                     counts = captured[key.data]
                     counts[frame] = counts.get(frame, 0) + 1
             if total > command['atMostFrames'] or time.monotonic() - started > command['atMostMs'] / 1000:

@@ -9,9 +9,11 @@ export interface NetworkInterface {
 
 export interface Exchange {
   readonly frames: readonly { readonly from: string; readonly hex: string }[];
+  /** Frames that are expected at a socket: they are waited for, with patience, on a machine that is busy. */
+  readonly atLeast?: Readonly<Record<string, number>>;
   /** The exchange is over when nothing came for so long. */
   readonly quietMs?: number;
-  /** Beyond either of these everything is cut: it is a storm. */
+  /** When frames come beyond either of these everything is cut: it is a storm. */
   readonly atMostMs?: number;
   readonly atMostFrames?: number;
 }
@@ -27,6 +29,8 @@ export interface Probe {
   readonly exchange: (exchange: Exchange) => Promise<Captured>;
   readonly end: () => Promise<void>;
 }
+
+const patienceMs = 5_000;
 
 /** Starts the process that sends and captures frames, with a raw socket on each interface. */
 export const startProbe = async (
@@ -57,8 +61,16 @@ export const startProbe = async (
     throw error;
   }
   return {
-    exchange: ({ frames, quietMs = 250, atMostMs = 2_000, atMostFrames = 5_000 }) =>
-      ask({ do: 'exchange', frames, quietMs, atMostMs, atMostFrames }) as Promise<Captured>,
+    exchange: ({ frames, atLeast = {}, quietMs = 250, atMostMs = 2_000, atMostFrames = 5_000 }) => {
+      const hasToWait = Object.keys(atLeast).length > 0;
+      const limits = {
+        patienceMs,
+        quietMs,
+        atMostMs: hasToWait ? atMostMs + patienceMs : atMostMs,
+        atMostFrames,
+      };
+      return ask({ do: 'exchange', frames, atLeast, ...limits }) as Promise<Captured>;
+    },
     end,
   };
 };
