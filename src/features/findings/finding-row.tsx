@@ -48,7 +48,7 @@ export function FindingRow({
           aria-controls={open ? detailsId : undefined}
           onClick={onPress}
           className={classNames(
-            'grid min-w-0 flex-1 grid-cols-[22px_84px_minmax(0,1fr)_minmax(0,122px)_56px_13px] items-center gap-x-12 py-4 pr-10 pl-12 text-left text-base -outline-offset-2',
+            'grid min-w-0 flex-1 grid-cols-[22px_84px_minmax(0,1fr)_minmax(110px,0.32fr)_66px_13px] items-center gap-x-12 py-4 pr-10 pl-12 text-left text-base -outline-offset-2',
             'max-md:grid-cols-[24px_86px_minmax(0,1fr)_16px] max-md:py-8',
             !selected && 'hover:bg-hover',
           )}
@@ -69,12 +69,13 @@ export function FindingRow({
             <Button
               kind="accent"
               small
-              className="w-full whitespace-normal!"
+              className="h-auto! min-h-24 w-full py-2 whitespace-normal!"
               title={firstFix.sentence}
               onClick={() => onApplyFix(firstFix.id)}
               {...previewHandlers(firstFix, onPreviewFix)}
             >
-              <span className="truncate">{firstFix.label}</span>
+              {/* Never cut: an address or a number that is half shown is worse than a second line. */}
+              <span className="min-w-0 break-words">{firstFix.label}</span>
             </Button>
           )}
         </div>
