@@ -23,6 +23,8 @@ export interface Decorations {
   readonly cuts: readonly {
     readonly tunnel: string;
     readonly vnis?: { readonly a?: number; readonly b?: number };
+    /** The balloon that belongs to it and points into the gap. */
+    readonly balloon?: number;
   }[];
   readonly loops: readonly { readonly steps: readonly LoopStep[] }[];
   readonly ghosts: readonly {
@@ -36,6 +38,8 @@ export interface Decorations {
     readonly end: 'a' | 'b';
     readonly packetBytes: number;
     readonly mtuBytes: number;
+    /** The balloon that belongs to it and stands beside it. */
+    readonly balloon?: number;
   }[];
   readonly balloons: readonly {
     readonly number: number;

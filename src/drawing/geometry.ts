@@ -187,9 +187,12 @@ export interface CableGeometry {
   readonly noWay: boolean;
 }
 
-/** Something that found no room; shown as an advisory together with an offer to tidy. */
+/**
+ * Something that found no room; shown as an advisory together with an offer to tidy. `sheet`: sites that lie outside the
+ * largest sheet there is, by their ids.
+ */
 export interface Crowded {
-  readonly what: 'overlap' | 'no-way' | 'text';
+  readonly what: 'overlap' | 'no-way' | 'text' | 'sheet';
   readonly ids: readonly string[];
 }
 

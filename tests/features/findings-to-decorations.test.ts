@@ -10,7 +10,7 @@ describe('findings as decorations of the sheet', () => {
   it('cut a tunnel whose VNIs differ, with both numbers and a worded balloon', () => {
     const findings = runRules(cutPair);
     const { cuts, balloons } = findingsToDecorations(findings, ['tn-s0-s1-a']);
-    expect(cuts).toEqual([{ tunnel: 'tn-s0-s1-a', vnis: { a: 10_000, b: 10_210 } }]);
+    expect(cuts).toEqual([{ tunnel: 'tn-s0-s1-a', vnis: { a: 10_000, b: 10_210 }, balloon: 1 }]);
     expect(balloons[0]).toMatchObject({ number: 1, severity: 'blocking', words: 'VNIs differ' });
   });
 

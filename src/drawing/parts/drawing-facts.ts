@@ -72,6 +72,8 @@ export interface DrawingFacts {
   readonly devices: { readonly [id: string]: DeviceFacts };
   readonly transports: { readonly [id: string]: TransportWords };
   readonly tunnels: { readonly [id: string]: TunnelFacts };
+  readonly associations: { readonly [id: string]: string };
+  readonly endpoints: { readonly [id: string]: string };
   readonly notes: { readonly [id: string]: NoteFacts };
   /** The device of each forwarder, which has no place of its own. */
   readonly forwarders: { readonly [id: string]: string };
@@ -189,6 +191,8 @@ export const drawingFacts = (
       endpoints: { a: tunnel.a.endpoint, b: tunnel.b.endpoint },
       ...(tunnel.association === undefined ? {} : { association: tunnel.association }),
     })),
+    associations: mapEntries(design.associations, (association) => association.name),
+    endpoints: mapEntries(design.endpoints, (endpoint) => endpoint.name),
     notes: mapEntries(design.notes, ({ text, target }) => ({
       text,
       ...(target === undefined ? {} : { target }),

@@ -142,6 +142,9 @@ const labelFor = (words: string, { x, y }: Point, path: Path, crowd: Crowd): Gho
     { x: x + off + 8, baseline: y + 4.5, width },
     { x: x - width / 2, baseline: y - off - 6, width },
     { x: x - off - 8 - width, baseline: y + 4.5, width },
+    { x: x - off, baseline: y + off + 15, width },
+    { x: x + off - width, baseline: y + off + 15, width },
+    { x: x - off, baseline: y - off - 6, width },
     { x: x - width / 2, baseline: y + off + 28, width },
   ];
   const own = path.slice(1).map(({ to }, i) => runRect(path[i]!.to, to, 2, 2));

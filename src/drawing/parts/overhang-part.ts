@@ -123,6 +123,16 @@ const standingPipes = (geometry: SheetGeometry, look: Look): readonly StandingPi
   });
 };
 
+/** Where the balloons point that belong to pipes: the near flange. */
+export const overhangAnchors = (geometry: SheetGeometry, look: Look): ReadonlyMap<number, Point> =>
+  new Map(
+    standingPipes(geometry, look).flatMap(({ overhang, centre }) =>
+      overhang.balloon === undefined
+        ? []
+        : [[overhang.balloon, { x: centre.x - pipePx / 2, y: centre.y }] as const],
+    ),
+  );
+
 /** The room that pipes take with their leaders, for what is placed after them. */
 export const overhangCallouts = (geometry: SheetGeometry, look: Look): readonly Callout[] =>
   standingPipes(geometry, look).map(({ box, place, centre }) => ({ box, leader: [place, centre] }));

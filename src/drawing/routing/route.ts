@@ -1,5 +1,6 @@
 import type { Design } from '../../engine/model/design.ts';
 import type { BandGeometry, Crowded, Rect, SheetGeometry } from '../geometry.ts';
+import { sheetSizes } from '../../engine/model/layout.ts';
 import { lane } from '../parts/sizes.ts';
 import { bandText } from './band-text.ts';
 import { bandRects } from './bands.ts';
@@ -12,6 +13,7 @@ import { trunkGeometries } from './trunks.ts';
 import { placeNotes } from './note-places.ts';
 import { jacketGeometries } from './jackets.ts';
 import type { RoutedCords } from './route-cords.ts';
+import { covers } from './rects.ts';
 import { routeCords } from './route-cords.ts';
 
 export interface RoutedSheet {
@@ -151,7 +153,12 @@ const draw = (design: Design, { furnished, cords, pitches }: RoutedSheet): Sheet
             : undefined;
   const notes = placeNotes(design, sheet, taken, rectOf);
 
+  const outside =
+    sheet.size === sheetSizes.at(-1)
+      ? sites.filter((site) => !covers(sheet.frame, site.rect)).map((site) => site.id)
+      : [];
   const crowded: Crowded[] = [
+    ...(outside.length > 0 ? [{ what: 'sheet' as const, ids: outside }] : []),
     ...cords.overlaps.map(({ ways }): Crowded => ({
       what: 'overlap',
       ids: ways.map((way) => bundles[way]!.id),

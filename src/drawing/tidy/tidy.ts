@@ -119,6 +119,8 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
     force: boolean,
   ): Tidied | undefined => {
     const plain = attempt(size, spacing, seating, 0, force);
+    // Where snug needs more than that to be clean, the next sheet is the better answer.
+    if (spacing === spacings.snug && !force) return plain;
     if (plain !== undefined && (force || scoreOf(plain.routed).steps === 0)) return plain;
     const candidates = staggers.flatMap((stagger) => attempt(size, spacing, seating, stagger, false) ?? []);
     if (plain !== undefined) candidates.unshift(plain);

@@ -8,11 +8,11 @@ const collect = <T>(findings: readonly Finding[], pick: (finding: Finding) => T 
 /** Each tunnel that is down or marked by a finding is cut once, with the VNIs where they are the reason. */
 const cutsOf = (findings: readonly Finding[], down: readonly string[]): Decorations['cuts'] => {
   const cuts = new Map<string, Decorations['cuts'][number]>(down.map((tunnel) => [tunnel, { tunnel }]));
-  for (const { mark } of findings) {
-    if (mark?.kind !== 'cut') continue;
-    if (mark.vnis !== undefined || !cuts.has(mark.tunnel))
-      cuts.set(mark.tunnel, { tunnel: mark.tunnel, vnis: mark.vnis });
-  }
+  findings.forEach(({ mark }, i) => {
+    if (mark?.kind !== 'cut') return;
+    if (mark.vnis !== undefined || cuts.get(mark.tunnel)?.balloon === undefined)
+      cuts.set(mark.tunnel, { tunnel: mark.tunnel, vnis: mark.vnis, balloon: i + 1 });
+  });
   return [...cuts.values()];
 };
 
@@ -41,10 +41,18 @@ export const findingsToDecorations = (
   ghosts: collect(findings, ({ mark, key }) =>
     mark?.kind === 'ghost' ? { id: key, from: mark.from, to: mark.to, label: mark.label } : undefined,
   ),
-  overhangs: collect(findings, ({ mark }) =>
+  overhangs: findings.flatMap(({ mark }, i) =>
     mark?.kind === 'overhang'
-      ? { tunnel: mark.tunnel, end: mark.end, packetBytes: mark.packetBytes, mtuBytes: mark.mtuBytes }
-      : undefined,
+      ? [
+          {
+            tunnel: mark.tunnel,
+            end: mark.end,
+            packetBytes: mark.packetBytes,
+            mtuBytes: mark.mtuBytes,
+            balloon: i + 1,
+          },
+        ]
+      : [],
   ),
   balloons: findings.flatMap((finding, i) => {
     const at = finding.elements[0];

@@ -100,6 +100,8 @@ export const factsWith = (
   sites: {},
   devices: {},
   transports: {},
+  associations: {},
+  endpoints: {},
   notes: {},
   forwarders: {},
   titleBlock: {
