@@ -149,7 +149,6 @@ const build = (design: DesignFacts): Network => {
   };
 };
 
-const facts = ['meta', ...collections] as const;
 const known = new WeakMap<object, Network>();
 
 /**
@@ -158,8 +157,11 @@ const known = new WeakMap<object, Network>();
  */
 export const indexNetwork = (design: DesignFacts): Network => {
   const before = known.get(design) ?? known.get(design.devices);
-  if (before !== undefined && facts.every((key) => before.design[key] === design[key])) return before;
-  const network = build(design);
+  const isJoinedAlike =
+    before !== undefined &&
+    collections.every((collection) => before.design[collection] === design[collection]);
+  if (isJoinedAlike && before.design.meta === design.meta) return before;
+  const network = isJoinedAlike ? { ...before, design } : build(design);
   known.set(design, network);
   known.set(design.devices, network);
   return network;

@@ -16,15 +16,19 @@ interface Plugged {
   readonly landings: readonly string[];
 }
 
-const pluggedPorts = (network: Network): readonly Plugged[] =>
+/** Ports with more than one thing plugged in. */
+const crowdedPorts = (network: Network): readonly Plugged[] =>
   [...network.cablesByPort.values()].flatMap((list) => {
     const { cable, end } = list[0]!;
     const link = network.design.links[cable]!;
     if (link.kind !== 'cable') return [];
     const { device, port } = link[end];
+    const landed = network.landingsByPort.get(portKey(device, port)) ?? [];
+    // Nearly every port: one cable and nothing else.
+    if (list.length === 1 && landed.length === 0) return [];
     return ([1, 2] as const).flatMap((member) => {
       const cables = [...new Set(list.filter((at) => at.member === member).map((at) => at.cable))];
-      const landings = (network.landingsByPort.get(portKey(device, port)) ?? []).filter((id) => {
+      const landings = landed.filter((id) => {
         const landing = network.design.links[id]!;
         return (
           landing.kind === 'landing' &&
@@ -68,7 +72,7 @@ export const portHoldsTwoCables = defineRule({
   },
   check: (network) => {
     const { design } = network;
-    return pluggedPorts(network).flatMap(({ device, port, member, cables, landings }) => {
+    return crowdedPorts(network).flatMap(({ device, port, member, cables, landings }) => {
       if (cables.length + Math.min(landings.length, 1) < 2) return [];
       const entry = design.devices[device]!;
       const isPair = entry.kind === 'ha-pair';
@@ -100,7 +104,7 @@ export const portHoldsTwoCables = defineRule({
   fixes: (fault, network) => {
     const { design } = network;
     const { id: device, port, member = 1 } = fault.elements[0]!;
-    const plugged = pluggedPorts(network).find(
+    const plugged = crowdedPorts(network).find(
       (other) => other.device === device && other.port === port && other.member === member,
     );
     if (port === undefined || plugged === undefined) return [];

@@ -5,6 +5,17 @@ import { plugKey, portVlanKey, segmentsAt, siteVlanKey } from '#engine/network/n
 import { hubDesign, pairDesign } from '../../support/designs.ts';
 
 describe('indexNetwork', () => {
+  it('indexes nothing anew for a title, and still tells it', () => {
+    const design = hubDesign(2);
+    const before = indexNetwork(design);
+    const renamed = applyPatch(design, { meta: { title: 'Coast, second issue' } });
+    const after = indexNetwork(renamed);
+    expect(after.design.meta.title).toBe('Coast, second issue');
+    expect(before.design.meta.title).toBe(design.meta.title);
+    expect(after.circuitsByForwarder).toBe(before.circuitsByForwarder);
+    expect(indexNetwork(renamed)).toBe(after);
+  });
+
   it('finds what hangs on a device, a port, an endpoint and an association', () => {
     const network = indexNetwork(hubDesign(2, { segments: ['a', 'b'] }));
     expect(network.devicesBySite.get('s1')).toEqual(['fw-s1', 'h-s1-a', 'h-s1-b', 'sw-s1']);
