@@ -1,13 +1,12 @@
 import type { ChildProcess } from 'node:child_process';
 import { spawn } from 'node:child_process';
 import { existsSync } from 'node:fs';
-import { mkdtemp, rm, writeFile } from 'node:fs/promises';
-import { tmpdir } from 'node:os';
+import { rm, writeFile } from 'node:fs/promises';
 import { join } from 'node:path';
 import type { Design } from '#engine/model/design.ts';
 import { daemonSettings, ikeSettings } from './ike-settings.ts';
 import { ikeControl, ikeDaemon } from './kernel-lack.ts';
-import { netnsOf } from './namespaces.ts';
+import { makeFolder, netnsOf } from './namespaces.ts';
 import { runScript } from './run-script.ts';
 
 /** The IKE daemons of a design that is raised. */
@@ -28,7 +27,7 @@ const ended = (child: ChildProcess): Promise<void> =>
 
 /** Starts a daemon in the namespace of every gateway that has an association, and gives each its settings. */
 export const startIkeDaemons = async (design: Design): Promise<IkeDaemons> => {
-  const folder = await mkdtemp(join(tmpdir(), 'longpatch-ike-'));
+  const folder = await makeFolder();
   const devices = [
     ...new Set(Object.values(design.associations).flatMap(({ a, b }) => [a.device, b.device])),
   ].sort();

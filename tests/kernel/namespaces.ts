@@ -1,4 +1,7 @@
 import { readdirSync } from 'node:fs';
+import { mkdtemp, rm } from 'node:fs/promises';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
 import { runScript } from './run-script.ts';
 
 const folder = '/run/netns';
@@ -33,11 +36,17 @@ const remove = async (names: readonly string[]): Promise<void> => {
 export const removeOwnNamespaces = (): Promise<void> =>
   remove(existing().filter((name) => Number(ours.exec(name)?.[1]) === process.pid));
 
-/** Removes the namespaces of runs that ended without doing so themselves. */
-export const removeLeftovers = (): Promise<void> =>
-  remove(
-    existing().filter((name) => {
-      const pid = Number(ours.exec(name)?.[1]);
-      return pid > 0 && !isAlive(pid);
-    }),
-  );
+const isLeftover = (name: string): boolean => {
+  const pid = Number(ours.exec(name)?.[1]);
+  return pid > 0 && !isAlive(pid);
+};
+
+/** A fresh folder of this run. */
+export const makeFolder = (): Promise<string> => mkdtemp(join(tmpdir(), netnsOf('')));
+
+/** Removes the namespaces and folders of runs that ended without doing so themselves. */
+export const removeLeftovers = async (): Promise<void> => {
+  await remove(existing().filter(isLeftover));
+  for (const name of readdirSync(tmpdir()).filter(isLeftover))
+    await rm(join(tmpdir(), name), { recursive: true, force: true });
+};
