@@ -36,7 +36,7 @@ const keptSettings = (device: Device, kind: DeviceKind): Device['settings'] => {
 
 /** The device as the other kind: what all kinds have, and what the new one needs. */
 const asKind = (device: Device, kind: DeviceKind): Device => {
-  const { site, name, profile, notes } = device;
+  const { site, name, profile, managementAddress, notes } = device;
   const settings = keptSettings(device, kind);
   const common = {
     site,
@@ -44,6 +44,7 @@ const asKind = (device: Device, kind: DeviceKind): Device => {
     ports: keptPorts(device, kind),
     ...(profile === undefined || !isGateway({ kind }) ? {} : { profile }),
     ...(settings === undefined ? {} : { settings }),
+    ...(managementAddress === undefined ? {} : { managementAddress }),
     ...(notes === undefined ? {} : { notes }),
   };
   return kind === 'ha-pair'

@@ -21,7 +21,7 @@ describe('changing the kind of a device', () => {
   });
 
   it('takes nothing away between firewall and router', () => {
-    const design = pairDesign();
+    const design = applyPatch(pairDesign(), { devices: { 'fw-s1': { managementAddress: '10.9.0.12' } } });
     const operation = changeDeviceKind(design, 'fw-s1', 'router');
     expect(operation).toMatchObject({ ok: true, label: 'Make fw-s1 a router' });
     expect(operation.ok && removedBy(design, operation.patch)).toEqual([]);
