@@ -51,6 +51,10 @@ const outerDf = [
   { value: 'clear', label: 'clear' },
   { value: 'copy', label: 'copied' },
 ] as const;
+const whenDown = [
+  { value: 'drop', label: 'dropped' },
+  { value: 'clear', label: 'in clear' },
+] as const;
 const livenessStates = [
   { value: 'on', label: 'checked' },
   { value: 'off', label: 'off' },
@@ -81,6 +85,10 @@ export function AssociationPanel({ id }: { readonly id: string }) {
       <Mirror label="Both ends" entry={['associations', id]} heads={heads}>
         <IdentityRows id={id} association={association} heads={heads} />
       </Mirror>
+      <p className="text-note text-ink-2">
+        IKE fragmentation: IKE cuts its long messages itself, so that none crosses as IP fragments. While
+        down: what becomes of the tunnels’ packets while there are no keys.
+      </p>
       <Identities id={id} association={association} heads={heads} />
       <FindingBoxes about={ref} />
       <Section title={`Tunnels (${tunnels.length})`}>
@@ -181,6 +189,9 @@ function IdentityRows({ id, association, heads }: RowsProps) {
           />
         )}
       </MirrorRow>
+      <MirrorRow field={['ikeFragmentation']} agree="should">
+        {({ end: _end, ...cell }) => <YesNoField label="IKE fragmentation" {...cell} words={['on', 'off']} />}
+      </MirrorRow>
       <MirrorRow field={['start']} agree="free">
         {({ end: _end, ...cell }) => <SelectField label="Set-up" {...cell} choices={starts} />}
       </MirrorRow>
@@ -189,6 +200,9 @@ function IdentityRows({ id, association, heads }: RowsProps) {
       </MirrorRow>
       <MirrorRow field={['outerDf']} agree="should">
         {({ end: _end, ...cell }) => <SelectField label="Outer DF" {...cell} choices={outerDf} />}
+      </MirrorRow>
+      <MirrorRow field={['whenDown']} agree="should">
+        {({ end: _end, ...cell }) => <SelectField label="While down" {...cell} choices={whenDown} />}
       </MirrorRow>
     </>
   );

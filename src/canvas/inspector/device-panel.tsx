@@ -22,6 +22,12 @@ import { vlansOf } from './tunnel-facts.ts';
 import { useCommit, useEditable } from './use-field.ts';
 import { textList } from './written-value.ts';
 
+const vxlanSources = [
+  { value: 'anyone', label: 'anyone' },
+  { value: 'peers', label: 'its peers only' },
+  { value: 'nobody', label: 'nobody' },
+] as const;
+
 /** A firewall, HA pair, router, switch or host, with its ports and what it holds. */
 export function DevicePanel({ id }: { readonly id: string }) {
   const design = useOpenState((state) => state.document);
@@ -42,6 +48,7 @@ export function DevicePanel({ id }: { readonly id: string }) {
           choices={Object.entries(design.sites).map(([site, { name }]) => ({ value: site, label: name }))}
         />
         {device.kind === 'host' && <HostCells id={id} />}
+        <TextField label="Management address" path={at('managementAddress')} span={2} />
         {gateway && (
           <SelectField
             label="Equipment profile"
@@ -79,6 +86,13 @@ export function DevicePanel({ id }: { readonly id: string }) {
                   path={at('settings', 'keepInnerTags')}
                   words={['kept', 'stripped']}
                   span={2}
+                />
+                <SelectField
+                  label="VXLAN taken from"
+                  path={at('settings', 'vxlanFrom')}
+                  choices={vxlanSources}
+                  span={2}
+                  hint="VXLAN taken from: whose packets to the VXLAN port its WAN ports let in outside IPsec."
                 />
               </>
             )}

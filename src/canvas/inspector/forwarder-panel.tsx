@@ -9,7 +9,7 @@ import { nameOf } from '../../workspace/operations/name-of.ts';
 import { useNetwork } from './carried-segments.tsx';
 import { ElementLink } from './element-link.tsx';
 import type { FieldPath } from './field-marks.ts';
-import { SelectField, TextField } from './fields.tsx';
+import { SelectField, TextField, YesNoField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
 import { GatewayInterface } from './gateway-interface.tsx';
 import { OrderedList } from './ordered-list.tsx';
@@ -68,6 +68,12 @@ export function ForwarderPanel({ id }: { readonly id: string }) {
             { value: 'snoop', label: 'where it was joined' },
             { value: 'drop', label: 'dropped' },
           ]}
+        />
+        <YesNoField
+          label="Group membership querier"
+          path={at('querier')}
+          span={2}
+          hint="Querier: it asks the segment who is a member of which group. Where nobody asks, bridges that watch forget."
         />
         {isBridge && <SpanningTreeCells path={at('spanningTree')} of={forwarder.name} />}
       </CellGrid>

@@ -4,6 +4,7 @@ import { ends } from '../../engine/network/network.ts';
 import { useOpenState } from '../../workspace/open-design-context.tsx';
 import { linksIn } from '../../workspace/operations/connect-ports.ts';
 import { useNetwork } from './carried-segments.tsx';
+import { lifetime } from './duration-text.ts';
 import { ElementLink, ElementList } from './element-link.tsx';
 import { SelectField, TextField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
@@ -198,6 +199,15 @@ function LandingCells({ id }: { readonly id: string }) {
               commit(`NAT of ${device?.name ?? landing.device}`, patchAt(at('nat'), natValues[nat]));
           }}
         />
+        {landing.nat !== undefined && (
+          <TextField
+            label="NAT forgets after"
+            path={[...at('nat'), 'mappingSeconds']}
+            writing={lifetime}
+            span={2}
+            hint="NAT forgets after: how long it remembers a UDP flow on which no packet comes."
+          />
+        )}
         <TextField
           label="Access overhead"
           path={at('accessOverhead')}

@@ -56,6 +56,17 @@ export function ProfilePanel({ id }: { readonly id: string }) {
             { value: 'fragment', label: 'cut all the same' },
           ]}
         />
+        <SelectField
+          label="HMAC-SHA2-256 cut to"
+          path={at('hmacSha256Bits')}
+          span={2}
+          // RFC 4868 section 2.3: 128 bits.
+          choices={[
+            { value: 128, label: '128 bits, as the standard says' },
+            { value: 96, label: '96 bits, as an early draft said' },
+          ]}
+          hint="HMAC-SHA2-256 cut to: bits of the integrity value left on a packet. Ends that differ refuse each other’s packets."
+        />
       </CellGrid>
       <FindingBoxes about={ref} />
       {(['plain', 'encrypted'] as const).map((kind) => (

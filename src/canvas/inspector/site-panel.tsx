@@ -21,6 +21,13 @@ export function SitePanel({ id }: { readonly id: string }) {
   return (
     <>
       <PanelHead of={ref} namePath={['sites', id, 'name']} />
+      <CellGrid>
+        <TextField
+          label="Security zone"
+          path={['sites', id, 'zone']}
+          hint="Sites of one security zone trust each other’s hosts."
+        />
+      </CellGrid>
       <FindingBoxes about={ref} />
       <Section title={`Segments that land here (${segments.length})`}>
         {segments.length === 0 && <p className="text-note text-ink-3">None.</p>}

@@ -2,7 +2,7 @@ import type { Design } from '../../engine/model/design.ts';
 import { joinPatches, patchAt, type MergePatch } from '../../engine/model/merge-patch.ts';
 import { rankAtEnd } from '../../engine/model/rank.ts';
 import type { End, Network } from '../../engine/network/network.ts';
-import { deviceOfTunnelEnd, entryOf, otherEnd } from '../../engine/network/network.ts';
+import { deviceOfTunnelEnd, ends, entryOf, otherEnd } from '../../engine/network/network.ts';
 import { endpointAddress, tunnelFamily } from '../../engine/network/selectors-cover.ts';
 import { tagModeOf, keepsTags } from '../../engine/rules/tag-mode.ts';
 import { tunnelCapacity, type EndCapacity } from '../../engine/rules/tunnel-capacity.ts';
@@ -16,6 +16,18 @@ export const endAddress = (network: Network, tunnelId: string, end: End): string
   return family === undefined
     ? (endpointAddress(network, endpoint, 4) ?? endpointAddress(network, endpoint, 6))
     : endpointAddress(network, endpoint, family);
+};
+
+/**
+ * Whether a tunnel's UDP checksums are worth asking for: its ends meet over IPv6, or the design states them already.
+ * RFC 768: over IPv4 zero says that none was computed, and every receiver takes it. RFC 6935 section 5: over IPv6 it does not.
+ */
+export const checksumsMatter = (network: Network, tunnelId: string): boolean => {
+  const tunnel = entryOf(network.design.tunnels, tunnelId);
+  return (
+    tunnelFamily(network, tunnel) === 6 ||
+    ends.some((end) => tunnel[end].udpChecksum !== undefined || tunnel[end].takesZeroChecksum !== undefined)
+  );
 };
 
 /** The VLANs that a forwarder takes from ports, as they are written. */

@@ -14,7 +14,7 @@ import { formatMilliseconds } from './duration-text.ts';
 import { ElementLink, ElementList } from './element-link.tsx';
 import { endHeads } from './end-heads.ts';
 import { markAt } from './field-marks.ts';
-import { LongTextField, SelectField, TextField, Unknown } from './fields.tsx';
+import { LongTextField, SelectField, TextField, Unknown, YesNoField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
 import { CrossingRail, Mirror, MirrorRow, Rail, useEndCell } from './mirror.tsx';
 import { PanelHead } from './panel-head.tsx';
@@ -22,6 +22,7 @@ import { Section } from './section.tsx';
 import { TunnelCord } from './tunnel-cord.tsx';
 import {
   capacityOf,
+  checksumsMatter,
   endAddress,
   farAddress,
   forwardersAt,
@@ -44,6 +45,11 @@ const innerTags = [
   { value: 'keep', label: 'keep' },
 ] as const;
 
+const udpChecksum = [
+  { value: 'computed', label: 'computed' },
+  { value: 'zero', label: 'zero' },
+] as const;
+
 /** A tunnel: its cord, what it carries, both ends side by side, what the checks say, and its sizes. */
 export function TunnelPanel({ id }: { readonly id: string }) {
   const network = useNetwork();
@@ -53,6 +59,7 @@ export function TunnelPanel({ id }: { readonly id: string }) {
   const devices = { a: deviceOfTunnelEnd(network, tunnel, 'a'), b: deviceOfTunnelEnd(network, tunnel, 'b') };
   const heads = endHeads(network.design, devices.a, devices.b);
   const ref = { collection: 'tunnels', id } as const;
+  const asksForChecksums = checksumsMatter(network, id);
   return (
     <>
       <PanelHead of={ref} namePath={['tunnels', id, 'name']} />
@@ -92,7 +99,13 @@ export function TunnelPanel({ id }: { readonly id: string }) {
           )}
         </MirrorRow>
         <ForwarderRow id={id} />
+        {asksForChecksums && <ChecksumRows />}
       </Mirror>
+      {asksForChecksums && (
+        <p className="text-note text-ink-2">
+          Over IPv6 a UDP checksum of zero is an error unless the receiving end was told to take it.
+        </p>
+      )}
       <FindingBoxes about={ref} />
       <Sizes id={id} />
       <Section
@@ -143,6 +156,22 @@ export function TunnelPanel({ id }: { readonly id: string }) {
           <LongTextField label="Notes" path={['tunnels', id, 'notes']} />
         </CellGrid>
       </Section>
+    </>
+  );
+}
+
+/** What each end writes as the outer UDP checksum, and whether it takes packets without one. */
+function ChecksumRows() {
+  return (
+    <>
+      <MirrorRow field={['udpChecksum']} agree="free">
+        {({ end: _end, ...cell }) => <SelectField label="UDP checksum" {...cell} choices={udpChecksum} />}
+      </MirrorRow>
+      <MirrorRow field={['takesZeroChecksum']} agree="free">
+        {({ end: _end, ...cell }) => (
+          <YesNoField label="Zero checksum" {...cell} words={['taken', 'refused']} />
+        )}
+      </MirrorRow>
     </>
   );
 }
