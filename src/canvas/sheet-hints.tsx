@@ -1,18 +1,20 @@
+import { crowdedWords } from '../drawing/parts/crowded-words.ts';
 import { useOpenState } from '../workspace/open-design-context.tsx';
 import { useDesk } from './desk-state.ts';
 import { useDrawn } from './geometry-context.tsx';
 import type { TrayPart } from './place-part.ts';
 
-/** Said while cords found no way or no room where things stand now. */
+/** Said while something finds no way or no room where things stand now; words without room are the least of it. */
 export function CrowdedNotice() {
-  const { settled } = useDrawn();
+  const { settled, facts } = useDrawn();
   const editable = useOpenState((state) => state.editable);
-  const tight = settled.crowded.filter((entry) => entry.what !== 'text').length;
-  if (tight === 0) return null;
+  const [first, ...others] = settled.crowded.filter((entry) => entry.what !== 'text');
+  if (first === undefined) return null;
   return (
     <p className="crowded-notice" role="status">
-      {tight === 1 ? 'One line finds no room here.' : `${tight} lines find no room here.`}
-      {editable && ' Move things apart, or let Tidy lay the sheet out.'}
+      {crowdedWords(first, facts)}
+      {others.length > 0 && ` And ${others.length} more.`}
+      {editable && ' Tidy lays the sheet out.'}
     </p>
   );
 }
