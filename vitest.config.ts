@@ -10,6 +10,8 @@ export default defineConfig({
         test: {
           name: 'engine',
           environment: 'node',
+          // Properties on generated designs take seconds on a machine that does other work.
+          testTimeout: 30_000,
           include: ['tests/{engine,drawing,contract,reference,layout,golden}/**/*.test.ts'],
         },
       },
@@ -42,6 +44,7 @@ export default defineConfig({
         test: {
           name: 'client',
           environment: 'jsdom',
+          testTimeout: 30_000,
           include: ['tests/{app,canvas,components,features,lib,pages,workspace}/**/*.test.{ts,tsx}'],
           setupFiles: ['tests/support/jsdom.ts'],
         },
