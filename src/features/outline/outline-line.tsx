@@ -75,7 +75,7 @@ export const OutlineLine = memo(function OutlineLine({
         tools.openMenu(row);
       }}
       className={classNames(
-        'group flex min-h-29 scroll-mt-42 cursor-default items-center gap-x-8 border-b border-rule pr-6 -outline-offset-2 max-md:min-h-44',
+        'group flex min-h-29 scroll-mt-42 [contain-intrinsic-size:auto_29px] [content-visibility:auto] cursor-default items-center gap-x-8 border-b border-rule pr-6 -outline-offset-2 max-md:min-h-44',
         isSelected ? 'bg-blue-wash shadow-[inset_4px_0_0_var(--blue)]' : 'hover:bg-hover',
       )}
       style={{ paddingLeft: 8 + (level - 1) * indentPx }}
