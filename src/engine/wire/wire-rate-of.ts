@@ -5,7 +5,8 @@ import { scaledUp, type Ratio } from './ratio.ts';
 import type { Stack } from './stack.ts';
 
 export const MOST_RATE_BPS = 10_000_000_000_000;
-export const MOST_PACKETS_PER_SECOND = 10_000_000_000;
+// The longest packet in pieces for the smallest MTU takes some 1.5 Mbit: at this rate its bit/s are still a whole number.
+export const MOST_PACKETS_PER_SECOND = 1_000_000_000;
 
 /** Traffic as hosts offer it: a bit rate of their IP packets or a packet rate, and how long the packets are. */
 export type Traffic = { readonly mix: FrameMix } & (

@@ -2,6 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { simpleImix } from '#engine/reference/frame-mixes.ts';
 import { computeWire, type WireResult } from '#engine/wire/compute-wire.ts';
+import { MOST_PACKETS_PER_SECOND } from '#engine/wire/wire-rate-of.ts';
 import { parseWireRequest, wireRequestSchema, type WireRequestInput } from '#engine/wire/wire-request.ts';
 import { arbitraryIpVersion, arbitraryStack } from './arbitrary-stack.ts';
 
@@ -277,7 +278,7 @@ describe('no request', () => {
       traffic: optional(
         fc.record({
           innerRateBps: optional(fc.integer({ min: 0, max: 10_000_000_000_000 })),
-          packetsPerSecond: optional(fc.integer({ min: 0, max: 10_000_000_000 })),
+          packetsPerSecond: optional(fc.integer({ min: 0, max: MOST_PACKETS_PER_SECOND })),
           mix: fc.array(
             fc.record({
               ipBytes: fc.integer({ min: 1, max: 65_575 }),
@@ -319,6 +320,22 @@ describe('no request', () => {
       { numRuns: 500 },
     );
     expect(computed).toBeGreaterThan(50);
+  });
+
+  it('has room for a rate that the answer could not hold as whole numbers', () => {
+    const longest = {
+      stack: { vxlanOver: 'none' },
+      transportMtuBytes: 68,
+      fragmentOuter: true,
+      traffic: { packetsPerSecond: MOST_PACKETS_PER_SECOND, mix: [{ ipBytes: 65_535, weight: 1 }] },
+    };
+    expect(JSON.stringify(resultOf(longest as WireRequestInput))).not.toMatch(/\de\+\d/);
+    const { traffic } = longest;
+    const more = { ...longest, traffic: { ...traffic, packetsPerSecond: MOST_PACKETS_PER_SECOND + 1 } };
+    expect(parseWireRequest(more)).toMatchObject({
+      ok: false,
+      problems: [{ field: 'traffic.packetsPerSecond' }],
+    });
   });
 
   it('of any shape makes reading it throw', () => {
