@@ -27,12 +27,17 @@ const goTo = async (page: Page, name: string, words: RegExp): Promise<void> => {
   await expectFocus(page, words);
 };
 
-/** Opens the menu of the row and goes to an item by its first letters. */
+/** Opens the menu of the row and goes down it to an item. */
 const choose = async (page: Page, item: string): Promise<void> => {
   await page.keyboard.press('Shift+F10');
   await page.getByRole('menu').waitFor();
-  await page.keyboard.type(item);
-  await expectFocus(page, new RegExp(`^${item}`));
+  // The menu takes the focus a moment after it shows.
+  await expect
+    .poll(() => page.evaluate(() => document.activeElement?.closest('[role="menu"]') !== null))
+    .toBe(true);
+  const words = new RegExp(`^${item}`);
+  for (let i = 0; i < 40 && !words.test(await focused(page)); i += 1) await page.keyboard.press('ArrowDown');
+  await expectFocus(page, words);
   await page.keyboard.press('Enter');
 };
 
