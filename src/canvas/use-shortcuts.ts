@@ -104,8 +104,8 @@ export function useShortcuts(): void {
       if (key === 'h') return act(() => setTool('pan'));
       if (key === 'n' && editable()) return act(() => startPlacing('note'));
       if (key === '0') return act(() => view.fit(settled.sheet));
-      if (key === '+' || key === '=') return act(() => view.zoomTo(view.zoom * 1.25));
-      if (key === '-') return act(() => view.zoomTo(view.zoom / 1.25));
+      if (key === '+' || key === '=') return act(() => view.zoomBy(1.25));
+      if (key === '-') return act(() => view.zoomBy(1 / 1.25));
     };
     const onCopy = (event: ClipboardEvent): void => {
       if (isTyping(event.target) || window.getSelection()?.isCollapsed === false) return;

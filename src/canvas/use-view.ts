@@ -1,5 +1,5 @@
 import { useReactFlow, useStore } from '@xyflow/react';
-import { useCallback, useMemo } from 'react';
+import { useCallback, useMemo, useRef } from 'react';
 import type { Point, SheetFrame } from '../drawing/geometry.ts';
 import { setFitted } from './desk-state.ts';
 
@@ -7,12 +7,14 @@ export const zoomLimits = { least: 0.1, most: 3 } as const;
 // 10 to 14 px of desk show round a fitted sheet.
 const deskPx = 12;
 const panMs = 240;
+const zoomMs = 120;
 
 const still = (): boolean => window.matchMedia('(prefers-reduced-motion: reduce)').matches;
 
 export interface View {
   readonly zoom: number;
-  readonly zoomTo: (zoom: number) => void;
+  /** Zooms by a factor; presses that come while it still glides add up. */
+  readonly zoomBy: (factor: number) => void;
   readonly fit: (sheet: SheetFrame, animated?: boolean) => void;
   /** Brings a point of the sheet to the middle unless it is well in view already. */
   readonly showPoint: (at: Point) => void;
@@ -22,6 +24,7 @@ export interface View {
 /** Moves over the sheet. Fits are computed from the model, never measured. */
 export function useView(): View {
   const flow = useReactFlow();
+  const aim = useRef({ zoom: 1, until: 0 });
   const zoom = useStore((state) => state.transform[2]);
   const width = useStore((state) => state.width);
   const height = useStore((state) => state.height);
@@ -39,11 +42,12 @@ export function useView(): View {
   return useMemo(
     () => ({
       zoom,
-      zoomTo: (next) => {
+      zoomBy: (factor) => {
         setFitted(false);
-        void flow.zoomTo(Math.min(zoomLimits.most, Math.max(zoomLimits.least, next)), {
-          duration: still() ? 0 : 120,
-        });
+        const from = performance.now() < aim.current.until ? aim.current.zoom : flow.getViewport().zoom;
+        const next = Math.min(zoomLimits.most, Math.max(zoomLimits.least, from * factor));
+        aim.current = { zoom: next, until: performance.now() + 2 * zoomMs };
+        void flow.zoomTo(next, { duration: still() ? 0 : zoomMs });
       },
       fit,
       showPoint: (at) => {

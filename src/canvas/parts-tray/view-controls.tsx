@@ -21,7 +21,7 @@ export function ViewControls() {
           iconOnly
           aria-label="Zoom out"
           icon={<Icon name="minus" size={14} />}
-          onClick={() => view.zoomTo(view.zoom / 1.25)}
+          onClick={() => view.zoomBy(1 / 1.25)}
         />
         <output aria-label="Zoom now">{Math.round(view.zoom * 100)} %</output>
         <Button
@@ -30,7 +30,7 @@ export function ViewControls() {
           iconOnly
           aria-label="Zoom in"
           icon={<Icon name="plus" size={14} />}
-          onClick={() => view.zoomTo(view.zoom * 1.25)}
+          onClick={() => view.zoomBy(1.25)}
         />
         <Button kind="quiet" small onClick={() => view.fit(geometry.sheet)}>
           Fit
