@@ -23,6 +23,7 @@ export const routes = {
   'POST /api/engine/wire': 'anyone',
   'POST /api/engine/load': 'anyone',
   'POST /api/engine/outage': 'anyone',
+  'POST /api/engine/rules': 'anyone',
   'POST /api/engine/trace': 'anyone',
   'GET /api/session': 'anyone',
   'POST /api/session': 'anyone',

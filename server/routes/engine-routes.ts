@@ -4,6 +4,7 @@ import {
   checkRequestSchema,
   loadRequestSchema,
   outageRequestSchema,
+  rulesRequestSchema,
   traceRequestSchema,
 } from '#contract/engine.ts';
 import { wireRequestSchema } from '#engine/wire/wire-request.ts';
@@ -13,6 +14,7 @@ import {
   checkDesign,
   loadAnswer,
   outageAnswer,
+  rulesAnswer,
   traceAnswer,
   wireAnswer,
 } from '../services/engine-answers.ts';
@@ -42,6 +44,10 @@ export function engineRoutes(throttles: Throttles): Router {
 
   mountRoute(router, 'POST /api/engine/wire', ...body, (req, res) => {
     res.json(wireAnswer(readBody(req, wireRequestSchema)));
+  });
+
+  mountRoute(router, 'POST /api/engine/rules', ...body, (req, res) => {
+    res.json(rulesAnswer(readBody(req, rulesRequestSchema)));
   });
 
   mountRoute(router, 'POST /api/engine/trace', ...body, (req, res) => {

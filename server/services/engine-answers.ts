@@ -1,13 +1,22 @@
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import type { z } from 'zod';
-import type { checkAnswerSchema, loadRequestSchema, outageRequestSchema } from '#contract/engine.ts';
+import type {
+  checkAnswerSchema,
+  loadRequestSchema,
+  outageRequestSchema,
+  rulesAnswerSchema,
+  rulesRequestSchema,
+} from '#contract/engine.ts';
 import { loadOf } from '#engine/load/load-of.ts';
 import type { Design } from '#engine/model/design.ts';
 import { parseDesign } from '#engine/model/parse-design.ts';
 import { outage } from '#engine/outage/outage.ts';
+import type { Finding } from '#engine/rules/finding.ts';
 import { fixesFor } from '#engine/rules/fixes-for.ts';
-import { countBySeverity, runRules } from '#engine/rules/run-rules.ts';
+import { rules } from '#engine/rules/index.ts';
+import { ruleReference } from '#engine/rules/rule-reference.ts';
+import { countBySeverity, runRules, runTheseRules } from '#engine/rules/run-rules.ts';
 import type { Probe } from '#engine/trace/probe.ts';
 import { traceFrame } from '#engine/trace/trace-frame.ts';
 import type { Problem } from '#engine/wire/problem.ts';
@@ -69,6 +78,51 @@ const refusalOf = (message: string, problems: readonly Problem[]): Refusal =>
       expected: `expected ${expected}`,
     })),
   });
+
+type RulesAnswer = z.infer<typeof rulesAnswerSchema>;
+
+/** The checks that a request asks for and, where it brings a design, what each of them finds there. */
+export function rulesAnswer(request: z.infer<typeof rulesRequestSchema>): RulesAnswer {
+  const { severities, collections, ids } = request;
+  const known = new Set(rules.map(({ id }) => id));
+  const unknown = (ids ?? []).flatMap((id, index) =>
+    known.has(id) ? [] : [{ field: `ids.${index}`, value: id, expected: 'the id of a check' }],
+  );
+  if (unknown.length > 0)
+    throw refusalOf('There is no such check; a request without ids lists them all.', unknown);
+  const asked = ruleReference().filter(
+    ({ id, severity, looksAt }) =>
+      (ids?.includes(id) ?? true) &&
+      (severities?.includes(severity) ?? true) &&
+      (collections === undefined || looksAt.some((fact) => collections.includes(fact))),
+  );
+  const answer = (findings?: readonly Finding[]): RulesAnswer['rules'] =>
+    asked.map((rule) => ({
+      ...rule,
+      sources: [...rule.sources],
+      messages: [...rule.messages],
+      looksAt: [...rule.looksAt],
+      ...(findings === undefined
+        ? {}
+        : {
+            findings: findings
+              .filter((finding) => finding.rule === rule.id)
+              .map((finding) => ({ ...finding })),
+          }),
+    }));
+  if (request.design === undefined) return { engineVersion: manifest.version, rules: answer() };
+  const design = readDesign(request.design, limits.checkedEntries, '');
+  const wanted = new Set(asked.map(({ id }) => id));
+  const findings = runTheseRules(
+    rules.filter(({ id }) => wanted.has(id)),
+    design,
+  );
+  return {
+    engineVersion: manifest.version,
+    counts: countBySeverity(findings),
+    rules: answer(findings),
+  };
+}
 
 /** The bytes of a stack of headers, with their working. */
 export function wireAnswer(request: WireRequest): object {

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { collections } from '../engine/model/design.ts';
+import { severities } from '../engine/rules/finding.ts';
 import { probeSchema } from '../engine/trace/probe.ts';
 
 // No route of the engine needs a sign-in or a token. POST /api/engine/wire is described by the engine's wireRequestSchema.
@@ -15,6 +16,50 @@ export const checkAnswerSchema = z.object({
   counts: z.object({ blocking: z.int(), degrading: z.int(), advisory: z.int() }),
   /** The engine's findings, most severe first; the first with their `fixes` when they were asked for. */
   findings: z.array(z.record(z.string(), z.unknown())),
+});
+
+/**
+ * POST /api/engine/rules: the catalogue of checks, whole or narrowed. With a design only the checks that are left run on it,
+ * and each says what it found: so a script holds a design against the checks that it cares about.
+ */
+export const rulesRequestSchema = z.strictObject({
+  /** Checks of these usual severities; a single finding may be milder or harder, and says why. */
+  severities: z.array(z.enum(severities)).min(1, 'expected at least one severity').optional(),
+  /** Checks that read one of these parts of a design. */
+  collections: z
+    .array(z.enum(['meta', ...collections]))
+    .min(1, 'expected at least one part of a design')
+    .optional(),
+  ids: z.array(z.string()).min(1, 'expected at least one id').max(500, 'expected at most 500 ids').optional(),
+  design: z.unknown().optional(),
+});
+const ruleSchema = z.object({
+  id: z.string(),
+  /** The good state. */
+  title: z.string(),
+  severity: z.enum(severities),
+  why: z.string(),
+  seen: z.string(),
+  sources: z.array(z.union([z.string(), z.object({ document: z.string(), clause: z.string().optional() })])),
+  messages: z.array(
+    z.object({
+      id: z.string(),
+      words: z.string(),
+      why: z.string().optional(),
+      seen: z.string().optional(),
+    }),
+  ),
+  looksAt: z.array(z.string()),
+  canFix: z.boolean(),
+  /** What it found in the design, most severe first; absent where none was sent. */
+  findings: z.array(z.record(z.string(), z.unknown())).optional(),
+});
+export const rulesAnswerSchema = z.object({
+  engineVersion: z.string(),
+  /** Over the findings of the checks that ran; absent where no design was sent. */
+  counts: z.object({ blocking: z.int(), degrading: z.int(), advisory: z.int() }).optional(),
+  /** In order of id. */
+  rules: z.array(ruleSchema),
 });
 
 /** POST /api/engine/trace: a design and one frame in, everything that happens to it out; nothing is kept. */

@@ -61,6 +61,14 @@ export interface RuleDefinition<M extends Messages> {
   readonly fixes?: (fault: Fault<NoInfer<M>>, network: Network, context: CheckContext) => readonly Fix[];
 }
 
+/** What one of a rule's messages says without a design: the balloon's words, and what it says beyond its rule. */
+export interface MessageWords {
+  readonly id: string;
+  readonly words: string;
+  readonly why?: string;
+  readonly seen?: string;
+}
+
 /** A rule as the catalogue holds it, its messages' types forgotten. */
 export interface Rule {
   readonly id: string;
@@ -70,6 +78,7 @@ export interface Rule {
   readonly why: string;
   readonly seen: string;
   readonly sources: readonly Source[];
+  readonly messages: readonly MessageWords[];
   readonly canFix: boolean;
   readonly check: (network: Network, context: CheckContext) => readonly Finding[];
   /** Untried changes for the finding of this key; none when the design no longer has it. */
@@ -115,6 +124,12 @@ export const defineRule = <const M extends Messages>(definition: RuleDefinition<
     why,
     seen,
     sources,
+    messages: Object.entries<Message<never>>(messages).map(([name, message]) => ({
+      id: name,
+      words: message.words,
+      ...(message.why === undefined ? {} : { why: message.why }),
+      ...(message.seen === undefined ? {} : { seen: message.seen }),
+    })),
     canFix: definition.fixes !== undefined,
     check: (network, context) => definition.check(network, context).map(findingOf),
     proposals: (network, context, key) => {

@@ -1,3 +1,4 @@
+import type { Fact, MessageWords } from './define-rule.ts';
 import type { Severity, Source } from './finding.ts';
 import { rules } from './index.ts';
 
@@ -9,19 +10,24 @@ export interface RuleReference {
   readonly why: string;
   readonly seen: string;
   readonly sources: readonly Source[];
+  readonly messages: readonly MessageWords[];
+  /** The parts of a design that it reads. */
+  readonly looksAt: readonly Fact[];
   readonly canFix: boolean;
 }
 
 /** Every check of the catalogue, by id. */
 export const ruleReference = (): readonly RuleReference[] =>
   rules
-    .map(({ id, title, severity, why, seen, sources, canFix }) => ({
+    .map(({ id, title, severity, why, seen, sources, messages, looksAt, canFix }) => ({
       id,
       title,
       severity,
       why,
       seen,
       sources,
+      messages,
+      looksAt,
       canFix,
     }))
     .sort((a, b) => (a.id < b.id ? -1 : 1));

@@ -25,6 +25,8 @@ describe('the catalogue of checks', () => {
     for (const text of [rule.why, rule.seen]) expect(text).toMatch(/^[A-Z0-9].*\.$/);
     expect(rule.sources.length).toBeGreaterThan(0);
     for (const source of rule.sources) expect(sourceText(source).length).toBeGreaterThan(3);
+    expect(rule.messages.length).toBeGreaterThan(0);
+    for (const { words } of rule.messages) expect(words).toMatch(/^\S.*[^.]$/);
     expect(new Set(rule.looksAt).size).toBe(rule.looksAt.length);
     for (const collection of rule.looksAt) expect(['meta', ...collections]).toContain(collection);
   });

@@ -54,6 +54,7 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
   'POST /api/engine/load': (browser) => browser.post('/api/engine/load', { design: {} }),
   'POST /api/engine/outage': (browser) =>
     browser.post('/api/engine/outage', { design: {}, failed: [{ collection: 'sites', id: 's0' }] }),
+  'POST /api/engine/rules': (browser) => browser.post('/api/engine/rules', {}),
   'POST /api/engine/trace': (browser) => browser.post('/api/engine/trace', { design: {}, probe: {} }),
   'GET /api/session': (browser) => browser.get('/api/session'),
   'POST /api/session': (browser) =>
@@ -170,6 +171,7 @@ describe('routes that belong to no workspace', () => {
     ['POST /api/engine/wire', 200],
     ['POST /api/engine/load', 422],
     ['POST /api/engine/outage', 422],
+    ['POST /api/engine/rules', 200],
     ['POST /api/engine/trace', 400],
     ['GET /api/session', 200],
     ['POST /api/session', 401],

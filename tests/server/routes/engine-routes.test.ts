@@ -4,10 +4,12 @@ import {
   checkAnswerSchema,
   loadAnswerSchema,
   outageAnswerSchema,
+  rulesAnswerSchema,
   traceAnswerSchema,
 } from '#contract/engine.ts';
 import { applyPatch } from '#engine/model/merge-patch.ts';
 import type { Design } from '#engine/model/design.ts';
+import { ruleReference } from '#engine/rules/rule-reference.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
 import { traceFrame } from '#engine/trace/trace-frame.ts';
 import { loadOf } from '#engine/load/load-of.ts';
@@ -106,6 +108,67 @@ describe('checking a design', () => {
     const design = { ...pairDesign(), padding: 'x'.repeat(limits.engineBodyBytes) };
     const response = await post('/api/engine/check', { design }).expect(413);
     expect(response.body).toMatchObject({ code: 'too-large' });
+  });
+});
+
+describe('listing the checks', () => {
+  const answered = async (body: unknown) =>
+    rulesAnswerSchema.parse((await post('/api/engine/rules', body).expect(200)).body);
+
+  test('answers the whole catalogue, with what each check says and reads', async () => {
+    const answer = await answered({});
+    expect(answer.rules).toEqual(JSON.parse(JSON.stringify(ruleReference())));
+    expect(answer.counts).toBeUndefined();
+    expect(answer.rules.find(({ id }) => id === 'tunnel-vni-mismatch')).toMatchObject({
+      severity: 'blocking',
+      canFix: true,
+      looksAt: expect.arrayContaining(['tunnels']) as string[],
+      messages: expect.arrayContaining([expect.objectContaining({ words: 'VNIs differ' })]) as object[],
+    });
+  });
+
+  test('narrows by severity, by the parts of a design that a check reads, and by id', async () => {
+    const blocking = await answered({ severities: ['blocking'] });
+    expect(new Set(blocking.rules.map(({ severity }) => severity))).toEqual(new Set(['blocking']));
+    const ofDemands = await answered({ collections: ['demands'], severities: ['degrading', 'advisory'] });
+    expect(ofDemands.rules.length).toBeGreaterThan(0);
+    for (const rule of ofDemands.rules) {
+      expect(rule.looksAt).toContain('demands');
+      expect(rule.severity).not.toBe('blocking');
+    }
+    const ids = ['tunnel-vni-mismatch', 'duplicate-name'];
+    expect((await answered({ ids })).rules.map(({ id }) => id)).toEqual([...ids].sort());
+  });
+
+  test('runs the checks that are left on a design, and says of each what it found', async () => {
+    const all = await answered({ design: faulty });
+    const found = all.rules.flatMap(({ findings }) => findings!);
+    const byKey = (entries: readonly unknown[]) =>
+      (JSON.parse(JSON.stringify(entries)) as { key: string }[]).sort((a, b) => (a.key < b.key ? -1 : 1));
+    expect(byKey(found)).toEqual(byKey(runRules(faulty)));
+    const one = await answered({ design: faulty, ids: ['tunnel-vni-mismatch', 'duplicate-name'] });
+    expect(one.counts).toEqual({ blocking: 1, degrading: 0, advisory: 0 });
+    expect(one.rules.map(({ id, findings }) => [id, findings!.length])).toEqual([
+      ['duplicate-name', 0],
+      ['tunnel-vni-mismatch', 1],
+    ]);
+  });
+
+  test.each([
+    [{ ids: ['duplicate-name', 'no-such-check'] }, 'ids.1'],
+    [{ ids: [] }, 'ids'],
+    [{ severities: ['bad'] }, 'severities.0'],
+    [{ collections: ['waivers'] }, 'collections.0'],
+    [{ more: 1 }, 'more'],
+  ])('refuses %j and names the field', async (body, path) => {
+    const response = await post('/api/engine/rules', body).expect(400);
+    expect(response.body).toMatchObject({ code: 'invalid-request', details: [{ path }] });
+  });
+
+  test('refuses what is no design, and more entries than a check may have', async () => {
+    const response = await post('/api/engine/rules', { design: [] }).expect(422);
+    expect(response.body).toMatchObject({ code: 'invalid-design' });
+    await post('/api/engine/rules', { design: withNotes(limits.checkedEntries) }).expect(413);
   });
 });
 
