@@ -43,7 +43,14 @@ export const routes: RouteObject[] = [
               {
                 path: 'designs/:designId',
                 ErrorBoundary: PageError,
-                lazy: async () => ({ Component: (await import('../pages/sheet-page.tsx')).SheetPage }),
+                lazy: async () => ({ Component: (await import('../pages/design-page.tsx')).DesignPage }),
+                children: [
+                  {
+                    index: true,
+                    ErrorBoundary: PageError,
+                    lazy: async () => ({ Component: (await import('../pages/sheet-page.tsx')).SheetPage }),
+                  },
+                ],
               },
               {
                 path: 'checks',

@@ -45,6 +45,8 @@ import { useView, zoomLimits } from './use-view.ts';
 interface SheetCanvasProps {
   /** What features want shown on top of the drawing. */
   readonly decorations: Decorations;
+  /** Takes every press on a part, by pointer or key, instead of selecting it. */
+  readonly onPick?: ((ref: ElementRef) => void) | undefined;
   readonly onAcceptGhost: (id: string) => void;
   /** A balloon was pressed; its number is the finding's. */
   readonly onPickBalloon: (number: number) => void;
@@ -70,7 +72,7 @@ const tonesWith = (decorations: Decorations, selection: readonly ElementRef[]): 
 };
 
 /** The sheet: everything of the design that is drawn, to be looked at, selected, moved and connected. */
-export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: SheetCanvasProps) {
+export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon }: SheetCanvasProps) {
   const open = useOpenDesign();
   const design = useOpenState((state) => state.document);
   const editable = useOpenState((state) => state.editable);
@@ -167,6 +169,7 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
   const changeSelection = (
     picks: readonly { readonly type: 'select'; readonly id: string; readonly selected: boolean }[],
   ): void => {
+    if (onPick !== undefined) return;
     const refs = new Map(
       open.store
         .getState()
@@ -188,6 +191,7 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
   /** A pip, a ferrule or a cord under the pointer is meant more than the node that it belongs to. */
   const onPartClick = (event: MouseEvent): void => {
     const ref = refAt(event.target as Element);
+    if (ref !== undefined && onPick !== undefined) return onPick(ref);
     if (ref !== undefined && !event.shiftKey && !event.metaKey && !event.ctrlKey) open.select([ref]);
   };
 
@@ -269,6 +273,12 @@ export function SheetCanvas({ decorations, onAcceptGhost, onPickBalloon }: Sheet
     put(part, flow.screenToFlowPosition({ x: event.clientX, y: event.clientY }));
   };
   const onKeyDown = (event: KeyboardEvent): void => {
+    if (onPick !== undefined && (event.key === 'Enter' || event.key === ' ')) {
+      const focused = (event.target as Element).closest('.react-flow__node, .react-flow__edge');
+      const id = focused?.getAttribute('data-id');
+      const ref = [...nodes, ...edges].find((part) => part.id === id)?.data?.ref;
+      if (ref !== undefined) onPick(ref);
+    }
     if (event.key === 'Escape' && placing !== undefined) startPlacing(undefined);
   };
 

@@ -1,6 +1,7 @@
 import { useEffect } from 'react';
 import { showToast } from '../components/toast.tsx';
 import type { Design, ElementRef } from '../engine/model/design.ts';
+import { takesKeys } from '../lib/takes-keys.ts';
 import { newEntryId, perform, useOpenDesign } from '../workspace/open-design-context.tsx';
 import { copyParts, pasteParts, readParts, type Parts } from '../workspace/operations/copy-parts.ts';
 import { removeElements } from '../workspace/operations/remove-parts.ts';
@@ -15,8 +16,6 @@ const pasteOffsetPx = 36;
 const isTyping = (target: EventTarget | null): boolean =>
   target instanceof HTMLElement &&
   (target.isContentEditable || ['INPUT', 'TEXTAREA', 'SELECT'].includes(target.tagName));
-const inDialog = (target: EventTarget | null): boolean =>
-  target instanceof Element && target.closest('[role="dialog"], [role="menu"]') !== null;
 
 const siteOf = (design: Design, ref: ElementRef | undefined): string | undefined =>
   ref?.collection === 'sites'
@@ -63,11 +62,6 @@ export function useShortcuts(): void {
       );
       if (!done.ok) say(done.why);
     };
-    const travel = (way: 'undo' | 'redo'): void => {
-      const label = open[way]();
-      if (label !== undefined)
-        showToast({ tone: 'done', text: `${way === 'undo' ? 'Undone' : 'Done again'}: ${label}` });
-    };
     const selectAll = (): void => {
       const { document } = open.store.getState();
       const all = (['sites', 'devices', 'transports', 'notes'] as const).flatMap((collection) =>
@@ -77,15 +71,13 @@ export function useShortcuts(): void {
     };
     const editable = (): boolean => open.store.getState().editable;
     const onKeyDown = (event: KeyboardEvent): void => {
-      if (isTyping(event.target) || inDialog(event.target) || event.defaultPrevented) return;
+      if (takesKeys(event.target) || event.defaultPrevented) return;
       const mod = event.ctrlKey || event.metaKey;
       const key = event.key.toLowerCase();
       const act = (run: () => void): void => {
         event.preventDefault();
         run();
       };
-      if (mod && key === 'z' && editable()) return act(() => travel(event.shiftKey ? 'redo' : 'undo'));
-      if (mod && key === 'y' && editable()) return act(() => travel('redo'));
       if (mod && key === 'a') return act(selectAll);
       if (mod && key === 'd') {
         const parts = copied();

@@ -64,6 +64,13 @@ export const noDecorations: Decorations = {
   hiddenSegments: [],
 };
 
+/** Both at once: tones add up, what the upper one says nothing of stays. */
+export const layOver = (lower: Decorations, upper: Partial<Decorations>): Decorations => {
+  const tones: { [key: string]: readonly Tone[] } = { ...lower.tones };
+  for (const [key, over] of Object.entries(upper.tones ?? {})) tones[key] = [...(tones[key] ?? []), ...over];
+  return { ...lower, ...upper, tones };
+};
+
 /** The key under which an element's tones stand. */
 export const elementKey = (ref: ElementRef): string =>
   `${ref.collection}/${ref.id}${ref.port === undefined ? '' : `/${ref.port}`}${ref.member === undefined ? '' : `@${ref.member}`}`;

@@ -1,11 +1,190 @@
-import { lazy } from 'react';
-import { useParams } from 'react-router-dom';
+import { ReactFlowProvider } from '@xyflow/react';
+import { useCallback, useEffect, useMemo, useState } from 'react';
+import '../canvas/canvas.css';
+import { endOf } from '../canvas/connect-ends.ts';
+import { askToJoin, clearDesk, setInspecting, useDesk } from '../canvas/desk-state.ts';
+import type { DeskTab } from '../canvas/desk-tab.ts';
+import { FindDialog } from '../canvas/find-dialog.tsx';
+import { standingOf } from '../canvas/flow-changes-to-patch.ts';
+import { GeometryProvider, useDrawn } from '../canvas/geometry-context.tsx';
+import { Inspector } from '../canvas/inspector/inspector.tsx';
+import { JoinDialog } from '../canvas/join-dialog.tsx';
+import { PartsTray } from '../canvas/parts-tray/parts-tray.tsx';
+import { SheetActions } from '../canvas/sheet-actions.tsx';
+import { SheetCanvas } from '../canvas/sheet-canvas.tsx';
+import { useShortcuts } from '../canvas/use-shortcuts.ts';
+import { useView } from '../canvas/use-view.ts';
+import { SeverityCounts } from '../components/severity-mark.tsx';
+import { showToast } from '../components/toast.tsx';
+import { elementKey, layOver } from '../drawing/decorations.ts';
+import { anchorOf } from '../drawing/routing/anchors.ts';
+import { rules } from '../engine/rules/index.ts';
+import { countBySeverity } from '../engine/rules/run-rules.ts';
+import { SheetDrawer } from '../features/drawer/sheet-drawer.tsx';
+import { findingItem } from '../features/findings/finding-words.ts';
+import { FindingsList } from '../features/findings/findings-list.tsx';
+import { useFindingDecorations } from '../features/findings/use-finding-decorations.ts';
+import { useFindingFixes } from '../features/findings/use-finding-fixes.ts';
+import { createOutlineView } from '../features/outline/outline-view.ts';
+import { Outline } from '../features/outline/outline.tsx';
+import { usePageTitle } from '../lib/page-title.ts';
+import { useSearchValues } from '../lib/use-search-values.ts';
+import { useChecks } from '../workspace/checks-context.tsx';
+import { useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
 
-// Canvas and layout code come with the first design that is opened, not before.
-const SheetDesk = lazy(async () => ({ default: (await import('./sheet-desk.tsx')).SheetDesk }));
-
-/** /designs/:designId: the drawing. Another design is another desk, so nothing of the last one stays. */
+/** /designs/:designId: the drawing, with its tray, drawer and inspector. */
 export function SheetPage() {
-  const { designId = '' } = useParams();
-  return <SheetDesk key={designId} designId={designId} />;
+  useEffect(() => clearDesk, []);
+  return (
+    <ReactFlowProvider>
+      <GeometryProvider>
+        <SheetActions />
+        <Surface />
+        <JoinDialog />
+        <FindDialog />
+      </GeometryProvider>
+    </ReactFlowProvider>
+  );
+}
+
+function Surface() {
+  useShortcuts();
+  const open = useOpenDesign();
+  const { findings, document } = useChecks();
+  const editable = useOpenState((state) => state.editable);
+  const title = useOpenState((state) => state.document.meta.title);
+  const anySelected = useOpenState((state) => state.selection.length > 0);
+  const inspecting = useDesk((state) => state.inspecting);
+  const { settled, preview, setPreview } = useDrawn();
+  const view = useView();
+  const standing = useMemo(() => standingOf(settled), [settled]);
+  const fixes = useFindingFixes();
+  const [selectedKey, setSelectedKey] = useState<string | null>(null);
+  const [outline] = useState(createOutlineView);
+  const { valueOf, change } = useSearchValues();
+  usePageTitle(title);
+  useEffect(() => {
+    if (anySelected) setInspecting(true);
+  }, [anySelected]);
+
+  const found = useFindingDecorations(selectedKey, preview);
+  const items = useMemo(
+    () =>
+      findings.map((finding, i) => findingItem(finding, i + 1, document, settled, fixes.get(finding.key))),
+    [findings, document, settled, fixes],
+  );
+
+  const select = useCallback(
+    (key: string) => {
+      setSelectedKey(key);
+      const finding = findings.find((candidate) => candidate.key === key);
+      if (finding === undefined) return;
+      open.select(finding.elements.slice(0, 1));
+      const at = finding.elements[0] === undefined ? undefined : anchorOf(settled, finding.elements[0]);
+      if (at !== undefined) view.showPoint(at);
+    },
+    [findings, open, settled, view],
+  );
+  const apply = useCallback(
+    (findingKey: string, fixId?: string) => {
+      const fix = fixes.get(findingKey)?.find((candidate) => fixId === undefined || candidate.id === fixId);
+      if (fix === undefined) return;
+      setPreview(undefined);
+      const done = open.commit(fix.label, fix.patch);
+      if (done.ok)
+        showToast({
+          tone: 'done',
+          text: fix.sentence,
+          action: { label: 'Undo', onSelect: () => open.undo() },
+        });
+      else
+        showToast({
+          tone: 'failed',
+          text: done.problems.map((problem) => `${problem.path}: ${problem.expected}`).join('; '),
+        });
+    },
+    [fixes, open, setPreview],
+  );
+  // A ghost is drawn for one finding and stands for its first cure.
+  const acceptGhost = useCallback((id: string) => apply(id), [apply]);
+
+  const findingsTab: DeskTab = {
+    value: 'findings',
+    label: 'Findings',
+    count: findings.length,
+    usualHeightPx: 180,
+    panel: (
+      <FindingsList
+        findings={items}
+        selectedKey={selectedKey}
+        onSelect={select}
+        canFix={editable}
+        onApplyFix={apply}
+        empty={`All ${rules.length} checks pass. They run again with every change.`}
+      />
+    ),
+  };
+  const outlineTab: DeskTab = {
+    value: 'outline',
+    label: 'Outline',
+    usualHeightPx: 300,
+    panel: <Outline view={outline} />,
+  };
+  const tabs = [findingsTab, outlineTab];
+  // The first is open where the address says nothing.
+  const active = tabs.find((tab) => tab.value === valueOf('drawer')) ?? findingsTab;
+  const { decorations: upper, onPick, side } = active;
+  const decorations = useMemo(() => (upper === undefined ? found : layOver(found, upper)), [found, upper]);
+
+  return (
+    <main id="main" tabIndex={-1} className="sheet-desk" data-selected={anySelected}>
+      <h1 className="sr-only">{title}</h1>
+      <PartsTray />
+      <div className="flex min-w-0 flex-1 flex-col">
+        <SheetCanvas
+          decorations={decorations}
+          onPick={onPick}
+          onAcceptGhost={acceptGhost}
+          onPickBalloon={(number) => findings[number - 1] !== undefined && select(findings[number - 1]!.key)}
+        />
+        <SheetDrawer
+          value={active.value}
+          onChange={(tab) => change({ drawer: tab === 'findings' ? '' : tab })}
+          // With nothing to say at first it leaves its room to the sheet.
+          openAtFirst={findings.length > 0 || active !== findingsTab}
+          counts={
+            <SeverityCounts
+              counts={countBySeverity(findings)}
+              worded
+              clear={`All ${rules.length} checks pass`}
+            />
+          }
+          tabs={tabs}
+        />
+      </div>
+      {inspecting && side !== undefined && !anySelected && (
+        <aside
+          aria-label={active.label}
+          className="h-full w-304 shrink-0 overflow-x-hidden overflow-y-auto border-l-1.5 border-ink bg-panel"
+        >
+          {side}
+        </aside>
+      )}
+      {inspecting && (side === undefined || anySelected) && (
+        <Inspector
+          onConnect={({ kind, from }) => {
+            const end = endOf(
+              elementKey({ collection: from.collection, id: from.id }),
+              from.port === undefined
+                ? undefined
+                : `port:${from.port}${from.member === undefined ? '' : `@${from.member}`}`,
+            );
+            askToJoin({ kind, ...(end === undefined ? {} : { a: end }) });
+          }}
+          onShowFinding={select}
+          standing={standing}
+        />
+      )}
+    </main>
+  );
 }

@@ -26,6 +26,11 @@ const modes = [
   { value: 'access', label: 'access' },
   { value: 'trunk', label: 'trunk' },
 ] as const;
+const bpduChoices = [
+  { value: 'guard', label: 'BPDU guard: shut' },
+  { value: 'root-guard', label: 'root guard' },
+  { value: 'filter', label: 'BPDU filter' },
+] as const;
 
 /** What is plugged into a port, with the way to the other side; a free socket offers to be joined. */
 export function Plugged({ device, port }: { readonly device: string; readonly port: string }) {
@@ -162,6 +167,7 @@ export function PortFields({ device, port }: { readonly device: string; readonly
             emptyWord="none stated"
           />
           <TextField label="MAC limit" path={at('macLimit')} writing={number} emptyWord="none stated" />
+          <SelectField label="BPDUs" path={at('bpdus')} choices={bpduChoices} />
         </>
       )}
     </CellGrid>

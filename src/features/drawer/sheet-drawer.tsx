@@ -1,13 +1,8 @@
 import { useState, type KeyboardEvent, type PointerEvent, type ReactNode } from 'react';
+import type { DrawerTab } from '../../canvas/desk-tab.ts';
 import { Button } from '../../components/button.tsx';
 import { Icon } from '../../components/icon.tsx';
-import { TabPanel, Tabs, type Tab } from '../../components/tabs.tsx';
-
-export interface DrawerTab extends Tab {
-  /** How high its contents are at first, in CSS pixels. */
-  readonly usualHeightPx: number;
-  readonly panel: ReactNode;
-}
+import { TabPanel, Tabs } from '../../components/tabs.tsx';
 
 interface SheetDrawerProps {
   readonly tabs: readonly DrawerTab[];

@@ -1,8 +1,8 @@
-import { BarCell } from '../components/bar.tsx';
-import { Button } from '../components/button.tsx';
-import { Icon } from '../components/icon.tsx';
-import { Menu } from '../components/menu.tsx';
-import { useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
+import { BarCell } from '../../components/bar.tsx';
+import { Button } from '../../components/button.tsx';
+import { Icon } from '../../components/icon.tsx';
+import { Menu } from '../../components/menu.tsx';
+import { useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 
 const edits = (count: number): string => (count === 1 ? '1 edit kept' : `${count} edits kept`);
 const clock = new Intl.DateTimeFormat('en-GB', { hour: '2-digit', minute: '2-digit' });

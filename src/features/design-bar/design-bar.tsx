@@ -1,0 +1,80 @@
+import { Link } from 'react-router-dom';
+import { BarCell, BarContents, BarNav } from '../../components/bar.tsx';
+import { Button } from '../../components/button.tsx';
+import { Icon } from '../../components/icon.tsx';
+import { Stamp } from '../../components/stamp.tsx';
+import { Tooltip } from '../../components/tooltip.tsx';
+import type { DesignSummary } from '../../contract/designs.ts';
+import { designPath, engagementsPath } from '../../lib/workspace-path.ts';
+import { useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
+import { SaveCell } from './save-cell.tsx';
+
+interface DesignBarProps {
+  readonly engagementName: string;
+  readonly workspaceId: string;
+  readonly summary: DesignSummary;
+}
+
+/** The bar over every page of a design: where it belongs, whether it is saved, its pages, undo. A page adds its own. */
+export function DesignBar({ engagementName, workspaceId, summary }: DesignBarProps) {
+  const title = useOpenState((state) => state.document.meta.title);
+  const revision = useOpenState((state) => state.document.meta.revision);
+  const editable = useOpenState((state) => state.editable);
+  const path = designPath(summary.id);
+  return (
+    <BarContents>
+      <BarCell label="Engagement" className="max-xl:hidden">
+        <Link to={engagementsPath(workspaceId)} className="hover:underline">
+          {engagementName}
+        </Link>
+      </BarCell>
+      <BarCell label="Design" className="min-w-0 shrink">
+        <span className="max-w-260 truncate">{title}</span>
+      </BarCell>
+      <BarCell label="Revision" className="max-xl:hidden">
+        <Stamp state={summary.state} prefix={revision} />
+      </BarCell>
+      <SaveCell />
+      <div className="flex shrink-0 max-md:hidden">
+        <BarNav
+          label="Design"
+          destinations={[
+            { to: path, label: 'Sheet', end: true },
+            { to: '/checks', label: 'Checks' },
+          ]}
+        />
+      </div>
+      <div className="ml-auto flex shrink-0 items-center gap-4 pl-8">{editable && <Travel />}</div>
+    </BarContents>
+  );
+}
+
+function Travel() {
+  const open = useOpenDesign();
+  const done = useOpenState((state) => state.history.done.at(-1)?.label);
+  const undone = useOpenState((state) => state.history.undone.at(-1)?.label);
+  return (
+    <>
+      <Tooltip text={done === undefined ? 'Nothing to undo' : `Undo: ${done}`}>
+        <Button
+          kind="quiet"
+          iconOnly
+          aria-label="Undo"
+          disabled={done === undefined}
+          icon={<Icon name="undo" />}
+          onClick={() => open.undo()}
+        />
+      </Tooltip>
+      <Tooltip text={undone === undefined ? 'Nothing to do again' : `Do again: ${undone}`}>
+        <Button
+          kind="quiet"
+          iconOnly
+          aria-label="Redo"
+          disabled={undone === undefined}
+          icon={<Icon name="redo" />}
+          onClick={() => open.redo()}
+        />
+      </Tooltip>
+    </>
+  );
+}

@@ -1,0 +1,118 @@
+import { useQuery } from '@tanstack/react-query';
+import { Suspense, useMemo } from 'react';
+import { Outlet } from 'react-router-dom';
+import { Button } from '../components/button.tsx';
+import { ErrorNotice } from '../components/notice.tsx';
+import { openDesignSchema, type OpenDesign as OpenDesignAnswer } from '../contract/designs.ts';
+import type { Design } from '../engine/model/design.ts';
+import { parseDesign } from '../engine/model/parse-design.ts';
+import { DesignBar } from '../features/design-bar/design-bar.tsx';
+import { useTravelKeys } from '../features/design-bar/use-travel-keys.ts';
+import { callApi } from '../lib/api-client.ts';
+import { asApiError } from '../lib/api-error.ts';
+import { ChecksProvider } from '../workspace/checks-context.tsx';
+import { designServer } from '../workspace/design-server.ts';
+import { browserEditStorage } from '../workspace/edit-storage.ts';
+import { openDesign, type OpenDesign } from '../workspace/open-design.ts';
+import { OpenDesignProvider } from '../workspace/open-design-context.tsx';
+
+const phone = '(max-width: 767px)';
+
+/** Opens one design for the pages on it: each shows a side of the same open document, so edits and undo go across. */
+export function DesignDesk({ designId }: { readonly designId: string }) {
+  // Read once: from then on the open design keeps itself up to date.
+  const answer = useQuery({
+    queryKey: ['open-design', designId],
+    queryFn: ({ signal }) =>
+      callApi(openDesignSchema, `/api/designs/${encodeURIComponent(designId)}`, { signal }),
+    staleTime: Infinity,
+    gcTime: 0,
+    refetchOnWindowFocus: false,
+  });
+  if (answer.error !== null)
+    return <CannotOpen message={asApiError(answer.error).message} onRetry={() => void answer.refetch()} />;
+  if (answer.data === undefined) return <Opening />;
+  return <ReadDesign answer={answer.data} />;
+}
+
+function Opening() {
+  return (
+    <main
+      id="main"
+      tabIndex={-1}
+      aria-busy="true"
+      className="flex min-h-0 flex-1 items-center justify-center bg-desk outline-none"
+    >
+      <p role="status" className="text-base text-ink-2">
+        Opening the design…
+      </p>
+    </main>
+  );
+}
+
+function CannotOpen({ message, onRetry }: { readonly message: string; readonly onRetry: () => void }) {
+  return (
+    <main
+      id="main"
+      tabIndex={-1}
+      className="flex min-h-0 flex-1 items-start justify-center bg-desk p-28 outline-none"
+    >
+      <ErrorNotice
+        action={
+          <Button small onClick={onRetry}>
+            Try again
+          </Button>
+        }
+      >
+        {message}
+      </ErrorNotice>
+    </main>
+  );
+}
+
+function ReadDesign({ answer }: { readonly answer: OpenDesignAnswer }) {
+  const parsed = useMemo(() => parseDesign(answer.document), [answer.document]);
+  if (!parsed.ok)
+    return (
+      <CannotOpen
+        message={`This design can't be read: ${parsed.problems[0]!.path}, ${parsed.problems[0]!.expected}.`}
+        onRetry={() => location.reload()}
+      />
+    );
+  return <Desk answer={answer} document={parsed.value} />;
+}
+
+function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonly document: Design }) {
+  const { id } = answer.summary;
+  const open = (): OpenDesign =>
+    openDesign({
+      document,
+      sequence: answer.sequence,
+      // A phone shows the sheet; to draw on it takes a larger screen.
+      editable: answer.actions.includes('design.edit') && !window.matchMedia(phone).matches,
+      server: designServer(id),
+      storage: browserEditStorage(localStorage, id, Date.now),
+      newEditId: () => crypto.randomUUID(),
+      now: Date.now,
+    });
+  return (
+    <OpenDesignProvider open={open}>
+      <ChecksProvider>
+        <DesignBar
+          engagementName={answer.engagementName}
+          workspaceId={answer.workspaceId}
+          summary={answer.summary}
+        />
+        <TravelKeys />
+        <Suspense fallback={<Opening />}>
+          <Outlet />
+        </Suspense>
+      </ChecksProvider>
+    </OpenDesignProvider>
+  );
+}
+
+function TravelKeys() {
+  useTravelKeys();
+  return null;
+}
