@@ -3,6 +3,7 @@ import { isGateway } from '../../engine/model/devices.ts';
 import type { Side } from '../../engine/model/layout.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { joinPatches } from '../../engine/model/merge-patch.ts';
+import { notesAlong } from './notes-along.ts';
 import type { Operation } from './operation.ts';
 import { refused } from './operation.ts';
 
@@ -71,9 +72,14 @@ const moveOne = (design: Design, standing: Standing, ref: ElementRef, dx: number
   if (ref.collection === 'sites') {
     const rect = standing.sites[ref.id];
     if (rect === undefined) return {};
-    const devices = Object.entries(design.devices)
-      .filter(([id, device]) => device.site === ref.id && standing.devices[id] !== undefined)
-      .map(([id]) => [id, movedPoint(standing.devices[id]!, dx, dy)]);
+    // What a collapsed site keeps back has a place to come out at, which goes along.
+    const devices = Object.entries(design.devices).flatMap(([id, device]) => {
+      const at = standing.devices[id] ?? design.layout.devices?.[id];
+      const isHeld = design.layout.devices?.[id]?.locked === true;
+      return device.site === ref.id && at !== undefined && !isHeld
+        ? [[id, movedPoint(at, dx, dy)] as const]
+        : [];
+    });
     return {
       layout: {
         sites: { [ref.id]: { ...movedPoint(rect, dx, dy), width: rect.width, height: rect.height } },
@@ -84,7 +90,10 @@ const moveOne = (design: Design, standing: Standing, ref: ElementRef, dx: number
   return {};
 };
 
-/** Moves elements by a distance; a site takes its devices along, what is locked stays. */
+/**
+ * Moves elements by a distance; a site takes its devices along and everything the notes that are about it, what is
+ * locked stays.
+ */
 export const moveElements = (
   design: Design,
   standing: Standing,
@@ -96,9 +105,10 @@ export const moveElements = (
   const moved = refs.filter(
     (ref) => ref.collection !== 'devices' || !sites.has(design.devices[ref.id]?.site ?? ''),
   );
+  const free = moved.filter((ref) => !isLocked(design, ref));
   const patch = joinPatches(
     design,
-    moved.map((ref) => moveOne(design, standing, ref, dx, dy)),
+    [...free, ...notesAlong(design, standing, free)].map((ref) => moveOne(design, standing, ref, dx, dy)),
   );
   return { ok: true, label: refs.length === 1 ? 'Move' : `Move ${refs.length} things`, patch };
 };
