@@ -96,14 +96,15 @@ describe('spacing out evenly', () => {
     const after = done(design, distribute(design, refs, way));
     const from = way === 'across' ? lineOf.left : lineOf.top;
     const to = way === 'across' ? lineOf.right : lineOf.bottom;
+    const before = refs
+      .map((ref) => ({ id: ref.id, ...rectOf(design, ref) }))
+      .sort((a, b) => from(a) - from(b) || (a.id < b.id ? -1 : 1));
     // At the sizes they had: a plate may grow where its cables come in on another side.
-    const rects = refs
-      .map((ref) => ({ ...rectOf(design, ref), ...after.layout.devices![ref.id] }))
-      .sort((a, b) => from(a) - from(b));
+    const rects = before.map((rect) => ({ ...rect, ...after.layout.devices![rect.id] }));
     const gaps = rects.slice(1).map((rect, i) => from(rect) - to(rects[i]!));
     for (const gap of gaps) expect(Math.abs(gap - gaps[0]!)).toBeLessThanOrEqual(1);
-    const before = refs.map((ref) => rectOf(design, ref));
-    expect(from(rects[0]!)).toBe(Math.min(...before.map(from)));
+    expect(from(rects[0]!)).toBe(from(before[0]!));
+    expect(from(rects.at(-1)!)).toBe(from(before.at(-1)!));
   });
 
   it('says which locked one is in the way, and that two are too few', () => {
