@@ -24,16 +24,6 @@ export const fileNameOf = (design: Design, ending: string): string => {
   }.${ending}`;
 };
 
-/** Hands a file to the person. */
-export const download = (name: string, blob: Blob): void => {
-  const url = URL.createObjectURL(blob);
-  const link = document.createElement('a');
-  link.href = url;
-  link.download = name;
-  link.click();
-  setTimeout(() => URL.revokeObjectURL(url), 10_000);
-};
-
 /** The design as its own JSON, to be read back in or checked by a script. */
 export const designBlob = (design: Design): Blob =>
   new Blob([`${JSON.stringify(design, null, 2)}\n`], { type: 'application/json' });

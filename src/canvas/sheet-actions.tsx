@@ -5,10 +5,11 @@ import { Icon } from '../components/icon.tsx';
 import { Menu } from '../components/menu.tsx';
 import { showToast } from '../components/toast.tsx';
 import { Tooltip } from '../components/tooltip.tsx';
+import { download } from '../lib/download.ts';
 import { useTheme } from '../lib/theme.ts';
 import { useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
 import { setInspecting, useDesk } from './desk-state.ts';
-import { designBlob, download, fileNameOf, sheetPng } from './export-sheet.ts';
+import { designBlob, fileNameOf, sheetPng } from './export-sheet.ts';
 import { TidyButton } from './tidy-button.tsx';
 
 /** What the sheet adds to the design's bar: tidying, the inspector, what can be taken away. */

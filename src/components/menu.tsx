@@ -19,8 +19,22 @@ export interface MenuChoice {
   readonly options: readonly { readonly value: string; readonly label: string }[];
 }
 
-/** A group of a menu: things to do, or one of several to choose. */
-export type MenuGroup = { readonly actions: readonly MenuAction[] } | { readonly choice: MenuChoice };
+export interface MenuChecks {
+  readonly label: string;
+  readonly options: readonly {
+    readonly value: string;
+    readonly label: string;
+    readonly checked: boolean;
+    readonly disabled?: boolean;
+  }[];
+  readonly onToggle: (value: string) => void;
+}
+
+/** A group of a menu: things to do, one of several to choose, or some of several, for which the menu stays open. */
+export type MenuGroup =
+  | { readonly actions: readonly MenuAction[] }
+  | { readonly choice: MenuChoice }
+  | { readonly checks: MenuChecks };
 
 interface MenuProps {
   /** The button that opens it. */
@@ -70,10 +84,12 @@ export function Menu({ trigger, groups, heading, align = 'start', opened }: Menu
         >
           {heading !== undefined && <div className="border-b border-rule-2 px-12 pt-6 pb-9">{heading}</div>}
           {groups.map((group, at) => (
-            <Fragment key={'choice' in group ? group.choice.label : (group.actions[0]?.label ?? at)}>
+            <Fragment key={groupKey(group, at)}>
               {at > 0 && <Primitive.Separator className="my-4 h-px bg-rule-2" />}
               {'choice' in group ? (
                 <MenuChoiceItems choice={group.choice} />
+              ) : 'checks' in group ? (
+                <MenuCheckItems checks={group.checks} />
               ) : (
                 group.actions.map((action) => (
                   <Primitive.Item
@@ -96,6 +112,36 @@ export function Menu({ trigger, groups, heading, align = 'start', opened }: Menu
         </Primitive.Content>
       </Primitive.Portal>
     </Primitive.Root>
+  );
+}
+
+const groupKey = (group: MenuGroup, at: number): string | number =>
+  'choice' in group
+    ? group.choice.label
+    : 'checks' in group
+      ? group.checks.label
+      : (group.actions[0]?.label ?? at);
+
+function MenuCheckItems({ checks }: { readonly checks: MenuChecks }) {
+  return (
+    <>
+      <Primitive.Label className="px-12 pt-4 pb-2 text-label text-ink-3">{checks.label}</Primitive.Label>
+      {checks.options.map((option) => (
+        <Primitive.CheckboxItem
+          key={option.value}
+          checked={option.checked}
+          disabled={option.disabled}
+          onCheckedChange={() => checks.onToggle(option.value)}
+          onSelect={(event) => event.preventDefault()}
+          className={classNames(itemLook, 'pl-32')}
+        >
+          <Primitive.ItemIndicator className="absolute left-11">
+            <Icon name="check" size={14} />
+          </Primitive.ItemIndicator>
+          {option.label}
+        </Primitive.CheckboxItem>
+      ))}
+    </>
   );
 }
 

@@ -1,4 +1,4 @@
-import { render, screen, within } from '@testing-library/react';
+import { fireEvent, render, screen, within } from '@testing-library/react';
 import userEvent from '@testing-library/user-event';
 import { expect, test, vi } from 'vitest';
 import { DataTable, type Column } from '../../src/components/data-table.tsx';
@@ -76,4 +76,51 @@ test('without rows it shows what was given for that', () => {
     />,
   );
   expect(screen.getByText('No segment yet')).toBeVisible();
+});
+
+test('what is not known comes last, whichever way it is sorted', async () => {
+  const some: readonly { readonly name: string; readonly most?: number }[] = [
+    { name: 'unknown' },
+    { name: 'ten', most: 10 },
+    { name: 'two', most: 2 },
+  ];
+  render(
+    <DataTable
+      caption="Limits"
+      columns={[
+        { key: 'name', head: 'Name', cell: ({ name }) => name },
+        {
+          key: 'most',
+          head: 'Most',
+          cell: ({ most }) => most,
+          sortBy: ({ most }) => most,
+          highestFirst: true,
+        },
+      ]}
+      rows={some}
+      rowKey={({ name }) => name}
+    />,
+  );
+  await userEvent.click(screen.getByRole('button', { name: 'Most' }));
+  expect(names()).toEqual(['ten', 'two', 'unknown']);
+  await userEvent.click(screen.getByRole('button', { name: 'Most' }));
+  expect(names()).toEqual(['two', 'ten', 'unknown']);
+});
+
+test('of thousands of rows only those in sight are drawn, and each says which it is', () => {
+  const many = Array.from({ length: 4_000 }, (_row, i): Row => ({ name: `seg-${i}`, vlan: i }));
+  render(<DataTable caption="Segments" columns={columns} rows={many} rowKey={({ name }) => name} />);
+  const table = screen.getByRole('table', { name: 'Segments' });
+  expect(table).toHaveAttribute('aria-rowcount', '4001');
+  expect(within(table).getAllByRole('row').length).toBeLessThan(60);
+  expect(screen.getByRole('row', { name: /seg-7 / })).toHaveAttribute('aria-rowindex', '9');
+});
+
+test('scrolling a long table draws the rows that come into sight', () => {
+  const many = Array.from({ length: 4_000 }, (_row, i): Row => ({ name: `seg-${i}`, vlan: i }));
+  render(<DataTable caption="Segments" columns={columns} rows={many} rowKey={({ name }) => name} />);
+  const box = screen.getByRole('table', { name: 'Segments' }).parentElement!;
+  fireEvent.scroll(box, { target: { scrollTop: 35 * 2_000 } });
+  expect(screen.getByRole('row', { name: /seg-2000 / })).toHaveAttribute('aria-rowindex', '2002');
+  expect(screen.queryByRole('row', { name: /seg-7 / })).not.toBeInTheDocument();
 });
