@@ -27,7 +27,7 @@ const modes = [
   { value: 'trunk', label: 'trunk' },
 ] as const;
 const bpduChoices = [
-  { value: 'guard', label: 'BPDU guard: shut' },
+  { value: 'guard', label: 'BPDU guard' },
   { value: 'root-guard', label: 'root guard' },
   { value: 'filter', label: 'BPDU filter' },
 ] as const;
@@ -118,7 +118,13 @@ export function PortFields({ device, port }: { readonly device: string; readonly
               role,
               ...(role === 'lan'
                 ? {}
-                : { mode: undefined, vlan: undefined, nativeVlan: undefined, allowedVlans: undefined }),
+                : {
+                    mode: undefined,
+                    vlan: undefined,
+                    nativeVlan: undefined,
+                    allowedVlans: undefined,
+                    bpdus: undefined,
+                  }),
             })
           }
         />
@@ -167,7 +173,13 @@ export function PortFields({ device, port }: { readonly device: string; readonly
             emptyWord="none stated"
           />
           <TextField label="MAC limit" path={at('macLimit')} writing={number} emptyWord="none stated" />
-          <SelectField label="BPDUs" path={at('bpdus')} choices={bpduChoices} />
+          <SelectField
+            label="BPDUs"
+            path={at('bpdus')}
+            choices={bpduChoices}
+            emptyWord="sent and taken"
+            span={2}
+          />
         </>
       )}
     </CellGrid>

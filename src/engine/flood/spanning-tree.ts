@@ -1,7 +1,7 @@
 import type { Id } from '../model/scalars.ts';
 import type { Tags } from '../network/frame-tags.ts';
 import { untagged, circuitOut, gatewayPortCarries } from '../network/frame-tags.ts';
-import type { Network } from '../network/network.ts';
+import type { Bundle, Network } from '../network/network.ts';
 import { entryOf, perNetwork } from '../network/network.ts';
 import { classBit } from './frame-classes.ts';
 import type { Blocked, Forwarding } from './forwarding.ts';
@@ -27,6 +27,8 @@ interface TreeBridge {
 /** A port that hears what another one sends. */
 interface Heard {
   readonly from: BridgePort;
+  /** Crossed on the way, in order. */
+  readonly tunnels: readonly Id[];
 }
 /** What a bridge thinks of the root, in the order in which claims are compared. */
 type Claim = readonly [
@@ -84,6 +86,7 @@ const participantsOf = (network: Network, forwarding: Forwarding): readonly Tree
 };
 
 type Crossing = readonly [element: number, direction: Direction, tags: Tags];
+type Way = readonly [...Crossing, tunnels: readonly Id[]];
 
 /** The crossings on which a port sends its own BPDUs: untagged, whatever the VLANs of the port, but through a circuit as any frame. */
 const sentBy = (bridge: TreeBridge, ordinal: number): readonly Crossing[] => {
@@ -103,6 +106,10 @@ const sentBy = (bridge: TreeBridge, ordinal: number): readonly Crossing[] => {
   );
 };
 
+/** Whether a port at either end of the cables neither sends nor takes BPDUs. */
+const filtersBpdus = ({ design }: Network, { a, b }: Bundle): boolean =>
+  [a, b].some(({ device, port }) => entryOf(design.devices, device).ports[port]?.bpdus === 'filter');
+
 /** Follows what each port sends to the ports of other bridges (or its own) that hear it. */
 const hearing = (
   network: Network,
@@ -114,9 +121,10 @@ const hearing = (
   const bundleCount = network.bundles.length;
   for (const bridge of bridges)
     for (const port of bridge.ports) {
-      const queue: Crossing[] = [...sentBy(bridge, port.ordinal)];
+      const queue: Way[] = sentBy(bridge, port.ordinal).map((crossing) => [...crossing, []]);
       const seen = new Set<string>();
       const reached = new Set<BridgePort>();
+      let tunnels: readonly Id[] = [];
       const take = (place: Place, ordinal: number, inside: Tags): void => {
         const listener = byPlace.get(place);
         if (listener !== undefined) {
@@ -124,20 +132,21 @@ const hearing = (
           if (at === undefined || reached.has(at)) return;
           reached.add(at);
           const list = heard.get(at);
-          if (list === undefined) heard.set(at, [{ from: port }]);
-          else list.push({ from: port });
+          if (list === undefined) heard.set(at, [{ from: port, tunnels }]);
+          else list.push({ from: port, tunnels });
         } else if (place.kind !== 'host' && passesBpdus(network, place.device)) {
           forwarding.leave(place, ordinal, inside, (element, direction, tags, classes) => {
-            if ((classes & classBit('other')) !== 0) queue.push([element, direction, tags]);
+            if ((classes & classBit('other')) !== 0) queue.push([element, direction, tags, tunnels]);
           });
         }
       };
-      for (let next = queue.pop(); next !== undefined; next = queue.pop()) {
-        const [element, direction, tags] = next;
-        const key = next.join(' ');
+      for (const [element, direction, tags, behind] of queue) {
+        const key = `${element} ${direction} ${tags}`;
         if (seen.has(key)) continue;
         seen.add(key);
         const bundle = element < bundleCount ? network.bundles[element]! : undefined;
+        if (bundle !== undefined && filtersBpdus(network, bundle)) continue;
+        tunnels = bundle === undefined ? [...behind, network.tunnelIds[element - bundleCount]!] : behind;
         const group = bundle === undefined ? undefined : direction === 0 ? bundle.b : bundle.a;
         const [place] = group === undefined ? [] : (forwarding.places.byDevice.get(group.device) ?? []);
         // A switch that takes part listens before any VLAN is looked at, and only to untagged BPDUs.
@@ -149,17 +158,18 @@ const hearing = (
   return heard;
 };
 
-/**
- * The ports and circuits that spanning tree blocks, elected among the switches and bridges that have it on, over what their
- * BPDUs really reach. Where priorities tie the order of ids stands in for the MAC addresses that a design doesn't hold. An
- * election that doesn't settle (BPDUs that pass one way only) blocks nothing: no loop is then taken for covered.
- */
-export const blockedPorts = perNetwork((network): Blocked => {
-  const forwarding = forwardingOf(network);
-  const bridges = participantsOf(network, forwarding);
-  const blocked = new Set<number>();
-  if (bridges.length === 0) return blocked;
-  const heard = hearing(network, forwarding, bridges);
+interface Election {
+  readonly blocked: ReadonlySet<BridgePort>;
+  /** By bridge: its port towards the root; none at the root, nor anywhere in an election that doesn't settle. */
+  readonly rootPorts: ReadonlyMap<number, BridgePort>;
+  /** Whether a bridge is one that others elect. */
+  readonly isRoot: (bridge: number) => boolean;
+}
+type Hearing = ReadonlyMap<BridgePort, readonly Heard[]>;
+
+const elect = (bridges: readonly TreeBridge[], heard: Hearing): Election => {
+  const blocked = new Set<BridgePort>();
+  const rootPorts = new Map<number, BridgePort>();
   const own = bridges.map(({ priority }, bridge): readonly number[] => [priority, bridge, 0]);
   const sent = (claims: readonly (readonly number[])[], port: BridgePort): Claim => {
     const [rootPriority, root, cost] = claims[port.bridge]!;
@@ -184,18 +194,85 @@ export const blockedPorts = perNetwork((network): Blocked => {
     isSettled = next.every((claim, i) => compare(claim, claims[i]!) === 0);
     claims = next;
   }
-  if (!isSettled) return blocked;
+  const isRoot = (bridge: number): boolean => isSettled && claims[bridge]![1] === bridge;
+  if (!isSettled) return { blocked, rootPorts, isRoot };
   bridges.forEach((bridge, i) => {
-    const isRoot = claims[i]![1] === i;
-    const best = isRoot
+    const best = isRoot(i)
       ? undefined
       : offers(claims, bridge).reduce((a, b) => (compare(b.vector, a.vector) < 0 ? b : a));
+    if (best !== undefined) rootPorts.set(i, best.port);
     for (const port of bridge.ports) {
       if (port === best?.port) continue;
       const mine = sent(claims, port);
       const isBeaten = (heard.get(port) ?? []).some(({ from }) => compare(sent(claims, from), mine) < 0);
-      if (isBeaten) blocked.add(blockKey(bridge.place, port.ordinal));
+      if (isBeaten) blocked.add(port);
     }
   });
-  return blocked;
+  return { blocked, rootPorts, isRoot };
+};
+
+const treesOf = perNetwork((network) => {
+  const forwarding = forwardingOf(network);
+  const bridges = participantsOf(network, forwarding);
+  const heard: Hearing = bridges.length === 0 ? new Map() : hearing(network, forwarding, bridges);
+  return { bridges, heard, election: elect(bridges, heard) };
+});
+
+/**
+ * The ports and circuits that spanning tree blocks, elected among the switches and bridges that have it on, over what their
+ * BPDUs really reach. Where priorities tie the order of ids stands in for the MAC addresses that a design doesn't hold. An
+ * election that doesn't settle (BPDUs that pass one way only) blocks nothing: no loop is then taken for covered.
+ */
+export const blockedPorts = perNetwork((network): Blocked => {
+  const { bridges, election } = treesOf(network);
+  return new Set([...election.blocked].map((port) => blockKey(bridges[port.bridge]!.place, port.ordinal)));
+});
+
+/** A port of a switch, or a circuit of a bridge, that takes part in spanning tree. */
+export interface TreePort {
+  /** Place in `bpduReach`. */
+  readonly bridge: number;
+  /** Of the port in the switch, of the circuit in the forwarder. */
+  readonly ordinal: number;
+}
+/** A switch or bridge that takes part in spanning tree. */
+export interface BpduListener {
+  readonly place: Place;
+  readonly priority: number;
+  readonly isRoot: boolean;
+  /** Ports that hear BPDUs at all, in order. */
+  readonly ports: readonly HearingPort[];
+  readonly blockedPorts: number;
+  /** How many it would block if no BPDU crossed a tunnel: fewer in all where the overlay is part of a loop. */
+  readonly blockedPortsApart: number;
+}
+export interface HearingPort {
+  readonly ordinal: number;
+  /** It hears a better root than the bridge itself would be: the port leads there, or is blocked for one that does. */
+  readonly hearsBetter: boolean;
+  readonly hears: readonly { readonly from: TreePort; readonly tunnels: readonly Id[] }[];
+}
+
+/** Whose BPDUs each switch and bridge with spanning tree hears, at which port, and through which tunnels they came. */
+export const bpduReach = perNetwork((network): readonly BpduListener[] => {
+  const { bridges, heard, election } = treesOf(network);
+  const apart = elect(
+    bridges,
+    new Map([...heard].map(([port, list]) => [port, list.filter(({ tunnels }) => tunnels.length === 0)])),
+  );
+  return bridges.map(({ place, priority, ports }, bridge) => ({
+    place,
+    priority,
+    isRoot: election.isRoot(bridge),
+    ports: ports.flatMap((port): readonly HearingPort[] => {
+      const hears = (heard.get(port) ?? []).map(({ from, tunnels }) => ({
+        from: { bridge: from.bridge, ordinal: from.ordinal },
+        tunnels,
+      }));
+      const hearsBetter = election.rootPorts.get(bridge) === port || election.blocked.has(port);
+      return hears.length === 0 ? [] : [{ ordinal: port.ordinal, hearsBetter, hears }];
+    }),
+    blockedPorts: ports.filter((port) => election.blocked.has(port)).length,
+    blockedPortsApart: ports.filter((port) => apart.blocked.has(port)).length,
+  }));
 });

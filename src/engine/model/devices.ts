@@ -13,6 +13,12 @@ import {
 } from './scalars.ts';
 
 export const portRoleSchema = z.enum(['wan', 'lan', 'member-link']);
+/**
+ * What a port does about spanning tree beyond taking part: `guard` shuts it when a BPDU comes in, `root-guard` blocks it while
+ * a better root is heard there, `filter` neither sends nor takes BPDUs. Common practice, no source.
+ */
+export const portBpdus = ['guard', 'root-guard', 'filter'] as const;
+
 export const memberSchema = z.union([z.literal(1), z.literal(2)], 'expected member 1 or 2');
 export type Member = z.infer<typeof memberSchema>;
 
@@ -31,6 +37,7 @@ export const portSchema = z.strictObject({
   aggregation: nameSchema.optional(),
   stormLimitPps: countSchema.optional(),
   macLimit: countSchema.optional(),
+  bpdus: z.enum(portBpdus).optional(),
 });
 
 export const spanningTreeSchema = z.strictObject({

@@ -62,6 +62,7 @@ import { policyDropsAddressResolution } from './policy-drops-address-resolution.
 import { policyDropsProtocol } from './policy-drops-protocol.ts';
 import { policyOneDirection } from './policy-one-direction.ts';
 import { policyWithoutLoggedDenial } from './policy-without-logged-denial.ts';
+import { portGuardTrips } from './port-guard-trips.ts';
 import { portHoldsTwoCables } from './port-holds-two-cables.ts';
 import { portMtuBelowSegment } from './port-mtu-below-segment.ts';
 import { portRoutedAndBridged } from './port-routed-and-bridged.ts';
@@ -81,6 +82,7 @@ import { segmentsMerged } from './segments-merged.ts';
 import { selectorsLoseFragments } from './selectors-lose-fragments.ts';
 import { sequenceNumbersRunOut } from './sequence-numbers-run-out.ts';
 import { snoopingWithoutQuerier } from './snooping-without-querier.ts';
+import { spanningTreesMerged } from './spanning-trees-merged.ts';
 import { stormAnyToAnyMesh } from './storm-any-to-any-mesh.ts';
 import { stormCustomerCable } from './storm-customer-cable.ts';
 import { stormLimitTooLow } from './storm-limit-too-low.ts';
@@ -172,6 +174,7 @@ export const rules: readonly Rule[] = [
   policyDropsProtocol,
   policyOneDirection,
   policyWithoutLoggedDenial,
+  portGuardTrips,
   portHoldsTwoCables,
   portMtuBelowSegment,
   portRoutedAndBridged,
@@ -191,6 +194,7 @@ export const rules: readonly Rule[] = [
   selectorsLoseFragments,
   sequenceNumbersRunOut,
   snoopingWithoutQuerier,
+  spanningTreesMerged,
   stormAnyToAnyMesh,
   stormCustomerCable,
   stormLimitTooLow,
