@@ -1,6 +1,6 @@
 import { paint } from '../../drawing/theme/paint.ts';
 import type { Tread } from './padding-staircase.ts';
-import { useWidth } from './use-width.ts';
+import { useWidth } from '../../lib/use-width.ts';
 
 const HEIGHT_PX = 190;
 const LEFT_PX = 6;

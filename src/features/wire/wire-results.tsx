@@ -2,7 +2,7 @@ import { Button } from '../../components/button.tsx';
 import { Icon } from '../../components/icon.tsx';
 import { SeverityShape } from '../../components/severity-mark.tsx';
 import { anatomyRows } from './anatomy-rows.ts';
-import { ByteAnatomy } from './byte-anatomy.tsx';
+import { ByteAnatomy } from '../../components/byte-anatomy.tsx';
 import { LayersTable, TreadsTable } from './figures-in-table.tsx';
 import { paddingStaircase } from './padding-staircase.ts';
 import { ResultCells } from './result-cells.tsx';

@@ -15,7 +15,7 @@ import { TCP_HEADER_BYTES, TCP_LOSS_BOUND_CONSTANT } from '../../engine/referenc
 import type { Layer } from '../../engine/wire/layer.ts';
 import type { Stack } from '../../engine/wire/stack.ts';
 import { groupedNumber, rateAtMost, shareAtMost } from './figure-words.ts';
-import { isInFrame, isInIpPacket, shortNameOf } from './layer-names.ts';
+import { isInFrame, isInIpPacket, shortNameOf } from '../../lib/layer-names.ts';
 import type { WireFigures } from './wire-figures.ts';
 
 /** A figure with how it comes about. */

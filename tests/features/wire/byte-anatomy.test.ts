@@ -1,9 +1,11 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { textWidth } from '#drawing/text-width.ts';
-import { layOutAnatomy, NAME_SIZE_PX } from '../../../src/features/wire/anatomy-geometry.ts';
-import { anatomyRows, type AnatomyRow } from '../../../src/features/wire/anatomy-rows.ts';
+import { anatomyRows } from '../../../src/features/wire/anatomy-rows.ts';
 import type { WireTexts } from '../../../src/features/wire/wire-fields.ts';
+import { layOutAnatomy } from '../../../src/lib/anatomy-geometry.ts';
+import { NAME_SIZE_PX } from '../../../src/lib/bar-geometry.ts';
+import type { AnatomyRow } from '../../../src/lib/byte-blocks.ts';
 import { figuresFor } from './wire-inputs.ts';
 
 const rowsFor = (changes: Partial<WireTexts> = {}) => anatomyRows(figuresFor(changes));

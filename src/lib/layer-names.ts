@@ -1,4 +1,4 @@
-import type { Layer } from '../../engine/wire/layer.ts';
+import type { Layer } from '../engine/wire/layer.ts';
 
 const shortNames: Readonly<Record<string, string>> = {
   preamble: 'preamble',
