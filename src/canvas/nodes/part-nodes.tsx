@@ -6,6 +6,7 @@ import { bandPart } from '../../drawing/parts/band-part.ts';
 import { devicePart } from '../../drawing/parts/device-part.ts';
 import { legendPart } from '../../drawing/parts/legend-part.ts';
 import { pinnedNotePart, standingNotesPart } from '../../drawing/parts/notes-part.ts';
+import { hopMarks } from '../../drawing/parts/hop-marks.ts';
 import { framePart, paperPart } from '../../drawing/parts/paper-part.ts';
 import { ringPart } from '../../drawing/parts/ring-part.ts';
 import { site as siteSizes } from '../../drawing/parts/sizes.ts';
@@ -250,10 +251,22 @@ function Balloons() {
   ));
 }
 
+/** Numbers of a trace's hops; the trace's own list says the same. */
+function Hops() {
+  const { facts, look, geometry } = useDrawing();
+  const shapes = useMemo(() => hopMarks(geometry, facts, look), [geometry, facts, look]);
+  return (
+    <g aria-hidden="true">
+      <Shapes shapes={shapes} />
+    </g>
+  );
+}
+
 const Marks = memo(function Marks(_props: NodeProps<MarksNode>) {
   return (
     <World origin={{ x: 0, y: 0 }} silent={false}>
       <FaultMarks />
+      <Hops />
       <Balloons />
     </World>
   );
