@@ -50,6 +50,13 @@ export const routes: RouteObject[] = [
                     ErrorBoundary: PageError,
                     lazy: async () => ({ Component: (await import('../pages/sheet-page.tsx')).SheetPage }),
                   },
+                  {
+                    path: 'segments',
+                    ErrorBoundary: PageError,
+                    lazy: async () => ({
+                      Component: (await import('../pages/segments-page.tsx')).SegmentsPage,
+                    }),
+                  },
                 ],
               },
               {

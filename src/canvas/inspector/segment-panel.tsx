@@ -2,11 +2,14 @@ import { CellGrid } from '../../components/cell.tsx';
 import { Button } from '../../components/button.tsx';
 import { Icon } from '../../components/icon.tsx';
 import { SegmentSwatch } from '../../components/segment-swatch.tsx';
+import { showToast } from '../../components/toast.tsx';
 import { SelectCell } from '../../components/field-cells.tsx';
 import { tunnelSegments } from '../../engine/flood/tunnel-segments.ts';
-import { protocols, type Protocol } from '../../engine/model/intent.ts';
+import { protocols } from '../../engine/model/intent.ts';
 import { patchAt } from '../../engine/model/merge-patch.ts';
-import { newEntryId, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
+import { protocolWords } from '../../lib/protocol-words.ts';
+import { newEntryId, perform, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
+import { placeDemand } from '../../workspace/operations/place-parts.ts';
 import { AddButton } from './add-button.tsx';
 import { useNetwork } from './carried-segments.tsx';
 import { CheckList } from './check-list.tsx';
@@ -20,26 +23,6 @@ import { textList, wholeNumber } from './written-value.ts';
 
 const number = wholeNumber();
 const bytes = wholeNumber('B');
-
-const protocolLabels: { readonly [P in Protocol]: string } = {
-  ipv4: 'IPv4',
-  ipv6: 'IPv6',
-  multicast: 'multicast',
-  igmp: 'IGMP',
-  ospf: 'OSPF',
-  'is-is': 'IS-IS',
-  pim: 'PIM',
-  vrrp: 'VRRP',
-  bfd: 'BFD',
-  dhcp: 'DHCP',
-  'spanning-tree': 'spanning tree',
-  lacp: 'LACP',
-  lldp: 'LLDP',
-  eapol: 'EAPOL',
-  ptp: 'PTP',
-  cfm: 'CFM',
-  'real-time-ethernet': 'real-time Ethernet',
-};
 
 /** A segment: what it needs, where it lands, what carries it. */
 export function SegmentPanel({ id }: { readonly id: string }) {
@@ -68,7 +51,7 @@ export function SegmentPanel({ id }: { readonly id: string }) {
         <CheckList
           label="Protocols"
           path={at('protocols')}
-          choices={protocols.map((value) => ({ value, label: protocolLabels[value] }))}
+          choices={protocols.map((value) => ({ value, label: protocolWords[value] }))}
           noneWords="none in particular"
         />
       </Section>
@@ -166,23 +149,18 @@ function Demands({ id }: { readonly id: string }) {
   const open = useOpenDesign();
   const design = useOpenState((state) => state.document);
   const editable = useEditable();
-  const commit = useCommit();
   const demands = Object.entries(design.demands).filter(([, demand]) => demand.segment === id);
-  const [from, to] = Object.keys(design.segments[id]?.sites ?? {});
+  const places = Object.keys(design.segments[id]?.sites ?? {}).length;
   const add = (): void => {
-    const demand = newEntryId('dm');
-    if (
-      commit('Demand', patchAt(['demands', demand], { segment: id, from: { site: from }, to: { site: to } }))
-    )
-      open.select([{ collection: 'demands', id: demand }]);
+    const done = perform(open, placeDemand(design, id, newEntryId));
+    if (!done.ok) showToast({ tone: 'failed', text: done.why });
   };
   return (
     <Section
       title={`Demands (${demands.length})`}
       beside={
         editable &&
-        from !== undefined &&
-        to !== undefined && (
+        places > 1 && (
           <AddButton subject="a demand" onClick={add}>
             Add
           </AddButton>
@@ -191,7 +169,7 @@ function Demands({ id }: { readonly id: string }) {
     >
       <ElementList
         of={demands.map(([demand]) => ({ collection: 'demands', id: demand }))}
-        empty={to === undefined ? 'It has to land at two sites first.' : 'None stated.'}
+        empty={places < 2 ? 'It has to land at two sites first.' : 'None stated.'}
       />
     </Section>
   );

@@ -40,6 +40,7 @@ export function DesignBar({ engagementName, workspaceId, summary }: DesignBarPro
           label="Design"
           destinations={[
             { to: path, label: 'Sheet', end: true },
+            { to: `${path}/segments`, label: 'Segments' },
             { to: '/checks', label: 'Checks' },
           ]}
         />

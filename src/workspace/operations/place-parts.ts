@@ -1,8 +1,10 @@
-import type { DeepReadonly, Design, Entry } from '../../engine/model/design.ts';
+import type { Collection, DeepReadonly, Design, ElementRef, Entry } from '../../engine/model/design.ts';
 import type { Device, DeviceKind, Port } from '../../engine/model/devices.ts';
 import { isGateway } from '../../engine/model/devices.ts';
+import { noteSchema } from '../../engine/model/intent.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { freeLetter, freeLoopback, freeName, freeVlan } from './free-names.ts';
+import { nameOf } from './name-of.ts';
 import type { NewId, Operation } from './operation.ts';
 import { refused } from './operation.ts';
 
@@ -193,6 +195,20 @@ export const placeSegment = (design: Design, newId: NewId): Operation => {
   };
 };
 
+/** Traffic between the first two sites of a segment, to be said more of. */
+export const placeDemand = (design: Design, segment: string, newId: NewId): Operation => {
+  const id = newId('dm');
+  const [from, to] = Object.keys(design.segments[segment]?.sites ?? {});
+  if (from === undefined || to === undefined)
+    return refused('A demand needs a segment that lands at two sites.');
+  return {
+    ok: true,
+    label: 'Add a demand',
+    patch: { demands: { [id]: { segment, from: { site: from }, to: { site: to } } } },
+    created: [{ collection: 'demands', id }],
+  };
+};
+
 export const placeNote = (at: Place, newId: NewId): Operation => {
   const id = newId('note');
   return {
@@ -200,5 +216,23 @@ export const placeNote = (at: Place, newId: NewId): Operation => {
     label: 'Add a note',
     patch: { notes: { [id]: { text: 'Note' } }, layout: { notes: { [id]: { x: at.x, y: at.y } } } },
     created: [{ collection: 'notes', id }],
+  };
+};
+
+/** The kinds of element that a note can be pinned to. */
+export const notable: readonly Collection[] = noteSchema.shape.target.unwrap().shape.collection.options;
+export const isNotable = ({ collection }: ElementRef): boolean => notable.includes(collection);
+
+/** A note pinned to an element (a port's to its device), that the drawing places beside it until somebody moves it. */
+export const pinNote = (design: Design, about: ElementRef, newId: NewId): Operation => {
+  const { collection, id } = about;
+  if (!isNotable(about) || !Object.hasOwn(design[collection], id))
+    return refused(`No note can be pinned to ${nameOf(design, about)}: put one down on the sheet.`);
+  const note = newId('note');
+  return {
+    ok: true,
+    label: `Pin a note to ${nameOf(design, { collection, id })}`,
+    patch: { notes: { [note]: { text: 'Note', target: { collection, id } } } } as MergePatch,
+    created: [{ collection: 'notes', id: note }],
   };
 };
