@@ -104,16 +104,37 @@ export const portVlanKey = (device: Id, port: Id, vlan: number | 'untagged' | 'a
   `${device}/${port}/${vlan}`;
 export const siteVlanKey = (site: Id, vlan: number): string => `${site}/${vlan}`;
 
-/** Keeps one answer per network, so that rules, traces and screens share it. */
-export const perNetwork = <T>(compute: (network: Network) => T): ((network: Network) => T) => {
-  const answers = new WeakMap<Network, { readonly value: T }>();
+/** An answer with the network that it was given for. */
+export interface Answer<T> {
+  readonly network: Network;
+  readonly value: T;
+}
+type Compute = (network: Network, earlier?: Answer<never>) => unknown;
+
+const answersOf = new WeakMap<Network, Map<Compute, Answer<unknown>>>();
+
+/**
+ * Keeps one answer per network, so that rules, traces and screens share it. Where the network is that of a changed design,
+ * `earlier` is the last answer for a version before: what the changes leave alone may be taken over from it.
+ */
+export const perNetwork = <T>(
+  compute: (network: Network, earlier?: Answer<T>) => T,
+): ((network: Network) => T) => {
+  const key = compute as Compute;
   return (network) => {
-    const known = answers.get(network);
-    if (known !== undefined) return known.value;
-    const value = compute(network);
-    answers.set(network, { value });
+    const answers = answersOf.get(network) ?? new Map<Compute, Answer<unknown>>();
+    const earlier = answers.get(key) as Answer<T> | undefined;
+    if (earlier?.network === network) return earlier.value;
+    const value = compute(network, earlier);
+    answers.set(key, { network, value });
+    answersOf.set(network, answers);
     return value;
   };
+};
+
+/** Makes the answers for one network the earlier ones of another, whose design is a later version. */
+export const passOnAnswers = (from: Network, to: Network): void => {
+  answersOf.set(to, new Map(answersOf.get(from)));
 };
 
 /** The entry of a reference that the schema guarantees; a missing one is a bug of the caller, who left the design unparsed. */
