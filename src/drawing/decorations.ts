@@ -50,6 +50,14 @@ export interface Decorations {
   }[];
   /** Numbers of a trace's steps, as its list repeats them; the step that fails stands out. */
   readonly hops?: readonly { readonly number: number; readonly at: ElementRef; readonly failing: boolean }[];
+  /** A few words on a plate beside an element, such as how full it is; the strong ones are placed first and stand out. */
+  readonly tags?: readonly {
+    readonly at: ElementRef;
+    readonly text: string;
+    readonly strong?: boolean;
+    /** Parts of a million, drawn as a bar under the words; what is over a million sticks out of it. */
+    readonly fillPerMillion?: number;
+  }[];
   /** Segments whose cords are hidden from view (faded). */
   readonly hiddenSegments: readonly string[];
 }

@@ -11,6 +11,7 @@ import { framePart, paperPart } from '../../drawing/parts/paper-part.ts';
 import { ringPart } from '../../drawing/parts/ring-part.ts';
 import { site as siteSizes } from '../../drawing/parts/sizes.ts';
 import { sitePart } from '../../drawing/parts/site-part.ts';
+import { tagParts } from '../../drawing/parts/tag-part.ts';
 import { trunkPart } from '../../drawing/parts/trunk-part.ts';
 import { titleBlockPart } from '../../drawing/parts/title-block-part.ts';
 import type { Shape } from '../../drawing/shape.ts';
@@ -262,10 +263,22 @@ function Hops() {
   );
 }
 
+/** What a result says beside elements; its list says the same to who can't see it. */
+function Tags() {
+  const { facts, look, geometry } = useDrawing();
+  const shapes = useMemo(() => tagParts(geometry, facts, look), [geometry, facts, look]);
+  return (
+    <g aria-hidden="true">
+      <Shapes shapes={shapes} />
+    </g>
+  );
+}
+
 const Marks = memo(function Marks(_props: NodeProps<MarksNode>) {
   return (
     <World origin={{ x: 0, y: 0 }} silent={false}>
       <FaultMarks />
+      <Tags />
       <Hops />
       <Balloons />
     </World>

@@ -21,6 +21,7 @@ import { overhangParts } from '../parts/overhang-part.ts';
 import { framePart, paperPart } from '../parts/paper-part.ts';
 import { ringPart } from '../parts/ring-part.ts';
 import { sitePart } from '../parts/site-part.ts';
+import { tagParts } from '../parts/tag-part.ts';
 import { titleBlockPart } from '../parts/title-block-part.ts';
 import { trunkPart } from '../parts/trunk-part.ts';
 import { route } from '../routing/route.ts';
@@ -78,7 +79,11 @@ export const sheetShapes = (geometry: SheetGeometry, view: SheetView): readonly 
     },
     {
       name: 'balloons',
-      shapes: [...hopMarks(geometry, facts, look), ...balloonParts(geometry, facts, look)],
+      shapes: [
+        ...tagParts(geometry, facts, look),
+        ...hopMarks(geometry, facts, look),
+        ...balloonParts(geometry, facts, look),
+      ],
     },
   ];
 };
