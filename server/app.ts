@@ -15,8 +15,12 @@ import { designRoutes } from './routes/design-routes.ts';
 import { engagementRoutes } from './routes/engagement-routes.ts';
 import { engineRoutes } from './routes/engine-routes.ts';
 import { healthRoutes } from './routes/health-routes.ts';
+import { numberingRoutes } from './routes/numbering-routes.ts';
+import { profileRoutes } from './routes/profile-routes.ts';
 import { sessionRoutes } from './routes/session-routes.ts';
+import { waiverRoutes } from './routes/waiver-routes.ts';
 import type { Context } from './services/context.ts';
+import { createNumberingCache } from './services/numbering.ts';
 import { createDocumentCache } from './services/stored-documents.ts';
 import { createThumbnailCache } from './services/thumbnails.ts';
 
@@ -43,6 +47,7 @@ export function createApp({
     clock,
     documents: createDocumentCache(),
     thumbnails: createThumbnailCache(),
+    numbering: createNumberingCache(),
   };
   const sessions = createSessions(database, config, (error) => log.error({ err: error }, 'session store'));
   const throttles = createThrottles(database.pool);
@@ -66,6 +71,9 @@ export function createApp({
   app.use(sessionRoutes(context, sessions, throttles));
   app.use(engagementRoutes(context));
   app.use(designRoutes(context));
+  app.use(waiverRoutes(context));
+  app.use(numberingRoutes(context));
+  app.use(profileRoutes(context));
   app.use('/api', answerUnknownPaths);
   app.use(clientFiles(clientFolder));
   app.use(answerUnknownPaths);

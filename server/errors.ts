@@ -44,7 +44,9 @@ export class Refusal extends Error {
 }
 
 /** The same answer for what does not exist and for what belongs to others, so that nobody can probe for ids. */
-export function notFound(what: 'workspace' | 'engagement' | 'design' | 'page'): Refusal {
+export function notFound(
+  what: 'workspace' | 'engagement' | 'design' | 'waiver' | 'equipment profile' | 'page',
+): Refusal {
   return new Refusal(
     'not-found',
     `There is no such ${what}, or it belongs to a workspace that you are not in.`,

@@ -12,6 +12,9 @@ const words: { readonly [action in Action]: string } = {
   'design.create': 'start a design',
   'design.edit': 'edit designs',
   'design.archive': 'archive or restore designs',
+  'finding.waive': 'waive findings',
+  'pools.edit': 'change the pools of numbers',
+  'profile.edit': 'change equipment profiles',
 };
 
 /**

@@ -7,8 +7,9 @@ import { actions } from '#contract/session.ts';
  */
 export const permissions: { readonly [role in Role]: readonly Action[] } = {
   owner: actions,
-  architect: actions,
-  reviewer: ['workspace.read', 'design.read'],
+  // Who draws does not waive: that takes a second pair of eyes. Pools and profiles are the team's, not one design's.
+  architect: actions.filter((action) => !['finding.waive', 'pools.edit', 'profile.edit'].includes(action)),
+  reviewer: ['workspace.read', 'design.read', 'finding.waive'],
   presales: ['workspace.read', 'design.read', 'design.create'],
   installer: ['workspace.read'],
 };
@@ -39,6 +40,15 @@ export const routes = {
   'GET /api/designs/:designId/patches': 'design.read',
   'POST /api/designs/:designId/patches': 'design.edit',
   'GET /api/designs/:designId/thumbnail': 'design.read',
+  'GET /api/designs/:designId/context': 'design.read',
+  'GET /api/designs/:designId/waivers': 'design.read',
+  'POST /api/designs/:designId/waivers': 'finding.waive',
+  'DELETE /api/designs/:designId/waivers/:waiverId': 'finding.waive',
+  'GET /api/workspaces/:workspaceId/pools': 'design.read',
+  'PUT /api/workspaces/:workspaceId/pools': 'pools.edit',
+  'GET /api/workspaces/:workspaceId/profiles': 'workspace.read',
+  'POST /api/workspaces/:workspaceId/profiles': 'profile.edit',
+  'PATCH /api/profiles/:profileId': 'profile.edit',
 } as const satisfies { readonly [route: string]: Access };
 
 export type Route = keyof typeof routes;

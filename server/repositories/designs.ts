@@ -1,5 +1,7 @@
+import { createHash } from 'node:crypto';
 import type { Knex } from 'knex';
 import type { Counts, DesignSummary } from '#contract/designs.ts';
+import type { DesignNumbers } from '#engine/numbering/numbering-context.ts';
 
 /** A design without its document, and where it belongs. */
 export interface DesignRow {
@@ -14,18 +16,32 @@ export interface DesignRow {
   readonly identification: string | null;
   readonly revision: string | null;
   readonly counts: Counts;
+  /** The last day on which the counts hold, such as 2027-03-31; null where no day ends them. */
+  readonly countsUntil: string | null;
   readonly changedAt: Date;
   /** The name of whoever changed it last. */
   readonly changedBy: string | null;
   readonly archivedAt: Date | null;
 }
 
-/** What a list shows of a document, kept beside it. */
-export interface DocumentSummary {
+/** How many findings no waiver covers, and the last day on which that is so. */
+export interface OpenCounts {
+  readonly counts: Counts;
+  readonly countsUntil: string | null;
+}
+
+/** Which of the workspace's profiles a document holds copies of, by the copy's id. */
+export interface ProfileCopies {
+  readonly [copyId: string]: { readonly digest: string; readonly devices: number };
+}
+
+/** What is read of a document, kept beside it so that no list needs documents. */
+export interface DocumentSummary extends OpenCounts {
   readonly title: string;
   readonly identification: string | null;
   readonly revision: string | null;
-  readonly counts: Counts;
+  readonly numbers: DesignNumbers;
+  readonly profileCopies: ProfileCopies;
 }
 
 interface Flat extends Omit<DesignRow, 'counts'>, Counts {}
@@ -48,6 +64,7 @@ function selectDesigns(knex: Knex): Knex.QueryBuilder {
       blocking: 'designs.blocking',
       degrading: 'designs.degrading',
       advisory: 'designs.advisory',
+      countsUntil: knex.raw("to_char(designs.counts_until, 'YYYY-MM-DD')"),
       changedAt: 'designs.changed_at',
       changedBy: 'people.name',
       archivedAt: 'designs.archived_at',
@@ -127,13 +144,44 @@ export async function setDesignArchivedAt(knex: Knex, id: string, archivedAt: Da
   await knex('designs').where({ id }).update({ archived_at: archivedAt });
 }
 
-function summaryColumns({ title, identification, revision, counts }: DocumentSummary) {
+/** Notes how many findings are open now, after a waiver was given, withdrawn or has ended. */
+export async function setOpenCounts(knex: Knex, id: string, open: OpenCounts): Promise<void> {
+  await knex('designs').where({ id }).update(countColumns(open));
+}
+
+/** Notes the numbers of a document that was last saved before numbers were kept. */
+export async function setNumbers(knex: Knex, id: string, numbers: DesignNumbers): Promise<void> {
+  await knex('designs').where({ id }).whereNull('numbers_digest').update(numberColumns(numbers));
+}
+
+function summaryColumns({
+  title,
+  identification,
+  revision,
+  numbers,
+  profileCopies,
+  ...open
+}: DocumentSummary) {
   return {
     title,
     identification,
     revision,
+    ...countColumns(open),
+    ...numberColumns(numbers),
+    profile_copies: JSON.stringify(profileCopies),
+  };
+}
+
+function countColumns({ counts, countsUntil }: OpenCounts) {
+  return {
     blocking: counts.blocking,
     degrading: counts.degrading,
     advisory: counts.advisory,
+    counts_until: countsUntil,
   };
+}
+
+function numberColumns(numbers: DesignNumbers) {
+  const text = JSON.stringify(numbers);
+  return { numbers: text, numbers_digest: createHash('sha256').update(text).digest('base64url') };
 }

@@ -16,12 +16,14 @@ const sequenceSchema = z
   .string()
   .regex(/^\d{1,9}$/, 'expected a sequence number such as 17')
   .transform(Number);
+const countSchema = z.string().regex(/^\d{1,9}$/, 'expected a number of findings such as 3');
 const patchesQuerySchema = z.strictObject({
   after: sequenceSchema,
 });
 
 const thumbnailQuerySchema = z.strictObject({
   v: sequenceSchema.optional(),
+  open: countSchema.optional(),
   theme: z.enum(thumbnailThemes).default('paper'),
 });
 

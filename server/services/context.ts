@@ -1,4 +1,5 @@
 import type { Database } from '../db/open-database.ts';
+import type { NumberingCache } from './numbering.ts';
 import type { DocumentCache } from './stored-documents.ts';
 import type { ThumbnailCache } from './thumbnails.ts';
 
@@ -8,4 +9,5 @@ export interface Context {
   readonly clock: () => Date;
   readonly documents: DocumentCache;
   readonly thumbnails: ThumbnailCache;
+  readonly numbering: NumberingCache;
 }

@@ -16,6 +16,7 @@ import { summarise, summaryOf } from './design-summary.ts';
 import { saveTitle } from './save-edits.ts';
 import { sizeProblem } from './settle-edits.ts';
 import { loadDocument } from './stored-documents.ts';
+import { withCurrentCounts } from './waivers.ts';
 
 /** Starts a design: empty, from the demo, as a copy of another, or from a document. */
 export async function createDesign(
@@ -43,8 +44,9 @@ export async function createDesign(
 /** A design with its document, and what the reader may do with it. */
 export async function openDesign(context: Context, personId: string, designId: string): Promise<OpenDesign> {
   const { knex } = context.database;
-  const design = await requireDesign(context, designId);
-  const role = await authorise(knex, personId, 'design.read', design.workspaceId, 'design');
+  const row = await requireDesign(context, designId);
+  const role = await authorise(knex, personId, 'design.read', row.workspaceId, 'design');
+  const [design = row] = await withCurrentCounts(context, [row]);
   const { document } = await loadDocument(context, knex, design);
   const isPutAway = design.archivedAt !== null || design.engagementArchivedAt !== null;
   return {

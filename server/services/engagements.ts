@@ -11,19 +11,22 @@ import {
 } from '../repositories/engagements.ts';
 import type { Context } from './context.ts';
 import { summaryOf } from './design-summary.ts';
+import { withCurrentCounts } from './waivers.ts';
 
 /** A workspace's engagements with their designs; archived ones of both kinds only when asked for. */
 export async function readEngagements(
-  { database: { knex } }: Context,
+  context: Context,
   personId: string,
   workspaceId: string,
   withArchived: boolean,
 ): Promise<Engagement[]> {
+  const { knex } = context.database;
   await authorise(knex, personId, 'workspace.read', workspaceId, 'workspace');
-  const [engagements, designs] = await Promise.all([
+  const [engagements, listed] = await Promise.all([
     listEngagements(knex, workspaceId, withArchived),
     listDesigns(knex, workspaceId, withArchived),
   ]);
+  const designs = await withCurrentCounts(context, listed);
   return engagements.map((engagement) => ({
     ...withoutDesigns(engagement),
     designs: designs.filter(({ engagementId }) => engagementId === engagement.id).map(summaryOf),

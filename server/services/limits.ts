@@ -19,4 +19,13 @@ export const limits = {
   followedEntries: 2_000,
   /** An outage with all pairs of hosts listed: they grow with the square of the hosts. */
   followedEntriesWithPairs: 500,
+  /** Other designs whose numbers one design is told of, the last changed first, and how many numbers that may be. */
+  neighbours: 300,
+  neighbourNumbers: 100_000,
+  /** Equipment profiles of a workspace, archived ones among them. */
+  profiles: 500,
+  /** Waivers that were withdrawn, as far back as one list tells of them. */
+  withdrawnWaivers: 200,
+  /** Designs whose counts one list brings up to date; the others follow with the next. */
+  recountedAtOnce: 20,
 } as const;

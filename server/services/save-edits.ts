@@ -7,6 +7,7 @@ import type { NewPatch, PatchRow } from '../repositories/design-patches.ts';
 import { appendPatches, findLoggedEdits, listPatches } from '../repositories/design-patches.ts';
 import type { DesignRow } from '../repositories/designs.ts';
 import { findDesign, lockDesign, updateAfterSave } from '../repositories/designs.ts';
+import { checkFactsOf } from './check-facts.ts';
 import type { Context } from './context.ts';
 import { summarise } from './design-summary.ts';
 import type { Edit } from './settle-edits.ts';
@@ -82,7 +83,7 @@ export async function readPatches(
 }
 
 /** Refuses changes to what is put away. */
-function refuseArchived(design: Pick<DesignRow, 'archivedAt' | 'engagementArchivedAt'>): void {
+export function refuseArchived(design: Pick<DesignRow, 'archivedAt' | 'engagementArchivedAt'>): void {
   if (design.archivedAt !== null) {
     throw new Refusal('conflict', 'The design is archived; restore it before you change it.');
   }
@@ -151,7 +152,8 @@ async function append(
   const sequence = design.sequence + patches.length;
   const at = context.clock();
   await appendPatches(trx, design.id, patches, personId, at);
-  await updateAfterSave(trx, design.id, { sequence, summary: summarise(settled.document), personId, at });
+  const summary = summarise(settled.document, await checkFactsOf(context, trx, design));
+  await updateAfterSave(trx, design.id, { sequence, summary, personId, at });
   return { sequence, document: settled.document, snapshotSequence: stored.snapshotSequence };
 }
 

@@ -8,6 +8,8 @@ import type { Finding } from '#engine/rules/finding.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
 import type { thumbnailThemes } from '#contract/designs.ts';
 import { authorise } from '../auth/authorise.ts';
+import type { CheckFacts } from './check-facts.ts';
+import { checkFactsOf, findingsBy } from './check-facts.ts';
 import type { Context } from './context.ts';
 import { requireDesign } from './designs.ts';
 import { loadDocument } from './stored-documents.ts';
@@ -46,25 +48,31 @@ export async function readThumbnail(
   const design = await requireDesign(context, designId);
   await authorise(knex, personId, 'design.read', design.workspaceId, 'design');
   const { sequence } = design;
-  const key = `${designId} ${sequence} ${theme}`;
+  const facts = await checkFactsOf(context, knex, design);
+  const waived = facts.waivers.map(({ id, expiresOn }) => (expiresOn < facts.today ? '' : id)).join(' ');
+  const key = `${designId} ${sequence} ${theme} ${waived}`;
   const known = context.thumbnails.find(key);
   if (known !== undefined) return { sequence, svg: known };
   const { document } = await loadDocument(context, knex, design);
-  const svg = drawThumbnail(document, theme);
+  const svg = drawThumbnail(document, theme, facts);
   context.thumbnails.keep(key, svg);
   return { sequence, svg };
 }
 
-function drawThumbnail(document: Design, theme: ThumbnailTheme): string {
+function drawThumbnail(document: Design, theme: ThumbnailTheme, facts: CheckFacts): string {
+  const { covered } = findingsBy(document, facts);
   return thumbnailSvgText(document, {
     theme,
     tunnelSegments: tunnelSegments(indexNetwork(document)),
-    decorations: decorationsOf(runRules(document)),
+    decorations: decorationsOf(
+      runRules(document, facts.numbering),
+      new Set(covered.map(({ finding }) => finding.key)),
+    ),
   });
 }
 
 /** What a picture of this size can show of findings: where they are, and which cords are cut. */
-function decorationsOf(findings: readonly Finding[]): Decorations {
+function decorationsOf(findings: readonly Finding[], waived: ReadonlySet<string>): Decorations {
   return {
     ...noDecorations,
     cuts: findings.flatMap(({ mark }) =>
@@ -72,8 +80,8 @@ function decorationsOf(findings: readonly Finding[]): Decorations {
         ? [{ tunnel: mark.tunnel, ...(mark.vnis === undefined ? {} : { vnis: mark.vnis }) }]
         : [],
     ),
-    balloons: findings.flatMap(({ severity, elements: [at] }, index) =>
-      at === undefined ? [] : [{ number: index + 1, severity, waived: false, at }],
+    balloons: findings.flatMap(({ key, severity, elements: [at] }, index) =>
+      at === undefined ? [] : [{ number: index + 1, severity, waived: waived.has(key), at }],
     ),
   };
 }

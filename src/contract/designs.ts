@@ -83,8 +83,9 @@ export const changeDesignSchema = z.strictObject({
 
 export const thumbnailThemes = ['paper', 'slate'] as const;
 /**
- * GET /api/designs/:designId/thumbnail?v=sequence&theme=paper|slate → image/svg+xml of the design as it is now. `v` names the
- * picture for the browser's cache: with the current sequence number the answer may be kept for a day.
+ * GET /api/designs/:designId/thumbnail?v=sequence&open=N&theme=paper|slate → image/svg+xml of the design as it is now. `v` names
+ * the picture for the browser's cache: with the current sequence number the answer may be kept for a day. `open`, the count of
+ * blocking findings, names it apart from how it was before a waiver.
  */
 
 /** GET /api/designs/:designId */

@@ -13,6 +13,9 @@ export const actions = [
   'design.create',
   'design.edit',
   'design.archive',
+  'finding.waive',
+  'pools.edit',
+  'profile.edit',
 ] as const;
 export type Action = (typeof actions)[number];
 

@@ -86,7 +86,7 @@ export function DesignCard({ design, canOpen, actions }: DesignCardProps) {
 /** The sheet from far off. The address names the version, so the browser may keep each picture for good. */
 function Thumbnail({ design, canOpen }: { readonly design: DesignSummary; readonly canOpen: boolean }) {
   const theme = useTheme();
-  const address = `/api/designs/${design.id}/thumbnail?v=${design.sequence}&theme=${theme}`;
+  const address = `/api/designs/${design.id}/thumbnail?v=${design.sequence}&open=${design.counts.blocking}&theme=${theme}`;
   const [failedAddress, setFailedAddress] = useState<string>();
   return (
     <div className="flex aspect-[212/150] items-center justify-center overflow-hidden">

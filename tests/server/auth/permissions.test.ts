@@ -3,9 +3,14 @@ import { join } from 'node:path';
 import type { Test } from 'supertest';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import type { Action, Role } from '#contract/session.ts';
+import { noPools } from '#contract/numbering.ts';
 import { actions, roles } from '#contract/session.ts';
+import { applyPatch } from '#engine/model/merge-patch.ts';
+import { runRules } from '#engine/rules/run-rules.ts';
 import type { Access, Route } from '../../../server/auth/permissions.ts';
 import { permissions, permits, routes } from '../../../server/auth/permissions.ts';
+import { insertProfile } from '../../../server/repositories/equipment-profiles.ts';
+import { pairDesign } from '../../support/designs.ts';
 import type { TestApplication, TestBrowser, TestWorkspace } from '../../support/test-application.ts';
 import {
   addDesign,
@@ -21,6 +26,8 @@ let application: TestApplication;
 let workspace: TestWorkspace;
 let engagementId: string;
 let designId: string;
+let waiverId: string;
+let profileId: string;
 let stranger: TestBrowser;
 let nobody: TestBrowser;
 const members = {} as { [role in Role]: TestBrowser };
@@ -29,8 +36,17 @@ beforeAll(async () => {
   application = await startTestApplication();
   workspace = await addWorkspace(application);
   engagementId = await addEngagement(application, workspace.id);
-  designId = await addDesign(application, engagementId);
+  designId = await addDesign(application, engagementId, document);
   for (const role of roles) members[role] = await signIn(application, workspace.people[role]);
+  const made = await requests['POST /api/designs/:designId/waivers'](members.reviewer, ids()).expect(201);
+  waiverId = (made.body as { id: string }).id;
+  profileId = await insertProfile(
+    application.database.knex,
+    workspace.id,
+    { name: 'Theirs' },
+    null,
+    new Date(),
+  );
   const elsewhere = await addWorkspace(application);
   stranger = await signIn(application, elsewhere.people.owner);
   nobody = await openBrowser(application);
@@ -38,11 +54,23 @@ beforeAll(async () => {
 afterAll(() => application.close());
 
 const missingId = '00000000-0000-4000-8000-000000000000';
+const missing: Ids = {
+  workspace: missingId,
+  engagement: missingId,
+  design: missingId,
+  waiver: missingId,
+  profile: missingId,
+};
+
+const document = applyPatch(pairDesign(), { tunnels: { 'tn-s0-s1-a': { b: { vni: 777 } } } });
+const finding = runRules(document)[0]!;
 
 interface Ids {
   readonly workspace: string;
   readonly engagement: string;
   readonly design: string;
+  readonly waiver: string;
+  readonly profile: string;
 }
 
 /** A request to each route that succeeds for whoever may make it. */
@@ -83,18 +111,55 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
     }),
   'GET /api/designs/:designId/thumbnail': (browser, { design: id }) =>
     browser.get(`/api/designs/${id}/thumbnail?v=0&theme=paper`),
+  'GET /api/designs/:designId/context': (browser, { design: id }) =>
+    browser.get(`/api/designs/${id}/context`),
+  'GET /api/designs/:designId/waivers': (browser, { design: id }) =>
+    browser.get(`/api/designs/${id}/waivers`),
+  'POST /api/designs/:designId/waivers': (browser, { design: id }) =>
+    browser.post(`/api/designs/${id}/waivers`, {
+      findingKey: finding.key,
+      fingerprint: finding.fingerprint,
+      reason: 'Agreed',
+      expiresOn: new Date().toISOString().slice(0, 10),
+    }),
+  'DELETE /api/designs/:designId/waivers/:waiverId': (browser, { design: id, waiver }) =>
+    browser.delete(`/api/designs/${id}/waivers/${waiver}`),
+  'GET /api/workspaces/:workspaceId/pools': (browser, { workspace: id }) =>
+    browser.get(`/api/workspaces/${id}/pools`),
+  'PUT /api/workspaces/:workspaceId/pools': (browser, { workspace: id }) =>
+    browser.put(`/api/workspaces/${id}/pools`, { pools: noPools }),
+  'GET /api/workspaces/:workspaceId/profiles': (browser, { workspace: id }) =>
+    browser.get(`/api/workspaces/${id}/profiles`),
+  'POST /api/workspaces/:workspaceId/profiles': (browser, { workspace: id }) =>
+    browser.post(`/api/workspaces/${id}/profiles`, { profile: { name: 'New' } }),
+  'PATCH /api/profiles/:profileId': (browser, { profile: id }) =>
+    browser.patch(`/api/profiles/${id}`, { profile: { name: 'Renamed' } }),
 };
 
 const isAction = (access: Access): access is Action => (actions as readonly string[]).includes(access);
 const guarded = (Object.keys(routes) as Route[]).filter((route) => isAction(routes[route]));
-const ids = (): Ids => ({ workspace: workspace.id, engagement: engagementId, design: designId });
+const ids = (): Ids => ({
+  workspace: workspace.id,
+  engagement: engagementId,
+  design: designId,
+  waiver: waiverId,
+  profile: profileId,
+});
 
 describe('the table of roles', () => {
   test('says what product owners agreed on', () => {
     expect(permissions).toEqual({
       owner: actions,
-      architect: actions,
-      reviewer: ['workspace.read', 'design.read'],
+      architect: [
+        'workspace.read',
+        'engagement.create',
+        'engagement.edit',
+        'design.read',
+        'design.create',
+        'design.edit',
+        'design.archive',
+      ],
+      reviewer: ['workspace.read', 'design.read', 'finding.waive'],
       presales: ['workspace.read', 'design.read', 'design.create'],
       installer: ['workspace.read'],
     });
@@ -111,7 +176,7 @@ describe('the table of roles', () => {
 
   test('lists each route that the server answers, and no other', () => {
     expect(Object.keys(requests).sort()).toEqual(Object.keys(routes).sort());
-    expect(guarded).toHaveLength(9);
+    expect(guarded).toHaveLength(18);
   });
 });
 
@@ -131,13 +196,15 @@ describe.each(guarded)('%s', (route) => {
   test('tells a stranger and a member about what does not exist in the same words', async () => {
     const answers = [
       await requests[route](stranger, ids()),
-      await requests[route](stranger, { workspace: missingId, engagement: missingId, design: missingId }),
+      await requests[route](stranger, missing),
+      await requests[route](members.owner, missing),
       await requests[route](members.owner, {
-        workspace: missingId,
-        engagement: missingId,
-        design: missingId,
+        workspace: 'x',
+        engagement: '1; drop',
+        design: '../x',
+        waiver: '%',
+        profile: "'",
       }),
-      await requests[route](members.owner, { workspace: 'x', engagement: '1; drop', design: '../x' }),
     ];
     const [first] = answers;
     expect(first!.body).toMatchObject({ code: 'not-found' });

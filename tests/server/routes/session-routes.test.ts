@@ -55,7 +55,7 @@ describe('signing in', () => {
         workspaceId: workspace.id,
         workspaceName: expect.any(String) as string,
         role: 'reviewer',
-        actions: ['workspace.read', 'design.read'],
+        actions: ['workspace.read', 'design.read', 'finding.waive'],
       },
     ]);
     expect(session.demo).toEqual([]);
