@@ -14,7 +14,7 @@ const engineParts = importTable('src/engine', 'engine', [
   ['wire', 'flood'],
   ['trace', 'load', 'outage', 'numbering'],
   ['rules'],
-  ['sheets'],
+  ['sheets', 'stretch'],
 ]);
 const engineNames = [...engineParts.map((part) => part.name), 'engine/formats', 'engine/diff'];
 const besidesTheOrder = [

@@ -20,6 +20,7 @@ const files = [
     'load',
     'rules',
     'sheets',
+    'stretch',
     'formats',
     'diff',
   ].map((name) => `src/engine/${name}/x.ts`),

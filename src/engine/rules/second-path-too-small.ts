@@ -35,7 +35,7 @@ const mayUse = (network: Network, id: Id, end: End): readonly Id[] => {
 };
 
 /** The paths that a tunnel may turn to when its first one fails. */
-const otherPaths = (network: Network, id: Id): readonly Extract<Path, { ok: true }>[] => {
+export const otherPaths = (network: Network, id: Id): readonly Extract<Path, { ok: true }>[] => {
   const [atA, atB] = [mayUse(network, id, 'a'), mayUse(network, id, 'b')];
   if (atA.length < 2 && atB.length < 2) return [];
   const first = tunnelPath(network, id);
