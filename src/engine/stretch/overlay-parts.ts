@@ -50,10 +50,8 @@ const identityOf = (draft: Draft, gateway: Id, domain: string | undefined): stri
     .flatMap(({ a, b }) => [a, b])
     .find(({ device, identity }) => device === gateway && identity !== undefined);
   if (known?.identity !== undefined) return known.identity;
-  const name = draft
-    .entries('devices')
-    [gateway]!.name.toLowerCase()
-    .replaceAll(/[^a-z0-9-]+/g, '-');
+  const device = draft.entries('devices')[gateway]!;
+  const name = device.name.toLowerCase().replaceAll(/[^a-z0-9-]+/g, '-');
   return domain === undefined ? name : `${name}.${domain}`;
 };
 

@@ -1,4 +1,5 @@
 import type { Design } from '../../engine/model/design.ts';
+import { freeLetters } from '../../engine/numbering/free-letters.ts';
 import { freeLoopbacks, freeVnis } from '../../engine/numbering/free-numbers.ts';
 
 const lowestFree = (taken: (n: number) => boolean, from: number): number => {
@@ -20,12 +21,7 @@ export const freeName = (
 };
 
 /** A, B … Z, then AA, AB …, the first that no segment has. */
-export const freeLetter = (design: Design): string => {
-  const taken = new Set(Object.values(design.segments).map((segment) => segment.letter));
-  const letters = (n: number): string =>
-    n < 26 ? String.fromCharCode(65 + n) : letters(Math.floor(n / 26) - 1) + letters(n % 26);
-  return letters(lowestFree((n) => taken.has(letters(n)), 0));
-};
+export const freeLetter = (design: Design): string => freeLetters(design, 1)[0]!;
 
 /** The lowest VLAN from 10 in tens that no segment uses at any site. */
 export const freeVlan = (design: Design): number => {
