@@ -1,6 +1,7 @@
 import { useMemo } from 'react';
 import type { Decorations } from '../../drawing/decorations.ts';
 import { elementKey } from '../../drawing/decorations.ts';
+import { findingsToDecorations } from '../../drawing/findings-to-decorations.ts';
 import { collections } from '../../engine/model/design.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { applyPatch } from '../../engine/model/merge-patch.ts';
@@ -8,7 +9,6 @@ import { tunnelStates } from '../../engine/network/can-come-up.ts';
 import { indexNetwork } from '../../engine/network/index-network.ts';
 import { runRules } from '../../engine/rules/run-rules.ts';
 import { useChecks } from '../../workspace/checks-context.tsx';
-import { findingsToDecorations } from './findings-to-decorations.ts';
 
 /** The elements that a patch changes, as a tone that shows them. */
 const touchedBy = (patch: MergePatch): Decorations['tones'] =>

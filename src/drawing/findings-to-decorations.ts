@@ -1,6 +1,6 @@
-import type { Decorations, Tone } from '../../drawing/decorations.ts';
-import { elementKey, noDecorations } from '../../drawing/decorations.ts';
-import type { Finding } from '../../engine/rules/finding.ts';
+import type { Decorations, Tone } from './decorations.ts';
+import { elementKey, noDecorations } from './decorations.ts';
+import type { Finding } from '../engine/rules/finding.ts';
 
 const collect = <T>(findings: readonly Finding[], pick: (finding: Finding) => T | undefined): readonly T[] =>
   findings.flatMap((finding) => pick(finding) ?? []);

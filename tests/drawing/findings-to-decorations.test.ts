@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
-import { applyPatch } from '../../src/engine/model/merge-patch.ts';
-import { runRules } from '../../src/engine/rules/run-rules.ts';
-import { findingsToDecorations } from '../../src/features/findings/findings-to-decorations.ts';
+import { applyPatch } from '#engine/model/merge-patch.ts';
+import { runRules } from '#engine/rules/run-rules.ts';
+import { findingsToDecorations } from '#drawing/findings-to-decorations.ts';
 import { meshDesign, pairDesign } from '../support/designs.ts';
 
 const cutPair = applyPatch(pairDesign(), { tunnels: { 'tn-s0-s1-a': { b: { vni: 10_210 } } } });
