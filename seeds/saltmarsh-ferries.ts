@@ -7,7 +7,7 @@ import { insertEngagement } from '../server/repositories/engagements.ts';
 import { insertMembership, insertWorkspace } from '../server/repositories/memberships.ts';
 import { insertPerson } from '../server/repositories/people.ts';
 import { summarise } from '../server/services/design-summary.ts';
-import { demoDesign, smallerDemoDesigns } from './demo-designs/demo-design.ts';
+import { demoDesign, largerDemoDesigns, smallerDemoDesigns } from './demo-designs/demo-design.ts';
 import { demoPeople } from './demo-people.ts';
 
 const oneMinuteMs = 60_000;
@@ -33,7 +33,12 @@ export async function seedSaltmarsh({ knex }: Pick<Database, 'knex'>): Promise<v
       { workspaceId, name: 'Saltmarsh Ferries', summary: 'Head office, Gullhaven, Orrin Point, Skerry' },
       new Date(now),
     );
-    const designs = [demoDesign('fault-free'), demoDesign('planted-faults'), ...smallerDemoDesigns()];
+    const designs = [
+      demoDesign('fault-free'),
+      demoDesign('planted-faults'),
+      ...smallerDemoDesigns(),
+      ...largerDemoDesigns(),
+    ];
     for (const [index, document] of designs.entries()) {
       // The list shows the last changed first.
       const at = new Date(now - index * oneMinuteMs);

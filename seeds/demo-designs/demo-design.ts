@@ -4,6 +4,7 @@ import type { Design } from '#engine/model/design.ts';
 import { applyPatch } from '#engine/model/merge-patch.ts';
 import { plantFaults } from './planted-faults.ts';
 import { camerasOverCoast, ringTerminals, standbyController } from './smaller-designs.ts';
+import { landingStages, meshedTerminals } from './stretched-designs.ts';
 import { terminalsStretch } from './terminals-stretch.ts';
 
 type DemoDesign = (typeof demoDesigns)[number];
@@ -23,6 +24,11 @@ export function demoDesign(name: DemoDesign): Design {
 /** What stands beside them in the demo's list. */
 export function smallerDemoDesigns(): readonly Design[] {
   return [camerasOverCoast(), standbyController(), ringTerminals()].map(laidOut);
+}
+
+/** What shows how a large plan looks: made by the Stretch assistant from its form. */
+export function largerDemoDesigns(): readonly Design[] {
+  return [landingStages(), meshedTerminals()].map(laidOut);
 }
 
 function laidOut(design: Design): Design {

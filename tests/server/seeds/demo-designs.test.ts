@@ -1,13 +1,19 @@
 import { describe, expect, test } from 'vitest';
+import { route } from '#drawing/routing/route.ts';
 import { applyPatch } from '#engine/model/merge-patch.ts';
 import { parseDesign } from '#engine/model/parse-design.ts';
 import { fixesFor } from '#engine/rules/fixes-for.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
-import { demoDesign, smallerDemoDesigns } from '../../../seeds/demo-designs/demo-design.ts';
+import {
+  demoDesign,
+  largerDemoDesigns,
+  smallerDemoDesigns,
+} from '../../../seeds/demo-designs/demo-design.ts';
 import { plantedFaults } from '../../../seeds/demo-designs/planted-faults.ts';
 
 const faultFree = demoDesign('fault-free');
 const planted = demoDesign('planted-faults');
+const larger = largerDemoDesigns();
 const rulesOf = (design: typeof planted): readonly string[] => runRules(design).map(({ rule }) => rule);
 
 describe('the fault-free demo', () => {
@@ -31,7 +37,7 @@ describe('the fault-free demo', () => {
   test('holds no address that could be somebody’s', () => {
     // RFC 5737 section 3 (documentation) and RFC 1918 section 3 (private).
     const harmless = /^(192\.0\.2|198\.51\.100|203\.0\.113|10\.\d+\.\d+)\.\d+$/;
-    const addresses = JSON.stringify([faultFree, planted, ...smallerDemoDesigns()]).match(
+    const addresses = JSON.stringify([faultFree, planted, ...smallerDemoDesigns(), ...larger]).match(
       /\b\d+\.\d+\.\d+\.\d+\b/g,
     );
     expect(addresses!.length).toBeGreaterThan(30);
@@ -79,5 +85,27 @@ describe('the smaller demo designs', () => {
     ]);
     for (const design of smallerDemoDesigns())
       expect(parseDesign(design)).toEqual({ ok: true, value: design });
+  });
+});
+
+describe('the larger demo designs', () => {
+  const [stages, meshed] = larger;
+
+  test('are designs, laid out on one sheet, in which the checks find nothing', () => {
+    for (const design of larger) {
+      expect(parseDesign(design)).toEqual({ ok: true, value: design });
+      expect(rulesOf(design)).toEqual([]);
+      expect(Object.keys(design.layout.devices ?? {}).sort()).toEqual(Object.keys(design.devices).sort());
+      expect(route(design).crowded.filter(({ what }) => what !== 'text')).toEqual([]);
+    }
+  });
+
+  test('are a hub of sixty stages, folded up, and a mesh in which each of eight is joined to each', () => {
+    expect(Object.keys(stages!.sites)).toHaveLength(61);
+    expect(Object.keys(stages!.associations)).toHaveLength(60);
+    expect(route(stages!).trunks.length).toBeGreaterThan(0);
+    expect(Object.values(stages!.layout.sites ?? {}).filter(({ collapsed }) => collapsed)).toHaveLength(60);
+    expect(Object.keys(meshed!.sites)).toHaveLength(8);
+    expect(Object.keys(meshed!.associations)).toHaveLength(28);
   });
 });
