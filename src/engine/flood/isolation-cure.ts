@@ -15,8 +15,10 @@ export interface IsolationCure {
   readonly patch: MergePatch;
 }
 
-/** The circuits of a full mesh, one tunnel for each two forwarders; undefined where the storm is anything else. */
-const fullMesh = (network: Network, storm: Storm): readonly CircuitAt[] | undefined => {
+type Ring = Pick<Storm, 'tunnels' | 'cables'>;
+
+/** The circuits of a full mesh, one tunnel for each two forwarders; undefined where the ring is anything else. */
+const fullMesh = (network: Network, storm: Ring): readonly CircuitAt[] | undefined => {
   if (storm.cables.length > 0) return undefined;
   const pairs = new Set<string>();
   const circuits: CircuitAt[] = [];
@@ -56,7 +58,7 @@ const freeGroup = (network: Network, forwarders: readonly Id[], own: ReadonlySet
  * to (RFC 4762 section 4.4). Checked by looking for storms in the design with it; undefined where the storm is no full mesh
  * or stays.
  */
-export const isolationCure = (network: Network, storm: Storm): IsolationCure | undefined => {
+export const isolationCure = (network: Network, storm: Ring): IsolationCure | undefined => {
   const circuits = fullMesh(network, storm);
   if (circuits === undefined) return undefined;
   const forwarders = [...new Set(circuits.map(({ forwarder }) => forwarder))].sort();

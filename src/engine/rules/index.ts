@@ -17,6 +17,7 @@ import { associationWithoutTunnel } from './association-without-tunnel.ts';
 import { associationWrongInitiator } from './association-wrong-initiator.ts';
 import { authenticationMismatch } from './authentication-mismatch.ts';
 import { bridgeWhereFilterRequired } from './bridge-where-filter-required.ts';
+import { broadcastDeliveredTwice } from './broadcast-delivered-twice.ts';
 import { clockOverJitter } from './clock-over-jitter.ts';
 import { crossConnectCircuits } from './cross-connect-circuits.ts';
 import { crossConnectWithoutPolicy } from './cross-connect-without-policy.ts';
@@ -130,6 +131,7 @@ export const rules: readonly Rule[] = [
   associationWrongInitiator,
   authenticationMismatch,
   bridgeWhereFilterRequired,
+  broadcastDeliveredTwice,
   clockOverJitter,
   crossConnectCircuits,
   crossConnectWithoutPolicy,

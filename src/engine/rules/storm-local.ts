@@ -5,6 +5,7 @@ import type { Network } from '../network/network.ts';
 import { segmentPathFacts } from './carried-segments.ts';
 import { defineRule } from './define-rule.ts';
 import type { Fix } from './finding.ts';
+import { doublyActive, standbyFix } from './standby-fix.ts';
 import { cutFix } from './storm-cuts.ts';
 import { stormBody, stormOfFault, stormsOf } from './storm-faults.ts';
 import { ofSegments, sitesOf, stormSeen, stormWhy } from './storm-words.ts';
@@ -30,35 +31,14 @@ const treeFix = ({ design }: Network, storm: Storm): readonly Fix[] => {
   ];
 };
 
-/** Pairs of which both members bridge. */
-const doublyActive = ({ design }: Network, storm: Storm): readonly string[] =>
-  storm.devices.filter((id) => {
-    const device = design.devices[id]!;
-    return device.kind === 'ha-pair' && device.mode === 'active-active';
-  });
-
 /** A site of which two gateways, or both members of a pair, are in the ring. */
 const siteOfTwo = (network: Network, storm: Storm): string | undefined => {
   const { design } = network;
   const sites = storm.devices
     .filter((id) => isGateway(design.devices[id]!))
-    .concat(doublyActive(network, storm))
+    .concat(doublyActive(network, storm.devices))
     .map((id) => design.devices[id]!.site);
   return sites.find((site, i) => sites.indexOf(site) < i);
-};
-
-const standbyFix = (network: Network, storm: Storm): readonly Fix[] => {
-  const pairs = doublyActive(network, storm);
-  if (pairs.length === 0) return [];
-  const names = listed(pairs.map((id) => network.design.devices[id]!.name));
-  return [
-    {
-      id: 'standby',
-      label: 'Let one member stand by',
-      sentence: `Sets ${names} to active and standby, so that one member alone forwards frames.`,
-      patch: { devices: Object.fromEntries(pairs.map((id) => [id, { mode: 'active-standby' }])) },
-    },
-  ];
 };
 
 export const stormLocal = defineRule({
@@ -131,6 +111,6 @@ export const stormLocal = defineRule({
   },
   fixes: (fault, network) => {
     const storm = stormOfFault(network, 'local', fault);
-    return [...treeFix(network, storm), ...standbyFix(network, storm), cutFix(network, storm)];
+    return [...treeFix(network, storm), ...standbyFix(network, storm.devices), cutFix(network, storm)];
   },
 });
