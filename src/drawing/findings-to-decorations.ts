@@ -27,19 +27,23 @@ const portsAtFault = (findings: readonly Finding[]): { readonly [key: string]: r
 /**
  * How findings show on the sheet: a balloon for each that is blocking or degrading, and for the selected one whatever its
  * severity; words only beside the blocking; and the faults that can be drawn, drawn. `down` are the tunnels that can't come
- * up, whatever the reason. Numbers are those of the list.
+ * up, whatever the reason. Numbers are those of the list. What is waived keeps its mark, muted, and asks for nothing: no
+ * words, no port at fault, no missing cable to accept.
  */
 export const findingsToDecorations = (
   findings: readonly Finding[],
   down: readonly string[],
   selectedKey?: string,
+  isWaived: (key: string) => boolean = () => false,
 ): Decorations => ({
   ...noDecorations,
-  tones: portsAtFault(findings),
+  tones: portsAtFault(findings.filter(({ key }) => !isWaived(key))),
   cuts: cutsOf(findings, down),
   loops: collect(findings, ({ mark }) => (mark?.kind === 'loop' ? { steps: mark.steps } : undefined)),
   ghosts: collect(findings, ({ mark, key }) =>
-    mark?.kind === 'ghost' ? { id: key, from: mark.from, to: mark.to, label: mark.label } : undefined,
+    mark?.kind === 'ghost' && !isWaived(key)
+      ? { id: key, from: mark.from, to: mark.to, label: mark.label }
+      : undefined,
   ),
   overhangs: findings.flatMap(({ mark }, i) =>
     mark?.kind === 'overhang'
@@ -61,9 +65,11 @@ export const findingsToDecorations = (
       {
         number: i + 1,
         severity: finding.severity,
-        waived: false,
+        waived: isWaived(finding.key),
         at,
-        ...(finding.severity === 'blocking' || finding.key === selectedKey ? { words: finding.words } : {}),
+        ...((finding.severity === 'blocking' && !isWaived(finding.key)) || finding.key === selectedKey
+          ? { words: finding.words }
+          : {}),
       },
     ];
   }),

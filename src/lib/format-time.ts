@@ -27,5 +27,17 @@ export function dateAndTime(time: Date): string {
   return `${date.format(time)}, ${clock.format(time)}`;
 }
 
+/** The day of a moment by UTC, such as '2027-03-31': the form in which days are kept. */
+export const dayByUtc = (time: Date): string => time.toISOString().slice(0, 10);
+
+/** A kept day in words: '31 March 2027'. */
+export const dayInWords = (day: string): string =>
+  new Intl.DateTimeFormat('en-GB', {
+    day: 'numeric',
+    month: 'long',
+    year: 'numeric',
+    timeZone: 'UTC',
+  }).format(new Date(`${day}T00:00:00Z`));
+
 /** The reader's time zone as the browser names it, such as 'Europe/London'. */
 export const timeZoneName = (): string => new Intl.DateTimeFormat().resolvedOptions().timeZone;

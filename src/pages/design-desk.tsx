@@ -10,11 +10,12 @@ import { DesignBar } from '../features/design-bar/design-bar.tsx';
 import { useTravelKeys } from '../features/design-bar/use-travel-keys.ts';
 import { callApi } from '../lib/api-client.ts';
 import { asApiError } from '../lib/api-error.ts';
-import { ChecksProvider } from '../workspace/checks-context.tsx';
+import { DesignPlaceProvider } from '../workspace/design-place.tsx';
 import { designServer } from '../workspace/design-server.ts';
 import { browserEditStorage } from '../workspace/edit-storage.ts';
 import { openDesign, type OpenDesign } from '../workspace/open-design.ts';
 import { OpenDesignProvider } from '../workspace/open-design-context.tsx';
+import { StoredChecks } from '../workspace/stored-checks.tsx';
 
 const phone = '(max-width: 767px)';
 
@@ -84,6 +85,8 @@ function ReadDesign({ answer }: { readonly answer: OpenDesignAnswer }) {
 
 function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonly document: Design }) {
   const { id } = answer.summary;
+  const { workspaceId, actions } = answer;
+  const place = useMemo(() => ({ designId: id, workspaceId, actions }), [id, workspaceId, actions]);
   const open = (): OpenDesign =>
     openDesign({
       document,
@@ -96,19 +99,21 @@ function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonl
       now: Date.now,
     });
   return (
-    <OpenDesignProvider open={open}>
-      <ChecksProvider>
-        <DesignBar
-          engagementName={answer.engagementName}
-          workspaceId={answer.workspaceId}
-          summary={answer.summary}
-        />
-        <TravelKeys />
-        <Suspense fallback={<Opening />}>
-          <Outlet />
-        </Suspense>
-      </ChecksProvider>
-    </OpenDesignProvider>
+    <DesignPlaceProvider place={place}>
+      <OpenDesignProvider open={open}>
+        <StoredChecks>
+          <DesignBar
+            engagementName={answer.engagementName}
+            workspaceId={answer.workspaceId}
+            summary={answer.summary}
+          />
+          <TravelKeys />
+          <Suspense fallback={<Opening />}>
+            <Outlet />
+          </Suspense>
+        </StoredChecks>
+      </OpenDesignProvider>
+    </DesignPlaceProvider>
   );
 }
 

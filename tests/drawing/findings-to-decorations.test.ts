@@ -31,4 +31,30 @@ describe('findings as decorations of the sheet', () => {
     expect(findingsToDecorations(findings, []).balloons).toEqual([]);
     expect(findingsToDecorations(findings, [], findings[0]!.key).balloons).toHaveLength(1);
   });
+
+  it('mute what is waived: the balloon without words unless selected, no port at fault, nothing to accept', () => {
+    const findings = runRules(cutPair);
+    const { key } = findings[0]!;
+    const isWaived = (asked: string) => asked === key;
+    const [muted] = findingsToDecorations(findings, [], undefined, isWaived).balloons;
+    expect(muted).toMatchObject({ number: 1, waived: true });
+    expect(muted).not.toHaveProperty('words');
+    expect(findingsToDecorations(findings, [], key, isWaived).balloons[0]).toHaveProperty('words');
+    const ghost = {
+      ...findings[0]!,
+      elements: [{ collection: 'devices' as const, id: 'fw-s0', port: 'lan2' }],
+      mark: {
+        kind: 'ghost' as const,
+        from: { device: 'fw-s0', port: 'lan2' },
+        to: { device: 'fw-s1', port: 'lan2' },
+        label: 'Second cable',
+      },
+    };
+    expect(findingsToDecorations([ghost], [])).toMatchObject({
+      ghosts: [{ id: key }],
+      tones: { 'devices/fw-s0/lan2': ['fault'] },
+    });
+    const waived = findingsToDecorations([ghost], [], undefined, isWaived);
+    expect([waived.ghosts, waived.tones]).toEqual([[], {}]);
+  });
 });

@@ -6,6 +6,7 @@ import type { ElementRef } from '../../engine/model/design.ts';
 import type { Finding, Source } from '../../engine/rules/finding.ts';
 import { listed } from '../../engine/rules/wording.ts';
 import { classNames } from '../../lib/class-names.ts';
+import { dayInWords } from '../../lib/format-time.ts';
 import { useChecks, useFixes } from '../../workspace/checks-context.tsx';
 import { TextButton } from './element-link.tsx';
 import { findingsAbout } from './field-marks.ts';
@@ -53,10 +54,17 @@ export function FindingBoxes({ about }: { readonly about: ElementRef }) {
 
 /** One finding: words, sentence, why, sources, and its fixes with what each will do. */
 export function FindingBox({ finding, open }: { readonly finding: Finding; readonly open: boolean }) {
-  const [shown, setShown] = useState(open);
+  const { waiverOf } = useChecks();
+  const waiver = waiverOf(finding.key);
+  const [shown, setShown] = useState(open && waiver === undefined);
   const { severity, words } = finding;
   return (
-    <article className={classNames('border border-l-5 bg-field px-9 py-8', edges[severity])}>
+    <article
+      className={classNames(
+        'border border-l-5 bg-field px-9 py-8',
+        waiver === undefined ? edges[severity] : 'border-dashed border-ink-3',
+      )}
+    >
       <h3>
         <button
           type="button"
@@ -64,12 +72,13 @@ export function FindingBox({ finding, open }: { readonly finding: Finding; reado
           onClick={() => setShown(!shown)}
           className={classNames(
             'flex w-full items-center gap-6 text-left text-value font-semibold',
-            inks[severity],
+            waiver === undefined ? inks[severity] : 'text-ink-3',
           )}
         >
           <SeverityShape severity={severity} />
           <span className="min-w-0 flex-1">
             {severityWords[severity]}: {words}
+            {waiver !== undefined && ' (waived)'}
           </span>
           <Icon name={shown ? 'chevron-up' : 'chevron-down'} size={14} />
         </button>
@@ -81,10 +90,17 @@ export function FindingBox({ finding, open }: { readonly finding: Finding; reado
 
 function FindingBody({ finding }: { readonly finding: Finding }) {
   const { onShowFinding } = useInspectorTools();
+  const waiver = useChecks().waiverOf(finding.key);
   const { severityReason, sentence, why, sources } = finding;
   return (
     <div className="mt-6 flex flex-col gap-6 text-base text-ink">
       <p className="font-medium break-words">{sentence}.</p>
+      {waiver !== undefined && (
+        <p className="break-words whitespace-pre-line">
+          Waived{waiver.madeBy === null ? '' : ` by ${waiver.madeBy}`} until {dayInWords(waiver.expiresOn)}:{' '}
+          {waiver.reason}
+        </p>
+      )}
       <p>{why}</p>
       {severityReason !== undefined && <p className="text-ink-2">{severityReason}</p>}
       <p className="text-note text-ink-2">{sourcesLine(sources)}</p>

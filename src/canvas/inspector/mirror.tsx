@@ -150,10 +150,10 @@ interface MirrorRowProps {
 export function MirrorRow({ field, agree, assumed, children }: MirrorRowProps) {
   const { entry } = useMirror();
   const cellAt = useEndCell(field);
-  const { findings } = useChecks();
+  const { openFindings } = useChecks();
   const a = useAt([...entry, 'a', ...field]) ?? assumed;
   const b = useAt([...entry, 'b', ...field]) ?? assumed;
-  const isMarked = ends.some((end) => markAt(findings, cellAt(end).path)?.severity === 'blocking');
+  const isMarked = ends.some((end) => markAt(openFindings, cellAt(end).path)?.severity === 'blocking');
   const agreement: Agreement =
     agree === 'free' || a === undefined || b === undefined ? 'unknown' : sameJson(a, b) ? 'same' : 'differ';
   return (

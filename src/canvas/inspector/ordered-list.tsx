@@ -53,8 +53,8 @@ export function OrderedList<E extends Ranked>({
   const map = useAt<RankedMap<E>>(path);
   const editable = useEditable();
   const commit = useCommit();
-  const { findings } = useChecks();
-  const marked = markAt(findings, path);
+  const { openFindings } = useChecks();
+  const marked = markAt(openFindings, path);
   const label = `${noun} of ${of}`;
   const entries = inRankOrder(map);
   return (

@@ -99,9 +99,9 @@ function PortRow({
   const network = useNetwork();
   const editable = useEditable();
   const run = usePerform();
-  const { findings } = useChecks();
+  const { openFindings } = useChecks();
   const ref = { collection: 'devices', id: device, port } as const;
-  const worst = findingsAbout(findings, ref)[0];
+  const worst = findingsAbout(openFindings, ref)[0];
   const cabled = socketsOf(network, device, port).some(({ link }) => link !== undefined);
   const pip = pipMark(pipOf(facts), { x: 10, y: 10 }, { cabled, shut: facts.shut === true });
   return (

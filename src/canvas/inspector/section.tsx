@@ -19,8 +19,8 @@ interface SectionProps {
 /** A named part of the panel that folds away. */
 export function Section({ title, beside, open = true, about = [], children }: SectionProps) {
   const { sections } = useInspectorTools();
-  const { findings } = useChecks();
-  const mark = about.map((path) => markWithin(findings, path)).find((each) => each !== undefined);
+  const { openFindings } = useChecks();
+  const mark = about.map((path) => markWithin(openFindings, path)).find((each) => each !== undefined);
   const [shown, setShown] = useState(mark !== undefined || (sections.get(title) ?? open));
   const id = useId();
   return (

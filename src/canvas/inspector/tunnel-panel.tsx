@@ -219,7 +219,7 @@ function ProtectedBy({ id }: { readonly id: string }) {
 
 function AddressRows({ id }: { readonly id: string }) {
   const network = useNetwork();
-  const { findings } = useChecks();
+  const { openFindings } = useChecks();
   const cellAt = useEndCell(['endpoint']);
   const address = (end: End, far: boolean) => {
     const { place, alignRight, path } = cellAt(end);
@@ -228,7 +228,7 @@ function AddressRows({ id }: { readonly id: string }) {
       <ReadCell
         label={far ? 'Far end' : 'This end'}
         {...{ place, alignRight }}
-        marked={far ? undefined : markAt(findings, path)}
+        marked={far ? undefined : markAt(openFindings, path)}
       >
         {text === undefined ? <Unknown word="no address" /> : <span className="break-all">{text}</span>}
       </ReadCell>

@@ -71,12 +71,12 @@ export const useField = <T>(path: FieldPath): Field<T> => {
   const commit = useCommit();
   const value = useOpenState((state) => valueAt(state.document, path)) as T | undefined;
   const editable = useOpenState((state) => state.editable);
-  const { findings } = useChecks();
+  const { openFindings } = useChecks();
   const patchOf = (next: T | undefined): MergePatch =>
     replacePatch(design.store.getState().document, path, next);
   return {
     value,
-    marked: markAt(findings, path),
+    marked: markAt(openFindings, path),
     editable,
     refusal: (label, text, next) => {
       const wayOut = wayOutOf(design.store.getState().document, patchOf(next));

@@ -34,11 +34,16 @@ export function useFindingDecorations(
     [checks.document, preview],
   );
   return useMemo(() => {
-    const findings = preview === undefined ? checks.findings : runRules(document);
+    const findings = preview === undefined ? checks.findings : runRules(document, checks.numbering);
     const down = [...tunnelStates(indexNetwork(document))].filter(([, state]) => !state.up).map(([id]) => id);
-    const decorations = findingsToDecorations(findings, down, selectedKey ?? undefined);
+    const decorations = findingsToDecorations(
+      findings,
+      down,
+      selectedKey ?? undefined,
+      (key) => checks.waiverOf(key) !== undefined,
+    );
     return preview === undefined
       ? decorations
       : { ...decorations, tones: { ...decorations.tones, ...touchedBy(preview) }, balloons: [] };
-  }, [checks.findings, document, preview, selectedKey]);
+  }, [checks, document, preview, selectedKey]);
 }

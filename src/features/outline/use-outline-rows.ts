@@ -34,12 +34,12 @@ const placeOf = (rows: readonly VisibleRow[], key: string | undefined): number =
 /** The open design as the rows that are seen now. */
 export const useOutlineRows = (view: OutlineViewStore): OutlineRows => {
   // The design that the findings are about: it follows the newest without holding up what somebody types.
-  const { findings, document: design } = useChecks();
+  const { openFindings, document: design } = useChecks();
   const openings = useStore(view, (state) => state.openings);
   const filter = useStore(view, (state) => state.filter);
   const filterOpenings = useStore(view, (state) => state.filterOpenings);
   const current = useStore(view, (state) => state.current);
-  const roots = useMemo(() => outlineTree(design, findings), [design, findings]);
+  const roots = useMemo(() => outlineTree(design, openFindings), [design, openFindings]);
   // A letter shows in the field at once, however much there is to look through.
   const wanted = useDeferredValue(filter.trim());
   const narrowed = useMemo(() => (wanted === '' ? undefined : narrow(roots, wanted)), [roots, wanted]);
