@@ -1,6 +1,6 @@
 import type { Decorations } from '../drawing/decorations.ts';
-import { sheetSvgText } from '../drawing/svg/sheet-svg.ts';
-import { themeVariables } from '../drawing/theme/tokens.ts';
+import { pictureSvgText } from '../drawing/picture/picture-svg.ts';
+import { sheetPicture } from '../drawing/picture/sheet-picture.ts';
 import { tunnelSegments } from '../engine/flood/tunnel-segments.ts';
 import type { Design } from '../engine/model/design.ts';
 import { indexNetwork } from '../engine/network/index-network.ts';
@@ -28,35 +28,24 @@ export const fileNameOf = (design: Design, ending: string): string => {
 export const designBlob = (design: Design): Blob =>
   new Blob([`${JSON.stringify(design, null, 2)}\n`], { type: 'application/json' });
 
-/** What every picture that leaves says, whatever notes its sheet has. */
-const caution =
-  'A plan for competent engineers: verify on your equipment and follow your change control. A stretched segment joins failure domains.';
-export const cautionHeightPx = 24;
-
-const cautionLine = (theme: PictureChoice['theme']): HTMLElement => {
-  const variables = themeVariables(theme);
-  const line = document.createElement('div');
-  line.textContent = caution;
-  line.style.cssText = `height:${cautionHeightPx}px;box-sizing:border-box;padding:2px 32px 0;font:400 12px/18px 'Work Sans',sans-serif;background:${variables['--paper']};color:${variables['--ink-2']}`;
-  return line;
-};
-
 /** The whole sheet as a PNG, the same whatever is in view: drawn from the model, not photographed. */
 export const sheetPng = async (design: Design, choice: PictureChoice): Promise<Blob> => {
-  const text = sheetSvgText(design, {
-    theme: choice.theme,
+  const picture = sheetPicture(design, {
+    look: choice.theme,
     tunnelSegments: tunnelSegments(indexNetwork(design)),
-    decorations: choice.decorations,
+    ...(choice.decorations === undefined ? {} : { decorations: choice.decorations }),
   });
   const svg = document.importNode(
-    new DOMParser().parseFromString(text, 'image/svg+xml').documentElement,
+    new DOMParser().parseFromString(pictureSvgText(picture), 'image/svg+xml').documentElement,
     true,
   );
+  svg.setAttribute('width', String(picture.box.width));
+  svg.setAttribute('height', String(picture.box.height));
   const frame = document.createElement('div');
   frame.style.cssText = 'position:fixed;left:0;top:0;z-index:-1;pointer-events:none';
   frame.setAttribute('aria-hidden', 'true');
   const inner = document.createElement('div');
-  inner.append(svg, cautionLine(choice.theme));
+  inner.append(svg);
   frame.append(inner);
   document.body.append(frame);
   try {

@@ -77,7 +77,7 @@ export const pairTitle = (
         ...line,
         children: [
           ...(line.children ?? []),
-          shape('tspan', { fontWeight: 400, fill: paint(dimmed ? 'ink' : 'ink-2') }, [` ${note}`]),
+          shape('tspan', { fontWeight: 400, fill: paint(dimmed ? 'ink' : 'ink-2') }, [`\u00a0${note}`]),
         ],
       }));
   return group(words, { key: 'title' });

@@ -62,14 +62,18 @@ const table = (segments: readonly SegmentFacts[], rect: Rect): readonly Shape[] 
     carries: 'Carries',
   }) as readonly (readonly [keyof typeof column, string])[];
   const scale = Math.min(1, rowPx / 27);
+  // A drawing without addresses has none to head.
+  const withSubnets = segments.some(({ subnet }) => subnet !== '');
   return [
-    ...heads.map(([name, text]) =>
-      centredLine(text, rect.x + column[name], rect.y + headerPx / 2, {
-        sizePx: 12.5,
-        fill: paint('ink-3'),
-        key: name,
-      }),
-    ),
+    ...heads
+      .filter(([name]) => name !== 'subnet' || withSubnets)
+      .map(([name, text]) =>
+        centredLine(text, rect.x + column[name], rect.y + headerPx / 2, {
+          sizePx: 12.5,
+          fill: paint('ink-3'),
+          key: name,
+        }),
+      ),
     rules(
       segments.map((_, i) => rect.y + headerPx + i * rowPx),
       rect,
@@ -98,13 +102,14 @@ const table = (segments: readonly SegmentFacts[], rect: Rect): readonly Shape[] 
               key: 'vlan',
             },
           ),
-          group(
-            fittedCell(segment.subnet, x('subnet'), y, column.carries - column.subnet - 8, {
-              sizePx,
-              whole: true,
-            }),
-            { key: 'subnet' },
-          ),
+          segment.subnet !== '' &&
+            group(
+              fittedCell(segment.subnet, x('subnet'), y, column.carries - column.subnet - 8, {
+                sizePx,
+                whole: true,
+              }),
+              { key: 'subnet' },
+            ),
           group(
             fittedCell(segment.carries, x('carries'), y, rect.width - column.carries - 10, {
               sizePx,

@@ -217,14 +217,16 @@ export const ringPart = (ring: RingGeometry, facts: DrawingFacts, look: Look): S
         key: 'hole',
       },
       ...manifoldBar(ring, facts, look),
-      detailed && {
-        ...labelText(ring.label, {
-          sizePx: look.level === 'work' ? 13.6 : 14,
-          weight: 500,
-          haloPx: 5,
-        }),
-        key: 'address',
-      },
+      // A drawing without addresses has no words here.
+      detailed &&
+        ring.label.text !== '' && {
+          ...labelText(ring.label, {
+            sizePx: look.level === 'work' ? 13.6 : 14,
+            weight: 500,
+            haloPx: 5,
+          }),
+          key: 'address',
+        },
     ],
     {
       key: 'ring',

@@ -11,7 +11,7 @@ import type { Shape } from '../shape.ts';
 import { group, shape } from '../shape.ts';
 import { paint } from '../theme/paint.ts';
 import type { Theme } from '../theme/tokens.ts';
-import { sheetShapes } from './sheet-svg.ts';
+import { sheetShapes } from './sheet-shapes.ts';
 import { standaloneSvg } from './standalone-svg.ts';
 
 /** Size of a card's picture; the sheet's proportions, 1 to √2, fill it. */

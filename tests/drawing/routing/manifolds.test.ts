@@ -6,7 +6,7 @@ import type { Point, SheetGeometry } from '#drawing/geometry.ts';
 import { drawingFacts } from '#drawing/parts/drawing-facts.ts';
 import { pathAt, pathLength } from '#drawing/path-geometry.ts';
 import { route } from '#drawing/routing/route.ts';
-import { sheetShapes } from '#drawing/svg/sheet-svg.ts';
+import { sheetShapes } from '#drawing/svg/sheet-shapes.ts';
 import { toSvgText } from '#drawing/svg/to-svg-text.ts';
 import { tidy } from '#drawing/tidy/tidy.ts';
 import { hubDesign } from '../../support/designs.ts';

@@ -14,9 +14,9 @@ import { pinnedNotePart } from '#drawing/parts/notes-part.ts';
 import { anchorOf } from '#drawing/routing/anchors.ts';
 import { route } from '#drawing/routing/route.ts';
 import type { Shape } from '#drawing/shape.ts';
-import { sheetShapes, sheetSvgText } from '#drawing/svg/sheet-svg.ts';
+import { sheetShapes } from '#drawing/svg/sheet-shapes.ts';
 import { thumbnailSvgText } from '#drawing/svg/thumbnail-svg.ts';
-import { themeColours, themes } from '#drawing/theme/tokens.ts';
+import { themeColours } from '#drawing/theme/tokens.ts';
 import { tidy } from '#drawing/tidy/tidy.ts';
 import { chainDesign, hubDesign, meshDesign, pairDesign } from '../../support/designs.ts';
 import { allShapes, wordsOf } from '../parts/sample-geometry.ts';
@@ -119,75 +119,11 @@ describe.each(Object.entries(designs))('the sheet of a %s', (_name, design) => {
         device.name,
       ).toBe(true);
   });
-
-  it('prints no line thinner than 0.18 mm and no text smaller than 1.8 mm', () => {
-    // All sheets are drawn at one scale: A3's 420 mm are 1280 px.
-    const pxPerMm = 1280 / 420;
-    const shapes = sheetShapes(geometry, { level: 'near', decorations: noDecorations, facts })
-      .flatMap((layer) => layer.shapes)
-      .flatMap(allShapes);
-    const least = (attribute: string): number =>
-      Math.min(
-        ...shapes.flatMap(({ attrs }) => (attrs[attribute] === undefined ? [] : Number(attrs[attribute]))),
-      );
-    expect(least('strokeWidth') / pxPerMm).toBeGreaterThanOrEqual(0.18);
-    expect(least('fontSize') / pxPerMm).toBeGreaterThanOrEqual(1.8);
-  });
-
-  it.each(themes)('is a file of its own in %s', (theme) => {
-    const text = sheetSvgText(design, {
-      theme,
-      tunnelSegments: segmentsOf(design),
-      decorations: everything(design),
-    });
-    expect(text).not.toContain('var(--');
-    expect(text).not.toContain('undefined');
-    if (theme !== 'paper') return;
-    const document = new DOMParser().parseFromString(text, 'image/svg+xml');
-    expect(document.querySelector('parsererror')).toBeNull();
-    expect(document.documentElement.getAttribute('viewBox')).toBe(
-      `0 0 ${geometry.sheet.width} ${geometry.sheet.height}`,
-    );
-  });
 });
 
-describe('a sheet as SVG', () => {
-  const design = designs['hub with a pair']!;
-  const options = { theme: 'paper', tunnelSegments: segmentsOf(design) } as const;
-
-  it('is the same text every time', () => {
-    expect(sheetSvgText(design, options)).toBe(sheetSvgText(structuredClone(design) as Design, options));
-  });
-
-  it('embeds the fonts it is given, and lets no address out of its rule', () => {
-    const text = sheetSvgText(design, {
-      ...options,
-      fonts: { 400: 'data:font/woff2;base64,AAAA', 600: 'x")}</style><script>' },
-    });
-    expect(text).toContain('font-weight:400;src:url(&quot;data:font/woff2;base64,AAAA&quot;)');
-    expect(new DOMParser().parseFromString(text, 'image/svg+xml').querySelector('script')).toBeNull();
-  });
-
-  it('prints no selection, lamp or ghost, but findings that are asked for', () => {
-    const decorations: Decorations = {
-      ...everything(design),
-      tones: { 'devices/fw-s1': ['selected'], 'devices/fw-s2': ['lit'] },
-    };
-    const print = sheetSvgText(design, { ...options, theme: 'print', decorations });
-    const screen = sheetSvgText(design, { ...options, decorations });
-    expect(screen).toContain('second uplink');
-    expect(print).not.toContain('second uplink');
-    expect(screen).toContain(themeColours('paper')['lamp']);
-    expect(print).toContain('1604 in 1500');
-    const plain = sheetSvgText(design, {
-      ...options,
-      theme: 'print',
-      decorations: { ...decorations, tones: {} },
-    });
-    expect(print).toBe(plain);
-  });
-
+describe('a sheet', () => {
   it('draws cords over cables and bands, and rings over devices', () => {
+    const design = designs['hub with a pair']!;
     const names = sheetShapes(route(design), {
       level: 'near',
       decorations: noDecorations,
