@@ -57,6 +57,13 @@ export const routes: RouteObject[] = [
                       Component: (await import('../pages/segments-page.tsx')).SegmentsPage,
                     }),
                   },
+                  {
+                    path: 'numbering',
+                    ErrorBoundary: PageError,
+                    lazy: async () => ({
+                      Component: (await import('../pages/numbering-page.tsx')).NumberingPage,
+                    }),
+                  },
                 ],
               },
               {

@@ -41,6 +41,7 @@ export function DesignBar({ engagementName, workspaceId, summary }: DesignBarPro
           destinations={[
             { to: path, label: 'Sheet', end: true },
             { to: `${path}/segments`, label: 'Segments' },
+            { to: `${path}/numbering`, label: 'Numbering' },
             { to: '/checks', label: 'Checks' },
           ]}
         />
