@@ -17,6 +17,7 @@ import type {
 } from '../drawing/geometry.ts';
 import type { DrawingFacts } from '../drawing/parts/drawing-facts.ts';
 import { pip as pipSize } from '../drawing/parts/sizes.ts';
+import { fadedOpacity, type VisibilityOf } from '../drawing/view-layers.ts';
 import type { Design, ElementRef } from '../engine/model/design.ts';
 import type { Side } from '../engine/model/layout.ts';
 import { kindOf, nameOf } from '../workspace/operations/name-of.ts';
@@ -120,6 +121,8 @@ export interface FlowInput {
   readonly selected: ReadonlySet<string>;
   readonly editable: boolean;
   readonly isLocked: (ref: ElementRef) => boolean;
+  /** Absent where nothing is ground only. */
+  readonly visibilityOf?: VisibilityOf | undefined;
 }
 
 export const designToFlow = (
@@ -131,7 +134,10 @@ export const designToFlow = (
 
 const labelOf = (design: Design, ref: ElementRef): string => `${kindOf(design, ref)} ${nameOf(design, ref)}`;
 
-const nodesOf = ({ design, geometry, selected, editable, isLocked }: FlowInput): FlowNode[] => {
+const nodesOf = (input: FlowInput): FlowNode[] => {
+  const { design, geometry, selected, editable, isLocked, visibilityOf } = input;
+  const isGround = (ref: ElementRef): boolean => visibilityOf?.(ref) === 'faded';
+  const groundStyle = (ref: ElementRef) => (isGround(ref) ? { opacity: fadedOpacity } : {});
   const part = (ref: ElementRef) => ({
     id: elementKey(ref),
     selected: selected.has(elementKey(ref)),
@@ -174,7 +180,7 @@ const nodesOf = ({ design, geometry, selected, editable, isLocked }: FlowInput):
       handles: [bodyOf(bounds, bounds)],
       data: { ref, band },
       zIndex: depth.band,
-      style: { pointerEvents: 'none' },
+      style: { pointerEvents: 'none', ...groundStyle(ref) },
     });
   }
   for (const device of geometry.devices) {
@@ -189,6 +195,7 @@ const nodesOf = ({ design, geometry, selected, editable, isLocked }: FlowInput):
       ],
       data: { ref, device },
       zIndex: depth.device,
+      style: groundStyle(ref),
     });
   }
   for (const ring of geometry.rings) {
@@ -214,6 +221,7 @@ const nodesOf = ({ design, geometry, selected, editable, isLocked }: FlowInput):
       height: 36,
       data: { ref, note: note.id },
       zIndex: depth.note,
+      style: groundStyle(ref),
     });
   }
   const overlay = { ...box(whole), data: {}, style: { pointerEvents: 'none' as const }, ...still };

@@ -1,4 +1,5 @@
 import { create } from 'zustand';
+import type { ElementRef } from '../engine/model/design.ts';
 import type { ConnectEnd } from './connect-ends.ts';
 import type { TrayPart } from './place-part.ts';
 
@@ -9,6 +10,14 @@ export interface JoinRequest {
   readonly b?: ConnectEnd;
 }
 
+/** A menu that was opened on the sheet, at a point of the screen: an element's, or the sheet's own. */
+export interface OpenedMenu {
+  readonly at: { readonly x: number; readonly y: number };
+  readonly ref?: ElementRef;
+  /** All that can be done, or only where one gets from there. */
+  readonly of: 'all' | 'ways';
+}
+
 interface DeskState {
   readonly tool: 'select' | 'pan';
   /** The part of the tray that the next click puts down. */
@@ -16,12 +25,18 @@ interface DeskState {
   /** The first end of a joining part. */
   readonly firstEnd: ConnectEnd | undefined;
   readonly join: JoinRequest | undefined;
+  readonly menu: OpenedMenu | undefined;
   readonly searching: boolean;
+  /** The list of all keys is open. */
+  readonly listingKeys: boolean;
+  /** The note whose words are typed on the sheet. */
+  readonly editedNote: string | undefined;
+  /** A layout is being worked out. */
+  readonly tidying: boolean;
   /** The inspector stands beside the sheet; a selection opens it, its button shuts it. */
   readonly inspecting: boolean;
   /** Nobody has moved over the sheet since it was last fitted: it stays fitted while the room for it changes. */
   readonly fitted: boolean;
-  readonly hiddenSegments: readonly string[];
 }
 
 const atRest: DeskState = {
@@ -29,10 +44,13 @@ const atRest: DeskState = {
   placing: undefined,
   firstEnd: undefined,
   join: undefined,
+  menu: undefined,
   searching: false,
+  listingKeys: false,
+  editedNote: undefined,
+  tidying: false,
   inspecting: false,
   fitted: true,
-  hiddenSegments: [],
 };
 
 /** What the person at this desk is doing; nothing of it belongs to the design. */
@@ -44,14 +62,12 @@ export const startPlacing = (placing: TrayPart | undefined): void =>
   useDesk.setState({ placing, firstEnd: undefined, tool: 'select' });
 export const askToJoin = (join: JoinRequest | undefined): void =>
   useDesk.setState({ join, placing: undefined, firstEnd: undefined });
+export const openMenu = (menu: OpenedMenu | undefined): void => useDesk.setState({ menu });
 export const setSearching = (searching: boolean): void => useDesk.setState({ searching });
 export const setInspecting = (inspecting: boolean): void => useDesk.setState({ inspecting });
 export const setFitted = (fitted: boolean): void => useDesk.setState({ fitted });
-export const toggleSegment = (id: string): void =>
-  useDesk.setState(({ hiddenSegments }) => ({
-    hiddenSegments: hiddenSegments.includes(id)
-      ? hiddenSegments.filter((hidden) => hidden !== id)
-      : [...hiddenSegments, id],
-  }));
+export const setListingKeys = (listingKeys: boolean): void => useDesk.setState({ listingKeys });
+export const editNote = (editedNote: string | undefined): void => useDesk.setState({ editedNote });
+export const setTidying = (tidying: boolean): void => useDesk.setState({ tidying });
 /** Forgets everything, as when another design is opened. */
 export const clearDesk = (): void => useDesk.setState(atRest);

@@ -1,20 +1,32 @@
-import { useMemo, useState, type KeyboardEvent } from 'react';
+import { useEffect, useMemo, useRef, useState, type KeyboardEvent } from 'react';
+import { Button } from '../components/button.tsx';
 import { Dialog } from '../components/dialog.tsx';
 import { classNames } from '../lib/class-names.ts';
 import { anchorOf } from '../drawing/routing/anchors.ts';
 import type { Design, ElementRef } from '../engine/model/design.ts';
 import { useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
 import { kindOf, nameOf } from '../workspace/operations/name-of.ts';
-import { setSearching, useDesk } from './desk-state.ts';
+import { isCommand, isPossible, keyWords, shortcutIds, shortcuts } from './commands/shortcuts.ts';
+import type { Commands } from './commands/use-commands.ts';
+import { setListingKeys, setSearching, useDesk } from './desk-state.ts';
 import { useDrawn } from './geometry-context.tsx';
 import { useView } from './use-view.ts';
 
-interface Found {
+interface FoundPart {
   readonly ref: ElementRef;
   readonly name: string;
   readonly kind: string;
   readonly detail: string;
 }
+/** Something that can be done, by its name. */
+export interface NamedCommand {
+  readonly name: string;
+  /** What it belongs to, in one word. */
+  readonly kind: string;
+  readonly detail: string;
+  readonly run: () => void;
+}
+type Found = FoundPart | NamedCommand;
 
 const searched = [
   'sites',
@@ -65,46 +77,101 @@ const detailOf = (design: Design, ref: ElementRef): string => {
   }
 };
 
+const most = 40;
+const rankOf = ({ name }: Found, wanted: string): number =>
+  name.toLowerCase() === wanted ? 0 : name.toLowerCase().startsWith(wanted) ? 1 : 2;
+
+/** The commands whose name or group holds every word of the text; all of them for none. */
+export const findCommands = (commands: readonly NamedCommand[], text: string): readonly NamedCommand[] => {
+  const words = text.trim().toLowerCase().split(/\s+/).filter(Boolean);
+  return commands.filter(({ name, kind }) =>
+    words.every((word) => `${name} ${kind}`.toLowerCase().includes(word)),
+  );
+};
+
 /** Everything on the sheet whose name, address, VNI or VLAN holds the text; the best matches first. */
-export const findParts = (design: Design, text: string): readonly Found[] => {
+export const findParts = (design: Design, text: string): readonly FoundPart[] => {
   const wanted = text.trim().toLowerCase();
   if (wanted === '') return [];
-  const rank = (found: Found): number =>
-    found.name.toLowerCase() === wanted ? 0 : found.name.toLowerCase().startsWith(wanted) ? 1 : 2;
   return searched
     .flatMap((collection) =>
-      Object.keys(design[collection]).map((id): Found => {
+      Object.keys(design[collection]).map((id): FoundPart => {
         const ref: ElementRef = { collection, id };
         return { ref, name: nameOf(design, ref), kind: kindOf(design, ref), detail: detailOf(design, ref) };
       }),
     )
     .filter((found) => `${found.name} ${found.detail} ${found.kind}`.toLowerCase().includes(wanted))
-    .sort((a, b) => rank(a) - rank(b) || a.name.localeCompare(b.name, 'en', { numeric: true }))
-    .slice(0, 40);
+    .sort(
+      (a, b) =>
+        rankOf(a, wanted) - rankOf(b, wanted) || a.name.localeCompare(b.name, 'en', { numeric: true }),
+    )
+    .slice(0, most);
 };
 
-/** Find something on the sheet and jump there. */
-export function FindDialog() {
+interface FindDialogProps {
+  readonly commands: Commands;
+  /** What the page adds to the sheet's own commands. */
+  readonly more: readonly NamedCommand[];
+}
+
+/** Find something on the sheet and jump there, or do something by its name. */
+export function FindDialog(props: FindDialogProps) {
   const searching = useDesk((state) => state.searching);
-  return searching ? <OpenFindDialog /> : null;
+  return searching ? <OpenFindDialog {...props} /> : null;
 }
 
 const focusAtOnce = (input: HTMLInputElement | null): void => input?.focus();
 
-function OpenFindDialog() {
+function OpenFindDialog({ commands, more }: FindDialogProps) {
   const open = useOpenDesign();
   const design = useOpenState((state) => state.document);
+  const editable = useOpenState((state) => state.editable);
+  const anySelected = useOpenState((state) => state.selection.length > 0);
   const { geometry } = useDrawn();
   const view = useView();
   const [text, setText] = useState('');
   const [at, setAt] = useState(0);
-  const found = useMemo(() => findParts(design, text), [design, text]);
+  const possible = useMemo(
+    (): readonly NamedCommand[] => [
+      ...shortcutIds
+        .filter(isCommand)
+        .filter((id) => id !== 'find' && id !== 'menu' && isPossible(id, { editable, anySelected }))
+        .map((id) => ({
+          name: shortcuts[id].words,
+          kind: shortcuts[id].group,
+          detail: keyWords(id),
+          run: commands.run[id],
+        })),
+      ...more,
+    ],
+    [commands, more, editable, anySelected],
+  );
+  const found = useMemo((): readonly Found[] => {
+    const wanted = text.trim().toLowerCase();
+    const parts = findParts(design, text);
+    const named = findCommands(possible, text);
+    // An element that is called so before a command that is, and both before what only holds the words.
+    return [...parts, ...named]
+      .map((one, i) => ({ one, rank: wanted === '' ? 0 : rankOf(one, wanted), i }))
+      .sort((a, b) => a.rank - b.rank || a.i - b.i)
+      .map(({ one }) => one);
+  }, [design, text, possible]);
   const chosen = Math.min(at, Math.max(0, found.length - 1));
+  const list = useRef<HTMLUListElement>(null);
+  useEffect(() => {
+    list.current?.children[chosen]?.scrollIntoView?.({ block: 'nearest' });
+  }, [chosen, found]);
+  // Done once the dialog has closed and the focus is back where it was: what is done may move it.
+  const doAfter = (run: () => void): void => {
+    setSearching(false);
+    setTimeout(run);
+  };
   const go = (one: Found | undefined): void => {
     if (one === undefined) return;
+    if ('run' in one) return doAfter(one.run);
     setSearching(false);
     open.select([one.ref]);
-    const anchor = anchorOf(geometry, one.ref);
+    const anchor = anchorOf(geometry, one.ref, design);
     if (anchor !== undefined) view.showPoint(anchor);
   };
   const onKeyDown = (event: KeyboardEvent): void => {
@@ -118,14 +185,22 @@ function OpenFindDialog() {
     }
   };
   return (
-    <Dialog open onOpenChange={setSearching} title="Find on the sheet" widthPx={520}>
+    <Dialog
+      open
+      onOpenChange={setSearching}
+      title="Find or do"
+      widthPx={560}
+      footer={<Button onClick={() => doAfter(() => setListingKeys(true))}>All keys</Button>}
+    >
       <input
         role="combobox"
         aria-expanded={found.length > 0}
         aria-controls="find-results"
         aria-activedescendant={found.length > 0 ? `find-${chosen}` : undefined}
-        aria-label="Name, address, VNI or VLAN"
-        placeholder="Name, address, VNI or VLAN"
+        aria-label="Name, address, VNI, VLAN or command"
+        placeholder="Name, address, VNI, VLAN or command"
+        autoComplete="off"
+        spellCheck={false}
         ref={focusAtOnce}
         className="w-full border border-rule-strong bg-field px-10 py-8 text-value"
         value={text}
@@ -135,12 +210,18 @@ function OpenFindDialog() {
         }}
         onKeyDown={onKeyDown}
       />
-      <ul id="find-results" role="listbox" aria-label="Found" className="mt-8 max-h-320 overflow-y-auto">
+      <ul
+        id="find-results"
+        ref={list}
+        role="listbox"
+        aria-label="Found"
+        className="mt-8 max-h-[min(44vh,360px)] overflow-y-auto"
+      >
         {found.map((one, i) => (
           // The text field keeps the focus and takes the keys, as a combobox's does.
           // eslint-disable-next-line jsx-a11y/click-events-have-key-events
           <li
-            key={`${one.ref.collection} ${one.ref.id}`}
+            key={'run' in one ? `command ${one.name}` : `${one.ref.collection} ${one.ref.id}`}
             id={`find-${i}`}
             role="option"
             aria-selected={i === chosen}
@@ -148,18 +229,18 @@ function OpenFindDialog() {
               'flex cursor-pointer items-baseline gap-10 px-10 py-5',
               i === chosen && 'bg-blue-wash',
             )}
-            onPointerEnter={() => setAt(i)}
+            onPointerMove={() => i !== chosen && setAt(i)}
             onClick={() => go(one)}
           >
             <span className="w-120 shrink-0 text-note text-ink-3">{one.kind}</span>
-            <span className="font-medium">{one.name}</span>
-            <span className="ml-auto text-note text-ink-2">{one.detail}</span>
+            <span className={'run' in one ? undefined : 'font-medium'}>{one.name}</span>
+            <span className="ml-auto shrink-0 pl-8 text-note text-ink-2">{one.detail}</span>
           </li>
         ))}
       </ul>
-      {text.trim() !== '' && found.length === 0 && (
+      {found.length === 0 && (
         <p className="mt-8 text-base text-ink-2">
-          Nothing on this sheet is called or numbered “{text.trim()}”.
+          Nothing on this sheet is called or numbered “{text.trim()}”, and no command.
         </p>
       )}
     </Dialog>

@@ -1,11 +1,14 @@
 import type { NodeChange, NodePositionChange, XYPosition } from '@xyflow/react';
 import type { Point, Rect, SheetGeometry } from '../drawing/geometry.ts';
-import type { Design, ElementRef } from '../engine/model/design.ts';
+import { around } from '../drawing/routing/rects.ts';
+import type { Collection, Design, ElementRef } from '../engine/model/design.ts';
 import type { Side } from '../engine/model/layout.ts';
 import type { MergePatch } from '../engine/model/merge-patch.ts';
 import { applyPatch, joinPatches } from '../engine/model/merge-patch.ts';
 import type { Standing } from '../workspace/operations/move-parts.ts';
-import { moveElements, rehome } from '../workspace/operations/move-parts.ts';
+import { rehome } from '../workspace/operations/move-parts.ts';
+import { snapMove, type Snapped } from '../workspace/operations/snap-move.ts';
+import { boxesOf } from './boxes-of.ts';
 import type { FlowNode } from './design-to-flow.ts';
 
 const inside = (rect: Rect, at: Point): boolean =>
@@ -67,16 +70,14 @@ export const dockingSide = (geometry: SheetGeometry, endpoint: string, at: Point
   return side === ring.side ? undefined : side;
 };
 
-/**
- * What moving nodes to new places means for the design: one patch on its layout. All nodes of a drag move by the same
- * distance, which is read off the first.
- */
-export const movesToPatch = (
-  design: Design,
-  geometry: SheetGeometry,
-  nodes: readonly FlowNode[],
-  moved: readonly MovedNode[],
-): MergePatch => {
+export interface Drag {
+  readonly refs: readonly ElementRef[];
+  readonly dx: number;
+  readonly dy: number;
+}
+
+/** What a drag moves and how far: all its nodes move by the same distance, which is read off the first. */
+export const dragOf = (nodes: readonly FlowNode[], moved: readonly MovedNode[]): Drag | undefined => {
   const known = moved.flatMap((change) => {
     const node = nodes.find((candidate) => candidate.id === change.id);
     return node?.data.ref === undefined || change.position === undefined
@@ -84,17 +85,59 @@ export const movesToPatch = (
       : [{ node, ref: node.data.ref, to: change.position }];
   });
   const first = known[0];
-  if (first === undefined) return {};
-  const dx = Math.round(first.to.x - first.node.position.x);
-  const dy = Math.round(first.to.y - first.node.position.y);
-  const operation = moveElements(
-    design,
-    standingOf(geometry),
-    known.map(({ ref }) => ref),
-    dx,
-    dy,
-  );
-  return operation.ok ? operation.patch : {};
+  if (first === undefined) return undefined;
+  return {
+    refs: known.map(({ ref }) => ref),
+    dx: Math.round(first.to.x - first.node.position.x),
+    dy: Math.round(first.to.y - first.node.position.y),
+  };
+};
+
+/**
+ * A drag drawn to where it lines up: sites with sites, devices and notes with devices and notes. A band has only the grid,
+ * and what has no place of its own goes as far as it is pulled.
+ */
+export const snapDrag = (
+  design: Design,
+  geometry: SheetGeometry,
+  { refs, dx, dy }: Drag,
+  reachPx: number,
+): Snapped => {
+  const moving = around(boxesOf(geometry, refs).map(({ rect }) => rect));
+  if (moving === undefined) return { dx, dy, guides: [] };
+  const held = (collection: Collection): ReadonlySet<string> =>
+    new Set(refs.filter((ref) => ref.collection === collection).map(({ id }) => id));
+  const [sites, devices, notes] = [held('sites'), held('devices'), held('notes')];
+  const others = (collection: Collection, ids: readonly string[]): readonly Rect[] =>
+    boxesOf(
+      geometry,
+      ids.map((id) => ({ collection, id })),
+    ).map(({ rect }) => rect);
+  const still =
+    sites.size > 0
+      ? others(
+          'sites',
+          geometry.sites.map(({ id }) => id).filter((id) => !sites.has(id)),
+        )
+      : devices.size + notes.size > 0
+        ? [
+            ...others(
+              'devices',
+              geometry.devices.map(({ id }) => id).filter((id) => !devices.has(id)),
+            ),
+            ...others(
+              'notes',
+              geometry.notes
+                .filter(
+                  ({ id }) =>
+                    // One that is pinned to what moves goes along.
+                    !notes.has(id) && !devices.has(design.notes[id]?.target?.id ?? ''),
+                )
+                .map(({ id }) => id),
+            ),
+          ]
+        : [];
+  return snapMove(moving, still, dx, dy, reachPx);
 };
 
 /** The site whose frame holds a point; of several the one in front. */

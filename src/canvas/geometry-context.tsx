@@ -17,6 +17,8 @@ interface Drawn {
   /** The geometry of the committed design. */
   readonly settled: SheetGeometry;
   readonly facts: DrawingFacts;
+  /** The design whose words and numbers are shown: a drag moves things only. */
+  readonly said: Design;
   readonly drag: MergePatch | undefined;
   readonly setDrag: (patch: MergePatch | undefined) => void;
   /** Shows the design as a patch would make it, until it is taken away again. */
@@ -43,8 +45,8 @@ export function GeometryProvider({ children }: { readonly children: ReactNode })
   const network = indexNetwork(said);
   const facts = useMemo(() => drawingFacts(said, tunnelSegments(network)), [said, network]);
   const drawn = useMemo(
-    () => ({ shown, geometry, settled, facts, drag, setDrag, preview, setPreview }),
-    [shown, geometry, settled, facts, drag, preview],
+    () => ({ shown, geometry, settled, facts, said, drag, setDrag, preview, setPreview }),
+    [shown, geometry, settled, facts, said, drag, preview],
   );
   return <GeometryContext value={drawn}>{children}</GeometryContext>;
 }

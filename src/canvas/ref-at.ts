@@ -24,3 +24,12 @@ export const refAt = (target: Element): ElementRef | undefined => {
   const key = target.closest('[data-ref]')?.getAttribute('data-ref');
   return key === null || key === undefined ? undefined : refOfKey(key);
 };
+
+/** The element whose node or line of the canvas holds a target, where nothing inside it is marked. */
+export const elementAt = (target: Element): ElementRef | undefined => {
+  const marked = refAt(target);
+  if (marked !== undefined) return marked;
+  const id = target.closest('.react-flow__node, .react-flow__edge')?.getAttribute('data-id');
+  // A cable's second line and the parts of a jacket count on after a '#'.
+  return id === null || id === undefined ? undefined : refOfKey(id.split('#')[0]!);
+};

@@ -8,7 +8,8 @@ import { Tooltip } from '../components/tooltip.tsx';
 import { download } from '../lib/download.ts';
 import { useTheme } from '../lib/theme.ts';
 import { useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
-import { setInspecting, useDesk } from './desk-state.ts';
+import { keyWords } from './commands/shortcuts.ts';
+import { setInspecting, setListingKeys, useDesk } from './desk-state.ts';
 import { designBlob, fileNameOf, sheetPng } from './export-sheet.ts';
 import { TidyButton } from './tidy-button.tsx';
 
@@ -19,10 +20,26 @@ export function SheetActions() {
     <BarContents>
       <div className="flex shrink-0 items-center gap-4">
         {editable && <TidyButton />}
+        <KeysButton />
         <InspectorButton />
         <ExportMenu />
       </div>
     </BarContents>
+  );
+}
+
+function KeysButton() {
+  return (
+    <Tooltip text={`All keys (${keyWords('keys')})`}>
+      <Button
+        kind="quiet"
+        iconOnly
+        aria-label="All keys"
+        icon={<Icon name="keys" />}
+        className="max-md:hidden"
+        onClick={() => setListingKeys(true)}
+      />
+    </Tooltip>
   );
 }
 

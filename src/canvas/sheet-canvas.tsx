@@ -8,38 +8,33 @@ import {
   type FinalConnectionState,
   type NodeChange,
 } from '@xyflow/react';
-import {
-  useCallback,
-  useMemo,
-  useRef,
-  useState,
-  type DragEvent,
-  type KeyboardEvent,
-  type MouseEvent,
-} from 'react';
+import { useCallback, useMemo, useState, type DragEvent, type KeyboardEvent, type MouseEvent } from 'react';
 import { showToast } from '../components/toast.tsx';
 import type { Decorations, Tone } from '../drawing/decorations.ts';
 import { elementKey } from '../drawing/decorations.ts';
 import { levelOf, type Level } from '../drawing/parts/level-of-detail.ts';
 import type { ElementRef } from '../engine/model/design.ts';
-import type { MergePatch } from '../engine/model/merge-patch.ts';
-import { isEmptyPatch } from '../engine/model/merge-patch.ts';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
+import { isCollapsed } from '../workspace/operations/collapse-sites.ts';
 import { dockEndpoint, isLocked } from '../workspace/operations/move-parts.ts';
+import { useElementActions } from './actions/use-element-actions.ts';
 import { connectEnds, endOf, whyNotConnect, type ConnectEnd } from './connect-ends.ts';
 import { designToFlow, type FlowEdge, type FlowNode } from './design-to-flow.ts';
-import { askToJoin, setFitted, startPlacing, useDesk } from './desk-state.ts';
+import { askToJoin, openMenu, setFitted, startPlacing, useDesk } from './desk-state.ts';
 import { DrawingContext, type Drawing } from './drawing-context.ts';
 import { edgeTypes } from './edges/part-edges.tsx';
-import { dockingSide, dropToPatch, movesIn, movesToPatch, type MovedNode } from './flow-changes-to-patch.ts';
+import { dockingSide } from './flow-changes-to-patch.ts';
 import { useDrawn } from './geometry-context.tsx';
 import { nodeTypes } from './nodes/part-nodes.tsx';
 import { endAt, isJoining, placePart, type TrayPart } from './place-part.ts';
 import { PullLine } from './pull-line.tsx';
 import { readPartDrag } from './parts-tray/part-drag.ts';
-import { refAt } from './ref-at.ts';
-import { CrowdedNotice, SheetHint } from './sheet-hints.tsx';
+import { elementAt, refAt } from './ref-at.ts';
+import { CrowdedNotice, SheetHint, ViewNotice } from './sheet-hints.tsx';
+import { SnapGuides } from './snap-guides.tsx';
 import { useKeptFit } from './use-kept-fit.ts';
+import { useMoving } from './use-moving.ts';
+import { useViewed } from './use-viewed.ts';
 import { useView, zoomLimits } from './use-view.ts';
 
 interface SheetCanvasProps {
@@ -52,8 +47,6 @@ interface SheetCanvasProps {
   readonly onPickBalloon: (number: number) => void;
 }
 
-// A key that repeats is one gesture: the move is committed once it has been quiet for so long.
-const keyQuietMs = 400;
 // Below this many parts drawing them all is cheaper than deciding which are in view.
 const cullFrom = 400;
 
@@ -77,18 +70,18 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
   const design = useOpenState((state) => state.document);
   const editable = useOpenState((state) => state.editable);
   const selection = useOpenState((state) => state.selection);
-  const { geometry, settled, facts, drag, setDrag, shown } = useDrawn();
+  const { settled, facts, drag, shown } = useDrawn();
+  const { geometry, decorations: marks, visibilityOf } = useViewed(decorations);
   const flow = useReactFlow<FlowNode, FlowEdge>();
   const view = useView();
   const level = useLevel(view.zoom);
   const tool = useDesk((state) => state.tool);
   const placing = useDesk((state) => state.placing);
   const firstEnd = useDesk((state) => state.firstEnd);
-  const hiddenSegments = useDesk((state) => state.hiddenSegments);
 
   const look = useMemo(
-    () => ({ level, decorations: tonesWith({ ...decorations, hiddenSegments }, selection) }),
-    [level, decorations, hiddenSegments, selection],
+    () => ({ level, decorations: tonesWith(marks, selection) }),
+    [level, marks, selection],
   );
   const drawing = useMemo<Drawing>(
     () => ({ geometry, facts, look, editable, acceptGhost: onAcceptGhost, pickBalloon: onPickBalloon }),
@@ -107,8 +100,9 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
         selected,
         editable,
         isLocked: (ref) => isLocked(shown, ref),
+        visibilityOf,
       }),
-    [shown, geometry, facts, selected, editable],
+    [shown, geometry, facts, selected, editable, visibilityOf],
   );
   // Moves are measured from where things stood when the drag began.
   const settledNodes = useMemo(
@@ -128,41 +122,11 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
 
   const say = useCallback((why: string): void => void showToast({ tone: 'failed', text: why }), []);
 
-  // ---- moving -------------------------------------------------------------------------------------------------
-  const keyMove = useRef<ReturnType<typeof setTimeout> | undefined>(undefined);
-  const dragRef = useRef<MergePatch | undefined>(undefined);
-  const hold = (patch: MergePatch | undefined): void => {
-    dragRef.current = patch;
-    setDrag(patch);
-  };
-  const drop = (moved: readonly MovedNode[]): void => {
-    const patch = dragRef.current;
-    hold(undefined);
-    if (patch === undefined || isEmptyPatch(patch)) return;
-    const dropped = moved.flatMap(
-      (change) => settledNodes.find((node) => node.id === change.id)?.data.ref ?? [],
-    );
-    const committed = open.commit('Move', dropToPatch(design, settled, patch, dropped));
-    if (!committed.ok) say(committed.problems.map((problem) => problem.expected).join('; '));
-  };
-  const dragging = useRef(false);
+  const moving = useMoving(settledNodes, view.zoom);
   const onNodesChange = (changes: NodeChange<FlowNode>[]): void => {
     const picks = changes.filter((change) => change.type === 'select');
     if (picks.length > 0) changeSelection(picks);
-    const { moved, dragging: held } = movesIn(changes);
-    if (moved.length === 0 || !editable) return;
-    if (held) {
-      dragging.current = true;
-      hold(movesToPatch(design, settled, settledNodes, moved));
-    } else if (dragging.current) {
-      dragging.current = false;
-      drop(moved);
-    } else {
-      // Arrow keys: the library moves the nodes as drawn, so the distance adds up to the drag so far.
-      hold(movesToPatch(design, settled, settledNodes, moved));
-      if (keyMove.current !== undefined) clearTimeout(keyMove.current);
-      keyMove.current = setTimeout(() => drop(moved), keyQuietMs);
-    }
+    moving.onChanges(changes);
   };
 
   // ---- selecting ----------------------------------------------------------------------------------------------
@@ -272,6 +236,32 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
     event.preventDefault();
     put(part, flow.screenToFlowPosition({ x: event.clientX, y: event.clientY }));
   };
+  // ---- menus and double presses -------------------------------------------------------------------------------
+  const actions = useElementActions();
+  const onContextMenu = (event: MouseEvent): void => {
+    event.preventDefault();
+    // The menu key comes as a key as well, and knows better where to open it.
+    if (event.button !== 2 || placing !== undefined) return;
+    const ref = elementAt(event.target as Element);
+    if (ref !== undefined && !selection.some((one) => elementKey(one) === elementKey(ref)))
+      open.select([ref]);
+    openMenu({
+      at: { x: event.clientX, y: event.clientY },
+      of: 'all',
+      ...(ref === undefined ? {} : { ref }),
+    });
+  };
+  /** Opens what there is to open: a site, a note's words, the inspector. */
+  const onDoubleClick = (event: MouseEvent): void => {
+    const ref = elementAt(event.target as Element);
+    if (ref === undefined || onPick !== undefined || placing !== undefined) return;
+    const site = ref.collection === 'devices' ? design.devices[ref.id]?.site : ref.id;
+    const isSite = ref.collection === 'sites' || (site !== undefined && isCollapsed(design, site));
+    if (editable && site !== undefined && isSite) actions.setCollapsed([site], !isCollapsed(design, site));
+    else if (editable && ref.collection === 'notes') actions.rename({ ref });
+    else actions.inspect({ ref });
+  };
+
   const onKeyDown = (event: KeyboardEvent): void => {
     if (onPick !== undefined && (event.key === 'Enter' || event.key === ' ')) {
       const focused = (event.target as Element).closest('.react-flow__node, .react-flow__edge');
@@ -299,6 +289,8 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
         }}
         onDrop={onDrop}
         onKeyDown={onKeyDown}
+        onContextMenu={onContextMenu}
+        onPointerMoveCapture={moving.onPointerMove}
       >
         <ReactFlow<FlowNode, FlowEdge>
           nodes={nodes}
@@ -313,6 +305,8 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
             // Without an event the move is a fit of our own.
             if (event !== null) setFitted(false);
           }}
+          onNodeDoubleClick={onDoubleClick}
+          onEdgeDoubleClick={onDoubleClick}
           onPaneClick={() => open.select([])}
           onConnect={onConnect}
           onConnectEnd={onConnectEnd}
@@ -323,7 +317,7 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
           connectionLineComponent={PullLine}
           nodesConnectable={editable}
           selectionOnDrag={tool === 'select'}
-          panOnDrag={tool === 'pan' ? true : [1, 2]}
+          panOnDrag={tool === 'pan' ? [0, 1] : [1]}
           selectionMode={SelectionMode.Full}
           panOnScroll
           zoomOnDoubleClick={false}
@@ -337,9 +331,12 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
           onlyRenderVisibleElements={nodes.length + edges.length > cullFrom}
           proOptions={{ hideAttribution: true }}
           aria-label={`Sheet of ${design.meta.title}`}
-        />
+        >
+          <SnapGuides guides={moving.guides} />
+        </ReactFlow>
         <CrowdedNotice />
         <SheetHint />
+        <ViewNotice />
       </div>
     </DrawingContext>
   );

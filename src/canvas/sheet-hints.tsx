@@ -1,8 +1,11 @@
+import { Button } from '../components/button.tsx';
 import { crowdedWords } from '../drawing/parts/crowded-words.ts';
+import { viewLayers, type ViewLayer } from '../drawing/view-layers.ts';
 import { useOpenState } from '../workspace/open-design-context.tsx';
 import { useDesk } from './desk-state.ts';
 import { useDrawn } from './geometry-context.tsx';
 import type { TrayPart } from './place-part.ts';
+import { useViewChoice } from './use-view-choice.ts';
 
 /** Said while something finds no way or no room where things stand now; words without room are the least of it. */
 export function CrowdedNotice() {
@@ -49,5 +52,31 @@ export function SheetHint() {
     <p className="sheet-hint" role="status">
       {hint}
     </p>
+  );
+}
+
+const layerWords: { readonly [L in ViewLayer]: string } = {
+  cabling: 'cabling',
+  underlay: 'underlay',
+  overlay: 'overlay',
+};
+
+/** Says what is left out while not everything is shown, so that nobody takes it for missing. */
+export function ViewNotice() {
+  const { choice, isWhole, showEverything } = useViewChoice();
+  const segments = useOpenState((state) => state.document.segments);
+  if (isWhole) return null;
+  const off = viewLayers.filter((layer) => !choice.layers.includes(layer)).map((layer) => layerWords[layer]);
+  const letters = choice.segments?.map((id) => segments[id]?.letter ?? id).sort();
+  const only =
+    letters === undefined ? [] : [`only segment${letters.length === 1 ? '' : 's'} ${letters.join(', ')}`];
+  const without = off.length === 0 ? [] : [`without ${off.join(' and ')}`];
+  return (
+    <div className="view-notice">
+      <p role="status">Shown: {[...only, ...without].join(', ')}</p>
+      <Button small onClick={showEverything}>
+        Show everything
+      </Button>
+    </div>
   );
 }

@@ -1,7 +1,9 @@
 import type { ElkNode } from 'elkjs/lib/elk-api.js';
 import type { ElkGraph } from '../drawing/tidy/elk-graph.ts';
 import { elkGraphOf, positionsFromElk, selectionGraph, unusualSites } from '../drawing/tidy/elk-graph.ts';
+import { route } from '../drawing/routing/route.ts';
 import type { SiteLayout } from '../drawing/tidy/site-layout.ts';
+import { tidySite } from '../drawing/tidy/tidy-site.ts';
 import { tidySelection } from '../drawing/tidy/tidy-selection.ts';
 import { tidy } from '../drawing/tidy/tidy.ts';
 import type { Design } from '../engine/model/design.ts';
@@ -34,4 +36,14 @@ export const tidyDevices = async (
 ): Promise<MergePatch> => {
   const graph = elkGraphOf(selectionGraph(design, devices));
   return tidySelection(design, devices, asAnswer(await layOut(graph as ElkNode)));
+};
+
+/** A new layout of one site where it stands. */
+export const tidyOneSite = async (design: Design, site: string, layOut: LayOut): Promise<MergePatch> => {
+  const unusual = unusualSites(design).find(({ id }) => id === site);
+  const given =
+    unusual === undefined
+      ? undefined
+      : positionsFromElk(unusual, asAnswer(await layOut(elkGraphOf(unusual) as ElkNode)));
+  return tidySite(design, route(design), site, given);
 };

@@ -1,6 +1,6 @@
 import { useReactFlow, useStore } from '@xyflow/react';
 import { useCallback, useMemo, useRef } from 'react';
-import type { Point, SheetFrame } from '../drawing/geometry.ts';
+import type { Point, Rect, SheetFrame } from '../drawing/geometry.ts';
 import { setFitted } from './desk-state.ts';
 
 export const zoomLimits = { least: 0.1, most: 3 } as const;
@@ -19,6 +19,11 @@ export interface View {
   /** Brings a point of the sheet to the middle unless it is well in view already. */
   readonly showPoint: (at: Point) => void;
   readonly middle: () => Point;
+  /** Brings a part of the sheet to fill most of the view. */
+  readonly fitRect: (rect: Rect) => void;
+  /** Where a point of the sheet is on the screen; undefined outside the view. */
+  readonly onScreen: (at: Point) => Point | undefined;
+  readonly fromScreen: (at: Point) => Point;
 }
 
 /** Moves over the sheet. Fits are computed from the model, never measured. */
@@ -59,6 +64,30 @@ export function useView(): View {
         setFitted(false);
         void flow.setCenter(at.x, at.y, { zoom: viewport.zoom, duration: still() ? 0 : panMs });
       },
+      fitRect: (rect) => {
+        if (width === 0 || height === 0) return;
+        setFitted(false);
+        const next = Math.max(
+          zoomLimits.least,
+          Math.min((0.7 * width) / rect.width, (0.7 * height) / rect.height, 1.5),
+        );
+        void flow.setViewport(
+          {
+            x: width / 2 - (rect.x + rect.width / 2) * next,
+            y: height / 2 - (rect.y + rect.height / 2) * next,
+            zoom: next,
+          },
+          { duration: still() ? 0 : panMs },
+        );
+      },
+      onScreen: (at) => {
+        const viewport = flow.getViewport();
+        const inView = { x: at.x * viewport.zoom + viewport.x, y: at.y * viewport.zoom + viewport.y };
+        return inView.x < 0 || inView.y < 0 || inView.x > width || inView.y > height
+          ? undefined
+          : flow.flowToScreenPosition(at);
+      },
+      fromScreen: (at) => flow.screenToFlowPosition(at),
       middle: () => {
         const viewport = flow.getViewport();
         return { x: (width / 2 - viewport.x) / viewport.zoom, y: (height / 2 - viewport.y) / viewport.zoom };

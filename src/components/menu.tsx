@@ -3,7 +3,7 @@ import { Fragment, useRef, type ReactElement, type ReactNode } from 'react';
 import { classNames } from '../lib/class-names.ts';
 import { Icon } from './icon.tsx';
 
-export interface MenuAction {
+export interface MenuItem {
   readonly label: string;
   readonly onSelect: () => void;
   /** Stands at the right, such as a shortcut. */
@@ -11,6 +11,8 @@ export interface MenuAction {
   readonly danger?: boolean;
   readonly disabled?: boolean;
 }
+/** One thing to do, or a few of a kind that open beside their name. */
+export type MenuAction = MenuItem | { readonly label: string; readonly actions: readonly MenuItem[] };
 
 export interface MenuChoice {
   readonly label: string;
@@ -57,11 +59,16 @@ const itemLook = classNames(
   'data-highlighted:bg-strip data-highlighted:text-strip-ink data-disabled:cursor-default data-disabled:text-ink-3',
 );
 
+const contentLook = 'z-50 overflow-y-auto border-1.5 border-ink bg-field py-4 shadow-sheet outline-none';
+
 /** A list of things to do that opens from a button. Groups are parted by a rule. */
 export function Menu({ trigger, groups, heading, align = 'start', opened }: MenuProps) {
   // Done once the menu has closed and the focus is back at its button: a dialog that it opens then knows where to
   // return to.
   const chosen = useRef<() => void>(undefined);
+  const choose = (item: MenuItem): void => {
+    chosen.current = item.onSelect;
+  };
   return (
     // Not modal: a modal menu would put a style element into the page, which the content security policy refuses.
     <Primitive.Root modal={false} open={opened?.open} onOpenChange={opened?.onOpenChange}>
@@ -80,7 +87,10 @@ export function Menu({ trigger, groups, heading, align = 'start', opened }: Menu
             chosen.current?.();
             chosen.current = undefined;
           }}
-          className="z-50 max-h-(--radix-dropdown-menu-content-available-height) min-w-180 overflow-y-auto border-1.5 border-ink bg-field py-4 shadow-sheet outline-none"
+          className={classNames(
+            contentLook,
+            'max-h-(--radix-dropdown-menu-content-available-height) min-w-180',
+          )}
         >
           {heading !== undefined && <div className="border-b border-rule-2 px-12 pt-6 pb-9">{heading}</div>}
           {groups.map((group, at) => (
@@ -91,21 +101,32 @@ export function Menu({ trigger, groups, heading, align = 'start', opened }: Menu
               ) : 'checks' in group ? (
                 <MenuCheckItems checks={group.checks} />
               ) : (
-                group.actions.map((action) => (
-                  <Primitive.Item
-                    key={action.label}
-                    disabled={action.disabled}
-                    onSelect={() => {
-                      chosen.current = action.onSelect;
-                    }}
-                    className={classNames(itemLook, action.danger && 'text-red')}
-                  >
-                    <span className="flex-1">{action.label}</span>
-                    {action.detail !== undefined && (
-                      <span className="text-note opacity-80">{action.detail}</span>
-                    )}
-                  </Primitive.Item>
-                ))
+                group.actions.map((action) =>
+                  'actions' in action ? (
+                    <Primitive.Sub key={action.label}>
+                      <Primitive.SubTrigger className={classNames(itemLook, 'data-[state=open]:bg-hover')}>
+                        <span className="flex-1">{action.label}</span>
+                        <Icon name="chevron-right" size={12} />
+                      </Primitive.SubTrigger>
+                      <Primitive.Portal>
+                        <Primitive.SubContent
+                          collisionPadding={8}
+                          sideOffset={2}
+                          className={classNames(
+                            contentLook,
+                            'max-h-(--radix-dropdown-menu-content-available-height)',
+                          )}
+                        >
+                          {action.actions.map((item) => (
+                            <MenuEntry key={item.label} item={item} onChosen={choose} />
+                          ))}
+                        </Primitive.SubContent>
+                      </Primitive.Portal>
+                    </Primitive.Sub>
+                  ) : (
+                    <MenuEntry key={action.label} item={action} onChosen={choose} />
+                  ),
+                )
               )}
             </Fragment>
           ))}
@@ -142,6 +163,25 @@ function MenuCheckItems({ checks }: { readonly checks: MenuChecks }) {
         </Primitive.CheckboxItem>
       ))}
     </>
+  );
+}
+
+function MenuEntry({
+  item,
+  onChosen,
+}: {
+  readonly item: MenuItem;
+  readonly onChosen: (item: MenuItem) => void;
+}) {
+  return (
+    <Primitive.Item
+      disabled={item.disabled}
+      onSelect={() => onChosen(item)}
+      className={classNames(itemLook, item.danger && 'text-red')}
+    >
+      <span className="flex-1">{item.label}</span>
+      {item.detail !== undefined && <span className="text-note opacity-80">{item.detail}</span>}
+    </Primitive.Item>
   );
 }
 

@@ -1,10 +1,10 @@
 import { ReactFlowProvider } from '@xyflow/react';
 import { useCallback, useEffect, useMemo, useState } from 'react';
 import '../canvas/canvas.css';
+import { DeskCommands } from '../canvas/commands/desk-commands.tsx';
 import { endOf } from '../canvas/connect-ends.ts';
 import { askToJoin, clearDesk, setInspecting, useDesk } from '../canvas/desk-state.ts';
 import type { DeskTab } from '../canvas/desk-tab.ts';
-import { FindDialog } from '../canvas/find-dialog.tsx';
 import { standingOf } from '../canvas/flow-changes-to-patch.ts';
 import { GeometryProvider, useDrawn } from '../canvas/geometry-context.tsx';
 import { Inspector } from '../canvas/inspector/inspector.tsx';
@@ -12,7 +12,6 @@ import { JoinDialog } from '../canvas/join-dialog.tsx';
 import { PartsTray } from '../canvas/parts-tray/parts-tray.tsx';
 import { SheetActions } from '../canvas/sheet-actions.tsx';
 import { SheetCanvas } from '../canvas/sheet-canvas.tsx';
-import { useShortcuts } from '../canvas/use-shortcuts.ts';
 import { useView } from '../canvas/use-view.ts';
 import { SeverityCounts } from '../components/severity-mark.tsx';
 import { showToast } from '../components/toast.tsx';
@@ -41,14 +40,12 @@ export function SheetPage() {
         <SheetActions />
         <Surface />
         <JoinDialog />
-        <FindDialog />
       </GeometryProvider>
     </ReactFlowProvider>
   );
 }
 
 function Surface() {
-  useShortcuts();
   const open = useOpenDesign();
   const { findings, document } = useChecks();
   const editable = useOpenState((state) => state.editable);
@@ -131,14 +128,22 @@ function Surface() {
     panel: <Outline view={outline} />,
   };
   const tabs = [findingsTab, outlineTab];
+  const openTab = (tab: string): void => change({ drawer: tab === 'findings' ? '' : tab });
   // The first is open where the address says nothing.
   const active = tabs.find((tab) => tab.value === valueOf('drawer')) ?? findingsTab;
   const { decorations: upper, onPick, side } = active;
+  const openings = tabs.map(({ value, label }) => ({
+    name: `Open ${label.toLowerCase()}`,
+    kind: 'Drawer',
+    detail: '',
+    run: () => openTab(value),
+  }));
   const decorations = useMemo(() => (upper === undefined ? found : layOver(found, upper)), [found, upper]);
 
   return (
     <main id="main" tabIndex={-1} className="sheet-desk" data-selected={anySelected}>
       <h1 className="sr-only">{title}</h1>
+      <DeskCommands more={openings} />
       <PartsTray />
       <div className="flex min-w-0 flex-1 flex-col">
         <SheetCanvas
@@ -149,7 +154,7 @@ function Surface() {
         />
         <SheetDrawer
           value={active.value}
-          onChange={(tab) => change({ drawer: tab === 'findings' ? '' : tab })}
+          onChange={openTab}
           // With nothing to say at first it leaves its room to the sheet.
           openAtFirst={findings.length > 0 || active !== findingsTab}
           counts={

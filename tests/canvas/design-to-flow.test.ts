@@ -2,11 +2,12 @@ import { describe, expect, it } from 'vitest';
 import { designToFlow, pipHandle, readPipHandle } from '../../src/canvas/design-to-flow.ts';
 import {
   dockingSide,
+  dragOf,
   dropToPatch,
   movesIn,
-  movesToPatch,
   nearestSide,
   siteAt,
+  snapDrag,
   standingOf,
 } from '../../src/canvas/flow-changes-to-patch.ts';
 import { endAt, freePlace, placePart } from '../../src/canvas/place-part.ts';
@@ -20,7 +21,7 @@ import type { Design } from '../../src/engine/model/design.ts';
 import { applyPatch } from '../../src/engine/model/merge-patch.ts';
 import { parseDesign } from '../../src/engine/model/parse-design.ts';
 import { indexNetwork } from '../../src/engine/network/index-network.ts';
-import { isLocked } from '../../src/workspace/operations/move-parts.ts';
+import { isLocked, moveElements } from '../../src/workspace/operations/move-parts.ts';
 import { hubDesign } from '../support/designs.ts';
 
 const plan = hubDesign(3, { hub: 'ha-pair', segments: ['a', 'b'] });
@@ -95,20 +96,39 @@ describe('what moving nodes means for the design', () => {
     return { id, position: { x: node.position.x + dx, y: node.position.y + dy } };
   };
 
+  const moveBy = (moved: Parameters<typeof dragOf>[1]) => {
+    const { refs, dx, dy } = dragOf(nodes, moved)!;
+    const operation = moveElements(design, standingOf(geometry), refs, dx, dy);
+    return operation.ok ? operation.patch : {};
+  };
+
   it('is one patch on the layout', () => {
-    const patch = movesToPatch(design, geometry, nodes, [held('devices/h-s1-a', 30, -12)]);
+    const patch = moveBy([held('devices/h-s1-a', 30, -12)]);
     const before = standingOf(geometry).devices['h-s1-a']!;
     expect(patch).toEqual({ layout: { devices: { 'h-s1-a': { x: before.x + 30, y: before.y - 12 } } } });
   });
 
   it('takes a site with all that stands in it', () => {
-    const patch = movesToPatch(design, geometry, nodes, [held('sites/s1', 10, 10)]);
+    const patch = moveBy([held('sites/s1', 10, 10)]);
     expect(Object.keys((patch.layout as { devices: object }).devices).sort()).toEqual([
       'fw-s1',
       'h-s1-a',
       'h-s1-b',
       'sw-s1',
     ]);
+  });
+
+  it('lines a device up with its neighbours, a site with other sites, and leaves what they are alone', () => {
+    const rectOf = (id: string) => geometry.devices.find((each) => each.id === id)!.rect;
+    const [mine, theirs] = [rectOf('h-s1-a'), rectOf('sw-s2')];
+    const drag = dragOf(nodes, [held('devices/h-s1-a', theirs.x - mine.x + 3, theirs.y - mine.y - 90)])!;
+    const snapped = snapDrag(design, geometry, drag, 6);
+    expect(Math.abs(snapped.dx - drag.dx)).toBeLessThanOrEqual(6);
+    expect(snapped.guides.length).toBeGreaterThan(0);
+    const [here, there] = ['s1', 's2'].map((id) => geometry.sites.find((site) => site.id === id)!.rect);
+    const siteDrag = dragOf(nodes, [held('sites/s1', 0, there!.y - here!.y + 4)])!;
+    expect(snapDrag(design, geometry, siteDrag, 6).dy).toBeCloseTo(there!.y - here!.y, 1);
+    expect(snapDrag(design, geometry, { refs: [], dx: 3, dy: 4 }, 6)).toEqual({ dx: 3, dy: 4, guides: [] });
   });
 
   it('docks a ring on the side of its device that it is let go beside', () => {
@@ -127,9 +147,7 @@ describe('what moving nodes means for the design', () => {
   it('puts a device into the site it is dropped in', () => {
     const other = geometry.sites.find((site) => site.id === 's2')!.rect;
     const from = standingOf(geometry).devices['h-s1-a']!;
-    const move = movesToPatch(design, geometry, nodes, [
-      held('devices/h-s1-a', other.x + 40 - from.x, other.y + 40 - from.y),
-    ]);
+    const move = moveBy([held('devices/h-s1-a', other.x + 40 - from.x, other.y + 40 - from.y)]);
     const after = applyPatch(
       design,
       dropToPatch(design, geometry, move, [{ collection: 'devices', id: 'h-s1-a' }]),

@@ -1,14 +1,13 @@
 import { CellGrid } from '../../components/cell.tsx';
 import type { Collection, ElementRef } from '../../engine/model/design.ts';
-import { noteSchema } from '../../engine/model/intent.ts';
 import { useOpenState } from '../../workspace/open-design-context.tsx';
 import { kindOf, nameOf } from '../../workspace/operations/name-of.ts';
+import { notable } from '../../workspace/operations/place-parts.ts';
 import { ElementList } from './element-link.tsx';
 import { LongTextField, SelectField } from './fields.tsx';
 import { PanelHead } from './panel-head.tsx';
 import { useField } from './use-field.ts';
 
-const pinnable: readonly Collection[] = noteSchema.shape.target.unwrap().shape.collection.options;
 type Target = { readonly collection: Collection; readonly id: string };
 
 /** A note: its text, whether it stands at the head of the sheet, and what it is pinned to. */
@@ -18,7 +17,7 @@ export function NotePanel({ id }: { readonly id: string }) {
   const { commit } = useField<Target>(['notes', id, 'target']);
   const { commit: setStanding } = useField<boolean>(['notes', id, 'standing']);
   if (note === undefined) return null;
-  const targets: readonly ElementRef[] = pinnable.flatMap((collection) =>
+  const targets: readonly ElementRef[] = notable.flatMap((collection) =>
     Object.keys(design[collection]).map((each) => ({ collection, id: each })),
   );
   return (

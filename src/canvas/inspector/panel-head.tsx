@@ -10,7 +10,7 @@ import type { Design, ElementRef } from '../../engine/model/design.ts';
 import { classNames } from '../../lib/class-names.ts';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { copyParts, pasteParts } from '../../workspace/operations/copy-parts.ts';
-import { isLocked, setLocked, type Standing } from '../../workspace/operations/move-parts.ts';
+import { canLock, isLocked, setLocked, type Standing } from '../../workspace/operations/move-parts.ts';
 import { kindOf, nameOf } from '../../workspace/operations/name-of.ts';
 import type { Operation } from '../../workspace/operations/operation.ts';
 import { removeElements } from '../../workspace/operations/remove-parts.ts';
@@ -34,14 +34,6 @@ export const useStanding = (): ((design: Design) => Standing) => {
   const { standing } = useInspectorTools();
   return standing === undefined ? placedByHand : () => standing;
 };
-
-/** Whether an element has a place of its own that can be locked. */
-export const canLock = (design: Design, standing: Standing, { collection, id, port }: ElementRef): boolean =>
-  port === undefined &&
-  (collection === 'transports'
-    ? design.layout.transports?.[id] !== undefined
-    : (collection === 'devices' || collection === 'sites' || collection === 'notes') &&
-      standing[collection][id] !== undefined);
 
 /** Does an operation and says why when it can't be done. */
 export const usePerform = (): ((operation: Operation) => void) => {

@@ -3,11 +3,11 @@ import { CellGrid, ReadCell } from '../../components/cell.tsx';
 import { Icon } from '../../components/icon.tsx';
 import type { ElementRef } from '../../engine/model/design.ts';
 import { useOpenState } from '../../workspace/open-design-context.tsx';
-import { isLocked, setLocked } from '../../workspace/operations/move-parts.ts';
+import { canLock, isLocked, setLocked } from '../../workspace/operations/move-parts.ts';
 import { kindOf } from '../../workspace/operations/name-of.ts';
 import { removeElements } from '../../workspace/operations/remove-parts.ts';
 import { ElementList } from './element-link.tsx';
-import { canLock, usePerform, useStanding } from './panel-head.tsx';
+import { usePerform, useStanding } from './panel-head.tsx';
 import { Section } from './section.tsx';
 import { useEditable } from './use-field.ts';
 

@@ -7,9 +7,11 @@ import { showToast } from '../../components/toast.tsx';
 import { Tooltip } from '../../components/tooltip.tsx';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { placeSegment } from '../../workspace/operations/place-parts.ts';
-import { askToJoin, setSearching, setTool, startPlacing, toggleSegment, useDesk } from '../desk-state.ts';
+import { keyWords, type ShortcutId } from '../commands/shortcuts.ts';
+import { askToJoin, setSearching, setTool, startPlacing, useDesk } from '../desk-state.ts';
 import { useDrawn } from '../geometry-context.tsx';
 import { freePlace, isJoining, placePart, type TrayPart } from '../place-part.ts';
+import { useViewChoice } from '../use-view-choice.ts';
 import { useView } from '../use-view.ts';
 import { writePartDrag } from './part-drag.ts';
 import { PartTile } from './part-tile.tsx';
@@ -63,12 +65,14 @@ export function PartsTray() {
   );
 }
 
+const withKey = (words: string, id: ShortcutId): string => `${words} (${keyWords(id)})`;
+
 function Tools({ editable }: { readonly editable: boolean }) {
   const tool = useDesk((state) => state.tool);
   const placing = useDesk((state) => state.placing);
   return (
     <div role="toolbar" aria-label="Tools" className="flex gap-4 border-b border-rule-2 px-10 py-8">
-      <Tooltip text="Select and move (V)">
+      <Tooltip text={withKey('Select and move', 'select')}>
         <Button
           kind="quiet"
           iconOnly
@@ -78,7 +82,7 @@ function Tools({ editable }: { readonly editable: boolean }) {
           onClick={() => setTool('select')}
         />
       </Tooltip>
-      <Tooltip text="Move the sheet (H, or hold Space)">
+      <Tooltip text={`Move the sheet (${keyWords('pan')}, or hold ${keyWords('panHeld')})`}>
         <Button
           kind="quiet"
           iconOnly
@@ -88,17 +92,17 @@ function Tools({ editable }: { readonly editable: boolean }) {
           onClick={() => setTool('pan')}
         />
       </Tooltip>
-      <Tooltip text="Find on the sheet (/)">
+      <Tooltip text={withKey('Find or do', 'find')}>
         <Button
           kind="quiet"
           iconOnly
-          aria-label="Find on the sheet"
+          aria-label="Find or do"
           icon={<Icon name="search" />}
           onClick={() => setSearching(true)}
         />
       </Tooltip>
       {editable && (
-        <Tooltip text="Put a note down (N)">
+        <Tooltip text={withKey('Put a note down', 'note')}>
           <Button
             kind="quiet"
             iconOnly
@@ -182,7 +186,8 @@ function Segments({ editable }: { readonly editable: boolean }) {
   const open = useOpenDesign();
   const segments = useOpenState((state) => state.document.segments);
   const selection = useOpenState((state) => state.selection);
-  const hidden = useDesk((state) => state.hiddenSegments);
+  const { choice, toggleSegment } = useViewChoice();
+  const isHidden = (id: string): boolean => choice.segments?.includes(id) === false;
   const inOrder = Object.entries(segments).sort(
     ([, a], [, b]) => a.letter.length - b.letter.length || (a.letter < b.letter ? -1 : 1),
   );
@@ -224,11 +229,11 @@ function Segments({ editable }: { readonly editable: boolean }) {
             <button
               type="button"
               className="mr-6 flex size-24 items-center justify-center text-ink-3 hover:text-ink"
-              aria-pressed={hidden.includes(id)}
-              aria-label={hidden.includes(id) ? `Show ${segment.name}` : `Fade ${segment.name}`}
+              aria-pressed={isHidden(id)}
+              aria-label={isHidden(id) ? `Show ${segment.name}` : `Fade ${segment.name}`}
               onClick={() => toggleSegment(id)}
             >
-              <Icon name={hidden.includes(id) ? 'eye-shut' : 'eye'} size={15} />
+              <Icon name={isHidden(id) ? 'eye-shut' : 'eye'} size={15} />
             </button>
           </li>
         ))}

@@ -1,10 +1,16 @@
 import { useReactFlow, useStore } from '@xyflow/react';
 import type { PointerEvent } from 'react';
 import { Button } from '../../components/button.tsx';
+import { Glyph } from '../../components/glyph.tsx';
 import { Icon } from '../../components/icon.tsx';
+import { Tooltip } from '../../components/tooltip.tsx';
+import type { GlyphName } from '../../drawing/parts/glyphs.ts';
 import { pathData } from '../../drawing/path-geometry.ts';
 import { segmentPaint } from '../../drawing/theme/paint.ts';
+import type { ViewLayer } from '../../drawing/view-layers.ts';
+import { keyWords, type ShortcutId } from '../commands/shortcuts.ts';
 import { useDrawn } from '../geometry-context.tsx';
+import { useViewChoice } from '../use-view-choice.ts';
 import { useView } from '../use-view.ts';
 
 /** The whole sheet in small with what is in view, and the zoom. */
@@ -13,6 +19,7 @@ export function ViewControls() {
   const view = useView();
   return (
     <div className="flex flex-col gap-10 border-t border-rule-2 p-12">
+      <Layers />
       <Minimap />
       <div role="group" aria-label="Zoom" className="zoom-row">
         <Button
@@ -36,6 +43,30 @@ export function ViewControls() {
           Fit
         </Button>
       </div>
+    </div>
+  );
+}
+
+const layers: readonly (readonly [ViewLayer, string, GlyphName, ShortcutId])[] = [
+  ['cabling', 'Cabling', 'cable', 'layerCabling'],
+  ['underlay', 'Underlay', 'transport', 'layerUnderlay'],
+  ['overlay', 'Overlay', 'tunnel', 'layerOverlay'],
+];
+
+function Layers() {
+  const { choice, toggleLayer } = useViewChoice();
+  return (
+    <div role="group" aria-label="Layers" className="layer-row">
+      {layers.map(([layer, name, glyph, key]) => {
+        const isOn = choice.layers.includes(layer);
+        return (
+          <Tooltip key={layer} text={`${name} ${isOn ? 'shown' : 'left out'} (${keyWords(key)})`}>
+            <button type="button" aria-label={name} aria-pressed={isOn} onClick={() => toggleLayer(layer)}>
+              <Glyph name={glyph} size={18} />
+            </button>
+          </Tooltip>
+        );
+      })}
     </div>
   );
 }

@@ -1,4 +1,5 @@
 import { useEffect } from 'react';
+import { commandFor } from '../../canvas/commands/shortcuts.ts';
 import { showToast } from '../../components/toast.tsx';
 import { takesKeys } from '../../lib/takes-keys.ts';
 import { useOpenDesign } from '../../workspace/open-design-context.tsx';
@@ -13,10 +14,9 @@ export function useTravelKeys(): void {
         showToast({ tone: 'done', text: `${way === 'undo' ? 'Undone' : 'Done again'}: ${label}` });
     };
     const onKeyDown = (event: KeyboardEvent): void => {
-      if (takesKeys(event.target) || event.defaultPrevented || !(event.ctrlKey || event.metaKey)) return;
-      const key = event.key.toLowerCase();
-      const way = key === 'y' || (key === 'z' && event.shiftKey) ? 'redo' : key === 'z' ? 'undo' : undefined;
-      if (way === undefined || !open.store.getState().editable) return;
+      if (takesKeys(event.target) || event.defaultPrevented) return;
+      const way = commandFor(event);
+      if ((way !== 'undo' && way !== 'redo') || !open.store.getState().editable) return;
       event.preventDefault();
       travel(way);
     };

@@ -1,18 +1,9 @@
+import type { Detachment } from '../../canvas/actions/element-actions.ts';
 import type { ElementRef } from '../../engine/model/design.ts';
 import type { Member } from '../../engine/model/devices.ts';
 import type { Severity } from '../../engine/rules/finding.ts';
 
 export type OutlineGroup = 'sites' | 'transports' | 'associations' | 'bare-tunnels' | 'segments' | 'notes';
-
-/** Takes what a row names out of what it stands under and leaves the element itself. */
-export interface Detachment {
-  /** What would be done: 'Take tn-ho-gul out of br-110'. */
-  readonly words: string;
-  /** The same once it is done. */
-  readonly doneWords: string;
-  /** Keys from the document's root to what goes. */
-  readonly path: readonly string[];
-}
 
 /** One line of the outline, with what stands beneath it. */
 export interface OutlineRow {

@@ -74,8 +74,8 @@ export const treeStep = (
     case ' ':
       return { does: 'toggle-selection' };
     default:
-      // '/' finds on the sheet, wherever the focus is.
-      if (pressed.ctrlKey || pressed.metaKey || pressed.key.length !== 1 || pressed.key === '/')
+      // '/' finds and '?' lists the keys, wherever the focus is.
+      if (pressed.ctrlKey || pressed.metaKey || pressed.key.length !== 1 || /[/?]/.test(pressed.key))
         return undefined;
       return go(typedAhead(rows, at, typed) ?? here);
   }

@@ -1,16 +1,21 @@
 import { useEffect, useLayoutEffect, useMemo, useReducer, useRef, useState, type KeyboardEvent } from 'react';
+import type { Subject } from '../../canvas/actions/element-actions.ts';
+import { namePathOf } from '../../canvas/actions/element-menu.ts';
+import { useExtraActions } from '../../canvas/actions/extra-actions.ts';
+import { useElementActions } from '../../canvas/actions/use-element-actions.ts';
+import { askToJoin } from '../../canvas/desk-state.ts';
 import { standingOf } from '../../canvas/flow-changes-to-patch.ts';
 import { useDrawn } from '../../canvas/geometry-context.tsx';
 import { elementKey } from '../../drawing/decorations.ts';
 import type { ElementRef } from '../../engine/model/design.ts';
-import { useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
+import { newEntryId, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
+import { placeSegment } from '../../workspace/operations/place-parts.ts';
 import { lineId, type LineTools } from './outline-line.tsx';
 import type { OutlineRow } from './outline-row.ts';
 import { setFilter, setOpenings, type OutlineViewStore } from './outline-view.ts';
-import { namePathOf, rowMenu } from './row-menu.ts';
+import { rowMenu, subjectOf } from './row-menu.ts';
 import { neighbourOf, treeStep, type TreeStep } from './tree-keys.ts';
 import type { OutlineRows } from './use-outline-rows.ts';
-import { useRowActions } from './use-row-actions.ts';
 import { keyOfElement, keysAbove, type VisibleRow } from './visible-rows.ts';
 
 // As long as somebody takes between two letters of one name.
@@ -92,10 +97,17 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
     return { focusCurrent, goTo, toggleSelection };
   }, [open, view]);
 
-  const actions = useRowActions({
-    startRenaming: (row) => {
-      const path = namePathOf(open.store.getState().document, row);
-      if (path === undefined) return;
+  /** The row that an action was asked for on: one element may have several. */
+  const rowOf = ({ ref, detach }: Subject): OutlineRow | undefined => {
+    const isIts = ({ row }: VisibleRow): boolean =>
+      row.ref !== undefined && elementKey(row.ref) === elementKey(ref) && row.detach?.words === detach?.words;
+    return (here !== undefined && isIts(here) ? here : rows.find(isIts))?.row;
+  };
+  const actions = useElementActions({
+    rename: (subject) => {
+      const path = namePathOf(open.store.getState().document, subject);
+      const row = rowOf(subject);
+      if (path === undefined || row === undefined) return;
       view.setState({ current: row.key });
       setRenaming({ key: row.key, path });
     },
@@ -103,14 +115,16 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
       wasMade.current = true;
       setFilter(view, '');
     },
-    onRemoved: (row) => {
+    onRemoved: (subject) => {
+      const key = rowOf(subject)?.key;
       const next = neighbourOf(
         rows,
-        rows.findIndex((one) => one.row.key === row.key),
+        rows.findIndex((one) => one.row.key === key),
       );
       if (next !== undefined) move.goTo(next, 'only');
     },
   });
+  const extra = useExtraActions();
 
   // What was selected elsewhere is brought to light here.
   useEffect(() => {
@@ -152,15 +166,22 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
       menuOf: (row) => {
         const { document, selection, editable } = open.store.getState();
         const standing = standingOf(latest.current.settled);
-        return rowMenu(row, { design: document, standing, selection, editable }, actions);
+        return rowMenu(row, { design: document, standing, selection, editable, extra }, actions);
       },
       endRenaming: (_row, returnFocus) => {
         setRenaming(undefined);
         if (returnFocus) move.focusCurrent();
       },
-      addTo: (group) => actions.addTo(group),
+      addTo: (group) => {
+        if (group === 'associations') return askToJoin({ kind: 'association' });
+        if (group === 'segments')
+          return actions.make(placeSegment(open.store.getState().document, newEntryId));
+        if (group === 'sites') return actions.place('site');
+        if (group === 'transports') return actions.place('transport');
+        if (group === 'notes') return actions.place('note');
+      },
     }),
-    [open, view, move, actions],
+    [open, view, move, actions, extra],
   );
 
   const typed = useRef({ text: '', atMs: 0 });
@@ -172,6 +193,7 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
   };
   const follow = (step: TreeStep, visible: VisibleRow, event: KeyboardEvent): void => {
     const { row } = visible;
+    const subject = subjectOf(row);
     const isControl = event.ctrlKey || event.metaKey;
     const { editable } = open.store.getState();
     switch (step.does) {
@@ -190,13 +212,13 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
       case 'toggle-selection':
         return move.toggleSelection(row);
       case 'inspect':
-        return row.ref === undefined ? tools.toggle(visible) : actions.inspect(row);
+        return subject === undefined ? tools.toggle(visible) : actions.inspect(subject);
       case 'menu':
         return row.ref === undefined ? undefined : tools.openMenu(row);
       case 'rename':
-        return editable ? actions.rename(row) : undefined;
+        return editable && subject !== undefined ? actions.rename(subject) : undefined;
       case 'remove':
-        return actions.remove(row);
+        return subject === undefined ? undefined : actions.remove(subject);
     }
   };
   const onKeyDown = (event: KeyboardEvent): void => {

@@ -37,6 +37,14 @@ export const isLocked = (design: Design, ref: ElementRef): boolean => {
   return false;
 };
 
+/** Whether an element has a place of its own that can be locked. */
+export const canLock = (design: Design, standing: Standing, { collection, id, port }: ElementRef): boolean =>
+  port === undefined &&
+  (collection === 'transports'
+    ? design.layout.transports?.[id] !== undefined
+    : (collection === 'devices' || collection === 'sites' || collection === 'notes') &&
+      standing[collection][id] !== undefined);
+
 const movedPoint = (at: { readonly x: number; readonly y: number }, dx: number, dy: number) => ({
   x: half(at.x + dx),
   y: half(at.y + dy),

@@ -242,6 +242,8 @@ describe('the outline for who may only read', () => {
     await user.keyboard('{ContextMenu}');
     const items = await screen.findAllByRole('menuitem');
     expect(items.map(({ textContent }) => textContent)).toEqual([
+      'CopyCtrl C',
+      'Follow',
       'Show on the sheet',
       'Open in the inspectorEnter',
     ]);

@@ -2,6 +2,7 @@ import { render, screen, within } from '@testing-library/react';
 import userEvent from '@testing-library/user-event';
 import { ReactFlowProvider } from '@xyflow/react';
 import { useState } from 'react';
+import { MemoryRouter } from 'react-router-dom';
 import { GeometryProvider } from '../../../src/canvas/geometry-context.tsx';
 import { Inspector } from '../../../src/canvas/inspector/inspector.tsx';
 import { JoinDialog } from '../../../src/canvas/join-dialog.tsx';
@@ -32,18 +33,20 @@ export const renderOutline = (
 ) => {
   const design = openInMemory(document, editable);
   render(
-    <TooltipProvider>
-      <OpenDesignProvider open={() => design}>
-        <ChecksProvider>
-          <ReactFlowProvider>
-            <GeometryProvider>
-              <Screen />
-            </GeometryProvider>
-          </ReactFlowProvider>
-        </ChecksProvider>
-      </OpenDesignProvider>
-      <ToastRegion />
-    </TooltipProvider>,
+    <MemoryRouter>
+      <TooltipProvider>
+        <OpenDesignProvider open={() => design}>
+          <ChecksProvider>
+            <ReactFlowProvider>
+              <GeometryProvider>
+                <Screen />
+              </GeometryProvider>
+            </ReactFlowProvider>
+          </ChecksProvider>
+        </OpenDesignProvider>
+        <ToastRegion />
+      </TooltipProvider>
+    </MemoryRouter>,
   );
   const tree = screen.getByRole('tree', { name: 'Outline' });
   return {
