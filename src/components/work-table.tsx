@@ -22,6 +22,8 @@ interface WorkTableProps<Row> extends Omit<DataTableProps<Row>, 'sorted' | 'clas
   readonly filterLabel?: string;
   /** Where the view is kept, such as `useTableView('demands')`; without it the table keeps it itself. */
   readonly view?: readonly [view: TableView, onChange: (view: TableView) => void];
+  /** What the rows are chosen by, before the filter. */
+  readonly before?: ReactNode;
   /** More buttons, at the left of those for columns and CSV. */
   readonly beside?: ReactNode;
   /** Fills the height of what it stands in, and scrolls inside. */
@@ -55,6 +57,7 @@ const copyOrSave = async (caption: string, text: string, rowCount: number): Prom
 export function WorkTable<Row>({
   filterLabel,
   view: kept,
+  before,
   beside,
   fill = false,
   className,
@@ -72,6 +75,7 @@ export function WorkTable<Row>({
   return (
     <div className={classNames('flex min-w-0 flex-col', fill && 'h-full min-h-0', className)}>
       <div className="flex shrink-0 flex-wrap items-center gap-8 pb-8">
+        {before}
         {filterLabel !== undefined && (
           <SearchField
             label={filterLabel}
@@ -80,7 +84,7 @@ export function WorkTable<Row>({
             className="w-240 max-w-full max-md:flex-1"
           />
         )}
-        <p role="status" className="text-note whitespace-nowrap text-ink-2">
+        <p role="status" className="text-note whitespace-nowrap text-ink-2 empty:hidden">
           {view.filter.trim() === '' ? '' : `${found.length} of ${rows.length}`}
         </p>
         <div className="ml-auto flex flex-wrap items-center gap-8">

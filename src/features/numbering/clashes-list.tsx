@@ -1,10 +1,15 @@
+import { useState } from 'react';
+import { Button } from '../../components/button.tsx';
 import { SeverityShape } from '../../components/severity-mark.tsx';
 import type { Design } from '../../engine/model/design.ts';
 import type { NetworkOverlap, NumberClash } from '../../engine/numbering/number-clashes.ts';
 import { clashSubject, holderWords } from './clash-words.ts';
 
-// More than anybody reads at once; the tables below name each beside its number.
-const mostShown = 12;
+// The tables below name each beside its number, too.
+const shownAtFirst = 4;
+
+const joined = (names: readonly string[]): string =>
+  names.length < 2 ? (names[0] ?? '') : `${names.slice(0, -1).join(', ')} and ${names.at(-1)!}`;
 
 /** Numbers that more than one holds and networks that overlap, in this design and across the workspace. */
 export function ClashesList({
@@ -16,10 +21,11 @@ export function ClashesList({
   readonly clashes: readonly NumberClash[];
   readonly overlaps: readonly NetworkOverlap[];
 }) {
+  const [all, setAll] = useState(false);
   const lines = [
     ...clashes.map((clash) => ({
       subject: clashSubject(design, clash),
-      words: `held by ${clash.holders.map((holder) => holderWords(design, holder)).join(' and ')}`,
+      words: `held by ${joined(clash.holders.map((holder) => holderWords(design, holder)))}`,
     })),
     ...overlaps.map(({ a, b }) => ({
       subject: a.network,
@@ -33,7 +39,7 @@ export function ClashesList({
         {lines.length === 1 ? '1 clash' : `${lines.length} clashes`}
       </h2>
       <ul>
-        {lines.slice(0, mostShown).map(({ subject, words }) => (
+        {(all ? lines : lines.slice(0, shownAtFirst)).map(({ subject, words }) => (
           <li
             key={`${subject} ${words}`}
             className="flex items-start gap-10 border-b border-rule px-13 py-6 text-base last:border-b-0"
@@ -47,10 +53,12 @@ export function ClashesList({
           </li>
         ))}
       </ul>
-      {lines.length > mostShown && (
-        <p className="px-13 py-8 text-note text-ink-2">
-          And {lines.length - mostShown} more: sort the tables by “Also held by”.
-        </p>
+      {lines.length > shownAtFirst && (
+        <div className="border-t border-rule px-6 py-4">
+          <Button kind="quiet" small aria-expanded={all} onClick={() => setAll(!all)}>
+            {all ? 'Show fewer' : `Show ${lines.length - shownAtFirst} more`}
+          </Button>
+        </div>
       )}
     </section>
   );

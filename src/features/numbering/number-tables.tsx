@@ -10,16 +10,21 @@ import type { LoopbackRow, Standing, VlanRow, VniRow } from './number-rows.ts';
 
 const number = wholeNumber();
 
+/** A name isn't broken over lines. */
+const Name = ({ children }: { readonly children: string }) => (
+  <span className="whitespace-nowrap">{children}</span>
+);
+
 const standingColumn = <Row extends { readonly standing: Standing }>(): Column<Row> => ({
   key: 'pool',
   head: 'Pool',
   cell: ({ standing }) =>
     standing === undefined ? (
-      <span className="text-ink-3">no pool set</span>
+      <span className="whitespace-nowrap text-ink-3">no pool set</span>
     ) : standing === 'in a pool' ? (
-      standing
+      <Name>{standing}</Name>
     ) : (
-      <span className="font-semibold text-degr">{standing}</span>
+      <span className="font-semibold whitespace-nowrap text-degr">{standing}</span>
     ),
   sortBy: ({ standing }) => standing,
 });
@@ -82,10 +87,10 @@ const vniColumns: readonly Column<VniRow>[] = [
       ),
     sortBy: (row) => row.letters.join(' '),
   },
-  { key: 'from', head: 'From', cell: (row) => row.a.device, sortBy: (row) => row.a.device },
-  vniColumn('a', 'VNI there'),
-  { key: 'to', head: 'To', cell: (row) => row.b.device, sortBy: (row) => row.b.device },
-  vniColumn('b', 'VNI there too'),
+  { key: 'from', head: 'From', cell: (row) => <Name>{row.a.device}</Name>, sortBy: (row) => row.a.device },
+  vniColumn('a', 'VNI, from end'),
+  { key: 'to', head: 'To', cell: (row) => <Name>{row.b.device}</Name>, sortBy: (row) => row.b.device },
+  vniColumn('b', 'VNI, to end'),
   {
     key: 'udp',
     head: 'UDP ports',
@@ -141,7 +146,7 @@ const loopbackColumns: readonly Column<LoopbackRow>[] = [
     cell: (row) => <span className="font-semibold">{row.name}</span>,
     sortBy: (row) => row.name,
   },
-  { key: 'device', head: 'Device', cell: (row) => row.device, sortBy: (row) => row.device },
+  { key: 'device', head: 'Device', cell: (row) => <Name>{row.device}</Name>, sortBy: (row) => row.device },
   { key: 'site', head: 'Site', cell: (row) => row.site, sortBy: (row) => row.site },
   addressColumn('ipv4', 'IPv4'),
   addressColumn('ipv6', 'IPv6'),
