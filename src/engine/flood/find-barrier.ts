@@ -8,6 +8,7 @@ import type { FloodGraph } from './flood-graph.ts';
 import type { ClassSet } from './frame-classes.ts';
 import { forwardingOf } from './forwarding.ts';
 import type { Direction, Place } from './places.ts';
+import { devicesArrivedAt } from './places.ts';
 import { blockedPorts } from './spanning-tree.ts';
 import type { FloodStep } from './storm.ts';
 
@@ -34,7 +35,8 @@ const barriersPassed = 4;
 
 /**
  * For one point of a segment, where its frames end on the way to each of the points that they don't reach: at the first
- * barrier of a way that passes as few as possible. 'not-joined' where no way at all leads on.
+ * barrier of a way that passes as few as possible. 'not-joined' where no way at all leads on. Adds to `met` the devices at which
+ * it looked, however little they have to do with the answer.
  */
 export const findBarriers = (
   graph: FloodGraph,
@@ -42,6 +44,7 @@ export const findBarriers = (
   classes: ClassSet,
   source: PlacedPoint,
   targets: readonly PlacedPoint[],
+  met: Set<Id>,
 ): ReadonlyMap<AttachmentPoint, Ending> => {
   const { network } = graph;
   const { sites } = entryOf(network.design.segments, segment);
@@ -49,6 +52,7 @@ export const findBarriers = (
     blocked: blockedPorts(network),
     pastBarriers: { vlanAt: (site) => sites[site]?.vlan, classes },
   });
+  const arrivedAt = devicesArrivedAt(network);
   const endings = new Map<AttachmentPoint, Ending>();
   const open = new Map<number, PlacedPoint[]>();
   for (const target of targets) {
@@ -134,6 +138,7 @@ export const findBarriers = (
       const key = (state.element * 2 + state.direction) * 0x100_0000 + state.tags;
       if (seen.has(key)) continue;
       seen.add(key);
+      met.add(arrivedAt[state.element * 2 + state.direction]!);
       forwarding.arrive(state.element, state.direction, state.tags, (place, ordinal, inside, barrier) => {
         if (place.kind === 'host') settle(state, place, ordinal, inside, barrier);
         else leave(place, ordinal, inside, state, passed, barrier);

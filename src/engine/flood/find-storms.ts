@@ -152,18 +152,19 @@ const describe = (graph: FloodGraph, parts: readonly Cyclic[]): Storm => {
   };
 };
 
-const known = new WeakMap<FloodGraph, readonly Storm[]>();
+// By the identity of the graph: nothing of a storm changes while frames go the same ways.
+const known = new WeakMap<object, readonly Storm[]>();
 
 /**
  * Every storm that the design allows: wherever the flood graph has a cycle, a broadcast that gets there never ends. In
  * order of their elements; [] where there is none.
  */
 export const findStorms = (graph: FloodGraph): readonly Storm[] => {
-  const before = known.get(graph);
+  const before = known.get(graph.identity);
   if (before !== undefined) return before;
   const storms = joinedByElements(graph, cyclicParts(graph))
     .map((parts) => describe(graph, parts))
     .sort((a, b) => (a.key < b.key ? -1 : a.key > b.key ? 1 : 0));
-  known.set(graph, storms);
+  known.set(graph.identity, storms);
   return storms;
 };

@@ -1,13 +1,14 @@
 import type { Id } from '../model/scalars.ts';
 import type { Tags } from '../network/frame-tags.ts';
 import { accessVlan, circuitIn, defaultVlan, isTrunk, untagged } from '../network/frame-tags.ts';
-import type { Network } from '../network/network.ts';
+import type { Answer, Network } from '../network/network.ts';
 import { entryOf, perNetwork } from '../network/network.ts';
 import type { ClassSet } from './frame-classes.ts';
 import { allClasses } from './frame-classes.ts';
 import type { Forwarding } from './forwarding.ts';
 import { forwardingOf } from './forwarding.ts';
 import type { Direction, Place } from './places.ts';
+import { floodsTheSame, keptRows } from './kept-rows.ts';
 import { blockedPorts } from './spanning-tree.ts';
 
 /**
@@ -17,6 +18,8 @@ import { blockedPorts } from './spanning-tree.ts';
 export interface FloodGraph {
   readonly network: Network;
   readonly forwarding: Forwarding;
+  /** The same object in all versions of a design in which the same frames go the same ways. */
+  readonly identity: object;
   readonly nodeCount: number;
   readonly edgeCount: number;
   /** By node: the index of the bundle of cables, or of the tunnel after all bundles. */
@@ -95,8 +98,9 @@ const seedsOf = (network: Network, forwarding: Forwarding): readonly Seed[] => {
   );
 };
 
-const build = (network: Network): FloodGraph => {
+const build = (network: Network, earlier: FloodGraph | undefined): FloodGraph => {
   const forwarding = forwardingOf(network, { blocked: blockedPorts(network) });
+  const rows = earlier === undefined ? undefined : keptRows(earlier, network);
   // By element and direction, then by tags: small keys, which maps are quickest with.
   const nodes: (Map<Tags, number> | undefined)[] = [];
   const element: number[] = [];
@@ -118,34 +122,38 @@ const build = (network: Network): FloodGraph => {
     tags.push(wire);
     return fresh;
   };
+  const emit = (crossed: number, way: Direction, wire: Tags, classes: ClassSet): void => {
+    edgeTo.push(nodeFor(crossed, way, wire));
+    edgeClasses.push(classes);
+    if (classes !== allClasses) hasFilters = true;
+  };
   for (const [place, inside] of seedsOf(network, forwarding))
     forwarding.leave(place, -1, inside, (crossed, way, wire) => {
       nodeFor(crossed, way, wire);
     });
   for (let node = 0; node < element.length; node += 1) {
     edgeStart.push(edgeTo.length);
-    let place = -1;
-    const emit = (crossed: number, way: Direction, wire: Tags, classes: ClassSet): void => {
-      edgeTo.push(nodeFor(crossed, way, wire));
-      edgeClasses.push(classes);
-      if (classes !== allClasses) hasFilters = true;
-    };
-    forwarding.arrive(
-      element[node]!,
-      direction[node]! as Direction,
-      tags[node]!,
-      (reached, ordinal, inside) => {
-        if (place < 0) place = reached.index;
-        // A host takes what comes and forwards nothing.
-        if (reached.kind !== 'host') forwarding.leave(reached, ordinal, inside, emit);
-      },
-    );
+    let place = rows?.take(element[node]!, direction[node]! as Direction, tags[node]!, emit);
+    if (place === undefined) {
+      place = -1;
+      forwarding.arrive(
+        element[node]!,
+        direction[node]! as Direction,
+        tags[node]!,
+        (reached, ordinal, inside) => {
+          if (place! < 0) place = reached.index;
+          // A host takes what comes and forwards nothing.
+          if (reached.kind !== 'host') forwarding.leave(reached, ordinal, inside, emit);
+        },
+      );
+    }
     into.push(place);
   }
   edgeStart.push(edgeTo.length);
   return {
     network,
     forwarding,
+    identity: {},
     nodeCount: element.length,
     edgeCount: edgeTo.length,
     element: Int32Array.from(element),
@@ -161,4 +169,15 @@ const build = (network: Network): FloodGraph => {
 };
 
 /** The flood graph of a whole design, built once per version of it. */
-export const floodGraph: (network: Network) => FloodGraph = perNetwork(build);
+export const floodGraph: (network: Network) => FloodGraph = perNetwork(
+  (network, earlier?: Answer<FloodGraph>) => {
+    if (earlier === undefined || !floodsTheSame(earlier.network, network))
+      return build(network, earlier?.value);
+    // Where frames go is the same, what devices are called may not be.
+    return {
+      ...earlier.value,
+      network,
+      forwarding: forwardingOf(network, { blocked: blockedPorts(network) }),
+    };
+  },
+);

@@ -26,6 +26,13 @@ import { placesOf } from './places.ts';
 export type Blocked = ReadonlySet<number>;
 /** `ordinal`: of the port in a switch, of the circuit in a forwarder. */
 export const blockKey = (place: Place, ordinal: number): number => place.index * 0x10_0000 + ordinal;
+export const blockedIn = (
+  places: Places,
+  key: number,
+): { readonly place: Place; readonly ordinal: number } => ({
+  place: places.all[Math.floor(key / 0x10_0000)]!,
+  ordinal: key % 0x10_0000,
+});
 
 /** Takes a frame that has come into a place by its port or circuit `ordinal`; -1: by none that may be named. */
 export type Visit = (place: Place, ordinal: number, inside: Tags, barrier?: Barrier) => void;
@@ -108,7 +115,7 @@ export const forwardingOf = (network: Network, options: ForwardingOptions = {}):
     return claims;
   };
   const ordinalOf = (place: ForwarderPlace, at: CircuitAt): number =>
-    place.circuits.findIndex((circuit) => circuit.at === at);
+    place.circuits.findIndex((circuit) => circuit.at.id === at.id);
 
   const arriveInGateway = (group: PortGroup, tags: Tags, visit: Visit): void => {
     const device = entryOf(design.devices, group.device);

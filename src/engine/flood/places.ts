@@ -2,7 +2,7 @@ import type { Member } from '../model/devices.ts';
 import type { Id } from '../model/scalars.ts';
 import type { Tags } from '../network/frame-tags.ts';
 import { isTrunk, untagged } from '../network/frame-tags.ts';
-import type { CircuitAt, Network, Port, PortCircuit, PortGroup } from '../network/network.ts';
+import type { Answer, CircuitAt, Network, Port, PortCircuit, PortGroup } from '../network/network.ts';
 import {
   deviceOfTunnelEnd,
   ends,
@@ -14,6 +14,7 @@ import {
 } from '../network/network.ts';
 import type { ClassSet } from './frame-classes.ts';
 import { classesPassed } from './frame-classes.ts';
+import { rebuiltDevices } from './rebuilt-devices.ts';
 
 /** 0 runs from end a to end b, 1 back. */
 export type Direction = 0 | 1;
@@ -175,56 +176,84 @@ const buildCircuits = (
   return circuits;
 };
 
-/** Every place in which frames of the design can be, with the ways in and out of it. */
-export const placesOf = perNetwork((network): Places => {
+/** The places of one device, the first of which has the index given. */
+const placesIn = (
+  network: Network,
+  id: Id,
+  firstIndex: number,
+  tunnelIndex: ReadonlyMap<Id, number>,
+): readonly Place[] => {
   const { design } = network;
+  const device = entryOf(design.devices, id);
+  const groups = network.portGroupsByDevice.get(id) ?? [];
+  if (device.kind === 'switch') {
+    const ports = groups.map((group) => ({
+      group,
+      port: device.ports[group.port]!,
+      ...outsOf(network, group),
+    }));
+    const ordinalByGroup = new Map(groups.map((group, ordinal) => [group.index, ordinal]));
+    return [{ kind: 'switch', index: firstIndex, device: id, ports, ordinalByGroup }];
+  }
+  if (device.kind === 'host') {
+    const ports = groups.map((group) => ({
+      group,
+      tags: hostTags(network, id, device.ports[group.port]!),
+      ...outsOf(network, group),
+    }));
+    return [{ kind: 'host', index: firstIndex, device: id, ports }];
+  }
+  const places: ForwarderPlace[] = [];
+  for (const forwarder of network.forwardersByDevice.get(id) ?? []) {
+    const entry = entryOf(design.forwarders, forwarder);
+    for (const member of forwardingMembers(device))
+      places.push({
+        kind: 'forwarder',
+        index: firstIndex + places.length,
+        device: id,
+        forwarder,
+        member,
+        circuits: buildCircuits(network, forwarder, member, tunnelIndex),
+        classesToTunnel: classesPassed(entry, 'to-tunnel'),
+        classesFromTunnel: classesPassed(entry, 'from-tunnel'),
+      });
+  }
+  return places;
+};
+
+/** Every place in which frames of the design can be, with the ways in and out of it. */
+export const placesOf = perNetwork((network, earlier?: Answer<Places>): Places => {
   const all: Place[] = [];
-  const byDevice = new Map<Id, Place[]>();
+  const byDevice = new Map<Id, readonly Place[]>();
   const byForwarder = new Map<string, ForwarderPlace>();
-  const tunnelIndex = new Map(network.tunnelIds.map((id, index) => [id, index]));
+  const areElementsSame =
+    earlier?.network.bundles === network.bundles && earlier.network.tunnelIds === network.tunnelIds;
+  const tunnelIndex = areElementsSame
+    ? earlier.value.tunnelIndex
+    : new Map(network.tunnelIds.map((id, index) => [id, index]));
+  const rebuilt = areElementsSame ? rebuiltDevices(earlier.network, network) : undefined;
+  const kept = (id: Id): readonly Place[] | undefined => {
+    if (rebuilt?.has(id) !== false) return undefined;
+    if (earlier!.network.design.devices[id] !== network.design.devices[id]) return undefined;
+    const places = earlier!.value.byDevice.get(id);
+    return places?.[0] === undefined || places[0].index === all.length ? places : undefined;
+  };
   for (const id of network.deviceIds) {
-    const device = entryOf(design.devices, id);
-    const here: Place[] = [];
+    const here = kept(id) ?? placesIn(network, id, all.length, tunnelIndex);
     byDevice.set(id, here);
-    const add = (place: Place): void => {
+    for (const place of here) {
       all.push(place);
-      here.push(place);
-    };
-    const groups = network.portGroupsByDevice.get(id) ?? [];
-    if (device.kind === 'switch') {
-      const ports = groups.map((group) => ({
-        group,
-        port: device.ports[group.port]!,
-        ...outsOf(network, group),
-      }));
-      const ordinalByGroup = new Map(groups.map((group, ordinal) => [group.index, ordinal]));
-      add({ kind: 'switch', index: all.length, device: id, ports, ordinalByGroup });
-    } else if (device.kind === 'host') {
-      const ports = groups.map((group) => ({
-        group,
-        tags: hostTags(network, id, device.ports[group.port]!),
-        ...outsOf(network, group),
-      }));
-      add({ kind: 'host', index: all.length, device: id, ports });
-    } else {
-      for (const forwarder of network.forwardersByDevice.get(id) ?? []) {
-        const entry = entryOf(design.forwarders, forwarder);
-        for (const member of forwardingMembers(device)) {
-          const place: ForwarderPlace = {
-            kind: 'forwarder',
-            index: all.length,
-            device: id,
-            forwarder,
-            member,
-            circuits: buildCircuits(network, forwarder, member, tunnelIndex),
-            classesToTunnel: classesPassed(entry, 'to-tunnel'),
-            classesFromTunnel: classesPassed(entry, 'from-tunnel'),
-          };
-          add(place);
-          byForwarder.set(`${forwarder}@${member}`, place);
-        }
-      }
+      if (place.kind === 'forwarder') byForwarder.set(`${place.forwarder}@${place.member}`, place);
     }
   }
   return { all, byDevice, byForwarder, tunnelIndex };
 });
+
+/** By element and direction (2n along it, 2n + 1 back): the device that a frame crossing it comes to. */
+export const devicesArrivedAt = perNetwork((network): readonly Id[] => [
+  ...network.bundles.flatMap(({ a, b }) => [b.device, a.device]),
+  ...network.tunnelIds.flatMap((id) => {
+    const tunnel = entryOf(network.design.tunnels, id);
+    return [deviceOfTunnelEnd(network, tunnel, 'b'), deviceOfTunnelEnd(network, tunnel, 'a')];
+  }),
+]);

@@ -54,13 +54,13 @@ const compute = (graph: FloodGraph): readonly SegmentNodes[] => {
   });
 };
 
-const known = new WeakMap<FloodGraph, readonly SegmentNodes[]>();
+const known = new WeakMap<object, readonly SegmentNodes[]>();
 
 /** For every segment, in order of letter, the crossings that its frames can make. */
 export const segmentReaches = (graph: FloodGraph): readonly SegmentNodes[] => {
-  const before = known.get(graph);
+  const before = known.get(graph.identity);
   if (before !== undefined) return before;
   const reaches = compute(graph);
-  known.set(graph, reaches);
+  known.set(graph.identity, reaches);
   return reaches;
 };

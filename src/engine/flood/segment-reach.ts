@@ -1,6 +1,7 @@
 import type { Id } from '../model/scalars.ts';
 import { untagged } from '../network/frame-tags.ts';
-import type { Network } from '../network/network.ts';
+import { changesBetween } from '../network/changes.ts';
+import type { Answer, Network } from '../network/network.ts';
 import { entryOf, perNetwork } from '../network/network.ts';
 import type { AttachmentPoint, PlacedPoint } from './attachment-points.ts';
 import { attachmentPoints } from './attachment-points.ts';
@@ -12,8 +13,11 @@ import { floodGraph } from './flood-graph.ts';
 import type { FrameClass } from './frame-classes.ts';
 import { classBit } from './frame-classes.ts';
 import type { Place } from './places.ts';
+import { devicesArrivedAt } from './places.ts';
 import { startsOf, walk } from './reach.ts';
+import { segmentReaches } from './segment-nodes.ts';
 import type { FloodStep } from './storm.ts';
+import { touchedDevices } from './touched-devices.ts';
 
 /** Points whose broadcasts reach the same others and that are reached by the same. */
 export interface PointGroup {
@@ -126,7 +130,7 @@ const reachOf = (
   });
 };
 
-const compute = (graph: FloodGraph, segment: Id): SegmentReach => {
+const compute = (graph: FloodGraph, segment: Id, devicesPast: Set<Id>): SegmentReach => {
   const { network } = graph;
   const { protocols } = entryOf(network.design.segments, segment);
   const frame = protocols?.includes('ipv6') === true && !protocols.includes('ipv4') ? 'ipv6' : 'arp';
@@ -151,7 +155,7 @@ const compute = (graph: FloodGraph, segment: Id): SegmentReach => {
     const targets = missed.map((to) => clusters[groups[to]![0]!]!.first);
     const source = clusters[own[0]!]!.first;
     const endings = isCabled(source)
-      ? findBarriers(graph, segment, classBit(frame), source, targets)
+      ? findBarriers(graph, segment, classBit(frame), source, targets, devicesPast)
       : new Map<AttachmentPoint, Ending>();
     missed.forEach((to, i) => {
       const lonely = [source, targets[i]!].find((placed) => !isCabled(placed));
@@ -187,17 +191,59 @@ const mirrored = (partings: readonly Parting[]): readonly Parting[] => {
 const isCabled = ({ place }: PlacedPoint): boolean =>
   place.kind !== 'host' || place.ports.some(({ group }) => group.bundles.length > 0);
 
-const answers = perNetwork(() => new Map<Id, SegmentReach>());
+interface Known {
+  readonly reach: SegmentReach;
+  /** Devices behind the barriers that were looked past. */
+  readonly devicesPast: ReadonlySet<Id>;
+}
+type Answers = Map<Id, Known>;
+
+/** The answers of an earlier version that no change has anything to do with. */
+const keptAnswers = ({ network: before, value }: Answer<Answers>, now: Network): Answers => {
+  const graph = floodGraph(before);
+  if (graph.identity === floodGraph(now).identity) return new Map(value);
+  const touched = [...touchedDevices(before, now)];
+  const touchedSites = new Set(
+    touched.flatMap((id) => [before, now].flatMap(({ design }) => design.devices[id]?.site ?? [])),
+  );
+  const isTouched = new Set(touched);
+  const isChanged = new Set<Id>();
+  for (const { design } of [before, now])
+    for (const id of touched) {
+      const device = design.devices[id];
+      if (device?.kind === 'host' && device.segment !== undefined) isChanged.add(device.segment);
+    }
+  const meets = devicesArrivedAt(before).map((device) => isTouched.has(device));
+  for (const { id } of changesBetween(before.design, now.design).segments) isChanged.add(id);
+  const kept: Answers = new Map();
+  for (const { segment, nodes } of segmentReaches(graph)) {
+    const known = value.get(segment);
+    if (
+      known !== undefined &&
+      !isChanged.has(segment) &&
+      !Object.keys(entryOf(now.design.segments, segment).sites).some((site) => touchedSites.has(site)) &&
+      !touched.some((device) => known.devicesPast.has(device)) &&
+      !nodes.some((node) => meets[graph.element[node]! * 2 + graph.direction[node]!])
+    )
+      kept.set(segment, known);
+  }
+  return kept;
+};
+
+const answersOf = perNetwork((network, earlier?: Answer<Answers>): Answers =>
+  earlier === undefined ? new Map() : keptAnswers(earlier, network),
+);
 
 /**
  * Who of a segment hears whom: groups of hosts (of a site without hosts: a port in its VLAN), and for each two groups that
  * don't hear each other, one way, where frames end and why.
  */
 export const segmentReach = (network: Network, segment: Id): SegmentReach => {
-  const known = answers(network);
-  const before = known.get(segment);
-  if (before !== undefined) return before;
-  const answer = compute(floodGraph(network), segment);
-  known.set(segment, answer);
-  return answer;
+  const answers = answersOf(network);
+  const before = answers.get(segment);
+  if (before !== undefined) return before.reach;
+  const devicesPast = new Set<Id>();
+  const reach = compute(floodGraph(network), segment, devicesPast);
+  answers.set(segment, { reach, devicesPast });
+  return reach;
 };

@@ -1,11 +1,14 @@
 import type { Entry } from '../model/design.ts';
 import type { Member } from '../model/devices.ts';
+import { sameJson } from '../model/merge-patch.ts';
 import type { Id } from '../model/scalars.ts';
 import type { NoPath, Path } from './association-path.ts';
 import { associationPath, bareTunnelPath, landingOf } from './association-path.ts';
+import type { Changes } from './changes.ts';
+import { agreeApartFrom, agreeIn, changesBetween } from './changes.ts';
 import type { ProposalPart } from './negotiate.ts';
 import { negotiate } from './negotiate.ts';
-import type { Association, End, Network } from './network.ts';
+import type { Association, Device, End, Network } from './network.ts';
 import { deviceOfTunnelEnd, ends, entryOf, forwardingMembers, otherEnd, perNetwork } from './network.ts';
 import type { SelectorGap } from './selectors-cover.ts';
 import { associationEndOf, assignedVxlanPort, selectorsCover } from './selectors-cover.ts';
@@ -186,21 +189,89 @@ const tunnelReasons = (network: Network, id: Id): readonly TunnelReason[] => {
   return reasons;
 };
 
+/**
+ * Whether landings, and what decides whether they speak and in which family, are as before. What is new or gone counts by
+ * the links that name it.
+ */
+const landingsStay = ({ devices, links, transports }: Changes): boolean =>
+  devices.every(
+    ({ before, now }) =>
+      before === undefined ||
+      now === undefined ||
+      (agreeIn(before, now, 'kind', 'mode', 'active') && shutPorts(before) === shutPorts(now)),
+  ) &&
+  links.every(
+    ({ before, now }) =>
+      (before?.kind !== 'landing' && now?.kind !== 'landing') ||
+      agreeApartFrom(before, now, 'name', 'rateUpBps', 'rateDownBps', 'accessOverhead'),
+  ) &&
+  transports.every(
+    ({ before, now }) =>
+      before === undefined || now === undefined || agreeIn(before, now, 'families', 'filters'),
+  );
+
+const shutPorts = ({ ports }: Device): string =>
+  Object.keys(ports)
+    .filter((id) => ports[id]!.shut === true)
+    .sort()
+    .join(' ');
+
+/** States by id, those that stay or come out alike as they were; where all do, the same map. */
+const renewedStates = <R>(
+  ids: readonly Id[],
+  earlier: ReadonlyMap<Id, ComeUp<R>> | undefined,
+  stays: (id: Id) => boolean,
+  reasonsOf: (id: Id) => readonly R[],
+): ReadonlyMap<Id, ComeUp<R>> => {
+  let isSame = earlier?.size === ids.length;
+  const states = new Map<Id, ComeUp<R>>();
+  for (const id of ids) {
+    const old = earlier?.get(id);
+    let state = old;
+    if (old === undefined || !stays(id)) {
+      const fresh = verdict(reasonsOf(id));
+      if (old === undefined || !sameJson(old, fresh)) {
+        state = fresh;
+        isSame = false;
+      }
+    }
+    states.set(id, state!);
+  }
+  return isSame ? earlier! : states;
+};
+
 /** Of every association, whether it can come up as designed. Unknown values are taken to fit. */
-export const associationStates = perNetwork(
-  (network): ReadonlyMap<Id, ComeUp<AssociationReason>> =>
-    new Map(
-      Object.keys(network.design.associations)
-        .sort()
-        .map((id) => [id, verdict(associationReasons(network, id))]),
-    ),
+export const associationStates = perNetwork<ReadonlyMap<Id, ComeUp<AssociationReason>>>(
+  (network, earlier) => {
+    const { associations } = network.design;
+    const before = earlier?.network.design;
+    const areWaysKept = before !== undefined && landingsStay(changesBetween(before, network.design));
+    return renewedStates(
+      Object.keys(associations).sort(),
+      earlier?.value,
+      (id) => areWaysKept && before.associations[id] === associations[id],
+      (id) => associationReasons(network, id),
+    );
+  },
 );
 
 /** Of every tunnel, whether frames can cross it. Unknown values are taken to fit. */
-export const tunnelStates = perNetwork(
-  (network): ReadonlyMap<Id, ComeUp<TunnelReason>> =>
-    new Map(network.tunnelIds.map((id) => [id, verdict(tunnelReasons(network, id))])),
-);
+export const tunnelStates = perNetwork<ReadonlyMap<Id, ComeUp<TunnelReason>>>((network, earlier) => {
+  const { tunnels, associations, endpoints } = network.design;
+  const before = earlier?.network.design;
+  const areWaysKept = before !== undefined && landingsStay(changesBetween(before, network.design));
+  const stays = (id: Id): boolean => {
+    const tunnel = tunnels[id]!;
+    return (
+      areWaysKept &&
+      before.tunnels[id] === tunnel &&
+      ends.every((end) => before.endpoints[tunnel[end].endpoint] === endpoints[tunnel[end].endpoint]) &&
+      (tunnel.association === undefined ||
+        before.associations[tunnel.association] === associations[tunnel.association])
+    );
+  };
+  return renewedStates(network.tunnelIds, earlier?.value, stays, (id) => tunnelReasons(network, id));
+});
 
 /** Whether an association or a tunnel can come up as designed, or all that stands against it. */
 export function canComeUp(

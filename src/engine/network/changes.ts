@@ -46,26 +46,34 @@ export const changesBetween = (before: DesignFacts, now: DesignFacts): Changes =
   return changes;
 };
 
-/** Whether all changed entries are still there and say the same under these names, whatever else they say now. */
-export const sayTheSame = <E extends object>(
-  changes: readonly EntryChange<E>[],
-  ...names: readonly (E extends unknown ? keyof E : never)[]
-): boolean =>
-  changes.every(
-    ({ before, now }) =>
-      before !== undefined &&
-      now !== undefined &&
-      names.every((name) => sameJson((before as never)[name], (now as never)[name])),
-  );
+type Names<E> = readonly (E extends unknown ? keyof E : never)[];
 
-/** Whether all changed entries are still there and say the same except under these names. */
-export const sayTheSameApartFrom = <E extends object>(
-  changes: readonly EntryChange<E>[],
-  ...names: readonly (E extends unknown ? keyof E : never)[]
+/** Whether an entry is in both versions and says the same under these names, whatever else it says now. */
+export const agreeIn = <E extends object>(
+  before: E | undefined,
+  now: E | undefined,
+  ...names: Names<E>
 ): boolean =>
-  changes.every(({ before, now }) => {
-    if (before === undefined || now === undefined) return false;
-    const others = new Set([...Object.keys(before), ...Object.keys(now)]);
-    for (const name of names) others.delete(name as string);
-    return [...others].every((name) => sameJson((before as never)[name], (now as never)[name]));
-  });
+  before === now ||
+  (before !== undefined &&
+    now !== undefined &&
+    names.every((name) => sameJson((before as never)[name], (now as never)[name])));
+
+/** Whether an entry is in both versions and says the same except under these names. */
+export const agreeApartFrom = <E extends object>(
+  before: E | undefined,
+  now: E | undefined,
+  ...names: Names<E>
+): boolean => {
+  if (before === now) return true;
+  if (before === undefined || now === undefined) return false;
+  const others = new Set([...Object.keys(before), ...Object.keys(now)]);
+  for (const name of names) others.delete(name as string);
+  return [...others].every((name) => sameJson((before as never)[name], (now as never)[name]));
+};
+
+/** Whether all changed entries are in both versions and say the same under these names. */
+export const allAgreeIn = <E extends object>(
+  changes: readonly EntryChange<E>[],
+  ...names: Names<E>
+): boolean => changes.every(({ before, now }) => agreeIn(before, now, ...names));

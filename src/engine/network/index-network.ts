@@ -3,7 +3,7 @@ import { collections } from '../model/design.ts';
 import { inRankOrder } from '../model/rank.ts';
 import type { Id } from '../model/scalars.ts';
 import type { Changes, EntryChange } from './changes.ts';
-import { changesBetween, sayTheSame } from './changes.ts';
+import { changesBetween, allAgreeIn } from './changes.ts';
 import type {
   AssociationAt,
   Cable,
@@ -175,7 +175,7 @@ const build = (design: DesignFacts): Network => ({
 
 /** Whether ports form the same logical ports as before, in and out of service as before. */
 const haveTheSamePorts = (changes: readonly EntryChange<Device>[]): boolean =>
-  sayTheSame(changes, 'kind') &&
+  allAgreeIn(changes, 'kind') &&
   changes.every(({ before, now }) => {
     const [old, ports] = [before!.ports, now!.ports];
     if (old === ports) return true;
@@ -196,7 +196,7 @@ const haveTheSamePorts = (changes: readonly EntryChange<Device>[]): boolean =>
 
 /** Whether links lead from where they did to where they did. */
 const joinTheSame = (changes: Changes['links']): boolean =>
-  sayTheSame(changes, 'kind', 'a', 'b', 'device', 'port', 'transport');
+  allAgreeIn(changes, 'kind', 'a', 'b', 'device', 'port', 'transport');
 
 /** The index of a later version: lists whose entries say the same as before in what is listed of them are taken over. */
 const renew = (before: Network, design: DesignFacts): Network => {
@@ -205,15 +205,15 @@ const renew = (before: Network, design: DesignFacts): Network => {
     design,
   );
   const linksJoinTheSame = joinTheSame(links);
-  const endpointsStay = sayTheSame(endpoints, 'device');
+  const endpointsStay = allAgreeIn(endpoints, 'device');
   const tunnelsStay =
-    sayTheSame(tunnels, 'association') &&
+    allAgreeIn(tunnels, 'association') &&
     tunnels.every(({ before: old, now }) => ends.every((end) => old![end].endpoint === now![end].endpoint));
   return {
     ...before,
     design,
-    ...(sayTheSame(devices, 'kind', 'site', 'segment') ? {} : listDevices(design)),
-    ...(linksJoinTheSame && sayTheSame(devices, 'kind') ? {} : listLinks(design)),
+    ...(allAgreeIn(devices, 'kind', 'site', 'segment') ? {} : listDevices(design)),
+    ...(linksJoinTheSame && allAgreeIn(devices, 'kind') ? {} : listLinks(design)),
     ...(endpointsStay ? {} : listEndpoints(design)),
     ...(associations.every(({ before: old, now }) =>
       ends.every((end) => old?.[end].device === now?.[end].device),

@@ -132,6 +132,20 @@ export const perNetwork = <T>(
   };
 };
 
+/** Keeps the last answer about what differs between two versions. */
+export const perPairOfVersions = <T>(
+  compute: (before: Network, now: Network) => T,
+): ((before: Network, now: Network) => T) => {
+  const answers = new WeakMap<Network, { readonly before: Network; readonly value: T }>();
+  return (before, now) => {
+    const known = answers.get(now);
+    if (known?.before === before) return known.value;
+    const value = compute(before, now);
+    answers.set(now, { before, value });
+    return value;
+  };
+};
+
 /** Makes the answers for one network the earlier ones of another, whose design is a later version. */
 export const passOnAnswers = (from: Network, to: Network): void => {
   answersOf.set(to, new Map(answersOf.get(from)));
