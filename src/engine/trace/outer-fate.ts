@@ -1,14 +1,14 @@
 import type { Id } from '../model/scalars.ts';
 import type { End, Network } from '../network/network.ts';
-import { deviceOfTunnelEnd, entryOf, perNetwork } from '../network/network.ts';
+import { deviceOfTunnelEnd, entryOf } from '../network/network.ts';
 import { associationEndOf } from '../network/selectors-cover.ts';
 import type { Fragment } from '../wire/fragments-of.ts';
 import { fragmentsOf } from '../wire/fragments-of.ts';
-import { largestInnerPacket } from '../wire/largest-inner-packet.ts';
 import type { Stack } from '../wire/stack.ts';
 import type { TracedFrame } from './traced-frame.ts';
 import type { Assumption, DropReason, FragmentCause } from './trace.ts';
 import type { TunnelPipe } from './tunnel-pipe.ts';
+import { largestThrough } from './tunnel-pipe.ts';
 
 /** What becomes of an outermost packet that is longer than its pipe. */
 export type OuterFate =
@@ -72,26 +72,6 @@ const outermostDf = (
       'The DF bit of the ESP packet isn’t stated and is taken to be set: what is too large is dropped. Where it is copied or cleared, fragments may leave instead.',
     );
   return { of: 'esp', isSet: outerDf !== 'clear' };
-};
-
-const largestKnown = perNetwork((_network) => new Map<string, number>());
-
-const largestThrough = (
-  network: Network,
-  { pipe, stack, mtuBytes }: OuterPacket,
-  frame: TracedFrame,
-): number => {
-  const known = largestKnown(network);
-  const innerIpVersion = frame.ipVersion ?? 'ipv4';
-  const key = `${mtuBytes} ${innerIpVersion} ${pipe.stackKey}`;
-  const before = known.get(key);
-  if (before !== undefined) return before;
-  // The access overhead is taken from the pipe's MTU already.
-  const bare: Stack = { ...stack, accessOverhead: 'none' };
-  const answer = largestInnerPacket({ transportMtuBytes: mtuBytes, innerIpVersion, stack: bare });
-  const largestBytes = answer.ok ? answer.largestInnerPacketBytes : 0;
-  known.set(key, largestBytes);
-  return largestBytes;
 };
 
 /** What the host hears of a packet that is dropped: nothing, unless its packet can't be cut and the gateway speaks up. */
@@ -165,7 +145,7 @@ export const outerFate = (
       where,
       packetBytes: outer.packetBytes,
       mtuBytes: outer.mtuBytes,
-      largestBytes: largestThrough(network, outer, frame),
+      largestBytes: largestThrough(network, outer.pipe, frame.ipVersion ?? 'ipv4') ?? 0,
       answer: answerTo(network, outer, frame, habit),
       because: isV6 ? 'outer-ipv6' : 'df-set',
       ...(df === undefined ? {} : { df: df.of }),

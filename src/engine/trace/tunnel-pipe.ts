@@ -3,7 +3,9 @@ import { landingOf } from '../network/association-path.ts';
 import type { End, Network } from '../network/network.ts';
 import { entryOf, perNetwork } from '../network/network.ts';
 import { accessOverheadBytes } from '../wire/frame-layers.ts';
-import type { TagCount } from '../wire/stack.ts';
+import type { IpVersion } from '../reference/ip.ts';
+import { largestInnerPacket } from '../wire/largest-inner-packet.ts';
+import type { Stack, TagCount } from '../wire/stack.ts';
 import { bareStack } from '../wire/stack.ts';
 import type { TunnelStack } from '../wire/tunnel-stack.ts';
 import { tunnelStack } from '../wire/tunnel-stack.ts';
@@ -45,4 +47,28 @@ export const tunnelPipe = (
   const key = `${from} ${innerTags} ${id}`;
   if (!known.has(key)) known.set(key, pipeOf(network, id, from, innerTags));
   return known.get(key);
+};
+
+const largestKnown = perNetwork((_network) => new Map<string, number>());
+
+/**
+ * The largest IP packet of a host, in bytes, that a pipe carries whole; 0 where not even the smallest one fits, undefined
+ * where its stack or its MTU isn't known.
+ */
+export const largestThrough = (
+  network: Network,
+  { stack, stackKey, mtuBytes }: TunnelPipe,
+  innerIpVersion: IpVersion,
+): number | undefined => {
+  if (stack === undefined || mtuBytes === undefined) return undefined;
+  const known = largestKnown(network);
+  const key = `${mtuBytes} ${innerIpVersion} ${stackKey}`;
+  const before = known.get(key);
+  if (before !== undefined) return before;
+  // The access overhead is taken from the pipe's MTU already.
+  const bare: Stack = { ...stack, accessOverhead: 'none' };
+  const answer = largestInnerPacket({ transportMtuBytes: mtuBytes, innerIpVersion, stack: bare });
+  const largestBytes = answer.ok ? answer.largestInnerPacketBytes : 0;
+  known.set(key, largestBytes);
+  return largestBytes;
 };
