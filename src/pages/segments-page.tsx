@@ -1,9 +1,10 @@
-import { useMemo } from 'react';
+import { useMemo, useState } from 'react';
 import { useNetwork } from '../canvas/inspector/carried-segments.tsx';
 import { Inspector } from '../canvas/inspector/inspector.tsx';
 import { Button } from '../components/button.tsx';
 import { SelectCell } from '../components/field-cells.tsx';
 import { showToast } from '../components/toast.tsx';
+import { InventoryDialog } from '../features/inventory/inventory-dialog.tsx';
 import { DemandsTable } from '../features/segments/demands-table.tsx';
 import { demandRows } from '../features/segments/demand-rows.ts';
 import { PlacesTable } from '../features/segments/places-table.tsx';
@@ -25,6 +26,7 @@ export function SegmentsPage() {
   const editable = useOpenState((state) => state.editable);
   const { findings } = useChecks();
   const { valueOf, change } = useSearchValues();
+  const [inventory, setInventory] = useState(false);
   usePageTitle(`Segments of ${document.meta.title}`);
 
   const asked = valueOf('segment');
@@ -60,6 +62,7 @@ export function SegmentsPage() {
             </p>
           )}
           <div className="ml-auto flex items-center gap-8">
+            <Button onClick={() => setInventory(true)}>Inventory as tables</Button>
             {addSegment && <Button onClick={addSegment}>Add a segment</Button>}
           </div>
         </div>
@@ -115,6 +118,29 @@ export function SegmentsPage() {
         )}
       </main>
       {selected !== undefined && <Inspector />}
+      {inventory && (
+        <InventoryDialog
+          design={document}
+          onClose={() => setInventory(false)}
+          onBringIn={
+            editable
+              ? (patch, rowCount) => {
+                  const done = open.commit('Bring in an inventory', patch);
+                  if (done.ok) setInventory(false);
+                  showToast(
+                    done.ok
+                      ? {
+                          tone: 'done',
+                          text: rowCount === 1 ? 'One row brought in.' : `${rowCount} rows brought in.`,
+                          action: { label: 'Undo', onSelect: () => open.undo() },
+                        }
+                      : { tone: 'failed', text: done.problems.map(({ expected }) => expected).join('; ') },
+                  );
+                }
+              : undefined
+          }
+        />
+      )}
     </div>
   );
 }
