@@ -1,5 +1,4 @@
 import type { Collection, Design, Entry } from '../model/design.ts';
-import { collections } from '../model/design.ts';
 import type { MergePatch } from '../model/merge-patch.ts';
 import { diffPatch } from '../model/merge-patch.ts';
 import { unusedId } from '../rules/unused-id.ts';
@@ -12,7 +11,6 @@ export interface Draft {
   readonly entries: <C extends Collection>(collection: C) => { readonly [id: string]: Entry<C> };
   readonly add: <C extends Collection>(collection: C, stem: string, entry: Entry<C>) => string;
   readonly set: <C extends Collection>(collection: C, id: string, entry: Entry<C>) => void;
-  readonly remove: (collection: Collection, id: string) => void;
   /** The first of `base`, `base-2` … that nothing in the collection is called. */
   readonly freeName: (collection: Exclude<Collection, 'notes'>, base: string) => string;
   readonly design: () => Design;
@@ -22,30 +20,35 @@ export interface Draft {
 
 /** Starts from a design; ids are unique within their collection, whatever `newId` answers. */
 export const draftOf = (start: Design, newId: NewId): Draft => {
-  const bags = Object.fromEntries(
-    collections.map((collection) => [collection, { ...start[collection] }]),
-  ) as unknown as { [C in Collection]: { [id: string]: Entry<C> } };
-  const design = (): Design => ({ ...start, ...bags });
+  const bags: { [C in Collection]?: { [id: string]: Entry<C> } } = {};
+  // What was handed out as a design stays as it is: caches know a collection by its identity.
+  const own = new Set<Collection>();
+  const bagOf = <C extends Collection>(collection: C): { readonly [id: string]: Entry<C> } =>
+    (bags[collection] ?? start[collection]) as { readonly [id: string]: Entry<C> };
+  const put = <C extends Collection>(collection: C, id: string, entry: Entry<C>): void => {
+    if (!own.has(collection)) Object.assign(bags, { [collection]: { ...bagOf(collection) } });
+    own.add(collection);
+    (bags[collection] as { [id: string]: Entry<C> })[id] = entry;
+  };
+  const design = (): Design => {
+    own.clear();
+    return { ...start, ...bags };
+  };
   return {
-    entries: (collection) => bags[collection],
+    entries: bagOf,
     add: (collection, stem, entry) => {
-      const id = unusedId(bags[collection], newId(stem));
-      (bags[collection] as { [id: string]: typeof entry })[id] = entry;
+      const id = unusedId(bagOf(collection), newId(stem));
+      put(collection, id, entry);
       return id;
     },
-    set: (collection, id, entry) => {
-      (bags[collection] as { [id: string]: typeof entry })[id] = entry;
-    },
-    remove: (collection, id) => {
-      delete bags[collection][id];
-    },
+    set: put,
     freeName: (collection, base) => {
-      const names = new Set(Object.values(bags[collection]).map(({ name }) => name?.trim().toLowerCase()));
+      const names = new Set(Object.values(bagOf(collection)).map(({ name }) => name?.trim().toLowerCase()));
       let name = base;
       for (let n = 2; names.has(name.toLowerCase()); n += 1) name = `${base}-${n}`;
       return name;
     },
     design,
-    patch: () => diffPatch(start, { ...start, ...bags }),
+    patch: () => diffPatch(start, design()),
   };
 };

@@ -1,3 +1,4 @@
+import type { Protocol } from '../model/intent.ts';
 import type { SegmentPlan, StretchForm } from './stretch-form.ts';
 
 /** Two sites that a tunnel joins, by their place in the form. */
@@ -29,8 +30,11 @@ export const joinsOf = (form: StretchForm, segment: SegmentPlan): readonly Join[
 const neighbourProtocols = ['lacp', 'eapol', 'spanning-tree'] as const;
 
 /** Protocols of a segment that no bridge passes on. */
-export const neighbourProtocolsOf = ({ protocols }: SegmentPlan): readonly string[] =>
-  neighbourProtocols.filter((protocol) => protocols.includes(protocol));
+export const neighbourProtocolsOf = ({
+  protocols,
+}: {
+  readonly protocols?: readonly string[] | undefined;
+}): readonly Protocol[] => neighbourProtocols.filter((protocol) => protocols?.includes(protocol) === true);
 
 /** Whether a segment goes through cross-connects: to be filtered, or to carry what bridges keep to themselves. */
 export const isCrossConnected = (segment: SegmentPlan): boolean =>

@@ -44,7 +44,7 @@ describe('any valid form', () => {
         expect(parseDesign(design)).toEqual({ ok: true, value: design });
         expect(told(design).filter((text) => !honest.some((rule) => text.startsWith(rule)))).toEqual([]);
       }),
-      { numRuns: 120 },
+      { numRuns: 60 },
     );
   });
 
@@ -64,7 +64,7 @@ describe('any valid form', () => {
           expect(hosts).toHaveLength(Object.keys(network.design.segments[segment]!.sites).length);
         }
       }),
-      { numRuns: 60 },
+      { numRuns: 30 },
     );
   });
 
@@ -77,7 +77,7 @@ describe('any valid form', () => {
         const after = applyPatch(empty, answer.patch);
         expect(applyPatch(after, inversePatch(empty, answer.patch))).toEqual(empty);
       }),
-      { numRuns: 40 },
+      { numRuns: 20 },
     );
   });
 
@@ -93,7 +93,7 @@ describe('any valid form', () => {
         expect(Object.keys(after.tunnels).length).toBeGreaterThan(Object.keys(before.tunnels).length);
         expect(told(after).filter((text) => !honest.some((rule) => text.startsWith(rule)))).toEqual([]);
       }),
-      { numRuns: 40 },
+      { numRuns: 20 },
     );
   });
 });
