@@ -54,7 +54,10 @@ const isByDesign = ({ code }: Barrier): boolean =>
 
 /** A barrier as the reason of a drop; undefined where it only says that a port is in another VLAN, or is judged elsewhere. */
 export const reasonOf = (barrier: Barrier): DropReason | undefined =>
-  barrier.code === 'tunnel-down' || barrier.code === 'filter' || barrier.code === 'not-joined'
+  barrier.code === 'tunnel-down' ||
+  barrier.code === 'filter' ||
+  barrier.code === 'not-joined' ||
+  barrier.code === 'other-access-vlan'
     ? undefined
     : barrier;
 export const endOf = (barrier: Barrier): End | undefined => {
@@ -180,9 +183,8 @@ const filterAt = (
   return { end: dropped({ code: 'filter', ...at, direction, rule: decision.rule }, true) };
 };
 
-/** A port that only lies in another VLAN is no place where a frame got lost. */
+/** A shut port that only lies in another VLAN is no place where a frame got lost. */
 const isWorthNaming = (place: Place, barrier: Barrier, inside: Tags): boolean => {
-  if (barrier.code === 'other-access-vlan') return false;
   if (barrier.code !== 'port-shut' || place.kind !== 'switch') return true;
   const shut = place.ports.find(({ group }) => group.port === barrier.port);
   return shut !== undefined && switchOut(shut.port, inside) !== undefined;

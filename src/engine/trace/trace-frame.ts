@@ -2,6 +2,7 @@ import type { Design, ElementRef } from '../model/design.ts';
 import type { Id } from '../model/scalars.ts';
 import { indexNetwork } from '../network/index-network.ts';
 import type { Network } from '../network/network.ts';
+import { entryOf } from '../network/network.ts';
 import type { Answer } from '../wire/problem.ts';
 import { crossingGraph } from './crossing-graph.ts';
 import type { KnownFinding } from './explanations.ts';
@@ -14,6 +15,7 @@ import type { Probe, ProbeInput } from './probe.ts';
 import { readProbe } from './probe.ts';
 import { ownCut, sourceHop } from './source-hop.ts';
 import { stormGrowth } from './storm-growth.ts';
+import type { Surroundings } from './told-by.ts';
 import type { Assumption, Trace } from './trace.ts';
 import { traceTree } from './trace-tree.ts';
 import { namesIn } from './trace-words.ts';
@@ -36,6 +38,12 @@ const learnedFor = (
   if (stated !== undefined) return learnedAsStated(network, stated);
   if (!destination.learned) return nothingLearned;
   return learnedOfHost(network, destination.host, packet.kind === 'ip' ? packet.version : 'other');
+};
+
+const segmentOf = ({ design }: Network, { source }: Probe): Pick<Surroundings, 'segment'> => {
+  const device = 'host' in source ? design.devices[source.host] : undefined;
+  const id = device?.kind === 'host' ? device.segment : undefined;
+  return id === undefined ? {} : { segment: { id, protocols: entryOf(design.segments, id).protocols ?? [] } };
 };
 
 /**
@@ -66,10 +74,12 @@ export const traceFrame = (design: Design, input: ProbeInput, options: TraceOpti
   const explains = growth === undefined ? [] : explainStorm(growth.cycle, options.findings);
   const storm = growth === undefined || explains.length === 0 ? growth : { ...growth, explains };
   const names = namesIn(network.design);
-  const association = (tunnel: Id): Id | undefined => network.design.tunnels[tunnel]?.association;
   const { steps, deliveries } = traceTree(source, graph, {
     names,
-    association,
+    around: {
+      association: (tunnel: Id) => network.design.tunnels[tunnel]?.association,
+      ...segmentOf(network, probe),
+    },
     ...(options.findings === undefined ? {} : { findings: options.findings }),
   });
   return {

@@ -6,6 +6,7 @@ import type { KnownFinding } from './explanations.ts';
 import { explainDrop, explainStorm } from './explanations.ts';
 import type { Hop } from './follower.ts';
 import { crossingKey, tagsOf } from './follower.ts';
+import type { Surroundings } from './told-by.ts';
 import type { Trace, TraceStep, Verdict } from './trace.ts';
 import type { Names } from './trace-words.ts';
 import { decisionWords, reasonWords } from './trace-words.ts';
@@ -15,7 +16,7 @@ export const mostRepeatedSteps = 1_000;
 
 interface TreeContext {
   readonly names: Names;
-  readonly association: (tunnel: Id) => Id | undefined;
+  readonly around: Omit<Surroundings, 'lowered'>;
   readonly findings?: readonly KnownFinding[];
 }
 
@@ -30,7 +31,7 @@ interface Open {
 export const traceTree = (
   source: Hop,
   graph: CrossingGraph,
-  { names, association, findings }: TreeContext,
+  { names, around, findings }: TreeContext,
 ): Pick<Trace, 'steps' | 'deliveries'> => {
   const steps: TraceStep[] = [];
   const first = new Map<number, number>();
@@ -44,6 +45,17 @@ export const traceTree = (
       if (at === ancestor) return cycle;
     }
     return undefined;
+  };
+  const loweredOnWay = (parent: number): readonly Id[] => {
+    const devices: Id[] = [];
+    for (
+      let at: number | undefined = parent < 0 ? undefined : parent;
+      at !== undefined;
+      at = steps[at]!.parent
+    )
+      for (const decision of steps[at]!.decisions)
+        if (decision.code === 'hop-limit-lowered') devices.push(decision.device);
+    return devices;
   };
   const cutBefore = (parent: number): number | undefined => {
     for (
@@ -73,7 +85,11 @@ export const traceTree = (
       arrivals.set(end.to.id, [...(arrivals.get(end.to.id) ?? []), index]);
       return arrived(end.to, hop.pieces === undefined ? cutBefore(parent) : index);
     }
-    const explains = end.byDesign ? [] : explainDrop(end.reason, association, findings);
+    const explains = explainDrop(
+      end.reason,
+      { ...around, lowered: loweredOnWay(parent) },
+      { byDesign: end.byDesign, ...(findings === undefined ? {} : { findings }) },
+    );
     return {
       code: 'dropped',
       reason: end.reason,

@@ -90,8 +90,6 @@ export const reasonWords = (names: Names, reason: DropReason): string => {
       return `${names.port(reason.device, reason.port)} is on the member that stands by; it keeps silent`;
     case 'vlan-not-allowed':
       return `${names.port(reason.device, reason.port)} ${reason.direction === 'in' ? 'lets in' : 'lets out'} no ${tagWords(reason.vlan)}`;
-    case 'other-access-vlan':
-      return `${names.port(reason.device, reason.port)} is in VLAN ${reason.has}, not ${reason.vlan}`;
     case 'tag-at-access-port':
       return `${names.port(reason.device, reason.port)} is an access port and drops ${tagWords(reason.vlan)}`;
     case 'no-native-vlan':

@@ -55,7 +55,7 @@ export type Decision = DecisionFact & { readonly words: string };
 
 /** Why a copy of the frame ended. */
 export type DropReason =
-  | Exclude<Barrier, { readonly code: 'tunnel-down' | 'filter' | 'not-joined' }>
+  | Exclude<Barrier, { readonly code: 'tunnel-down' | 'filter' | 'not-joined' | 'other-access-vlan' }>
   | { readonly code: 'nowhere'; readonly device: Id }
   /** The destination is behind the port that the frame came in on. */
   | { readonly code: 'same-port'; readonly device: Id }
