@@ -24,6 +24,7 @@ import { findingItem } from '../features/findings/finding-words.ts';
 import { FindingsList } from '../features/findings/findings-list.tsx';
 import { useFindingDecorations } from '../features/findings/use-finding-decorations.ts';
 import { useFindingFixes } from '../features/findings/use-finding-fixes.ts';
+import { useLoadTab } from '../features/load/use-load-tab.tsx';
 import { createOutlineView } from '../features/outline/outline-view.ts';
 import { Outline } from '../features/outline/outline.tsx';
 import { usePageTitle } from '../lib/page-title.ts';
@@ -127,7 +128,8 @@ function Surface() {
     usualHeightPx: 300,
     panel: <Outline view={outline} />,
   };
-  const tabs = [findingsTab, outlineTab];
+  const loadTab = useLoadTab(valueOf('drawer') === 'load');
+  const tabs = [findingsTab, loadTab, outlineTab];
   const openTab = (tab: string): void => change({ drawer: tab === 'findings' ? '' : tab });
   // The first is open where the address says nothing.
   const active = tabs.find((tab) => tab.value === valueOf('drawer')) ?? findingsTab;
