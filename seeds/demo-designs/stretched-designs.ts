@@ -95,6 +95,7 @@ export function landingStages(): Design {
         },
       ],
       topology: { kind: 'hub', hub: 'ho' },
+      pools: { loopbacks: '10.254.0.0/16', vnis: { from: 20_001, to: 20_999 } },
       encrypted: true,
       domain: 'saltmarsh.example',
       sampleHosts: true,
@@ -103,7 +104,7 @@ export function landingStages(): Design {
   );
 }
 
-const terminals = ['Head office', 'Gullhaven', 'Orrin Point', 'Skerry', 'Marl', 'Tarn', 'Velt', 'Wick'];
+const terminals = ['Fenwater', 'Cold Ness', 'Brack', 'Selsand', 'Marl', 'Tarn', 'Velt', 'Wick'];
 
 /** Berth control of eight terminals, each joined to each; three of them share a second segment. */
 export function meshedTerminals(): Design {
@@ -136,6 +137,7 @@ export function meshedTerminals(): Design {
         },
       ],
       topology: { kind: 'mesh' },
+      pools: { loopbacks: '10.253.0.0/16', vnis: { from: 30_001, to: 30_999 } },
       encrypted: true,
       domain: 'saltmarsh.example',
       sampleHosts: true,

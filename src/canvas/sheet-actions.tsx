@@ -18,7 +18,7 @@ export function SheetActions() {
   const editable = useOpenState((state) => state.editable);
   return (
     <BarContents>
-      <div className="flex shrink-0 items-center gap-4">
+      <div className="flex shrink-0 items-center gap-4 pl-4">
         {editable && <TidyButton />}
         <KeysButton />
         <InspectorButton />

@@ -198,9 +198,22 @@ const foreignNetworks = (context: NumberingContext): readonly Placed[] => {
   ];
 };
 
+/** A segment's subnet that another design names just so is one network in two designs. */
+const isSameNetwork = (x: Placed, y: Placed): boolean => {
+  const other = x.isOwn ? y : x;
+  const own = x.isOwn ? x : y;
+  return (
+    other.holder.by === 'design' &&
+    own.common.startsWith('segment ') &&
+    x.first === y.first &&
+    x.last === y.last
+  );
+};
+
 /**
  * Networks of the design that share addresses with others: subnets of two segments, an endpoint inside a subnet, and either
- * with other designs, reservations and networks in use. In order of address.
+ * with other designs, reservations and networks in use. A subnet that another design has just so is the same network. In
+ * order of address.
  */
 export const networkOverlaps = (
   design: DesignFacts,
@@ -216,7 +229,12 @@ export const networkOverlaps = (
   for (const one of all) {
     open = open.filter((before) => before.family === one.family && before.last >= one.first);
     for (const before of open)
-      if (overlaps(before, one) && (before.isOwn || one.isOwn) && before.common !== one.common)
+      if (
+        overlaps(before, one) &&
+        (before.isOwn || one.isOwn) &&
+        before.common !== one.common &&
+        !isSameNetwork(before, one)
+      )
         found.push({
           a: { network: before.network, holder: before.holder },
           b: { network: one.network, holder: one.holder },

@@ -14,6 +14,7 @@ import {
   type Sheet,
 } from '../../engine/formats/inventory/export-inventory.ts';
 import { importInventory, type Imported } from '../../engine/formats/inventory/import-inventory.ts';
+import { missingColumns } from '../../engine/formats/inventory/match-columns.ts';
 import type { CellProblem } from '../../engine/formats/inventory/read-rows.ts';
 import {
   inventoryNames,
@@ -105,10 +106,10 @@ export function InventoryDialog({ design, onBringIn, onClose }: InventoryDialogP
             {refused.map((problem) => (
               <ErrorNotice key={problem}>{problem}</ErrorNotice>
             ))}
+            {imported !== undefined && <Outcome imported={imported} />}
             {files.map((file, at) => (
               <FileMatch key={`${file.name} ${at}`} file={file} onChange={(next) => change(at, next)} />
             ))}
-            {imported !== undefined && <Outcome imported={imported} />}
           </>
         ) : (
           <TakeOut design={design} />
@@ -173,6 +174,8 @@ function FileMatch({
   readonly onChange: (next: InventoryFile | undefined) => void;
 }) {
   const table = tableNamed(file.table);
+  const matched = Object.keys(file.match).length;
+  const isLacking = missingColumns(table, file.match).length > 0;
   const passedOver = file.heads.filter((_head, at) => !Object.values(file.match).includes(at));
   return (
     <section aria-label={file.name} className="flex flex-col gap-8">
@@ -203,32 +206,36 @@ function FileMatch({
           onChange={(name) => onChange(takenFor(file, name))}
         />
       </CellGrid>
-      <CellGrid columns={3}>
-        {table.columns.map(({ key, head, required }) => (
-          <SelectCell
-            key={key}
-            label={required === true ? `${head} (needed)` : head}
-            value={file.match[key] === undefined ? '' : String(file.match[key])}
-            placeholder="not in the file"
-            error={
-              required === true && file.match[key] === undefined
-                ? `${head} is needed: say which column it is.`
-                : undefined
-            }
-            options={file.heads.map((text, at) => ({
-              value: String(at),
-              label: text === '' ? `Column ${at + 1}` : text,
-            }))}
-            onChange={(at) => onChange(matchedTo(file, key, Number(at)))}
-            onClear={() => onChange(matchedTo(file, key, undefined))}
-          />
-        ))}
-      </CellGrid>
-      {passedOver.length > 0 && (
-        <p className="text-note text-ink-2">
-          Passed over: {passedOver.map((head) => head || 'a column without head').join(', ')}.
-        </p>
-      )}
+      <details open={isLacking} className="flex flex-col">
+        <summary className="mb-8 cursor-pointer text-base text-ink-2">
+          {matched === table.columns.length
+            ? `All ${matched} columns are in the file`
+            : `${matched} of ${table.columns.length} columns are in the file`}
+          {passedOver.length > 0 &&
+            `; passed over: ${passedOver.map((head) => head || 'a column without head').join(', ')}`}
+        </summary>
+        <CellGrid columns={3}>
+          {table.columns.map(({ key, head, required }) => (
+            <SelectCell
+              key={key}
+              label={required === true ? `${head} (needed)` : head}
+              value={file.match[key] === undefined ? '' : String(file.match[key])}
+              placeholder="not in the file"
+              error={
+                required === true && file.match[key] === undefined
+                  ? `${head} is needed: say which column it is.`
+                  : undefined
+              }
+              options={file.heads.map((text, at) => ({
+                value: String(at),
+                label: text === '' ? `Column ${at + 1}` : text,
+              }))}
+              onChange={(at) => onChange(matchedTo(file, key, Number(at)))}
+              onClear={() => onChange(matchedTo(file, key, undefined))}
+            />
+          ))}
+        </CellGrid>
+      </details>
     </section>
   );
 }

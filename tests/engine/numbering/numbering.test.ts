@@ -223,6 +223,18 @@ describe('clashes', () => {
     expect(networkOverlaps(other)).toEqual([]);
   });
 
+  it('a subnet that another design has just so is the same network, one inside it is not', () => {
+    const design = hubDesign(2);
+    const overlapsWith = (network: string) =>
+      networkOverlaps(design, { otherDesigns: [{ name: 'Ferry lights', networks: [network] }] });
+    expect(overlapsWith('10.110.0.0/16')).toEqual([]);
+    expect(overlapsWith('10.110.4.0/24').map(({ b }) => b)).toEqual([
+      { network: '10.110.4.0/24', holder: { by: 'design', name: 'Ferry lights' } },
+      { network: '10.110.4.0/24', holder: { by: 'design', name: 'Ferry lights' } },
+      { network: '10.110.4.0/24', holder: { by: 'design', name: 'Ferry lights' } },
+    ]);
+  });
+
   it('name all that hold a number: elements, other designs, reservations', () => {
     const design = applyPatch(hubDesign(2, { segments: ['a', 'b'] }), {
       tunnels: { 'tn-s0-s2-a': { a: { vni: 10_000 }, b: { vni: 10_000 }, name: 'tn-s0-s1-a' } },
