@@ -58,6 +58,13 @@ export const routes: RouteObject[] = [
                     }),
                   },
                   {
+                    path: 'checks',
+                    ErrorBoundary: PageError,
+                    lazy: async () => ({
+                      Component: (await import('../pages/design-checks-page.tsx')).DesignChecksPage,
+                    }),
+                  },
+                  {
                     path: 'numbering',
                     ErrorBoundary: PageError,
                     lazy: async () => ({

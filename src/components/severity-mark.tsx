@@ -20,9 +20,12 @@ const inks: Readonly<Record<Severity, string>> = {
 export function SeverityShape({
   severity,
   size = 14,
+  ink = inks[severity],
 }: {
   readonly severity: Severity;
   readonly size?: number;
+  /** Class of its colour, where that is not the severity's own. */
+  readonly ink?: string;
 }) {
   return (
     <svg
@@ -30,7 +33,7 @@ export function SeverityShape({
       viewBox="0 0 14 14"
       width={size}
       height={size}
-      className={classNames('shrink-0', inks[severity])}
+      className={classNames('shrink-0', ink)}
     >
       {severity === 'blocking' && (
         <path fill="currentColor" d="M4.1 0h5.8L14 4.1v5.8L9.9 14H4.1L0 9.9V4.1z" />
@@ -54,11 +57,18 @@ export function SeverityShape({
   );
 }
 
-/** Shape and word together; a severity is never told by colour alone. */
-export function SeverityMark({ severity }: { readonly severity: Severity }) {
+/** Shape and word together; a severity is never told by colour alone. Muted where it asks for nothing at the moment. */
+export function SeverityMark({
+  severity,
+  muted = false,
+}: {
+  readonly severity: Severity;
+  readonly muted?: boolean;
+}) {
+  const ink = muted ? 'text-ink-3' : inks[severity];
   return (
-    <span className={classNames('inline-flex items-center gap-6 font-semibold', inks[severity])}>
-      <SeverityShape severity={severity} />
+    <span className={classNames('inline-flex items-center gap-6 font-semibold', ink)}>
+      <SeverityShape severity={severity} ink={ink} />
       {severityWords[severity]}
     </span>
   );

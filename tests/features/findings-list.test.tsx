@@ -19,10 +19,11 @@ const finding = (changes: Partial<FindingItem> & Pick<FindingItem, 'key' | 'numb
   ],
   ...changes,
 });
+const waiver = { id: 'w-1', by: 'Noor Okafor', until: '31 March 2027', reason: 'Agreed with the port' };
 const findings = [
   finding({ key: 'a', number: 1, sentence: 'VNI 10120 at Head office, 10210 at Gullhaven' }),
   finding({ key: 'b', number: 2, severity: 'degrading' }),
-  finding({ key: 'c', number: 3, severity: 'advisory', zone: undefined, waived: true }),
+  finding({ key: 'c', number: 3, severity: 'advisory', zone: undefined, waiver }),
 ];
 
 interface Asked {
@@ -61,7 +62,7 @@ test('a row tells number, severity, sentence, elements and zone', () => {
   expect(row(1)).toHaveAccessibleName(
     '1 Blocking VNI 10120 at Head office, 10210 at Gullhaven tn-ho-gul-120 at B5',
   );
-  expect(row(3)).toHaveAccessibleName('3 Advisory Finding 3 (waived) tn-ho-gul-120');
+  expect(row(3)).toHaveAccessibleName('3 Advisory Finding 3 (waived until 31 March 2027) tn-ho-gul-120');
 });
 
 test('without findings it says so', () => {

@@ -42,7 +42,7 @@ export function DesignBar({ engagementName, workspaceId, summary }: DesignBarPro
             { to: path, label: 'Sheet', end: true },
             { to: `${path}/segments`, label: 'Segments' },
             { to: `${path}/numbering`, label: 'Numbering' },
-            { to: '/checks', label: 'Checks' },
+            { to: `${path}/checks`, label: 'Checks' },
           ]}
         />
       </div>

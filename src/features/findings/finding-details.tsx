@@ -1,18 +1,30 @@
-import { Button } from '../../components/button.tsx';
+import { Link } from 'react-router-dom';
+import { Button, buttonClasses } from '../../components/button.tsx';
 import type { FindingItem } from './finding-item.ts';
 import { previewHandlers } from './preview-handlers.ts';
+import type { WaivingTools } from './waiving-tools.ts';
 
 interface FindingDetailsProps {
   readonly id: string;
   readonly finding: FindingItem;
   readonly canFix: boolean;
+  readonly waiving: WaivingTools | undefined;
+  readonly sheetPath: string | undefined;
   readonly onApplyFix: (fixId: string) => void;
   readonly onPreviewFix: (fixId: string | null) => void;
 }
 
 /** Why it matters, what is seen on site, on what the check rests, and what would cure it. */
-export function FindingDetails({ id, finding, canFix, onApplyFix, onPreviewFix }: FindingDetailsProps) {
-  const { why, seen, sources, severityReason, fixes } = finding;
+export function FindingDetails({
+  id,
+  finding,
+  canFix,
+  waiving,
+  sheetPath,
+  onApplyFix,
+  onPreviewFix,
+}: FindingDetailsProps) {
+  const { why, seen, sources, severityReason, fixes, waiver } = finding;
   return (
     <div
       id={id}
@@ -23,6 +35,11 @@ export function FindingDetails({ id, finding, canFix, onApplyFix, onPreviewFix }
         <Part term="What is seen on site">{seen}</Part>
         {severityReason !== undefined && <Part term="Why this severity">{severityReason}</Part>}
         <Part term="Rests on">{sources.join('; ')}</Part>
+        {waiver !== undefined && (
+          <Part term={`Waived until ${waiver.until}${waiver.by === null ? '' : ` by ${waiver.by}`}`}>
+            {waiver.reason}
+          </Part>
+        )}
       </dl>
       <div>
         <h3 className="text-label text-ink-3">What would cure it</h3>
@@ -53,6 +70,25 @@ export function FindingDetails({ id, finding, canFix, onApplyFix, onPreviewFix }
             </li>
           ))}
         </ul>
+        {(waiving !== undefined || sheetPath !== undefined) && (
+          <div className="mt-14 flex flex-wrap items-center gap-8">
+            {waiving !== undefined && (
+              <Button small onClick={() => waiving.onWaive(finding.key)}>
+                {waiver === undefined ? 'Waive…' : 'Waive anew…'}
+              </Button>
+            )}
+            {waiving !== undefined && waiver !== undefined && (
+              <Button small onClick={() => waiving.onWithdraw(waiver.id)}>
+                Withdraw the waiver
+              </Button>
+            )}
+            {sheetPath !== undefined && (
+              <Link to={sheetPath} className={buttonClasses({ small: true })}>
+                Show on the sheet
+              </Link>
+            )}
+          </div>
+        )}
       </div>
     </div>
   );
@@ -62,7 +98,7 @@ function Part({ term, children }: { readonly term: string; readonly children: st
   return (
     <div>
       <dt className="text-label text-ink-3">{term}</dt>
-      <dd className="text-ink">{children}</dd>
+      <dd className="break-words whitespace-pre-line text-ink">{children}</dd>
     </div>
   );
 }

@@ -7,6 +7,15 @@ export interface FindingFix {
   readonly sentence: string;
 }
 
+/** Who accepted a finding, until when and why. */
+export interface WaiverWords {
+  readonly id: string;
+  readonly by: string | null;
+  /** In words: '31 March 2027'. */
+  readonly until: string;
+  readonly reason: string;
+}
+
 /** A finding as the list shows it. */
 export interface FindingItem {
   readonly key: string;
@@ -27,5 +36,6 @@ export interface FindingItem {
   readonly sources: readonly string[];
   /** Undefined until they have been worked out. */
   readonly fixes: readonly FindingFix[] | undefined;
-  readonly waived?: boolean;
+  /** While it is accepted. */
+  readonly waiver?: WaiverWords;
 }

@@ -5,9 +5,10 @@ import type { FindingItem } from './finding-item.ts';
 export function FindingNumber({
   finding,
 }: {
-  readonly finding: Pick<FindingItem, 'number' | 'severity' | 'waived'>;
+  readonly finding: Pick<FindingItem, 'number' | 'severity' | 'waiver'>;
 }) {
-  const { number, severity, waived = false } = finding;
+  const { number, severity } = finding;
+  const waived = finding.waiver !== undefined;
   const solid = severity === 'blocking' && !waived;
   const ink = waived
     ? 'text-ink-3'

@@ -7,6 +7,7 @@ import { FindingDetails } from './finding-details.tsx';
 import type { FindingItem } from './finding-item.ts';
 import { FindingNumber } from './finding-number.tsx';
 import { previewHandlers } from './preview-handlers.ts';
+import type { WaivingTools } from './waiving-tools.ts';
 
 interface FindingRowProps {
   readonly finding: FindingItem;
@@ -14,6 +15,8 @@ interface FindingRowProps {
   readonly open: boolean;
   readonly tabStop: boolean;
   readonly canFix: boolean;
+  readonly waiving: WaivingTools | undefined;
+  readonly sheetPath: string | undefined;
   readonly onPress: () => void;
   readonly onApplyFix: (fixId: string) => void;
   readonly onPreviewFix: (fixId: string | null) => void;
@@ -25,12 +28,15 @@ export function FindingRow({
   open,
   tabStop,
   canFix,
+  waiving,
+  sheetPath,
   onPress,
   onApplyFix,
   onPreviewFix,
 }: FindingRowProps) {
   const detailsId = useId();
   const firstFix = finding.fixes?.[0];
+  const isWaived = finding.waiver !== undefined;
   return (
     <li
       aria-current={selected || undefined}
@@ -53,10 +59,15 @@ export function FindingRow({
             !selected && 'hover:bg-hover',
           )}
         >
-          <FindingNumber finding={finding} /> <SeverityMark severity={finding.severity} />{' '}
-          <span className="font-medium max-md:order-last max-md:col-span-4">
+          <FindingNumber finding={finding} /> <SeverityMark severity={finding.severity} muted={isWaived} />{' '}
+          <span
+            className={classNames(
+              'max-md:order-last max-md:col-span-4',
+              isWaived ? 'text-ink-2' : 'font-medium',
+            )}
+          >
             {finding.sentence}{' '}
-            {finding.waived === true && <span className="font-normal text-ink-3">(waived)</span>}
+            {isWaived && <span className="text-ink-3">(waived until {finding.waiver?.until})</span>}
           </span>{' '}
           <span className="text-ink-2 max-md:order-last max-md:col-span-4">{finding.elements}</span>{' '}
           <span className="whitespace-nowrap text-ink-2">
@@ -65,7 +76,7 @@ export function FindingRow({
           <Icon name={open ? 'chevron-up' : 'chevron-down'} size={13} />
         </button>
         <div className="flex w-198 shrink-0 items-center pr-12 max-md:hidden">
-          {canFix && firstFix !== undefined && (
+          {canFix && !isWaived && firstFix !== undefined && (
             <Button
               kind="accent"
               small
@@ -85,6 +96,8 @@ export function FindingRow({
           id={detailsId}
           finding={finding}
           canFix={canFix}
+          waiving={waiving}
+          sheetPath={sheetPath}
           onApplyFix={onApplyFix}
           onPreviewFix={onPreviewFix}
         />

@@ -1,11 +1,13 @@
+import type { Waiver } from '../../contract/waivers.ts';
 import type { SheetGeometry } from '../../drawing/geometry.ts';
 import { anchorOf } from '../../drawing/routing/anchors.ts';
 import { zoneOf } from '../../drawing/routing/sheet-frame.ts';
 import type { Design } from '../../engine/model/design.ts';
 import type { Finding, Fix } from '../../engine/rules/finding.ts';
 import { sourceText } from '../../engine/rules/rule-reference.ts';
+import { dayInWords } from '../../lib/format-time.ts';
 import { nameOf } from '../../workspace/operations/name-of.ts';
-import type { FindingItem } from './finding-item.ts';
+import type { FindingItem, WaiverWords } from './finding-item.ts';
 
 // What a row has room for; names beyond it are counted.
 const lettersShown = 22;
@@ -30,6 +32,13 @@ const zoneOfFinding = (geometry: SheetGeometry, finding: Finding): string | unde
   return first === undefined || first === last ? first : `${first}–${last}`;
 };
 
+const waiverWords = ({ id, madeBy, expiresOn, reason }: Waiver): WaiverWords => ({
+  id,
+  by: madeBy,
+  until: dayInWords(expiresOn),
+  reason,
+});
+
 /** A finding in the words of the list; `fixes` undefined while nobody asked for them. */
 export const findingItem = (
   finding: Finding,
@@ -37,6 +46,7 @@ export const findingItem = (
   design: Design,
   geometry: SheetGeometry,
   fixes: readonly Fix[] | undefined,
+  waiver?: Waiver,
 ): FindingItem => {
   const zone = zoneOfFinding(geometry, finding);
   return {
@@ -51,5 +61,6 @@ export const findingItem = (
     seen: finding.seen,
     sources: finding.sources.map(sourceText),
     fixes: fixes?.map(({ id, label, sentence }) => ({ id, label, sentence })),
+    ...(waiver === undefined ? {} : { waiver: waiverWords(waiver) }),
   };
 };

@@ -1,6 +1,7 @@
 import { useRef, useState, type KeyboardEvent, type ReactNode } from 'react';
 import type { FindingItem } from './finding-item.ts';
 import { FindingRow } from './finding-row.tsx';
+import type { WaivingTools } from './waiving-tools.ts';
 
 interface FindingsListProps {
   /** In the order and with the numbers of the sheet's balloons. */
@@ -12,6 +13,12 @@ interface FindingsListProps {
   readonly onApplyFix: (findingKey: string, fixId: string) => void;
   /** While a fix is pointed at or focused; null when it no longer is. */
   readonly onPreviewFix?: (preview: { readonly findingKey: string; readonly fixId: string } | null) => void;
+  /** Given to readers who may waive. */
+  readonly waiving?: WaivingTools;
+  /** Where a finding is seen on the sheet, for lists that stand elsewhere. */
+  readonly sheetPathOf?: (key: string) => string;
+  /** Names the list where there are several. */
+  readonly label?: string;
   /** Said while there is nothing wrong, such as how many checks ran. */
   readonly empty: ReactNode;
 }
@@ -27,6 +34,9 @@ export function FindingsList({
   canFix,
   onApplyFix,
   onPreviewFix,
+  waiving,
+  sheetPathOf,
+  label = 'Findings',
   empty,
 }: FindingsListProps) {
   const list = useRef<HTMLUListElement>(null);
@@ -64,7 +74,7 @@ export function FindingsList({
   return (
     // The rows' buttons take the keys; the list only hears of them.
     // eslint-disable-next-line jsx-a11y/no-noninteractive-element-interactions
-    <ul ref={list} aria-label="Findings" onKeyDown={onKeyDown}>
+    <ul ref={list} aria-label={label} onKeyDown={onKeyDown}>
       {findings.map((finding, at) => (
         <FindingRow
           key={finding.key}
@@ -73,6 +83,8 @@ export function FindingsList({
           open={finding.key === openKey}
           tabStop={at === stopAt}
           canFix={canFix}
+          waiving={waiving}
+          sheetPath={sheetPathOf?.(finding.key)}
           onPress={() => press(finding.key)}
           onApplyFix={(fixId) => onApplyFix(finding.key, fixId)}
           onPreviewFix={(fixId) => onPreviewFix?.(fixId === null ? null : { findingKey: finding.key, fixId })}

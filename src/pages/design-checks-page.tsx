@@ -1,0 +1,20 @@
+import { GeometryProvider } from '../canvas/geometry-context.tsx';
+import { ChecksDesk } from '../features/findings/checks-desk.tsx';
+import { usePageTitle } from '../lib/page-title.ts';
+import { useOpenState } from '../workspace/open-design-context.tsx';
+
+/** /designs/:designId/checks?group=…&severity=…&rule=…&site=…&segment=…&waivers=…&q=…: everything the checks find. */
+export function DesignChecksPage() {
+  usePageTitle(`Checks of ${useOpenState((state) => state.document.meta.title)}`);
+  return (
+    <main
+      id="main"
+      tabIndex={-1}
+      className="min-h-0 flex-1 overflow-y-auto px-28 pb-28 outline-none max-sm:px-14"
+    >
+      <GeometryProvider>
+        <ChecksDesk />
+      </GeometryProvider>
+    </main>
+  );
+}
