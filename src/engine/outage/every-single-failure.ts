@@ -10,7 +10,7 @@ export interface SingleFailure extends Outage {
 }
 
 /** Everything that can fail on its own, in order of collection and id: pairs by their members. Ports fail as their cables and landings do. */
-const elementsOf = ({ design }: Network): readonly ElementRef[] => {
+export const loneElements = ({ design }: Network): readonly ElementRef[] => {
   const all = (collection: 'sites' | 'transports' | 'links' | 'associations' | 'tunnels') =>
     Object.keys(design[collection])
       .sort()
@@ -34,15 +34,17 @@ const elementsOf = ({ design }: Network): readonly ElementRef[] => {
   ];
 };
 
+/** What one of them parts when it fails. */
+export const singleFailure = (network: Network, element: ElementRef): SingleFailure => {
+  const answer = casualtiesOf(network, [element]);
+  if (!answer.ok) throw new Error(`an element of the design can't fail: ${element.collection} ${element.id}`);
+  return { element, ...outageOf(network, [element], answer.casualties) };
+};
+
 /** What every single failure parts, each against the design as it is. Pairs are counted; `outage` lists those of one failure. */
 export const everySingleFailure = (design: DesignFacts): readonly SingleFailure[] => {
   const network = indexNetwork(design);
-  return elementsOf(network).map((element) => {
-    const answer = casualtiesOf(network, [element]);
-    if (!answer.ok)
-      throw new Error(`an element of the design can't fail: ${element.collection} ${element.id}`);
-    return { element, ...outageOf(network, [element], answer.casualties) };
-  });
+  return loneElements(network).map((element) => singleFailure(network, element));
 };
 
 /** The failures that part hosts which are themselves in service, the worst first. */
