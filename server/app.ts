@@ -18,6 +18,7 @@ import { healthRoutes } from './routes/health-routes.ts';
 import { numberingRoutes } from './routes/numbering-routes.ts';
 import { profileRoutes } from './routes/profile-routes.ts';
 import { sessionRoutes } from './routes/session-routes.ts';
+import { sheetExportRoutes } from './routes/sheet-export-routes.ts';
 import { waiverRoutes } from './routes/waiver-routes.ts';
 import type { Context } from './services/context.ts';
 import { createNumberingCache } from './services/numbering.ts';
@@ -71,6 +72,7 @@ export function createApp({
   app.use(sessionRoutes(context, sessions, throttles));
   app.use(engagementRoutes(context));
   app.use(designRoutes(context));
+  app.use(sheetExportRoutes(context));
   app.use(waiverRoutes(context));
   app.use(numberingRoutes(context));
   app.use(profileRoutes(context));

@@ -40,6 +40,8 @@ export const routes = {
   'GET /api/designs/:designId/patches': 'design.read',
   'POST /api/designs/:designId/patches': 'design.edit',
   'GET /api/designs/:designId/thumbnail': 'design.read',
+  'GET /api/designs/:designId/sheet.svg': 'design.read',
+  'GET /api/designs/:designId/sheet.pdf': 'design.read',
   'GET /api/designs/:designId/context': 'design.read',
   'GET /api/designs/:designId/waivers': 'design.read',
   'POST /api/designs/:designId/waivers': 'finding.waive',

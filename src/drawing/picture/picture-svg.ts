@@ -6,16 +6,16 @@ import { paperSizesMm } from './paper-sizes.ts';
 import type { SheetPicture } from './sheet-picture.ts';
 
 /**
- * Not every drawing program knows `paint-order`: it would lay the rim over its letters. So the rim is a text of its own
- * under the text that is read.
+ * Not every drawing program knows `paint-order`: it would lay the rim over its letters. So the rim is an element of its own
+ * under the one that is read.
  */
 const rimApart = (drawn: Shape): readonly Shape[] => {
-  if (drawn.el === 'text' && drawn.attrs['paintOrder'] === 'stroke') {
-    const { paintOrder: _order, stroke, strokeWidth, strokeLinejoin, ...letters } = drawn.attrs;
-    const rim = { stroke, strokeWidth, strokeLinejoin, fill: stroke, 'aria-hidden': 'true' };
+  if (drawn.attrs['paintOrder'] === 'stroke') {
+    const { paintOrder: _order, stroke, strokeWidth, strokeLinejoin, ...inside } = drawn.attrs;
+    const rim = { stroke, strokeWidth, strokeLinejoin, fill: stroke };
     return [
-      { ...drawn, attrs: { ...letters, ...rim } },
-      { ...drawn, attrs: letters },
+      { ...drawn, attrs: { ...inside, ...rim, ...(drawn.el === 'text' ? { 'aria-hidden': 'true' } : {}) } },
+      { ...drawn, attrs: inside },
     ];
   }
   if (drawn.children === undefined) return [drawn];

@@ -111,6 +111,10 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
     }),
   'GET /api/designs/:designId/thumbnail': (browser, { design: id }) =>
     browser.get(`/api/designs/${id}/thumbnail?v=0&theme=paper`),
+  'GET /api/designs/:designId/sheet.svg': (browser, { design: id }) =>
+    browser.get(`/api/designs/${id}/sheet.svg`),
+  'GET /api/designs/:designId/sheet.pdf': (browser, { design: id }) =>
+    browser.get(`/api/designs/${id}/sheet.pdf`),
   'GET /api/designs/:designId/context': (browser, { design: id }) =>
     browser.get(`/api/designs/${id}/context`),
   'GET /api/designs/:designId/waivers': (browser, { design: id }) =>
@@ -176,7 +180,7 @@ describe('the table of roles', () => {
 
   test('lists each route that the server answers, and no other', () => {
     expect(Object.keys(requests).sort()).toEqual(Object.keys(routes).sort());
-    expect(guarded).toHaveLength(18);
+    expect(guarded).toHaveLength(20);
   });
 });
 

@@ -1,0 +1,69 @@
+import type { Decorations } from '#drawing/decorations.ts';
+import { findingsToDecorations } from '#drawing/findings-to-decorations.ts';
+import type { PaperName } from '#drawing/picture/paper-sizes.ts';
+import { pictureSvgText } from '#drawing/picture/picture-svg.ts';
+import { sheetPicture } from '#drawing/picture/sheet-picture.ts';
+import type { Theme } from '#drawing/theme/tokens.ts';
+import type { ViewChoice } from '#drawing/view-layers.ts';
+import { tunnelSegments } from '#engine/flood/tunnel-segments.ts';
+import type { Design } from '#engine/model/design.ts';
+import { tunnelStates } from '#engine/network/can-come-up.ts';
+import { indexNetwork } from '#engine/network/index-network.ts';
+import type { NumberingContext } from '#engine/numbering/numbering-context.ts';
+import { runRules } from '#engine/rules/run-rules.ts';
+import type { WaiverTerms } from '#engine/rules/waived.ts';
+import { applyWaivers } from '#engine/rules/waived.ts';
+import { picturePdf } from './picture-pdf.ts';
+import { embeddedFaces } from './work-sans.ts';
+
+/** One drawing to make, as plain data that a thread can be sent. */
+export interface SheetJob {
+  readonly format: 'svg' | 'pdf';
+  readonly document: Design;
+  readonly look: Theme;
+  readonly view: ViewChoice;
+  readonly addresses: boolean;
+  /** Absent: the sheet's own. */
+  readonly paper?: PaperName;
+  /** Absent: a drawing without findings. */
+  readonly checks?: {
+    readonly numbering: NumberingContext;
+    readonly waivers: readonly WaiverTerms[];
+    readonly today: string;
+  };
+  readonly drawnAt: Date;
+}
+
+function decorationsOf(document: Design, checks: NonNullable<SheetJob['checks']>): Decorations {
+  const findings = runRules(document, checks.numbering);
+  const { covered } = applyWaivers(findings, checks.waivers, checks.today);
+  const waived = new Set(covered.map(({ finding }) => finding.key));
+  const down = [...tunnelStates(indexNetwork(document))].filter(([, state]) => !state.up).map(([id]) => id);
+  return findingsToDecorations(findings, down, undefined, (key) => waived.has(key));
+}
+
+/** Makes one drawing: routing, checks where findings are wanted, and the file. */
+export async function drawSheet(job: SheetJob): Promise<Uint8Array> {
+  const { document, checks } = job;
+  const picture = sheetPicture(document, {
+    look: job.look,
+    tunnelSegments: tunnelSegments(indexNetwork(document)),
+    view: job.view,
+    addresses: job.addresses,
+    ...(checks === undefined ? {} : { decorations: decorationsOf(document, checks) }),
+  });
+  const paper = job.paper ?? picture.sheet;
+  if (job.format === 'svg') {
+    const plain = pictureSvgText(picture, { paper });
+    return new TextEncoder().encode(pictureSvgText(picture, { paper, fonts: embeddedFaces(plain) }));
+  }
+  const { createdBy, identification, revision } = document.meta;
+  return picturePdf(picture, {
+    paper,
+    author: createdBy,
+    subject: [identification, revision === undefined ? undefined : `Rev. ${revision}`]
+      .filter(Boolean)
+      .join(', '),
+    drawnAt: job.drawnAt,
+  });
+}
