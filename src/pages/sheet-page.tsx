@@ -3,6 +3,7 @@ import { useCallback, useEffect, useMemo, useState } from 'react';
 import '../canvas/canvas.css';
 import { DeskCommands } from '../canvas/commands/desk-commands.tsx';
 import { endOf } from '../canvas/connect-ends.ts';
+import { ExtraActionsProvider } from '../canvas/actions/extra-actions.ts';
 import { askToJoin, clearDesk, setInspecting, useDesk } from '../canvas/desk-state.ts';
 import type { DeskTab } from '../canvas/desk-tab.ts';
 import { standingOf } from '../canvas/flow-changes-to-patch.ts';
@@ -27,6 +28,8 @@ import { useFindingFixes } from '../features/findings/use-finding-fixes.ts';
 import { useLoadTab } from '../features/load/use-load-tab.tsx';
 import { createOutlineView } from '../features/outline/outline-view.ts';
 import { Outline } from '../features/outline/outline.tsx';
+import { useTraceFromHere } from '../features/trace/use-trace-from-here.ts';
+import { useTraceTab } from '../features/trace/use-trace-tab.tsx';
 import { usePageTitle } from '../lib/page-title.ts';
 import { useSearchValues } from '../lib/use-search-values.ts';
 import { useChecks } from '../workspace/checks-context.tsx';
@@ -34,12 +37,15 @@ import { useOpenDesign, useOpenState } from '../workspace/open-design-context.ts
 
 /** /designs/:designId: the drawing, with its tray, drawer and inspector. */
 export function SheetPage() {
+  const { actionsOf } = useTraceFromHere();
   useEffect(() => clearDesk, []);
   return (
     <ReactFlowProvider>
       <GeometryProvider>
         <SheetActions />
-        <Surface />
+        <ExtraActionsProvider value={actionsOf}>
+          <Surface />
+        </ExtraActionsProvider>
         <JoinDialog />
       </GeometryProvider>
     </ReactFlowProvider>
@@ -83,6 +89,10 @@ function Surface() {
     },
     [findings, open, settled, view],
   );
+  const showFinding = (key: string): void => {
+    change({ drawer: '' });
+    select(key);
+  };
   const apply = useCallback(
     (findingKey: string, fixId?: string) => {
       const fix = fixes.get(findingKey)?.find((candidate) => fixId === undefined || candidate.id === fixId);
@@ -129,7 +139,8 @@ function Surface() {
     panel: <Outline view={outline} />,
   };
   const loadTab = useLoadTab(valueOf('drawer') === 'load');
-  const tabs = [findingsTab, loadTab, outlineTab];
+  const traceTab = useTraceTab(valueOf('drawer') === 'trace', { onShowFinding: showFinding });
+  const tabs = [findingsTab, traceTab, loadTab, outlineTab];
   const openTab = (tab: string): void => change({ drawer: tab === 'findings' ? '' : tab });
   // The first is open where the address says nothing.
   const active = tabs.find((tab) => tab.value === valueOf('drawer')) ?? findingsTab;
