@@ -34,6 +34,9 @@ const openSheet = async (page: Page, title: string): Promise<void> => {
   await node(page, 'sheet').waitFor();
 };
 
+/** Goes from a design's sheet to another of its pages. */
+const goToPage = (page: Page, name: string) => page.goto(`${new URL(page.url()).pathname}/${name}`);
+
 const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
   ['sign-in', async (page) => void (await page.goto('/'))],
   [
@@ -82,6 +85,43 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
     async (page) => {
       await signInAs(page, 'reviewer');
       await openSheet(page, 'phase 1');
+    },
+  ],
+  [
+    'segments, where they land and their demands',
+    async (page) => {
+      await signInAs(page, 'architect');
+      await openSheet(page, 'with planted faults');
+      await goToPage(page, 'segments');
+      await page
+        .getByRole('row', { name: /Ticketing/ })
+        .first()
+        .click();
+      await page.getByRole('complementary', { name: 'Inspector' }).waitFor();
+    },
+  ],
+  [
+    'numbering with clashes',
+    async (page) => {
+      await signInAs(page, 'architect');
+      await openSheet(page, 'with planted faults');
+      await goToPage(page, 'numbering');
+      await page.getByRole('heading', { name: 'Pools' }).waitFor();
+    },
+  ],
+  [
+    'the inventory as tables',
+    async (page) => {
+      await signInAs(page, 'architect');
+      await openSheet(page, 'phase 1');
+      await goToPage(page, 'segments');
+      await page.getByRole('button', { name: 'Inventory as tables' }).click();
+      await page.getByLabel('CSV files').setInputFiles({
+        name: 'ports.csv',
+        mimeType: 'text/csv',
+        buffer: Buffer.from('Device,Port,MTU\nfw-gul,1,60\n'),
+      });
+      await page.getByRole('table', { name: 'Cells that can’t be taken' }).waitFor();
     },
   ],
   [

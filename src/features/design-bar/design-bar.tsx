@@ -1,7 +1,8 @@
-import { Link } from 'react-router-dom';
-import { BarCell, BarContents, BarNav } from '../../components/bar.tsx';
+import { Link, useLocation, useNavigate } from 'react-router-dom';
+import { BarCell, BarContents, BarNav, type BarDestination } from '../../components/bar.tsx';
 import { Button } from '../../components/button.tsx';
 import { Icon } from '../../components/icon.tsx';
+import { Menu } from '../../components/menu.tsx';
 import { Stamp } from '../../components/stamp.tsx';
 import { Tooltip } from '../../components/tooltip.tsx';
 import type { DesignSummary } from '../../contract/designs.ts';
@@ -21,6 +22,12 @@ export function DesignBar({ engagementName, workspaceId, summary }: DesignBarPro
   const revision = useOpenState((state) => state.document.meta.revision);
   const editable = useOpenState((state) => state.editable);
   const path = designPath(summary.id);
+  const pages: readonly BarDestination[] = [
+    { to: path, label: 'Sheet', end: true },
+    { to: `${path}/segments`, label: 'Segments' },
+    { to: `${path}/numbering`, label: 'Numbering' },
+    { to: `${path}/checks`, label: 'Checks' },
+  ];
   return (
     <BarContents>
       <BarCell label="Engagement" className="max-xl:hidden">
@@ -36,18 +43,30 @@ export function DesignBar({ engagementName, workspaceId, summary }: DesignBarPro
       </BarCell>
       <SaveCell />
       <div className="flex shrink-0 max-md:hidden">
-        <BarNav
-          label="Design"
-          destinations={[
-            { to: path, label: 'Sheet', end: true },
-            { to: `${path}/segments`, label: 'Segments' },
-            { to: `${path}/numbering`, label: 'Numbering' },
-            { to: `${path}/checks`, label: 'Checks' },
-          ]}
-        />
+        <BarNav label="Design" destinations={pages} />
+      </div>
+      <div className="flex shrink-0 items-center pl-8 md:hidden">
+        <PagesMenu pages={pages} />
       </div>
       <div className="ml-auto flex shrink-0 items-center gap-4 pl-8">{editable && <Travel />}</div>
     </BarContents>
+  );
+}
+
+/** The pages where the bar has no room for them side by side. */
+function PagesMenu({ pages }: { readonly pages: readonly BarDestination[] }) {
+  const navigate = useNavigate();
+  const { pathname } = useLocation();
+  return (
+    <Menu
+      align="end"
+      trigger={
+        <Button small icon={<Icon name="chevron-down" size={13} />} className="flex-row-reverse">
+          {pages.find(({ to }) => to === pathname)?.label ?? 'Pages'}
+        </Button>
+      }
+      groups={[{ actions: pages.map(({ to, label }) => ({ label, onSelect: () => void navigate(to) })) }]}
+    />
   );
 }
 
