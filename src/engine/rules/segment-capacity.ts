@@ -1,7 +1,7 @@
-import { tunnelPath } from '../network/association-path.ts';
 import type { Network } from '../network/network.ts';
 import { deviceOfTunnelEnd, ends, perNetwork } from '../network/network.ts';
 import type { TagCount } from '../wire/stack.ts';
+import { tunnelStack } from '../wire/tunnel-stack.ts';
 import { tunnelSegments } from '../flood/tunnel-segments.ts';
 import { segmentsByForwarder, segmentsOfCircuit } from './carried-segments.ts';
 import { keepsTags, tagModeOf } from './tag-mode.ts';
@@ -33,7 +33,7 @@ export const innerTagsOf = (network: Network, tunnel: string, segment: string): 
 };
 
 /** What the tunnels of a segment let through, the narrowest first. */
-export const capacitiesOf = (network: Network): ReadonlyMap<string, readonly Tight[]> => {
+export const capacitiesOf = perNetwork((network): ReadonlyMap<string, readonly Tight[]> => {
   const bySegment = new Map<string, Tight[]>();
   for (const [tunnel, segments] of tunnelSegments(network))
     for (const segment of segments) {
@@ -45,7 +45,7 @@ export const capacitiesOf = (network: Network): ReadonlyMap<string, readonly Tig
     }
   for (const list of bySegment.values()) list.sort((x, y) => x.largestBytes - y.largestBytes);
   return bySegment;
-};
+});
 
 interface Need {
   readonly needBytes: number;
@@ -70,21 +70,9 @@ export const needOf = (network: Network, segment: string): Need | undefined => {
   };
 };
 
-/** True when the gateways cut an oversize packet into fragments instead of dropping it, and the transport lets those pass. */
-export const isFragmented = (network: Network, id: string): boolean => {
-  const tunnel = network.design.tunnels[id]!;
-  const path = tunnelPath(network, id);
-  if (!path.ok || path.family === 6) return false;
-  if (network.design.transports[path.transport]!.filters?.includes('fragments') === true) return false;
-  const association =
-    tunnel.association === undefined ? undefined : network.design.associations[tunnel.association]!;
-  return ends.every((end) => {
-    const inner = tunnel[end].outerDf;
-    if (association === undefined) return inner === 'clear';
-    const outer = association[end].outerDf;
-    return outer === 'clear' || (outer === 'copy' && inner === 'clear');
-  });
-};
+/** True when oversize packets are cut into fragments instead of dropped, whichever end sends them. */
+export const isFragmented = (network: Network, id: string): boolean =>
+  ends.every((end) => tunnelStack(network, id, end, 0)?.isCut === true);
 
 const gatewaysBySegment = perNetwork((network): ReadonlyMap<string, readonly string[]> => {
   const bySegment = new Map<string, string[]>();

@@ -1,13 +1,12 @@
-import { associationEndOf, tunnelFamily } from '../network/selectors-cover.ts';
 import type { Path } from '../network/association-path.ts';
-import { landingOf, tunnelPath } from '../network/association-path.ts';
-import { negotiate } from '../network/negotiate.ts';
-import type { End, Landing, Network } from '../network/network.ts';
+import type { End, Network } from '../network/network.ts';
 import { ends, entryOf, perNetwork } from '../network/network.ts';
-import type { IpVersion } from '../reference/ip.ts';
-import { largestInnerPacket, underlayMtuFor } from '../wire/largest-inner-packet.ts';
-import type { Esp, Stack, TagCount } from '../wire/stack.ts';
-import { bareStack } from '../wire/stack.ts';
+import { associationEndOf } from '../network/selectors-cover.ts';
+import { underlayMtuFor } from '../wire/largest-inner-packet.ts';
+import { largestThrough } from '../wire/largest-through.ts';
+import type { Stack, TagCount } from '../wire/stack.ts';
+import type { TunnelStack } from '../wire/tunnel-stack.ts';
+import { tunnelStack, tunnelStackOn } from '../wire/tunnel-stack.ts';
 
 /** What one end of a tunnel lets through with a given number of tags on the inner frame. */
 export interface EndCapacity {
@@ -19,45 +18,28 @@ export interface EndCapacity {
   readonly stack: Stack;
 }
 
-const ipVersion = (family: 4 | 6): IpVersion => (family === 4 ? 'ipv4' : 'ipv6');
-
-const espOf = (network: Network, id: string, family: 4 | 6, hasNat: boolean): Esp | undefined => {
-  const { association } = entryOf(network.design.tunnels, id);
-  if (association === undefined) return { mode: 'none' };
-  const entry = entryOf(network.design.associations, association);
-  const { esp } = negotiate(entry);
-  if (esp.state !== 'agreed') return undefined;
-  const { encryption, integrity } = esp.proposal;
-  const suite = {
-    transform: encryption,
-    // A combined-mode transform brings its own integrity; one named beside it is not used.
-    ...(integrity === undefined || encryption.startsWith('aes-gcm') || encryption === 'chacha20-poly1305'
-      ? {}
-      : { integrity }),
-    natTraversal: hasNat,
-  };
-  // RFC 7296 section 1.3.1: transport mode only where both ends ask for it, else tunnel mode.
-  return ends.every((end) => entry[end].mode === 'transport')
-    ? { mode: 'transport', ...suite }
-    : { mode: 'tunnel', ...suite, outerIp: ipVersion(family) };
+const endsOnAssociation = (network: Network, id: string): boolean => {
+  const tunnel = entryOf(network.design.tunnels, id);
+  if (tunnel.association === undefined) return true;
+  const association = entryOf(network.design.associations, tunnel.association);
+  return ends.every((end) => associationEndOf(network, tunnel, association, end) !== undefined);
 };
 
-const portMtu = (network: Network, landing: Landing): number =>
-  entryOf(network.design.devices, landing.device).ports[landing.port]?.mtu ?? Infinity;
-
-const answers = perNetwork((_network) => new Map<string, ReturnType<typeof largestInnerPacket>>());
-
-/** Most tunnels of a design are built alike: each stack is searched once. */
-const largestThrough = (
+const narrowerEnd = (
   network: Network,
-  transportMtuBytes: number,
-  stack: Stack,
-): ReturnType<typeof largestInnerPacket> => {
-  const known = answers(network);
-  const key = JSON.stringify([transportMtuBytes, stack]);
-  const answer = known.get(key) ?? largestInnerPacket({ transportMtuBytes, innerIpVersion: 'ipv4', stack });
-  known.set(key, answer);
-  return answer;
+  id: string,
+  stackOf: (end: End) => TunnelStack | undefined,
+): EndCapacity | undefined => {
+  if (!endsOnAssociation(network, id)) return undefined;
+  const capacities = ends.flatMap((end): readonly EndCapacity[] => {
+    const { stack, ownMtuBytes, path } = stackOf(end) ?? {};
+    if (stack === undefined || ownMtuBytes === undefined || path === undefined) return [];
+    if (entryOf(network.design.transports, path.transport).mtu === undefined) return [];
+    const largestBytes = largestThrough(network, stack, ownMtuBytes, 'ipv4');
+    return [{ end, largestBytes, mtuBytes: ownMtuBytes, stack }];
+  });
+  const [a, b] = capacities;
+  return b !== undefined && b.largestBytes < a!.largestBytes ? b : a;
 };
 
 /** What the tunnel would let through on a path, its own or another that it may turn to. */
@@ -66,50 +48,8 @@ export const capacityOnPath = (
   id: string,
   innerTags: TagCount,
   path: Path,
-): EndCapacity | undefined => {
-  const tunnel = entryOf(network.design.tunnels, id);
-  const family = tunnelFamily(network, tunnel);
-  if (!path.ok || family === undefined) return undefined;
-  if (
-    tunnel.association !== undefined &&
-    ends.some(
-      (end) =>
-        associationEndOf(network, tunnel, entryOf(network.design.associations, tunnel.association!), end) ===
-        undefined,
-    )
-  )
-    return undefined;
-  const transportMtuBytes = entryOf(network.design.transports, path.transport).mtu;
-  if (transportMtuBytes === undefined) return undefined;
-  const landings = { a: landingOf(network, path.landingA), b: landingOf(network, path.landingB) };
-  const esp = espOf(
-    network,
-    id,
-    path.family,
-    ends.some((end) => landings[end].nat !== undefined),
-  );
-  if (esp === undefined) return undefined;
-  const capacities = ends.map((end): EndCapacity => {
-    const port = portMtu(network, landings[end]);
-    const stack: Stack = {
-      ...bareStack,
-      innerTags,
-      vxlanOver: ipVersion(family),
-      esp,
-      accessOverhead: landings[end].accessOverhead ?? 'none',
-      ...(Number.isFinite(port) && port >= 576 ? { accessPayloadBytes: port } : {}),
-    };
-    const ownLimit = Math.min(transportMtuBytes, port);
-    const answer = largestThrough(network, ownLimit, stack);
-    return {
-      end,
-      largestBytes: answer.ok ? answer.largestInnerPacketBytes : 0,
-      mtuBytes: answer.ok ? answer.ipMtuBytes : ownLimit,
-      stack,
-    };
-  });
-  return capacities.reduce((least, other) => (other.largestBytes < least.largestBytes ? other : least));
-};
+): EndCapacity | undefined =>
+  narrowerEnd(network, id, (end) => tunnelStackOn(network, id, end, innerTags, path));
 
 const remembered = perNetwork((_network) => new Map<string, EndCapacity | undefined>());
 
@@ -124,7 +64,11 @@ export const tunnelCapacity = (
 ): EndCapacity | undefined => {
   const known = remembered(network);
   const key = `${innerTags} ${id}`;
-  if (!known.has(key)) known.set(key, capacityOnPath(network, id, innerTags, tunnelPath(network, id)));
+  if (!known.has(key))
+    known.set(
+      key,
+      narrowerEnd(network, id, (end) => tunnelStack(network, id, end, innerTags)),
+    );
   return known.get(key);
 };
 

@@ -5,14 +5,15 @@ import type { End as TunnelSide } from '../network/network.ts';
 import { deviceOfTunnelEnd, entryOf, otherEnd } from '../network/network.ts';
 import type { Id } from '../model/scalars.ts';
 import type { ElementRef } from '../model/design.ts';
+import { stackKey } from '../wire/largest-through.ts';
 import type { TagCount } from '../wire/stack.ts';
 import { bareStack } from '../wire/stack.ts';
+import { tunnelStack } from '../wire/tunnel-stack.ts';
 import type { Crossing, End, Following, Hop } from './follower.ts';
 import { dropped, namesOf } from './follower.ts';
 import type { bytesOnWire } from './hop-wire.ts';
 import { outerFate } from './outer-fate.ts';
 import type { HopWire } from './trace.ts';
-import { tunnelPipe } from './tunnel-pipe.ts';
 
 /** What happens on the wire itself, before anybody at its far end looks at the frame. */
 export type Crossed = Omit<Hop, 'onward' | 'stopped' | 'crossing'>;
@@ -101,7 +102,7 @@ const crossTunnel = (following: Following, crossing: Crossing, bytesOf: BytesOf)
   const from: TunnelSide = crossing.direction === 0 ? 'a' : 'b';
   const tunnel = entryOf(network.design.tunnels, ref.id);
   const { reasons } = tunnelStates(network).get(ref.id)!;
-  const pipe = tunnelPipe(network, ref.id, from, tagCount(crossing));
+  const pipe = tunnelStack(network, ref.id, from, tagCount(crossing));
   const elements: ElementRef[] = [ref];
   if (tunnel.association !== undefined) elements.push({ collection: 'associations', id: tunnel.association });
   if (pipe !== undefined) {
@@ -115,7 +116,7 @@ const crossTunnel = (following: Following, crossing: Crossing, bytesOf: BytesOf)
     return { ...base, facts: [], end: atSender ?? dropped({ code: 'tunnel-down', tunnel: ref.id, reasons }) };
 
   const { stack } = pipe;
-  const bytes = stack === undefined ? undefined : bytesOf(pipe.stackKey, stack);
+  const bytes = stack === undefined ? undefined : bytesOf(stackKey(stack), stack);
   const { transport } = pipe.path;
   if (bytes === undefined)
     assume(

@@ -4,11 +4,12 @@ import { deviceOfTunnelEnd, entryOf } from '../network/network.ts';
 import { associationEndOf } from '../network/selectors-cover.ts';
 import type { Fragment } from '../wire/fragments-of.ts';
 import { fragmentsOf } from '../wire/fragments-of.ts';
+import { largestThrough } from '../wire/largest-through.ts';
 import type { Stack } from '../wire/stack.ts';
+import type { TunnelStack } from '../wire/tunnel-stack.ts';
+import { mindsInnerDf } from '../wire/tunnel-stack.ts';
 import type { TracedFrame } from './traced-frame.ts';
 import type { Assumption, DropReason, FragmentCause } from './trace.ts';
-import type { TunnelPipe } from './tunnel-pipe.ts';
-import { largestThrough } from './tunnel-pipe.ts';
 
 /** What becomes of an outermost packet that is longer than its pipe. */
 export type OuterFate =
@@ -27,7 +28,7 @@ export interface OuterPacket {
   readonly packetBytes: number;
   readonly outerIpVersion: 'ipv4' | 'ipv6';
   readonly mtuBytes: number;
-  readonly pipe: TunnelPipe;
+  readonly pipe: TunnelStack;
 }
 
 type Assume = (code: Assumption['code'], element: Assumption['element'], words: string) => void;
@@ -109,9 +110,13 @@ export const outerFate = (
   const where = outer.pipe.limitedBy;
   const isV6 = outer.outerIpVersion === 'ipv6';
   const df = isV6 ? undefined : outermostDf(network, outer, frame, assume);
+  const mindsHost =
+    !isV6 && df?.isSet === false && frame.ipVersion !== undefined && frame.mayNotBeCut
+      ? mindsInnerDf(habit, where)
+      : false;
   const because: FragmentCause | undefined = isV6
     ? undefined
-    : df?.isSet === false
+    : df?.isSet === false && !mindsHost
       ? 'df-clear'
       : settings?.ignoreDf === true
         ? 'ignore-df'
@@ -145,10 +150,10 @@ export const outerFate = (
       where,
       packetBytes: outer.packetBytes,
       mtuBytes: outer.mtuBytes,
-      largestBytes: largestThrough(network, outer.pipe, frame.ipVersion ?? 'ipv4') ?? 0,
+      largestBytes: largestThrough(network, outer.stack, outer.mtuBytes, frame.ipVersion ?? 'ipv4'),
       answer: answerTo(network, outer, frame, habit),
       because: isV6 ? 'outer-ipv6' : 'df-set',
-      ...(df === undefined ? {} : { df: df.of }),
+      ...(df === undefined ? {} : { df: mindsHost ? ('host' as const) : df.of }),
     },
   };
 };

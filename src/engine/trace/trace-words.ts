@@ -68,12 +68,14 @@ export const namesIn = (design: DesignFacts): Names => {
   };
 };
 
+const dfOwners = { esp: 'ESP', vxlan: 'VXLAN', host: 'host’s' } as const;
+
 const oversizeWords = (names: Names, reason: Extract<DropReason, { readonly code: 'oversize' }>): string => {
   const { packetBytes, mtuBytes, largestBytes, where, answer, because, df } = reason;
   const rule =
     because === 'outer-ipv6'
       ? 'the outermost packet is IPv6, which nobody cuts underway'
-      : `the DF bit of the ${df === 'esp' ? 'ESP' : 'VXLAN'} packet forbids to cut it`;
+      : `the DF bit of the ${dfOwners[df ?? 'vxlan']} packet forbids to cut it`;
   const told =
     answer === 'icmp' ? `the sender is told by ICMP that ${largestBytes} would do` : 'nobody is told';
   return `${packetBytes} bytes don’t fit the ${mtuBytes} ${where === 'gateway' ? `at the WAN port of ${names.device(reason.device)}` : 'of the way there'}: ${rule}, and ${told}; ${largestBytes === 0 ? 'no packet would fit' : `a host’s packets of up to ${largestBytes} bytes would`}`;

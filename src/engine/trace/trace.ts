@@ -110,8 +110,8 @@ export type DropReason =
       /** What the sender hears of it. */
       readonly answer: 'none' | 'icmp';
       readonly because: 'outer-ipv6' | 'df-set';
-      /** Whose DF it is. */
-      readonly df?: 'esp' | 'vxlan';
+      /** Whose DF it is: of the packet that ESP or VXLAN makes, or of the host's own, which some gateways mind. */
+      readonly df?: 'esp' | 'vxlan' | 'host';
     }
   /** Longer than a port of layer 2 carries; nobody answers. */
   | {

@@ -6,13 +6,13 @@ import { STANDARD_PAYLOAD_BYTES } from '../reference/ethernet.ts';
 import { ICMP_ECHO_HEADER_BYTES, IP_HEADER_BYTES, type IpVersion } from '../reference/ip.ts';
 import { TCP_HEADER_BYTES } from '../reference/tcp.ts';
 import { underlayMtuFor } from '../wire/largest-inner-packet.ts';
+import { largestThrough } from '../wire/largest-through.ts';
 import { bareStack, type TagCount } from '../wire/stack.ts';
+import { tunnelStack, type TunnelStack } from '../wire/tunnel-stack.ts';
 import { deviceAt } from './device-at.ts';
 import type { ProbeInput } from './probe.ts';
 import type { Trace, TraceStep } from './trace.ts';
 import { traceFrame } from './trace-frame.ts';
-import type { TunnelPipe } from './tunnel-pipe.ts';
-import { largestThrough, tunnelPipe } from './tunnel-pipe.ts';
 
 /** Which packets go whole all the way to whoever a probe is for. Sizes in bytes. */
 export interface WhatFits {
@@ -54,9 +54,9 @@ const stepsToDeliveries = ({ steps, deliveries }: Trace): readonly TraceStep[] =
   return steps.filter(({ index }) => wanted.has(index));
 };
 
-const pipeOf = (network: Network, { crossing, tags }: TraceStep): TunnelPipe | undefined =>
+const pipeOf = (network: Network, { crossing, tags }: TraceStep): TunnelStack | undefined =>
   crossing?.collection === 'tunnels'
-    ? tunnelPipe(network, crossing.id, crossing.direction === 'a-to-b' ? 'a' : 'b', tags.length as TagCount)
+    ? tunnelStack(network, crossing.id, crossing.direction === 'a-to-b' ? 'a' : 'b', tags.length as TagCount)
     : undefined;
 
 /**
@@ -81,9 +81,9 @@ export const whatFits = (design: Design, input: ProbeInput): WhatFits | undefine
     const limit =
       step.crossing.collection === 'links'
         ? step.wire?.mtuBytes
-        : pipe === undefined
+        : pipe?.stack === undefined || pipe.mtuBytes === undefined
           ? undefined
-          : largestThrough(network, pipe, version);
+          : largestThrough(network, pipe.stack, pipe.mtuBytes, version);
     if (limit !== undefined && (largestBytes === undefined || limit < largestBytes)) {
       largestBytes = limit;
       limitedBy = step.elements[0];

@@ -4,7 +4,7 @@ import type { Path } from '../network/association-path.ts';
 import { landingOf, tunnelPath } from '../network/association-path.ts';
 import { negotiate } from '../network/negotiate.ts';
 import type { End, Network } from '../network/network.ts';
-import { deviceOfTunnelEnd, ends, entryOf, otherEnd } from '../network/network.ts';
+import { deviceOfTunnelEnd, ends, entryOf, otherEnd, perNetwork } from '../network/network.ts';
 import { associationEndOf, tunnelFamily } from '../network/selectors-cover.ts';
 import type { IpVersion } from '../reference/ip.ts';
 import { ipMtuOf } from './largest-inner-packet.ts';
@@ -24,7 +24,14 @@ export interface TunnelStack {
   readonly stack?: Stack;
   /** Largest outermost packet; absent where no MTU on the way is known. */
   readonly mtuBytes?: number;
-  /** True where longer packets are cut instead of dropped. A DF bit that isn't stated is taken to be set. */
+  /** The same as far as the sending end's own access and the transport go; absent where neither is known. */
+  readonly ownMtuBytes?: number;
+  /** The sending gateway at its own WAN port, or a router underway. */
+  readonly limitedBy: 'gateway' | 'underway';
+  /**
+   * True where longer packets are cut instead of dropped. A DF bit that isn't stated is taken to be set, and so is that of
+   * the hosts' own packets, as TCP sends them.
+   */
   readonly isCut: boolean;
   readonly missing: readonly Missing[];
 }
@@ -54,8 +61,23 @@ const espOf = (
     : { mode: 'tunnel', ...suite, outerIp };
 };
 
-/** Whether the gateway at this end cuts outermost packets that are too long. RFC 4301 section 8.1: DF is copied, set or cleared. */
-const cuts = (network: Network, id: Id, from: End, stack: Stack, transport: Id): boolean => {
+/**
+ * Whether a gateway minds the DF of the packet inside though the one outside has it clear: one that answers its sender has
+ * looked, and drops it first. Seen of one kernel's VXLAN driver; of a limit underway it knows nothing.
+ */
+export const mindsInnerDf = (
+  habit: Network['design']['profiles'][string]['oversizeDf'],
+  limitedBy: TunnelStack['limitedBy'],
+): boolean => habit === 'icmp' && limitedBy === 'gateway';
+
+/** Whether outermost packets from this end that are too long are cut. RFC 4301 section 8.1: DF is copied, set or cleared. */
+const cuts = (
+  network: Network,
+  id: Id,
+  from: End,
+  stack: Stack,
+  { transport, limitedBy }: { readonly transport: Id } & Pick<TunnelStack, 'limitedBy'>,
+): boolean => {
   const { design } = network;
   // RFC 8200 section 4.5: only the source cuts IPv6, and RFC 7348 section 4.3 has a tunnel endpoint cut nothing.
   if (outermostIpVersion(stack, 'ipv4') === 'ipv6') return false;
@@ -63,8 +85,10 @@ const cuts = (network: Network, id: Id, from: End, stack: Stack, transport: Id):
   const tunnel = entryOf(design.tunnels, id);
   const device = entryOf(design.devices, deviceOfTunnelEnd(network, tunnel, from));
   if (device.settings?.ignoreDf === true) return true;
-  if (device.profile !== undefined && entryOf(design.profiles, device.profile).oversizeDf === 'fragment')
-    return true;
+  const habit =
+    device.profile === undefined ? undefined : entryOf(design.profiles, device.profile).oversizeDf;
+  if (habit === 'fragment') return true;
+  if (mindsInnerDf(habit, limitedBy)) return false;
   const { outerDf } = tunnel[from];
   if (tunnel.association === undefined || stack.esp.mode !== 'tunnel') return outerDf === 'clear';
   const association = entryOf(design.associations, tunnel.association);
@@ -72,19 +96,16 @@ const cuts = (network: Network, id: Id, from: End, stack: Stack, transport: Id):
   return own === 'clear' || (own === 'copy' && outerDf === 'clear');
 };
 
-/**
- * How a tunnel carries what its end `from` sends with so many tags on the frame inside; undefined where no transport joins
- * its ends. What isn't known is named, never filled in.
- */
-export const tunnelStack = (
+/** The same as `tunnelStack` on another path that the tunnel may turn to. */
+export const tunnelStackOn = (
   network: Network,
   id: Id,
   from: End,
   innerTags: TagCount,
+  path: Path,
 ): TunnelStack | undefined => {
   const { design } = network;
   const tunnel = entryOf(design.tunnels, id);
-  const path = tunnelPath(network, id);
   if (!path.ok) return undefined;
   const landings = { a: landingOf(network, path.landingA), b: landingOf(network, path.landingB) };
   const missing: Missing[] = [];
@@ -114,37 +135,58 @@ export const tunnelStack = (
         });
   const portMtu = (end: End): number | undefined =>
     entryOf(design.devices, landings[end].device).ports[landings[end].port]?.mtu;
-  const limitAt = (end: End, limits: readonly (number | undefined)[]): number => {
+  const accessOf = (end: End): Stack => {
     const port = portMtu(end);
-    const access: Stack = {
+    return {
       ...bareStack,
       accessOverhead: landings[end].accessOverhead ?? 'none',
       ...(port !== undefined && port >= LEAST_ACCESS_PAYLOAD_BYTES ? { accessPayloadBytes: port } : {}),
     };
+  };
+  const limitAt = (end: End, limits: readonly (number | undefined)[]): number => {
+    const access = accessOf(end);
     return ipMtuOf(Math.min(...limits.filter((limit) => limit !== undefined)), access).ipMtuBytes;
   };
   const transportMtu = entryOf(design.transports, path.transport).mtu;
   if (transportMtu === undefined)
     missing.push({ ref: { collection: 'transports', id: path.transport }, path: ['mtu'] });
-  const mtuBytes = Math.min(
-    limitAt(from, [portMtu(from), transportMtu]),
-    limitAt(otherEnd(from), [portMtu(otherEnd(from))]),
-  );
+  const ownMtuBytes = limitAt(from, [portMtu(from), transportMtu]);
+  const mtuBytes = Math.min(ownMtuBytes, limitAt(otherEnd(from), [portMtu(otherEnd(from))]));
+  const limitedBy = limitAt(from, [portMtu(from)]) <= mtuBytes ? 'gateway' : 'underway';
   const stack: Stack | undefined =
     esp === undefined || family === undefined
       ? undefined
       : {
-          ...bareStack,
+          ...accessOf(from),
           innerTags,
           vxlanOver: ipVersion(family),
           esp,
-          accessOverhead: landings[from].accessOverhead ?? 'none',
         };
   return {
     path,
     missing,
-    isCut: stack !== undefined && cuts(network, id, from, stack, path.transport),
+    limitedBy,
+    isCut: stack !== undefined && cuts(network, id, from, stack, { transport: path.transport, limitedBy }),
     ...(stack === undefined ? {} : { stack }),
     ...(Number.isFinite(mtuBytes) ? { mtuBytes } : {}),
+    ...(Number.isFinite(ownMtuBytes) ? { ownMtuBytes } : {}),
   };
+};
+
+const remembered = perNetwork((_network) => new Map<string, TunnelStack | undefined>());
+
+/**
+ * How a tunnel carries what its end `from` sends with so many tags on the frame inside; undefined where no transport joins
+ * its ends. What isn't known is named, never filled in.
+ */
+export const tunnelStack = (
+  network: Network,
+  id: Id,
+  from: End,
+  innerTags: TagCount,
+): TunnelStack | undefined => {
+  const known = remembered(network);
+  const key = `${from} ${innerTags} ${id}`;
+  if (!known.has(key)) known.set(key, tunnelStackOn(network, id, from, innerTags, tunnelPath(network, id)));
+  return known.get(key);
 };

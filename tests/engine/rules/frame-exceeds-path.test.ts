@@ -135,6 +135,32 @@ testRule(frameExceedsPath, {
         },
       ],
     },
+    'outer packets that may be fragmented, by gateways that mind the DF of the packet inside first': {
+      design: changed(pairDesign(), mtu(1500), {
+        associations: { 'as-s0-s1': { a: { outerDf: 'clear' }, b: { outerDf: 'clear' } } },
+        profiles: { make: { name: 'Make', oversizeDf: 'icmp' } },
+        devices: { 'fw-s0': { profile: 'make' }, 'fw-s1': { profile: 'make' } },
+      }),
+      findings: [
+        {
+          sentence: 'Segment A needs 1500-byte packets, tn-s0-s1-a takes 1396',
+          severity: 'blocking',
+          fixes: ['Lower Segment A to 1396'],
+        },
+      ],
+    },
+    'gateways set to ignore DF, as a milder fault': {
+      design: changed(pairDesign(), mtu(1500), {
+        devices: { 'fw-s0': { settings: { ignoreDf: true } }, 'fw-s1': { settings: { ignoreDf: true } } },
+      }),
+      findings: [
+        {
+          sentence: 'Segment A needs 1500-byte packets, tn-s0-s1-a takes 1396',
+          severity: 'degrading',
+          fixes: ['Lower Segment A to 1396'],
+        },
+      ],
+    },
     'a gateway whose MTU is larger than what fits': {
       design: changed(pairDesign(), {
         forwarders: { 'br-s0-a': { gateway: { addresses: ['10.110.0.1/16'], mtu: 1500 } } },

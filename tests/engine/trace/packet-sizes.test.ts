@@ -100,6 +100,19 @@ describe('a packet that is too large for the tunnel', () => {
     }
   });
 
+  it('is dropped by the host’s own DF, though the outer one is clear, where the gateway answers the host', () => {
+    const design = changed(pairDesign(), espDf('clear'), profile('icmp'));
+    expect(reasonsOf(follow(design, large))).toMatchObject([
+      { code: 'oversize', because: 'df-set', df: 'host', answer: 'icmp', largestBytes: 1396 },
+    ]);
+    expect(follow(design, large).words).toContain('host’s packet forbids');
+    const mayBeCut = packetTo('h-s1-a', 1500, { dontFragment: false });
+    expect(verdictsOf(follow(design, mayBeCut))).toMatchObject([cut]);
+    // Of a limit underway the gateway knows nothing: the router there cuts what is marked as free to cut.
+    const narrow = changed(design, { transports: { coast: { mtu: 1480 } } });
+    expect(verdictsOf(follow(narrow, large))).toMatchObject([{ code: 'fragmented' }]);
+  });
+
   it('is dropped by the DF that rules: of ESP, or through ESP of VXLAN, or through both of the host', () => {
     const reason = (host: boolean, ...patches: readonly MergePatch[]) =>
       reasonsOf(
