@@ -1,8 +1,10 @@
 import type { Entry } from '../model/design.ts';
 import { inRankOrder } from '../model/rank.ts';
 import type { Id } from '../model/scalars.ts';
-import type { End, Landing, Network } from './network.ts';
-import { deviceOfTunnelEnd, entryOf, forwardingMembers } from './network.ts';
+import type { Changes } from './changes.ts';
+import { agreeApartFrom, agreeIn, changesBetween } from './changes.ts';
+import type { Answer, Device, End, Landing, Network } from './network.ts';
+import { deviceOfTunnelEnd, entryOf, forwardingMembers, perNetwork, perObject } from './network.ts';
 
 export type Family = 4 | 6;
 
@@ -114,10 +116,51 @@ const pathBetween = (
   return { ok: false, reason: { code: 'no-common-transport', a: transports(atA), b: transports(atB) } };
 };
 
+const shutPorts = perObject(({ ports }: Device): string =>
+  Object.keys(ports)
+    .filter((id) => ports[id]!.shut === true)
+    .sort()
+    .join(' '),
+);
+
+/**
+ * Whether landings, and what decides whether they speak and in which family, are as before. What is new or gone counts by
+ * the links that name it.
+ */
+export const landingsStay = ({ devices, links, transports }: Changes): boolean =>
+  devices.every(
+    ({ before, now }) =>
+      before === undefined ||
+      now === undefined ||
+      (agreeIn(before, now, 'kind', 'mode', 'active') && shutPorts(before) === shutPorts(now)),
+  ) &&
+  links.every(
+    ({ before, now }) =>
+      (before?.kind !== 'landing' && now?.kind !== 'landing') ||
+      agreeApartFrom(before, now, 'name', 'rateUpBps', 'rateDownBps', 'accessOverhead'),
+  ) &&
+  transports.every(
+    ({ before, now }) =>
+      before === undefined || now === undefined || agreeIn(before, now, 'families', 'filters'),
+  );
+
+const associationPaths = perNetwork((network, earlier?: Answer<Map<Id, Path>>): Map<Id, Path> => {
+  if (earlier === undefined) return new Map();
+  const changes = changesBetween(earlier.network.design, network.design);
+  const kept = landingsStay(changes) ? new Map(earlier.value) : new Map<Id, Path>();
+  for (const { id } of changes.associations) kept.delete(id);
+  return kept;
+});
+
 /** Over which landings an association runs: the first pair, in the order of end a and then of end b, that shares a transport and an address family. */
 export const associationPath = (network: Network, id: Id): Path => {
+  const paths = associationPaths(network);
+  const known = paths.get(id);
+  if (known !== undefined) return known;
   const { a, b } = entryOf(network.design.associations, id);
-  return pathBetween(network, a, b);
+  const path = pathBetween(network, a, b);
+  paths.set(id, path);
+  return path;
 };
 
 /** Over which landings a tunnel outside IPsec runs. */

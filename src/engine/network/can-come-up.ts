@@ -3,12 +3,11 @@ import type { Member } from '../model/devices.ts';
 import { sameJson } from '../model/merge-patch.ts';
 import type { Id } from '../model/scalars.ts';
 import type { NoPath, Path } from './association-path.ts';
-import { associationPath, bareTunnelPath, landingOf } from './association-path.ts';
-import type { Changes } from './changes.ts';
-import { agreeApartFrom, agreeIn, changesBetween } from './changes.ts';
+import { associationPath, bareTunnelPath, landingOf, landingsStay } from './association-path.ts';
+import { changesBetween } from './changes.ts';
 import type { ProposalPart } from './negotiate.ts';
 import { negotiate } from './negotiate.ts';
-import type { Association, Device, End, Network } from './network.ts';
+import type { Association, End, Network } from './network.ts';
 import { deviceOfTunnelEnd, ends, entryOf, forwardingMembers, otherEnd, perNetwork } from './network.ts';
 import type { SelectorGap } from './selectors-cover.ts';
 import { associationEndOf, assignedVxlanPort, selectorsCover } from './selectors-cover.ts';
@@ -188,33 +187,6 @@ const tunnelReasons = (network: Network, id: Id): readonly TunnelReason[] => {
   );
   return reasons;
 };
-
-/**
- * Whether landings, and what decides whether they speak and in which family, are as before. What is new or gone counts by
- * the links that name it.
- */
-const landingsStay = ({ devices, links, transports }: Changes): boolean =>
-  devices.every(
-    ({ before, now }) =>
-      before === undefined ||
-      now === undefined ||
-      (agreeIn(before, now, 'kind', 'mode', 'active') && shutPorts(before) === shutPorts(now)),
-  ) &&
-  links.every(
-    ({ before, now }) =>
-      (before?.kind !== 'landing' && now?.kind !== 'landing') ||
-      agreeApartFrom(before, now, 'name', 'rateUpBps', 'rateDownBps', 'accessOverhead'),
-  ) &&
-  transports.every(
-    ({ before, now }) =>
-      before === undefined || now === undefined || agreeIn(before, now, 'families', 'filters'),
-  );
-
-const shutPorts = ({ ports }: Device): string =>
-  Object.keys(ports)
-    .filter((id) => ports[id]!.shut === true)
-    .sort()
-    .join(' ');
 
 /** States by id, those that stay or come out alike as they were; where all do, the same map. */
 const renewedStates = <R>(

@@ -1,6 +1,7 @@
 import { inRankOrder } from '../model/rank.ts';
 import type { Id } from '../model/scalars.ts';
 import type { Association, End } from './network.ts';
+import { perObject } from './network.ts';
 
 type IkeProposal = NonNullable<Association['a']['ikeProposals']>[string];
 type EspProposal = NonNullable<Association['a']['espProposals']>[string];
@@ -77,11 +78,11 @@ const proposerOf = (association: Association): End =>
  * Which proposals both ends of an association settle on, or which part has nothing in common. The end that starts
  * proposes; its order of preference decides (RFC 7296 section 2.7).
  */
-export const negotiate = (association: Association): Negotiation => {
+export const negotiate = perObject((association: Association): Negotiation => {
   const { a, b } = association;
   const proposer = proposerOf(association);
   return {
     ike: agree(ikeParts, a.ikeProposals, b.ikeProposals, proposer),
     esp: agree(espParts, a.espProposals, b.espProposals, proposer),
   };
-};
+});

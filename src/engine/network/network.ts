@@ -132,6 +132,21 @@ export const perNetwork = <T>(
   };
 };
 
+/**
+ * Keeps one answer per object: an entry or a collection that a patch leaves alone is the same object in the next version. The
+ * answer may depend on nothing else.
+ */
+export const perObject = <O extends object, T>(compute: (object: O) => T): ((object: O) => T) => {
+  const answers = new WeakMap<O, { readonly value: T }>();
+  return (object) => {
+    const known = answers.get(object);
+    if (known !== undefined) return known.value;
+    const value = compute(object);
+    answers.set(object, { value });
+    return value;
+  };
+};
+
 /** Keeps the last answer about what differs between two versions. */
 export const perPairOfVersions = <T>(
   compute: (before: Network, now: Network) => T,

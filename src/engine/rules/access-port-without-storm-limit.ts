@@ -1,6 +1,6 @@
 import type { MergePatch } from '../model/merge-patch.ts';
-import type { Network } from '../network/network.ts';
-import { segmentsAt } from '../network/network.ts';
+import type { Device, Network } from '../network/network.ts';
+import { perObject, segmentsAt } from '../network/network.ts';
 import { tunnelSegments } from '../flood/tunnel-segments.ts';
 import { segmentPathFacts } from './carried-segments.ts';
 import { defineRule } from './define-rule.ts';
@@ -14,27 +14,30 @@ interface AccessPort {
   readonly port: string;
 }
 
+/** Access ports of a switch or gateway where nothing bounds broadcast, with their VLANs. */
+const unlimitedIn = perObject(
+  ({ kind, ports }: Device): readonly { readonly port: string; readonly vlan: number }[] =>
+    kind === 'host'
+      ? []
+      : Object.keys(ports)
+          .sort()
+          .flatMap((port) => {
+            const { role, mode, vlan, shut, stormLimitPps } = ports[port]!;
+            const isUnlimited = mode === 'access' && shut !== true && stormLimitPps === undefined;
+            return role === 'lan' && isUnlimited && vlan !== undefined ? [{ port, vlan }] : [];
+          }),
+);
+
 /** Access ports of each segment that tunnels carry, where nothing bounds broadcast. */
 const unlimitedPorts = (network: Network): ReadonlyMap<string, readonly AccessPort[]> => {
   const stretched = new Set([...tunnelSegments(network).values()].flat());
   const bySegment = new Map<string, AccessPort[]>();
   for (const device of network.deviceIds) {
-    const { kind, site, ports } = network.design.devices[device]!;
-    if (kind === 'host') continue;
-    for (const port of Object.keys(ports).sort()) {
-      const { role, mode, vlan, shut, stormLimitPps } = ports[port]!;
-      if (
-        role !== 'lan' ||
-        mode !== 'access' ||
-        vlan === undefined ||
-        shut === true ||
-        stormLimitPps !== undefined
-      )
-        continue;
-      for (const segment of segmentsAt(network, site, vlan))
+    const entry = network.design.devices[device]!;
+    for (const { port, vlan } of unlimitedIn(entry))
+      for (const segment of segmentsAt(network, entry.site, vlan))
         if (stretched.has(segment))
           bySegment.set(segment, [...(bySegment.get(segment) ?? []), { device, port }]);
-    }
   }
   return bySegment;
 };

@@ -1,20 +1,25 @@
+import type { Entry } from '../model/design.ts';
 import type { MergePatch } from '../model/merge-patch.ts';
 import { applyPatch, diffPatch } from '../model/merge-patch.ts';
 import { indexNetwork } from '../network/index-network.ts';
 import type { Network } from '../network/network.ts';
-import { perNetwork } from '../network/network.ts';
+import { perNetwork, perObject } from '../network/network.ts';
 import { defineRule } from './define-rule.ts';
 import { betterAddress, families, familyField, plainAddress, readdressPatch } from './endpoint-addresses.ts';
 import { sharedSets } from './grouping.ts';
 import { counted, listed, namedOrCounted, sentenceCase } from './wording.ts';
 
+const plainAddresses = perObject((endpoint: Entry<'endpoints'>): readonly string[] =>
+  families.flatMap((family) => {
+    const address = endpoint[familyField(family)];
+    return address === undefined ? [] : [plainAddress(address)];
+  }),
+);
+
 /** Endpoints that have an address in common; the two members of one pair may share theirs. */
 export const duplicateEndpoints = perNetwork(({ design }): readonly (readonly string[])[] => {
   const marked = Object.entries(design.endpoints).flatMap(([id, endpoint]) =>
-    families.flatMap((family) => {
-      const address = endpoint[familyField(family)];
-      return address === undefined ? [] : [[plainAddress(address), id] as const];
-    }),
+    plainAddresses(endpoint).map((address) => [address, id] as const),
   );
   return sharedSets(marked).filter((ids) => {
     const [first, ...others] = ids.map((id) => design.endpoints[id]!);
@@ -28,10 +33,7 @@ export const duplicateEndpoints = perNetwork(({ design }): readonly (readonly st
 });
 
 const addressesOf = (design: Network['design'], id: string): readonly string[] =>
-  families.flatMap((family) => {
-    const address = design.endpoints[id]![familyField(family)];
-    return address === undefined ? [] : [plainAddress(address)];
-  });
+  plainAddresses(design.endpoints[id]!);
 
 export const endpointAddressDuplicate = defineRule({
   id: 'endpoint-address-duplicate',

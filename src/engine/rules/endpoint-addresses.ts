@@ -3,7 +3,7 @@ import type { MergePatch } from '../model/merge-patch.ts';
 import { applyPatch, diffPatch, joinPatches } from '../model/merge-patch.ts';
 import type { Family } from '../network/association-path.ts';
 import type { DesignFacts, Network } from '../network/network.ts';
-import { ends, perNetwork } from '../network/network.ts';
+import { ends, perObject } from '../network/network.ts';
 import { indexNetwork } from '../network/index-network.ts';
 import { parsePrefix } from '../network/parse-prefix.ts';
 import { associationEndOf } from '../network/selectors-cover.ts';
@@ -26,10 +26,11 @@ const firstBits = (bytes: readonly number[], count: number): string =>
   bytes.map((byte, i) => byte & (0xff00 >> Math.min(8, Math.max(0, count - 8 * i))) & 0xff).join('.');
 
 // By family and prefix length, then by the prefix's bits: one look-up per length instead of one per subnet.
-const subnetIndex = perNetwork(({ design }): ReadonlyMap<string, ReadonlyMap<string, Subnet>> => {
+type Segments = DesignFacts['segments'];
+const subnetIndex = perObject((segments: Segments): ReadonlyMap<string, ReadonlyMap<string, Subnet>> => {
   const byLength = new Map<string, Map<string, Subnet>>();
-  for (const segment of Object.keys(design.segments).sort())
-    for (const { subnets } of Object.values(design.segments[segment]!.sites))
+  for (const segment of Object.keys(segments).sort())
+    for (const { subnets } of Object.values(segments[segment]!.sites))
       for (const subnet of subnets ?? []) {
         const [address, length] = parsePrefix(subnet);
         const bytes = address.toByteArray();
@@ -45,11 +46,10 @@ const subnetIndex = perNetwork(({ design }): ReadonlyMap<string, ReadonlyMap<str
   return byLength;
 });
 
-/** The narrowest subnet of a segment that holds the address; undefined where it lies outside all segments. */
-export const segmentSubnetOf = (network: Network, address: string): Subnet | undefined => {
+const narrowestSubnet = (segments: Segments, address: string): Subnet | undefined => {
   const bytes = ipaddr.parse(address.split('/')[0]!).toByteArray();
   let narrowest: { readonly length: number; readonly found: Subnet } | undefined;
-  for (const [group, subnets] of subnetIndex(network)) {
+  for (const [group, subnets] of subnetIndex(segments)) {
     const [byteCount, length] = group.split(' ').map(Number) as [number, number];
     if (byteCount !== bytes.length) continue;
     const found = subnets.get(firstBits(bytes, length));
@@ -57,6 +57,15 @@ export const segmentSubnetOf = (network: Network, address: string): Subnet | und
       narrowest = { length, found };
   }
   return narrowest?.found;
+};
+
+const subnetsFound = perObject((_segments: Segments) => new Map<string, Subnet | undefined>());
+
+/** The narrowest subnet of a segment that holds the address; undefined where it lies outside all segments. */
+export const segmentSubnetOf = ({ design }: Network, address: string): Subnet | undefined => {
+  const found = subnetsFound(design.segments);
+  if (!found.has(address)) found.set(address, narrowestSubnet(design.segments, address));
+  return found.get(address);
 };
 
 const usedAddresses = (design: DesignFacts): ReadonlySet<string> => {

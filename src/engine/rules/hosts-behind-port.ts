@@ -1,5 +1,6 @@
 import { expectedForwarding } from '../flood/expected-forwarding.ts';
-import { portKey, type Network } from '../network/network.ts';
+import type { Id } from '../model/scalars.ts';
+import { perObject, portKey, type Device, type Network } from '../network/network.ts';
 
 /** Hosts of the design whose frames a port takes in: those behind a gateway's circuits, or plugged into a switch's port. */
 export const hostsBehindPort = (network: Network, device: string, port: string): ReadonlySet<string> => {
@@ -27,15 +28,20 @@ export interface LimitedPort {
   readonly hosts: number;
 }
 
+const portsWithLimits = perObject(({ ports }: Device): readonly Id[] =>
+  Object.keys(ports)
+    .filter((id) => ports[id]!.macLimit !== undefined || ports[id]!.stormLimitPps !== undefined)
+    .sort(),
+);
+
 /** Ports on which a limit is set that counts hosts or their frames, in order of device and port. */
 export const limitedPorts = (network: Network, field: 'macLimit' | 'stormLimitPps'): readonly LimitedPort[] =>
-  network.deviceIds.flatMap((device) =>
-    Object.keys(network.design.devices[device]!.ports)
-      .sort()
-      .flatMap((port) => {
-        const limit = network.design.devices[device]!.ports[port]![field];
-        return limit === undefined
-          ? []
-          : [{ device, port, limit, hosts: hostsBehindPort(network, device, port).size }];
-      }),
-  );
+  network.deviceIds.flatMap((device) => {
+    const entry = network.design.devices[device]!;
+    return portsWithLimits(entry).flatMap((port) => {
+      const limit = entry.ports[port]![field];
+      return limit === undefined
+        ? []
+        : [{ device, port, limit, hosts: hostsBehindPort(network, device, port).size }];
+    });
+  });

@@ -1,17 +1,29 @@
 import type { AddressRange } from '../reference/address-ranges.ts';
-import type { Network } from '../network/network.ts';
+import type { Landing, Network } from '../network/network.ts';
+import { perObject } from '../network/network.ts';
 import { addressRangeOf } from './address-range.ts';
 import { defineRule, type Fault } from './define-rule.ts';
 import { families, familyField } from './endpoint-addresses.ts';
 import { siteNameOf } from './places.ts';
 import { countWord, sentenceCase } from './wording.ts';
 
-interface Found {
-  readonly landing: string;
+interface Special {
   readonly field: 'ipv4' | 'ipv6';
   readonly address: string;
   readonly range: AddressRange;
 }
+interface Found extends Special {
+  readonly landing: string;
+}
+
+const specialOf = perObject((landing: Landing): readonly Special[] =>
+  families.flatMap((family) => {
+    const field = familyField(family);
+    const address = landing[field];
+    const range = address === undefined ? undefined : addressRangeOf(address);
+    return address === undefined || range === undefined ? [] : [{ field, address, range }];
+  }),
+);
 
 /** Outside addresses in a special range, in order of landing. */
 const specialAddresses = ({ design }: Network): readonly Found[] =>
@@ -19,13 +31,7 @@ const specialAddresses = ({ design }: Network): readonly Found[] =>
     .sort()
     .flatMap((landing) => {
       const link = design.links[landing]!;
-      if (link.kind !== 'landing') return [];
-      return families.flatMap((family) => {
-        const field = familyField(family);
-        const address = link[field];
-        const range = address === undefined ? undefined : addressRangeOf(address);
-        return address === undefined || range === undefined ? [] : [{ landing, field, address, range }];
-      });
+      return link.kind === 'landing' ? specialOf(link).map((special) => ({ landing, ...special })) : [];
     });
 
 // What a person calls an address that no transport carries.

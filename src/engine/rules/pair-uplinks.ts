@@ -25,9 +25,9 @@ const uplinks = perNetwork((network): readonly Uplink[] => {
       return (['a', 'b'] as const).flatMap((end): readonly Uplink[] => {
         const [own, far] = [link[end], link[otherEnd(end)]];
         const { kind } = entryOf(devices, own.device);
-        const takes = network.circuitsByPort.get(portKey(far.device, far.port)) ?? [];
         if ((kind !== 'host' && kind !== 'switch') || entryOf(devices, far.device).kind !== 'ha-pair')
           return [];
+        const takes = network.circuitsByPort.get(portKey(far.device, far.port)) ?? [];
         return takes.length === 0
           ? []
           : [

@@ -18,14 +18,14 @@ interface Plugged {
 
 /** Ports with more than one thing plugged in. */
 const crowdedPorts = (network: Network): readonly Plugged[] =>
-  [...network.cablesByPort.values()].flatMap((list) => {
+  [...network.cablesByPort].flatMap(([key, list]) => {
+    const landed = network.landingsByPort.get(key) ?? [];
+    // Nearly every port: one cable and nothing else.
+    if (list.length === 1 && landed.length === 0) return [];
     const { cable, end } = list[0]!;
     const link = network.design.links[cable]!;
     if (link.kind !== 'cable') return [];
     const { device, port } = link[end];
-    const landed = network.landingsByPort.get(portKey(device, port)) ?? [];
-    // Nearly every port: one cable and nothing else.
-    if (list.length === 1 && landed.length === 0) return [];
     return ([1, 2] as const).flatMap((member) => {
       const cables = [...new Set(list.filter((at) => at.member === member).map((at) => at.cable))];
       const landings = landed.filter((id) => {

@@ -1,5 +1,7 @@
+import type { Entry } from '../model/design.ts';
 import type { Protocol } from '../model/intent.ts';
 import { tunnelSegments } from '../flood/tunnel-segments.ts';
+import { perObject } from '../network/network.ts';
 import { parsePrefix } from '../network/parse-prefix.ts';
 import { segmentPathFacts } from './carried-segments.ts';
 import { defineRule } from './define-rule.ts';
@@ -28,6 +30,14 @@ const hasOwnSubnets = (sites: readonly (readonly string[])[]): boolean => {
   );
 };
 
+const isRoutable = perObject(
+  ({ protocols, sites }: Entry<'segments'>): boolean =>
+    protocols !== undefined &&
+    protocols.length > 0 &&
+    protocols.every((each) => routable.includes(each)) &&
+    hasOwnSubnets(Object.values(sites).map(({ subnets }) => subnets ?? [])),
+);
+
 export const segmentCouldBeRouted = defineRule({
   id: 'segment-could-be-routed',
   title: 'What could be routed is not stretched',
@@ -45,15 +55,9 @@ export const segmentCouldBeRouted = defineRule({
   },
   check: (network) => {
     const stretched = new Set([...tunnelSegments(network).values()].flat());
-    return Object.entries(network.design.segments).flatMap(([id, { name, protocols, sites }]) => {
-      if (
-        !stretched.has(id) ||
-        protocols === undefined ||
-        protocols.length === 0 ||
-        !protocols.every((each) => routable.includes(each)) ||
-        !hasOwnSubnets(Object.values(sites).map(({ subnets }) => subnets ?? []))
-      )
-        return [];
+    return Object.entries(network.design.segments).flatMap(([id, segment]) => {
+      if (!stretched.has(id) || !isRoutable(segment)) return [];
+      const { name, sites } = segment;
       const ref = { collection: 'segments' as const, id };
       return [
         {

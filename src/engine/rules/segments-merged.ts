@@ -4,7 +4,7 @@ import type { Id } from '../model/scalars.ts';
 import { tunnelStates } from '../network/can-come-up.ts';
 import { accessVlan, circuitRemovesTag, isTrunk } from '../network/frame-tags.ts';
 import type { CircuitAt, Network, PortGroup } from '../network/network.ts';
-import { deviceOfTunnelEnd, ends, entryOf, segmentsAt } from '../network/network.ts';
+import { deviceOfTunnelEnd, ends, entryOf, perNetwork, segmentsAt } from '../network/network.ts';
 import { removalPatch } from '../flood/removal-patch.ts';
 import { segmentPathFacts, segmentsOfCircuit } from './carried-segments.ts';
 import { defineRule, type Fault } from './define-rule.ts';
@@ -117,14 +117,30 @@ const byNative = (network: Network): readonly Found[] =>
     ];
   });
 
+interface Brought {
+  readonly at: CircuitAt;
+  readonly segments: readonly Id[];
+}
+
+const untaggedByForwarder = perNetwork(
+  (network): ReadonlyMap<Id, readonly Brought[]> =>
+    new Map(
+      [...network.circuitsByForwarder].map(([forwarder, circuits]) => [
+        forwarder,
+        circuits.flatMap((at): readonly Brought[] => {
+          const { circuit } = at;
+          if (circuit.kind !== 'port' || (circuit.vlans !== 'untagged' && !circuitRemovesTag(circuit)))
+            return [];
+          const segments = segmentsOfCircuit(network, at.device, circuit);
+          return segments.length === 0 ? [] : [{ at, segments }];
+        }),
+      ]),
+    ),
+);
+
 /** Circuits of a forwarder whose frames are untagged inside, with the segments that they bring in. */
-const untaggedInside = (network: Network, forwarder: Id) =>
-  (network.circuitsByForwarder.get(forwarder) ?? []).flatMap((at) => {
-    const { circuit } = at;
-    if (circuit.kind !== 'port' || (circuit.vlans !== 'untagged' && !circuitRemovesTag(circuit))) return [];
-    const segments = segmentsOfCircuit(network, at.device, circuit);
-    return segments.length === 0 ? [] : [{ at, segments }];
-  });
+const untaggedInside = (network: Network, forwarder: Id): readonly Brought[] =>
+  untaggedByForwarder(network).get(forwarder) ?? [];
 
 const isIsolated = (one: CircuitAt, other: CircuitAt): boolean =>
   one.circuit.isolation !== undefined && one.circuit.isolation === other.circuit.isolation;
