@@ -23,8 +23,10 @@ import { countBySeverity } from '../engine/rules/run-rules.ts';
 import { SheetDrawer } from '../features/drawer/sheet-drawer.tsx';
 import { findingItem } from '../features/findings/finding-words.ts';
 import { FindingsList } from '../features/findings/findings-list.tsx';
+import { useAskedFinding } from '../features/findings/use-asked-finding.ts';
 import { useFindingDecorations } from '../features/findings/use-finding-decorations.ts';
 import { useFindingFixes } from '../features/findings/use-finding-fixes.ts';
+import { useWaiving } from '../features/findings/use-waiving.tsx';
 import { useLoadTab } from '../features/load/use-load-tab.tsx';
 import { createOutlineView } from '../features/outline/outline-view.ts';
 import { Outline } from '../features/outline/outline.tsx';
@@ -54,7 +56,8 @@ export function SheetPage() {
 
 function Surface() {
   const open = useOpenDesign();
-  const { findings, document } = useChecks();
+  const { findings, openFindings, waiverOf, document } = useChecks();
+  const waiving = useWaiving();
   const editable = useOpenState((state) => state.editable);
   const title = useOpenState((state) => state.document.meta.title);
   const anySelected = useOpenState((state) => state.selection.length > 0);
@@ -63,9 +66,12 @@ function Surface() {
   const view = useView();
   const standing = useMemo(() => standingOf(settled), [settled]);
   const fixes = useFindingFixes();
-  const [selectedKey, setSelectedKey] = useState<string | null>(null);
-  const [outline] = useState(createOutlineView);
   const { valueOf, change } = useSearchValues();
+  // A link to a finding leads here.
+  const askedKey = valueOf('finding');
+  const [selectedKey, setSelectedKey] = useState<string | null>(askedKey === '' ? null : askedKey);
+  useAskedFinding(askedKey);
+  const [outline] = useState(createOutlineView);
   usePageTitle(title);
   useEffect(() => {
     if (anySelected) setInspecting(true);
@@ -74,8 +80,10 @@ function Surface() {
   const found = useFindingDecorations(selectedKey, preview);
   const items = useMemo(
     () =>
-      findings.map((finding, i) => findingItem(finding, i + 1, document, settled, fixes.get(finding.key))),
-    [findings, document, settled, fixes],
+      findings.map((finding, i) =>
+        findingItem(finding, i + 1, document, settled, fixes.get(finding.key), waiverOf(finding.key)),
+      ),
+    [findings, document, settled, fixes, waiverOf],
   );
 
   const select = useCallback(
@@ -119,7 +127,7 @@ function Surface() {
   const findingsTab: DeskTab = {
     value: 'findings',
     label: 'Findings',
-    count: findings.length,
+    count: openFindings.length,
     usualHeightPx: 180,
     panel: (
       <FindingsList
@@ -128,6 +136,7 @@ function Surface() {
         onSelect={select}
         canFix={editable}
         onApplyFix={apply}
+        waiving={waiving.tools}
         empty={`All ${rules.length} checks pass. They run again with every change.`}
       />
     ),
@@ -138,8 +147,8 @@ function Surface() {
     usualHeightPx: 300,
     panel: <Outline view={outline} />,
   };
-  const loadTab = useLoadTab(valueOf('drawer') === 'load');
   const traceTab = useTraceTab(valueOf('drawer') === 'trace', { onShowFinding: showFinding });
+  const loadTab = useLoadTab(valueOf('drawer') === 'load');
   const tabs = [findingsTab, traceTab, loadTab, outlineTab];
   const openTab = (tab: string): void => change({ drawer: tab === 'findings' ? '' : tab });
   // The first is open where the address says nothing.
@@ -172,7 +181,7 @@ function Surface() {
           openAtFirst={findings.length > 0 || active !== findingsTab}
           counts={
             <SeverityCounts
-              counts={countBySeverity(findings)}
+              counts={countBySeverity(openFindings)}
               worded
               clear={`All ${rules.length} checks pass`}
             />
@@ -180,6 +189,7 @@ function Surface() {
           tabs={tabs}
         />
       </div>
+      {waiving.dialog}
       {inspecting && side !== undefined && !anySelected && (
         <aside
           aria-label={active.label}

@@ -41,7 +41,7 @@ export function FindingRow({
     <li
       aria-current={selected || undefined}
       className={classNames(
-        'border-b border-rule-2',
+        'border-b border-rule-2 last:border-b-0',
         selected && 'bg-blue-wash shadow-[inset_4px_0_0_var(--blue)]',
       )}
     >
@@ -75,7 +75,7 @@ export function FindingRow({
           </span>
           <Icon name={open ? 'chevron-up' : 'chevron-down'} size={13} />
         </button>
-        <div className="flex w-198 shrink-0 items-center pr-12 max-md:hidden">
+        <div className="flex w-198 shrink-0 items-center py-3 pr-12 max-md:hidden">
           {canFix && !isWaived && firstFix !== undefined && (
             <Button
               kind="accent"

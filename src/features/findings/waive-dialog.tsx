@@ -100,6 +100,11 @@ export function WaiveDialog({
           min={first}
           max={last}
           error={tried ? problems.expiresOn : undefined}
+          after={
+            <span className="text-base whitespace-nowrap text-ink-2">
+              {expiresOn === '' ? '' : dayInWords(expiresOn)}
+            </span>
+          }
           onChange={(event) => setExpiresOn(event.target.value)}
         />
       </CellGrid>
