@@ -32,7 +32,7 @@ export type SiteNode = Node<Common & { readonly site: SiteGeometry }, 'site'>;
 export type BandNode = Node<Common & { readonly band: BandGeometry }, 'band'>;
 export type DeviceNode = Node<Common & { readonly device: DeviceGeometry }, 'device'>;
 export type RingNode = Node<Common & { readonly ring: RingGeometry }, 'ring'>;
-export type NoteNode = Node<Common & { readonly note: string }, 'note'>;
+export type NoteNode = Node<Common & { readonly note: string; readonly rect: Rect }, 'note'>;
 /** The trunks of manifolds, drawn under the jackets that leave them. */
 export type TrunksNode = Node<Common, 'trunks'>;
 export type MarksNode = Node<Common, 'marks'>;
@@ -160,7 +160,7 @@ const nodesOf = (input: FlowInput): FlowNode[] => {
   ];
   for (const site of geometry.sites) {
     const ref: ElementRef = { collection: 'sites', id: site.id };
-    // The frame's inside belongs to the sheet: a marquee may start there.
+    // The frame's inside belongs to the sheet: a marquee may start there. A collapsed one is a plate to be held.
     nodes.push({
       ...part(ref),
       type: 'site',
@@ -216,10 +216,8 @@ const nodesOf = (input: FlowInput): FlowNode[] => {
     nodes.push({
       ...part(ref),
       type: 'note',
-      position: note.at,
-      width: 180,
-      height: 36,
-      data: { ref, note: note.id },
+      ...box(note.rect),
+      data: { ref, note: note.id, rect: note.rect },
       zIndex: depth.note,
       style: groundStyle(ref),
     });

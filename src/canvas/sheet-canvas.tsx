@@ -17,10 +17,11 @@ import type { ElementRef } from '../engine/model/design.ts';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
 import { isCollapsed } from '../workspace/operations/collapse-sites.ts';
 import { dockEndpoint, isLocked } from '../workspace/operations/move-parts.ts';
+import { pinNote } from '../workspace/operations/place-parts.ts';
 import { useElementActions } from './actions/use-element-actions.ts';
 import { connectEnds, endOf, whyNotConnect, type ConnectEnd } from './connect-ends.ts';
 import { designToFlow, type FlowEdge, type FlowNode } from './design-to-flow.ts';
-import { askToJoin, openMenu, setFitted, startPlacing, useDesk } from './desk-state.ts';
+import { askToJoin, editNote, openMenu, setFitted, startPlacing, useDesk } from './desk-state.ts';
 import { DrawingContext, type Drawing } from './drawing-context.ts';
 import { edgeTypes } from './edges/part-edges.tsx';
 import { dockingSide } from './flow-changes-to-patch.ts';
@@ -57,10 +58,19 @@ const useLevel = (zoom: number): Level => {
   return next;
 };
 
-const tonesWith = (decorations: Decorations, selection: readonly ElementRef[]): Decorations => {
+/** What is selected stands out; a site that keeps it back stands out for it. */
+const tonesWith = (
+  decorations: Decorations,
+  selection: readonly ElementRef[],
+  siteOf: (ref: ElementRef) => string | undefined,
+): Decorations => {
   if (selection.length === 0) return decorations;
   const tones: { [key: string]: readonly Tone[] } = { ...decorations.tones };
-  for (const ref of selection) tones[elementKey(ref)] = [...(tones[elementKey(ref)] ?? []), 'selected'];
+  for (const ref of selection) {
+    const site = siteOf(ref);
+    const key = elementKey(site === undefined ? ref : { collection: 'sites', id: site });
+    tones[key] = [...(tones[key] ?? []), 'selected'];
+  }
   return { ...decorations, tones };
 };
 
@@ -80,8 +90,14 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
   const firstEnd = useDesk((state) => state.firstEnd);
 
   const look = useMemo(
-    () => ({ level, decorations: tonesWith(marks, selection) }),
-    [level, marks, selection],
+    () => ({
+      level,
+      decorations: tonesWith(marks, selection, ({ collection, id }) => {
+        const isHidden = collection === 'devices' && !settled.devices.some((device) => device.id === id);
+        return isHidden ? design.devices[id]?.site : undefined;
+      }),
+    }),
+    [level, marks, selection, settled, design],
   );
   const drawing = useMemo<Drawing>(
     () => ({ geometry, facts, look, editable, acceptGhost: onAcceptGhost, pickBalloon: onPickBalloon }),
@@ -205,7 +221,7 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
   };
 
   // ---- placing from the tray ----------------------------------------------------------------------------------
-  const put = (part: TrayPart, at: { readonly x: number; readonly y: number }): void => {
+  const put = (part: TrayPart, at: { readonly x: number; readonly y: number }, on: EventTarget): void => {
     if (isJoining(part)) {
       const end = endAt(settled, at);
       if (end === undefined)
@@ -221,20 +237,27 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
       } else askToJoin({ kind: part, a: firstEnd, b: end });
       return;
     }
-    const done = perform(open, placePart(design, settled, part, at, newEntryId));
+    // A note that is put down on something is pinned to it.
+    const about = part === 'note' && on instanceof Element ? elementAt(on) : undefined;
+    const pinned = about === undefined ? undefined : pinNote(design, about, newEntryId);
+    const done = perform(
+      open,
+      pinned?.ok === true ? pinned : placePart(design, settled, part, at, newEntryId),
+    );
     if (!done.ok) return say(done.why);
     startPlacing(undefined);
+    if (part === 'note') editNote(open.store.getState().selection[0]?.id);
   };
   const onClickCapture = (event: MouseEvent): void => {
     if (placing === undefined || !editable) return;
     event.stopPropagation();
-    put(placing, flow.screenToFlowPosition({ x: event.clientX, y: event.clientY }));
+    put(placing, flow.screenToFlowPosition({ x: event.clientX, y: event.clientY }), event.target);
   };
   const onDrop = (event: DragEvent): void => {
     const part = readPartDrag(event.dataTransfer);
     if (part === undefined || !editable) return;
     event.preventDefault();
-    put(part, flow.screenToFlowPosition({ x: event.clientX, y: event.clientY }));
+    put(part, flow.screenToFlowPosition({ x: event.clientX, y: event.clientY }), event.target);
   };
   // ---- menus and double presses -------------------------------------------------------------------------------
   const actions = useElementActions();

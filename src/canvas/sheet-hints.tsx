@@ -1,6 +1,6 @@
 import { Button } from '../components/button.tsx';
 import { crowdedWords } from '../drawing/parts/crowded-words.ts';
-import { viewLayers, type ViewLayer } from '../drawing/view-layers.ts';
+import { viewLayers } from '../drawing/view-layers.ts';
 import { useOpenState } from '../workspace/open-design-context.tsx';
 import { useDesk } from './desk-state.ts';
 import { useDrawn } from './geometry-context.tsx';
@@ -55,25 +55,20 @@ export function SheetHint() {
   );
 }
 
-const layerWords: { readonly [L in ViewLayer]: string } = {
-  cabling: 'cabling',
-  underlay: 'underlay',
-  overlay: 'overlay',
-};
-
 /** Says what is left out while not everything is shown, so that nobody takes it for missing. */
 export function ViewNotice() {
   const { choice, isWhole, showEverything } = useViewChoice();
   const segments = useOpenState((state) => state.document.segments);
   if (isWhole) return null;
-  const off = viewLayers.filter((layer) => !choice.layers.includes(layer)).map((layer) => layerWords[layer]);
+  const off = viewLayers.filter((layer) => !choice.layers.includes(layer));
   const letters = choice.segments?.map((id) => segments[id]?.letter ?? id).sort();
   const only =
     letters === undefined ? [] : [`only segment${letters.length === 1 ? '' : 's'} ${letters.join(', ')}`];
   const without = off.length === 0 ? [] : [`without ${off.join(' and ')}`];
+  const words = [...only, ...without].join(', ');
   return (
     <div className="view-notice">
-      <p role="status">Shown: {[...only, ...without].join(', ')}</p>
+      <p role="status">{`${words.charAt(0).toUpperCase()}${words.slice(1)}`}</p>
       <Button small onClick={showEverything}>
         Show everything
       </Button>

@@ -11,7 +11,7 @@ import { useExtraActions } from './actions/extra-actions.ts';
 import { farEnds } from './actions/far-ends.ts';
 import { keyWords, shortcuts, type CommandId } from './commands/shortcuts.ts';
 import { siteOf, type Commands } from './commands/use-commands.ts';
-import { openMenu, useDesk, type OpenedMenu } from './desk-state.ts';
+import { editNote, openMenu, useDesk, type OpenedMenu } from './desk-state.ts';
 import { siteAt, standingOf } from './flow-changes-to-patch.ts';
 import { useDrawn } from './geometry-context.tsx';
 import { placePart, type PlacedPart } from './place-part.ts';
@@ -77,8 +77,10 @@ function OpenSheetMenu({ menu, commands }: { readonly menu: OpenedMenu; readonly
   const sheetGroups = (): readonly MenuGroup[] => {
     const at = view.fromScreen(menu.at);
     const site = siteAt(settled, at);
-    const put = (part: PlacedPart): void =>
-      void actions.run(placePart(open.store.getState().document, settled, part, at, newEntryId));
+    const put = (part: PlacedPart): void => {
+      const done = actions.run(placePart(open.store.getState().document, settled, part, at, newEntryId));
+      if (done && part === 'note') editNote(open.store.getState().selection[0]?.id);
+    };
     const name = site === undefined ? undefined : design.sites[site]?.name;
     return [
       ...(editable

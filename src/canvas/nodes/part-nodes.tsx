@@ -28,7 +28,9 @@ import type {
 } from '../design-to-flow.ts';
 import { bodyHandle, pipHandle } from '../design-to-flow.ts';
 import { useDrawing } from '../drawing-context.ts';
+import { useDesk } from '../desk-state.ts';
 import { FaultMarks } from './fault-marks.tsx';
+import { NoteEditor } from './note-editor.tsx';
 import { Shapes } from '../../components/shapes.tsx';
 
 /** An SVG whose inside is the sheet's world, whatever corner of it the node begins at. */
@@ -113,6 +115,7 @@ const Site = memo(function Site({ data }: NodeProps<SiteNode>) {
   const { site } = data;
   const shapes = useMemo(() => [sitePart(site, facts, look)], [site, facts, look]);
   const { width, height } = site.rect;
+  const plate: readonly (readonly [string, Rect])[] = [['plate', { x: 0, y: 0, width, height }]];
   const edges: readonly (readonly [string, Rect])[] = [
     ['name', { x: siteSizes.nameAt - 8, y: -14, width: Math.min(width - 40, 200), height: 28 }],
     ['top', { x: 0, y: -5, width, height: 10 }],
@@ -123,7 +126,7 @@ const Site = memo(function Site({ data }: NodeProps<SiteNode>) {
   return (
     <>
       <Part origin={site.rect} shapes={shapes} />
-      {edges.map(([name, edge]) => (
+      {[...edges, ...(site.collapsed ? plate : [])].map(([name, edge]) => (
         <div
           key={name}
           className="site-edge"
@@ -209,17 +212,18 @@ const Ring = memo(function Ring({ data, positionAbsoluteX, positionAbsoluteY }: 
   );
 });
 
-const Note = memo(function Note({ data, positionAbsoluteX, positionAbsoluteY }: NodeProps<NoteNode>) {
-  const { facts, look, geometry } = useDrawing();
+const Note = memo(function Note({ data }: NodeProps<NoteNode>) {
+  const { facts, look, geometry, editable } = useDrawing();
+  const isEdited = useDesk((state) => state.editedNote === data.note) && editable;
   const shapes = useMemo(
     () => [pinnedNotePart(data.note, geometry, facts, look)],
     [data.note, geometry, facts, look],
   );
   return (
-    <Part
-      origin={{ x: positionAbsoluteX, y: positionAbsoluteY }}
-      shapes={shapes.filter((shape) => shape !== undefined)}
-    />
+    <>
+      <Part origin={data.rect} shapes={shapes.filter((shape) => shape !== undefined)} />
+      {isEdited && <NoteEditor note={data.note} widthPx={data.rect.width} heightPx={data.rect.height} />}
+    </>
   );
 });
 

@@ -1,6 +1,8 @@
 import { useRef, type ReactNode } from 'react';
 import { Button } from '../../components/button.tsx';
 import { classNames } from '../../lib/class-names.ts';
+import { stretchForm } from '../../lib/stretch-address.ts';
+import { useSearchValues } from '../../lib/use-search-values.ts';
 import { Icon } from '../../components/icon.tsx';
 import { SegmentSwatch } from '../../components/segment-swatch.tsx';
 import { showToast } from '../../components/toast.tsx';
@@ -8,7 +10,7 @@ import { Tooltip } from '../../components/tooltip.tsx';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { placeSegment } from '../../workspace/operations/place-parts.ts';
 import { keyWords, type ShortcutId } from '../commands/shortcuts.ts';
-import { askToJoin, setSearching, setTool, startPlacing, useDesk } from '../desk-state.ts';
+import { askToJoin, editNote, setSearching, setTool, startPlacing, useDesk } from '../desk-state.ts';
 import { useDrawn } from '../geometry-context.tsx';
 import { freePlace, isJoining, placePart, type TrayPart } from '../place-part.ts';
 import { useViewChoice } from '../use-view-choice.ts';
@@ -60,12 +62,24 @@ export function PartsTray() {
         {editable && groups.map((group) => <PartGroup key={group.title} {...group} />)}
         <Segments editable={editable} />
       </div>
+      {editable && <StretchButton />}
       <ViewControls />
     </aside>
   );
 }
 
 const withKey = (words: string, id: ShortcutId): string => `${words} (${keyWords(id)})`;
+
+function StretchButton() {
+  const { change } = useSearchValues();
+  return (
+    <div className="border-t border-rule-2 px-12 pt-12">
+      <Button className="w-full" onClick={() => change({ stretch: stretchForm })}>
+        Stretch…
+      </Button>
+    </div>
+  );
+}
 
 function Tools({ editable }: { readonly editable: boolean }) {
   const tool = useDesk((state) => state.tool);
@@ -162,7 +176,10 @@ function PartButton({ part, name }: { readonly part: TrayPart; readonly name: st
     const at = freePlace(document, settled, part, site, view.middle());
     const done = perform(open, placePart(document, settled, part, at, newEntryId, site));
     if (!done.ok) showToast({ tone: 'failed', text: done.why });
-    else view.showPoint(at);
+    else {
+      view.showPoint(at);
+      if (part === 'note') editNote(open.store.getState().selection[0]?.id);
+    }
   };
 
   return (

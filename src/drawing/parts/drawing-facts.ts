@@ -1,5 +1,6 @@
 import type { Design, ElementRef, Entry } from '../../engine/model/design.ts';
 import type { DeviceKind, Member } from '../../engine/model/devices.ts';
+import { hiddenDevices } from '../routing/stands.ts';
 import { paletteOf } from '../theme/segment-tokens.ts';
 import type { CorePalette } from '../theme/paint.ts';
 import type { GlyphName } from './glyphs.ts';
@@ -69,6 +70,8 @@ export interface DrawingFacts {
   /** In letter order: A to Z, then AA. */
   readonly segments: readonly SegmentFacts[];
   readonly sites: { readonly [id: string]: string };
+  /** What each collapsed site keeps back, by kind: '1 switch, 3 hosts'. */
+  readonly keptBack: { readonly [site: string]: string };
   readonly devices: { readonly [id: string]: DeviceFacts };
   readonly transports: { readonly [id: string]: TransportWords };
   readonly tunnels: { readonly [id: string]: TunnelFacts };
@@ -98,6 +101,29 @@ const membersOf = (device: Entry<'devices'>): readonly MemberFacts[] | undefined
     name: device.memberNames[member],
     word: device.mode === 'active-active' || member === active ? 'active' : 'standby',
   }));
+};
+
+const kindWords: readonly (readonly [DeviceKind, string, string])[] = [
+  ['firewall', 'firewall', 'firewalls'],
+  ['ha-pair', 'HA pair', 'HA pairs'],
+  ['router', 'router', 'routers'],
+  ['switch', 'switch', 'switches'],
+  ['host', 'host', 'hosts'],
+];
+
+const keptBackWords = (design: Design): { readonly [site: string]: string } => {
+  const hidden = [...hiddenDevices(design)].map((id) => design.devices[id]!);
+  const collapsed = Object.entries(design.layout.sites ?? {}).filter(([, place]) => place.collapsed === true);
+  return Object.fromEntries(
+    collapsed.map(([site]) => {
+      const own = hidden.filter((device) => device.site === site);
+      const words = kindWords.flatMap(([kind, one, many]) => {
+        const count = own.filter((device) => device.kind === kind).length;
+        return count === 0 ? [] : [`${count} ${count === 1 ? one : many}`];
+      });
+      return [site, words.join(', ')];
+    }),
+  );
 };
 
 const deviceFacts = (design: Design): { readonly [id: string]: DeviceFacts } => {
@@ -178,6 +204,7 @@ export const drawingFacts = (
   return {
     segments,
     sites: mapEntries(design.sites, (site) => site.name),
+    keptBack: keptBackWords(design),
     devices: deviceFacts(design),
     transports: mapEntries(design.transports, transportWords),
     tunnels: mapEntries(design.tunnels, (tunnel, id): TunnelFacts => ({

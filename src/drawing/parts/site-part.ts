@@ -14,8 +14,56 @@ import { capShift, fittedLines } from './text-shape.ts';
 const nameSizes = { near: 16, work: 16, plan: 23, far: 44 } as const;
 const leastNameSizes = { near: 12, work: 13, plan: 18, far: 30 } as const;
 const aroundName = 10;
+const countsPx = 13;
 
-/** A site: a chain line that its name interrupts at the top. */
+/** The lid of a collapsed site, and on its lower edge what it keeps back. */
+const lid = (
+  site: SiteGeometry,
+  facts: DrawingFacts,
+  look: Look,
+  colour: Parameters<typeof paint>[0],
+): readonly Shape[] => {
+  const { x, y, width, height } = site.rect;
+  const words = facts.keptBack[site.id] ?? '';
+  const isRead = (look.level === 'near' || look.level === 'work') && words !== '';
+  const fitted = fitText(words, { maxWidthPx: width - 2 * aroundName - 16, sizePx: countsPx, minSizePx: 11 });
+  const middle = y + height;
+  return [
+    {
+      ...shape('rect', {
+        x,
+        y,
+        width,
+        height,
+        fill: paint('raise'),
+        stroke: paint(colour),
+        strokeWidth: look.level === 'far' ? 4 : look.level === 'plan' ? 2.6 : 1.8,
+      }),
+      key: 'lid',
+    },
+    ...(isRead
+      ? [
+          {
+            ...shape('rect', {
+              x: x + size.nameAt - 6,
+              y: middle - 9,
+              width: fitted.widthPx + 12,
+              height: 18,
+              fill: paint('paper'),
+              stroke: paint(colour),
+              strokeWidth: 1,
+            }),
+            key: 'counts-plate',
+          },
+          ...fittedLines(fitted, words, x + size.nameAt, middle + fitted.sizePx * capShift, 0, {
+            fill: paint(colour === 'ink-3' ? 'ink-2' : colour),
+          }).map((line) => ({ ...line, key: 'counts' })),
+        ]
+      : []),
+  ];
+};
+
+/** A site: a chain line that its name interrupts at the top; a collapsed one a plate with a lid. */
 export const sitePart = (site: SiteGeometry, facts: DrawingFacts, look: Look): Shape => {
   const ref = { collection: 'sites', id: site.id } as const;
   const tones = tonesOf(look, ref);
@@ -34,9 +82,21 @@ export const sitePart = (site: SiteGeometry, facts: DrawingFacts, look: Look): S
   const gapTo = Math.min(x + width, x + size.nameAt + nameWidth + aroundName);
   const marked = tones.includes('selected') || tones.includes('hovered');
   const colour = marked ? 'blue' : tones.includes('failed') || tones.includes('fault') ? 'red' : 'ink-3';
+  const nameGap = site.collapsed && {
+    ...shape('rect', {
+      x: gapFrom,
+      y: y - fitted.sizePx * 0.6,
+      width: gapTo - gapFrom,
+      height: fitted.sizePx * 1.2,
+      fill: paint('paper'),
+    }),
+    key: 'name-gap',
+  };
   return group(
     [
-      {
+      ...(site.collapsed ? lid(site, facts, look, colour) : []),
+      nameGap,
+      !site.collapsed && {
         // The line starts right of the name and ends left of it, so that the gap lets bands and lines beneath show.
         ...shape('path', {
           d: `M${gapTo} ${y}H${x + width}V${y + height}H${x}V${y}H${gapFrom}`,

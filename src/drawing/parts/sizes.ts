@@ -135,6 +135,9 @@ export const site = {
   nameAt: 20,
 } as const;
 
+/** A collapsed site in which nothing that a cord ends on is left to see. */
+export const closedSite = { width: 190, height: 62 } as const;
+
 export const text = {
   siteName: 16,
   deviceName: 16,

@@ -125,7 +125,8 @@ export const portSpots = (
       }
       const partner = stands.get(other.device);
       if (partner === undefined) {
-        put({ ...shared, use: 'cable', side: 'bottom' });
+        const { role } = design.devices[plug.device]!.ports[plug.port]!;
+        put({ ...shared, use: 'cable', side: freeSide(role, member, ringed.get(plug.device) ?? none) });
         continue;
       }
       const kinds = [design.devices[plug.device]!.kind, partner.device.kind];

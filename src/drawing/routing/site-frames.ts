@@ -1,6 +1,6 @@
 import type { Design } from '../../engine/model/design.ts';
 import type { RingGeometry, Rect, SheetFrame, SiteGeometry } from '../geometry.ts';
-import { cuff, ferrule, manifold, site as siteSizes } from '../parts/sizes.ts';
+import { closedSite, cuff, ferrule, manifold, site as siteSizes } from '../parts/sizes.ts';
 import { around, bottom, byText, grown, overlap, outward, right } from './rects.ts';
 import type { Stand } from './stands.ts';
 
@@ -41,7 +41,10 @@ const roomOf = (stand: Stand, rings: readonly RingGeometry[]): Rect => {
   return around(boxes)!;
 };
 
-/** The frame of every site: at least its own rectangle, grown round what stands in it. */
+/**
+ * The frame of every site: at least its own rectangle, grown round what stands in it. A collapsed one is drawn close round
+ * what is left to see, and as a plate of its own where that is nothing.
+ */
 export const siteFrames = (
   design: Design,
   sheet: SheetFrame,
@@ -58,13 +61,17 @@ export const siteFrames = (
   const homeless: string[] = [];
   for (const id of Object.keys(design.sites).sort(byText)) {
     const laid = design.layout.sites?.[id];
-    const boxes = [
-      ...(rooms.get(id) ?? []),
-      ...(laid === undefined ? [] : [{ x: laid.x, y: laid.y, width: laid.width, height: laid.height }]),
-    ];
-    const rect = around(boxes);
+    const own = rooms.get(id) ?? [];
+    const collapsed = laid?.collapsed === true;
+    const least: readonly Rect[] =
+      laid === undefined || (collapsed && own.length > 0)
+        ? []
+        : collapsed
+          ? [{ x: laid.x, y: laid.y, ...closedSite }]
+          : [{ x: laid.x, y: laid.y, width: laid.width, height: laid.height }];
+    const rect = around([...own, ...least]);
     if (rect === undefined) homeless.push(id);
-    else frames.push({ id, rect, collapsed: laid?.collapsed === true });
+    else frames.push({ id, rect, collapsed });
   }
   for (const id of homeless) {
     let rect: Rect = { x: sheet.frame.x + 20, y: sheet.frame.y + 24, ...emptySite };

@@ -86,7 +86,7 @@ const inReadingOrder = (a: readonly [string, Device], b: readonly [string, Devic
   kindOrder[a[1].kind] - kindOrder[b[1].kind] || byText(a[0], b[0]);
 
 /** Devices that a collapsed site keeps back: all but its gateways with endpoints. */
-const hiddenDevices = (design: Design): ReadonlySet<string> => {
+export const hiddenDevices = (design: Design): ReadonlySet<string> => {
   const collapsed = new Set(
     Object.entries(design.layout.sites ?? {})
       .filter(([, place]) => place.collapsed === true)

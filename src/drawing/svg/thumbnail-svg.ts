@@ -64,13 +64,13 @@ const blankTitleBlock = ({ titleBlock: { x, y, width, height } }: SheetFrame): S
 
 /** Sites as plain frames: without their names nothing interrupts them. */
 const siteFrames = (geometry: SheetGeometry): readonly Shape[] =>
-  geometry.sites.map(({ id, rect }) => ({
+  geometry.sites.map(({ id, rect, collapsed }) => ({
     ...shape('rect', {
       ...rect,
       fill: 'none',
       stroke: paint('ink-3'),
       strokeWidth: 3,
-      strokeDasharray: '30 8 5 8',
+      ...(collapsed ? {} : { strokeDasharray: '30 8 5 8' }),
     }),
     key: id,
   }));

@@ -30,11 +30,11 @@ const combZone = (need: CombNeed, side: Level): number =>
 const bracketZone = (need: CombNeed, side: Level): number =>
   bracket.reach + ring.offBracket + ring.toFerrule + need.ferruleWidth[side] + cuff.fromFerrule - cuffOutside;
 
-/** One gateway over its switch, hosts to the left and right of that. A collapsed site keeps its gateway alone. */
-export const stackBlock = (parts: SiteParts, need: CombNeed, collapsed = false): SiteBlock => {
+/** One gateway over its switch, hosts to the left and right of that. */
+export const stackBlock = (parts: SiteParts, need: CombNeed): SiteBlock => {
   const [gatewayId, gateway] = parts.gateways[0]!;
-  const access: Named | undefined = collapsed ? undefined : parts.switches[0];
-  const hosts = collapsed ? [] : parts.hosts;
+  const access: Named | undefined = parts.switches[0];
+  const { hosts } = parts;
   const plate = sizeOfDevice(gateway, { upright: 0, level: 0, rings: Math.max(1, need.rings) });
   const length = Math.max(need.length.left ?? 0, need.length.right ?? 0);
   const ringY = length > 60 ? length / 2 + 63 : Math.max(80, length / 2 + 67);

@@ -1,6 +1,6 @@
 import type { Design } from '../../engine/model/design.ts';
 import { bundlesOf } from '../routing/bundles.ts';
-import type { Spacing } from '../parts/sizes.ts';
+import { closedSite, type Spacing } from '../parts/sizes.ts';
 import type { SiteBlock } from './site-block.ts';
 import { columnsBlock, mirrored, rowBlock, sizeOfDevice, stackBlock } from './site-block.ts';
 import type { SiteGraphFacts } from './site-graph.ts';
@@ -10,16 +10,36 @@ import { combNeedOf, sitePartsOf } from './site-parts.ts';
 
 const collapseOver = 24;
 
-/** A collapsed site: its gateway alone, with the places that the others take when it is opened. */
-const collapsedBlock = (site: SiteParts, gateway: string, need: CombNeed): SiteBlock => {
-  const closed = stackBlock(site, need, true);
-  const open = stackBlock(site, need);
-  const here = closed.positions.get(gateway)!;
-  const there = open.positions.get(gateway)!;
-  const positions = new Map(
-    [...open.positions].map(([id, { x, y }]) => [id, { x: x - there.x + here.x, y: y - there.y + here.y }]),
-  );
-  return { positions, size: closed.size };
+/** What is left to see of a collapsed site: the gateways that cords end on. */
+const closedParts = (design: Design, site: SiteParts): SiteParts => {
+  const ringed = new Set(Object.values(design.endpoints).map(({ device }) => device));
+  const gateways = site.gateways.filter(([id]) => ringed.has(id));
+  const [first] = gateways;
+  const shape =
+    gateways.length !== 1 || first === undefined ? 'unusual' : first[1].kind === 'ha-pair' ? 'row' : 'stack';
+  return { ...site, shape, gateways, switches: [], hosts: [] };
+};
+
+/** A collapsed site, with the places that what it keeps back takes when it is opened. */
+const closedBlock = (
+  open: SiteBlock,
+  parts: SiteParts,
+  build: (parts: SiteParts) => SiteBlock,
+): SiteBlock => {
+  const [anchor] = parts.gateways;
+  if (anchor === undefined) return { positions: open.positions, size: closedSite };
+  const closed = build(parts);
+  const here = closed.positions.get(anchor[0])!;
+  const there = open.positions.get(anchor[0])!;
+  return {
+    positions: new Map([
+      ...[...open.positions].map(
+        ([id, { x, y }]) => [id, { x: x - there.x + here.x, y: y - there.y + here.y }] as const,
+      ),
+      ...closed.positions,
+    ]),
+    size: closed.size,
+  };
 };
 
 /** Blocks of all sites for either facing; each is built once. */
@@ -37,26 +57,22 @@ export const siteBlocks = (
   const collapses = parts.size > collapseOver;
   const collapsed = new Set(
     [...parts.values()]
-      .filter((site) =>
-        collapses
-          ? site.shape === 'stack' && site.hosts.length + site.switches.length > 0
-          : design.layout.sites?.[site.id]?.collapsed === true && site.shape === 'stack',
+      .filter(
+        (site) =>
+          (collapses && site.shape === 'stack' && site.hosts.length + site.switches.length > 0) ||
+          design.layout.sites?.[site.id]?.collapsed === true,
       )
       .map((site) => site.id),
   );
   const known = new Map<string, SiteBlock>();
-  const build = (id: string, facing: Level): SiteBlock => {
-    const site = parts.get(id)!;
+  const build = (site: SiteParts, facing: Level, given?: SiteLayout): SiteBlock => {
     // A further transport's band lies right of everything; whoever stands on its far side looks left at it.
     const sideOf = (transport: string | undefined): Level =>
-      transport === undefined || transport === facts.main || isHome(facts, id, transport) ? facing : 'right';
+      transport === undefined || transport === facts.main || isHome(facts, site.id, transport)
+        ? facing
+        : 'right';
     const needOf = (device: string): CombNeed => combNeedOf(design, device, bundles, sideOf);
-    const given = siteLayouts[id];
-    if (site.shape === 'stack') {
-      const [gateway] = site.gateways[0]!;
-      const need = needOf(gateway);
-      return collapsed.has(id) ? collapsedBlock(site, gateway, need) : stackBlock(site, need);
-    }
+    if (site.shape === 'stack') return stackBlock(site, needOf(site.gateways[0]![0]));
     if (site.shape === 'row') {
       const need = needOf(site.gateways[0]![0]);
       // All rings of a pair dock on its one bracket.
@@ -75,7 +91,11 @@ export const siteBlocks = (
       const key = `${facing} ${site}`;
       const before = known.get(key);
       if (before !== undefined) return before;
-      const block = build(site, facing);
+      const of = parts.get(site)!;
+      const open = build(of, facing, siteLayouts[site]);
+      const block = collapsed.has(site)
+        ? closedBlock(open, closedParts(design, of), (closed) => build(closed, facing))
+        : open;
       known.set(key, block);
       return block;
     },

@@ -1,5 +1,5 @@
 import type { Design } from '../../engine/model/design.ts';
-import { joinPatches } from '../../engine/model/merge-patch.ts';
+import { joinPatches, type MergePatch } from '../../engine/model/merge-patch.ts';
 import type { Standing } from './move-parts.ts';
 import type { Operation } from './operation.ts';
 import { refused } from './operation.ts';
@@ -55,3 +55,7 @@ export const setCollapsed = (
     ),
   };
 };
+
+/** Opens a site that something is put into: what vanished at once would be looked for. */
+export const openedFor = (design: Design, site: string): MergePatch =>
+  isCollapsed(design, site) ? { layout: { sites: { [site]: { collapsed: null } } } } : {};

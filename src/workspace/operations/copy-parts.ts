@@ -4,6 +4,7 @@ import { emptyDesign, entrySchemas } from '../../engine/model/design.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { applyPatch, diffPatch, patchAt } from '../../engine/model/merge-patch.ts';
 import { danglingPatch, listReferences } from '../../engine/model/references.ts';
+import { openedFor } from './collapse-sites.ts';
 import { freeLoopback, freeName, freeVni } from './free-names.ts';
 import type { Standing } from './move-parts.ts';
 import type { NewId, Operation } from './operation.ts';
@@ -225,6 +226,8 @@ export const pasteParts = (
       notes: shift('notes', notes),
     },
   });
+  if (site !== undefined && Object.keys(fresh.devices).length > 0)
+    after = applyPatch(after, openedFor(after, site));
   after = applyPatch(after, danglingPatch(after));
   const created = (['sites', 'devices', 'notes'] as const).flatMap((collection) =>
     Object.keys(fresh[collection])

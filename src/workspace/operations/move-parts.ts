@@ -3,6 +3,7 @@ import { isGateway } from '../../engine/model/devices.ts';
 import type { Side } from '../../engine/model/layout.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { joinPatches } from '../../engine/model/merge-patch.ts';
+import { openedFor } from './collapse-sites.ts';
 import { notesAlong } from './notes-along.ts';
 import type { Operation } from './operation.ts';
 import { refused } from './operation.ts';
@@ -123,7 +124,9 @@ export const moveElements = (
 
 /** Puts devices that were dropped inside another site's frame into that site. */
 export const rehome = (design: Design, device: string, site: string): MergePatch =>
-  design.devices[device]?.site === site ? {} : { devices: { [device]: { site } } };
+  design.devices[device]?.site === site
+    ? {}
+    : joinPatches(design, [{ devices: { [device]: { site } } }, openedFor(design, site)]);
 
 /** Docks a ring on a side of its device, or lets the drawing choose again. */
 export const dockEndpoint = (design: Design, endpoint: string, side: Side | undefined): Operation => {

@@ -3,6 +3,7 @@ import type { Device, DeviceKind, Port } from '../../engine/model/devices.ts';
 import { isGateway } from '../../engine/model/devices.ts';
 import { noteSchema } from '../../engine/model/intent.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
+import { openedFor } from './collapse-sites.ts';
 import { freeLetter, freeLoopback, freeName, freeVlan } from './free-names.ts';
 import { nameOf } from './name-of.ts';
 import type { NewId, Operation } from './operation.ts';
@@ -113,7 +114,10 @@ export const placeDevice = (
     ...(site === undefined ? { sites: { [siteId]: { name: freeName(design.sites, 'Site') } } } : {}),
     devices: { [id]: device },
     ...(Object.keys(links).length > 0 ? { links } : {}),
-    layout: { devices: { [id]: { x: at.x, y: at.y } } },
+    layout: {
+      devices: { [id]: { x: at.x, y: at.y } },
+      ...(site === undefined ? {} : (openedFor(design, site)['layout'] as object | undefined)),
+    },
   };
   return {
     ok: true,

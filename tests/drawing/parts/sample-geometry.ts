@@ -98,6 +98,7 @@ export const factsWith = (
 ): DrawingFacts => ({
   segments: [],
   sites: {},
+  keptBack: {},
   devices: {},
   transports: {},
   associations: {},

@@ -1,0 +1,75 @@
+import { useId, useRef, useState, type KeyboardEvent } from 'react';
+import { FieldError } from '../../components/cell.tsx';
+import { editNote } from '../desk-state.ts';
+import { useField } from '../inspector/use-field.ts';
+
+const takeFocus = (area: HTMLTextAreaElement | null): void => {
+  if (area === null || area === document.activeElement) return;
+  area.focus({ preventScroll: true });
+  area.select();
+};
+
+/** A note's words, typed where they stand: Enter or leaving them keeps the new ones, Escape the old ones. */
+export function NoteEditor({
+  note,
+  widthPx,
+  heightPx,
+}: {
+  readonly note: string;
+  readonly widthPx: number;
+  readonly heightPx: number;
+}) {
+  const { value = '', refusal, commit } = useField<string>(['notes', note, 'text']);
+  const [draft, setDraft] = useState(value);
+  const [problem, setProblem] = useState<string>();
+  const isDone = useRef(false);
+  const problemId = useId();
+  const end = (backTo: Element | null | undefined): void => {
+    isDone.current = true;
+    editNote(undefined);
+    if (backTo instanceof HTMLElement) backTo.focus({ preventScroll: true });
+  };
+  const keep = (backTo?: Element | null): void => {
+    if (isDone.current) return;
+    const text = draft.trim();
+    const why = text === value ? undefined : refusal('Text', text, text);
+    if (why !== undefined) return setProblem(why);
+    if (text !== value) commit('Text', text);
+    end(backTo);
+  };
+  const onKeyDown = (event: KeyboardEvent): void => {
+    // The keys of the sheet are not meant while words are typed.
+    event.stopPropagation();
+    const node = event.currentTarget.closest('.react-flow__node');
+    if (event.key === 'Enter' && !event.shiftKey) {
+      event.preventDefault();
+      keep(node);
+    } else if (event.key === 'Escape') {
+      event.preventDefault();
+      end(node);
+    }
+  };
+  return (
+    <div className="note-editor nodrag nopan nowheel" style={{ width: widthPx + 12 }}>
+      <textarea
+        ref={takeFocus}
+        aria-label="Text of the note"
+        aria-invalid={problem === undefined ? undefined : true}
+        aria-describedby={problem === undefined ? undefined : problemId}
+        value={draft}
+        rows={Math.max(2, Math.ceil(heightPx / 19))}
+        onChange={(event) => {
+          setDraft(event.target.value);
+          setProblem(undefined);
+        }}
+        onBlur={() => keep()}
+        onKeyDown={onKeyDown}
+      />
+      {problem === undefined ? (
+        <p>Enter keeps it, Shift Enter begins a line, Esc leaves it as it was.</p>
+      ) : (
+        <FieldError id={problemId}>{problem}</FieldError>
+      )}
+    </div>
+  );
+}
