@@ -1,5 +1,6 @@
 import { Dialog as Primitive } from 'radix-ui';
 import { useRef, type ReactNode } from 'react';
+import { classNames } from '../lib/class-names.ts';
 import { Button } from './button.tsx';
 import { Icon } from './icon.tsx';
 
@@ -13,6 +14,8 @@ interface DialogProps {
   /** Buttons at the foot, the one that does it last. */
   readonly footer?: ReactNode;
   readonly widthPx?: number;
+  /** Takes the whole window, and leaves it to what is in it how that scrolls. */
+  readonly whole?: boolean;
   /** Takes the buttons of the foot into the form, so that Enter presses the one that does it. */
   readonly onSubmit?: () => void;
 }
@@ -35,13 +38,14 @@ export function Dialog({
   children,
   footer,
   widthPx = 460,
+  whole = false,
   onSubmit,
 }: DialogProps) {
   // Opened by the page's state and not by a trigger of the library, which would know it.
   const opener = useRef<Element>(null);
   const body = (
     <>
-      <div className="min-h-0 flex-1 overflow-y-auto px-20 py-16">{children}</div>
+      <div className={classNames('min-h-0 flex-1', !whole && 'overflow-y-auto px-20 py-16')}>{children}</div>
       {footer !== undefined && (
         <div className="flex flex-wrap justify-end gap-8 border-t border-rule-2 px-20 py-12">{footer}</div>
       )}
@@ -51,10 +55,15 @@ export function Dialog({
     <Primitive.Root open={open} onOpenChange={onOpenChange}>
       <Primitive.Portal>
         <div className="fixed inset-0 z-40 bg-casing/40" />
-        <div className="pointer-events-none fixed inset-0 z-40 flex items-start justify-center p-16 pt-[min(12vh,96px)]">
+        <div
+          className={classNames(
+            'pointer-events-none fixed inset-0 z-40 flex justify-center p-16',
+            whole ? 'items-stretch max-sm:p-0' : 'items-start pt-[min(12vh,96px)]',
+          )}
+        >
           <Primitive.Content
             className="pointer-events-auto flex max-h-full w-full flex-col border-1.5 border-ink bg-panel text-ink shadow-sheet outline-none"
-            style={{ maxWidth: widthPx }}
+            style={whole ? undefined : { maxWidth: widthPx }}
             onOpenAutoFocus={(event) => {
               opener.current = document.activeElement;
               focusFirstField(event);

@@ -8,6 +8,7 @@ import type { Design } from '../engine/model/design.ts';
 import { parseDesign } from '../engine/model/parse-design.ts';
 import { DesignBar } from '../features/design-bar/design-bar.tsx';
 import { useTravelKeys } from '../features/design-bar/use-travel-keys.ts';
+import { StretchDialogs } from '../features/stretch/stretch-dialogs.tsx';
 import { callApi } from '../lib/api-client.ts';
 import { asApiError } from '../lib/api-error.ts';
 import { DesignPlaceProvider } from '../workspace/design-place.tsx';
@@ -111,6 +112,7 @@ function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonl
           <Suspense fallback={<Opening />}>
             <Outlet />
           </Suspense>
+          <StretchDialogs />
         </StoredChecks>
       </OpenDesignProvider>
     </DesignPlaceProvider>

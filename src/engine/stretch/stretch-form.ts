@@ -58,6 +58,8 @@ export const sitePlanSchema = z.strictObject({
 const transportPlanSchema = z.strictObject({
   key: idSchema,
   name: nameSchema,
+  /** Id of a transport that the design has already; what the design says of it stands. */
+  existing: idSchema.optional(),
   kind: oneOf(['internet', 'private-routed', 'own-routed']),
   /** Absent: only a network of one's own is. */
   trusted: yesOrNo.optional(),

@@ -41,6 +41,35 @@ interface Numbers {
   readonly letters: readonly string[];
 }
 
+/** The form with what the design says of transports that it has already. */
+const withExisting = (input: unknown, { transports }: Design): Answer<{ readonly form: StretchForm }> => {
+  const read = parseStretchForm(input);
+  if (!read.ok) return read;
+  const unknown = read.form.transports.flatMap(({ existing }, i) =>
+    existing === undefined || Object.hasOwn(transports, existing)
+      ? []
+      : [{ field: `transports.${i}.existing`, value: existing, expected: 'a transport of this design' }],
+  );
+  if (unknown.length > 0) return refuse(unknown);
+  if (read.form.transports.every(({ existing }) => existing === undefined)) return read;
+  return parseStretchForm({
+    ...read.form,
+    transports: read.form.transports.map((plan) => {
+      const known = plan.existing === undefined ? undefined : transports[plan.existing];
+      if (known === undefined) return plan;
+      const { name, kind, trusted, mtu } = known;
+      return {
+        key: plan.key,
+        existing: plan.existing,
+        name,
+        kind,
+        ...(trusted === undefined ? {} : { trusted }),
+        ...(mtu === undefined ? {} : { mtu }),
+      };
+    }),
+  });
+};
+
 /** All numbers that the form leaves open, from its pools. */
 const numbersFor = (form: StretchForm, { design, numbering = {} }: StretchContext): Answer<Numbers> => {
   const { loopbacks: pool, vnis: vniPool } = form.pools ?? {};
@@ -130,7 +159,8 @@ interface Built {
 const addGround = (form: StretchForm, numbers: Numbers, draft: Draft): Built => {
   const transports = new Map(
     form.transports.map((plan) => {
-      const { key, kind, mtu, latencyUs } = plan;
+      const { key, existing, kind, mtu, latencyUs } = plan;
+      if (existing !== undefined) return [key, existing] as const;
       const entry: Entry<'transports'> = {
         name: draft.freeName('transports', plan.name),
         kind,
@@ -328,7 +358,7 @@ const addHosts = (built: Built): void => {
  * Refused with the fields that contradict each other, or for which the pools have nothing left.
  */
 export const stretch = (input: unknown, context: StretchContext): Answer<{ readonly patch: MergePatch }> => {
-  const read = parseStretchForm(input);
+  const read = withExisting(input, context.design);
   if (!read.ok) return read;
   const { form } = read;
   const numbers = numbersFor(form, context);

@@ -98,6 +98,24 @@ describe('any valid form', () => {
   });
 });
 
+test('lands new sites on a transport that the design has already', () => {
+  const before = built(formOf(2));
+  const [transport] = Object.keys(before.transports);
+  const more = formOf(2, {
+    sites: formOf(4).sites.slice(2),
+    segments: [{ key: 'b', name: 'CCTV', protocols: ['ipv4'] }],
+    // What the form says of it beside its id is not asked.
+    transports: [{ key: 'coast', existing: transport!, name: 'Whatever', kind: 'own-routed', mtu: 9000 }],
+  });
+  const after = built(more, before);
+  expect(after.transports).toEqual(before.transports);
+  expect(after.segments['b']!.mtu).toBe(1396);
+  expect(told(after)).toEqual([]);
+  expect(problemsOf({ ...more, transports: [{ ...more.transports[0], existing: 'moon' }] })).toEqual([
+    { field: 'transports.0.existing', value: 'moon', expected: 'a transport of this design' },
+  ]);
+});
+
 describe('topologies', () => {
   const joinsOf = (design: Design): readonly string[] => Object.keys(design.tunnels).sort();
 

@@ -1,0 +1,48 @@
+import type { SheetGeometry } from '../../drawing/geometry.ts';
+import { noDecorations } from '../../drawing/decorations.ts';
+import { drawingFacts } from '../../drawing/parts/drawing-facts.ts';
+import { route } from '../../drawing/routing/route.ts';
+import { sheetShapes } from '../../drawing/svg/sheet-shapes.ts';
+import type { Layer } from '../../drawing/svg/standalone-svg.ts';
+import { tidy } from '../../drawing/tidy/tidy.ts';
+import { tunnelSegments } from '../../engine/flood/tunnel-segments.ts';
+import type { Design } from '../../engine/model/design.ts';
+import { applyPatch } from '../../engine/model/merge-patch.ts';
+import { indexNetwork } from '../../engine/network/index-network.ts';
+import type { NumberingContext } from '../../engine/numbering/numbering-context.ts';
+import type { Finding } from '../../engine/rules/finding.ts';
+import { runRules } from '../../engine/rules/run-rules.ts';
+import { stretch } from '../../engine/stretch/stretch.ts';
+import type { StretchForm } from '../../engine/stretch/stretch-form.ts';
+import type { Problem } from '../../engine/wire/problem.ts';
+
+/** What a form would put on the sheet. */
+export type Preview =
+  | { readonly ok: false; readonly problems: readonly Problem[] }
+  | {
+      readonly ok: true;
+      readonly design: Design;
+      readonly sheet: SheetGeometry['sheet'];
+      readonly layers: readonly Layer[];
+      readonly findings: readonly Finding[];
+    };
+
+/** Builds, lays out, draws and checks what a form describes, on a design that stays as it is. */
+export const previewOf = (form: StretchForm, start: Design, numbering: NumberingContext): Preview => {
+  const answer = stretch(form, { design: start, newId: (stem) => stem, numbering });
+  if (!answer.ok) return answer;
+  const built = applyPatch(start, answer.patch);
+  const design = applyPatch(built, tidy(built));
+  const geometry = route(design);
+  return {
+    ok: true,
+    design,
+    sheet: geometry.sheet,
+    layers: sheetShapes(geometry, {
+      level: 'plan',
+      decorations: noDecorations,
+      facts: drawingFacts(design, tunnelSegments(indexNetwork(design))),
+    }),
+    findings: runRules(design, numbering),
+  };
+};
