@@ -1,8 +1,6 @@
-import { associationPath } from '../network/association-path.ts';
-import { associationStates } from '../network/can-come-up.ts';
+import { hiddenAlike } from './hidden-alike.ts';
 import { defineRule } from './define-rule.ts';
 import { meetingFixes } from './meeting-fixes.ts';
-import { associationPlaces } from './places.ts';
 
 export const associationBothDynamic = defineRule({
   id: 'association-both-dynamic',
@@ -19,31 +17,7 @@ export const associationBothDynamic = defineRule({
         `${v.placeA} and ${v.placeB} both have changing addresses and no name`,
     },
   },
-  check: (network) => {
-    const { design } = network;
-    return [...associationStates(network)].flatMap(([id, { reasons }]) => {
-      if (!reasons.some(({ code }) => code === 'both-dynamic')) return [];
-      const path = associationPath(network, id);
-      const association = design.associations[id]!;
-      const places = associationPlaces(design, association);
-      const landings = path.ok ? [path.landingA, path.landingB] : [];
-      return [
-        {
-          message: 'bothDynamic',
-          values: { association: association.name, placeA: places.a, placeB: places.b },
-          elements: [
-            { collection: 'associations', id },
-            ...landings.map((landing) => ({ collection: 'links' as const, id: landing })),
-          ],
-          identity: [id],
-          properties: landings.map((landing) => ({
-            ref: { collection: 'links' as const, id: landing },
-            path: ['dynamic'],
-          })),
-          basis: landings,
-        },
-      ];
-    });
-  },
+  check: (network) =>
+    hiddenAlike(network, 'both-dynamic').map((fault) => ({ message: 'bothDynamic', ...fault })),
   fixes: (fault, network) => meetingFixes(network, fault.elements[0]!.id),
 });
