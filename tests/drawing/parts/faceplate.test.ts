@@ -115,7 +115,7 @@ describe('a faceplate', () => {
     expect(wordsOf(first!)).toContain('failed');
     expect(wordsOf(second!)).toContain('standby');
     expect(keyed(shape, 'bracket')).toHaveLength(1);
-    expect(wordsOf(shape)).toContain('fw-ho HA pair');
+    expect(wordsOf(shape)).toContain('fw-ho\u00a0HA pair');
   });
 });
 

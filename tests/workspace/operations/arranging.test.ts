@@ -12,8 +12,10 @@ import {
   alignments,
   distributeElements,
 } from '../../../src/workspace/operations/align-parts.ts';
-import { moveElements, setLocked } from '../../../src/workspace/operations/move-parts.ts';
+import { setCollapsed } from '../../../src/workspace/operations/collapse-sites.ts';
+import { moveElements, rehome, setLocked } from '../../../src/workspace/operations/move-parts.ts';
 import type { Operation } from '../../../src/workspace/operations/operation.ts';
+import { pinNote, placeDevice } from '../../../src/workspace/operations/place-parts.ts';
 import { gridPx, snapMove } from '../../../src/workspace/operations/snap-move.ts';
 import { hubDesign } from '../../support/designs.ts';
 
@@ -189,5 +191,72 @@ describe('moving', () => {
     const after = done(held, moveElements(held, standing, [{ collection: 'sites', id: 's1' }], 24, 0));
     expect(after.layout.devices!['h-s1-a']).toEqual(held.layout.devices!['h-s1-a']);
     expect(after.layout.devices!['fw-s1']!.x).toBe(held.layout.devices!['fw-s1']!.x + 24);
+  });
+});
+
+describe('collapsing a site', () => {
+  const standing = standingOf(route(design));
+
+  it('is one step there and one back, and writes down where everything comes out', () => {
+    const unplaced = applyPatch(design, { layout: { devices: null, sites: null } });
+    const before = standingOf(route(unplaced));
+    const closed = done(unplaced, setCollapsed(unplaced, before, ['s1'], true));
+    expect(closed.layout.sites!['s1']!.collapsed).toBe(true);
+    const opened = done(closed, setCollapsed(closed, standingOf(route(closed)), ['s1'], false));
+    expect(standingOf(route(opened)).devices['h-s1-a']).toEqual(before.devices['h-s1-a']);
+  });
+
+  it('moves as one, with what it keeps back', () => {
+    const closed = done(design, setCollapsed(design, standing, ['s1'], true));
+    const moved = done(
+      closed,
+      moveElements(closed, standingOf(route(closed)), [{ collection: 'sites', id: 's1' }], 40, 16),
+    );
+    for (const id of ['fw-s1', 'h-s1-a', 'sw-s1'])
+      expect(moved.layout.devices![id]!.x).toBe(design.layout.devices![id]!.x + 40);
+  });
+
+  it('opens again for what is put into it', () => {
+    const closed = done(design, setCollapsed(design, standing, ['s1'], true));
+    const at = { x: 700, y: 100 };
+    expect(
+      done(
+        closed,
+        placeDevice(closed, 'host', at, 's1', () => 'h-new'),
+      ).layout.sites!['s1']!.collapsed,
+    ).toBe(undefined);
+    expect(applyPatch(closed, rehome(closed, 'h-s2-a', 's1')).layout.sites!['s1']!.collapsed).toBe(undefined);
+  });
+
+  it('says why an empty site stays as it is', () => {
+    const empty = applyPatch(design, {
+      sites: { s9: { name: 'Quay' } },
+      layout: { sites: { s9: { x: 10, y: 10, width: 200, height: 100 } } },
+    });
+    expect(why(setCollapsed(empty, standingOf(route(empty)), ['s9'], true))).toMatch(/nothing to keep back/);
+    expect(why(setCollapsed(design, standing, ['gone'], true))).toMatch(/no longer there/);
+  });
+});
+
+describe('a note', () => {
+  it('is pinned to what it is put on, to the device of a port, and stands beside it', () => {
+    const pinned = done(
+      design,
+      pinNote(design, { ...device('fw-s1'), port: 'wan1' }, () => 'note-1'),
+    );
+    expect(pinned.notes['note-1']).toEqual({
+      text: 'Note',
+      target: { collection: 'devices', id: 'fw-s1' },
+    });
+    const note = route(pinned).notes.find(({ id }) => id === 'note-1')!;
+    const plate = rectOf(pinned, device('fw-s1'));
+    expect(Math.hypot(note.at.x - plate.x, note.at.y - plate.y)).toBeLessThan(600);
+  });
+
+  it('is not pinned to what is gone or takes none', () => {
+    expect(why(pinNote(design, device('gone'), () => 'n'))).toMatch(/No note can be pinned/);
+    expect(why(pinNote(design, { collection: 'notes', id: 'n' }, () => 'n'))).toMatch(
+      /No note can be pinned/,
+    );
   });
 });
