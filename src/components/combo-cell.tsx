@@ -124,8 +124,8 @@ export function ComboCell({
                 onPointerMove={() => setAt(index)}
                 onClick={() => take(option)}
                 className={classNames(
-                  'pointer-events-auto flex min-h-28 cursor-pointer flex-wrap items-baseline gap-x-8 px-9 py-4 text-base text-ink',
-                  index === at && 'bg-strip text-strip-ink',
+                  'pointer-events-auto flex min-h-28 cursor-pointer flex-wrap items-baseline gap-x-8 px-9 py-4 text-base',
+                  index === at ? 'bg-strip text-strip-ink' : 'text-ink',
                 )}
               >
                 <span className={option.value === value ? 'font-semibold' : undefined}>{option.label}</span>

@@ -83,7 +83,7 @@ export function SheetDrawer({ tabs, value, onChange, openAtFirst, counts }: Shee
         {isOpen &&
           tabs.map((tab) => (
             <TabPanel key={tab.value} value={tab.value}>
-              <div className="overflow-y-auto max-md:max-h-[34dvh]" style={{ height: heightPx }}>
+              <div className="overflow-y-auto max-md:max-h-[46dvh]" style={{ height: heightPx }}>
                 {tab.panel}
               </div>
             </TabPanel>

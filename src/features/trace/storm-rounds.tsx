@@ -10,9 +10,9 @@ export function StormRounds({ design, storm }: { readonly design: Design; readon
   return (
     <section
       aria-label="The storm"
-      className="flex shrink-0 flex-wrap items-end gap-x-28 gap-y-8 border-b border-rule-2 bg-raise px-12 py-8"
+      className="flex shrink-0 flex-wrap items-center justify-between gap-x-28 gap-y-4 border-b border-rule-2 bg-raise px-12 py-5"
     >
-      <div className="min-w-200 flex-1">
+      <div className="min-w-0">
         <h3 className="text-label text-ink-3">The cycle, {cycle.length} hops</h3>
         <p className="text-base text-ink">
           {refs.map((ref, at) => (
@@ -25,7 +25,7 @@ export function StormRounds({ design, storm }: { readonly design: Design; readon
         </p>
       </div>
       <table className="text-base">
-        <caption className="text-left text-label text-ink-3">
+        <caption className="text-left text-label whitespace-nowrap text-ink-3">
           Copies underway, by round: they {growth === 'multiplies' ? 'multiply' : 'neither grow nor end'}
         </caption>
         <thead className="sr-only">
@@ -40,14 +40,16 @@ export function StormRounds({ design, storm }: { readonly design: Design; readon
         <tbody>
           <tr>
             {copiesByRound.map((copies, round) => (
-              <td key={round} className="pr-10 align-bottom font-semibold text-red">
-                {/* Logarithmic: what doubles each round would leave the first rounds without a bar. */}
-                <span
-                  aria-hidden="true"
-                  className="block w-32 bg-red"
-                  style={{ height: 3 + (Math.log2(copies + 1) / Math.log2(most + 1)) * 17 }}
-                />
-                {copies.toLocaleString('en-GB')}
+              <td key={round} className="pr-14 font-semibold text-red">
+                <span className="flex h-18 items-end gap-4">
+                  {/* Logarithmic: what doubles each round would leave the first rounds without a bar. */}
+                  <span
+                    aria-hidden="true"
+                    className="mb-4 w-9 bg-red"
+                    style={{ height: 2 + (Math.log2(copies + 1) / Math.log2(most + 1)) * 11 }}
+                  />
+                  {copies.toLocaleString('en-GB')}
+                </span>
               </td>
             ))}
           </tr>

@@ -60,7 +60,7 @@ export const rowHeight = (row: StripRow, isNarrow: boolean): number =>
     ? isNarrow
       ? narrowRowPx
       : rowPx
-    : isNarrow && row.kind !== 'branch'
+    : isNarrow && row.kind !== 'branch' && row.measure !== ''
       ? narrowPlainRowPx
       : plainRowPx;
 

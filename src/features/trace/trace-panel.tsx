@@ -7,6 +7,7 @@ import { SegmentedChoice } from '../../components/segmented-choice.tsx';
 import { rowsAsCsv } from '../../components/table-view.ts';
 import { paletteOf } from '../../drawing/theme/segment-tokens.ts';
 import type { Design } from '../../engine/model/design.ts';
+import { classNames } from '../../lib/class-names.ts';
 import { copyText } from './copy-text.ts';
 import { HopStrip } from './hop-strip.tsx';
 import { hopColumns, HopsTable } from './hops-table.tsx';
@@ -172,11 +173,25 @@ function Followed({
   };
   const isSideBySide = other !== undefined && !isStacked && view === 'strip';
   const { storm } = chosen.result.trace;
+  const endings = isSideBySide ? (
+    <div className="grid shrink-0 grid-cols-2 divide-x divide-rule-2">
+      {verdict('first', first, true)}
+      {verdict('second', other, true)}
+    </div>
+  ) : (
+    verdict(chosen === first ? 'first' : 'second', chosen, other !== undefined)
+  );
   return (
-    <div className="flex h-full min-h-0 flex-col" aria-busy={isBehind || undefined}>
+    // Stacked the drawer is too low for a strip that scrolls by itself: all of it scrolls, the verdict first.
+    <div
+      className={classNames('flex min-h-0 flex-col', !isStacked && 'h-full')}
+      aria-busy={isBehind || undefined}
+    >
+      {isStacked && endings}
       <PlayBar playback={playback} count={Math.max(first.result.hops.length, other?.result.hops.length ?? 0)}>
-        <span className="min-w-0 truncate text-base text-ink-2 max-lg:hidden">{title}</span>
-        {other !== undefined && (
+        {other === undefined ? (
+          <span className="min-w-0 truncate text-base text-ink-2 max-lg:hidden">{title}</span>
+        ) : (
           <SegmentedChoice
             label="Probe that the sheet shows"
             small
@@ -237,7 +252,7 @@ function Followed({
         </p>
       )}
       {storm !== undefined && view === 'strip' && <StormRounds design={design} storm={storm} />}
-      <div className="min-h-0 flex-1">
+      <div className={isStacked ? 'h-[70dvh]' : 'min-h-0 flex-1'}>
         {view === 'table' ? (
           <HopsTable key={shown} result={chosen.result} caption={`Hops, ${title}`} />
         ) : isSideBySide ? (
@@ -249,14 +264,7 @@ function Followed({
           strip(chosen)
         )}
       </div>
-      {isSideBySide ? (
-        <div className="grid shrink-0 grid-cols-2 divide-x divide-rule-2">
-          {verdict('first', first, true)}
-          {verdict('second', other, true)}
-        </div>
-      ) : (
-        <>{verdict(chosen === first ? 'first' : 'second', chosen, other !== undefined)}</>
-      )}
+      {!isStacked && endings}
     </div>
   );
 }

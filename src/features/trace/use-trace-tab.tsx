@@ -34,6 +34,7 @@ import { usePlayback } from './use-playback.ts';
 import './trace.css';
 
 const tab = { value: 'trace', label: 'Frame trace', usualHeightPx: 318 } as const;
+const comparedHeightPx = 400;
 
 /** On how many stages the lamp goes over a sheet when there are more hops: each draws the whole sheet anew. */
 const mostStages = 24;
@@ -203,6 +204,7 @@ export function useTraceTab(
   );
   return {
     ...tab,
+    ...(second === undefined ? {} : { usualHeightPx: comparedHeightPx }),
     ...(decorations === undefined ? {} : { decorations }),
     ...(isStacked ? {} : { side }),
     ...(picking === undefined ? {} : { onPick }),
