@@ -13,10 +13,17 @@ import { runScript } from './run-script.ts';
 export interface IkeDaemons {
   /** Associations that a gateway has an ESP association for, just now. */
   readonly upAt: (device: string) => Promise<ReadonlySet<string>>;
+  /** Asks a gateway to renew the child keys of these associations; true for those that then have new ones. */
+  readonly renewAt: (
+    device: string,
+    associations: readonly string[],
+  ) => Promise<ReadonlyMap<string, boolean>>;
   readonly end: () => Promise<void>;
 }
 
 const startingMs = 20_000;
+// One exchange of two packets on one machine; a refusal takes as long.
+const renewingMs = 3_000;
 const pause = (ms: number): Promise<void> => new Promise((resolve) => setTimeout(resolve, ms));
 
 const ended = (child: ChildProcess): Promise<void> =>
@@ -72,12 +79,24 @@ export const startIkeDaemons = async (design: Design): Promise<IkeDaemons> => {
     await end();
     throw error;
   }
+  const control = (device: string, words: string): Promise<string> =>
+    runScript(`${ikeControl} ${words} --uri unix://${at(device, 'socket')}`);
+  /** The daemon's own number of the youngest ESP association of each name. */
+  const installed = async (device: string): Promise<ReadonlyMap<string, number>> => {
+    const shown = await control(device, '--list-sas');
+    const numbers = new Map<string, number>();
+    for (const [, name, number] of shown.matchAll(/^\s+(\S+): #(\d+), reqid \d+, INSTALLED/gm))
+      numbers.set(name!, Math.max(Number(number), numbers.get(name!) ?? 0));
+    return numbers;
+  };
   return {
-    upAt: async (device) => {
-      const shown = await runScript(`${ikeControl} --list-sas --uri unix://${at(device, 'socket')}`);
-      return new Set(
-        [...shown.matchAll(/^\s+(\S+): #\d+, reqid \d+, INSTALLED/gm)].map((found) => found[1]!),
-      );
+    upAt: async (device) => new Set((await installed(device)).keys()),
+    renewAt: async (device, associations) => {
+      const before = await installed(device);
+      for (const name of associations) await control(device, `--rekey --child ${name}`);
+      await pause(renewingMs);
+      const after = await installed(device);
+      return new Map(associations.map((name) => [name, (after.get(name) ?? 0) > before.get(name)!]));
     },
     end,
   };

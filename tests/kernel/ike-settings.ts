@@ -61,6 +61,16 @@ const proposals = (map: AssociationEnd['ikeProposals'] | AssociationEnd['espProp
     .map((proposal) => proposalWords(proposal).join('-'))
     .join(', ');
 
+/** A group beside an ESP proposal asks for a key exchange of its own when child keys are renewed. */
+const espProposals = ({ espProposals: map, perfectForwardSecrecy }: AssociationEnd): string =>
+  proposals(
+    perfectForwardSecrecy === false
+      ? Object.fromEntries(
+          Object.entries(map ?? {}).map(([id, { group: _group, ...proposal }]) => [id, proposal]),
+        )
+      : map,
+  );
+
 const startActions = { starts: 'start', answers: 'none', 'on-traffic': 'trap' } as const;
 
 const landingOf = (design: Design, end: AssociationEnd) => {
@@ -90,7 +100,7 @@ const connection = (
       id = ${far.identity} }
     children { ${id} {
       mode = tunnel
-      esp_proposals = ${proposals(own.espProposals)}
+      esp_proposals = ${espProposals(own)}
       local_ts = ${inOrder(own.selectors)
         .map((selector) => selector.local)
         .join(', ')}

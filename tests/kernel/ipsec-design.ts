@@ -58,6 +58,15 @@ export const ipsecCases: readonly IpsecCase[] = [
     what: 'ESP keys of different lengths',
     ends: { b: { espProposals: { first: { keyBits: 128 } } } },
   },
+  {
+    what: 'groups for renewing child keys that differ',
+    ends: { b: { espProposals: { first: { group: 31 } } } },
+  },
+  { what: 'forward secrecy at one end alone', ends: { b: { perfectForwardSecrecy: false } } },
+  {
+    what: 'forward secrecy at neither end',
+    ends: { a: { perfectForwardSecrecy: false }, b: { perfectForwardSecrecy: false } },
+  },
   { what: 'IKE groups that differ', ends: { b: { ikeProposals: { first: { group: 31 } } } } },
   {
     what: 'IKE pseudorandom functions that differ',

@@ -1,6 +1,7 @@
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { canComeUp } from '#engine/network/can-come-up.ts';
 import { indexNetwork } from '#engine/network/index-network.ts';
+import { forwardSecrecyMismatch } from '#engine/rules/forward-secrecy-mismatch.ts';
 import { tunnelCapacity } from '#engine/rules/tunnel-capacity.ts';
 import type { Stack } from '#engine/wire/stack.ts';
 import { stackLayers } from '#engine/wire/stack-layers.ts';
@@ -100,4 +101,21 @@ describe.skipIf(ipsecLack !== undefined)('an association', () => {
       expect(lengths.sort((x, y) => x - y)).toEqual(predicted);
     },
   );
+
+  test('that is up renews its keys exactly where the check of forward secrecy finds nothing', async () => {
+    const told = new Set(
+      forwardSecrecyMismatch.check(network, {}).flatMap(({ elements }) => elements.map(({ id }) => id)),
+    );
+    const renewed = await daemons.renewAt(
+      'fw-s0',
+      working.map(({ association }) => association),
+    );
+    expect(
+      working.filter(({ association }) => renewed.get(association) !== true).map(({ what }) => what),
+    ).toEqual(working.filter(({ association }) => told.has(association)).map(({ what }) => what));
+    expect(told.size).toBe(2);
+    // What could not renew its keys still has the first ones.
+    const up = await daemons.upAt('fw-s0');
+    for (const { association } of working) expect(up).toContain(association);
+  });
 });
