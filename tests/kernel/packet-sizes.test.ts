@@ -2,9 +2,11 @@ import { describe, expect, test } from 'vitest';
 import type { Design } from '#engine/model/design.ts';
 import { indexNetwork } from '#engine/network/index-network.ts';
 import { tunnelCapacity } from '#engine/rules/tunnel-capacity.ts';
+import { traceFrame } from '#engine/trace/trace-frame.ts';
 import { fragmentsOf } from '#engine/wire/fragments-of.ts';
 import type { TagCount } from '#engine/wire/stack.ts';
 import { stackLayers } from '#engine/wire/stack-layers.ts';
+import { changed } from './changed.ts';
 import { frameOf, ipv4Packet, underlayPacketOf } from './frames.ts';
 import { kernelLack } from './kernel-lack.ts';
 import type { Lab } from './lab.ts';
@@ -110,6 +112,43 @@ describe.skipIf(kernelLack !== undefined)('packet lengths in the kernel', () => 
         const { arrived, underlayBytes } = await send(lab, packetFrame(packetBytes, 0, false));
         expect(arrived).toBe(true);
         expect([...underlayBytes].sort()).toEqual(cut.pieces.map((piece) => piece.packetBytes).sort());
+      }
+    });
+  });
+
+  test('are none where the host forbids to cut its packet, as the engine has it of a make that minds that', async () => {
+    const port = { ports: { wan1: { mtu: 1400 } }, profile: 'linux' };
+    const design = changed(wholePortDesign({ outerDf: 'clear', transportMtuBytes: 1400 }), {
+      profiles: { linux: { name: 'Minds the DF inside', oversizeDf: 'icmp' } },
+      devices: { 'fw-gul': port, 'fw-orr': port },
+    });
+    const predicted = (packetBytes: number, dontFragment: boolean): string => {
+      const trace = traceFrame(design, {
+        source: { host: 'h-gul' },
+        destination: { kind: 'host', host: 'h-orr', learned: false },
+        tags: [],
+        packet: { kind: 'ip', version: 'ipv4', packetBytes, dontFragment },
+      });
+      if (!trace.ok) throw new Error(JSON.stringify(trace.problems));
+      const crossing = trace.steps.find((step) => step.crossing?.collection === 'tunnels')!;
+      return crossing.verdict?.code ?? (crossing.pieces === undefined ? 'whole' : 'cut');
+    };
+    await withLab(design, async (lab) => {
+      for (const [packetBytes, isWhole, what] of [
+        [1350, true, 'whole'],
+        [1351, true, 'dropped'],
+        [1351, false, 'cut'],
+      ] as const) {
+        expect(predicted(packetBytes, isWhole)).toBe(what);
+        const { arrived, underlayBytes } = await send(
+          lab,
+          packetFrame(packetBytes, 0, isWhole),
+          what !== 'dropped',
+        );
+        expect([arrived, underlayBytes.length]).toEqual([
+          what !== 'dropped',
+          { whole: 1, cut: 2, dropped: 0 }[what],
+        ]);
       }
     });
   });
