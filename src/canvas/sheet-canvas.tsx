@@ -31,7 +31,7 @@ import { endAt, isJoining, placePart, type TrayPart } from './place-part.ts';
 import { PullLine } from './pull-line.tsx';
 import { readPartDrag } from './parts-tray/part-drag.ts';
 import { elementAt, refAt } from './ref-at.ts';
-import { CrowdedNotice, SheetHint, ViewNotice } from './sheet-hints.tsx';
+import { CrowdedNotice, EmptySheetHint, SheetHint, ViewNotice } from './sheet-hints.tsx';
 import { SnapGuides } from './snap-guides.tsx';
 import { useKeptFit } from './use-kept-fit.ts';
 import { useMoving } from './use-moving.ts';
@@ -263,8 +263,9 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
   const actions = useElementActions();
   const onContextMenu = (event: MouseEvent): void => {
     event.preventDefault();
-    // The menu key comes as a key as well, and knows better where to open it.
-    if (event.button !== 2 || placing !== undefined) return;
+    // The menu key comes as a key as well, and knows better where to open it; a long press comes only so.
+    const { pointerType } = event.nativeEvent as PointerEvent;
+    if ((event.button !== 2 && pointerType !== 'touch') || placing !== undefined) return;
     const ref = elementAt(event.target as Element);
     if (ref !== undefined && !selection.some((one) => elementKey(one) === elementKey(ref)))
       open.select([ref]);
@@ -358,6 +359,7 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
           <SnapGuides guides={moving.guides} />
         </ReactFlow>
         <CrowdedNotice />
+        <EmptySheetHint />
         <SheetHint />
         <ViewNotice />
       </div>

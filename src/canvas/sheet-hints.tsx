@@ -1,6 +1,9 @@
 import { Button } from '../components/button.tsx';
+import { EmptyState, UncabledPicture } from '../components/empty-state.tsx';
 import { crowdedWords } from '../drawing/parts/crowded-words.ts';
 import { viewLayers } from '../drawing/view-layers.ts';
+import { stretchForm } from '../lib/stretch-address.ts';
+import { useSearchValues } from '../lib/use-search-values.ts';
 import { useOpenState } from '../workspace/open-design-context.tsx';
 import { useDesk } from './desk-state.ts';
 import { useDrawn } from './geometry-context.tsx';
@@ -19,6 +22,33 @@ export function CrowdedNotice() {
       {others.length > 0 && ` And ${others.length} more.`}
       {editable && ' Tidy lays the sheet out.'}
     </p>
+  );
+}
+
+/** What an empty sheet is for, and the two ways to begin. */
+export function EmptySheetHint() {
+  const { change } = useSearchValues();
+  const editable = useOpenState((state) => state.editable);
+  const isEmpty = useOpenState(
+    ({ document }) => Object.keys(document.sites).length + Object.keys(document.transports).length === 0,
+  );
+  const placing = useDesk((state) => state.placing);
+  if (!editable || !isEmpty || placing !== undefined) return null;
+  return (
+    <div className="empty-sheet-hint">
+      <EmptyState
+        title="Nothing is on the sheet yet"
+        picture={<UncabledPicture />}
+        action={
+          <Button kind="primary" onClick={() => change({ stretch: stretchForm })}>
+            Stretch…
+          </Button>
+        }
+      >
+        Drag sites, devices and transports from the tray. Or name your sites and segments, and have a complete
+        first design made of them.
+      </EmptyState>
+    </div>
   );
 }
 

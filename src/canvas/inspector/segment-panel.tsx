@@ -8,6 +8,7 @@ import { tunnelSegments } from '../../engine/flood/tunnel-segments.ts';
 import { protocols } from '../../engine/model/intent.ts';
 import { patchAt } from '../../engine/model/merge-patch.ts';
 import { protocolWords } from '../../lib/protocol-words.ts';
+import { useSearchValues } from '../../lib/use-search-values.ts';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { placeDemand } from '../../workspace/operations/place-parts.ts';
 import { AddButton } from './add-button.tsx';
@@ -46,6 +47,7 @@ export function SegmentPanel({ id }: { readonly id: string }) {
         <YesNoField label="Must be filtered" path={at('mustBeFiltered')} />
       </CellGrid>
       <FindingBoxes about={ref} />
+      <StretchButton id={id} />
       <Places id={id} />
       <Section title="Protocols that must survive">
         <CheckList
@@ -72,6 +74,14 @@ export function SegmentPanel({ id }: { readonly id: string }) {
       </Section>
     </>
   );
+}
+
+/** Opens the assistant that joins one more site. */
+function StretchButton({ id }: { readonly id: string }) {
+  const { change } = useSearchValues();
+  const editable = useEditable();
+  if (!editable) return null;
+  return <Button onClick={() => change({ stretch: id })}>Stretch to another site…</Button>;
 }
 
 /** The sites where a segment lands, with VLAN and subnets at each. */

@@ -1,23 +1,26 @@
 import { useState } from 'react';
 import { useNavigate } from 'react-router-dom';
 import { Button } from '../../components/button.tsx';
-import { CellGrid, FieldError } from '../../components/cell.tsx';
+import { CellGrid, FieldError, ReadCell } from '../../components/cell.tsx';
 import { Dialog } from '../../components/dialog.tsx';
 import { ChoiceCell, InputCell, SelectCell } from '../../components/field-cells.tsx';
 import { ErrorNotice } from '../../components/notice.tsx';
 import type { CreateDesign, demoDesigns, Engagement } from '../../contract/designs.ts';
 import { asApiError } from '../../lib/api-error.ts';
+import { stretchForm } from '../../lib/stretch-address.ts';
 import { designPath } from '../../lib/workspace-path.ts';
 import { DocumentProblems } from './document-problems.tsx';
 import { useCreateDesign } from './engagements-query.ts';
 import { readDesignFile, type DesignFile } from './read-design-file.ts';
 import { titleProblem } from './title-problem.ts';
 
-type Source = CreateDesign['from']['kind'];
+/** With the assistant the design is made empty, and its form opened on it. */
+type Source = CreateDesign['from']['kind'] | 'assistant';
 type Demo = (typeof demoDesigns)[number];
 
 const sources = [
   { value: 'empty', label: 'Empty sheet' },
+  { value: 'assistant', label: 'Stretch' },
   { value: 'demo', label: 'Demo' },
   { value: 'copy', label: 'Copy' },
   { value: 'document', label: 'File' },
@@ -41,7 +44,7 @@ interface NewDesignDialogProps {
   readonly onClose: () => void;
 }
 
-/** Makes a design: empty, from the demo, as a copy, or from a design's own file. Opens it when it is made. */
+/** Makes a design: empty, by the assistant, from the demo, as a copy, or from a design's own file. Opens it when it is made. */
 export function NewDesignDialog({ engagements, engagementId, copyOf, onClose }: NewDesignDialogProps) {
   const navigate = useNavigate();
   const create = useCreateDesign();
@@ -75,7 +78,7 @@ export function NewDesignDialog({ engagements, engagementId, copyOf, onClose }: 
   }
 
   function whatToBeginWith(): CreateDesign['from'] | null {
-    if (source === 'empty') return { kind: 'empty' };
+    if (source === 'empty' || source === 'assistant') return { kind: 'empty' };
     if (source === 'demo') return { kind: 'demo', demo };
     if (source === 'copy') return copyId === '' ? null : { kind: 'copy', designId: copyId };
     return file?.ok === true ? { kind: 'document', document: file.document } : null;
@@ -86,7 +89,10 @@ export function NewDesignDialog({ engagements, engagementId, copyOf, onClose }: 
     if (problem !== undefined || from === null || target === '') return;
     create.mutate(
       { engagementId: target, title: title.trim(), from },
-      { onSuccess: (design) => void navigate(designPath(design.id)) },
+      {
+        onSuccess: (design) =>
+          void navigate(`${designPath(design.id)}${source === 'assistant' ? `?stretch=${stretchForm}` : ''}`),
+      },
     );
   };
 
@@ -122,6 +128,11 @@ export function NewDesignDialog({ engagements, engagementId, copyOf, onClose }: 
             create.reset();
           }}
         />
+        {source === 'assistant' && (
+          <ReadCell label="Stretch">
+            From your sites and segments to a complete first design, in one form.
+          </ReadCell>
+        )}
         {source === 'demo' && (
           <SelectCell label="Which demo" value={demo} options={demos} onChange={setDemo} />
         )}

@@ -1,4 +1,5 @@
 import { render } from '@testing-library/react';
+import { MemoryRouter } from 'react-router-dom';
 import userEvent from '@testing-library/user-event';
 import { Inspector, type InspectorProps } from '../../../src/canvas/inspector/inspector.tsx';
 import { ToastRegion } from '../../../src/components/toast.tsx';
@@ -60,14 +61,16 @@ export const renderInspector = (
   const design = openInMemory(document, editable);
   design.select(selection);
   render(
-    <TooltipProvider>
-      <OpenDesignProvider open={() => design}>
-        <ChecksProvider>
-          <Inspector {...tools} />
-        </ChecksProvider>
-      </OpenDesignProvider>
-      <ToastRegion />
-    </TooltipProvider>,
+    <MemoryRouter>
+      <TooltipProvider>
+        <OpenDesignProvider open={() => design}>
+          <ChecksProvider>
+            <Inspector {...tools} />
+          </ChecksProvider>
+        </OpenDesignProvider>
+        <ToastRegion />
+      </TooltipProvider>
+    </MemoryRouter>,
   );
   return {
     design,
