@@ -28,6 +28,7 @@ import { useFindingDecorations } from '../features/findings/use-finding-decorati
 import { useFindingFixes } from '../features/findings/use-finding-fixes.ts';
 import { useWaiving } from '../features/findings/use-waiving.tsx';
 import { useLoadTab } from '../features/load/use-load-tab.tsx';
+import { useOutageTab } from '../features/outage/use-outage-tab.tsx';
 import { createOutlineView } from '../features/outline/outline-view.ts';
 import { Outline } from '../features/outline/outline.tsx';
 import { useTraceFromHere } from '../features/trace/use-trace-from-here.ts';
@@ -149,7 +150,8 @@ function Surface() {
   };
   const traceTab = useTraceTab(valueOf('drawer') === 'trace', { onShowFinding: showFinding });
   const loadTab = useLoadTab(valueOf('drawer') === 'load');
-  const tabs = [findingsTab, traceTab, loadTab, outlineTab];
+  const outageTab = useOutageTab(valueOf('drawer') === 'outage');
+  const tabs = [findingsTab, traceTab, loadTab, outageTab, outlineTab];
   const openTab = (tab: string): void => change({ drawer: tab === 'findings' ? '' : tab });
   // The first is open where the address says nothing.
   const active = tabs.find((tab) => tab.value === valueOf('drawer')) ?? findingsTab;

@@ -122,6 +122,26 @@ const tagMark = (tag: Tag, anchor: Point, box: Rect, scale: number): readonly Sh
   ];
 };
 
+/** Where a tag may point: a whole device at the middle of any side of its plate, the rest where they are known by. */
+const anchorsOf = (geometry: SheetGeometry, tag: Tag, facts: DrawingFacts): readonly Point[] => {
+  const { collection, id, port, member } = tag.at;
+  const plate =
+    collection === 'devices' && port === undefined && member === undefined
+      ? geometry.devices.find((device) => device.id === id && device.kind !== 'ha-pair')?.plates[0]?.rect
+      : undefined;
+  if (plate !== undefined) {
+    const { x, y, width, height } = plate;
+    return [
+      { x: x + width / 2, y },
+      { x: x + width / 2, y: y + height },
+      { x, y: y + height / 2 },
+      { x: x + width, y: y + height / 2 },
+    ];
+  }
+  const anchor = anchorFor(geometry, tag.at, facts);
+  return anchor === undefined ? [] : [anchor];
+};
+
 /** Tags beside what they tell of, off plates, rings, names and one another. */
 export const tagParts = (geometry: SheetGeometry, facts: DrawingFacts, look: Look): readonly Shape[] => {
   const tags = look.decorations.tags ?? [];
@@ -133,30 +153,30 @@ export const tagParts = (geometry: SheetGeometry, facts: DrawingFacts, look: Loo
   );
   const strongFirst = [...tags].sort((x, y) => Number(y.strong === true) - Number(x.strong === true));
   return strongFirst.flatMap((tag) => {
-    const anchor = anchorFor(geometry, tag.at, facts);
-    if (anchor === undefined) return [];
     const size = sizeOf(tag, scale);
-    const near = crowdNear(crowd, anchor);
-    let best: { readonly centre: Point; readonly box: Rect } | undefined;
+    let best: { readonly anchor: Point; readonly centre: Point; readonly box: Rect } | undefined;
     let cost = Infinity;
-    for (const distance of distances)
-      for (const angle of directions) {
-        // Measured from the plate's edge, so that a wide one stands no nearer than a small one.
-        const reach = distance * scale;
-        const centre = {
-          x: anchor.x + Math.cos(angle) * (reach + size.width / 2 - heightPx / 2),
-          y: anchor.y + Math.sin(angle) * reach,
-        };
-        const box = boxAt(centre, size);
-        const now = calloutCost(near, anchor, centre, box);
-        if (now >= cost - 1e-9) continue;
-        cost = now;
-        best = { centre, box };
-      }
+    for (const anchor of anchorsOf(geometry, tag, facts)) {
+      const near = crowdNear(crowd, anchor);
+      for (const distance of distances)
+        for (const angle of directions) {
+          // Measured from the plate's edge, so that a wide one stands no nearer than a small one.
+          const reach = distance * scale;
+          const centre = {
+            x: anchor.x + Math.cos(angle) * (reach + size.width / 2 - heightPx / 2),
+            y: anchor.y + Math.sin(angle) * reach,
+          };
+          const box = boxAt(centre, size);
+          const now = calloutCost(near, anchor, centre, box);
+          if (now >= cost - 1e-9) continue;
+          cost = now;
+          best = { anchor, centre, box };
+        }
+    }
     if (best === undefined) return [];
-    crowd = joinedBy(crowd, { box: best.box, leader: [anchor, best.centre] });
+    crowd = joinedBy(crowd, { box: best.box, leader: [best.anchor, best.centre] });
     return [
-      group(tagMark(tag, anchor, best.box, scale), {
+      group(tagMark(tag, best.anchor, best.box, scale), {
         key: `tag-${elementKey(tag.at)}`,
         data: { ref: tag.at, part: 'tag' },
       }),

@@ -126,6 +126,7 @@ export const ceilingWords = (design: Design, ceiling: Ceiling): string => {
   if (kind === 'window' || kind === 'loss') return kind;
   if (element === undefined) return kind;
   if (kind === 'one-cable') return `one cable of ${nameOf(design, element)}`;
+  if (kind === 'host-one-flow') return `${nameOf(design, element)}, one flow`;
   return limitInRow(design, {
     key: '',
     kind,

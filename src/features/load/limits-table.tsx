@@ -23,7 +23,8 @@ const columns: readonly Column<LimitRow>[] = [
     head: 'Carries',
     cell: ({ name, way }) => (
       <>
-        <span className="font-semibold">{name}</span> <span className="text-ink-2">{way}</span>
+        <span className="font-semibold whitespace-nowrap">{name}</span>{' '}
+        <span className="whitespace-nowrap text-ink-2">{way}</span>
       </>
     ),
     sortBy: ({ name }) => name,
