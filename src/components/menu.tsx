@@ -104,7 +104,12 @@ export function Menu({ trigger, groups, heading, align = 'start', opened }: Menu
                 group.actions.map((action) =>
                   'actions' in action ? (
                     <Primitive.Sub key={action.label}>
-                      <Primitive.SubTrigger className={classNames(itemLook, 'data-[state=open]:bg-hover')}>
+                      <Primitive.SubTrigger
+                        className={classNames(
+                          itemLook,
+                          'data-[state=open]:bg-strip data-[state=open]:text-strip-ink',
+                        )}
+                      >
                         <span className="flex-1">{action.label}</span>
                         <Icon name="chevron-right" size={12} />
                       </Primitive.SubTrigger>

@@ -1,4 +1,5 @@
 import { createContext, use } from 'react';
+import type { MenuGroup } from '../../components/menu.tsx';
 import type { ElementRef } from '../../engine/model/design.ts';
 import type { Standing } from '../../workspace/operations/move-parts.ts';
 
@@ -14,6 +15,8 @@ export interface InspectorTools {
   readonly onShowFinding?: (key: string) => void;
   /** Where things stand as drawn; without it only what a person placed can be locked. */
   readonly standing?: Standing;
+  /** What can be done with an element where there is a sheet to do it on. */
+  readonly menuOf?: (ref: ElementRef) => readonly MenuGroup[];
   /** Sections that a person opened or closed; they stay so from one element to the next. */
   readonly sections: Map<string, boolean>;
 }

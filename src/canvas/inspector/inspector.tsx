@@ -36,12 +36,12 @@ const panels = {
 } satisfies Record<Collection, (props: { readonly id: string }) => ReactNode>;
 
 /** What is selected, with every field of it; the design itself where nothing is. */
-export function Inspector({ onConnect, onShowFinding, standing }: InspectorProps) {
+export function Inspector({ onConnect, onShowFinding, standing, menuOf }: InspectorProps) {
   const selection = useOpenState((state) => state.selection);
   const [sections] = useState(() => new Map<string, boolean>());
   const [first] = selection;
   return (
-    <InspectorContext value={{ onConnect, onShowFinding, standing, sections }}>
+    <InspectorContext value={{ onConnect, onShowFinding, standing, menuOf, sections }}>
       <aside
         aria-label="Inspector"
         className="h-full w-304 shrink-0 overflow-x-hidden overflow-y-auto border-l-1.5 border-ink bg-panel"

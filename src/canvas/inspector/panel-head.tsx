@@ -115,6 +115,7 @@ function ElementMenu({ of: ref }: { readonly of: ElementRef }) {
   const open = useOpenDesign();
   const standing = useStanding();
   const run = usePerform();
+  const { menuOf } = useInspectorTools();
   const now = (): Design => open.store.getState().document;
   const duplicate = (): void => {
     const design = now();
@@ -140,7 +141,7 @@ function ElementMenu({ of: ref }: { readonly of: ElementRef }) {
           icon={<Icon name="more" size={18} />}
         />
       }
-      groups={[{ actions }]}
+      groups={menuOf?.(ref) ?? [{ actions }]}
     />
   );
 }

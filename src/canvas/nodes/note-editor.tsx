@@ -1,3 +1,4 @@
+import { useStore } from '@xyflow/react';
 import { useId, useRef, useState, type KeyboardEvent } from 'react';
 import { FieldError } from '../../components/cell.tsx';
 import { editNote } from '../desk-state.ts';
@@ -24,6 +25,7 @@ export function NoteEditor({
   const [problem, setProblem] = useState<string>();
   const isDone = useRef(false);
   const problemId = useId();
+  const zoom = useStore((state) => state.transform[2]);
   const end = (backTo: Element | null | undefined): void => {
     isDone.current = true;
     editNote(undefined);
@@ -50,7 +52,11 @@ export function NoteEditor({
     }
   };
   return (
-    <div className="note-editor nodrag nopan nowheel" style={{ width: widthPx + 12 }}>
+    // From afar what one types is as large as anything else that one reads.
+    <div
+      className="note-editor nodrag nopan nowheel"
+      style={{ width: widthPx + 12, transform: zoom < 1 ? `scale(${1 / zoom})` : undefined }}
+    >
       <textarea
         ref={takeFocus}
         aria-label="Text of the note"
