@@ -84,8 +84,7 @@ export function TracePanel(props: TracePanelProps) {
       <div className="flex h-full flex-col">
         {missing === 'to' && (
           <p role="status" className="border-b border-rule-2 bg-panel px-14 py-8 text-base text-ink">
-            {waysName(design, { ...first.question, send: 'arp' }).replace(' to all it reaches', '')} sends it
-            to whom? Choose To, or pick a host on the sheet.
+            {waysName(design, first.question)} sends it to whom? Choose To, or pick a host on the sheet.
           </p>
         )}
         <div className="min-h-0 flex-1">

@@ -19,8 +19,8 @@ export const sourceName = (design: Design, source: TraceSource): string =>
 /** From where to where, such as 'gate-ske to ticket-1'; a frame to many names its sender alone. */
 export const waysName = (design: Design, { from, to, send }: TraceQuestion): string => {
   const start = from === undefined ? '' : sourceName(design, from);
-  if (sendOf(send)?.to !== 'host' || to === undefined)
-    return start === '' ? '' : `${start} to all it reaches`;
+  if (sendOf(send)?.to !== 'host') return start === '' ? '' : `${start} to all it reaches`;
+  if (to === undefined) return start;
   return `${start} to ${nameOf(design, { collection: 'devices', id: to })}`;
 };
 
