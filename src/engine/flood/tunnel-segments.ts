@@ -1,5 +1,5 @@
 import type { Id } from '../model/scalars.ts';
-import type { Network } from '../network/network.ts';
+import type { Answer, Network } from '../network/network.ts';
 import { perNetwork } from '../network/network.ts';
 import { floodGraph } from './flood-graph.ts';
 import { segmentReaches } from './segment-nodes.ts';
@@ -8,14 +8,18 @@ import { segmentReaches } from './segment-nodes.ts';
  * The segments that each tunnel carries, in order of letter: what either end sends into it when each site's VLANs are
  * followed through circuits. A tunnel that can't come up carries what its ends would send. [] where nothing gets in.
  */
-export const tunnelSegments: (network: Network) => ReadonlyMap<Id, readonly Id[]> = perNetwork((network) => {
-  const graph = floodGraph(network);
-  const carried = new Map<Id, Id[]>(network.tunnelIds.map((id) => [id, []]));
-  for (const { segment, nodes } of segmentReaches(graph))
-    for (const node of nodes) {
-      const id = network.tunnelIds[graph.element[node]! - network.bundles.length];
-      const list = id === undefined ? undefined : carried.get(id);
-      if (list !== undefined && list.at(-1) !== segment) list.push(segment);
-    }
-  return carried;
-});
+export const tunnelSegments: (network: Network) => ReadonlyMap<Id, readonly Id[]> = perNetwork(
+  (network, earlier?: Answer<ReadonlyMap<Id, readonly Id[]>>) => {
+    const graph = floodGraph(network);
+    if (earlier !== undefined && floodGraph(earlier.network).identity === graph.identity)
+      return earlier.value;
+    const carried = new Map<Id, Id[]>(network.tunnelIds.map((id) => [id, []]));
+    for (const { segment, nodes } of segmentReaches(graph))
+      for (const node of nodes) {
+        const id = network.tunnelIds[graph.element[node]! - network.bundles.length];
+        const list = id === undefined ? undefined : carried.get(id);
+        if (list !== undefined && list.at(-1) !== segment) list.push(segment);
+      }
+    return carried;
+  },
+);

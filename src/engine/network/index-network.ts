@@ -26,14 +26,37 @@ const put = <K, V>(lists: Index<K, V>, key: K, value: V): void => {
   else list.push(value);
 };
 
+const idsInOrder = new WeakMap<object, readonly Id[]>();
+
+const idsOf = (entries: object): readonly Id[] => {
+  const ids = idsInOrder.get(entries) ?? Object.keys(entries).sort();
+  idsInOrder.set(entries, ids);
+  return ids;
+};
+
+/** The ids in order after changes, without sorting those that stay. */
+const idsAfter = (ids: readonly Id[], changes: readonly EntryChange<object>[]): readonly Id[] => {
+  const gone = new Set(changes.filter(({ now }) => now === undefined).map(({ id }) => id));
+  const added = changes
+    .filter(({ before }) => before === undefined)
+    .map(({ id }) => id)
+    .sort();
+  if (gone.size === 0 && added.length === 0) return ids;
+  const after: Id[] = [];
+  let next = 0;
+  for (const id of ids) {
+    for (; next < added.length && added[next]! < id; next += 1) after.push(added[next]!);
+    if (!gone.has(id)) after.push(id);
+  }
+  return [...after, ...added.slice(next)];
+};
+
 const entriesOf = <C extends Collection>(
   design: DesignFacts,
   collection: C,
 ): readonly (readonly [Id, Entry<C>])[] => {
   const entries = design[collection] as { readonly [id: string]: Entry<C> };
-  return Object.keys(entries)
-    .sort()
-    .map((id) => [id, entries[id]!] as const);
+  return idsOf(entries).map((id) => [id, entries[id]!] as const);
 };
 
 type Lists<Names extends keyof Network> = Pick<Network, Names>;
@@ -200,10 +223,10 @@ const joinTheSame = (changes: Changes['links']): boolean =>
 
 /** The index of a later version: lists whose entries say the same as before in what is listed of them are taken over. */
 const renew = (before: Network, design: DesignFacts): Network => {
-  const { devices, links, endpoints, associations, tunnels, forwarders, segments } = changesBetween(
-    before.design,
-    design,
-  );
+  const changes = changesBetween(before.design, design);
+  for (const collection of collections)
+    idsInOrder.set(design[collection], idsAfter(idsOf(before.design[collection]), changes[collection]));
+  const { devices, links, endpoints, associations, tunnels, forwarders, segments } = changes;
   const linksJoinTheSame = joinTheSame(links);
   const endpointsStay = allAgreeIn(endpoints, 'device');
   const tunnelsStay =

@@ -1,11 +1,9 @@
 import type { Member } from '../model/devices.ts';
 import type { Id } from '../model/scalars.ts';
 import type { Bundle, Cable, Device, End, PortGroup } from './network.ts';
-import { ends, otherEnd, plugKey } from './network.ts';
+import { ends, otherEnd, perObject, plugKey } from './network.ts';
 
-type Draft = {
-  -readonly [K in keyof PortGroup]: PortGroup[K] extends readonly (infer E)[] ? E[] : PortGroup[K];
-};
+type Draft = Omit<PortGroup, 'bundles'> & { readonly bundles: PortGroup['bundles'][number][] };
 
 /** What joins devices at layer 2: ports as logical ports, cables as crossings. Member links carry no segment frames and are left out. */
 export interface Cabling {
@@ -15,34 +13,46 @@ export interface Cabling {
   readonly bundleByCable: ReadonlyMap<Id, Bundle>;
 }
 
+interface PortsAsOne {
+  readonly ports: readonly Id[];
+  readonly aggregation?: string;
+}
+
+/** The logical ports of a device: by the number of their first port, which stands for all. */
+const logicalPorts = perObject(({ ports }: Device): readonly PortsAsOne[] => {
+  const inOrder = Object.entries(ports)
+    .filter(([, port]) => port.role !== 'member-link')
+    .sort(([idA, a], [idB, b]) => a.number - b.number || (idA < idB ? -1 : 1));
+  const logical: { readonly ports: Id[]; readonly aggregation?: string }[] = [];
+  const aggregates = new Map<string, Id[]>();
+  for (const [id, { aggregation }] of inOrder) {
+    const known = aggregation === undefined ? undefined : aggregates.get(aggregation);
+    if (known !== undefined) {
+      known.push(id);
+      continue;
+    }
+    const own = [id];
+    logical.push({ ports: own, ...(aggregation === undefined ? {} : { aggregation }) });
+    if (aggregation !== undefined) aggregates.set(aggregation, own);
+  }
+  return logical;
+});
+
 const groupsOf = (devices: readonly (readonly [Id, Device])[]): Cabling['groups'] & Draft[] => {
   const groups: Draft[] = [];
   for (const [id, device] of devices) {
-    const ports = Object.entries(device.ports)
-      .filter(([, port]) => port.role !== 'member-link')
-      .sort(([idA, a], [idB, b]) => a.number - b.number || (idA < idB ? -1 : 1));
     const members: readonly Member[] = device.kind === 'ha-pair' ? [1, 2] : [1];
-    for (const member of members) {
-      const aggregates = new Map<string, Draft>();
-      for (const [portId, port] of ports) {
-        const known = port.aggregation === undefined ? undefined : aggregates.get(port.aggregation);
-        if (known !== undefined) {
-          known.ports.push(portId);
-          continue;
-        }
-        const group: Draft = {
+    for (const member of members)
+      for (const { ports, aggregation } of logicalPorts(device))
+        groups.push({
           index: groups.length,
           device: id,
           member,
-          port: portId,
-          ports: [portId],
+          port: ports[0]!,
+          ports,
           bundles: [],
-          ...(port.aggregation === undefined ? {} : { aggregation: port.aggregation }),
-        };
-        groups.push(group);
-        if (port.aggregation !== undefined) aggregates.set(port.aggregation, group);
-      }
-    }
+          ...(aggregation === undefined ? {} : { aggregation }),
+        });
   }
   return groups;
 };

@@ -2,7 +2,7 @@ import type { Collection } from '../model/design.ts';
 import type { MergePatch } from '../model/merge-patch.ts';
 import { joinPatches } from '../model/merge-patch.ts';
 import type { DesignFacts, Network } from '../network/network.ts';
-import { ends } from '../network/network.ts';
+import { ends, perObject } from '../network/network.ts';
 import { defineRule, type Fault } from './define-rule.ts';
 import { countWord, listed, sentenceCase } from './wording.ts';
 
@@ -23,12 +23,14 @@ const collectionsWithNames = Object.keys(nouns) as readonly Named[];
 
 const spelt = (name: string): string => name.trim().toLowerCase();
 
+type Entries = DesignFacts[Named];
+
 /** Where a name must be the only one of its kind: in the whole design, or among its neighbours. */
-const scopeOf = (design: DesignFacts, collection: Named, id: string): string => {
-  if (collection === 'endpoints' || collection === 'forwarders') return design[collection][id]!.device;
+const scopeOf = (entry: Entries[string]): string => {
+  // Endpoints and forwarders.
+  if ('device' in entry) return entry.device;
   // 'camera-1' at every site is usual; a gateway's or switch's name is looked for in the whole design.
-  if (collection === 'devices' && design.devices[id]!.kind === 'host') return design.devices[id]!.site;
-  return '';
+  return 'kind' in entry && entry.kind === 'host' ? entry.site : '';
 };
 
 const gather = (marks: Iterable<readonly [mark: string, id: string]>): readonly (readonly string[])[] => {
@@ -36,6 +38,10 @@ const gather = (marks: Iterable<readonly [mark: string, id: string]>): readonly 
   for (const [mark, id] of marks) byMark.set(mark, (byMark.get(mark) ?? new Set()).add(id));
   return [...byMark.values()].filter((ids) => ids.size > 1).map((ids) => [...ids].sort());
 };
+
+const namesakes = perObject((entries: Entries): readonly (readonly string[])[] =>
+  gather(Object.entries(entries).map(([id, entry]) => [`${scopeOf(entry)} ${spelt(entry.name)}`, id])),
+);
 
 const identities = ({ design }: Network): readonly (readonly [identity: string, device: string])[] =>
   Object.values(design.associations).flatMap((association) =>
@@ -100,12 +106,7 @@ export const duplicateName = defineRule({
   check: (network): readonly Fault<typeof messages>[] => {
     const { design } = network;
     const names = collectionsWithNames.flatMap((collection) =>
-      gather(
-        Object.entries(design[collection]).map(([id, { name }]) => [
-          `${scopeOf(design, collection, id)} ${spelt(name)}`,
-          id,
-        ]),
-      ).map((ids): Fault<typeof messages> => {
+      namesakes(design[collection]).map((ids): Fault<typeof messages> => {
         const refs = ids.map((id) => ({ collection, id }));
         const name = design[collection][ids[0]!]!.name;
         return {

@@ -34,14 +34,23 @@ const portsWithLimits = perObject(({ ports }: Device): readonly Id[] =>
     .sort(),
 );
 
-/** Ports on which a limit is set that counts hosts or their frames, in order of device and port. */
-export const limitedPorts = (network: Network, field: 'macLimit' | 'stormLimitPps'): readonly LimitedPort[] =>
-  network.deviceIds.flatMap((device) => {
-    const entry = network.design.devices[device]!;
+/**
+ * Ports on which a limit is set that counts hosts or their frames, in order of device and port; those left out that all
+ * hosts of the design would not exceed.
+ */
+export const limitedPorts = (
+  network: Network,
+  field: 'macLimit' | 'stormLimitPps',
+): readonly LimitedPort[] => {
+  const { devices } = network.design;
+  const hostCount = network.deviceIds.filter((id) => devices[id]!.kind === 'host').length;
+  return network.deviceIds.flatMap((device) => {
+    const entry = devices[device]!;
     return portsWithLimits(entry).flatMap((port) => {
       const limit = entry.ports[port]![field];
-      return limit === undefined
+      return limit === undefined || limit >= hostCount
         ? []
         : [{ device, port, limit, hosts: hostsBehindPort(network, device, port).size }];
     });
   });
+};

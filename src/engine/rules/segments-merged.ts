@@ -138,6 +138,16 @@ const untaggedByForwarder = perNetwork(
     ),
 );
 
+const untaggedSegments = perNetwork(
+  (network): ReadonlyMap<Id, readonly Id[]> =>
+    new Map(
+      [...untaggedByForwarder(network)].map(([forwarder, brought]) => [
+        forwarder,
+        [...new Set(brought.flatMap(({ segments }) => segments))],
+      ]),
+    ),
+);
+
 /** Circuits of a forwarder whose frames are untagged inside, with the segments that they bring in. */
 const untaggedInside = (network: Network, forwarder: Id): readonly Brought[] =>
   untaggedByForwarder(network).get(forwarder) ?? [];
@@ -182,6 +192,16 @@ const holders = (network: Network, tunnel: Id, end: 'a' | 'b'): readonly Circuit
   return (network.circuitsByTunnel.get(tunnel) ?? []).filter((at) => at.device === device);
 };
 
+/** Segments whose frames are untagged inside the forwarders of one end. */
+const untaggedAt = (network: Network, tunnel: Id, end: 'a' | 'b'): readonly Id[] => {
+  const segmentsOf = untaggedSegments(network);
+  const [first, ...others] = holders(network, tunnel, end);
+  const own = first === undefined ? [] : (segmentsOf.get(first.forwarder) ?? []);
+  return others.length === 0
+    ? own
+    : [...new Set([...own, ...others.flatMap(({ forwarder }) => segmentsOf.get(forwarder) ?? [])])];
+};
+
 /** Segments by the tag that they keep inside the forwarders of one end. */
 const keptTags = (network: Network, tunnel: Id, end: 'a' | 'b'): ReadonlyMap<number, Id> => {
   const kept = new Map<number, Id>();
@@ -203,14 +223,7 @@ const byTunnel = (network: Network): readonly Found[] =>
     const entry = entryOf(design.tunnels, tunnel);
     if (tunnelStates(network).get(tunnel)?.up !== true) return [];
     const ref: ElementRef = { collection: 'tunnels', id: tunnel };
-    const untagged = ends.map((end) => [
-      ...new Set(
-        holders(network, tunnel, end).flatMap(({ forwarder }) =>
-          untaggedInside(network, forwarder).flatMap(({ segments }) => segments),
-        ),
-      ),
-    ]) as [Id[], Id[]];
-    const [atA, atB] = untagged;
+    const [atA, atB] = [untaggedAt(network, tunnel, 'a'), untaggedAt(network, tunnel, 'b')];
     if (atA.length > 0 && atB.length > 0 && !atA.some((id) => atB.includes(id))) {
       return [
         {

@@ -1,6 +1,9 @@
 import type { Path } from '../network/association-path.ts';
-import type { End, Network } from '../network/network.ts';
-import { ends, entryOf, perNetwork } from '../network/network.ts';
+import { landingsStay } from '../network/association-path.ts';
+import type { Changes } from '../network/changes.ts';
+import { changesBetween } from '../network/changes.ts';
+import type { Answer, Device, End, Network } from '../network/network.ts';
+import { ends, entryOf, perNetwork, perObject } from '../network/network.ts';
 import { associationEndOf } from '../network/selectors-cover.ts';
 import { underlayMtuFor } from '../wire/largest-inner-packet.ts';
 import { largestThrough } from '../wire/largest-through.ts';
@@ -51,7 +54,39 @@ export const capacityOnPath = (
 ): EndCapacity | undefined =>
   narrowerEnd(network, id, (end) => tunnelStackOn(network, id, end, innerTags, path));
 
-const remembered = perNetwork((_network) => new Map<string, EndCapacity | undefined>());
+const portMtus = perObject(({ ports }: Device): string =>
+  Object.keys(ports)
+    .sort()
+    .map((id) => `${id} ${ports[id]!.mtu ?? ''}`)
+    .join(),
+);
+
+/** Whether what a packet meets under the tunnels takes the sizes that it took. */
+const sizesStay = ({ devices, links, transports }: Changes): boolean =>
+  devices.every(
+    ({ before, now }) => before === undefined || now === undefined || portMtus(before) === portMtus(now),
+  ) &&
+  links.every(
+    ({ before, now }) =>
+      before?.kind !== 'landing' || now?.kind !== 'landing' || before.accessOverhead === now.accessOverhead,
+  ) &&
+  transports.every(({ before, now }) => before === undefined || now === undefined || before.mtu === now.mtu);
+
+type Capacities = Map<TagCount, EndCapacity | undefined>;
+
+// By tunnel, then by tags inside.
+const remembered = perNetwork(
+  (network, earlier?: Answer<Map<string, Capacities>>): Map<string, Capacities> => {
+    if (earlier === undefined) return new Map();
+    const changes = changesBetween(earlier.network.design, network.design);
+    if (changes.endpoints.length > 0 || !landingsStay(changes) || !sizesStay(changes)) return new Map();
+    const kept = new Map(earlier.value);
+    for (const { id } of changes.tunnels) kept.delete(id);
+    for (const { id } of changes.associations)
+      for (const tunnel of network.tunnelsByAssociation.get(id) ?? []) kept.delete(tunnel);
+    return kept;
+  },
+);
 
 /**
  * What a tunnel lets through at its narrower end. Undefined where something it depends on isn't known: no path, no MTU, no
@@ -62,14 +97,15 @@ export const tunnelCapacity = (
   id: string,
   innerTags: TagCount,
 ): EndCapacity | undefined => {
-  const known = remembered(network);
-  const key = `${innerTags} ${id}`;
-  if (!known.has(key))
+  const all = remembered(network);
+  const known: Capacities = all.get(id) ?? new Map();
+  all.set(id, known);
+  if (!known.has(innerTags))
     known.set(
-      key,
+      innerTags,
       narrowerEnd(network, id, (end) => tunnelStack(network, id, end, innerTags)),
     );
-  return known.get(key);
+  return known.get(innerTags);
 };
 
 /** The transport MTU that carries this inner packet whole, and the outermost packet around it. */

@@ -1,4 +1,4 @@
-import type { Network } from '../network/network.ts';
+import type { Answer, Network } from '../network/network.ts';
 import { perNetwork } from '../network/network.ts';
 import type { IpVersion } from '../reference/ip.ts';
 import { largestInnerPacket } from './largest-inner-packet.ts';
@@ -13,7 +13,10 @@ export const stackKey = (stack: Stack): string => {
   return known;
 };
 
-const largestKnown = perNetwork((_network) => new Map<string, number>());
+// The same question has the same answer in every version of a design.
+const largestKnown = perNetwork(
+  (_network, earlier?: Answer<Map<string, number>>): Map<string, number> => earlier?.value ?? new Map(),
+);
 
 /**
  * The largest IP packet of a host, in bytes, that a stack takes through an outermost packet of at most `mtuBytes`, from which
