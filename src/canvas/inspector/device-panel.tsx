@@ -49,17 +49,15 @@ export function DevicePanel({ id }: { readonly id: string }) {
         />
         {device.kind === 'host' && <HostCells id={id} />}
         <TextField label="Management address" path={at('managementAddress')} span={2} />
-        {gateway && (
-          <SelectField
-            label="Equipment profile"
-            path={at('profile')}
-            span={2}
-            choices={Object.entries(design.profiles).map(([profile, { name }]) => ({
-              value: profile,
-              label: name,
-            }))}
-          />
-        )}
+        <SelectField
+          label="Equipment profile"
+          path={at('profile')}
+          span={2}
+          choices={Object.entries(design.profiles).map(([profile, { name }]) => ({
+            value: profile,
+            label: name,
+          }))}
+        />
       </CellGrid>
       {device.kind === 'ha-pair' && <PairCells id={id} />}
       <FindingBoxes about={ref} />

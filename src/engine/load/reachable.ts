@@ -19,7 +19,7 @@ import { frameOf, pointOf } from './unicast-path.ts';
 /** What holds a transfer back, and the data rate that it leaves, rounded down. */
 export interface Ceiling {
   readonly limitBps: number;
-  readonly kind: Limit['kind'] | 'one-cable' | 'window' | 'loss';
+  readonly kind: Limit['kind'] | 'one-cable' | 'host-one-flow' | 'window' | 'loss';
   /** Absent for what follows from latency and loss. */
   readonly element?: ElementRef;
   readonly direction?: Limit['direction'];
@@ -96,6 +96,31 @@ const gatewaysOn = (
   return [...times.values()];
 };
 
+/** What the hosts at both ends do in a single flow, where their equipment profiles say: one processor copies and counts each. */
+const hostCeilings = (
+  network: Network,
+  demandId: Id,
+  dataBytes: number,
+  packetBytes: number,
+): readonly Ceiling[] => {
+  const { design } = network;
+  const { from, to, segment } = entryOf(design.demands, demandId);
+  return [from, to].flatMap((at): readonly Ceiling[] => {
+    const point = pointOf(network, segment, at)?.point;
+    const device = point === undefined ? undefined : entryOf(design.devices, point.device);
+    if (device?.kind !== 'host' || device.profile === undefined) return [];
+    const { oneFlowBps } = entryOf(design.profiles, device.profile).plain ?? {};
+    if (oneFlowBps === undefined) return [];
+    return [
+      {
+        limitBps: share(oneFlowBps, dataBytes, packetBytes),
+        kind: 'host-one-flow',
+        element: { collection: 'devices', id: point!.device },
+      },
+    ];
+  });
+};
+
 /** What one way of a demand lets TCP reach alone, and the window of a flow where it is given. */
 export const reachable = (
   network: Network,
@@ -161,6 +186,7 @@ export const reachable = (
     if (oneFlow.mostBps !== undefined)
       one.push(ceilingOf(oneFlow.limit, share(oneFlow.mostBps, dataBytes, packetBytes * times)));
   }
+  one.push(...hostCeilings(network, demandId, dataBytes, packetBytes));
   const rttUs =
     back.state === 'carried' && direction.latencyUs !== undefined && back.latencyUs !== undefined
       ? direction.latencyUs + back.latencyUs

@@ -241,6 +241,27 @@ describe('what TCP could reach', () => {
     expect(mbps(manyFlows[0]!.limitBps)).toBeLessThan(practice.wiredManyFlowsMbps.most);
   });
 
+  it('between two hosts on one switch is for one flow what a host does in one', () => {
+    // A processor that handles 800 Mbit/s of a single flow's packets: 1448 bytes of data in each 1500.
+    const host: MergePatch = {
+      profiles: { desk: { name: 'Desk computer', plain: { oneFlowBps: 800_000_000 } } },
+      devices: { 'h-s0-a1': { profile: 'desk' } },
+    };
+    const design = [bulk, host, demand({ to: { host: 'h-s0-a1' } })].reduce<Design>(
+      applyPatch,
+      pairDesign({ hostsPerSite: 2 }),
+    );
+    const { manyFlows, oneFlow } = report(design).demands[0]!.forward.reachable!;
+    expect(oneFlow[0]).toMatchObject({
+      kind: 'host-one-flow',
+      element: { collection: 'devices', id: 'h-s0-a1' },
+    });
+    expect(mbps(oneFlow[0]!.limitBps)).toBe(772.3);
+    expect(mbps(oneFlow[0]!.limitBps)).toBeGreaterThan(practice.wiredOneFlowMbps.least);
+    expect(mbps(oneFlow[0]!.limitBps)).toBeLessThan(practice.wiredOneFlowMbps.most);
+    expect(mbps(manyFlows[0]!.limitBps)).toBe(941.5);
+  });
+
   it('through small gateways is the WAN port for many flows, and the gateway for one', () => {
     for (const [patch, expected] of [
       [cutting, practice.encryptedManyFlowsCutMbps],
