@@ -10,20 +10,12 @@ import { GeometryProvider, useDrawn } from '../../../src/canvas/geometry-context
 import { designToFlow } from '../../../src/canvas/design-to-flow.ts';
 import { SheetCanvas } from '../../../src/canvas/sheet-canvas.tsx';
 import { noDecorations } from '../../../src/drawing/decorations.ts';
-import type { Design } from '../../../src/engine/model/design.ts';
 import { ChecksProvider } from '../../../src/workspace/checks-context.tsx';
 import { openDesign } from '../../../src/workspace/open-design.ts';
 import { OpenDesignProvider } from '../../../src/workspace/open-design-context.tsx';
+import { watchFrames } from './bench-window.ts';
 
-declare global {
-  interface Window {
-    /** Put there before the page runs. */
-    benchDesign: Design;
-    /** How many parts the sheet hands to the canvas library, once it has drawn them. */
-    benchParts?: { readonly nodes: number; readonly edges: number };
-  }
-}
-
+watchFrames();
 const bare = new URLSearchParams(location.search).get('mode') === 'bare';
 const design = window.benchDesign;
 const nothing = (): void => undefined;
