@@ -32,6 +32,13 @@ export async function callApi<T>(schema: z.ZodType<T>, path: string, call: Call 
   return readAnswer(schema, await sendSafely(path, call));
 }
 
+/** A file that the server makes. */
+export async function fetchFile(path: string, signal: AbortSignal): Promise<Blob> {
+  const response = await send(path, { signal });
+  if (!response.ok) throw await refusalOf(response);
+  return response.blob();
+}
+
 /** A request whose answer carries nothing. */
 export async function callApiForNothing(path: string, call: Call): Promise<void> {
   const response = await sendSafely(path, call);

@@ -21,6 +21,8 @@ import { anchorOf } from '../drawing/routing/anchors.ts';
 import { rules } from '../engine/rules/index.ts';
 import { countBySeverity } from '../engine/rules/run-rules.ts';
 import { SheetDrawer } from '../features/drawer/sheet-drawer.tsx';
+import { ExportButton } from '../features/export/export-button.tsx';
+import { PrintedSheet } from '../features/export/printed-sheet.tsx';
 import { findingItem } from '../features/findings/finding-words.ts';
 import { FindingsList } from '../features/findings/findings-list.tsx';
 import { useAskedFinding } from '../features/findings/use-asked-finding.ts';
@@ -45,7 +47,10 @@ export function SheetPage() {
   return (
     <ReactFlowProvider>
       <GeometryProvider>
-        <SheetActions />
+        <SheetActions>
+          <ExportButton />
+        </SheetActions>
+        <PrintedSheet />
         <ExtraActionsProvider value={actionsOf}>
           <Surface />
         </ExtraActionsProvider>

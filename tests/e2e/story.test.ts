@@ -100,24 +100,27 @@ describe('an architect on a real design', () => {
     expect(await storedDesign(later)).toEqual(before);
 
     // And the picture is taken away.
-    await later.getByRole('button', { name: 'Export' }).click();
+    await later.getByRole('button', { name: 'Export', exact: true }).click();
+    const leaving = later.getByRole('dialog', { name: 'Export the sheet' });
+    await leaving.getByText('PNG', { exact: true }).click();
     const [picture] = await Promise.all([
       later.waitForEvent('download'),
-      later.getByRole('menuitem', { name: /Picture on paper/ }).click(),
+      leaving.getByRole('button', { name: 'Export PNG' }).click(),
     ]);
     expect(picture.suggestedFilename()).toBe('standby-controller.png');
     const png = readFileSync((await picture.path())!);
     expect(png.subarray(1, 4).toString('latin1')).toBe('PNG');
-    // A3 and the line of caution under it, at two pixels per pixel of the sheet.
-    expect([png.readUInt32BE(16), png.readUInt32BE(20)]).toEqual([2560, 1858]);
+    // A3 with the line of caution under it and margins beside it, at two pixels per pixel of the sheet.
+    expect([png.readUInt32BE(16), png.readUInt32BE(20)]).toEqual([2628, 1858]);
     if (process.env['KEEP_PICTURE'] !== undefined)
       copyFileSync((await picture.path())!, process.env['KEEP_PICTURE']);
     expect(png.length).toBeGreaterThan(50_000);
 
-    await later.getByRole('button', { name: 'Export' }).click();
+    await later.getByRole('button', { name: 'Export', exact: true }).click();
+    await leaving.getByText('JSON', { exact: true }).click();
     const [file] = await Promise.all([
       later.waitForEvent('download'),
-      later.getByRole('menuitem', { name: /The design itself/ }).click(),
+      leaving.getByRole('button', { name: 'Export JSON' }).click(),
     ]);
     expect(JSON.parse(readFileSync((await file.path())!, 'utf8'))).toEqual(before);
     expect(await node(later, 'sheet').count()).toBe(1);

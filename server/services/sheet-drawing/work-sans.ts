@@ -1,5 +1,6 @@
 import { readFileSync } from 'node:fs';
 import { createRequire } from 'node:module';
+import { hasExtendedLatin, latinRanges } from '#drawing/picture/latin-ranges.ts';
 import type { EmbeddedFace } from '#drawing/svg/standalone-svg.ts';
 
 const require = createRequire(import.meta.url);
@@ -9,22 +10,18 @@ export type Weight = (typeof weights)[number];
 const scripts = ['latin', 'latin-ext'] as const;
 export type Script = (typeof scripts)[number];
 
-const ranges = require('@fontsource/work-sans/unicode.json') as { readonly [script in Script]: string };
-
 /** Where a face's file lies. A writer of PDF takes the older format alone: the newer one has glyphs that it can't cut out. */
 export function faceFile(weight: Weight, script: Script, format: 'woff' | 'woff2'): string {
   return require.resolve(`@fontsource/work-sans/files/work-sans-${script}-${weight}-normal.${format}`);
 }
 
-const beyondLatin = /[\u0100-\u02ff\u1e00-\u1eff]/;
-
 /** The faces that a text needs, as data URLs. */
 export function embeddedFaces(text: string): readonly EmbeddedFace[] {
-  const needed = beyondLatin.test(text) ? scripts : (['latin'] as const);
+  const needed = hasExtendedLatin(text) ? scripts : (['latin'] as const);
   return needed.flatMap((script) =>
     weights.map((weight) => ({
       weight,
-      unicodeRange: ranges[script],
+      unicodeRange: latinRanges[script],
       url: `data:font/woff2;base64,${readFileSync(faceFile(weight, script, 'woff2')).toString('base64')}`,
     })),
   );
