@@ -82,7 +82,7 @@ export const loadRequestSchema = z.strictObject({
   design: z.unknown(),
   /** All rates times this. */
   multiplier: z.number().optional(),
-  /** The window of a TCP flow. */
+  /** The window of a TCP flow, in place of what the demands say themselves. */
   windowBytes: z.number().optional(),
 });
 export const loadAnswerSchema = z.object({

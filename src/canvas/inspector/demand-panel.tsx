@@ -17,6 +17,7 @@ import { refusalSentence, useCommit, useField } from './use-field.ts';
 import { wholeNumber } from './written-value.ts';
 
 const count = wholeNumber();
+const bytes = wholeNumber('B');
 
 /** Traffic that a segment has to carry between two places. */
 export function DemandPanel({ id }: { readonly id: string }) {
@@ -48,6 +49,7 @@ export function DemandPanel({ id }: { readonly id: string }) {
         <TextField label="Rate back" path={at('reverseBps')} writing={rate} />
         <TextField label="Flows" path={at('flows')} writing={count} />
         <TextField label="Latency allowed" path={at('latencyAllowedUs')} writing={milliseconds} />
+        <TextField label="Window" path={at('windowBytes')} writing={bytes} span={2} />
       </CellGrid>
       <FindingBoxes about={ref} />
       <MixSection id={id} />

@@ -62,7 +62,7 @@ export interface LoadReport {
 export interface LoadOptions {
   /** All rates times this: 1.5 for half as much again. */
   readonly multiplier?: number;
-  /** The window of a TCP flow; without it no flow is taken to be held back by its window. */
+  /** The window of a TCP flow, in place of what demands say; without either no flow is taken to be held back by it. */
   readonly windowBytes?: number;
 }
 
@@ -229,7 +229,7 @@ export const loadOfNetwork = (network: Network, options: LoadOptions = {}): Answ
 
   for (const id of Object.keys(design.demands).sort()) {
     const ways = { forward: carried('forward'), reverse: carried('reverse') };
-    const { latencyAllowedUs } = entryOf(design.demands, id);
+    const { latencyAllowedUs, windowBytes: own } = entryOf(design.demands, id);
     const wayOf = (way: Way): DemandWay => {
       const direction = ways[way];
       if (direction.state !== 'carried') return { direction };
@@ -240,7 +240,7 @@ export const loadOfNetwork = (network: Network, options: LoadOptions = {}): Answ
         id,
         direction,
         ways[way === 'forward' ? 'reverse' : 'forward'],
-        windowBytes,
+        windowBytes ?? own,
       );
       missing.push(...direction.missing, ...(could?.missing ?? []));
       return {

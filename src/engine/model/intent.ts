@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { TCP_LARGEST_WINDOW_BYTES } from '../reference/tcp.ts';
 import {
   cidrSchema,
   countSchema,
@@ -53,6 +54,8 @@ const placeSchema = z.union(
   'expected a site or a host',
 );
 
+const expectedWindow = `expected a window from 1 to ${TCP_LARGEST_WINDOW_BYTES} bytes`;
+
 export const demandSchema = z.strictObject({
   name: nameSchema.optional(),
   segment: idSchema,
@@ -67,6 +70,12 @@ export const demandSchema = z.strictObject({
     .optional(),
   flows: z.int().min(1, 'expected at least one flow').max(1_000_000).optional(),
   latencyAllowedUs: durationUsSchema.optional(),
+  /** What a flow of it may have sent without an answer: TCP's window, or an application's own. */
+  windowBytes: z
+    .int(expectedWindow)
+    .min(1, expectedWindow)
+    .max(TCP_LARGEST_WINDOW_BYTES, expectedWindow)
+    .optional(),
 });
 
 export const noteSchema = z.strictObject({

@@ -76,7 +76,7 @@ export function DemandSide({ row, back, design, editable, windowBytes, onEdit }:
                   : row.latencyUs + back.latencyUs
               }
               lossPerMillion={row.lossPerMillion}
-              windowBytes={windowBytes}
+              windowBytes={windowBytes ?? design.demands[row.demand]?.windowBytes}
             />
           )}
         </>

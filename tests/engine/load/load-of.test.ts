@@ -294,6 +294,14 @@ describe('what TCP could reach', () => {
     // RFC 7323 section 1.1: 65,535 bytes in a round trip of 36 ms are 14.563 Mbit/s.
     const forward = report(pair(demand()), { windowBytes: 65_535 }).demands[0]!.forward;
     expect(forward.reachable!.oneFlow[0]).toEqual({ kind: 'window', limitBps: 14_563_333 });
+    const stated = pair(demand({ windowBytes: 65_535 }));
+    expect(report(stated).demands[0]!.forward.reachable!.oneFlow[0]).toEqual({
+      kind: 'window',
+      limitBps: 14_563_333,
+    });
+    expect(report(stated, { windowBytes: 131_070 }).demands[0]!.forward.reachable!.oneFlow[0]).toMatchObject({
+      kind: 'loss',
+    });
     // RFC 3819 section 8.5.1 with 1356 bytes, 36 ms and 200 lost of a million: 0.93 x 1356 x 8 / (0.036 x sqrt(0.0002)).
     const unbound = report(pair(demand())).demands[0]!.forward.reachable!;
     expect(unbound.oneFlow[0]).toMatchObject({ kind: 'loss' });

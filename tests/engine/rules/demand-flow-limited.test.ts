@@ -26,6 +26,9 @@ testRule(demandFlowLimited, {
     'a transport that loses nothing': changed(pairDesign(), demand(50_000_000, 1), {
       transports: { coast: { lossPpm: 0 } },
     }),
+    'a window that takes the round trip': changed(pairDesign(), demand(10_000_000, 1), {
+      demands: { copy: { windowBytes: 65_535 } },
+    }),
     'a transport of which no loss is known': changed(pairDesign(), demand(50_000_000, 1), {
       transports: { coast: { lossPpm: null } },
     }),
@@ -41,6 +44,19 @@ testRule(demandFlowLimited, {
           elements: ['demands/copy'],
           properties: ['demands/copy: forwardBps', 'demands/copy: flows'],
           fixes: ['Use 3 flows'],
+        },
+      ],
+    },
+    // RFC 7323 section 1.1: 65,535 bytes in a round trip of 36 ms are 14.6 Mbit/s; 18 Mbit/s need 81,000.
+    'a window too small for the distance': {
+      design: changed(pairDesign(), demand(18_000_000, 1), { demands: { copy: { windowBytes: 65_535 } } }),
+      findings: [
+        {
+          sentence: 'Nightly copy needs 18 Mbit/s, its window leaves 14.6 Mbit/s',
+          words: 'window too small',
+          severity: 'advisory',
+          properties: ['demands/copy: forwardBps', 'demands/copy: flows', 'demands/copy: windowBytes'],
+          fixes: ['Use a window of 81000 bytes', 'Use 2 flows'],
         },
       ],
     },
