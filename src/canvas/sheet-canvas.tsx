@@ -30,6 +30,7 @@ import { nodeTypes } from './nodes/part-nodes.tsx';
 import { endAt, isJoining, placePart, type TrayPart } from './place-part.ts';
 import { PullLine } from './pull-line.tsx';
 import { readPartDrag } from './parts-tray/part-drag.ts';
+import { portNear } from './port-near.ts';
 import { elementAt, refAt } from './ref-at.ts';
 import { CrowdedNotice, EmptySheetHint, SheetHint, ViewNotice } from './sheet-hints.tsx';
 import { SnapGuides } from './snap-guides.tsx';
@@ -169,9 +170,14 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
     if (picks.length > 0) changeSelection(picks);
   };
   /** A pip, a ferrule or a cord under the pointer is meant more than the node that it belongs to. */
-  const onPartClick = (event: MouseEvent): void => {
+  const onPartClick = (event: MouseEvent, part: FlowNode | FlowEdge): void => {
     const ref = refAt(event.target as Element);
-    if (ref !== undefined && onPick !== undefined) return onPick(ref);
+    if (onPick !== undefined) {
+      const whole = ref ?? part.data?.ref;
+      const at = flow.screenToFlowPosition({ x: event.clientX, y: event.clientY });
+      if (whole !== undefined) onPick(portNear(geometry, whole, at));
+      return;
+    }
     if (ref !== undefined && !event.shiftKey && !event.metaKey && !event.ctrlKey) open.select([ref]);
   };
 
