@@ -11,7 +11,7 @@ const firstWords = [
   'Tarn',
   'Velt',
   'Wick',
-  'Dunmore',
+  'Dunn',
   'Pell',
   'Ashby',
   'Crane',
@@ -20,7 +20,7 @@ const firstWords = [
   'Lode',
   'Sall',
 ];
-const lastWords = ['Quay', 'Holm', 'Ness', 'Reach', 'Stair'];
+const lastWords = ['Quay', 'Holm', 'Ness', 'Rock', 'Stair'];
 
 /** Sixty names of landing stages. */
 const stageNames = lastWords.flatMap((last) => firstWords.map((first) => `${first} ${last}`));
@@ -99,6 +99,7 @@ export function landingStages(): Design {
       encrypted: true,
       domain: 'saltmarsh.example',
       sampleHosts: true,
+      standingNotes: true,
     },
     { title: 'Sixty landing stages, one hub', identification: 'SMF-L2-007' },
   );
@@ -141,6 +142,7 @@ export function meshedTerminals(): Design {
       encrypted: true,
       domain: 'saltmarsh.example',
       sampleHosts: true,
+      standingNotes: true,
     },
     { title: 'Eight terminals, meshed', identification: 'SMF-L2-008' },
   );

@@ -28,6 +28,8 @@ export interface SiteGeometry {
   readonly id: string;
   readonly rect: Rect;
   readonly collapsed: boolean;
+  /** On which side of a collapsed site its lower edge is free of a ring's address. */
+  readonly free?: 'left' | 'right';
 }
 
 /** How a band's text found its place: in the band, turned along its edge, on paper beside it, or its name alone. */

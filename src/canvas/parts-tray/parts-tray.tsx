@@ -73,7 +73,7 @@ const withKey = (words: string, id: ShortcutId): string => `${words} (${keyWords
 function StretchButton() {
   const { change } = useSearchValues();
   return (
-    <div className="border-t border-rule-2 px-12 pt-12">
+    <div className="border-t border-rule-2 p-12">
       <Button className="w-full" onClick={() => change({ stretch: stretchForm })}>
         Stretch…
       </Button>

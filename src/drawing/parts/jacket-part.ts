@@ -144,6 +144,9 @@ const cuffs = (jacket: JacketGeometry, look: Look): readonly Shape[] =>
 const crossingHalos = (jacket: JacketGeometry, widthPx: number): readonly Shape[] =>
   jacket.crossings.map((crossing, i) => stroke(crossing.path, crossing.ground, widthPx + 9, `halo-${i}`));
 
+const drawnWidth = (jacket: JacketGeometry, { jackets }: SheetGeometry, { level }: Look): number =>
+  drawnJacketWidth(jacket.width, jacket.lanes.length, level, jackets.length);
+
 const wholeJacket = (
   jacket: JacketGeometry,
   lanes: readonly LaneLook[],
@@ -152,7 +155,7 @@ const wholeJacket = (
 ): readonly Shape[] => {
   const ref = { collection: 'associations' as const, id: jacket.id };
   const tones = tonesOf(look, ref);
-  const width = drawnJacketWidth(jacket.width, jacket.lanes.length, look.level);
+  const width = drawnWidth(jacket, geometry, look);
   const failed = tones.includes('failed') || (lanes.length > 0 && lanes.every((lane) => lane.failed));
   const quiet = lanes.every((lane) => lane.dimmed || lane.hidden);
   const hidden = lanes.length > 0 && lanes.every((lane) => lane.hidden);
@@ -274,7 +277,7 @@ export const jacketPart = (
     return group([...lanes.flatMap((lane) => tails(lane, look)), ...noWayLeader(jacket)], options);
   const halos = crossingHalos(
     jacket,
-    bare ? measures[look.level].casingPx : drawnJacketWidth(jacket.width, jacket.lanes.length, look.level),
+    bare ? measures[look.level].casingPx : drawnWidth(jacket, geometry, look),
   );
   return group(
     bare

@@ -40,6 +40,14 @@ export const measures: { readonly [level in Level]: LevelMeasures } = {
   far: { outlinePx: 4, cablePx: 4.5, casingPx: 22, corePx: 14, tracerPx: 13 },
 };
 
-/** Width of a jacket as drawn: as routed, but never so thin at the far level that it is lost on screen. */
-export const drawnJacketWidth = (width: number, lanes: number, level: Level): number =>
-  level === 'far' ? Math.max(width + 6, lanes === 1 ? 36 : 42) : width;
+/** Jackets on a sheet from which they run side by side so often that widened ones would run into one another. */
+const manyJackets = 16;
+
+/**
+ * Width of a jacket as drawn: as routed, but never so thin at the far level that it is lost on screen; among many, only as
+ * much wider as leaves paper between neighbours.
+ */
+export const drawnJacketWidth = (width: number, lanes: number, level: Level, jackets = 1): number => {
+  if (level !== 'far') return width;
+  return jackets > manyJackets ? width + 8 : Math.max(width + 6, lanes === 1 ? 36 : 42);
+};

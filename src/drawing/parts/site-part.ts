@@ -28,6 +28,8 @@ const lid = (
   const isRead = (look.level === 'near' || look.level === 'work') && words !== '';
   const fitted = fitText(words, { maxWidthPx: width - 2 * aroundName - 16, sizePx: countsPx, minSizePx: 11 });
   const middle = y + height;
+  const plateWidth = fitted.widthPx + 12;
+  const plateX = site.free === 'right' ? x + width - size.nameAt + 6 - plateWidth : x + size.nameAt - 6;
   return [
     {
       ...shape('rect', {
@@ -45,9 +47,9 @@ const lid = (
       ? [
           {
             ...shape('rect', {
-              x: x + size.nameAt - 6,
+              x: plateX,
               y: middle - 9,
-              width: fitted.widthPx + 12,
+              width: plateWidth,
               height: 18,
               fill: paint('paper'),
               stroke: paint(colour),
@@ -55,7 +57,7 @@ const lid = (
             }),
             key: 'counts-plate',
           },
-          ...fittedLines(fitted, words, x + size.nameAt, middle + fitted.sizePx * capShift, 0, {
+          ...fittedLines(fitted, words, plateX + 6, middle + fitted.sizePx * capShift, 0, {
             fill: paint(colour === 'ink-3' ? 'ink-2' : colour),
           }).map((line) => ({ ...line, key: 'counts' })),
         ]

@@ -17,9 +17,7 @@ export const landingLabel = (
   member?: Member,
 ): string => {
   const address =
-    landing.ipv4 ??
-    landing.ipv6 ??
-    (landing.dynamic === true ? (landing.dynamicName ?? 'dynamic address') : '');
+    landing.ipv4 ?? landing.ipv6 ?? (landing.dynamic === true ? (landing.dynamicName ?? 'dynamic') : '');
   if (address === '' || device?.kind !== 'ha-pair' || member === undefined) return address;
   const standby = device.mode !== 'active-active' && member !== (device.active ?? 1);
   return standby && landing.members !== '1' && landing.members !== '2'

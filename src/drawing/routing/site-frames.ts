@@ -52,9 +52,11 @@ export const siteFrames = (
   rings: readonly RingGeometry[],
 ): readonly SiteGeometry[] => {
   const rooms = new Map<string, Rect[]>();
+  const freeSides = new Map<string, 'left' | 'right'>();
   for (const stand of stands.values()) {
     const own = rings.filter((ring) => ring.device === stand.id);
     const { site } = stand.device;
+    if (own.some((ring) => ring.side === 'left')) freeSides.set(site, 'right');
     rooms.set(site, [...(rooms.get(site) ?? []), roomOf(stand, own)]);
   }
   const frames: SiteGeometry[] = [];
@@ -71,7 +73,7 @@ export const siteFrames = (
           : [{ x: laid.x, y: laid.y, width: laid.width, height: laid.height }];
     const rect = around([...own, ...least]);
     if (rect === undefined) homeless.push(id);
-    else frames.push({ id, rect, collapsed });
+    else frames.push({ id, rect, collapsed, ...(collapsed ? { free: freeSides.get(id) ?? 'left' } : {}) });
   }
   for (const id of homeless) {
     let rect: Rect = { x: sheet.frame.x + 20, y: sheet.frame.y + 24, ...emptySite };

@@ -125,6 +125,8 @@ const fields = z.strictObject({
     .optional(),
   /** One host for each site and segment. */
   sampleHosts: yesOrNo.optional(),
+  /** Notes at the top left of the sheet, which takes room that small sheets may not have. */
+  standingNotes: yesOrNo.optional(),
 });
 
 /** What the assistant asks: sites, segments, transports, how they hang together. */

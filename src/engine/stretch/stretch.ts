@@ -370,6 +370,6 @@ export const stretch = (input: unknown, context: StretchContext): Answer<{ reado
   if (problems.length > 0) return refuse(problems);
   addPolicies(built);
   addHosts(built);
-  addStandingNotes(draft);
+  if (form.standingNotes === true) addStandingNotes(draft);
   return { ok: true, patch: draft.patch() };
 };

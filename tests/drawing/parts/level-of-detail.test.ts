@@ -39,4 +39,10 @@ describe('the level of detail', () => {
     // A thumbnail shows an A3 sheet at about 0.17.
     expect(drawnJacketWidth(36, 2, 'far') * 0.17).toBeGreaterThanOrEqual(7);
   });
+
+  it('leaves paper between neighbours where there are many of them', () => {
+    // Mouths of single tunnels stand 39 apart on a comb, runs in a band 16 and a jacket’s width.
+    expect(drawnJacketWidth(20, 1, 'far', 28)).toBeLessThan(36);
+    expect(drawnJacketWidth(20, 1, 'near', 28)).toBe(20);
+  });
 });

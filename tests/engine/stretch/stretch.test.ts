@@ -274,6 +274,18 @@ describe('packet sizes', () => {
   });
 });
 
+test('writes standing notes where they are asked for, and beside none that are there', () => {
+  expect(built(formOf(2)).notes).toEqual({});
+  const noted = built(formOf(2, { standingNotes: true }));
+  expect(Object.values(noted.notes).map(({ text }) => text)).toEqual([
+    'UDP 4789 and outer DF set at both ends. Inner IP packets up to 1396 B.',
+    expect.stringMatching(/None is written here/),
+    expect.stringMatching(/joins failure domains/),
+  ]);
+  const own = applyPatch(empty, { notes: { mine: { text: 'Mine' } } });
+  expect(Object.keys(built(formOf(2, { standingNotes: true }), own).notes)).toEqual(['mine']);
+});
+
 describe('a form that cannot be built is refused with field, value and way out', () => {
   const segment = formOf(3).segments[0]!;
   const site = (i: number) => formOf(4).sites[i]!;
