@@ -14,7 +14,7 @@ import { largeDesign } from './large-design.ts';
 import { heldBytes, timesOf } from './measure.ts';
 
 /**
- * What the engine and the drawing cost on this machine, as medians, with the growth from one size to the next.
+ * What the engine and the drawing cost on this machine in time of the processor, as medians, with the growth from one size to the next.
  * `npm run bench` measures all sizes, `npm run bench -- 1000` those named.
  */
 

@@ -9,7 +9,9 @@ import type { FloodGraph } from '#engine/flood/flood-graph.ts';
 import { floodGraph } from '#engine/flood/flood-graph.ts';
 import { tunnelSegments } from '#engine/flood/tunnel-segments.ts';
 import { indexNetwork } from '#engine/network/index-network.ts';
+import { everySingleFailure } from '#engine/outage/every-single-failure.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
+import { traceFrame } from '#engine/trace/trace-frame.ts';
 import { largeDesign } from './large-design.ts';
 import type { Times } from './measure.ts';
 import { timesOf } from './measure.ts';
@@ -27,21 +29,65 @@ const read = (text: string): Design => {
   return parsed.value;
 };
 
-/** One edit of each kind that people make most, as merge patches. */
-const editsOf = (design: Design): readonly { readonly what: string; readonly patch: MergePatch }[] => {
+interface Edit {
+  readonly what: string;
+  /** Another value each time, so that nothing is known of the design after it. */
+  readonly patch: (n: number) => MergePatch;
+}
+
+/** One edit of each kind that people make most, in a place where it matters. */
+const editsOf = (design: Design): readonly Edit[] => {
   const tunnel = Object.keys(design.tunnels)[0]!;
   const host = Object.keys(design.devices).find((id) => design.devices[id]!.kind === 'host')!;
-  const cable = Object.keys(design.links).find((id) => design.links[id]!.kind === 'cable')!;
+  const switches = Object.keys(design.devices).filter((id) => design.devices[id]!.kind === 'switch');
+  const accessSwitch = switches.find((id) =>
+    Object.values(design.devices[id]!.ports).some(({ mode }) => mode === 'access'),
+  )!;
+  const accessPort = Object.entries(design.devices[accessSwitch]!.ports).find(
+    ([, { mode }]) => mode === 'access',
+  )![0];
+  const cables = Object.keys(design.links).filter((id) => design.links[id]!.kind === 'cable');
   const forwarder = Object.keys(design.forwarders)[0]!;
+  const transport = Object.keys(design.transports)[0]!;
+  const segment = Object.keys(design.segments)[0]!;
+  const association = Object.keys(design.associations)[0]!;
+  const { site } = design.devices[host]!;
+  const plug = (device: string) => ({
+    device,
+    port: Object.keys(design.devices[device]!.ports).at(-1)!,
+  });
   return [
-    { what: 'a VNI', patch: { tunnels: { [tunnel]: { a: { vni: 16_000_000 } } } } },
-    { what: "a host's name", patch: { devices: { [host]: { name: 'kiosk-7' } } } },
-    { what: 'a cable taken out', patch: { links: { [cable]: null } } },
+    { what: 'a VNI', patch: (n) => ({ tunnels: { [tunnel]: { a: { vni: 16_000_000 + n } } } }) },
+    { what: "a host's name", patch: (n) => ({ devices: { [host]: { name: `kiosk-${n}` } } }) },
+    {
+      what: "a port's VLAN",
+      patch: (n) => ({ devices: { [accessSwitch]: { ports: { [accessPort]: { vlan: 2_000 + n } } } } }),
+    },
+    {
+      what: 'a cable added',
+      patch: (n) => ({
+        links: { [`cb-new-${n}`]: { kind: 'cable', a: plug(switches[0]!), b: plug(switches.at(-1)!) } },
+      }),
+    },
+    { what: 'a cable taken out', patch: (n) => ({ links: { [cables[n % cables.length]!]: null } }) },
+    {
+      what: 'a host added',
+      patch: (n) => ({
+        devices: { [`h-new-${n}`]: { kind: 'host', site, name: `new-${n}`, ports: {} } },
+      }),
+    },
+    { what: "a transport's MTU", patch: (n) => ({ transports: { [transport]: { mtu: 1_380 + n } } }) },
     {
       what: 'an isolation group',
-      patch: { forwarders: { [forwarder]: { circuits: { access: { isolation: 'one' } } } } },
+      patch: (n) => ({ forwarders: { [forwarder]: { circuits: { access: { isolation: `g${n}` } } } } }),
     },
-    { what: 'a title', patch: { meta: { title: 'Renamed' } } },
+    { what: "a segment's MTU", patch: (n) => ({ segments: { [segment]: { mtu: 1_300 + n } } }) },
+    {
+      what: 'an IKE lifetime',
+      patch: (n) => ({ associations: { [association]: { a: { ikeLifetimeSeconds: 3_600 + n } } } }),
+    },
+    { what: 'a title', patch: (n) => ({ meta: { title: `Issue ${n}` } }) },
+    { what: 'a device moved', patch: (n) => ({ layout: { devices: { [host]: { x: 40 * n, y: 0 } } } }) },
   ];
 };
 
@@ -52,6 +98,21 @@ const asGeneralGraph = (graph: FloodGraph): DirectedGraph => {
     for (let edge = graph.edgeStart[node]!; edge < graph.edgeStart[node + 1]!; edge += 1)
       general.mergeDirectedEdge(node, graph.edgeTo[edge]!);
   return general;
+};
+
+/** A broadcast from a host of the segment with the most sites, on a network that is known already. */
+const traced = (design: Design): Times => {
+  const siteCount = (id: string): number => Object.keys(design.segments[id]!.sites).length;
+  const [segment] = Object.keys(design.segments).sort((a, b) => siteCount(b) - siteCount(a));
+  const host = indexNetwork(design).hostsBySegment.get(segment!)![0]!;
+  return timesOf(
+    () => ({
+      source: { host },
+      destination: { kind: 'broadcast' as const },
+      packet: { kind: 'non-ip' as const, frameBytes: 64, etherType: 0x0806 },
+    }),
+    (probe) => traceFrame(design, probe),
+  );
 };
 
 export interface Measured {
@@ -102,15 +163,18 @@ export const measureEngine = (deviceCount: number): Measured => {
       ...editsOf(design).map(({ what, patch }) => ({
         what: `all rules after an edit: ${what}`,
         times: timesOf(
-          () => {
-            const before = fresh();
-            runRules(before);
-            return before;
+          (run) => {
+            runRules(design);
+            return patch(run + 2);
           },
-          (before) => runRules(applyPatch(before, patch)),
+          (edit) => runRules(applyPatch(design, edit)),
         ),
         boundMs: 16,
       })),
+      { what: 'a broadcast traced', times: traced(design), boundMs: 5 },
+      ...(deviceCount > 1_000
+        ? []
+        : [{ what: 'every single failure', times: timesOf(fresh, everySingleFailure), boundMs: 2_000 }]),
     ],
     ratios: [
       ratio('connected components', () => connectedComponents(general)),
