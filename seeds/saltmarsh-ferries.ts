@@ -4,11 +4,15 @@ import { insertDemoPerson } from '../server/repositories/demo-people.ts';
 import { insertSnapshot } from '../server/repositories/design-snapshots.ts';
 import { insertDesign } from '../server/repositories/designs.ts';
 import { insertEngagement } from '../server/repositories/engagements.ts';
+import { insertProfile } from '../server/repositories/equipment-profiles.ts';
 import { insertMembership, insertWorkspace } from '../server/repositories/memberships.ts';
 import { insertPerson } from '../server/repositories/people.ts';
+import { putPools } from '../server/repositories/workspace-pools.ts';
 import { summarise } from '../server/services/design-summary.ts';
 import { demoDesign, largerDemoDesigns, smallerDemoDesigns } from './demo-designs/demo-design.ts';
 import { demoPeople } from './demo-people.ts';
+import { demoPools } from './demo-pools.ts';
+import { demoProfiles, withMeasuredGateways } from './demo-profiles.ts';
 
 const oneMinuteMs = 60_000;
 
@@ -33,10 +37,16 @@ export async function seedSaltmarsh({ knex }: Pick<Database, 'knex'>): Promise<v
       { workspaceId, name: 'Saltmarsh Ferries', summary: 'Head office, Gullhaven, Orrin Point, Skerry' },
       new Date(now),
     );
+    await putPools(trx, workspaceId, demoPools, ids.get('owner')!, new Date(now));
+    const originals = {
+      branch: await insertProfile(trx, workspaceId, demoProfiles.branch, ids.get('owner')!, new Date(now)),
+      pair: await insertProfile(trx, workspaceId, demoProfiles.pair, ids.get('owner')!, new Date(now)),
+    };
+    await insertProfile(trx, workspaceId, demoProfiles.virtual, ids.get('owner')!, new Date(now));
     const designs = [
       demoDesign('fault-free'),
       demoDesign('planted-faults'),
-      ...smallerDemoDesigns(),
+      ...smallerDemoDesigns().map((document) => withMeasuredGateways(document, originals)),
       ...largerDemoDesigns(),
     ];
     for (const [index, document] of designs.entries()) {

@@ -41,6 +41,13 @@ export const routes: RouteObject[] = [
                 }),
               },
               {
+                path: 'workspaces/:workspaceId/profiles',
+                ErrorBoundary: PageError,
+                lazy: async () => ({
+                  Component: (await import('../pages/profiles-page.tsx')).ProfilesPage,
+                }),
+              },
+              {
                 path: 'designs/:designId',
                 ErrorBoundary: PageError,
                 lazy: async () => ({ Component: (await import('../pages/design-page.tsx')).DesignPage }),

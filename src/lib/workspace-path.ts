@@ -2,6 +2,8 @@ const storageKey = 'longpatch.workspace';
 
 export const engagementsPath = (workspaceId: string): string => `/workspaces/${workspaceId}/engagements`;
 
+export const profilesPath = (workspaceId: string): string => `/workspaces/${workspaceId}/profiles`;
+
 export const designPath = (designId: string): string => `/designs/${designId}`;
 
 /** The workspace that this browser last showed. */

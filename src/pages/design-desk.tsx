@@ -17,6 +17,7 @@ import { browserEditStorage } from '../workspace/edit-storage.ts';
 import { openDesign, type OpenDesign } from '../workspace/open-design.ts';
 import { OpenDesignProvider } from '../workspace/open-design-context.tsx';
 import { StoredChecks } from '../workspace/stored-checks.tsx';
+import { WorkspaceProfilesProvider } from '../workspace/workspace-profiles.tsx';
 
 const phone = '(max-width: 767px)';
 
@@ -109,9 +110,11 @@ function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonl
             summary={answer.summary}
           />
           <TravelKeys />
-          <Suspense fallback={<Opening />}>
-            <Outlet />
-          </Suspense>
+          <WorkspaceProfilesProvider>
+            <Suspense fallback={<Opening />}>
+              <Outlet />
+            </Suspense>
+          </WorkspaceProfilesProvider>
           <StretchDialogs />
         </StoredChecks>
       </OpenDesignProvider>

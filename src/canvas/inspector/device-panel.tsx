@@ -16,6 +16,7 @@ import { LongTextField, SelectField, TextField, YesNoField } from './fields.tsx'
 import { FindingBoxes } from './finding-box.tsx';
 import { PanelHead, usePerform } from './panel-head.tsx';
 import { PortTable } from './port-table.tsx';
+import { ProfileCell } from './profile-cells.tsx';
 import { Section } from './section.tsx';
 import { SpanningTreeCells } from './spanning-tree-cells.tsx';
 import { vlansOf } from './tunnel-facts.ts';
@@ -49,15 +50,7 @@ export function DevicePanel({ id }: { readonly id: string }) {
         />
         {device.kind === 'host' && <HostCells id={id} />}
         <TextField label="Management address" path={at('managementAddress')} span={2} />
-        <SelectField
-          label="Equipment profile"
-          path={at('profile')}
-          span={2}
-          choices={Object.entries(design.profiles).map(([profile, { name }]) => ({
-            value: profile,
-            label: name,
-          }))}
-        />
+        <ProfileCell device={id} />
       </CellGrid>
       {device.kind === 'ha-pair' && <PairCells id={id} />}
       <FindingBoxes about={ref} />

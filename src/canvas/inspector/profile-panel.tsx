@@ -4,6 +4,7 @@ import { ElementList } from './element-link.tsx';
 import { LongTextField, SelectField, TextField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
 import { PanelHead } from './panel-head.tsx';
+import { NewerProfile } from './profile-cells.tsx';
 import { rate } from './rate-text.ts';
 import { Section } from './section.tsx';
 import { wholeNumber } from './written-value.ts';
@@ -68,6 +69,7 @@ export function ProfilePanel({ id }: { readonly id: string }) {
           hint="HMAC-SHA2-256 cut to: bits of the integrity value left on a packet. Ends that differ refuse each other’s packets."
         />
       </CellGrid>
+      <NewerProfile id={id} />
       <FindingBoxes about={ref} />
       {(['plain', 'encrypted'] as const).map((kind) => (
         <Section

@@ -1,7 +1,7 @@
 import type { ReactNode } from 'react';
 import { BarContents, BarNav } from '../../components/bar.tsx';
 import { useCurrentWorkspaceId } from '../../lib/session.ts';
-import { engagementsPath } from '../../lib/workspace-path.ts';
+import { engagementsPath, profilesPath } from '../../lib/workspace-path.ts';
 import { WorkspaceCell } from './workspace-cell.tsx';
 
 interface MainBarProps {
@@ -24,6 +24,7 @@ export function MainBar({ workspaceId, children }: MainBarProps) {
             label="Main"
             destinations={[
               { to: engagementsPath(here), label: 'Engagements' },
+              { to: profilesPath(here), label: 'Equipment' },
               { to: '/checks', label: 'Checks' },
               { to: '/wire', label: 'Wire' },
             ]}

@@ -1,5 +1,7 @@
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import { engagementListSchema, openDesignSchema } from '#contract/designs.ts';
+import { workspacePoolsSchema } from '#contract/numbering.ts';
+import { profileListSchema } from '#contract/profiles.ts';
 import { sessionSchema } from '#contract/session.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
 import type { Design } from '#engine/model/design.ts';
@@ -21,7 +23,7 @@ test('the demo is seeded once, also by two starters at the same moment', async (
   const counts = await Promise.all(
     ['workspaces', 'people', 'engagements', 'designs'].map(async (table) => (await knex(table)).length),
   );
-  expect(counts).toEqual([1, 5, 1, 5]);
+  expect(counts).toEqual([1, 5, 1, 7]);
 });
 
 test('everybody of the demo can sign in, with the documented password or with one click', async () => {
@@ -56,4 +58,24 @@ test('the list’s counts and titles are those of the documents', async () => {
       expect(summary.counts[severity]).toBe(findings.filter((each) => each.severity === severity).length);
     await reviewer.get(`/api/designs/${summary.id}/thumbnail?v=0`).expect(200);
   }
+});
+
+test('the demo’s team has pools, and profiles that designs hold current copies of', async () => {
+  const owner = await signIn(application, demoSignIns[0]!, demoSignIns[0]!.password);
+  const session = sessionSchema.parse((await owner.get('/api/session')).body);
+  const { workspaceId } = session.memberships[0]!;
+  const listed = await owner.get(`/api/workspaces/${workspaceId}/profiles`).expect(200);
+  const { profiles } = profileListSchema.parse(listed.body);
+  expect(profiles.map(({ profile }) => profile.name)).toEqual([
+    'Pair of small gateways',
+    'Small branch gateway',
+    'Virtual gateway, 1 vCPU',
+  ]);
+  expect(profiles[0]!.usedIn.length).toBeGreaterThan(0);
+  for (const { usedIn } of profiles)
+    for (const { current, devices } of usedIn) expect([current, devices > 0]).toEqual([true, true]);
+  const pools = workspacePoolsSchema.parse(
+    (await owner.get(`/api/workspaces/${workspaceId}/pools`).expect(200)).body,
+  );
+  expect(pools.pools.vnis).toMatchObject([{ from: 10_100, to: 10_999 }]);
 });
