@@ -14,6 +14,7 @@ import { placeDemand } from '../../workspace/operations/place-parts.ts';
 import { AddButton } from './add-button.tsx';
 import { useNetwork } from './carried-segments.tsx';
 import { CheckList } from './check-list.tsx';
+import { milliseconds } from './duration-text.ts';
 import { ElementLink, ElementList } from './element-link.tsx';
 import { LongTextField, TextField, YesNoField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
@@ -45,6 +46,12 @@ export function SegmentPanel({ id }: { readonly id: string }) {
         <TextField label="MTU needed" path={at('mtu')} writing={bytes} />
         <TextField label="Hosts expected" path={at('hostsExpected')} writing={number} />
         <YesNoField label="Must be filtered" path={at('mustBeFiltered')} />
+        <TextField
+          label="Neighbours give up after"
+          path={at('neighbourTimeoutUs')}
+          writing={milliseconds}
+          span={2}
+        />
       </CellGrid>
       <FindingBoxes about={ref} />
       <StretchButton id={id} />

@@ -45,6 +45,8 @@ export const segmentSchema = z.strictObject({
   mtu: mtuSchema.optional(),
   protocols: z.array(z.enum(protocols)).max(protocols.length).optional(),
   hostsExpected: countSchema.optional(),
+  /** How long neighbours on it (BFD, gateway groups, routers) hear nothing before the hastiest gives another one up. */
+  neighbourTimeoutUs: durationUsSchema.optional(),
   mustBeFiltered: z.boolean().optional(),
   notes: textSchema.optional(),
 });

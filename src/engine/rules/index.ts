@@ -57,6 +57,7 @@ import { macTableTooSmall } from './mac-table-too-small.ts';
 import { managementInsideSegment } from './management-inside-segment.ts';
 import { multicastDroppedOnPath } from './multicast-dropped-on-path.ts';
 import { natKeepaliveTooSlow } from './nat-keepalive-too-slow.ts';
+import { neighboursGiveUpEarly } from './neighbours-give-up-early.ts';
 import { pairWithoutMemberLink } from './pair-without-member-link.ts';
 import { pairWithoutStateSync } from './pair-without-state-sync.ts';
 import { policyDropsAddressResolution } from './policy-drops-address-resolution.ts';
@@ -170,6 +171,7 @@ export const rules: readonly Rule[] = [
   managementInsideSegment,
   multicastDroppedOnPath,
   natKeepaliveTooSlow,
+  neighboursGiveUpEarly,
   pairWithoutMemberLink,
   pairWithoutStateSync,
   policyDropsAddressResolution,
