@@ -4,6 +4,7 @@ import '../canvas/canvas.css';
 import { DeskCommands } from '../canvas/commands/desk-commands.tsx';
 import { endOf } from '../canvas/connect-ends.ts';
 import { ExtraActionsProvider } from '../canvas/actions/extra-actions.ts';
+import { useElementMenu } from '../canvas/actions/use-element-menu.ts';
 import { askToJoin, clearDesk, setInspecting, useDesk } from '../canvas/desk-state.ts';
 import type { DeskTab } from '../canvas/desk-tab.ts';
 import { standingOf } from '../canvas/flow-changes-to-patch.ts';
@@ -71,6 +72,7 @@ function Surface() {
   const { settled, preview, setPreview } = useDrawn();
   const view = useView();
   const standing = useMemo(() => standingOf(settled), [settled]);
+  const menuOf = useElementMenu();
   const fixes = useFindingFixes();
   const { valueOf, change } = useSearchValues();
   // A link to a finding leads here.
@@ -218,6 +220,7 @@ function Surface() {
           }}
           onShowFinding={select}
           standing={standing}
+          menuOf={menuOf}
         />
       )}
     </main>
