@@ -37,7 +37,7 @@ export function GeometryProvider({ children }: { readonly children: ReactNode })
   const shown = useMemo(() => (over === undefined ? design : applyPatch(design, over)), [design, over]);
   const settled = useMemo(() => route(design), [design]);
   const geometry = useMemo(
-    () => (shown === design ? settled : routeWhileDragging(shown)),
+    () => (shown === design ? settled : routeWhileDragging(shown, design)),
     [shown, design, settled],
   );
   // A drag moves things only: what they say stays.

@@ -73,12 +73,19 @@ const elbowRoomOf = (furnished: FurnishedSheet, end: CableEnd): ElbowRoom => {
 const roundedCorners = (corners: Corners): Corners =>
   corners.map(({ x, y }) => ({ x: Math.round(x * 2) / 2, y: Math.round(y * 2) / 2 }));
 
-/** Every cable and WAN cable as it is drawn, without the labels of the latter. */
+const isAt = ({ x, y }: Point, end: Point | undefined): boolean =>
+  end !== undefined && Math.abs(end.x - x) < 0.5 && Math.abs(end.y - y) < 0.5;
+
+/**
+ * Every cable and WAN cable as it is drawn, without the labels of the latter. Those `held` whose ends are where they were stay
+ * as they are.
+ */
 export const cableGeometries = (
   design: Design,
   furnished: FurnishedSheet,
   ground: Ground,
   jackets: readonly JacketGeometry[],
+  held: readonly CableGeometry[] = [],
 ): readonly { readonly geometry: CableGeometry; readonly landing?: LandingRun }[] => {
   const { cables, landings } = cableRuns(design, furnished.pips);
   const siteOf = (device: string): string => furnished.stands.get(device)?.device.site ?? '';
@@ -91,10 +98,26 @@ export const cableGeometries = (
   const laid: Corners[] = [];
   const drawn: { geometry: CableGeometry; landing?: LandingRun }[] = [];
   const known = (): readonly KnownRun[] => [...cords, ...runsOfCables(laid)];
+  const heldByLink = new Map(held.map((geometry) => [geometry.links[0]!, geometry]));
+  const kept = (link: string, from: Point, to: Point | undefined): CableGeometry | undefined => {
+    const geometry = heldByLink.get(link);
+    return geometry !== undefined &&
+      !geometry.noWay &&
+      isAt(from, geometry.polyline[0]) &&
+      (to === undefined || isAt(to, geometry.polyline.at(-1)))
+      ? geometry
+      : undefined;
+  };
 
   // WAN cables first: they have one straight way, the others can give way.
   const register = landingRegister();
   for (const run of landings) {
+    const same = kept(run.link, run.from.at, undefined);
+    if (same !== undefined) {
+      drawn.push({ geometry: same, landing: run });
+      laid.push(same.polyline);
+      continue;
+    }
     const way: LandedWay | undefined = landingWay(
       ground,
       run,
@@ -130,6 +153,12 @@ export const cableGeometries = (
     laid.push(corners);
   }
   for (const run of cables) {
+    const same = kept(run.links[0]!, run.a.at, run.b.at);
+    if (same !== undefined) {
+      drawn.push({ geometry: same });
+      laid.push(same.polyline);
+      continue;
+    }
     const way = cableWay(ground, run, shares.get(run.key) ?? 0.5, known(), siteOf);
     const shared = { links: run.links, aggregated: run.aggregated };
     if (way === undefined) {

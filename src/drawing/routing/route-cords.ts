@@ -3,7 +3,7 @@ import type { BandPlace } from './bands.ts';
 import { meetings } from './corners.ts';
 import type { WayCrossing, WayOverlap } from './corners.ts';
 import { detour, knownRuns, withoutIdlePoints } from './detour.ts';
-import type { Cord, Corners, Ground, Way } from './ground.ts';
+import type { Cord, Corners, Ground, Mouth, Way } from './ground.ts';
 import { isTrunkRun, wayIsBlocked } from './ground.ts';
 import { patternWay } from './patterns.ts';
 import { bottom, byText, grown, right, runRect } from './rects.ts';
@@ -218,4 +218,30 @@ export const routeCords = (
       : way,
   );
   return { ways, bands: best.ground.bands, ...meetings(ways), tracked: best.tracked };
+};
+
+const sameMouth = (a: Mouth, b: Mouth): boolean =>
+  a.at.x === b.at.x && a.at.y === b.at.y && a.side === b.side;
+
+/** Ways for cords whose ends moved or in whose way something came, once and without a look at the others, which keep theirs. */
+export const routeAround = (ground: Ground, cords: readonly Cord[], before: RoutedCords): RoutedCords => {
+  const held = new Map(before.ways.map((way) => [way.cord.key, way]));
+  const keptWay = (cord: Cord): Way | undefined => {
+    const way = held.get(cord.key);
+    return way !== undefined &&
+      way.found !== 'none' &&
+      way.cord.width === cord.width &&
+      sameMouth(way.cord.a, cord.a) &&
+      sameMouth(way.cord.b, cord.b) &&
+      !wayIsBlocked(ground, way, -0.75)
+      ? { ...way, cord }
+      : undefined;
+  };
+  const kept = new Map(cords.map((cord) => [cord.key, keptWay(cord)]));
+  const loose = cords.filter((cord) => kept.get(cord.key) === undefined);
+  const routed = new Map(
+    (loose.length === 0 ? [] : routeCords(ground, loose, 0).ways).map((way) => [way.cord.key, way]),
+  );
+  const ways = cords.map((cord) => kept.get(cord.key) ?? routed.get(cord.key)!);
+  return { ways, bands: ground.bands, ...meetings(ways), tracked: before.tracked };
 };

@@ -1,8 +1,9 @@
 import type { Design } from '../../engine/model/design.ts';
-import type { BandGeometry, Crowded, Rect, SheetGeometry } from '../geometry.ts';
+import type { BandGeometry, CableGeometry, Crowded, Rect, SheetGeometry } from '../geometry.ts';
 import { sheetSizes } from '../../engine/model/layout.ts';
 import { lane } from '../parts/sizes.ts';
 import { bandText } from './band-text.ts';
+import type { BandPlace } from './bands.ts';
 import { bandRects } from './bands.ts';
 import { cableGeometries } from './cables.ts';
 import type { FurnishedSheet } from './furnish.ts';
@@ -14,7 +15,7 @@ import { placeNotes } from './note-places.ts';
 import { jacketGeometries } from './jackets.ts';
 import type { RoutedCords } from './route-cords.ts';
 import { covers } from './rects.ts';
-import { routeCords } from './route-cords.ts';
+import { routeAround, routeCords } from './route-cords.ts';
 
 export interface RoutedSheet {
   readonly furnished: FurnishedSheet;
@@ -57,7 +58,13 @@ const routeSheet = (design: Design): RoutedSheet => {
 const trouble = ({ cords }: RoutedSheet): number =>
   cords.overlaps.length + cords.ways.filter((way) => way.found === 'none').length;
 
-const drawn = new WeakMap<Design['layout'], { readonly design: Design; readonly geometry: SheetGeometry }>();
+interface Drawn {
+  readonly design: Design;
+  readonly routed: RoutedSheet;
+  readonly geometry: SheetGeometry;
+}
+
+const drawn = new WeakMap<Design['layout'], Drawn>();
 
 const routedParts = [
   'sites',
@@ -72,26 +79,63 @@ const routedParts = [
   'layout',
 ] as const satisfies readonly (keyof Design)[];
 
+const drawnOf = (design: Design): Drawn => {
+  const before = drawn.get(design.layout);
+  if (before !== undefined && routedParts.every((part) => before.design[part] === design[part]))
+    return before;
+  const routed = routeSheet(design);
+  const now = { design, routed, geometry: draw(design, routed) };
+  drawn.set(design.layout, now);
+  return now;
+};
+
 /**
  * The whole drawing of a design: everything placed and routed, from its layout alone. The same design gives the same
  * drawing however it was reached; edits of parts that are not drawn keep the drawing itself.
  */
-export const route = (design: Design): SheetGeometry => {
-  const before = drawn.get(design.layout);
-  if (before !== undefined && routedParts.every((part) => before.design[part] === design[part]))
-    return before.geometry;
-  const geometry = draw(design, routeSheet(design));
-  drawn.set(design.layout, { design, geometry });
-  return geometry;
-};
+export const route = (design: Design): SheetGeometry => drawnOf(design).geometry;
 
 /**
- * A drawing quick enough for every step of a drag: as `route`, but overlaps are not mended until the drop, when `route`
+ * A drawing quick enough for every step of a drag. Cords and cables whose ends stay where they were `from` the design before
+ * it keep their ways; the others are routed without a look at them, and overlaps are not mended until the drop, when `route`
  * answers for good.
  */
-export const routeWhileDragging = (design: Design): SheetGeometry => draw(design, routeSheetOnce(design));
+export const routeWhileDragging = (design: Design, from: Design): SheetGeometry => {
+  const before = drawnOf(from);
+  if (routedParts.every((part) => from[part] === design[part])) return before.geometry;
+  const furnished = furnish(design);
+  const { pitches, cords: held } = before.routed;
+  const cords = cordsOf(furnished, (transport) => pitches.get(transport ?? '') ?? lane.pitch);
+  const bands = furnished.ground.bands.map((band) => wideAsBefore(band, held.bands));
+  const ground = { ...furnished.ground, bands };
+  return draw(
+    design,
+    { furnished, cords: routeAround(ground, cords, held), pitches },
+    before.geometry.cables,
+  );
+};
 
-const draw = (design: Design, { furnished, cords, pitches }: RoutedSheet): SheetGeometry => {
+/** A band that stands where it stood is as wide as its cords have made it. */
+const wideAsBefore = (band: BandPlace, before: readonly BandPlace[]): BandPlace => {
+  const same = before.find(({ id }) => id === band.id);
+  const stays =
+    same !== undefined &&
+    same.limbs.length === band.limbs.length &&
+    same.limbs.every((limb, i) => {
+      const now = band.limbs[i]!;
+      return (
+        Math.abs(limb.x + limb.width / 2 - now.x - now.width / 2) <= limb.width &&
+        Math.abs(limb.y + limb.height / 2 - now.y - now.height / 2) <= limb.height
+      );
+    });
+  return stays ? same : band;
+};
+
+const draw = (
+  design: Design,
+  { furnished, cords, pitches }: RoutedSheet,
+  heldCables: readonly CableGeometry[] = [],
+): SheetGeometry => {
   const { sheet, sites, bundles, ground } = furnished;
   const shaped = bundles.map((bundle, i) => ({
     bundle,
@@ -115,6 +159,7 @@ const draw = (design: Design, { furnished, cords, pitches }: RoutedSheet): Sheet
       obstacles: [...ground.obstacles, ...sites.map((site) => ({ rect: siteNameRect(design, site) }))],
     },
     jackets,
+    heldCables,
   );
   const rawRings = [...furnished.rings.values()];
 

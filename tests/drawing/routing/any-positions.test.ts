@@ -187,10 +187,33 @@ describe('dragging', () => {
   });
   it('draws a clean sheet the same while dragging and on the drop, and never a cord over a plate', () => {
     for (const design of tidied) {
-      expect(routeWhileDragging(design)).toEqual(route(design));
+      expect(routeWhileDragging(design, design)).toEqual(route(design));
       const site = Object.keys(design.sites).sort().at(-1)!;
       for (let step = 1; step <= 12; step += 1)
-        expect(overPlates(routeWhileDragging(moveSite(design, site, -40 * step, 11 * step)))).toEqual([]);
+        expect(overPlates(routeWhileDragging(moveSite(design, site, -40 * step, 11 * step), design))).toEqual(
+          [],
+        );
+    }
+  });
+  it('while one site is dragged leaves jackets and cables between the others as they are', () => {
+    for (const design of tidied) {
+      const site = Object.keys(design.sites).sort().at(-1)!;
+      const inSite = (device: string): boolean => design.devices[device]!.site === site;
+      const before = route(design);
+      const dragged = routeWhileDragging(moveSite(design, site, -4, 2), design);
+      const away = before.jackets.filter(({ id }) => {
+        const association = design.associations[id];
+        return association !== undefined && !inSite(association.a.device) && !inSite(association.b.device);
+      });
+      for (const jacket of away)
+        expect(dragged.jackets.find(({ id }) => id === jacket.id)!.polyline).toEqual(jacket.polyline);
+      for (const cable of before.cables) {
+        const link = design.links[cable.links[0]!]!;
+        if (link.kind !== 'cable' || inSite(link.a.device) || inSite(link.b.device)) continue;
+        expect(dragged.cables.find(({ links }) => links[0] === cable.links[0])!.polyline).toEqual(
+          cable.polyline,
+        );
+      }
     }
   });
   it('keeps the ways of jackets that have nothing to do with what moves', () => {
