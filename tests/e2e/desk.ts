@@ -13,7 +13,7 @@ export const signInAs = async (page: Page, role: DemoRole): Promise<void> => {
 export const newDesign = async (
   page: Page,
   title: string,
-  from: 'Empty sheet' | 'Demo' = 'Empty sheet',
+  from: 'Empty sheet' | 'Stretch' | 'Demo' = 'Empty sheet',
 ): Promise<void> => {
   await page.getByRole('main').getByRole('button', { name: 'New design' }).first().click();
   const dialog = page.getByRole('dialog');
