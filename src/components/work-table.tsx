@@ -81,7 +81,7 @@ export function WorkTable<Row>({
             label={filterLabel}
             value={view.filter}
             onChange={(filter) => setView({ ...view, filter })}
-            className="w-240 max-w-full max-md:flex-1"
+            className="max-w-240 min-w-130 flex-1 max-md:max-w-full"
           />
         )}
         <p role="status" className="text-note whitespace-nowrap text-ink-2 empty:hidden">

@@ -45,6 +45,9 @@ export const shareText = (perMillion: number): string => {
   return `${percent < 10 ? Number(percent.toFixed(1)) : grouped.format(Math.round(percent))} %`;
 };
 
+/** Packets lost of a million in per cent, as small as it may be: 200 as '0.02 %'. */
+export const lossText = (perMillion: number): string => `${Number((perMillion / 10_000).toPrecision(3))} %`;
+
 /** How many times something fits, rounded down: '2.3 times', '0.71 times', '1,200 times'. */
 export const timesText = (times: number): string => {
   const digits = times < 1 ? 2 : times < 10 ? 1 : 0;

@@ -2,6 +2,7 @@ import { expect, test } from 'vitest';
 import {
   bytesText,
   durationText,
+  lossText,
   packetRateText,
   rateText,
   shareText,
@@ -35,6 +36,10 @@ test('a share that is there is never said to be nothing', () => {
     '62 %',
     '1400 %',
   ]);
+});
+
+test('loss is told as small as it is', () => {
+  expect([0, 1, 200, 15_000].map(lossText)).toEqual(['0 %', '0.0001 %', '0.02 %', '1.5 %']);
 });
 
 test('how often something fits is rounded down', () => {

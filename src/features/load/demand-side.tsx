@@ -5,7 +5,7 @@ import { CellGrid, ReadCell } from '../../components/cell.tsx';
 import { SegmentSwatch } from '../../components/segment-swatch.tsx';
 import type { Hop } from '../../engine/load/carried-direction.ts';
 import type { Design } from '../../engine/model/design.ts';
-import { durationText, rateText, shareText } from '../../lib/figure-texts.ts';
+import { durationText, lossText, rateText } from '../../lib/figure-texts.ts';
 import { missingWords } from '../../workspace/operations/missing-words.ts';
 import type { DemandWayRow } from './demand-ways.ts';
 import { elementWords } from './demand-ways.ts';
@@ -42,7 +42,7 @@ export function DemandSide({ row, back, design, editable, windowBytes, onEdit }:
         <Figure label="In the tunnel" of={row.grownBps} words={rateText} />
         <Figure label="Latency, one way" of={row.latencyUs} words={durationText} />
         <Figure label="Latency allowed" of={row.allowedUs} words={durationText} absent="none stated" />
-        <Figure label="Loss" of={row.lossPerMillion} words={shareText} />
+        <Figure label="Loss" of={row.lossPerMillion} words={lossText} />
         <Figure label="Longest packet" of={row.reachable?.packetBytes} words={(bytes) => `${bytes} B`} />
       </CellGrid>
       {direction.state === 'carried' ? (

@@ -9,7 +9,7 @@ import type { Column } from '../../components/table-view.ts';
 import { useTableView } from '../../components/use-table-view.ts';
 import { WorkTable } from '../../components/work-table.tsx';
 import type { Design } from '../../engine/model/design.ts';
-import { durationText, rateText, shareText } from '../../lib/figure-texts.ts';
+import { durationText, lossText, rateText } from '../../lib/figure-texts.ts';
 import { ceilingWords, type DemandWayRow } from './demand-ways.ts';
 
 const said = <T,>(value: T | undefined, words: (value: T) => string): string =>
@@ -85,12 +85,14 @@ const columnsFor = (design: Design): readonly Column<DemandWayRow>[] => [
     widthPx: 120,
     highestFirst: true,
     cell: ({ demand, way, name }) => (
-      <InlineField
-        label={`Rate ${way === 'forward' ? 'there' : 'back'} of ${name}`}
-        path={['demands', demand, way === 'forward' ? 'forwardBps' : 'reverseBps']}
-        writing={rate}
-        alignRight
-      />
+      <span className="block min-w-90">
+        <InlineField
+          label={`Rate ${way === 'forward' ? 'there' : 'back'} of ${name}`}
+          path={['demands', demand, way === 'forward' ? 'forwardBps' : 'reverseBps']}
+          writing={rate}
+          alignRight
+        />
+      </span>
     ),
     sortBy: ({ offeredBps }) => offeredBps,
     text: ({ offeredBps }) => said(offeredBps, rateText),
@@ -139,9 +141,9 @@ const columnsFor = (design: Design): readonly Column<DemandWayRow>[] => [
     head: 'Loss',
     align: 'right',
     highestFirst: true,
-    cell: ({ lossPerMillion }) => shown(said(lossPerMillion, shareText)),
+    cell: ({ lossPerMillion }) => shown(said(lossPerMillion, lossText)),
     sortBy: ({ lossPerMillion }) => lossPerMillion,
-    text: ({ lossPerMillion }) => said(lossPerMillion, shareText),
+    text: ({ lossPerMillion }) => said(lossPerMillion, lossText),
     optional: true,
   },
   {

@@ -30,7 +30,12 @@ const columns: readonly Column<LimitRow>[] = [
     sortBy: ({ name }) => name,
     text: ({ name, way }) => [name, way].filter(Boolean).join(' '),
   },
-  { key: 'what', head: 'Limit', cell: ({ what }) => what, sortBy: ({ what }) => what },
+  {
+    key: 'what',
+    head: 'Limit',
+    cell: ({ what }) => <span className="block min-w-120">{what}</span>,
+    sortBy: ({ what }) => what,
+  },
   {
     key: 'bar',
     head: 'Load in the limit',
@@ -51,7 +56,7 @@ const columns: readonly Column<LimitRow>[] = [
           <>
             {usedWords({ ...row, used: row.own })}
             {row.own !== row.used && (
-              <span className="block text-note text-ink-2">of {usedWords(row)} used</span>
+              <span className="block text-note whitespace-nowrap text-ink-2">of {usedWords(row)} used</span>
             )}
           </>
         )}
@@ -85,7 +90,12 @@ const columns: readonly Column<LimitRow>[] = [
     key: 'room',
     head: 'Headroom',
     cell: (row) => (
-      <span className={classNames(row.times !== undefined && row.times < 1 && 'font-semibold text-degr')}>
+      <span
+        className={classNames(
+          'whitespace-nowrap',
+          row.times !== undefined && row.times < 1 && 'font-semibold text-degr',
+        )}
+      >
         {known(roomWords(row))}
       </span>
     ),

@@ -5,7 +5,8 @@ import { shareText } from '../../lib/figure-texts.ts';
 import type { LimitRow } from './limit-rows.ts';
 
 // What is hardly used says nothing worth a place on the sheet, and a sheet full of tags says nothing either.
-const leastPerMillion = 10_000;
+const leastPerMillion = 50_000;
+const leastTags = 3;
 const mostTags = 12;
 
 /** The fullest limit of each element, the first of them the bottleneck. */
@@ -31,7 +32,7 @@ export const loadDecorations = (
   return {
     tones,
     tags: fullestOfEach(rows)
-      .filter(({ key, sharePerMillion }) => key === bottleneck || sharePerMillion! >= leastPerMillion)
+      .filter(({ sharePerMillion }, at) => at < leastTags || sharePerMillion! >= leastPerMillion)
       .slice(0, mostTags)
       .map(({ key, ref, sharePerMillion }) => ({
         at: ref,

@@ -14,7 +14,7 @@ const kindLabels: Readonly<Record<KindShown, string>> = {
   tunnels: 'Tunnels',
   gateways: 'Gateways',
   transports: 'Transports',
-  cables: 'Ports and cables',
+  cables: 'Cables',
 };
 
 /** What is shown of the load: limits of one kind, or demands. */

@@ -1,7 +1,7 @@
 import type { Ceiling, Reachable } from '../../engine/load/reachable.ts';
 import type { Design } from '../../engine/model/design.ts';
 import { TCP_LOSS_BOUND_CONSTANT } from '../../engine/reference/tcp.ts';
-import { bytesText, durationText, rateText, shareText } from '../../lib/figure-texts.ts';
+import { bytesText, durationText, lossText, rateText } from '../../lib/figure-texts.ts';
 import { missingWords } from '../../workspace/operations/missing-words.ts';
 import { ceilingWords } from './demand-ways.ts';
 
@@ -73,7 +73,7 @@ const formulaWords = (
   if (kind === 'window' && windowBytes !== undefined && rttUs !== undefined)
     return `Window / round trip: ${bytesText(windowBytes)} / ${durationText(rttUs)}. RFC 7323, section 1.1.`;
   if (kind === 'loss' && lossPerMillion !== undefined && rttUs !== undefined)
-    return `${TCP_LOSS_BOUND_CONSTANT} × segment / (round trip × √loss), with ${durationText(rttUs)} and ${shareText(lossPerMillion)}. RFC 3819, section 8.5.1.`;
+    return `${TCP_LOSS_BOUND_CONSTANT} × segment / (round trip × √loss), with ${durationText(rttUs)} and ${lossText(lossPerMillion)}. RFC 3819, section 8.5.1.`;
   if (kind === 'port-speed') return 'Port speed, less what Ethernet and every header take of it.';
   if (kind === 'transport-rate') return 'Ordered rate, less what every header takes of it.';
   if (kind === 'one-cable') return 'A flow stays on one cable of an aggregate. IEEE 802.1AX, from memory.';

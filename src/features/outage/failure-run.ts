@@ -42,7 +42,7 @@ export interface Progress {
   readonly total: number;
 }
 
-// A second or two of work on a large design, where all pairs would take hours.
+// Some twenty seconds of work on the largest designs, where all pairs would take hours.
 export const mostPairs = 10_000;
 
 function* singlesOf(design: DesignFacts): Generator<Progress, RunResults['singles']> {

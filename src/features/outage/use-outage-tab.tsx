@@ -35,9 +35,14 @@ export function useOutageTab(active: boolean): DeskTab {
   const text = valueOf('failed');
   const { failed, unknown } = useMemo(() => readFailed(design, active ? text : ''), [design, active, text]);
   const network = useMemo(() => (active ? indexNetwork(design) : undefined), [active, design]);
+  // The first failure of a large design takes a moment: what has failed shows at once, what comes of it follows.
+  const followed = useDeferredValue(failed);
   const facts = useMemo(
-    () => (network === undefined ? undefined : outageFacts(network, failed)),
-    [network, failed],
+    () =>
+      network === undefined || (followed.length === 0 && view !== 'sites')
+        ? undefined
+        : outageFacts(network, followed),
+    [network, followed, view],
   );
   const decorations = useMemo(
     () => (active ? outageDecorations(design, failed, facts) : undefined),
@@ -183,7 +188,7 @@ export function useOutageTab(active: boolean): DeskTab {
           failed={failed}
           unknown={unknown}
           singles={singles.result}
-          facts={facts}
+          facts={followed === failed ? facts : undefined}
           onRestore={restore}
           onRestoreAll={restoreAll}
           onForget={() => fail(failed)}
@@ -197,7 +202,7 @@ export function useOutageTab(active: boolean): DeskTab {
       <OutageSide
         design={design}
         failed={failed}
-        facts={facts}
+        facts={followed === failed ? facts : undefined}
         onRestore={restore}
         onRestoreAll={restoreAll}
       />
