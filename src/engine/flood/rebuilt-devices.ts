@@ -33,9 +33,19 @@ const forwardsAlike = (before: Device | undefined, now: Device | undefined): boo
   before?.settings?.keepInnerTags === now?.settings?.keepInnerTags &&
   portsForwardAlike(before!.ports, now!.ports);
 
-/** Whether a tunnel comes up is another question: see touched-devices.ts. */
-const tunnelEndsAlike = (before: Tunnel['a'] | undefined, now: Tunnel['a'] | undefined): boolean =>
-  agreeApartFrom(before, now, 'udpPort', 'outerDf', 'udpChecksum', 'takesZeroChecksum', 'via');
+/** Whether a tunnel comes up is another question: see touched-devices.ts. Its VNI says more where it is of several points. */
+const tunnelEndsAlike = (
+  before: Tunnel['a'] | undefined,
+  now: Tunnel['a'] | undefined,
+  { design }: Network,
+): boolean =>
+  agreeApartFrom(before, now, 'vni', 'udpPort', 'outerDf', 'udpChecksum', 'takesZeroChecksum', 'via') &&
+  (before?.vni === now?.vni || !isMultipoint(design, design.endpoints[now!.endpoint]?.device));
+
+const isMultipoint = ({ devices, profiles }: DesignFacts, device: Id | undefined): boolean => {
+  const profile = device === undefined ? undefined : devices[device]?.profile;
+  return profile !== undefined && profiles[profile]?.vniScope === 'multipoint';
+};
 
 /** The devices of a tunnel's ends, as far as the design holds them. */
 export const endDevices = ({ endpoints }: DesignFacts, tunnel: Tunnel | undefined): readonly Id[] =>
@@ -66,7 +76,7 @@ export const rebuiltDevices = perPairOfVersions((before, now): ReadonlySet<Id> =
     if (!agreeApartFrom(change.before, change.now, 'name', 'gateway', 'querier', 'spanningTree'))
       for (const forwarder of [change.before, change.now]) if (forwarder) add([forwarder.device]);
   for (const { before: old, now: tunnel } of changes.tunnels)
-    if (!ends.every((end) => tunnelEndsAlike(old?.[end], tunnel?.[end])))
+    if (!ends.every((end) => tunnelEndsAlike(old?.[end], tunnel?.[end], now)))
       add([...endDevices(before.design, old), ...endDevices(now.design, tunnel)]);
   for (const change of changes.endpoints)
     if (!agreeApartFrom(change.before, change.now, 'name', 'ipv4', 'ipv6'))
