@@ -48,7 +48,7 @@ export function HopLine({ row, layout, palette, isAhead, isLampHere, isOnlyEnd }
   const leaf = isOnlyEnd ? undefined : row.leaf;
   const { isNarrow, scale } = layout;
   const over = bar?.pipeBytes !== undefined && bar.ipPacketBytes > bar.pipeBytes;
-  const barY = isNarrow ? 39 : 20;
+  const barY = isNarrow ? 39 : 22;
   const measureInk = over ? (isCut ? 'text-degr' : 'text-red') : 'text-ink';
   return (
     <span
@@ -67,7 +67,7 @@ export function HopLine({ row, layout, palette, isAhead, isLampHere, isOnlyEnd }
           <ByteBarPicture placed={placeBar(bar, scale)} y={barY} palette={palette} isCut={isCut} />
         </svg>
       )}
-      <span className="relative flex h-17 items-center gap-8" style={{ paddingLeft: indentOf(depth) }}>
+      <span className="relative flex h-16 items-center gap-8" style={{ paddingLeft: indentOf(depth) }}>
         <span
           className={classNames(
             'inline-flex h-17 min-w-17 shrink-0 items-center justify-center rounded-full px-4 text-label font-bold',

@@ -27,13 +27,14 @@ interface HopStripProps {
   readonly label: string;
   readonly rows: readonly StripRow[];
   readonly palette: CorePalette;
-  readonly isIp: boolean;
+  /** What the column is that stays the same: the packet as sent, or the longest piece of it. */
+  readonly sentWords: string;
   readonly playback: Playback;
   readonly hopCount: number;
 }
 
 /** All hops of a trace under each other, what the host sent in one column. Of long ones only what is in view is drawn. */
-export function HopStrip({ label, rows, palette, isIp, playback, hopCount }: HopStripProps) {
+export function HopStrip({ label, rows, palette, sentWords, playback, hopCount }: HopStripProps) {
   const { ref: widthRef, widthPx } = useWidth<HTMLDivElement>(900);
   const box = useRef<HTMLDivElement>(null);
   const list = useRef<HTMLOListElement>(null);
@@ -125,7 +126,7 @@ export function HopStrip({ label, rows, palette, isIp, playback, hopCount }: Hop
             <ByteNames
               names={layout.names}
               packetSpan={layout.packetSpan}
-              sent={{ words: isIp ? 'IP packet as sent' : 'Payload as sent', bytes: layout.sentBytes }}
+              sent={{ words: sentWords, bytes: layout.sentBytes }}
             />
           </svg>
         )}

@@ -1,4 +1,5 @@
 import type { Design, ElementRef } from '../../engine/model/design.ts';
+import { indexNetwork } from '../../engine/network/index-network.ts';
 import { deviceAt } from '../../engine/trace/device-at.ts';
 import type { TraceStep, Verdict } from '../../engine/trace/trace.ts';
 import { nameOf } from '../../workspace/operations/name-of.ts';
@@ -21,14 +22,12 @@ const transportOf = (design: Design, { elements }: TraceStep): string | undefine
 };
 
 /** The forwarder of a device that holds a tunnel. */
-const holderOf = (design: Design, device: string, tunnel: string): string | undefined =>
-  Object.values(design.forwarders).find(
-    (forwarder) =>
-      forwarder.device === device &&
-      Object.values(forwarder.circuits).some(
-        (circuit) => circuit.kind === 'tunnel' && circuit.tunnel === tunnel,
-      ),
-  )?.name;
+const holderOf = (design: Design, device: string, tunnel: string): string | undefined => {
+  const at = indexNetwork(design)
+    .circuitsByTunnel.get(tunnel)
+    ?.find((circuit) => circuit.device === device);
+  return at === undefined ? undefined : design.forwarders[at.forwarder]?.name;
+};
 
 const tagWords = (tags: readonly number[]): string =>
   `${tags.length === 1 ? 'tag' : 'tags'} ${tags.join(' and ')}`;

@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react';
 import { CellGrid, ReadCell } from '../../components/cell.tsx';
-import type { Design } from '../../engine/model/design.ts';
+import type { Design, ElementRef } from '../../engine/model/design.ts';
+import type { Assumption } from '../../engine/trace/trace.ts';
 import { ICMP_ECHO_HEADER_BYTES } from '../../engine/reference/ip.ts';
 import { kindOf, nameOf } from '../../workspace/operations/name-of.ts';
 import type { TraceResult } from './trace-result.ts';
@@ -19,12 +20,31 @@ function Part({ title, children }: { readonly title: string; readonly children: 
 
 // Of a long list nobody reads the end; the number says how much more there is.
 const mostNamed = 12;
+const namesOf = (design: Design, refs: readonly ElementRef[]): string => {
+  const names = refs.slice(0, mostNamed).map((ref) => nameOf(design, ref));
+  const more = refs.length - names.length;
+  return `${names.join(', ')}${more > 0 ? ` and ${more} more` : ''}`;
+};
+
+/** What was assumed of several elements alike, said once. */
+const assumedAlike = (
+  assumptions: readonly Assumption[],
+): readonly (Pick<Assumption, 'code' | 'words'> & { readonly alsoOf: readonly ElementRef[] })[] => {
+  const byCode = new Map<Assumption['code'], Assumption[]>();
+  for (const one of assumptions) byCode.set(one.code, [...(byCode.get(one.code) ?? []), one]);
+  return [...byCode.values()].map(([first, ...others]) => ({
+    code: first!.code,
+    words: first!.words,
+    alsoOf: others.map(({ element }) => element),
+  }));
+};
 
 /** What fits on the way, what would help, who goes without, and what had to be taken for granted. */
 export function TraceFigures({ design, result }: { readonly design: Design; readonly result: TraceResult }) {
   const { fits, missed, trace, probe } = result;
   const ways = waysOut(design, trace, fits);
   const isIp = probe.packet.kind === 'ip';
+  const assumed = assumedAlike(trace.assumptions);
   const { limitedBy } = fits ?? {};
   return (
     <>
@@ -70,23 +90,18 @@ export function TraceFigures({ design, result }: { readonly design: Design; read
       {trace.assumptions.length > 0 && (
         <Part title="Taken for granted">
           <ul className="flex flex-col gap-8 text-note text-ink-2">
-            {trace.assumptions.slice(0, mostNamed).map(({ code, element, words }) => (
-              <li key={`${code} ${element.collection} ${element.id}`}>{words}</li>
+            {assumed.map(({ code, words, alsoOf }) => (
+              <li key={code}>
+                {words}
+                {alsoOf.length > 0 && ` The same of ${namesOf(design, alsoOf)}.`}
+              </li>
             ))}
-            {trace.assumptions.length > mostNamed && (
-              <li>and {trace.assumptions.length - mostNamed} more of the kind</li>
-            )}
           </ul>
         </Part>
       )}
       {missed.length > 0 && (
         <p className="border-t border-rule-2 px-14 py-12 text-base text-ink-2">
-          Not reached:{' '}
-          {missed
-            .slice(0, mostNamed)
-            .map((ref) => nameOf(design, ref))
-            .join(', ')}
-          {missed.length > mostNamed && ` and ${missed.length - mostNamed} more`}.
+          Not reached: {namesOf(design, missed)}.
         </p>
       )}
     </>

@@ -115,6 +115,11 @@ export function TracePanel(props: TracePanelProps) {
   );
 }
 
+const sentWords = ({ probe, trace }: TraceResult): string => {
+  if (trace.steps[0]?.pieces !== undefined) return 'Longest piece';
+  return probe.packet.kind === 'ip' ? 'IP packet as sent' : 'Payload as sent';
+};
+
 function Followed({
   design,
   first,
@@ -150,7 +155,7 @@ function Followed({
         rows={result.rows}
         hopCount={result.hops.length}
         palette={letter === undefined ? 'none' : paletteOf(letter)}
-        isIp={result.probe.packet.kind === 'ip'}
+        sentWords={sentWords(result)}
         playback={playback}
       />
     );

@@ -98,6 +98,15 @@ const tightest = (rows: readonly StripRow[]): string => {
     : ` Least room on hop ${best.number}, ${best.title}: ${best.measure}, ${least === 0 ? 'nothing' : `${least} B`} to spare.`;
 };
 
+/** A packet that its own sender cuts is no fault of the way. */
+const ownCutWords = (steps: readonly TraceStep[], at: number): string | undefined => {
+  const step = steps[at];
+  const own = step?.decisions.find(({ code }) => code === 'cut-by-source');
+  return own === undefined
+    ? undefined
+    : `${own.words}: ${(step?.pieces ?? []).map(({ packetBytes }) => packetBytes).join(' + ')} B`;
+};
+
 const isDropped = (step: TraceStep): step is Dropped => step.verdict?.code === 'dropped';
 
 /** What came of it, where, why, and which finding would have told. */
@@ -141,7 +150,7 @@ export const verdictOf = (
       return {
         tone: 'milder',
         what: `Reaches ${name} in pieces.`,
-        why: stop(pieces.words),
+        why: stop(ownCutWords(steps, pieces.at) ?? pieces.words),
         ...(fits?.largestBytes === undefined ? {} : { insteadBytes: fits.largestBytes }),
       };
     return {
