@@ -81,6 +81,18 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
     },
   ],
   [
+    'a frame followed beside another, to a hop where it does not fit',
+    async (page) => {
+      await signInAs(page, 'reviewer');
+      await openSheet(page, 'phase 1');
+      const { pathname } = new URL(page.url());
+      await page.goto(
+        `${pathname}?drawer=trace&from=sw-ske/p2&to=ticket-1&send=tcp-full-size&bytes=1500&vs-bytes=1396`,
+      );
+      await page.getByText('Dropped at fw-ske without a word.').waitFor();
+    },
+  ],
+  [
     'a sheet that may only be read',
     async (page) => {
       await signInAs(page, 'reviewer');
