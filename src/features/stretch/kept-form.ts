@@ -3,27 +3,27 @@ import { stretchFormSchema } from '../../engine/stretch/stretch-form.ts';
 
 const storageKey = (designId: string): string => `longpatch.stretch.${designId}`;
 
+/** Values may be wrong where somebody was still typing; what the form is made of may not. */
+const isHalfDone = ({
+  code,
+  path,
+}: {
+  readonly code?: string;
+  readonly path: readonly PropertyKey[];
+}): boolean =>
+  ['too_small', 'too_big', 'invalid_format', 'custom'].includes(code ?? '') ||
+  (code === 'invalid_union' && path.at(-1) === 'address');
+
 /** The form that somebody left unfinished for a design in this tab; undefined where there is none. */
 export const keptForm = (designId: string): StretchForm | undefined => {
   try {
-    const text = sessionStorage.getItem(storageKey(designId));
-    if (text === null) return undefined;
-    const form: unknown = JSON.parse(text);
-    // Values may still be wrong, as whoever types is not done; the shape has to be the form's.
+    const form: unknown = JSON.parse(sessionStorage.getItem(storageKey(designId)) ?? 'null');
     const read = stretchFormSchema.safeParse(form);
-    return read.success || isForm(form) ? (form as StretchForm) : undefined;
+    return read.success || read.error.issues.every(isHalfDone) ? (form as StretchForm) : undefined;
   } catch {
     return undefined;
   }
 };
-
-const isForm = (form: unknown): boolean =>
-  typeof form === 'object' &&
-  form !== null &&
-  ['sites', 'transports', 'segments'].every(
-    (list) => Array.isArray((form as Record<string, unknown>)[list]) && (form as never)[list] !== undefined,
-  ) &&
-  'topology' in form;
 
 export const keepForm = (designId: string, form: StretchForm | undefined): void => {
   try {

@@ -41,7 +41,7 @@ export function NumbersPart({ form, problems, onChange }: FormPartProps) {
           onCommit={(from) => setPools(vnis(from, pools.vnis?.to))}
         />
         <NumberCell
-          label="to"
+          label="VNIs to"
           value={pools.vnis?.to}
           min={0}
           max={highestVni}

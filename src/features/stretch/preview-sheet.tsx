@@ -17,11 +17,7 @@ const contents = ({ design }: Drawn): string =>
     count(Object.keys(design.sites).length, 'site', 'sites'),
     count(Object.keys(design.tunnels).length, 'tunnel', 'tunnels'),
     count(Object.keys(design.associations).length, 'association', 'associations'),
-    count(
-      Object.values(design.devices).filter(({ kind }) => kind === 'host').length,
-      'sample host',
-      'sample hosts',
-    ),
+    count(Object.values(design.devices).filter(({ kind }) => kind === 'host').length, 'host', 'hosts'),
   ].join(', ');
 
 /** The sheet as the form would leave it, and what the checks say of it. `last` is what was drawn before a mistake. */

@@ -8,6 +8,7 @@ import { runRules } from '#engine/rules/run-rules.ts';
 import { stretch } from '#engine/stretch/stretch.ts';
 import { ToastRegion } from '../../../src/components/toast.tsx';
 import { TooltipProvider } from '../../../src/components/tooltip.tsx';
+import { keptForm } from '../../../src/features/stretch/kept-form.ts';
 import { StretchDialogs } from '../../../src/features/stretch/stretch-dialogs.tsx';
 import { ChecksProvider } from '../../../src/workspace/checks-context.tsx';
 import { DesignPlaceProvider } from '../../../src/workspace/design-place.tsx';
@@ -92,6 +93,21 @@ describe('the Stretch form', () => {
     expect(screen.getByDisplayValue('Orrin Point')).toBeVisible();
     await again.user.click(screen.getByRole('button', { name: 'Start over' }));
     expect(await screen.findByText('Sites (2)')).toBeVisible();
+  });
+});
+
+describe('a form that was left', () => {
+  const bag = (form: unknown) => sessionStorage.setItem('longpatch.stretch.d1', JSON.stringify(form));
+
+  test('comes back with what was half typed, and with nothing of what is no form', () => {
+    const half = formOf(3, { domain: 'not a domain' });
+    bag({ ...half, sites: half.sites.map((site, i) => (i === 1 ? { ...site, name: '' } : site)) });
+    expect(keptForm('d1')?.sites[1]!.name).toBe('');
+    bag({ ...half, sites: [{ name: 'Gullhaven' }] });
+    expect(keptForm('d1')).toBeUndefined();
+    sessionStorage.setItem('longpatch.stretch.d1', '{');
+    expect(keptForm('d1')).toBeUndefined();
+    expect(keptForm('d2')).toBeUndefined();
   });
 });
 
