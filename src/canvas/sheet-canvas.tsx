@@ -17,7 +17,6 @@ import type { ElementRef } from '../engine/model/design.ts';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
 import { isCollapsed } from '../workspace/operations/collapse-sites.ts';
 import { dockEndpoint, isLocked } from '../workspace/operations/move-parts.ts';
-import { pinNote } from '../workspace/operations/place-parts.ts';
 import { useElementActions } from './actions/use-element-actions.ts';
 import { connectEnds, endOf, whyNotConnect, type ConnectEnd } from './connect-ends.ts';
 import { designToFlow, type FlowEdge, type FlowNode } from './design-to-flow.ts';
@@ -27,7 +26,7 @@ import { edgeTypes } from './edges/part-edges.tsx';
 import { dockingSide } from './flow-changes-to-patch.ts';
 import { useDrawn } from './geometry-context.tsx';
 import { nodeTypes } from './nodes/part-nodes.tsx';
-import { endAt, isJoining, placePart, type TrayPart } from './place-part.ts';
+import { endAt, isJoining, pinNoteBeside, placePart, type TrayPart } from './place-part.ts';
 import { PullLine } from './pull-line.tsx';
 import { readPartDrag } from './parts-tray/part-drag.ts';
 import { portNear } from './port-near.ts';
@@ -245,7 +244,7 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
     }
     // A note that is put down on something is pinned to it.
     const about = part === 'note' && on instanceof Element ? elementAt(on) : undefined;
-    const pinned = about === undefined ? undefined : pinNote(design, about, newEntryId);
+    const pinned = about === undefined ? undefined : pinNoteBeside(design, about, newEntryId);
     const done = perform(
       open,
       pinned?.ok === true ? pinned : placePart(design, settled, part, at, newEntryId),

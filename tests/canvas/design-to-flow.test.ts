@@ -10,7 +10,7 @@ import {
   snapDrag,
   standingOf,
 } from '../../src/canvas/flow-changes-to-patch.ts';
-import { endAt, freePlace, placePart } from '../../src/canvas/place-part.ts';
+import { endAt, freePlace, pinNoteBeside, placePart } from '../../src/canvas/place-part.ts';
 import { refOfKey } from '../../src/canvas/ref-at.ts';
 import { elementKey } from '../../src/drawing/decorations.ts';
 import { drawingFacts } from '../../src/drawing/parts/drawing-facts.ts';
@@ -220,4 +220,21 @@ describe('putting parts down', () => {
     });
     expect(endAt(geometry, { x: -100, y: -100 })).toBeUndefined();
   });
+});
+
+it('a note that is pinned to an element stands beside it, clear of all devices, in one step', () => {
+  const operation = pinNoteBeside(design, { collection: 'devices', id: 'fw-s2' }, () => 'note-1');
+  const after = applyPatch(design, operation.ok ? operation.patch : {});
+  expect(parseDesign(after)).toMatchObject({ ok: true });
+  expect(after.notes['note-1']!.target).toEqual({ collection: 'devices', id: 'fw-s2' });
+  const drawn = route(after);
+  const note = drawn.notes.find(({ id }) => id === 'note-1')!.rect;
+  expect(after.layout.notes!['note-1']).toEqual({ x: Math.round(note.x), y: Math.round(note.y) });
+  for (const { rect } of drawn.devices)
+    expect(
+      note.x < rect.x + rect.width &&
+        rect.x < note.x + note.width &&
+        note.y < rect.y + rect.height &&
+        rect.y < note.y + note.height,
+    ).toBe(false);
 });

@@ -11,13 +11,13 @@ import { copyParts, pasteParts, type Parts } from '../../workspace/operations/co
 import { setLocked } from '../../workspace/operations/move-parts.ts';
 import { nameOf } from '../../workspace/operations/name-of.ts';
 import type { Operation } from '../../workspace/operations/operation.ts';
-import { pinNote, placeEndpoint } from '../../workspace/operations/place-parts.ts';
+import { placeEndpoint } from '../../workspace/operations/place-parts.ts';
 import { removeElements } from '../../workspace/operations/remove-parts.ts';
 import { boxesOf } from '../boxes-of.ts';
 import { askToJoin, editNote, setInspecting } from '../desk-state.ts';
 import { standingOf } from '../flow-changes-to-patch.ts';
 import { useDrawn } from '../geometry-context.tsx';
-import { freePlace, placePart, type PlacedPart } from '../place-part.ts';
+import { freePlace, pinNoteBeside, placePart, type PlacedPart } from '../place-part.ts';
 import { useTidy } from '../use-tidy.ts';
 import { useView } from '../use-view.ts';
 import { useViewChoice } from '../use-view-choice.ts';
@@ -188,7 +188,7 @@ export const useElementActions = (around: Surroundings = {}): DeskActions => {
       addDevice: (kind, site) => place(kind, site),
       addEndpoint: (device) => make(placeEndpoint(now(), device, newEntryId)),
       addNote: (about) => {
-        if (!run(pinNote(now(), about, newEntryId))) return;
+        if (!run(pinNoteBeside(now(), about, newEntryId))) return;
         const { onMade } = latest.current.around;
         if (onMade !== undefined) return onMade();
         const [note] = open.store.getState().selection;
