@@ -17,6 +17,19 @@ test('a press on a pip means its port, and of a pair its member’s', () => {
   }
 });
 
+test('a press on a plate of a pair means that member, one between the plates the pair', () => {
+  const ref = { collection: 'devices', id: 'fw-s0' } as const;
+  const { plates } = deviceOf('fw-s0');
+  for (const { rect, member } of plates)
+    expect(portNear(geometry, ref, { x: rect.x + rect.width / 2, y: rect.y + 14 })).toEqual({
+      ...ref,
+      member,
+    });
+  const [first] = plates;
+  const between = { x: first!.rect.x + 40, y: first!.rect.y + first!.rect.height + 7 };
+  expect(portNear(geometry, ref, between)).toEqual(ref);
+});
+
 test('a press elsewhere means the device, and what is no device stays as it is', () => {
   const { rect } = deviceOf('sw-s0');
   const middle = { x: rect.x + rect.width / 2, y: rect.y + 14 };

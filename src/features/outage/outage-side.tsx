@@ -1,4 +1,4 @@
-import { ElementLink } from '../../canvas/inspector/element-link.tsx';
+import { ElementList } from '../../canvas/inspector/element-link.tsx';
 import { Button } from '../../components/button.tsx';
 import { Icon } from '../../components/icon.tsx';
 import { elementKey } from '../../drawing/decorations.ts';
@@ -100,13 +100,12 @@ function Consequences({ design, facts }: { readonly design: Design; readonly fac
       {outage.tunnelsDown.length > 0 && (
         <section className="text-base">
           <h3 className="font-semibold text-ink">Tunnels down</h3>
-          <ul>
-            {outage.tunnelsDown.slice(0, mostNamed).map(({ tunnel }) => (
-              <li key={tunnel}>
-                <ElementLink to={{ collection: 'tunnels', id: tunnel }} />
-              </li>
-            ))}
-          </ul>
+          <ElementList
+            of={outage.tunnelsDown
+              .slice(0, mostNamed)
+              .map(({ tunnel }) => ({ collection: 'tunnels', id: tunnel }))}
+            empty=""
+          />
           {outage.tunnelsDown.length > mostNamed && (
             <p className="text-ink-2">and {outage.tunnelsDown.length - mostNamed} more</p>
           )}
