@@ -8,7 +8,7 @@ import { ErrorNotice } from '../components/notice.tsx';
 import { SearchField } from '../components/search-field.tsx';
 import type { Profile } from '../engine/model/underlay.ts';
 import { MainBar } from '../features/account/main-bar.tsx';
-import { ProfileEditor } from '../features/profiles/profile-editor.tsx';
+import { ProfileEditor, type ProfileEdit } from '../features/profiles/profile-editor.tsx';
 import { ProfilesTable } from '../features/profiles/profiles-table.tsx';
 import { usePageTitle } from '../lib/page-title.ts';
 import { may, useMembership } from '../lib/session.ts';
@@ -23,8 +23,9 @@ export function ProfilesPage() {
   const { workspaceId = '' } = useParams();
   const membership = useMembership(workspaceId);
   const { valueOf, change } = useSearchValues();
-  // Counted, so that a second new profile does not begin with what was typed for the first.
-  const [fresh, setFresh] = useState<{ readonly number: number; readonly startsFrom?: Profile }>();
+  /** The profile that is being made, and what it begins with. */
+  const [fresh, setFresh] = useState<{ readonly key: string; readonly startsFrom?: Profile }>();
+  const [edits, setEdits] = useState<Readonly<Record<string, ProfileEdit | undefined>>>({});
   const { data, error, refetch, isFetching } = useQuery({
     ...profilesQuery(workspaceId),
     enabled: membership !== undefined,
@@ -45,17 +46,25 @@ export function ProfilesPage() {
   );
   const asked = valueOf('profile');
   const selected = fresh === undefined ? (profiles.find(({ id }) => id === asked) ?? shown[0]) : undefined;
-  const begin = (startsFrom?: Profile): void =>
-    setFresh({ number: (fresh?.number ?? 0) + 1, ...(startsFrom === undefined ? {} : { startsFrom }) });
+  const begin = (): void => setFresh({ key: 'new' });
+  const beginFrom = (startsFrom: Profile): void =>
+    setFresh({
+      key: `copy of ${startsFrom.name}`,
+      startsFrom: { ...startsFrom, name: `${startsFrom.name} (copy)`.slice(0, 80) },
+    });
   const select = (id: string): void => {
     setFresh(undefined);
     change({ profile: id });
   };
+  const editing = (key: string) => ({
+    edit: edits[key],
+    onEdit: (edit: ProfileEdit | undefined) => setEdits((all) => ({ ...all, [key]: edit })),
+  });
   const common = {
     workspaceId,
     editable,
     canOpenDesigns: may(membership, 'design.read'),
-    onCopy: (profile: Profile) => begin({ ...profile, name: `${profile.name} (copy)`.slice(0, 80) }),
+    onCopy: beginFrom,
     onCancel: () => setFresh(undefined),
     onSaved: ({ id }: { readonly id: string }) => select(id),
   };
@@ -82,7 +91,7 @@ export function ProfilesPage() {
             Show archived
           </CheckBox>
           {editable && (
-            <Button kind="primary" className="ml-auto max-sm:ml-0" onClick={() => begin()}>
+            <Button kind="primary" className="ml-auto max-sm:ml-0" onClick={begin}>
               New profile
             </Button>
           )}
@@ -113,7 +122,7 @@ export function ProfilesPage() {
             title="No equipment is measured yet"
             action={
               editable && (
-                <Button kind="primary" onClick={() => begin()}>
+                <Button kind="primary" onClick={begin}>
                   New profile
                 </Button>
               )
@@ -139,14 +148,15 @@ export function ProfilesPage() {
             </div>
             {fresh !== undefined && (
               <ProfileEditor
-                key={`new ${fresh.number}`}
+                key={fresh.key}
                 {...common}
+                {...editing(fresh.key)}
                 editable
                 {...(fresh.startsFrom === undefined ? {} : { startsFrom: fresh.startsFrom })}
               />
             )}
             {selected !== undefined && (
-              <ProfileEditor key={`${selected.id} ${selected.changedAt}`} original={selected} {...common} />
+              <ProfileEditor key={selected.id} original={selected} {...common} {...editing(selected.id)} />
             )}
           </div>
         )}

@@ -61,8 +61,8 @@ export function FindingBox({ finding, open }: { readonly finding: Finding; reado
   return (
     <article
       className={classNames(
-        'border border-l-5 bg-field px-9 py-8',
-        waiver === undefined ? edges[severity] : 'border-dashed border-ink-3',
+        'border bg-field px-9 py-8',
+        waiver === undefined ? `border-l-5 ${edges[severity]}` : 'border-dashed border-ink-3',
       )}
     >
       <h3>
@@ -75,7 +75,7 @@ export function FindingBox({ finding, open }: { readonly finding: Finding; reado
             waiver === undefined ? inks[severity] : 'text-ink-3',
           )}
         >
-          <SeverityShape severity={severity} />
+          <SeverityShape severity={severity} {...(waiver === undefined ? {} : { ink: 'text-ink-3' })} />
           <span className="min-w-0 flex-1">
             {severityWords[severity]}: {words}
             {waiver !== undefined && ' (waived)'}

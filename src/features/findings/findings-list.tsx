@@ -1,4 +1,4 @@
-import { useRef, useState, type KeyboardEvent, type ReactNode } from 'react';
+import { useEffect, useRef, useState, type KeyboardEvent, type ReactNode } from 'react';
 import type { FindingItem } from './finding-item.ts';
 import { FindingRow } from './finding-row.tsx';
 import type { WaivingTools } from './waiving-tools.ts';
@@ -41,6 +41,10 @@ export function FindingsList({
 }: FindingsListProps) {
   const list = useRef<HTMLUListElement>(null);
   const [openKey, setOpenKey] = useState<string | null>(null);
+  useEffect(() => {
+    // Who comes by a link to a finding has not chosen it here, and it may stand far down.
+    list.current?.querySelector('[aria-current]')?.scrollIntoView({ block: 'nearest' });
+  }, []);
   if (findings.length === 0) return <div className="px-14 py-16 text-base text-ink-2">{empty}</div>;
 
   const selectedAt = findings.findIndex(({ key }) => key === selectedKey);

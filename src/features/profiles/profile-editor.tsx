@@ -9,8 +9,14 @@ import { asApiError } from '../../lib/api-error.ts';
 import { dateAndTime } from '../../lib/format-time.ts';
 import { designPath } from '../../lib/workspace-path.ts';
 import { useChangeProfile, useCreateProfile } from '../../workspace/profiles-query.ts';
-import { draftOf, emptyDraft, readDraft, sameDraft } from './profile-draft.ts';
+import { draftOf, emptyDraft, readDraft, sameDraft, type ProfileDraft } from './profile-draft.ts';
 import { ProfileForm } from './profile-form.tsx';
+
+export interface ProfileEdit {
+  readonly draft: ProfileDraft;
+  /** When the profile had last been changed as typing began. */
+  readonly basedOn: string | undefined;
+}
 
 interface ProfileEditorProps {
   readonly workspaceId: string;
@@ -18,6 +24,9 @@ interface ProfileEditorProps {
   readonly original?: EquipmentProfile;
   /** What a new one begins with. */
   readonly startsFrom?: Profile;
+  /** What was typed and not saved yet; kept by the page, so that looking at another profile loses nothing. */
+  readonly edit: ProfileEdit | undefined;
+  readonly onEdit: (edit: ProfileEdit | undefined) => void;
   readonly editable: boolean;
   readonly canOpenDesigns: boolean;
   readonly onSaved: (profile: EquipmentProfile) => void;
@@ -30,6 +39,8 @@ export function ProfileEditor({
   workspaceId,
   original,
   startsFrom,
+  edit,
+  onEdit,
   editable,
   canOpenDesigns,
   onSaved,
@@ -37,7 +48,10 @@ export function ProfileEditor({
   onCancel,
 }: ProfileEditorProps) {
   const before = original === undefined ? emptyDraft : draftOf(original.profile);
-  const [draft, setDraft] = useState(startsFrom === undefined ? before : draftOf(startsFrom));
+  const { draft, basedOn } = edit ?? {
+    draft: startsFrom === undefined ? before : draftOf(startsFrom),
+    basedOn: original?.changedAt,
+  };
   const [tried, setTried] = useState(false);
   const create = useCreateProfile(workspaceId);
   const change = useChangeProfile(workspaceId);
@@ -57,11 +71,12 @@ export function ProfileEditor({
     const saved = {
       onSuccess: (profile: EquipmentProfile) => {
         showToast({ tone: 'done', text: `${profile.profile.name} is saved.` });
+        onEdit(undefined);
         onSaved(profile);
       },
     };
     if (original === undefined) create.mutate({ profile: read.profile }, saved);
-    else change.mutate({ id: original.id, profile: read.profile, basedOn: original.changedAt }, saved);
+    else change.mutate({ id: original.id, profile: read.profile, basedOn }, saved);
   };
   const archive = (id: string, archived: boolean): void =>
     change.mutate(
@@ -86,7 +101,7 @@ export function ProfileEditor({
       }}
     >
       <header className="flex flex-wrap items-start gap-x-16 gap-y-8 border-b border-ink pb-10">
-        <div className="min-w-0 flex-1">
+        <div className="min-w-0 flex-1 max-sm:basis-full">
           <h2 className="text-title">{original === undefined ? 'New profile' : original.profile.name}</h2>
           {original !== undefined && (
             <p className="text-base text-ink-2">
@@ -109,8 +124,8 @@ export function ProfileEditor({
             {(original === undefined || isChanged) && (
               <Button
                 onClick={() => {
+                  onEdit(undefined);
                   if (original === undefined) onCancel();
-                  else setDraft(before);
                 }}
               >
                 {original === undefined ? 'Cancel' : 'Take back'}
@@ -134,7 +149,7 @@ export function ProfileEditor({
           draft={draft}
           problems={problems}
           editable={editable}
-          onChange={(key, text) => setDraft({ ...draft, [key]: text })}
+          onChange={(key, text) => onEdit({ draft: { ...draft, [key]: text }, basedOn })}
         />
       </div>
     </form>
