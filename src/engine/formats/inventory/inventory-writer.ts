@@ -42,6 +42,13 @@ const idStarts: { readonly [K in DeviceKind]: string } = {
 };
 const gigabit = 1_000_000_000;
 
+/** Equal, or lists of the same in another order: a table's cell has no order of its own. */
+const saysSame = (before: unknown, now: unknown): boolean => {
+  const text = (value: unknown): string =>
+    JSON.stringify(Array.isArray(value) ? [...(value as readonly unknown[])].map(String).sort() : value);
+  return before !== undefined && text(before) === text(now);
+};
+
 export const inventoryWriter = (
   draft: Draft,
   newId: (prefix: string) => string,
@@ -115,7 +122,7 @@ export const inventoryWriter = (
     if (value === undefined) return;
     const at = `${path}.${field}`;
     origins.set(at, { row, column });
-    if (JSON.stringify((bag as Bag)[field]) === JSON.stringify(value)) return;
+    if (saysSame((bag as Bag)[field], value)) return;
     (bag as Bag)[field] = value;
     if (effect === 'unchanged') effect = 'changed';
   };
