@@ -25,7 +25,7 @@ test('signing in loads neither the canvas nor the engine nor layout code', () =>
   expect(loaded).toContain('src/features/sign-in/sign-in-form.tsx');
   expect(loaded).toContain('react-hook-form');
   const heavy = [...loaded].filter((path) =>
-    /^src\/(canvas|workspace|engine\/(?!model)|drawing\/(routing|tidy|svg))\/|^(@xyflow|elkjs|html-to-image)/.test(
+    /^src\/(canvas|workspace|engine\/(?!model)|drawing\/(routing|tidy|svg|picture))\/|^(@xyflow|elkjs|html-to-image)/.test(
       path,
     ),
   );
@@ -46,6 +46,6 @@ test('the wire calculator loads neither the canvas nor the checks nor layout cod
   // How rates and times are written is shared with the sheet's inspector; it draws nothing.
   const inWords = /^src\/canvas\/inspector\/((rate|share|duration)-text|written-value)\.ts$/;
   const heavy =
-    /^src\/(canvas|workspace|engine\/(rules|flood|network)|drawing\/(routing|tidy|svg))\/|^(@xyflow|elkjs|html-to-image)/;
+    /^src\/(canvas|workspace|engine\/(rules|flood|network)|drawing\/(routing|tidy|svg|picture))\/|^(@xyflow|elkjs|html-to-image)/;
   expect([...loaded].filter((path) => heavy.test(path) && !inWords.test(path))).toEqual([]);
 });

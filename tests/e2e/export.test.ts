@@ -30,12 +30,9 @@ const exported = async (page: Page, dialog: Locator, format: string): Promise<Do
 
 const bytesOf = async (file: Download): Promise<Buffer> => readFileSync((await file.path())!);
 
-const openFaults = async (page: Page): Promise<void> => {
+const openSheet = async (page: Page, title: RegExp): Promise<void> => {
   await signInAs(page, 'presales');
-  await page
-    .getByRole('link', { name: /with planted faults/ })
-    .first()
-    .click();
+  await page.getByRole('link', { name: title }).first().click();
   await node(page, 'sheet').waitFor();
 };
 
@@ -50,7 +47,7 @@ const wordsOf = async (
 describe('a sheet that leaves', () => {
   it('is previewed, goes out in every format under a name of its own, and the choice is remembered', async () => {
     const page = await browser.newPage();
-    await openFaults(page);
+    await openSheet(page, /with planted faults/);
 
     let dialog = await openDialog(page);
     await dialog.getByRole('img', { name: /Preview of the sheet/ }).waitFor();
@@ -79,14 +76,14 @@ describe('a sheet that leaves', () => {
     expect(await dialog.getByRole('checkbox', { name: 'Cabling' }).isChecked()).toBe(false);
     await dialog.getByText('PNG', { exact: true }).click();
     await dialog.getByText('3×', { exact: true }).click();
-    await dialog.getByText('3942 × 2787 px').waitFor();
+    await dialog.getByText('3,942 × 2,787 px').waitFor();
     const png = await bytesOf(await exported(page, dialog, 'PNG'));
     expect([png.readUInt32BE(16), png.readUInt32BE(20)]).toEqual([3942, 2787]);
   });
 
-  it('says why no PDF came, and stops drawing one on request', async () => {
+  it('says why no PDF came, stops drawing one on request, and takes what is on screen', async () => {
     const page = await browser.newPage();
-    await openFaults(page);
+    await openSheet(page, /standby controller/);
     const dialog = await openDialog(page);
     await page.route('**/sheet.pdf*', (route) =>
       route.fulfill({
@@ -104,11 +101,20 @@ describe('a sheet that leaves', () => {
     await dialog.getByRole('button', { name: 'Cancel' }).click();
     await dialog.getByRole('button', { name: 'Close', exact: true }).last().waitFor();
     expect(await dialog.getByRole('alert').count()).toBe(0);
+
+    // What is on screen, with the strip of caution under it.
+    await dialog.getByText('PNG', { exact: true }).click();
+    await dialog.getByText('As on screen', { exact: true }).click();
+    await dialog.getByText('1×', { exact: true }).click();
+    const canvas = (await page.locator('.sheet-canvas .react-flow').boundingBox())!;
+    const seen = await bytesOf(await exported(page, dialog, 'PNG'));
+    expect([seen.readUInt32BE(16), seen.readUInt32BE(20)]).toEqual([canvas.width, canvas.height + 24]);
+    expect(seen.length).toBeGreaterThan(20_000);
   });
 
   it('is printed alone, black on white, on one page', async () => {
     const page = await browser.newPage({ theme: 'dark' });
-    await openFaults(page);
+    await openSheet(page, /with planted faults/);
     const printed = await page.pdf({ preferCSSPageSize: true, printBackground: true });
     const { pages, words } = await wordsOf(printed);
     expect(pages).toBe(1);

@@ -51,7 +51,8 @@ const harmless = (value: string): string => value.replace(/["\\\n\r<>;{}]/g, '')
 /** A data URL has a semicolon of its own. */
 const fontUrl = (url: string): string => url.replace(/["\\\n\r<>]/g, '');
 
-const fontFaces = (fonts: readonly EmbeddedFace[]): string =>
+/** The rules of a stylesheet that bring faces along. */
+export const fontFaceRules = (fonts: readonly EmbeddedFace[]): string =>
   fonts
     .map(
       ({ weight, url, unicodeRange }) =>
@@ -72,7 +73,7 @@ export const standaloneSvg = (layers: readonly Layer[], options: StandaloneOptio
     `viewBox="${box}" font-family="'Work Sans', sans-serif" ` +
     `style="font-feature-settings:'tnum' 1" role="img">` +
     `<title>${escapeXml(options.title)}</title>` +
-    (fonts.length === 0 ? '' : `<style>${escapeXml(fontFaces(fonts))}</style>`) +
+    (fonts.length === 0 ? '' : `<style>${escapeXml(fontFaceRules(fonts))}</style>`) +
     layers.map(({ name, shapes }) => `<g class="layer-${name}">${toSvgText(shapes, theme)}</g>`).join('') +
     '</svg>'
   );

@@ -9,6 +9,8 @@ export const pngScales = ['1', '2', '3', '4'] as const;
 const choiceSchema = z.object({
   format: z.enum(exportFormats),
   look: z.enum(exportLooks),
+  /** Of a PNG: the sheet drawn from the model, or what is on screen with everything that is shown there. */
+  shot: z.enum(['sheet', 'screen']),
   scale: z.enum(pngScales),
   /** `sheet`: as large as the sheet is drawn. */
   paper: z.enum(['sheet', ...exportPapers]),
@@ -22,6 +24,7 @@ export type ExportChoice = z.infer<typeof choiceSchema>;
 export const firstChoice: ExportChoice = {
   format: 'pdf',
   look: 'paper',
+  shot: 'sheet',
   scale: '2',
   paper: 'sheet',
   findings: false,

@@ -1,4 +1,4 @@
-import { useState } from 'react';
+import { useState, type ReactNode } from 'react';
 import { Button } from '../../components/button.tsx';
 import { CellGrid, FieldCell, ReadCell } from '../../components/cell.tsx';
 import { CheckBox } from '../../components/check-box.tsx';
@@ -12,8 +12,9 @@ import { useChecks } from '../../workspace/checks-context.tsx';
 import { exportFormats, pngScales, rememberChoice, rememberedChoice } from './export-choice.ts';
 import type { ExportChoice } from './export-choice.ts';
 import { pngExtent } from './picture-png.ts';
+import { screenExtent } from './screen-png.ts';
 import { SheetPreview } from './sheet-preview.tsx';
-import { paperWords, smallPrint } from './size-words.ts';
+import { paperWords, pixelWords, smallPrint } from './size-words.ts';
 import type { SheetChoice } from './use-sheet-export.ts';
 import { useChosenPicture, useSheetExport } from './use-sheet-export.ts';
 
@@ -46,11 +47,12 @@ export function ExportDialog({ onClose }: { readonly onClose: () => void }) {
   const { format } = choice;
   const paper = choice.paper === 'sheet' ? sheet.size : choice.paper;
   const extent = pngExtent(picture.box, Number(choice.scale));
-  const isPicture = format !== 'json';
-  const tooLarge = format === 'png' && extent.tooLarge;
+  const onScreen = format === 'png' && choice.shot === 'screen';
+  const fromModel = format !== 'json' && !onScreen;
+  const tooLarge = fromModel && format === 'png' && extent.tooLarge;
   const size =
     format === 'png'
-      ? `${extent.width} × ${extent.height} px`
+      ? pixelWords(extent)
       : [`${paperWords(paper)}, text as text.`, smallPrint(sheet, paper)].filter(Boolean).join(' ');
   const submit = async (): Promise<void> => {
     if (running.doing === undefined && !tooLarge && (await running.start())) onClose();
@@ -78,13 +80,15 @@ export function ExportDialog({ onClose }: { readonly onClose: () => void }) {
       }
     >
       <div className="grid items-start gap-20 md:grid-cols-[minmax(0,1fr)_352px]">
-        {isPicture ? (
+        {fromModel ? (
           <SheetPreview picture={picture} caption={size} />
+        ) : onScreen ? (
+          <ScreenPreview />
         ) : (
-          <p className="border border-rule-2 bg-raise p-16 text-base text-ink-2">
+          <Words>
             The design itself: everything that was drawn, numbered and typed, with its layout. Start a new
             design from this file, keep it with your records, or check it with a script.
-          </p>
+          </Words>
         )}
         <div>
           <CellGrid columns={2}>
@@ -95,7 +99,33 @@ export function ExportDialog({ onClose }: { readonly onClose: () => void }) {
               options={exportFormats.map((value) => ({ value, label: value.toUpperCase() }))}
               onChange={(value) => change({ format: value })}
             />
-            {isPicture && (
+            {format === 'png' && (
+              <>
+                <ChoiceCell
+                  label="Picture"
+                  span={2}
+                  value={choice.shot}
+                  options={[
+                    { value: 'sheet', label: 'Whole sheet' },
+                    { value: 'screen', label: 'As on screen' },
+                  ]}
+                  onChange={(shot) => change({ shot })}
+                />
+                <ChoiceCell
+                  label="Scale"
+                  span={2}
+                  value={choice.scale}
+                  options={pngScales.map((value) => ({ value, label: `${value}×` }))}
+                  onChange={(scale) => change({ scale })}
+                  {...(tooLarge
+                    ? {
+                        error: `Scale ${choice.scale}× makes ${size}, more than browsers can draw. Choose a smaller one, or PDF.`,
+                      }
+                    : {})}
+                />
+              </>
+            )}
+            {fromModel && (
               <>
                 <SelectCell
                   label="Look"
@@ -107,20 +137,7 @@ export function ExportDialog({ onClose }: { readonly onClose: () => void }) {
                   }))}
                   onChange={(look) => change({ look })}
                 />
-                {format === 'png' ? (
-                  <ChoiceCell
-                    label="Scale"
-                    span={2}
-                    value={choice.scale}
-                    options={pngScales.map((value) => ({ value, label: `${value}×` }))}
-                    onChange={(scale) => change({ scale })}
-                    {...(tooLarge
-                      ? {
-                          error: `Scale ${choice.scale}× makes ${size}, more than browsers can draw. Choose a smaller one, or PDF.`,
-                        }
-                      : {})}
-                  />
-                ) : (
+                {format !== 'png' && (
                   <SelectCell
                     label="Paper"
                     span={2}
@@ -165,7 +182,7 @@ export function ExportDialog({ onClose }: { readonly onClose: () => void }) {
               {running.fileName}
             </ReadCell>
           </CellGrid>
-          {isPicture && crowded.some(({ what }) => what === 'sheet') && (
+          {fromModel && crowded.some(({ what }) => what === 'sheet') && (
             <p className="mt-10 text-note text-degr">
               Some sites lie outside the largest sheet and are cut off. Tidy the sheet, or collapse sites.
             </p>
@@ -177,9 +194,23 @@ export function ExportDialog({ onClose }: { readonly onClose: () => void }) {
   );
 }
 
+function Words({ children }: { readonly children: ReactNode }) {
+  return <p className="border border-rule-2 bg-raise p-16 text-base text-ink-2">{children}</p>;
+}
+
+function ScreenPreview() {
+  return (
+    <Words>
+      The part of the sheet that is on screen now, {pixelWords(screenExtent(1))} at 1×, as it is seen:
+      selection, trace, load and whatever else is shown on it. Move the sheet and choose its results before
+      you export.
+    </Words>
+  );
+}
+
 interface TicksProps {
   readonly label: string;
-  readonly options: readonly { readonly id: string; readonly words: React.ReactNode }[];
+  readonly options: readonly { readonly id: string; readonly words: ReactNode }[];
   readonly ticked: readonly string[];
   readonly onChange: (ticked: readonly string[]) => void;
   /** The last tick stays. */

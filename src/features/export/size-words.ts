@@ -9,6 +9,10 @@ const capital = 0.66;
 // ISO 3098-1 begins its nominal heights of lettering at 1.8 mm, from memory.
 const readableMm = 1.8;
 
+/** Width and height as the interface writes figures. */
+export const pixelWords = ({ width, height }: { readonly width: number; readonly height: number }): string =>
+  `${width.toLocaleString('en-GB')} × ${height.toLocaleString('en-GB')} px`;
+
 export const paperWords = (paper: PaperName): string =>
   `${paper}, ${paperSizesMm[paper].width} × ${paperSizesMm[paper].height} mm`;
 

@@ -18,6 +18,7 @@ import { useOpenDesign, useOpenState } from '../../workspace/open-design-context
 import { browserFaces } from './browser-faces.ts';
 import type { ExportChoice } from './export-choice.ts';
 import { pictureSvgToPng, pngExtent } from './picture-png.ts';
+import { screenPng } from './screen-png.ts';
 
 /** A choice with what belongs to this design alone. */
 export interface SheetChoice extends ExportChoice {
@@ -65,6 +66,9 @@ const exportQuery = ({ look, paper, findings, addresses, layers, segments }: She
   return query.toString();
 };
 
+const whenAborted = (signal: AbortSignal): Promise<never> =>
+  new Promise((_, reject) => signal.addEventListener('abort', () => reject(signal.reason as Error)));
+
 export interface SheetExport {
   /** What is being done just now, in words. */
   readonly doing: string | undefined;
@@ -110,6 +114,7 @@ export function useSheetExport(choice: SheetChoice, picture: SheetPicture): Shee
       case 'svg':
         return new Blob([await svgText(choice.paper)], { type: 'image/svg+xml' });
       case 'png':
+        if (choice.shot === 'screen') return screenPng(Number(choice.scale), signal);
         return pictureSvgToPng(await svgText('sheet'), pngExtent(picture.box, Number(choice.scale)), signal);
       case 'pdf':
         return pdf(signal);
@@ -122,8 +127,8 @@ export function useSheetExport(choice: SheetChoice, picture: SheetPicture): Shee
     setFailure(undefined);
     setDoing(`Drawing the ${choice.format.toUpperCase()}`);
     try {
-      const blob = await make(controller.signal);
-      controller.signal.throwIfAborted();
+      // What can't be stopped half way goes on unheard.
+      const blob = await Promise.race([make(controller.signal), whenAborted(controller.signal)]);
       download(fileName, blob);
       return true;
     } catch (error) {

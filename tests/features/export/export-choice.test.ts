@@ -6,7 +6,7 @@ import { themes } from '../../../src/drawing/theme/tokens.ts';
 import { viewLayers } from '../../../src/drawing/view-layers.ts';
 import { firstChoice, rememberChoice, rememberedChoice } from '../../../src/features/export/export-choice.ts';
 import { pngExtent } from '../../../src/features/export/picture-png.ts';
-import { paperWords, smallPrint } from '../../../src/features/export/size-words.ts';
+import { paperWords, pixelWords, smallPrint } from '../../../src/features/export/size-words.ts';
 
 const storageWith = (text: string | null) => ({ getItem: () => text });
 
@@ -51,6 +51,7 @@ describe('the size of a file', () => {
 
   it('is said in pixels, and refused before the browser fails', () => {
     expect(pngExtent(box, 2)).toEqual({ width: 2628, height: 1858, tooLarge: false });
+    expect(pixelWords(pngExtent(box, 2))).toBe('2,628 × 1,858 px');
     expect(pngExtent({ ...box, width: 3654, height: 2584 }, 4)).toMatchObject({ tooLarge: true });
     expect(pngExtent({ ...box, width: 20_000, height: 10 }, 1)).toMatchObject({ tooLarge: true });
   });
