@@ -33,12 +33,20 @@ export const frameWords = ({ send }: TraceQuestion, { probe }: Pick<TraceResult,
   return `${name}, ${version} ${packet.packetBytes} B${packet.dontFragment === true ? ', DF set' : ''}`;
 };
 
-/** What is different about the second of two probes: 'DF no, Bytes 1396'. */
+const said: { readonly [field: string]: { readonly [text: string]: string } } = {
+  df: { yes: 'set', no: 'clear' },
+  far: { learned: 'learned', unknown: 'not learned' },
+};
+
+/** What is different about the second of two probes: 'Bytes 1396, DF clear'. */
 export const variationWords = (first: TraceQuestion, second: TraceQuestion): string => {
   const [own, other] = [writeQuestion(first), writeQuestion(second)];
   return questionFields
     .filter((field) => own[field] !== other[field])
-    .map((field) => `${fieldLabels[field]} ${other[field] === '' ? 'as usual' : other[field]}`)
+    .map((field) => {
+      const text = other[field];
+      return `${fieldLabels[field]} ${text === '' ? 'as usual' : (said[field]?.[text] ?? text)}`;
+    })
     .join(', ');
 };
 

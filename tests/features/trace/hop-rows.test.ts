@@ -128,11 +128,15 @@ describe('the rows of several ways', () => {
   });
 
   it('are made of a way of hundreds of hops as well', () => {
-    const { hops } = resultOf(chainDesign(120), {
-      send: 'ping',
-      from: { host: 'h-s0-a' },
-      to: 'h-s119-a',
-    });
+    const { hops } = resultOf(
+      chainDesign(120),
+      {
+        send: 'ping',
+        from: { host: 'h-s0-a' },
+        to: 'h-s119-a',
+      },
+      [],
+    );
     expect(hops.length).toBeGreaterThan(240);
     expect(hops.at(-1)?.leaf?.tone).toBe('arrives');
   });

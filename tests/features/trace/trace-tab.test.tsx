@@ -330,6 +330,7 @@ describe('a second probe', () => {
     const { user, desk } = renderTab(pairDesign(), failing);
     await user.click(screen.getByRole('button', { name: 'Compare' }));
     expect(desk().address().get('vs-df')).toBe('no');
+    expect(screen.getByText('Second with DF clear.')).toBeInTheDocument();
     const bytes = side().getByLabelText('IP packet, bytes');
     await user.clear(bytes);
     await user.type(bytes, '900{Enter}');
