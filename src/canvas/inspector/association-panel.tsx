@@ -11,7 +11,7 @@ import { listed } from '../../engine/rules/wording.ts';
 import { CellGrid, ReadCell } from '../../components/cell.tsx';
 import { useOpenState } from '../../workspace/open-design-context.tsx';
 import { useNetwork } from './carried-segments.tsx';
-import { lifetime } from './duration-text.ts';
+import { lifetime } from '../../lib/duration-text.ts';
 import { ElementLink, ElementList } from './element-link.tsx';
 import { endHeads } from './end-heads.ts';
 import { LongTextField, SelectField, TextField, Unknown, YesNoField } from './fields.tsx';
@@ -23,7 +23,7 @@ import { Section } from './section.tsx';
 import { SelectorList } from './selector-list.tsx';
 import { useCommit, useEditable } from './use-field.ts';
 import { ViaList } from './via-list.tsx';
-import { wholeNumber } from './written-value.ts';
+import { wholeNumber } from '../../lib/written-value.ts';
 
 type Association = Entry<'associations'>;
 type Heads = { readonly [E in End]: EndHead };

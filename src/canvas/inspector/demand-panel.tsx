@@ -7,14 +7,14 @@ import { patchAt } from '../../engine/model/merge-patch.ts';
 import { useOpenState } from '../../workspace/open-design-context.tsx';
 import { AddButton } from './add-button.tsx';
 import { SegmentName } from './carried-segments.tsx';
-import { milliseconds } from './duration-text.ts';
+import { milliseconds } from '../../lib/duration-text.ts';
 import { SelectField, TextField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
 import { PanelHead } from './panel-head.tsx';
-import { rate } from './rate-text.ts';
+import { rate } from '../../lib/rate-text.ts';
 import { Section } from './section.tsx';
 import { refusalSentence, useCommit, useField } from './use-field.ts';
-import { wholeNumber } from './written-value.ts';
+import { wholeNumber } from '../../lib/written-value.ts';
 
 const count = wholeNumber();
 const bytes = wholeNumber('B');

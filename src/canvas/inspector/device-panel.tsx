@@ -10,7 +10,7 @@ import { AddButton } from './add-button.tsx';
 import { useNetwork } from './carried-segments.tsx';
 import { ConnectButton } from './connect-button.tsx';
 import { DeviceKindCell } from './device-kind-cell.tsx';
-import { milliseconds } from './duration-text.ts';
+import { milliseconds } from '../../lib/duration-text.ts';
 import { ElementLink, ElementList } from './element-link.tsx';
 import { LongTextField, SelectField, TextField, YesNoField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
@@ -21,7 +21,7 @@ import { Section } from './section.tsx';
 import { SpanningTreeCells } from './spanning-tree-cells.tsx';
 import { vlansOf } from './tunnel-facts.ts';
 import { useCommit, useEditable } from './use-field.ts';
-import { textList } from './written-value.ts';
+import { textList } from '../../lib/written-value.ts';
 
 const vxlanSources = [
   { value: 'anyone', label: 'anyone' },

@@ -3,7 +3,7 @@ import { ReadCell } from '../../components/cell.tsx';
 import { CheckCell, CommitAreaCell, CommitCell, SelectCell } from '../../components/field-cells.tsx';
 import type { FieldPath } from './field-marks.ts';
 import { refusalSentence, useField } from './use-field.ts';
-import { plainText, type Writing } from './written-value.ts';
+import { plainText, type Writing } from '../../lib/written-value.ts';
 
 interface FieldProps extends CellProps {
   /** Keys from the document's root. */

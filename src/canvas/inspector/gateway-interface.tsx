@@ -6,7 +6,7 @@ import { AddButton } from './add-button.tsx';
 import { SelectField, TextField, YesNoField } from './fields.tsx';
 import { Section } from './section.tsx';
 import { useAt, useCommit, useEditable } from './use-field.ts';
-import { textList, wholeNumber } from './written-value.ts';
+import { textList, wholeNumber } from '../../lib/written-value.ts';
 
 const number = wholeNumber();
 const bytes = wholeNumber('B');

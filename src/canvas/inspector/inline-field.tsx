@@ -5,7 +5,7 @@ import { classNames } from '../../lib/class-names.ts';
 import type { FieldPath } from './field-marks.ts';
 import { Unknown } from './fields.tsx';
 import { refusalSentence, useField } from './use-field.ts';
-import { plainText, type Writing } from './written-value.ts';
+import { plainText, type Writing } from '../../lib/written-value.ts';
 
 interface InlineFieldProps<T> {
   /** What the value is, and of what: a table's cell has no label of its own to look at. */

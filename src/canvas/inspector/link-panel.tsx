@@ -4,16 +4,16 @@ import { ends } from '../../engine/network/network.ts';
 import { useOpenState } from '../../workspace/open-design-context.tsx';
 import { linksIn } from '../../workspace/operations/connect-ports.ts';
 import { useNetwork } from './carried-segments.tsx';
-import { lifetime } from './duration-text.ts';
+import { lifetime } from '../../lib/duration-text.ts';
 import { ElementLink, ElementList } from './element-link.tsx';
 import { SelectField, TextField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
 import { PanelHead } from './panel-head.tsx';
 import { portWords } from './port-words.ts';
-import { rate } from './rate-text.ts';
+import { rate } from '../../lib/rate-text.ts';
 import { Section } from './section.tsx';
 import { useCommit } from './use-field.ts';
-import { accessOverhead } from './written-value.ts';
+import { accessOverhead } from '../../lib/written-value.ts';
 
 /** A cable or a landing. */
 export function LinkPanel({ id }: { readonly id: string }) {

@@ -7,7 +7,7 @@ import type { FieldPath } from './field-marks.ts';
 import { FlagField, SelectField, TextField } from './fields.tsx';
 import { OrderedList } from './ordered-list.tsx';
 import { useCommit } from './use-field.ts';
-import { etherType, numberList, textList, wholeNumber } from './written-value.ts';
+import { etherType, numberList, textList, wholeNumber } from '../../lib/written-value.ts';
 
 type Rule = DeepReadonly<PolicyRule>;
 type Frames = PolicyRule['frames'];

@@ -9,10 +9,10 @@ import { ConnectButton } from './connect-button.tsx';
 import { ElementLink } from './element-link.tsx';
 import { FlagField, SelectField, TextField } from './fields.tsx';
 import { socketsOf } from './port-words.ts';
-import { rate } from './rate-text.ts';
+import { rate } from '../../lib/rate-text.ts';
 import { useAt, useCommit } from './use-field.ts';
 import { allowedVlans } from './vlan-list.ts';
-import { wholeNumber } from './written-value.ts';
+import { wholeNumber } from '../../lib/written-value.ts';
 
 const number = wholeNumber();
 const bytes = wholeNumber('B');

@@ -5,9 +5,9 @@ import { LongTextField, SelectField, TextField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
 import { PanelHead } from './panel-head.tsx';
 import { NewerProfile } from './profile-cells.tsx';
-import { rate } from './rate-text.ts';
+import { rate } from '../../lib/rate-text.ts';
 import { Section } from './section.tsx';
-import { wholeNumber } from './written-value.ts';
+import { wholeNumber } from '../../lib/written-value.ts';
 
 const perSecond = wholeNumber('/s');
 const count = wholeNumber();

@@ -14,14 +14,14 @@ import { placeDemand } from '../../workspace/operations/place-parts.ts';
 import { AddButton } from './add-button.tsx';
 import { useNetwork } from './carried-segments.tsx';
 import { CheckList } from './check-list.tsx';
-import { milliseconds } from './duration-text.ts';
+import { milliseconds } from '../../lib/duration-text.ts';
 import { ElementLink, ElementList } from './element-link.tsx';
 import { LongTextField, TextField, YesNoField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
 import { PanelHead } from './panel-head.tsx';
 import { Section } from './section.tsx';
 import { useCommit, useEditable } from './use-field.ts';
-import { textList, wholeNumber } from './written-value.ts';
+import { textList, wholeNumber } from '../../lib/written-value.ts';
 
 const number = wholeNumber();
 const bytes = wholeNumber('B');

@@ -4,7 +4,7 @@ import type { Selector } from '../../engine/model/overlay.ts';
 import type { FieldPath } from './field-marks.ts';
 import { TextField } from './fields.tsx';
 import { OrderedList } from './ordered-list.tsx';
-import { wholeNumber } from './written-value.ts';
+import { wholeNumber } from '../../lib/written-value.ts';
 
 const port = wholeNumber();
 

@@ -7,7 +7,7 @@ import { LongTextField, TextField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
 import { PanelHead } from './panel-head.tsx';
 import { Section } from './section.tsx';
-import { wholeNumber, textList } from './written-value.ts';
+import { wholeNumber, textList } from '../../lib/written-value.ts';
 
 const vlan = wholeNumber();
 

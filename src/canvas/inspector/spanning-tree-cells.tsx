@@ -2,7 +2,7 @@ import { patchAt } from '../../engine/model/merge-patch.ts';
 import { SelectField, TextField } from './fields.tsx';
 import type { FieldPath } from './field-marks.ts';
 import { useAt, useCommit } from './use-field.ts';
-import { wholeNumber } from './written-value.ts';
+import { wholeNumber } from '../../lib/written-value.ts';
 
 const priority = wholeNumber();
 

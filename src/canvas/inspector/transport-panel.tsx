@@ -3,16 +3,16 @@ import { transportWords } from '../../drawing/parts/words.ts';
 import { useOpenState } from '../../workspace/open-design-context.tsx';
 import { useNetwork } from './carried-segments.tsx';
 import { CheckList } from './check-list.tsx';
-import { milliseconds } from './duration-text.ts';
+import { milliseconds } from '../../lib/duration-text.ts';
 import { ElementList } from './element-link.tsx';
 import { LongTextField, SelectField, TextField, YesNoField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
 import { PanelHead } from './panel-head.tsx';
-import { rate } from './rate-text.ts';
+import { rate } from '../../lib/rate-text.ts';
 import { Section } from './section.tsx';
-import { percent } from './share-text.ts';
+import { percent } from '../../lib/share-text.ts';
 import { useField } from './use-field.ts';
-import { wholeNumber } from './written-value.ts';
+import { wholeNumber } from '../../lib/written-value.ts';
 
 const bytes = wholeNumber('B');
 const kinds = [

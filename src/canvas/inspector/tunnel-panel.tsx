@@ -10,7 +10,7 @@ import { useOpenState } from '../../workspace/open-design-context.tsx';
 import { associationsBetween } from '../../workspace/operations/join-endpoints.ts';
 import { nameOf } from '../../workspace/operations/name-of.ts';
 import { SegmentName, useCarried, useNetwork } from './carried-segments.tsx';
-import { formatMilliseconds } from './duration-text.ts';
+import { formatMilliseconds } from '../../lib/duration-text.ts';
 import { ElementLink, ElementList } from './element-link.tsx';
 import { endHeads } from './end-heads.ts';
 import { markAt } from './field-marks.ts';
@@ -31,7 +31,7 @@ import {
 } from './tunnel-facts.ts';
 import { useAt, useCommit, useEditable } from './use-field.ts';
 import { ViaList } from './via-list.tsx';
-import { wholeNumber } from './written-value.ts';
+import { wholeNumber } from '../../lib/written-value.ts';
 
 const vni = wholeNumber();
 const udpPort = wholeNumber();

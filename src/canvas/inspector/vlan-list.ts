@@ -1,4 +1,4 @@
-import { reading, unreadable, type Reading, type Writing } from './written-value.ts';
+import { reading, unreadable, type Reading, type Writing } from '../../lib/written-value.ts';
 
 /** VLANs in order, neighbours of three and more as a range: '110, 120-125'. */
 export const formatVlans = (vlans: readonly number[]): string => {

@@ -1,7 +1,7 @@
 import { useMemo, type ReactNode } from 'react';
 import { Unknown } from '../../canvas/inspector/fields.tsx';
 import { InlineField } from '../../canvas/inspector/inline-field.tsx';
-import { rate } from '../../canvas/inspector/rate-text.ts';
+import { rate } from '../../lib/rate-text.ts';
 import { Icon } from '../../components/icon.tsx';
 import { SegmentSwatch } from '../../components/segment-swatch.tsx';
 import { SeverityShape } from '../../components/severity-mark.tsx';

@@ -1,6 +1,6 @@
 import type { ReactNode } from 'react';
 import { InlineField } from '../../canvas/inspector/inline-field.tsx';
-import { textList, wholeNumber } from '../../canvas/inspector/written-value.ts';
+import { textList, wholeNumber } from '../../lib/written-value.ts';
 import { EmptyState } from '../../components/empty-state.tsx';
 import { SegmentSwatch } from '../../components/segment-swatch.tsx';
 import type { Column } from '../../components/table-view.ts';

@@ -1,5 +1,5 @@
 import { portWords, socketsOf } from '../../canvas/inspector/port-words.ts';
-import { formatRate } from '../../canvas/inspector/rate-text.ts';
+import { formatRate } from '../../lib/rate-text.ts';
 import { vlansOf } from '../../canvas/inspector/tunnel-facts.ts';
 import { circuitVlans } from '../../canvas/inspector/vlan-list.ts';
 import { carriesWords, subnetWords, transportWords, vlanWords } from '../../drawing/parts/words.ts';

@@ -1,5 +1,5 @@
-import { rate } from '../../canvas/inspector/rate-text.ts';
-import { plainText, wholeNumber, type Reading, type Writing } from '../../canvas/inspector/written-value.ts';
+import { rate } from '../../lib/rate-text.ts';
+import { plainText, wholeNumber, type Reading, type Writing } from '../../lib/written-value.ts';
 import { reservedGroupNames } from '../../engine/trace/reserved-groups.ts';
 
 interface FieldBase {

@@ -1,4 +1,4 @@
-import { formatRate } from '../../canvas/inspector/rate-text.ts';
+import { formatRate } from '../../lib/rate-text.ts';
 import { DataTable, type Column } from '../../components/data-table.tsx';
 import type { EquipmentProfile } from '../../contract/profiles.ts';
 

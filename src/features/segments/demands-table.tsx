@@ -1,7 +1,7 @@
-import { milliseconds } from '../../canvas/inspector/duration-text.ts';
+import { milliseconds } from '../../lib/duration-text.ts';
 import { InlineField } from '../../canvas/inspector/inline-field.tsx';
-import { rate } from '../../canvas/inspector/rate-text.ts';
-import { wholeNumber } from '../../canvas/inspector/written-value.ts';
+import { rate } from '../../lib/rate-text.ts';
+import { wholeNumber } from '../../lib/written-value.ts';
 import { Button } from '../../components/button.tsx';
 import { EmptyState } from '../../components/empty-state.tsx';
 import { SegmentSwatch } from '../../components/segment-swatch.tsx';

@@ -1,5 +1,5 @@
 import { InlineField } from '../../canvas/inspector/inline-field.tsx';
-import { textList, wholeNumber } from '../../canvas/inspector/written-value.ts';
+import { textList, wholeNumber } from '../../lib/written-value.ts';
 import { SegmentSwatch } from '../../components/segment-swatch.tsx';
 import type { Column } from '../../components/table-view.ts';
 import { useTableView } from '../../components/use-table-view.ts';

@@ -1,7 +1,7 @@
-import { milliseconds } from '../../canvas/inspector/duration-text.ts';
-import { rate } from '../../canvas/inspector/rate-text.ts';
-import { percent } from '../../canvas/inspector/share-text.ts';
-import { reading, unreadable, type Reading, type Writing } from '../../canvas/inspector/written-value.ts';
+import { milliseconds } from '../../lib/duration-text.ts';
+import { rate } from '../../lib/rate-text.ts';
+import { percent } from '../../lib/share-text.ts';
+import { reading, unreadable, type Reading, type Writing } from '../../lib/written-value.ts';
 import {
   espIntegrities,
   espIntegrityIds,

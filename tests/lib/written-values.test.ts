@@ -5,16 +5,16 @@ import {
   formatSeconds,
   parseMilliseconds,
   parseSeconds,
-} from '../../../src/canvas/inspector/duration-text.ts';
-import { formatRate, parseRate } from '../../../src/canvas/inspector/rate-text.ts';
-import { formatPercent, parsePercent } from '../../../src/canvas/inspector/share-text.ts';
+} from '../../src/lib/duration-text.ts';
+import { formatRate, parseRate } from '../../src/lib/rate-text.ts';
+import { formatPercent, parsePercent } from '../../src/lib/share-text.ts';
 import {
   allowedVlans,
   circuitVlans,
   formatVlans,
   parseVlans,
   vlanTranslation,
-} from '../../../src/canvas/inspector/vlan-list.ts';
+} from '../../src/canvas/inspector/vlan-list.ts';
 import {
   accessOverhead,
   etherType,
@@ -22,7 +22,7 @@ import {
   textList,
   wholeNumber,
   type Reading,
-} from '../../../src/canvas/inspector/written-value.ts';
+} from '../../src/lib/written-value.ts';
 
 const value = <T>(read: Reading<T>): T | string => (read.ok ? read.value : `refused: ${read.wayOut}`);
 
