@@ -24,7 +24,7 @@ export function SegmentsPage() {
   const document = useOpenState((state) => state.document);
   const selection = useOpenState((state) => state.selection);
   const editable = useOpenState((state) => state.editable);
-  const { findings } = useChecks();
+  const { openFindings } = useChecks();
   const { valueOf, change } = useSearchValues();
   const [inventory, setInventory] = useState(false);
   usePageTitle(`Segments of ${document.meta.title}`);
@@ -68,7 +68,7 @@ export function SegmentsPage() {
         </div>
         <SegmentsTable
           rows={segments}
-          findings={findings}
+          findings={openFindings}
           selectedId={shownIn('segments')}
           onSelect={(id) => open.select([{ collection: 'segments', id }])}
           onAdd={addSegment}

@@ -137,6 +137,35 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
     },
   ],
   [
+    'the checks of a design, with a finding open and its waiver being written',
+    async (page) => {
+      await signInAs(page, 'owner');
+      await openSheet(page, 'with planted faults');
+      await goToPage(page, 'checks');
+      await page.getByRole('button', { name: /VNI 10120 at Head office/ }).click();
+      await page.getByRole('button', { name: 'Waive…' }).click();
+      await page.getByRole('dialog').getByRole('button', { name: 'Waive', exact: true }).click();
+      await page.getByText(/^Reason is empty/).waitFor();
+    },
+  ],
+  [
+    'the checks of a design by element',
+    async (page) => {
+      await signInAs(page, 'architect');
+      await openSheet(page, 'with planted faults');
+      await goToPage(page, 'checks?group=element');
+      await page.getByRole('heading', { name: 'tn-ho-gul-b' }).waitFor();
+    },
+  ],
+  [
+    'equipment profiles',
+    async (page) => {
+      await signInAs(page, 'owner');
+      await page.getByRole('link', { name: 'Equipment' }).click();
+      await page.getByRole('heading', { name: 'Pair of small gateways' }).waitFor();
+    },
+  ],
+  [
     'the reference of checks',
     async (page) => {
       await signInAs(page, 'reviewer');

@@ -173,11 +173,14 @@ function UsedIn({
           what was approved stays as it was.
         </p>
       ) : (
-        <ul className="mt-4 flex flex-col gap-4 text-base">
+        <ul className="mt-4 flex flex-col text-base">
           {usedIn.map(({ designId, title, devices, current }) => (
-            <li key={designId} className="flex flex-wrap gap-x-10">
+            <li key={designId} className="flex min-h-26 flex-wrap items-center gap-x-10">
               {canOpenDesigns ? (
-                <Link to={designPath(designId)} className="font-medium text-blue hover:underline">
+                <Link
+                  to={designPath(designId)}
+                  className="flex min-h-24 items-center font-medium text-blue hover:underline"
+                >
                   {title}
                 </Link>
               ) : (
