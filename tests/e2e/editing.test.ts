@@ -96,7 +96,10 @@ describe('gestures on the sheet', () => {
       await middleOf(node(page, 'devices/berth-gul')),
     );
     // The message is read out as well: it is there twice for a moment.
-    await page.getByText(/already holds a cable/).first().waitFor();
+    await page
+      .getByText(/already holds a cable/)
+      .first()
+      .waitFor();
     expect(await storedDesign(page)).toEqual(before);
   });
 
