@@ -55,7 +55,9 @@ export function PlayBar({
       <span className="text-base whitespace-nowrap text-ink-2">
         {at === 0 ? 'Not sent yet' : `Hop ${at} of ${count}`}
       </span>
-      <span className="flex min-w-0 flex-1 items-center justify-end gap-8 max-md:flex-wrap">{children}</span>
+      <span className="flex min-w-0 flex-1 items-center justify-end gap-8 max-md:basis-full max-md:flex-wrap">
+        {children}
+      </span>
     </div>
   );
 }

@@ -56,7 +56,7 @@ interface TracePanelProps {
 /** The drawer's Frame trace: hops with their bytes, the verdict, and a second probe beside the first. */
 export function TracePanel(props: TracePanelProps) {
   const { first, second, form, design, starts, onAsk, onTakeOut } = props;
-  const [isSettingUp, setSettingUp] = useState(first.result === undefined);
+  const [isSettingUp, setSettingUp] = useState(false);
   const problems = [
     ...first.problems.map((problem) => ({ which: 'first' as const, problem })),
     ...(second?.problems ?? []).map((problem) => ({ which: 'second' as const, problem })),
