@@ -121,7 +121,8 @@ export function WorkTable<Row>({
             <NothingFound filter={view.filter} onClear={() => setView({ ...view, filter: '' })} />
           )
         }
-        {...(fill ? { className: 'min-h-0' } : {})}
+        // On a phone what it stands in grows with it: it then bounds itself, or all of thousands of rows would be in sight.
+        {...(fill ? { className: 'min-h-0 max-md:max-h-[70dvh]' } : {})}
       />
     </div>
   );

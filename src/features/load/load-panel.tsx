@@ -64,7 +64,7 @@ export function VerdictLine({ verdict }: { readonly verdict: LoadVerdict }) {
         )}
       </span>
       <p className="min-w-0">
-        <span className="font-semibold text-ink">{verdict.sentence}</span>{' '}
+        <span className="font-semibold text-ink">{verdict.sentence.replaceAll(' %', '\u00a0%')}</span>{' '}
         <span className="text-ink-2">{verdict.besides}</span>
       </p>
     </div>
