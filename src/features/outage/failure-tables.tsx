@@ -24,11 +24,18 @@ interface FailureTableProps<Row> {
   readonly empty: ReactNode;
 }
 
-const letters = (design: Design, segments: readonly string[]): string =>
+const letters = (design: Design, segments: readonly string[]): readonly string[] =>
   segments
     .map((id) => design.segments[id]?.letter ?? id)
-    .sort()
-    .join(', ');
+    .sort((x, y) => x.length - y.length || (x < y ? -1 : 1));
+
+const mostLetters = 8;
+const lettersShown = (all: readonly string[]): string =>
+  all.length === 0
+    ? '–'
+    : all.length <= mostLetters
+      ? all.join(', ')
+      : `${all.slice(0, mostLetters - 2).join(', ')} and ${all.length - mostLetters + 2} more`;
 
 const Harm = ({ pairs }: { readonly pairs: number }) => (
   <span className="inline-flex items-center gap-6 whitespace-nowrap">
@@ -95,8 +102,10 @@ export function SinglesTable({ design, rows, failed, onFail, ...table }: Failure
       {
         key: 'segments',
         head: 'Segments',
-        cell: ({ segments }) => letters(design, segments) || '–',
-        sortBy: ({ segments }) => letters(design, segments),
+        cell: ({ segments }) => lettersShown(letters(design, segments)),
+        sortBy: ({ segments }) => segments.length,
+        highestFirst: true,
+        text: ({ segments }) => letters(design, segments).join(' '),
       },
     ],
     [design],
