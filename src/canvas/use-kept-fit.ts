@@ -20,8 +20,11 @@ export const useKeptFit = (sheet: SheetFrame, view: View): void => {
       latest.current.view.fit(latest.current.sheet, fittedBefore.current);
       fittedBefore.current = true;
     };
-    // Not under a hand that drags something.
-    const held = document.querySelector('.react-flow__node.dragging, .react-flow__connection') !== null;
+    // Not under a hand that drags something, or a marquee: what it encloses would move away under it.
+    const held =
+      document.querySelector(
+        '.react-flow__node.dragging, .react-flow__connection, .react-flow__selection',
+      ) !== null;
     if (!held) return fit();
     window.addEventListener('pointerup', fit, { once: true });
     return () => window.removeEventListener('pointerup', fit);
