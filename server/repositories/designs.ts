@@ -22,6 +22,7 @@ export interface DesignRow {
   /** The name of whoever changed it last. */
   readonly changedBy: string | null;
   readonly archivedAt: Date | null;
+  readonly deletedAt: Date | null;
 }
 
 /** How many findings no waiver covers, and the last day on which that is so. */
@@ -68,6 +69,7 @@ function selectDesigns(knex: Knex): Knex.QueryBuilder {
       changedAt: 'designs.changed_at',
       changedBy: 'people.name',
       archivedAt: 'designs.archived_at',
+      deletedAt: 'designs.deleted_at',
     });
 }
 
@@ -140,8 +142,18 @@ export async function updateAfterSave(
     });
 }
 
-export async function setDesignArchivedAt(knex: Knex, id: string, archivedAt: Date | null): Promise<void> {
-  await knex('designs').where({ id }).update({ archived_at: archivedAt });
+export async function setDesignPutAway(
+  knex: Knex,
+  id: string,
+  { archivedAt, deletedAt }: Pick<DesignRow, 'archivedAt' | 'deletedAt'>,
+): Promise<void> {
+  await knex('designs').where({ id }).update({ archived_at: archivedAt, deleted_at: deletedAt });
+}
+
+/** Removes the designs of a workspace that were deleted before a moment, with all that belongs to them. */
+export async function removeDeletedDesigns(knex: Knex, workspaceId: string, before: Date): Promise<void> {
+  const engagements = knex('engagements').where({ workspace_id: workspaceId }).select('id');
+  await knex('designs').whereIn('engagement_id', engagements).where('deleted_at', '<', before).delete();
 }
 
 /** Notes how many findings are open now, after a waiver was given, withdrawn or has ended. */

@@ -63,5 +63,6 @@ export function summaryOf(row: DesignRow): DesignSummary {
     changedAt: row.changedAt.toISOString(),
     changedBy: row.changedBy,
     archivedAt: row.archivedAt?.toISOString() ?? null,
+    deletedAt: row.deletedAt?.toISOString() ?? null,
   };
 }

@@ -9,7 +9,7 @@ import { permissions } from '../auth/permissions.ts';
 import { Refusal, notFound } from '../errors.ts';
 import { insertSnapshot } from '../repositories/design-snapshots.ts';
 import type { DesignRow } from '../repositories/designs.ts';
-import { findDesign, insertDesign, lockDesign, setDesignArchivedAt } from '../repositories/designs.ts';
+import { findDesign, insertDesign, lockDesign, setDesignPutAway } from '../repositories/designs.ts';
 import { findEngagement } from '../repositories/engagements.ts';
 import type { Context } from './context.ts';
 import { summarise, summaryOf } from './design-summary.ts';
@@ -59,34 +59,45 @@ export async function openDesign(context: Context, personId: string, designId: s
   };
 }
 
-/** Renames, archives or restores a design. */
+/** Renames, archives, deletes or restores a design. */
 export async function changeDesign(
   context: Context,
   personId: string,
   designId: string,
-  { title, archived }: { readonly title?: string; readonly archived?: boolean },
+  {
+    title,
+    archived,
+    deleted,
+  }: { readonly title?: string; readonly archived?: boolean; readonly deleted?: boolean },
 ): Promise<DesignSummary> {
   const { database, clock } = context;
   const design = await requireDesign(context, designId);
   await authorise(database.knex, personId, 'design.edit', design.workspaceId, 'design');
   // Restored before it is renamed, renamed before it is archived: an archived design takes no patch.
-  if (archived === false) await putAway(context, personId, designId, null);
+  if (archived === false || deleted === false)
+    await putAway(context, personId, designId, { archivedAt: null, deletedAt: null });
   if (title !== undefined) await saveTitle(context, personId, designId, title);
-  if (archived === true) await putAway(context, personId, designId, clock());
+  const at = clock();
+  if (archived === true) await putAway(context, personId, designId, { archivedAt: at, deletedAt: null });
+  if (deleted === true) await putAway(context, personId, designId, { archivedAt: at, deletedAt: at });
   return summaryOf(await requireDesign(context, designId));
 }
 
+/** What is put away already keeps the time at which it was. */
 async function putAway(
   { database }: Context,
   personId: string,
   designId: string,
-  at: Date | null,
+  { archivedAt, deletedAt }: Pick<DesignRow, 'archivedAt' | 'deletedAt'>,
 ): Promise<void> {
   await database.knex.transaction(async (trx) => {
     const design = await lockDesign(trx, designId);
     if (design === null) throw notFound('design');
     await authorise(trx, personId, 'design.archive', design.workspaceId, 'design');
-    if (at === null || design.archivedAt === null) await setDesignArchivedAt(trx, designId, at);
+    await setDesignPutAway(trx, designId, {
+      archivedAt: archivedAt && (design.archivedAt ?? archivedAt),
+      deletedAt: deletedAt && (design.deletedAt ?? deletedAt),
+    });
   });
 }
 

@@ -1,7 +1,8 @@
 import type { Engagement } from '#contract/designs.ts';
+import { deletedForDays } from '#contract/designs.ts';
 import { authorise } from '../auth/authorise.ts';
 import { notFound } from '../errors.ts';
-import { listDesigns } from '../repositories/designs.ts';
+import { listDesigns, removeDeletedDesigns } from '../repositories/designs.ts';
 import type { EngagementRow } from '../repositories/engagements.ts';
 import {
   findEngagement,
@@ -13,6 +14,8 @@ import type { Context } from './context.ts';
 import { summaryOf } from './design-summary.ts';
 import { withCurrentCounts } from './waivers.ts';
 
+const deletedForMs = deletedForDays * 24 * 60 * 60 * 1000;
+
 /** A workspace's engagements with their designs; archived ones of both kinds only when asked for. */
 export async function readEngagements(
   context: Context,
@@ -22,6 +25,7 @@ export async function readEngagements(
 ): Promise<Engagement[]> {
   const { knex } = context.database;
   await authorise(knex, personId, 'workspace.read', workspaceId, 'workspace');
+  await removeDeletedDesigns(knex, workspaceId, new Date(context.clock().getTime() - deletedForMs));
   const [engagements, listed] = await Promise.all([
     listEngagements(knex, workspaceId, withArchived),
     listDesigns(knex, workspaceId, withArchived),

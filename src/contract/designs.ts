@@ -35,6 +35,8 @@ export const designSummarySchema = z.object({
   /** The person's name. */
   changedBy: z.string().nullable(),
   archivedAt: z.iso.datetime().nullable(),
+  /** A deleted design is in the archive, too, and gone for good `deletedForDays` later. */
+  deletedAt: z.iso.datetime().nullable(),
 });
 export type DesignSummary = z.infer<typeof designSummarySchema>;
 
@@ -75,11 +77,22 @@ export const createDesignSchema = z.strictObject({
   ]),
 });
 export type CreateDesign = z.infer<typeof createDesignSchema>;
-/** PATCH /api/designs/:designId → its summary. A new title is written into the document as a patch. */
-export const changeDesignSchema = z.strictObject({
-  title: titleSchema.optional(),
-  archived: z.boolean().optional(),
-});
+/** For how long a deleted design can be restored. */
+export const deletedForDays = 30;
+/**
+ * PATCH /api/designs/:designId → its summary. A new title is written into the document as a patch. `archived: true` keeps a
+ * deleted design in the archive; `deleted: false` brings it back whole.
+ */
+export const changeDesignSchema = z
+  .strictObject({
+    title: titleSchema.optional(),
+    archived: z.boolean().optional(),
+    deleted: z.boolean().optional(),
+  })
+  .refine(({ archived, deleted }) => archived === undefined || deleted === undefined, {
+    path: ['deleted'],
+    message: 'expected either archived or deleted, not both',
+  });
 
 export const thumbnailThemes = ['paper', 'slate'] as const;
 /**

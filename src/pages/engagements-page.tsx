@@ -36,7 +36,7 @@ export function EngagementsPage() {
   const membership = useMembership(workspaceId);
   const { valueOf, change } = useSearchValues();
   const [dialog, setDialog] = useState<OpenDialog>();
-  const { archiveEngagement, archiveDesign } = useArchiving();
+  const { archiveEngagement, archiveDesign, deleteDesign } = useArchiving();
   const asked = valueOf('state');
   const state = isDesignState(asked) ? asked : null;
   const words = valueOf('q');
@@ -123,6 +123,7 @@ export function EngagementsPage() {
               onRenameDesign={(design) => setDialog({ kind: 'rename', design })}
               onArchiveEngagement={archiveEngagement}
               onArchiveDesign={archiveDesign}
+              onDeleteDesign={deleteDesign}
             />
           ))}
           {data !== undefined && shown.length === 0 && (

@@ -64,7 +64,7 @@ describe('a card', () => {
     renderRoute(path);
     await ready();
     const picture = card('Terminals stretch, phase 1').querySelector('img');
-    expect(picture).toHaveAttribute('src', '/api/designs/d-1/thumbnail?v=7&theme=paper');
+    expect(picture).toHaveAttribute('src', '/api/designs/d-1/thumbnail?v=7&open=3&theme=paper');
     expect(picture).toHaveAttribute('alt', '');
   });
 
@@ -300,12 +300,31 @@ test('when an archived design leaves the list, the keyboard goes on from the sta
   await waitFor(() => expect(screen.getByRole('main')).toHaveFocus());
 });
 
-test('an archived design offers its way back and nothing that would change it', async () => {
+test('an archived design offers its way back and its end, and nothing that would change it', async () => {
   const archived = engagement({ designs: [designSummary({ archivedAt: '2026-01-01T00:00:00.000Z' })] });
   workspaceApi([archived], ['workspace.read', 'design.read', 'design.edit', 'design.archive']);
   const { user } = renderRoute(`${path}?archived=1`);
   await ready();
   expect(within(card('Terminals stretch, phase 1')).getByText('Archived')).toBeVisible();
   await user.click(screen.getByRole('button', { name: 'What to do with Terminals stretch, phase 1' }));
-  expect(screen.getAllByRole('menuitem').map((item) => item.textContent)).toEqual(['Restore']);
+  expect(screen.getAllByRole('menuitem').map((item) => item.textContent)).toEqual(['Restore', 'Delete']);
+});
+
+test('a design is deleted at once, says for how long it can come back, and comes back on Undo', async () => {
+  const { asked } = workspaceApi([ferries], undefined, {
+    'PATCH /api/designs/d-1': json(designSummary()),
+  });
+  const { user } = renderRoute(path);
+  await ready();
+  await user.click(screen.getByRole('button', { name: 'What to do with Terminals stretch, phase 1' }));
+  await user.click(screen.getByRole('menuitem', { name: 'Delete' }));
+  await screen.findByText(/is deleted\. It can be restored for 30 days/);
+  // Earlier toasts may still stand above it.
+  await user.click(screen.getAllByRole('button', { name: 'Undo' }).at(-1)!);
+  await waitFor(() =>
+    expect(asked.filter(({ method }) => method === 'PATCH').map(({ body }) => body)).toEqual([
+      { deleted: true },
+      { deleted: false },
+    ]),
+  );
 });

@@ -69,6 +69,7 @@ export function designSummary(changes: Partial<DesignSummary> = {}): DesignSumma
     changedAt: new Date(Date.now() - 4 * 60_000).toISOString(),
     changedBy: 'Rosa Halloran',
     archivedAt: null,
+    deletedAt: null,
     ...changes,
   };
 }

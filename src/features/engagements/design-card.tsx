@@ -5,9 +5,9 @@ import { Icon } from '../../components/icon.tsx';
 import { Menu, type MenuAction } from '../../components/menu.tsx';
 import { SeverityCounts } from '../../components/severity-mark.tsx';
 import { Stamp } from '../../components/stamp.tsx';
-import type { DesignSummary } from '../../contract/designs.ts';
+import { deletedForDays, type DesignSummary } from '../../contract/designs.ts';
 import { classNames } from '../../lib/class-names.ts';
-import { dateAndTime, relativeTime } from '../../lib/format-time.ts';
+import { dateAndTime, dayByUtc, dayInWords, relativeTime } from '../../lib/format-time.ts';
 import { useTheme } from '../../lib/theme.ts';
 import { useNow } from '../../lib/use-now.ts';
 import { designPath } from '../../lib/workspace-path.ts';
@@ -76,12 +76,22 @@ export function DesignCard({ design, canOpen, actions }: DesignCardProps) {
         </div>
       </div>
       <div className="flex min-h-31 flex-wrap items-center justify-between gap-x-8 gap-y-4 border-t border-rule-2 bg-field px-9 py-5 text-base">
-        {archived ? <span className="text-note text-ink-2">Archived</span> : <Stamp state={design.state} />}
+        {archived ? (
+          <span className="text-note text-ink-2">
+            {design.deletedAt === null ? 'Archived' : `Deleted, gone on ${lastDayOf(design.deletedAt)}`}
+          </span>
+        ) : (
+          <Stamp state={design.state} />
+        )}
         <SeverityCounts counts={design.counts} />
       </div>
     </article>
   );
 }
+
+const dayMs = 24 * 60 * 60 * 1000;
+const lastDayOf = (deletedAt: string): string =>
+  dayInWords(dayByUtc(new Date(new Date(deletedAt).getTime() + deletedForDays * dayMs)));
 
 /** The sheet from far off. The address names the version, so the browser may keep each picture for good. */
 function Thumbnail({ design, canOpen }: { readonly design: DesignSummary; readonly canOpen: boolean }) {

@@ -16,6 +16,7 @@ export interface EngagementActions {
   readonly onArchiveEngagement: (engagement: Engagement, archived: boolean) => void;
   readonly onRenameDesign: (design: DesignSummary) => void;
   readonly onArchiveDesign: (design: DesignSummary, archived: boolean) => void;
+  readonly onDeleteDesign: (design: DesignSummary) => void;
 }
 
 interface EngagementRowProps extends EngagementActions {
@@ -113,6 +114,8 @@ function designActions(
       label: archived ? 'Restore' : 'Archive',
       onSelect: () => ask.onArchiveDesign(design, !archived),
     });
+    if (design.deletedAt === null)
+      actions.push({ label: 'Delete', danger: true, onSelect: () => ask.onDeleteDesign(design) });
   }
   return actions;
 }

@@ -1,13 +1,14 @@
 import { showToast } from '../../components/toast.tsx';
-import type { DesignSummary, Engagement } from '../../contract/designs.ts';
+import { deletedForDays, type DesignSummary, type Engagement } from '../../contract/designs.ts';
 import { useChangeDesign, useChangeEngagement } from './engagements-query.ts';
 
 interface Archiving {
   readonly archiveEngagement: (engagement: Engagement, archived: boolean) => void;
   readonly archiveDesign: (design: DesignSummary, archived: boolean) => void;
+  readonly deleteDesign: (design: DesignSummary) => void;
 }
 
-/** Puts engagements and designs into the archive and takes them out. Nothing is lost, so it is done at once and can be undone. */
+/** Archives, deletes and restores. Nothing is lost for weeks, so it is done at once and can be undone. */
 export function useArchiving(): Archiving {
   const engagements = useChangeEngagement();
   const designs = useChangeDesign();
@@ -35,5 +36,23 @@ export function useArchiving(): Archiving {
       { id: design.id, archived },
       say(design.title, archived, () => archiveDesign(design, !archived)),
     );
-  return { archiveEngagement, archiveDesign };
+  const deleteDesign: Archiving['deleteDesign'] = ({ id, title, archivedAt }) =>
+    designs.mutate(
+      { id, deleted: true },
+      {
+        onSuccess: () =>
+          void showToast({
+            tone: 'done',
+            text: `${title} is deleted. It can be restored for ${deletedForDays} days, under Show archived.`,
+            action: {
+              label: 'Undo',
+              onSelect: () =>
+                designs.mutate(archivedAt === null ? { id, deleted: false } : { id, archived: true }),
+            },
+          }),
+        onError: (error) =>
+          void showToast({ tone: 'failed', text: `${title} was not deleted. ${error.message}` }),
+      },
+    );
+  return { archiveEngagement, archiveDesign, deleteDesign };
 }

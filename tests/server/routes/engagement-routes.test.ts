@@ -203,3 +203,58 @@ describe('designs in an engagement', () => {
     expect(await shown('?archived=true')).toEqual([ids[2], ids[1], ids[0]]);
   });
 });
+
+describe('a deleted design', () => {
+  const day = 24 * 60 * 60 * 1000;
+  const start = new Date('2026-04-01T10:00:00Z');
+  const listedIds = async (query: string) =>
+    (await list(query)).flatMap(({ designs }) => designs).map(({ id }) => id);
+  const deleted = async () => {
+    now = start;
+    const id = await addDesign(application, await addEngagement(application, workspace.id));
+    const { body } = await architect.patch(`/api/designs/${id}`, { deleted: true }).expect(200);
+    expect(body).toMatchObject({ archivedAt: start.toISOString(), deletedAt: start.toISOString() });
+    return id;
+  };
+
+  test('is seen among the archived alone, takes no edits, and comes back whole', async () => {
+    const id = await deleted();
+    expect(await listedIds('')).not.toContain(id);
+    expect(await listedIds('?archived=true')).toContain(id);
+    await architect
+      .post(`/api/designs/${id}/patches`, {
+        baseSequence: 0,
+        edits: [{ editId: crypto.randomUUID(), patch: { meta: { documentType: 'Plan' } } }],
+      })
+      .expect(409);
+    const { body } = await architect.patch(`/api/designs/${id}`, { deleted: false }).expect(200);
+    expect(body).toMatchObject({ archivedAt: null, deletedAt: null });
+    expect(await listedIds('')).toContain(id);
+  });
+
+  test('is gone for good after 30 days, whoever deletes it again meanwhile', async () => {
+    const id = await deleted();
+    now = new Date(start.getTime() + 20 * day);
+    await architect.patch(`/api/designs/${id}`, { deleted: true }).expect(200);
+    now = new Date(start.getTime() + 30 * day);
+    expect(await listedIds('?archived=true')).toContain(id);
+    now = new Date(start.getTime() + 30 * day + 1000);
+    expect(await listedIds('?archived=true')).not.toContain(id);
+    await architect.get(`/api/designs/${id}`).expect(404);
+  });
+
+  test('stays for good once it is archived instead', async () => {
+    const id = await deleted();
+    await architect.patch(`/api/designs/${id}`, { archived: true }).expect(200);
+    now = new Date(start.getTime() + 90 * day);
+    expect(await listedIds('?archived=true')).toContain(id);
+  });
+
+  test('is not both archived and deleted by one request', async () => {
+    const id = await deleted();
+    const { body } = await architect
+      .patch(`/api/designs/${id}`, { archived: false, deleted: true })
+      .expect(400);
+    expect(body).toMatchObject({ details: [{ path: 'deleted' }] });
+  });
+});
