@@ -7,7 +7,7 @@ import { SeverityCounts } from '../../components/severity-mark.tsx';
 import { Stamp } from '../../components/stamp.tsx';
 import { deletedForDays, type DesignSummary } from '../../contract/designs.ts';
 import { classNames } from '../../lib/class-names.ts';
-import { dateAndTime, dayByUtc, dayInWords, relativeTime } from '../../lib/format-time.ts';
+import { dateAndTime, relativeTime } from '../../lib/format-time.ts';
 import { useTheme } from '../../lib/theme.ts';
 import { useNow } from '../../lib/use-now.ts';
 import { designPath } from '../../lib/workspace-path.ts';
@@ -78,7 +78,7 @@ export function DesignCard({ design, canOpen, actions }: DesignCardProps) {
       <div className="flex min-h-31 flex-wrap items-center justify-between gap-x-8 gap-y-4 border-t border-rule-2 bg-field px-9 py-5 text-base">
         {archived ? (
           <span className="text-note text-ink-2">
-            {design.deletedAt === null ? 'Archived' : `Deleted, gone on ${lastDayOf(design.deletedAt)}`}
+            {design.deletedAt === null ? 'Archived' : `Deleted, gone ${lastDayOf(design.deletedAt)}`}
           </span>
         ) : (
           <Stamp state={design.state} />
@@ -90,8 +90,9 @@ export function DesignCard({ design, canOpen, actions }: DesignCardProps) {
 }
 
 const dayMs = 24 * 60 * 60 * 1000;
+const shortDay = new Intl.DateTimeFormat('en-GB', { day: 'numeric', month: 'short' });
 const lastDayOf = (deletedAt: string): string =>
-  dayInWords(dayByUtc(new Date(new Date(deletedAt).getTime() + deletedForDays * dayMs)));
+  shortDay.format(new Date(new Date(deletedAt).getTime() + deletedForDays * dayMs));
 
 /** The sheet from far off. The address names the version, so the browser may keep each picture for good. */
 function Thumbnail({ design, canOpen }: { readonly design: DesignSummary; readonly canOpen: boolean }) {
