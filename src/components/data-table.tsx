@@ -56,7 +56,8 @@ export function DataTable<Row>({
     <div
       ref={box}
       className={classNames(
-        'overflow-auto border border-rule-strong bg-field',
+        // Placed, so that what is said to screen readers alone stays in it and doesn't widen the page.
+        'relative overflow-auto border border-rule-strong bg-field',
         className ?? (isLong && 'max-h-[70dvh]'),
       )}
     >
