@@ -32,7 +32,8 @@ export function LapsedWaivers({
         Lapsed waivers
       </h2>
       <p className="mt-2 mb-10 text-base text-ink-2">
-        These hold no longer, each for the reason given. Waive anew after another look, or withdraw what is not needed.
+        These hold no longer, each for the reason given. Waive anew after another look, or withdraw what is
+        not needed.
       </p>
       <ul className="border border-rule-strong bg-field">
         {lapsed.map((each) => {
