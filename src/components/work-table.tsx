@@ -1,7 +1,7 @@
 import { useMemo, useState, type ReactNode } from 'react';
 import { classNames } from '../lib/class-names.ts';
-import { download } from '../lib/download.ts';
 import { Button } from './button.tsx';
+import { copyCsv } from './copy-csv.ts';
 import { DataTable, type DataTableProps } from './data-table.tsx';
 import { Icon } from './icon.tsx';
 import { Menu } from './menu.tsx';
@@ -15,7 +15,6 @@ import {
   type Column,
   type TableView,
 } from './table-view.ts';
-import { showToast } from './toast.tsx';
 
 interface WorkTableProps<Row> extends Omit<DataTableProps<Row>, 'sorted' | 'className'> {
   /** What the filter looks for, such as 'Segment, VLAN or subnet'; without it there is none. */
@@ -30,28 +29,6 @@ interface WorkTableProps<Row> extends Omit<DataTableProps<Row>, 'sorted' | 'clas
   readonly fill?: boolean;
   readonly className?: string;
 }
-
-const fileNameOf = (caption: string): string =>
-  `${caption
-    .toLowerCase()
-    .replace(/[^a-z0-9]+/g, '-')
-    .replace(/^-|-$/g, '')}.csv`;
-
-/** Puts text on the clipboard; a browser that refuses gets it as a file. */
-const copyOrSave = async (caption: string, text: string, rowCount: number): Promise<void> => {
-  const rows = rowCount === 1 ? '1 row' : `${rowCount} rows`;
-  try {
-    await navigator.clipboard.writeText(text);
-    showToast({ tone: 'done', text: `${rows} copied as CSV.` });
-  } catch {
-    const name = fileNameOf(caption);
-    download(name, new Blob([text], { type: 'text/csv' }));
-    showToast({
-      tone: 'done',
-      text: `The browser keeps its clipboard to itself here: ${rows} saved as ${name}.`,
-    });
-  }
-};
 
 /** A table to work with: narrowed by a filter, sorted, its columns chosen, copied as CSV as it is shown. */
 export function WorkTable<Row>({
@@ -98,7 +75,7 @@ export function WorkTable<Row>({
             small
             disabled={found.length === 0}
             onClick={() =>
-              void copyOrSave(
+              void copyCsv(
                 table.caption,
                 rowsAsCsv(shownColumns, rowsSorted(found, columns, sorting)),
                 found.length,
