@@ -61,7 +61,7 @@ export function BarCell({
       )}
     >
       <span className="text-label text-ink-3">{label}</span>
-      <span className="flex min-h-18 items-center gap-6 text-base font-semibold whitespace-nowrap text-ink">
+      <span className="flex min-h-18 min-w-0 items-center gap-6 text-base font-semibold whitespace-nowrap text-ink">
         {children}
       </span>
     </div>

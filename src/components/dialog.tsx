@@ -68,8 +68,13 @@ export function Dialog({
               opener.current = document.activeElement;
               focusFirstField(event);
             }}
-            onCloseAutoFocus={() => {
-              if (opener.current instanceof HTMLElement) opener.current.focus();
+            onCloseAutoFocus={(event) => {
+              const back = opener.current;
+              if (!(back instanceof HTMLElement)) return;
+              // Opened with the page itself, or by what has gone since: the page's content is the place to go on.
+              const gone = back === document.body || !back.isConnected;
+              event.preventDefault();
+              (gone ? document.getElementById('main') : back)?.focus({ preventScroll: gone });
             }}
             {...(description === undefined ? { 'aria-describedby': undefined } : {})}
           >

@@ -80,7 +80,7 @@ export function ToastRegion() {
           )}
         </Primitive.Root>
       ))}
-      <Primitive.Viewport className="fixed bottom-14 left-14 z-60 flex w-390 max-w-[calc(100vw-28px)] flex-col gap-8 outline-none" />
+      <Primitive.Viewport className="fixed bottom-46 left-14 z-60 md:left-168 flex w-390 max-w-[calc(100vw-28px)] flex-col gap-8 outline-none" />
     </Primitive.Provider>
   );
 }

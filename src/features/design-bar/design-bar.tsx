@@ -35,7 +35,7 @@ export function DesignBar({ engagementName, workspaceId, summary }: DesignBarPro
           {engagementName}
         </Link>
       </BarCell>
-      <BarCell label="Design" className="min-w-0 shrink">
+      <BarCell label="Design" className="shrink!">
         <span className="max-w-260 truncate">{title}</span>
       </BarCell>
       <BarCell label="Revision" className="max-xl:hidden">

@@ -75,21 +75,23 @@ export function FindingRow({
           </span>
           <Icon name={open ? 'chevron-up' : 'chevron-down'} size={13} />
         </button>
-        <div className="flex w-198 shrink-0 items-center py-3 pr-12 max-md:hidden">
-          {canFix && !isWaived && firstFix !== undefined && (
-            <Button
-              kind="accent"
-              small
-              className="h-auto! min-h-24 w-full py-2 whitespace-normal!"
-              title={firstFix.sentence}
-              onClick={() => onApplyFix(firstFix.id)}
-              {...previewHandlers(firstFix, onPreviewFix)}
-            >
-              {/* Never cut: an address or a number that is half shown is worse than a second line. */}
-              <span className="min-w-0 break-words">{firstFix.label}</span>
-            </Button>
-          )}
-        </div>
+        {canFix && (
+          <div className="flex w-198 shrink-0 items-center py-3 pr-12 max-md:hidden">
+            {!isWaived && firstFix !== undefined && (
+              <Button
+                kind="accent"
+                small
+                className="h-auto! min-h-24 w-full py-2 whitespace-normal!"
+                title={firstFix.sentence}
+                onClick={() => onApplyFix(firstFix.id)}
+                {...previewHandlers(firstFix, onPreviewFix)}
+              >
+                {/* Never cut: an address or a number that is half shown is worse than a second line. */}
+                <span className="min-w-0 break-words">{firstFix.label}</span>
+              </Button>
+            )}
+          </div>
+        )}
       </div>
       {open && (
         <FindingDetails

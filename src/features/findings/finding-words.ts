@@ -23,9 +23,9 @@ const elementsOf = (design: Design, finding: Finding): string => {
 };
 
 /** The zones of the sheet that a finding's elements lie in: one, or the first and the last. */
-const zoneOfFinding = (geometry: SheetGeometry, finding: Finding): string | undefined => {
+const zoneOfFinding = (geometry: SheetGeometry, finding: Finding, design: Design): string | undefined => {
   const zones = finding.elements
-    .flatMap((ref) => anchorOf(geometry, ref) ?? [])
+    .flatMap((ref) => anchorOf(geometry, ref, design) ?? [])
     .map((at) => zoneOf(geometry.sheet, at))
     .sort();
   const [first, last] = [zones[0], zones.at(-1)];
@@ -48,7 +48,7 @@ export const findingItem = (
   fixes: readonly Fix[] | undefined,
   waiver?: Waiver,
 ): FindingItem => {
-  const zone = zoneOfFinding(geometry, finding);
+  const zone = zoneOfFinding(geometry, finding, design);
   return {
     key: finding.key,
     number,

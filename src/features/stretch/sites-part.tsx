@@ -24,7 +24,6 @@ export function SitesPart({ form, problems, onChange }: FormPartProps) {
         .slice(0, MOST_SITES - sites.length)
         .reduce((so, name) => withSites(so, [...so.sites, nextSite(so, name)]), form),
     );
-    setSeveral(false);
   };
   return (
     <FormPart
