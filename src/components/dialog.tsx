@@ -71,10 +71,11 @@ export function Dialog({
             onCloseAutoFocus={(event) => {
               const back = opener.current;
               if (!(back instanceof HTMLElement)) return;
-              // Opened with the page itself, or by what has gone since: the page's content is the place to go on.
-              const gone = back === document.body || !back.isConnected;
               event.preventDefault();
-              (gone ? document.getElementById('main') : back)?.focus({ preventScroll: gone });
+              back.focus();
+              // Opened with the page itself, or by what is gone or idle since: one goes on at the page's content.
+              if (back === document.body || document.activeElement !== back)
+                document.getElementById('main')?.focus({ preventScroll: true });
             }}
             {...(description === undefined ? { 'aria-describedby': undefined } : {})}
           >

@@ -38,6 +38,35 @@ describe('a dialog', () => {
     await waitFor(() => expect(screen.getByRole('button', { name: 'Name it' })).toHaveFocus());
   });
 
+  test('leads to the content of the page when what opened it can’t take the focus back', async () => {
+    function Applying() {
+      const [open, setOpen] = useState(false);
+      const [done, setDone] = useState(false);
+      return (
+        <main id="main" tabIndex={-1}>
+          <Button disabled={done} onClick={() => setOpen(true)}>
+            Apply…
+          </Button>
+          <Dialog open={open} onOpenChange={setOpen} title="Apply">
+            <Button
+              onClick={() => {
+                setDone(true);
+                setOpen(false);
+              }}
+            >
+              Apply all
+            </Button>
+          </Dialog>
+        </main>
+      );
+    }
+    const user = userEvent.setup();
+    render(<Applying />);
+    await user.click(screen.getByRole('button', { name: 'Apply…' }));
+    await user.click(screen.getByRole('button', { name: 'Apply all' }));
+    await waitFor(() => expect(screen.getByRole('main')).toHaveFocus());
+  });
+
   test('keeps the focus inside while it is open', async () => {
     const user = userEvent.setup();
     render(<Naming />);

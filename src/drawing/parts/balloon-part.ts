@@ -116,7 +116,7 @@ export const balloonParts = (geometry: SheetGeometry, facts: DrawingFacts, look:
     const balloon = balloons.find(({ number }) => number === place.number);
     if (balloon === undefined) return [];
     const { words: _words, ...rest } = balloon;
-    const words = wordsOf(balloon);
+    const words = place.words?.text;
     return [
       group(
         balloonMark(

@@ -70,9 +70,39 @@ const candidate = (
   });
 };
 
+const places = (anchor: BalloonAnchor, scale: number): readonly Candidate[] =>
+  distances.flatMap((distance) =>
+    directions.flatMap((angle) => candidate(anchor, distance * scale, angle, scale)),
+  );
+
+const cheapest = (candidates: readonly Candidate[], costOf: (c: Candidate) => number): Candidate => {
+  let best = candidates[0]!;
+  let cost = costOf(best);
+  for (const c of candidates) {
+    const now = costOf(c);
+    if (now >= cost - 1e-9) continue;
+    cost = now;
+    best = c;
+  }
+  return best;
+};
+
+/** A balloon whose words would cover something goes without them where that covers less: the list has them too. */
+const withoutWordsInTheWay = (
+  best: Candidate,
+  { number, at }: BalloonAnchor,
+  scale: number,
+  costOf: (c: Candidate) => number,
+): Candidate => {
+  const cost = costOf(best);
+  if (best.words === undefined || cost < freePlaceCost) return best;
+  const bare = cheapest(places({ number, at }, scale), costOf);
+  return costOf(bare) < cost - freePlaceCost / 2 ? bare : best;
+};
+
 /**
  * Where balloons float and their leaders run: near their anchors, off plates, labels and one another, across as few
- * cords as can be. In the order of their numbers. A balloon that had a place before keeps it while that is still free.
+ * cords as can be, without their words where only those are in the way. In the order of their numbers. A balloon that had a place before keeps it while that is still free.
  */
 export const placeBalloons = (
   geometry: SheetGeometry,
@@ -87,9 +117,7 @@ export const placeBalloons = (
       const was = kept.get(anchor.number);
       const near = crowdNear(crowd, anchor.at);
       const costOf = ({ centre, box }: Candidate): number => calloutCost(near, anchor.at, centre, box);
-      const candidates = distances.flatMap((distance) =>
-        directions.flatMap((angle) => candidate(anchor, distance * scale, angle, scale)),
-      );
+      const candidates = places(anchor, scale);
       const same =
         was !== undefined && was.anchor.x === anchor.at.x && was.anchor.y === anchor.at.y
           ? candidates.find(
@@ -100,16 +128,8 @@ export const placeBalloons = (
                 costOf(c) < freePlaceCost,
             )
           : undefined;
-      let best = same;
-      let cost = Infinity;
-      if (best === undefined)
-        for (const c of candidates) {
-          const now = costOf(c);
-          if (now >= cost - 1e-9) continue;
-          cost = now;
-          best = c;
-        }
-      const { centre, box, words } = best!;
+      const best = same ?? cheapest(candidates, costOf);
+      const { centre, box, words } = withoutWordsInTheWay(best, anchor, scale, costOf);
       crowd = joinedBy(crowd, { box, leader: [anchor.at, centre] });
       return { number: anchor.number, anchor: anchor.at, centre, ...(words === undefined ? {} : { words }) };
     });

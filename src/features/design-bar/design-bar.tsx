@@ -35,7 +35,7 @@ export function DesignBar({ engagementName, workspaceId, summary }: DesignBarPro
           {engagementName}
         </Link>
       </BarCell>
-      <BarCell label="Design" className="shrink!">
+      <BarCell label="Design" className="min-w-78! shrink!">
         <span className="max-w-260 truncate">{title}</span>
       </BarCell>
       <BarCell label="Revision" className="max-xl:hidden">
@@ -48,7 +48,7 @@ export function DesignBar({ engagementName, workspaceId, summary }: DesignBarPro
       <div className="flex shrink-0 items-center pl-8 md:hidden">
         <PagesMenu pages={pages} />
       </div>
-      <div className="ml-auto flex shrink-0 items-center gap-4 pl-8">{editable && <Travel />}</div>
+      <div className="ml-auto flex shrink-0 items-center gap-4 not-empty:pl-8">{editable && <Travel />}</div>
     </BarContents>
   );
 }

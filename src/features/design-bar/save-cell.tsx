@@ -12,7 +12,12 @@ export function SaveCell() {
   const open = useOpenDesign();
   const save = useOpenState((state) => state.save);
   const editable = useOpenState((state) => state.editable);
-  if (!editable) return <BarCell label="Access">Read only</BarCell>;
+  if (!editable)
+    return (
+      <BarCell label="Access" className="max-md:hidden">
+        Read only
+      </BarCell>
+    );
   return (
     <BarCell label={save.kind === 'saved' ? 'Saved' : 'Not saved yet'}>
       <span role="status" className="flex items-center gap-6">

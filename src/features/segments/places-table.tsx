@@ -88,7 +88,7 @@ export function PlacesTable({ rows }: { readonly rows: readonly PlaceRow[] }) {
   return (
     <WorkTable
       view={useTableView('places')}
-      filterLabel="Segment, site, VLAN or subnet"
+      filterLabel="Segment, site or VLAN"
       caption="Where the segments land"
       columns={columns}
       rows={rows}

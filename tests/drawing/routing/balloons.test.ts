@@ -99,6 +99,20 @@ describe('placeBalloons', () => {
       }
     });
   });
+  it('leaves out words that would cover something at the size they are read at from afar', () => {
+    const scale = 1.45;
+    const spoken = anchors.map(({ number, at }) => ({
+      number,
+      at,
+      words: 'cannot carry any of its segments',
+    }));
+    const placed = placeBalloons(geometry, spoken, { scale });
+    expect(placed.some(({ words }) => words === undefined)).toBe(true);
+    for (const { words } of placed)
+      if (words !== undefined)
+        for (const device of geometry.devices)
+          for (const plate of device.plates) expect(meets(words.rect, plate.rect)).toBe(false);
+  });
   it('does not depend on the order in which findings come', () => {
     expect(placeBalloons(geometry, [...anchors].reverse())).toEqual(placeBalloons(geometry, anchors));
   });
