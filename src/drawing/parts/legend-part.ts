@@ -1,4 +1,5 @@
 import type { Rect, SheetFrame } from '../geometry.ts';
+import { legendColumns } from '../routing/sheet-frame.ts';
 import type { Shape } from '../shape.ts';
 import { group, shape } from '../shape.ts';
 import { fitText } from '../text-width.ts';
@@ -52,8 +53,8 @@ const rules = (ys: readonly number[], rect: Rect): Shape => ({
   key: 'rules',
 });
 
-const table = (segments: readonly SegmentFacts[], rect: Rect): readonly Shape[] => {
-  const rowPx = (rect.height - headerPx) / Math.max(3, segments.length);
+const table = (segments: readonly SegmentFacts[], rect: Rect, rows: number): readonly Shape[] => {
+  const rowPx = (rect.height - headerPx) / Math.max(3, rows);
   const heads = Object.entries({
     cord: 'Cord',
     name: 'Segment',
@@ -126,8 +127,8 @@ const table = (segments: readonly SegmentFacts[], rect: Rect): readonly Shape[] 
   ];
 };
 
-const briefTable = (segments: readonly SegmentFacts[], rect: Rect): readonly Shape[] => {
-  const rowPx = rect.height / Math.max(3, segments.length);
+const briefTable = (segments: readonly SegmentFacts[], rect: Rect, rows: number): readonly Shape[] => {
+  const rowPx = rect.height / Math.max(3, rows);
   const square = Math.min(28, rowPx * 0.76);
   const sizePx = Math.min(21, rowPx * 0.62);
   return [
@@ -171,6 +172,28 @@ const letters = (segments: readonly SegmentFacts[], rect: Rect): readonly Shape[
   }));
 };
 
+/** A table of segments in as many columns as the legend is wide. */
+const inColumns = (
+  sheet: SheetFrame,
+  segments: readonly SegmentFacts[],
+  draw: typeof table,
+): readonly Shape[] => {
+  const columns = legendColumns(sheet);
+  const rows = Math.ceil(segments.length / columns);
+  if (columns === 1) return draw(segments, sheet.legend, rows);
+  const width = sheet.legend.width / columns;
+  return Array.from({ length: columns }, (_, i) =>
+    group(
+      draw(
+        segments.slice(i * rows, (i + 1) * rows),
+        { ...sheet.legend, x: sheet.legend.x + i * width, width },
+        rows,
+      ),
+      { key: `column ${i + 1}` },
+    ),
+  );
+};
+
 /** The legend of segments at the bottom left of the frame; nothing while a design has none. */
 export const legendPart = (sheet: SheetFrame, segments: readonly SegmentFacts[], level: Level): Shape => {
   const rect = sheet.legend;
@@ -179,8 +202,8 @@ export const legendPart = (sheet: SheetFrame, segments: readonly SegmentFacts[],
     level === 'far'
       ? letters(segments, rect)
       : level === 'plan'
-        ? briefTable(segments, rect)
-        : table(segments, rect);
+        ? inColumns(sheet, segments, briefTable)
+        : inColumns(sheet, segments, table);
   return group(
     [
       { ...shape('rect', { ...rect, fill: paint('paper') }), key: 'ground' },

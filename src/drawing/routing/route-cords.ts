@@ -14,6 +14,8 @@ const mostRipUps = 6;
 const mostIdleRipUps = 2;
 const mostWidenings = 3;
 const bandToFrame = 20;
+/** Where more cords need a search, bands are measured without them. */
+const mostMeasuredSearches = 40;
 
 export interface RoutedCords {
   readonly ways: readonly Way[];
@@ -172,8 +174,11 @@ const lessBound = (
 };
 
 /** How wide each band rectangle has to be for the plain ways of these cords, by `transport x y` of the rectangle. */
-export const bandNeeds = (ground: Ground, cords: readonly Cord[]): ReadonlyMap<string, number> =>
-  settleTracks(ground, firstWays(ground, cords, new Map(), new Map())).needs;
+export const bandNeeds = (ground: Ground, cords: readonly Cord[]): ReadonlyMap<string, number> => {
+  const plain = cords.filter((cord) => patternWay(ground, cord) !== undefined);
+  const measured = cords.length - plain.length > mostMeasuredSearches ? plain : cords;
+  return settleTracks(ground, firstWays(ground, measured, new Map(), new Map())).needs;
+};
 
 /**
  * A way for every cord. Where some overlap or run into an obstacle, the less bound ones are taken up and searched anew,

@@ -1,5 +1,5 @@
 import type { SheetSize } from '../../engine/model/layout.ts';
-import type { Point, SheetFrame } from '../geometry.ts';
+import type { Point, Rect, SheetFrame } from '../geometry.ts';
 import { clamp } from './rects.ts';
 
 // ISO 216 proportions at one scale for all sizes: A3 landscape is 1280 px wide.
@@ -19,12 +19,28 @@ const zones: { readonly [size in SheetSize]: { readonly columns: number; readonl
 
 const titleBlock = { width: 486, height: 114 };
 const legend = { width: 572, height: 114, header: 25, leastRow: 22.25 };
+/** Share of the frame's height from which the legend goes on in another column, while there is room for one. */
+const mostLegendShare = 0.4;
+
+const legendSize = (frame: Rect, segments: number): { readonly width: number; readonly height: number } => {
+  const rowsPerColumn = Math.floor((mostLegendShare * frame.height - legend.header) / legend.leastRow);
+  const room = Math.floor((frame.width - titleBlock.width) / legend.width);
+  const columns = clamp(Math.ceil(segments / rowsPerColumn), 1, Math.max(1, room));
+  const rows = Math.ceil(segments / columns);
+  return {
+    width: columns * legend.width,
+    height: Math.max(legend.height, legend.header + legend.leastRow * rows),
+  };
+};
+
+/** How many columns of segments stand side by side in the legend. */
+export const legendColumns = (sheet: SheetFrame): number => Math.round(sheet.legend.width / legend.width);
 
 /** Where the frame, the zones, the title block and the legend of a sheet lie; the legend grows with its segments. */
 export const sheetFrame = (size: SheetSize, segments: number): SheetFrame => {
   const { width, height } = extents[size];
   const frame = { x: 32, y: 30, width: width - 62, height: height - 58 };
-  const legendHeight = Math.max(legend.height, legend.header + legend.leastRow * segments);
+  const grown = legendSize(frame, segments);
   const foot = frame.y + frame.height;
   return {
     size,
@@ -37,7 +53,7 @@ export const sheetFrame = (size: SheetSize, segments: number): SheetFrame => {
       y: foot - titleBlock.height,
       ...titleBlock,
     },
-    legend: { x: frame.x, y: foot - legendHeight, width: legend.width, height: legendHeight },
+    legend: { x: frame.x, y: foot - grown.height, ...grown },
   };
 };
 

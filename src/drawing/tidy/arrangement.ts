@@ -60,6 +60,8 @@ export interface ArrangementOptions {
   readonly hubDown?: number;
   /** Columns begin at the top of their room instead of in its middle, so that the bands have room for words below. */
   readonly lifted?: boolean;
+  /** The sheet may be too narrow, not too low. */
+  readonly wide?: boolean;
   /** Answer even when the sheet is too small. */
   readonly force?: boolean;
 }
@@ -128,7 +130,7 @@ export const arrange = (options: ArrangementOptions): Arrangement | undefined =>
   const spareWidth = sheet.frame.width - 2 * spacing.margin - solid - gutters * spacing.gutter;
   const all = [...columns, ...further];
   const tooHigh = all.some((column) => column.height > room);
-  if ((tooHigh || spareWidth < 0) && options.force !== true) return undefined;
+  if ((tooHigh || (spareWidth < 0 && options.wide !== true)) && options.force !== true) return undefined;
   // Gutters and both margins share what is left.
   const gutter = Math.min(
     spacing.widestGutter,

@@ -10,8 +10,13 @@ import type { RoutedSheet } from '../routing/route.ts';
 const mostTrials = 240;
 const mostJackets = 60;
 
+export interface Score {
+  readonly total: number;
+  readonly steps: number;
+}
+
 /** How far a routed sheet is from a clean one; 0 is clean. `steps` counts only what moving columns can mend. */
-export const scoreOf = ({ cords }: RoutedSheet): { readonly total: number; readonly steps: number } => {
+export const scoreOf = ({ cords }: RoutedSheet): Score => {
   const { crossings, overlaps, tracked, ways } = cords;
   const skewed = crossings.filter(({ under, over, at }) =>
     [under, over].some(({ way, run }) => {

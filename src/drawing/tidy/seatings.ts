@@ -31,6 +31,9 @@ const chunks = (
   return result;
 };
 
+/** Up to so many limbs a walk may go to and fro between all columns. */
+export const mostMixedLimbs = 4;
+
 const around = (hub: string, others: readonly string[]): readonly string[] => {
   const above = Math.floor(others.length / 2);
   return [...others.slice(0, above), hub, ...others.slice(above)];
@@ -86,6 +89,19 @@ export const seatings = (
     });
     result.push(seat(spread));
     return result;
+  }
+  if (limbs > mostMixedLimbs) {
+    // In so many columns neighbours stay close only where each limb takes its sites from one stretch of the walk.
+    const far = empty();
+    chunks(free, limbs, heightOf, 2 * room, []).forEach((chunk, limb) => {
+      const filled = [0, 0] as [number, number];
+      for (const site of chunk) {
+        const column = filled[0] <= filled[1] + 0.5 ? 0 : 1;
+        far[2 * limb + column]!.push(site);
+        filled[column] += heightOf(site);
+      }
+    });
+    return [seat(far)];
   }
   const columns = empty();
   const heights = columns.map(() => 0);

@@ -6,19 +6,19 @@ import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { band as bandSizes, lane, spacings } from '../parts/sizes.ts';
 import type { Spacing } from '../parts/sizes.ts';
 import type { Bundle } from '../routing/bundles.ts';
-import { otherEnd } from '../routing/bundles.ts';
+import { bundlesOf, otherEnd } from '../routing/bundles.ts';
 import type { FurnishedSheet } from '../routing/furnish.ts';
 import { cordsOf, furnish } from '../routing/furnish.ts';
 import { bandNeeds } from '../routing/route-cords.ts';
 import { route, routeSheetOnce } from '../routing/route.ts';
-import type { RoutedSheet } from '../routing/route.ts';
 import { sheetFrame } from '../routing/sheet-frame.ts';
-import type { Arrangement, Seating } from './arrangement.ts';
+import type { Arrangement, BandWidths, Seating } from './arrangement.ts';
 import { layoutOf } from './arranged-layout.ts';
 import { arrange } from './arrangement.ts';
 import { siteBlocks } from './site-blocks.ts';
 import { refine, scoreOf } from './refine.ts';
-import { seatings } from './seatings.ts';
+import type { Score } from './refine.ts';
+import { mostMixedLimbs, seatings } from './seatings.ts';
 import type { SiteLayout } from './site-layout.ts';
 import { siteGraphFacts } from './site-graph.ts';
 
@@ -27,8 +27,10 @@ export interface TidyOptions {
   readonly siteLayouts?: { readonly [site: string]: SiteLayout };
 }
 
-const mostLimbs = 4;
 const mostWidthRounds = 4;
+const widestWhenFull = 340;
+/** Of designs with more cords the first arrangement that fits is taken, without a look at how the others route. */
+const mostCompared = 120;
 /** Steps in px by which right columns may be moved, so that runs of both sides don't meet. */
 const staggers = [16, -16, 24, -24, 32, -32, 44, -44, 58, -58];
 
@@ -37,8 +39,31 @@ interface Tidied {
   readonly arrangement: Arrangement;
   readonly spacing: Spacing;
   readonly stagger: number;
-  readonly routed: RoutedSheet;
+  /** How far it is from clean, routed when first asked. */
+  readonly score: () => Score;
 }
+
+const once = <T>(work: () => T): (() => T) => {
+  let done: { readonly value: T } | undefined;
+  return () => (done ??= { value: work() }).value;
+};
+
+/** What each transport's cords need, where that is more than before. */
+const widerThan = (widths: BandWidths, furnished: FurnishedSheet): BandWidths => {
+  const wider = new Map(widths);
+  const cords = cordsOf(furnished, () => lane.pitch);
+  for (const [key, need] of bandNeeds(furnished.ground, cords)) {
+    const transport = key.slice(0, key.lastIndexOf(' ', key.lastIndexOf(' ') - 1));
+    if (need > (wider.get(transport) ?? 0)) wider.set(transport, Math.ceil(need / 2) * 2);
+  }
+  return wider;
+};
+
+const isSettled = (needed: BandWidths, { bands }: Arrangement): boolean =>
+  [...needed].every(([transport, width]) => {
+    const laid = bands.get(transport);
+    return laid === undefined || width <= laid.limbs[0]!.width + 0.5;
+  });
 
 /** The design with another layout. */
 const withLayout = (design: Design, layout: Layout): Design => ({ ...design, layout });
@@ -64,11 +89,10 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
     spacing: Spacing,
     seating: Seating,
     stagger: number,
-    force: boolean,
     lifted = false,
   ): Tidied | undefined => {
     const { blockOf, collapsed } = blocks.get(spacing)!;
-    let widths = new Map<string, number>();
+    let widths: ReadonlyMap<string, number> = new Map();
     for (let round = 0; ; round += 1) {
       const lay = (hubDown: number) => {
         const arrangement = arrange({
@@ -82,7 +106,6 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
           stagger,
           hubDown,
           lifted,
-          force,
         });
         if (arrangement === undefined) return undefined;
         const layout = layoutOf(design, arrangement, blockOf, collapsed);
@@ -93,40 +116,25 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
       const bend = facts.hub === undefined ? 0 : leastBend(facts.hub, centred.furnished);
       const { arrangement, layout, furnished } = (bend === 0 ? undefined : lay(bend)) ?? centred;
       const laidOut = withLayout(design, layout);
-      const wider = new Map(widths);
-      for (const [key, need] of bandNeeds(
-        furnished.ground,
-        cordsOf(furnished, () => lane.pitch),
-      )) {
-        const transport = key.slice(0, key.lastIndexOf(' ', key.lastIndexOf(' ') - 1));
-        if (need > (wider.get(transport) ?? 0)) wider.set(transport, Math.ceil(need / 2) * 2);
-      }
-      const settled = [...wider].every(([t, w]) => {
-        const laid = arrangement.bands.get(t);
-        return laid === undefined || w <= laid.limbs[0]!.width + 0.5;
-      });
-      if (settled || round === mostWidthRounds - 1)
-        return { layout, arrangement, spacing, stagger, routed: routeSheetOnce(laidOut) };
+      const wider = widerThan(widths, furnished);
+      if (isSettled(wider, arrangement) || round === mostWidthRounds - 1)
+        return { layout, arrangement, spacing, stagger, score: once(() => scoreOf(routeSheetOnce(laidOut))) };
       widths = wider;
     }
   };
 
+  const isCompared = bundlesOf(design).length <= mostCompared;
   /** The best of a seating's arrangements on one sheet: as it comes, or with the right columns moved a little. */
-  const bestOf = (
-    size: SheetSize,
-    spacing: Spacing,
-    seating: Seating,
-    force: boolean,
-  ): Tidied | undefined => {
-    const plain = attempt(size, spacing, seating, 0, force);
+  const bestOf = (size: SheetSize, spacing: Spacing, seating: Seating): Tidied | undefined => {
+    const plain = attempt(size, spacing, seating, 0);
     // Where snug needs more than that to be clean, the next sheet is the better answer.
-    if (spacing === spacings.snug && !force) return plain;
-    if (plain !== undefined && (force || scoreOf(plain.routed).steps === 0)) return plain;
-    const candidates = staggers.flatMap((stagger) => attempt(size, spacing, seating, stagger, false) ?? []);
+    if (spacing === spacings.snug || (plain !== undefined && !isCompared)) return plain;
+    if (plain !== undefined && plain.score().steps === 0) return plain;
+    if (!isCompared) return undefined;
+    const candidates = staggers.flatMap((stagger) => attempt(size, spacing, seating, stagger) ?? []);
     if (plain !== undefined) candidates.unshift(plain);
     return candidates.reduce<Tidied | undefined>(
-      (best, next) =>
-        best === undefined || scoreOf(next.routed).total < scoreOf(best.routed).total ? next : best,
+      (best, next) => (best === undefined || next.score().total < best.score().total ? next : best),
       undefined,
     );
   };
@@ -136,29 +144,65 @@ export const tidy = (design: Design, options: TidyOptions = {}): MergePatch => {
   const withRoomForWords = (tidied: Tidied): Tidied => {
     if (wordless(tidied) === 0) return tidied;
     const { size, seating } = tidied.arrangement;
-    const lifted = attempt(size, tidied.spacing, seating, tidied.stagger, false, true);
+    const lifted = attempt(size, tidied.spacing, seating, tidied.stagger, true);
     const isBetter =
       lifted !== undefined &&
       wordless(lifted) < wordless(tidied) &&
-      scoreOf(lifted.routed).total <= scoreOf(tidied.routed).total;
+      lifted.score().total <= tidied.score().total;
     return isBetter ? lifted : tidied;
   };
-  const find = (): Tidied => {
+  /** More than the largest sheet holds: as many limbs as keep the columns to its height, so that only its width is passed. */
+  const overflowing = (): Layout => {
+    const size = sheetSizes.at(-1)!;
+    const { blockOf, collapsed } = blocks.get(spacings.snug)!;
+    let limbs = mostMixedLimbs;
+    let widths: ReadonlyMap<string, number> = new Map();
+    for (let round = 0; ;) {
+      const room = roomOn(design, size, limbs) - Math.max(0, ...widths.values());
+      const seating = seatings(facts, limbs, heightOf, room).at(-1)!;
+      const options = { design, facts, size, seating, spacing: spacings.snug, blockOf, widths };
+      const low = arrange({ ...options, wide: true });
+      if (low === undefined && limbs < facts.order.length) {
+        limbs += 1;
+        continue;
+      }
+      const arrangement = low ?? arrange({ ...options, force: true })!;
+      const layout = layoutOf(design, arrangement, blockOf, collapsed);
+      round += 1;
+      if (round === mostWidthRounds) return layout;
+      // Bands may take only so much of the height; beyond that their cords lie closer.
+      const wider = new Map(
+        [...widerThan(widths, furnish(withLayout(design, layout)))].map(([transport, width]) => [
+          transport,
+          Math.min(width, widestWhenFull),
+        ]),
+      );
+      if (isSettled(wider, arrangement)) return layout;
+      widths = wider;
+    }
+  };
+  const find = (): Tidied | undefined => {
     for (const size of sheetSizes)
       for (const spacing of [spacings.roomy, spacings.snug])
-        for (let limbs = 1; limbs <= mostLimbs; limbs += 1)
+        for (let limbs = 1; limbs <= mostMixedLimbs; limbs += 1)
           for (const seating of seatings(facts, limbs, heightOf, roomOn(design, size, limbs))) {
-            const tidied = bestOf(size, spacing, seating, false);
+            const tidied = bestOf(size, spacing, seating);
             // Snug never costs clearances: where it does, the next sheet is better.
-            if (tidied !== undefined && (spacing === spacings.roomy || scoreOf(tidied.routed).steps === 0))
+            if (
+              tidied !== undefined &&
+              (!isCompared || spacing === spacings.roomy || tidied.score().steps === 0)
+            )
               return tidied;
           }
-    const last = sheetSizes.at(-1)!;
-    const seating = seatings(facts, mostLimbs, heightOf, roomOn(design, last, mostLimbs)).at(-1)!;
-    return bestOf(last, spacings.snug, seating, true)!;
+    return undefined;
   };
   const best = find();
-  const layout = refine(design, withRoomForWords(best).layout);
+  const layout =
+    best === undefined
+      ? overflowing()
+      : isCompared
+        ? refine(design, withRoomForWords(best).layout)
+        : best.layout;
   return diffPatch({ layout: design.layout }, { layout });
 };
 
