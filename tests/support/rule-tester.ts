@@ -124,8 +124,6 @@ const sourcesOfIndex: { readonly [F in Exclude<keyof Network, 'design'>]: readon
   circuitsByPort: ['forwarders'],
   circuitsByPortVlan: ['forwarders'],
   segmentsBySiteVlan: ['segments'],
-  portGroups: ['devices', 'links'],
-  portGroupByPlug: ['devices', 'links'],
   portGroupsByDevice: ['devices', 'links'],
   bundles: ['devices', 'links'],
   bundleByCable: ['devices', 'links'],

@@ -2,7 +2,7 @@ import type { Id } from '../model/scalars.ts';
 import type { Tags } from '../network/frame-tags.ts';
 import { accessVlan, isTrunk, untagged } from '../network/frame-tags.ts';
 import type { Network } from '../network/network.ts';
-import { entryOf, perNetwork, siteVlanKey } from '../network/network.ts';
+import { perNetwork } from '../network/network.ts';
 import type { ForwarderPlace, SwitchPlace } from './places.ts';
 import { placesOf } from './places.ts';
 
@@ -23,24 +23,31 @@ export interface Entrances {
 type Circuits = Entrances['circuits'][number][];
 type AccessPorts = Entrances['accessPorts'][number][];
 
-const put = <V>(lists: Map<string, V[]>, key: string, value: V): void => {
+const put = <V>(lists: Map<number, V[]>, key: number, value: V): void => {
   const list = lists.get(key);
   if (list === undefined) lists.set(key, [value]);
   else list.push(value);
 };
 
-const tables = perNetwork((network) => {
-  const switches = new Map<Id, SwitchPlace[]>();
-  const accessPorts = new Map<string, AccessPorts>();
-  const circuits = new Map<string, Circuits>();
-  const wholePorts = new Map<Id, Circuits>();
-  for (const place of placesOf(network).all) {
-    const { site } = entryOf(network.design.devices, place.device);
+interface SiteEntrances {
+  readonly switches: readonly SwitchPlace[];
+  readonly accessPorts: ReadonlyMap<number, AccessPorts>;
+  readonly circuits: ReadonlyMap<number, Circuits>;
+  /** Circuits that claim every VLAN. */
+  readonly wholePorts: Circuits;
+}
+
+const entrancesOfSite = (network: Network, site: Id): SiteEntrances => {
+  const switches: SwitchPlace[] = [];
+  const accessPorts = new Map<number, AccessPorts>();
+  const circuits = new Map<number, Circuits>();
+  const wholePorts: Circuits = [];
+  const { byDevice } = placesOf(network);
+  for (const place of (network.devicesBySite.get(site) ?? []).flatMap((id) => byDevice.get(id) ?? [])) {
     if (place.kind === 'switch') {
-      put(switches, site, place);
+      switches.push(place);
       place.ports.forEach(({ port }, ordinal) => {
-        if (!isTrunk(port) && port.vlan !== undefined)
-          put(accessPorts, siteVlanKey(site, port.vlan), { place, ordinal });
+        if (!isTrunk(port) && port.vlan !== undefined) put(accessPorts, port.vlan, { place, ordinal });
       });
     }
     if (place.kind === 'forwarder')
@@ -50,24 +57,26 @@ const tables = perNetwork((network) => {
         const isAccess = !isTrunk(circuit.port) && circuit.port.vlan !== undefined;
         const own = accessVlan(circuit.port);
         if (vlans === 'untagged' || (vlans === 'all' && isAccess)) {
-          if (isAccess) put(circuits, siteVlanKey(site, own), { place, ordinal, tags: untagged });
-        } else if (vlans === 'all') put(wholePorts, site, { place, ordinal, tags: untagged });
-        else for (const vlan of vlans) put(circuits, siteVlanKey(site, vlan), { place, ordinal, tags: vlan });
+          if (isAccess) put(circuits, own, { place, ordinal, tags: untagged });
+        } else if (vlans === 'all') wholePorts.push({ place, ordinal, tags: untagged });
+        else for (const vlan of vlans) put(circuits, vlan, { place, ordinal, tags: vlan });
       });
   }
   return { switches, accessPorts, circuits, wholePorts };
-});
+};
+
+// Filled as sites are asked for: few are after an edit.
+const entrancesBySite = perNetwork((_network) => new Map<Id, SiteEntrances>());
 
 /** Where frames of this VLAN of a site come in. */
 export const entrancesAt = (network: Network, site: Id, vlan: number): Entrances => {
-  const { switches, accessPorts, circuits, wholePorts } = tables(network);
-  const key = siteVlanKey(site, vlan);
+  const known = entrancesBySite(network);
+  const entrances = known.get(site) ?? entrancesOfSite(network, site);
+  known.set(site, entrances);
+  const { switches, accessPorts, circuits, wholePorts } = entrances;
   return {
-    switches: switches.get(site) ?? [],
-    accessPorts: accessPorts.get(key) ?? [],
-    circuits: [
-      ...(circuits.get(key) ?? []),
-      ...(wholePorts.get(site) ?? []).map((whole) => ({ ...whole, tags: vlan })),
-    ],
+    switches,
+    accessPorts: accessPorts.get(vlan) ?? [],
+    circuits: [...(circuits.get(vlan) ?? []), ...wholePorts.map((whole) => ({ ...whole, tags: vlan }))],
   };
 };

@@ -9,6 +9,7 @@ import type { Forwarding } from './forwarding.ts';
 import { forwardingOf } from './forwarding.ts';
 import type { Direction, Place } from './places.ts';
 import { floodsTheSame, keptRows } from './kept-rows.ts';
+import { nodeTable } from './node-table.ts';
 import { blockedPorts } from './spanning-tree.ts';
 
 /**
@@ -37,10 +38,29 @@ export interface FloodGraph {
   readonly hasFilters: boolean;
   /** The node of a crossing, or -1. */
   readonly nodeOf: (element: number, direction: Direction, tags: Tags) => number;
+  /** Nodes in which frames start from the place p, each as often as they do: `seeds[seedStart[p]]` up to `seeds[seedStart[p + 1]]`. */
+  readonly seeds: Int32Array;
+  readonly seedStart: Int32Array;
+  /** What of the graph of an earlier version stands in this one. */
+  readonly kept?: KeptGraph;
+}
+
+/** What has been found out by following the edges of an earlier graph stands where it met only nodes that stand. */
+export interface KeptGraph {
+  readonly identity: object;
+  /** By node of the earlier graph: its number now; -1 where it is gone or what follows it may be another. */
+  readonly nodeNow: Int32Array;
+  /** Sites in which frames may start otherwise. */
+  readonly stirredSites: ReadonlySet<Id>;
+  /** Segments whose hosts are others, or elsewhere. */
+  readonly stirredSegments: ReadonlySet<Id>;
 }
 
 /** VLANs that mean something at a site: of its segments, its access ports, trunks' lists and native VLANs, and circuits. */
-const vlansOfSites = (network: Network): ReadonlyMap<Id, readonly number[]> => {
+const vlansOfSites = (
+  network: Network,
+  isWanted: (site: Id) => boolean,
+): ReadonlyMap<Id, readonly number[]> => {
   const { design } = network;
   const bySite = new Map<Id, Set<number>>();
   const at = (site: Id): Set<number> => {
@@ -51,21 +71,25 @@ const vlansOfSites = (network: Network): ReadonlyMap<Id, readonly number[]> => {
     return fresh;
   };
   for (const segment of Object.values(design.segments))
-    for (const [site, { vlan }] of Object.entries(segment.sites)) if (vlan !== undefined) at(site).add(vlan);
-  for (const id of network.deviceIds) {
-    const device = entryOf(design.devices, id);
-    const vlans = at(device.site);
-    if (device.kind === 'switch')
-      for (const port of Object.values(device.ports)) {
-        if (!isTrunk(port)) vlans.add(accessVlan(port));
-        else if (port.nativeVlan !== undefined) vlans.add(port.nativeVlan);
-        if (isTrunk(port) && Array.isArray(port.allowedVlans))
-          for (const vlan of port.allowedVlans) vlans.add(vlan);
-      }
-    for (const forwarder of network.forwardersByDevice.get(id) ?? [])
-      for (const { circuit } of network.circuitsByForwarder.get(forwarder) ?? [])
-        if (circuit.kind === 'port' && typeof circuit.vlans !== 'string')
-          for (const vlan of circuit.vlans) vlans.add(vlan);
+    for (const [site, { vlan }] of Object.entries(segment.sites))
+      if (vlan !== undefined && isWanted(site)) at(site).add(vlan);
+  for (const [site, devices] of network.devicesBySite) {
+    if (!isWanted(site)) continue;
+    const vlans = at(site);
+    for (const id of devices) {
+      const device = entryOf(design.devices, id);
+      if (device.kind === 'switch')
+        for (const port of Object.values(device.ports)) {
+          if (!isTrunk(port)) vlans.add(accessVlan(port));
+          else if (port.nativeVlan !== undefined) vlans.add(port.nativeVlan);
+          if (isTrunk(port) && Array.isArray(port.allowedVlans))
+            for (const vlan of port.allowedVlans) vlans.add(vlan);
+        }
+      for (const forwarder of network.forwardersByDevice.get(id) ?? [])
+        for (const { circuit } of network.circuitsByForwarder.get(forwarder) ?? [])
+          if (circuit.kind === 'port' && typeof circuit.vlans !== 'string')
+            for (const vlan of circuit.vlans) vlans.add(vlan);
+    }
   }
   return new Map(
     // Trunks that take any VLAN loop in those that nobody named, too: the default VLAN stands for them.
@@ -73,9 +97,7 @@ const vlansOfSites = (network: Network): ReadonlyMap<Id, readonly number[]> => {
   );
 };
 
-/** A frame inside a place, as a source on its own would put it there. */
-type Seed = readonly [place: Place, inside: Tags];
-
+/** The tags that frames can have inside a place, as a source on its own would put them there. */
 const insideTags = (place: Place, vlans: readonly number[]): readonly Tags[] => {
   if (place.kind === 'host') return [untagged];
   if (place.kind === 'switch') return vlans;
@@ -89,64 +111,77 @@ const insideTags = (place: Place, vlans: readonly number[]): readonly Tags[] => 
   return [...inside].sort((a, b) => a - b);
 };
 
-const seedsOf = (network: Network, forwarding: Forwarding): readonly Seed[] => {
-  const vlans = vlansOfSites(network);
-  return forwarding.places.all.flatMap((place) =>
-    insideTags(place, vlans.get(entryOf(network.design.devices, place.device).site) ?? []).map(
-      (tags) => [place, tags] as const,
-    ),
-  );
-};
-
 const build = (network: Network, earlier: FloodGraph | undefined): FloodGraph => {
   const forwarding = forwardingOf(network, { blocked: blockedPorts(network) });
   const rows = earlier === undefined ? undefined : keptRows(earlier, network);
-  // By element and direction, then by tags: small keys, which maps are quickest with.
-  const nodes: (Map<Tags, number> | undefined)[] = [];
-  const element: number[] = [];
-  const direction: number[] = [];
-  const tags: number[] = [];
+  const { element, direction, tags, find, numberOf } = nodeTable();
   const into: number[] = [];
   const edgeStart: number[] = [];
   const edgeTo: number[] = [];
   const edgeClasses: number[] = [];
+  const seedStart: number[] = [];
+  const seeds: number[] = [];
   let hasFilters = false;
-  const nodeFor = (crossed: number, way: Direction, wire: Tags): number => {
-    const byTags = (nodes[crossed * 2 + way] ??= new Map<Tags, number>());
-    const known = byTags.get(wire);
-    if (known !== undefined) return known;
-    const fresh = element.length;
-    byTags.set(wire, fresh);
-    element.push(crossed);
-    direction.push(way);
-    tags.push(wire);
-    return fresh;
+
+  // By node of the earlier graph: its number now, and whether what follows it is the same.
+  const nodeNow = new Int32Array(earlier?.nodeCount ?? 0).fill(-1);
+  const stands = new Uint8Array(nodeNow.length);
+  const adopt = (old: number): number => {
+    if (nodeNow[old]! < 0)
+      nodeNow[old] = numberOf(
+        rows!.elementNow[earlier!.element[old]!]!,
+        earlier!.direction[old] as Direction,
+        earlier!.tags[old]!,
+      );
+    return nodeNow[old]!;
   };
-  const emit = (crossed: number, way: Direction, wire: Tags, classes: ClassSet): void => {
-    edgeTo.push(nodeFor(crossed, way, wire));
+  const addEdge = (to: number, classes: ClassSet): void => {
+    edgeTo.push(to);
     edgeClasses.push(classes);
     if (classes !== allClasses) hasFilters = true;
   };
-  for (const [place, inside] of seedsOf(network, forwarding))
-    forwarding.leave(place, -1, inside, (crossed, way, wire) => {
-      nodeFor(crossed, way, wire);
-    });
+
+  const vlans = vlansOfSites(network, (site) => rows?.stirredSites.has(site) !== false);
+  for (const place of forwarding.places.all) {
+    seedStart.push(seeds.length);
+    const old = rows?.startsLike(place) ?? -1;
+    if (old >= 0) {
+      for (let i = earlier!.seedStart[old]!; i < earlier!.seedStart[old + 1]!; i += 1)
+        seeds.push(adopt(earlier!.seeds[i]!));
+      continue;
+    }
+    const { site } = entryOf(network.design.devices, place.device);
+    // A place that is taken over stands in a site whose VLANs were not asked for.
+    for (const inside of insideTags(place, vlans.get(site) ?? []))
+      forwarding.leave(place, -1, inside, (crossed, way, wire) => {
+        seeds.push(numberOf(crossed, way, wire));
+      });
+  }
+  seedStart.push(seeds.length);
+
   for (let node = 0; node < element.length; node += 1) {
     edgeStart.push(edgeTo.length);
-    let place = rows?.take(element[node]!, direction[node]! as Direction, tags[node]!, emit);
-    if (place === undefined) {
-      place = -1;
-      forwarding.arrive(
-        element[node]!,
-        direction[node]! as Direction,
-        tags[node]!,
-        (reached, ordinal, inside) => {
-          if (place! < 0) place = reached.index;
-          // A host takes what comes and forwards nothing.
-          if (reached.kind !== 'host') forwarding.leave(reached, ordinal, inside, emit);
-        },
-      );
+    const [crossed, way, wire] = [element[node]!, direction[node]!, tags[node]!];
+    const oldElement = rows?.arrivesLike(crossed, way) ?? -1;
+    const old = oldElement < 0 ? -1 : earlier!.nodeOf(oldElement, way, wire);
+    if (old >= 0) {
+      nodeNow[old] = node;
+      stands[old] = 1;
+      for (let edge = earlier!.edgeStart[old]!; edge < earlier!.edgeStart[old + 1]!; edge += 1)
+        addEdge(adopt(earlier!.edgeTo[edge]!), earlier!.edgeClasses[edge]!);
+      const place = earlier!.into[old]!;
+      into.push(place < 0 ? -1 : rows!.placeNow[place]!);
+      continue;
     }
+    let place = -1;
+    forwarding.arrive(crossed, way, wire, (reached, ordinal, inside) => {
+      if (place < 0) place = reached.index;
+      // A host takes what comes and forwards nothing.
+      if (reached.kind !== 'host')
+        forwarding.leave(reached, ordinal, inside, (nextCrossed, nextWay, nextWire, classes) => {
+          addEdge(numberOf(nextCrossed, nextWay, nextWire), classes);
+        });
+    });
     into.push(place);
   }
   edgeStart.push(edgeTo.length);
@@ -164,7 +199,19 @@ const build = (network: Network, earlier: FloodGraph | undefined): FloodGraph =>
     edgeTo: Int32Array.from(edgeTo),
     edgeClasses: Uint8Array.from(edgeClasses),
     hasFilters,
-    nodeOf: (crossed, way, wire) => nodes[crossed * 2 + way]?.get(wire) ?? -1,
+    nodeOf: find,
+    seeds: Int32Array.from(seeds),
+    seedStart: Int32Array.from(seedStart),
+    ...(rows === undefined
+      ? {}
+      : {
+          kept: {
+            identity: earlier!.identity,
+            nodeNow: nodeNow.map((node, old) => (stands[old] === 1 ? node : -1)),
+            stirredSites: rows.stirredSites,
+            stirredSegments: rows.stirredSegments,
+          },
+        }),
   };
 };
 

@@ -1,9 +1,8 @@
+import type { Id } from '../model/scalars.ts';
 import { agreeApartFrom, changesBetween } from '../network/changes.ts';
-import type { Tags } from '../network/frame-tags.ts';
 import type { Network } from '../network/network.ts';
 import type { FloodGraph } from './flood-graph.ts';
-import type { Emit } from './forwarding.ts';
-import type { Direction } from './places.ts';
+import type { Direction, Place } from './places.ts';
 import { devicesArrivedAt, placesOf } from './places.ts';
 import { touchedDevices } from './touched-devices.ts';
 
@@ -17,18 +16,49 @@ export const floodsTheSame = (before: Network, now: Network): boolean =>
     agreeApartFrom(change.before, change.now, 'name', 'mtu', 'hostsExpected', 'mustBeFiltered', 'notes'),
   );
 
-export interface KeptRows {
-  /**
-   * Emits the edges that a crossing had in the earlier graph, and gives the place it leads into (-1: none). Undefined, and
-   * nothing emitted, where it wasn't there or ends at a device that may now do otherwise.
-   */
-  readonly take: (element: number, direction: Direction, tags: Tags, emit: Emit) => number | undefined;
-}
+/** Sites in which frames may start otherwise than in the earlier version: their VLANs or their devices are others. */
+const stirredSites = (before: Network, now: Network): ReadonlySet<Id> => {
+  const stirred = new Set<Id>();
+  for (const { design } of [before, now])
+    for (const id of touchedDevices(before, now)) {
+      const site = design.devices[id]?.site;
+      if (site !== undefined) stirred.add(site);
+    }
+  for (const change of changesBetween(before.design, now.design).segments)
+    if (change.before?.sites !== change.now?.sites)
+      for (const segment of [change.before, change.now])
+        for (const site of Object.keys(segment?.sites ?? {})) stirred.add(site);
+  return stirred;
+};
+
+/** Segments that have other hosts than in the earlier version, or the same ones elsewhere. */
+const segmentsOfTouchedHosts = (before: Network, now: Network): ReadonlySet<Id> => {
+  const segments = new Set<Id>();
+  for (const { design } of [before, now])
+    for (const id of touchedDevices(before, now)) {
+      const device = design.devices[id];
+      if (device?.kind === 'host' && device.segment !== undefined) segments.add(device.segment);
+    }
+  return segments;
+};
 
 /** What can be taken over from the flood graph of an earlier version: elements and places may have other numbers by now. */
-export const keptRows = (graph: FloodGraph, now: Network): KeptRows => {
-  const before = graph.network;
+export interface KeptRows {
+  readonly stirredSites: ReadonlySet<Id>;
+  readonly stirredSegments: ReadonlySet<Id>;
+  /** By element of the earlier graph: its number now; -1 where it is gone. */
+  readonly elementNow: Int32Array;
+  /** By place of the earlier graph: its number now; -1 where its device may now do otherwise. */
+  readonly placeNow: Int32Array;
+  /** The place that this one was, if frames start in it as they did; -1 otherwise. */
+  readonly startsLike: (place: Place) => number;
+  /** The element that this one was, if what crosses it comes to a device that does what it did; -1 otherwise. */
+  readonly arrivesLike: (element: number, direction: Direction) => number;
+}
+
+export const keptRows = ({ network: before }: FloodGraph, now: Network): KeptRows => {
   const touched = touchedDevices(before, now);
+  const stirred = stirredSites(before, now);
   const elementBefore = new Int32Array(now.bundles.length + now.tunnelIds.length).fill(-1);
   const elementNow = new Int32Array(before.bundles.length + before.tunnelIds.length).fill(-1);
   const pair = (old: number | undefined, element: number): void => {
@@ -46,24 +76,24 @@ export const keptRows = (graph: FloodGraph, now: Network): KeptRows => {
     pair(old === undefined ? undefined : before.bundles.length + old, now.bundles.length + i);
   });
   const placeNow = new Int32Array(placesOf(before).all.length).fill(-1);
+  const placeBefore = new Int32Array(placesOf(now).all.length).fill(-1);
   for (const [device, places] of placesOf(now).byDevice)
     if (!touched.has(device))
       placesOf(before)
         .byDevice.get(device)!
-        .forEach(({ index }, i) => (placeNow[index] = places[i]!.index));
+        .forEach(({ index }, i) => {
+          placeNow[index] = places[i]!.index;
+          placeBefore[places[i]!.index] = index;
+        });
   const isTouched = Uint8Array.from(devicesArrivedAt(now), (device) => (touched.has(device) ? 1 : 0));
   return {
-    take: (element, direction, tags, emit) => {
-      const old = isTouched[element * 2 + direction] === 1 ? -1 : elementBefore[element]!;
-      const node = old < 0 ? -1 : graph.nodeOf(old, direction, tags);
-      if (node < 0) return undefined;
-      for (let edge = graph.edgeStart[node]!; edge < graph.edgeStart[node + 1]!; edge += 1) {
-        const target = graph.edgeTo[edge]!;
-        const out = elementNow[graph.element[target]!]!;
-        emit(out, graph.direction[target] as Direction, graph.tags[target]!, graph.edgeClasses[edge]!);
-      }
-      const place = graph.into[node]!;
-      return place < 0 ? -1 : placeNow[place]!;
-    },
+    stirredSites: stirred,
+    stirredSegments: segmentsOfTouchedHosts(before, now),
+    elementNow,
+    placeNow,
+    startsLike: (place) =>
+      stirred.has(now.design.devices[place.device]!.site) ? -1 : placeBefore[place.index]!,
+    arrivesLike: (element, direction) =>
+      isTouched[element * 2 + direction] === 1 ? -1 : elementBefore[element]!,
   };
 };

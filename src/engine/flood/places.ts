@@ -10,8 +10,8 @@ import {
   forwardingMembers,
   otherEnd,
   perNetwork,
-  plugKey,
 } from '../network/network.ts';
+import { portGroupAt } from '../network/port-groups.ts';
 import type { ClassSet } from './frame-classes.ts';
 import { classesPassed } from './frame-classes.ts';
 import { rebuiltDevices } from './rebuilt-devices.ts';
@@ -143,7 +143,7 @@ const buildCircuits = (
     const { circuit } = at;
     const isolation = numberOf(isolations, circuit.isolation);
     if (circuit.kind === 'port') {
-      const group = network.portGroupByPlug.get(plugKey(at.device, circuit.port, member));
+      const group = portGroupAt(network, at.device, circuit.port, member);
       // A member link carries no segment frames, whatever claims it.
       if (group === undefined) continue;
       const port = device.ports[group.port]!;
@@ -236,7 +236,9 @@ export const placesOf = perNetwork((network, earlier?: Answer<Places>): Places =
     if (rebuilt?.has(id) !== false) return undefined;
     if (earlier!.network.design.devices[id] !== network.design.devices[id]) return undefined;
     const places = earlier!.value.byDevice.get(id);
-    return places?.[0] === undefined || places[0].index === all.length ? places : undefined;
+    return places?.[0] === undefined || places[0].index === all.length
+      ? places
+      : places.map((place, i) => ({ ...place, index: all.length + i }));
   };
   for (const id of network.deviceIds) {
     const here = kept(id) ?? placesIn(network, id, all.length, tunnelIndex);

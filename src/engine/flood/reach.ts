@@ -2,7 +2,8 @@ import type { Id } from '../model/scalars.ts';
 import type { Tags } from '../network/frame-tags.ts';
 import { untagged } from '../network/frame-tags.ts';
 import type { Network } from '../network/network.ts';
-import { entryOf, plugKey } from '../network/network.ts';
+import { entryOf } from '../network/network.ts';
+import { portGroupAt } from '../network/port-groups.ts';
 import { stepOf } from './find-storms.ts';
 import type { FloodGraph } from './flood-graph.ts';
 import { floodGraph } from './flood-graph.ts';
@@ -52,7 +53,7 @@ export const startsOf = (network: Network, graph: FloodGraph, source: Source): r
       forwarding.leave(place, -1, untagged, emit);
     return [...nodes];
   }
-  const group = network.portGroupByPlug.get(plugKey(source.device, source.port, source.member));
+  const group = portGroupAt(network, source.device, source.port, source.member);
   if (group === undefined) return [];
   const tags: Tags = source.vlan ?? untagged;
   forwarding.enter(group, tags, (place, ordinal, inside) => forwarding.leave(place, ordinal, inside, emit));

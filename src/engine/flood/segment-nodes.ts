@@ -20,10 +20,29 @@ export interface SegmentNodes {
   readonly nodes: readonly number[];
 }
 
+const known = new WeakMap<object, readonly SegmentNodes[]>();
+
+/** The segments of an earlier graph whose frames met nothing that has changed since, with the numbers that their nodes have now. */
+const keptNodes = ({ network, kept }: FloodGraph): ReadonlyMap<Id, SegmentNodes> => {
+  const reaches = new Map<Id, SegmentNodes>();
+  if (kept === undefined) return reaches;
+  for (const { segment, nodes: before } of known.get(kept.identity) ?? []) {
+    const sites = network.design.segments[segment]?.sites;
+    if (sites === undefined || kept.stirredSegments.has(segment)) continue;
+    if (Object.keys(sites).some((site) => kept.stirredSites.has(site))) continue;
+    const nodes = before.map((node) => kept.nodeNow[node]!);
+    if (!nodes.includes(-1)) reaches.set(segment, { segment, nodes });
+  }
+  return reaches;
+};
+
 const compute = (graph: FloodGraph): readonly SegmentNodes[] => {
   const { network, forwarding } = graph;
+  const kept = keptNodes(graph);
   const stamp = new Int32Array(graph.nodeCount).fill(-1);
   return inLetterOrder(network).map((segment, mark) => {
+    const before = kept.get(segment);
+    if (before !== undefined) return before;
     const nodes: number[] = [];
     const emit: Emit = (element, direction, tags) => {
       const node = graph.nodeOf(element, direction, tags);
@@ -53,8 +72,6 @@ const compute = (graph: FloodGraph): readonly SegmentNodes[] => {
     return { segment, nodes };
   });
 };
-
-const known = new WeakMap<object, readonly SegmentNodes[]>();
 
 /** For every segment, in order of letter, the crossings that its frames can make. */
 export const segmentReaches = (graph: FloodGraph): readonly SegmentNodes[] => {

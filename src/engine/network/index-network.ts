@@ -13,11 +13,11 @@ import type {
   Device,
   Landing,
   Network,
-  PortGroup,
   TunnelAt,
 } from './network.ts';
 import { ends, entryOf, passOnAnswers, portKey, portVlanKey, siteVlanKey } from './network.ts';
-import { cablingOf } from './port-groups.ts';
+import type { Cabling } from './port-groups.ts';
+import { cablingOf, portGroupsAfter } from './port-groups.ts';
 
 type Index<K, V> = Map<K, V[]>;
 const put = <K, V>(lists: Index<K, V>, key: K, value: V): void => {
@@ -61,22 +61,37 @@ const entriesOf = <C extends Collection>(
 
 type Lists<Names extends keyof Network> = Pick<Network, Names>;
 
-const listDevices = (design: DesignFacts): Lists<'deviceIds' | 'devicesBySite' | 'hostsBySegment'> => {
-  const devices = entriesOf(design, 'devices');
+const listDevices = (design: DesignFacts): Lists<'devicesBySite' | 'hostsBySegment'> => {
   const devicesBySite: Index<Id, Id> = new Map();
   const hostsBySegment: Index<Id, Id> = new Map();
-  for (const [id, device] of devices) {
+  for (const [id, device] of entriesOf(design, 'devices')) {
     put(devicesBySite, device.site, id);
-    if (device.kind === 'host' && device.segment !== undefined) put(hostsBySegment, device.segment, id);
+    const segment = segmentOfHost(device);
+    if (segment !== undefined) put(hostsBySegment, segment, id);
   }
-  return { deviceIds: devices.map(([id]) => id), devicesBySite, hostsBySegment };
+  return { devicesBySite, hostsBySegment };
 };
+const segmentOfHost = (device: Device): Id | undefined =>
+  device.kind === 'host' ? device.segment : undefined;
 
-const listLinks = (
-  design: DesignFacts,
-): Lists<
+/** The cable's ends with the keys under which they are listed. */
+const cableEnds = (
+  { devices }: DesignFacts,
+  id: Id,
+  cable: Cable,
+): readonly { readonly at: CableAt; readonly device: Id; readonly port: string }[] =>
+  ends.map((end) => {
+    const plug = cable[end];
+    const isPair = entryOf(devices, plug.device).kind === 'ha-pair';
+    const at: CableAt = { cable: id, end, member: isPair ? (plug.member ?? 1) : 1 };
+    return { at, device: plug.device, port: portKey(plug.device, plug.port) };
+  });
+
+type LinkLists = Lists<
   'cablesByPort' | 'cablesByDevice' | 'landingsByDevice' | 'landingsByPort' | 'landingsByTransport'
-> => {
+>;
+
+const listLinks = (design: DesignFacts): LinkLists => {
   const cablesByPort: Index<string, CableAt> = new Map();
   const cablesByDevice: Index<Id, CableAt> = new Map();
   const landingsByDevice: Index<Id, Id> = new Map();
@@ -84,12 +99,9 @@ const listLinks = (
   const landingsByTransport: Index<Id, Id> = new Map();
   for (const [id, link] of entriesOf(design, 'links')) {
     if (link.kind === 'cable') {
-      for (const end of ends) {
-        const plug = link[end];
-        const isPair = entryOf(design.devices, plug.device).kind === 'ha-pair';
-        const at: CableAt = { cable: id, end, member: isPair ? (plug.member ?? 1) : 1 };
-        put(cablesByPort, portKey(plug.device, plug.port), at);
-        put(cablesByDevice, plug.device, at);
+      for (const { at, device, port } of cableEnds(design, id, link)) {
+        put(cablesByPort, port, at);
+        put(cablesByDevice, device, at);
       }
     } else {
       const landing: Landing = link;
@@ -173,19 +185,15 @@ const listSegments = (design: DesignFacts): Lists<'segmentsBySiteVlan'> => {
   return { segmentsBySiteVlan };
 };
 
-const listCabling = (
-  design: DesignFacts,
-): Lists<'portGroups' | 'portGroupByPlug' | 'portGroupsByDevice' | 'bundles' | 'bundleByCable'> => {
+const listCabling = (design: DesignFacts): Cabling => {
   const cables: (readonly [Id, Cable])[] = [];
   for (const [id, link] of entriesOf(design, 'links')) if (link.kind === 'cable') cables.push([id, link]);
-  const { groups, groupByPlug, bundles, bundleByCable } = cablingOf(entriesOf(design, 'devices'), cables);
-  const portGroupsByDevice: Index<Id, PortGroup> = new Map();
-  for (const group of groups) put(portGroupsByDevice, group.device, group);
-  return { portGroups: groups, portGroupByPlug: groupByPlug, portGroupsByDevice, bundles, bundleByCable };
+  return cablingOf(entriesOf(design, 'devices'), cables);
 };
 
 const build = (design: DesignFacts): Network => ({
   design,
+  deviceIds: idsOf(design.devices),
   ...listDevices(design),
   ...listLinks(design),
   ...listEndpoints(design),
@@ -196,26 +204,111 @@ const build = (design: DesignFacts): Network => ({
   ...listCabling(design),
 });
 
-/** Whether ports form the same logical ports as before, in and out of service as before. */
-const haveTheSamePorts = (changes: readonly EntryChange<Device>[]): boolean =>
-  allAgreeIn(changes, 'kind') &&
-  changes.every(({ before, now }) => {
-    const [old, ports] = [before!.ports, now!.ports];
-    if (old === ports) return true;
-    const ids = Object.keys(ports);
-    return (
-      ids.length === Object.keys(old).length &&
-      ids.every((id) => {
-        const [was, is] = [old[id], ports[id]!];
-        return (
-          was?.number === is.number &&
-          was.role === is.role &&
-          was.aggregation === is.aggregation &&
-          was.shut === is.shut
-        );
-      })
-    );
-  });
+/** What one entry has in a list of the index. */
+type Listed<V> = readonly (readonly [key: Id, value: V])[];
+
+/** Lists after changes: what changed entries had in them goes, what they have now comes in, in order of id. */
+const listsAfter = <E extends object, V>(
+  lists: ReadonlyMap<Id, readonly V[]>,
+  changes: readonly EntryChange<E>[],
+  idOf: (value: V) => Id,
+  had: (id: Id, entry: E) => Listed<V>,
+  has: (id: Id, entry: E) => Listed<V>,
+): ReadonlyMap<Id, readonly V[]> => {
+  const changed = new Set(changes.map(({ id }) => id));
+  const added: Index<Id, V> = new Map();
+  const touched = new Set<Id>();
+  for (const { id, before, now } of changes) {
+    if (before !== undefined) for (const [key] of had(id, before)) touched.add(key);
+    if (now === undefined) continue;
+    for (const [key, value] of has(id, now)) {
+      put(added, key, value);
+      touched.add(key);
+    }
+  }
+  if (touched.size === 0) return lists;
+  const after = new Map(lists);
+  for (const key of touched) {
+    const list = [
+      ...(lists.get(key) ?? []).filter((value) => !changed.has(idOf(value))),
+      ...(added.get(key) ?? []),
+    ].sort((a, b) => (idOf(a) < idOf(b) ? -1 : idOf(a) > idOf(b) ? 1 : 0));
+    if (list.length > 0) after.set(key, list);
+    else after.delete(key);
+  }
+  return after;
+};
+
+const itself = (id: Id): Id => id;
+
+const renewDevices = (
+  before: Network,
+  changes: Changes['devices'],
+): Lists<'devicesBySite' | 'hostsBySegment'> => {
+  const sites = (id: Id, { site }: Device): Listed<Id> => [[site, id]];
+  const segments = (id: Id, device: Device): Listed<Id> => {
+    const segment = segmentOfHost(device);
+    return segment === undefined ? [] : [[segment, id]];
+  };
+  return {
+    devicesBySite: listsAfter(before.devicesBySite, changes, itself, sites, sites),
+    hostsBySegment: listsAfter(before.hostsBySegment, changes, itself, segments, segments),
+  };
+};
+
+const renewLinks = (before: Network, now: DesignFacts, changes: Changes['links']): LinkLists => {
+  const cables =
+    (design: DesignFacts, key: 'device' | 'port') =>
+    (id: Id, link: Entry<'links'>): Listed<CableAt> =>
+      link.kind === 'cable' ? cableEnds(design, id, link).map((one) => [one[key], one.at]) : [];
+  const landings =
+    (keyOf: (landing: Landing) => Id) =>
+    (id: Id, link: Entry<'links'>): Listed<Id> =>
+      link.kind === 'landing' ? [[keyOf(link), id]] : [];
+  const renewedCables = (lists: Network['cablesByPort'], key: 'device' | 'port') =>
+    listsAfter(lists, changes, ({ cable }) => cable, cables(before.design, key), cables(now, key));
+  const renewedLandings = (lists: Network['landingsByPort'], keyOf: (landing: Landing) => Id) =>
+    listsAfter(lists, changes, itself, landings(keyOf), landings(keyOf));
+  return {
+    cablesByPort: renewedCables(before.cablesByPort, 'port'),
+    cablesByDevice: renewedCables(before.cablesByDevice, 'device'),
+    landingsByDevice: renewedLandings(before.landingsByDevice, ({ device }) => device),
+    landingsByPort: renewedLandings(before.landingsByPort, ({ device, port }) => portKey(device, port)),
+    landingsByTransport: renewedLandings(before.landingsByTransport, ({ transport }) => transport),
+  };
+};
+
+/** Whether a device forms the same logical ports as before, in and out of service as before. */
+const hasTheSamePorts = ({ before, now }: EntryChange<Device>): boolean => {
+  if (before === undefined || now === undefined || before.kind !== now.kind) return false;
+  if (before.ports === now.ports) return true;
+  const ids = Object.keys(now.ports);
+  return (
+    ids.length === Object.keys(before.ports).length &&
+    ids.every((id) => {
+      const [was, is] = [before.ports[id], now.ports[id]!];
+      return (
+        was?.number === is.number &&
+        was.role === is.role &&
+        was.aggregation === is.aggregation &&
+        was.shut === is.shut
+      );
+    })
+  );
+};
+
+/** The cabling where links join what they did: only devices without cables can change nothing but their own ports. */
+const renewCabling = (
+  before: Network,
+  design: DesignFacts,
+  changes: Changes['devices'],
+): Partial<Cabling> => {
+  const others = changes.filter((change) => !hasTheSamePorts(change));
+  if (others.length === 0) return {};
+  return others.some(({ id }) => before.cablesByDevice.has(id))
+    ? listCabling(design)
+    : { portGroupsByDevice: portGroupsAfter(before.portGroupsByDevice, others) };
+};
 
 /** Whether links lead from where they did to where they did. */
 const joinTheSame = (changes: Changes['links']): boolean =>
@@ -228,6 +321,9 @@ const renew = (before: Network, design: DesignFacts): Network => {
     idsInOrder.set(design[collection], idsAfter(idsOf(before.design[collection]), changes[collection]));
   const { devices, links, endpoints, associations, tunnels, forwarders, segments } = changes;
   const linksJoinTheSame = joinTheSame(links);
+  const keepTheirKind = devices.every(
+    ({ before: old, now }) => old === undefined || now === undefined || old.kind === now.kind,
+  );
   const endpointsStay = allAgreeIn(endpoints, 'device');
   const tunnelsStay =
     allAgreeIn(tunnels, 'association') &&
@@ -235,8 +331,9 @@ const renew = (before: Network, design: DesignFacts): Network => {
   return {
     ...before,
     design,
-    ...(allAgreeIn(devices, 'kind', 'site', 'segment') ? {} : listDevices(design)),
-    ...(linksJoinTheSame && allAgreeIn(devices, 'kind') ? {} : listLinks(design)),
+    deviceIds: idsOf(design.devices),
+    ...(allAgreeIn(devices, 'kind', 'site', 'segment') ? {} : renewDevices(before, devices)),
+    ...(!keepTheirKind ? listLinks(design) : linksJoinTheSame ? {} : renewLinks(before, design, links)),
     ...(endpointsStay ? {} : listEndpoints(design)),
     ...(associations.every(({ before: old, now }) =>
       ends.every((end) => old?.[end].device === now?.[end].device),
@@ -250,7 +347,7 @@ const renew = (before: Network, design: DesignFacts): Network => {
       ? {}
       : listForwarders(design)),
     ...(segments.every(({ before: old, now }) => old?.sites === now?.sites) ? {} : listSegments(design)),
-    ...(linksJoinTheSame && haveTheSamePorts(devices) ? {} : listCabling(design)),
+    ...(linksJoinTheSame ? renewCabling(before, design, devices) : listCabling(design)),
   };
 };
 

@@ -42,6 +42,7 @@ export interface AssociationAt {
 }
 /** Ports that form one logical port: a link-aggregation group, or a single port. On an HA pair each member has its own. */
 export interface PortGroup {
+  /** Its place among those of its device. */
   readonly index: number;
   readonly device: Id;
   readonly member: Member;
@@ -89,17 +90,13 @@ export interface Network {
   readonly circuitsByPortVlan: ReadonlyMap<string, readonly CircuitAt[]>;
   /** By `siteVlanKey`. */
   readonly segmentsBySiteVlan: ReadonlyMap<string, readonly Id[]>;
-  readonly portGroups: readonly PortGroup[];
-  /** By `plugKey`. */
-  readonly portGroupByPlug: ReadonlyMap<string, PortGroup>;
+  /** In order of member, then of port number; see `portGroupAt` for one of them. */
   readonly portGroupsByDevice: ReadonlyMap<Id, readonly PortGroup[]>;
   readonly bundles: readonly Bundle[];
   readonly bundleByCable: ReadonlyMap<Id, Bundle>;
 }
 
 export const portKey = (device: Id, port: Id): string => `${device}/${port}`;
-export const plugKey = (device: Id, port: Id, member: Member | undefined): string =>
-  `${device}/${port}@${member ?? 1}`;
 export const portVlanKey = (device: Id, port: Id, vlan: number | 'untagged' | 'all'): string =>
   `${device}/${port}/${vlan}`;
 export const siteVlanKey = (site: Id, vlan: number): string => `${site}/${vlan}`;

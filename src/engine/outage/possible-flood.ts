@@ -135,9 +135,9 @@ export const possibleFlood = perNetwork((network): PossibleFlood => {
     forwarding,
     arrive,
     leave,
-    choices: first.portGroups.filter(
-      (group) => group.aggregation !== undefined && allOuts(first, group).length > 1,
-    ),
+    choices: [...first.portGroupsByDevice.values()]
+      .flat()
+      .filter((group) => group.aggregation !== undefined && allOuts(first, group).length > 1),
   };
 });
 

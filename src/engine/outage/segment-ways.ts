@@ -8,7 +8,7 @@ import type { Direction, Place } from '../flood/places.ts';
 import type { Id } from '../model/scalars.ts';
 import type { Tags } from '../network/frame-tags.ts';
 import { untagged } from '../network/frame-tags.ts';
-import type { Network } from '../network/network.ts';
+import type { Network, PortGroup } from '../network/network.ts';
 import { entryOf, perNetwork } from '../network/network.ts';
 import { isSharedEnd, outKey, possibleFlood } from './possible-flood.ts';
 import type { Standing } from './standing.ts';
@@ -173,7 +173,7 @@ const ordinalIn = (one: Place, other: Place, ordinal: number): number =>
     ? ordinal
     : one.circuits.findIndex(({ at }) => at.id === other.circuits[ordinal]!.at.id);
 
-const groupAt = (network: Network, group: Network['portGroups'][number], place: Place) =>
+const groupAt = (network: Network, group: PortGroup, place: Place) =>
   place.kind !== 'forwarder' || group.member === place.member
     ? group
     : network.portGroupsByDevice

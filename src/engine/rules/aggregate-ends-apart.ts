@@ -59,7 +59,8 @@ export const aggregateEndsApart = defineRule({
     },
   },
   check: (network) =>
-    network.portGroups
+    [...network.portGroupsByDevice.values()]
+      .flat()
       .filter((group) => isApart(network, group))
       .map((group) => {
         const far = farEnds(network, group);

@@ -1,7 +1,8 @@
 import type { Member } from '../model/devices.ts';
 import type { Id } from '../model/scalars.ts';
-import type { End, Network, Port } from '../network/network.ts';
-import { entryOf, otherEnd, perNetwork, plugKey, portKey } from '../network/network.ts';
+import type { Bundle, End, Network, Port } from '../network/network.ts';
+import { entryOf, otherEnd, perNetwork, portKey } from '../network/network.ts';
+import { portGroupAt } from '../network/port-groups.ts';
 
 /** A cable from a host or a switch to a port of an HA pair that carries segments. */
 export interface Uplink {
@@ -18,7 +19,15 @@ export interface Uplink {
 /** Uplinks whose frames some circuit takes, in order of cable. */
 const uplinks = perNetwork((network): readonly Uplink[] => {
   const { devices, links } = network.design;
-  return network.bundles.flatMap(({ alive }) =>
+  const bundles = new Set<Bundle>();
+  for (const pair of network.deviceIds)
+    if (entryOf(devices, pair).kind === 'ha-pair')
+      for (const { cable } of network.cablesByDevice.get(pair) ?? []) {
+        const bundle = network.bundleByCable.get(cable);
+        if (bundle !== undefined) bundles.add(bundle);
+      }
+  const inOrder = [...bundles].sort((a, b) => a.index - b.index);
+  return inOrder.flatMap(({ alive }) =>
     alive.flatMap((cable) => {
       const link = links[cable]!;
       if (link.kind !== 'cable') return [];
@@ -94,7 +103,7 @@ export const freePorts = (network: Network, device: Id): readonly (readonly [id:
 
 /** True when no cable is plugged into the port, of this member where it is a pair's. */
 export const isUnplugged = (network: Network, device: Id, port: Id, member?: Member): boolean => {
-  const group = network.portGroupByPlug.get(plugKey(device, port, member));
+  const group = portGroupAt(network, device, port, member);
   return (
     group !== undefined &&
     (network.cablesByPort.get(portKey(device, port)) ?? []).every((at) => at.member !== (member ?? 1)) &&

@@ -6,7 +6,8 @@ import type { Id } from '../model/scalars.ts';
 import type { Tags } from '../network/frame-tags.ts';
 import { outerVlan } from '../network/frame-tags.ts';
 import type { Network } from '../network/network.ts';
-import { perNetwork, plugKey } from '../network/network.ts';
+import { perNetwork } from '../network/network.ts';
+import { portGroupAt } from '../network/port-groups.ts';
 
 /** Where a switch or a forwarder believes the destination to be: stated, instead of what would have been learned. */
 export type StatedLearning =
@@ -81,8 +82,7 @@ export const learnedAsStated = (network: Network, stated: readonly StatedLearnin
     let ordinal: number | undefined;
     if (place.kind === 'switch') {
       const port = bySwitch.get(place.device);
-      const group =
-        port === undefined ? undefined : network.portGroupByPlug.get(plugKey(place.device, port, undefined));
+      const group = port === undefined ? undefined : portGroupAt(network, place.device, port, undefined);
       ordinal = group === undefined ? undefined : place.ordinalByGroup.get(group.index);
     } else {
       const circuit = byForwarder.get(place.forwarder);

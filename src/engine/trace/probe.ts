@@ -3,7 +3,7 @@ import { z } from 'zod';
 import { memberSchema } from '../model/devices.ts';
 import { idSchema, ipSchema, mtuSchema, udpPortSchema, vlanSchema } from '../model/scalars.ts';
 import type { Network } from '../network/network.ts';
-import { plugKey } from '../network/network.ts';
+import { portGroupAt } from '../network/port-groups.ts';
 import { FCS_BYTES, MINIMUM_FRAME_BYTES } from '../reference/ethernet.ts';
 import { IP_HEADER_BYTES, ipVersions } from '../reference/ip.ts';
 import type { Answer, Problem } from '../wire/problem.ts';
@@ -157,7 +157,7 @@ const referenceProblems = (network: Network, { source, destination }: Probe): re
   } else if (devices[source.device] === undefined) {
     const expected = `a device of the design${network.deviceIds.length === 0 ? '' : `, such as ${network.deviceIds[0]}`}`;
     problems.push({ field: 'probe.source.device', value: source.device, expected });
-  } else if (network.portGroupByPlug.get(plugKey(source.device, source.port, source.member)) === undefined) {
+  } else if (portGroupAt(network, source.device, source.port, source.member) === undefined) {
     problems.push({
       field: 'probe.source.port',
       value: source.port,

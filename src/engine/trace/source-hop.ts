@@ -2,7 +2,8 @@ import type { ElementRef } from '../model/design.ts';
 import type { Tags } from '../network/frame-tags.ts';
 import { pushTag, untagged } from '../network/frame-tags.ts';
 import type { Network } from '../network/network.ts';
-import { entryOf, plugKey } from '../network/network.ts';
+import { entryOf } from '../network/network.ts';
+import { portGroupAt } from '../network/port-groups.ts';
 import type { Fragment } from '../wire/fragments-of.ts';
 import { fragmentsOf } from '../wire/fragments-of.ts';
 import type { Crossing, End, Following, Hop } from './follower.ts';
@@ -65,7 +66,7 @@ export const sourceHop = (following: Following, follower: Follower, probe: Probe
   const base = { elements: [by], ...(own.pieces === undefined ? {} : { pieces: own.pieces }) };
   if (own.end !== undefined) return { ...base, facts, end: own.end, onward: [], stopped: [] };
   if (!('host' in source)) {
-    const group = network.portGroupByPlug.get(plugKey(source.device, source.port, source.member))!;
+    const group = portGroupAt(network, source.device, source.port, source.member)!;
     const entered = follower.enter(group, tagsFrom(probe.tags ?? []));
     return { ...base, ...entered, facts: [...facts, ...entered.facts] };
   }

@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { applyPatch } from '#engine/model/merge-patch.ts';
 import { indexNetwork } from '#engine/network/index-network.ts';
-import { plugKey, portVlanKey, segmentsAt, siteVlanKey } from '#engine/network/network.ts';
+import { portVlanKey, segmentsAt, siteVlanKey } from '#engine/network/network.ts';
+import { portGroupAt } from '#engine/network/port-groups.ts';
 import { hubDesign, pairDesign } from '../../support/designs.ts';
 
 describe('indexNetwork', () => {
@@ -93,7 +94,7 @@ describe('ports and cables as logical ones', () => {
     const bundle = network.bundleByCable.get('cb-s0-up2')!;
     expect(bundle).toBe(network.bundleByCable.get('cb-s0-up1'));
     expect(bundle.cables).toEqual(['cb-s0-up1', 'cb-s0-up2']);
-    expect(network.portGroupByPlug.get(plugKey('sw-s0', 'p9', undefined))?.ports).toEqual(['p1', 'p9']);
+    expect(portGroupAt(network, 'sw-s0', 'p9', undefined)?.ports).toEqual(['p1', 'p9']);
     const apart = doubled(null);
     expect(apart.bundleByCable.get('cb-s0-up2')).not.toBe(apart.bundleByCable.get('cb-s0-up1'));
   });
