@@ -1,6 +1,6 @@
 import { expectedForwarding } from '../flood/expected-forwarding.ts';
 import type { Id } from '../model/scalars.ts';
-import { perObject, portKey, type Device, type Network } from '../network/network.ts';
+import { perNetwork, perObject, portKey, type Device, type Network } from '../network/network.ts';
 
 /** Hosts of the design whose frames a port takes in: those behind a gateway's circuits, or plugged into a switch's port. */
 export const hostsBehindPort = (network: Network, device: string, port: string): ReadonlySet<string> => {
@@ -34,6 +34,18 @@ const portsWithLimits = perObject(({ ports }: Device): readonly Id[] =>
     .sort(),
 );
 
+/** How many hosts the design has, and which devices have a port with a limit. */
+const hostsAndLimits = perNetwork(({ design, deviceIds }) => {
+  const limited: Id[] = [];
+  let hostCount = 0;
+  for (const id of deviceIds) {
+    const device = design.devices[id]!;
+    if (device.kind === 'host') hostCount += 1;
+    if (portsWithLimits(device).length > 0) limited.push(id);
+  }
+  return { hostCount, limited };
+});
+
 /**
  * Ports on which a limit is set that counts hosts or their frames, in order of device and port; those left out that all
  * hosts of the design would not exceed.
@@ -42,10 +54,9 @@ export const limitedPorts = (
   network: Network,
   field: 'macLimit' | 'stormLimitPps',
 ): readonly LimitedPort[] => {
-  const { devices } = network.design;
-  const hostCount = network.deviceIds.filter((id) => devices[id]!.kind === 'host').length;
-  return network.deviceIds.flatMap((device) => {
-    const entry = devices[device]!;
+  const { hostCount, limited } = hostsAndLimits(network);
+  return limited.flatMap((device) => {
+    const entry = network.design.devices[device]!;
     return portsWithLimits(entry).flatMap((port) => {
       const limit = entry.ports[port]![field];
       return limit === undefined || limit >= hostCount

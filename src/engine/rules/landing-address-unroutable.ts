@@ -26,8 +26,9 @@ const specialOf = perObject((landing: Landing): readonly Special[] =>
 );
 
 /** Outside addresses in a special range, in order of landing. */
-const specialAddresses = ({ design }: Network): readonly Found[] =>
-  Object.keys(design.links)
+const specialAddresses = ({ design, landingsByTransport }: Network): readonly Found[] =>
+  [...landingsByTransport.values()]
+    .flat()
     .sort()
     .flatMap((landing) => {
       const link = design.links[landing]!;

@@ -23,7 +23,8 @@ export const landingInsideSegment = defineRule({
   },
   check: (network) => {
     const { design } = network;
-    return Object.entries(design.links).flatMap(([id, link]) => {
+    return [...network.landingsByTransport.values()].flat().flatMap((id) => {
+      const link = design.links[id]!;
       if (link.kind !== 'landing') return [];
       return families.flatMap((family) => {
         const field = familyField(family);

@@ -16,12 +16,19 @@ interface Plugged {
   readonly landings: readonly string[];
 }
 
+/** Ports with several cables in them, or with landings: nearly every port has one cable and nothing else. */
+const portsOfSeveral = ({ cablesByPort, landingsByPort }: Network): ReadonlySet<string> => {
+  const keys = new Set(landingsByPort.keys());
+  for (const [key, list] of cablesByPort) if (list.length > 1) keys.add(key);
+  return keys;
+};
+
 /** Ports with more than one thing plugged in. */
 const crowdedPorts = (network: Network): readonly Plugged[] =>
-  [...network.cablesByPort].flatMap(([key, list]) => {
+  [...portsOfSeveral(network)].flatMap((key) => {
+    const list = network.cablesByPort.get(key) ?? [];
     const landed = network.landingsByPort.get(key) ?? [];
-    // Nearly every port: one cable and nothing else.
-    if (list.length === 1 && landed.length === 0) return [];
+    if (list.length === 0) return [];
     const { cable, end } = list[0]!;
     const link = network.design.links[cable]!;
     if (link.kind !== 'cable') return [];
