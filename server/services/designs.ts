@@ -11,6 +11,8 @@ import { insertSnapshot } from '../repositories/design-snapshots.ts';
 import type { DesignRow } from '../repositories/designs.ts';
 import { findDesign, insertDesign, lockDesign, setDesignPutAway } from '../repositories/designs.ts';
 import { findEngagement } from '../repositories/engagements.ts';
+import { listMemberships } from '../repositories/memberships.ts';
+import { findAccount } from '../repositories/people.ts';
 import type { Context } from './context.ts';
 import { summarise, summaryOf } from './design-summary.ts';
 import { saveTitle } from './save-edits.ts';
@@ -32,7 +34,10 @@ export async function createDesign(
   if (engagement.archivedAt !== null) {
     throw new Refusal('conflict', 'The engagement is archived; restore it before you start a design in it.');
   }
-  const document = withTitle(await firstDocument(context, personId, title, from), title);
+  const document = withTitle(
+    await firstDocument(context, personId, engagement.workspaceId, title, from),
+    title,
+  );
   const id = await database.knex.transaction(async (trx) => {
     const inserted = await insertDesign(trx, engagementId, summarise(document), personId, clock());
     await insertSnapshot(trx, inserted, { sequence: 0, document });
@@ -110,12 +115,13 @@ export async function requireDesign({ database }: Context, designId: string): Pr
 async function firstDocument(
   context: Context,
   personId: string,
+  workspaceId: string,
   title: string,
   from: CreateDesign['from'],
 ): Promise<Design> {
   switch (from.kind) {
     case 'empty':
-      return emptyDesign(title);
+      return withAuthor(context, personId, workspaceId, emptyDesign(title));
     case 'demo':
       return demoDesign(from.demo);
     case 'copy':
@@ -123,6 +129,23 @@ async function firstDocument(
     case 'document':
       return parsed(from.document);
   }
+}
+
+/** A new drawing's title block says whose it is and who drew it; both can be written over. */
+async function withAuthor(
+  { database: { knex } }: Context,
+  personId: string,
+  workspaceId: string,
+  document: Design,
+): Promise<Design> {
+  const [person, memberships] = await Promise.all([
+    findAccount(knex, personId),
+    listMemberships(knex, personId),
+  ]);
+  const workspace = memberships.find((membership) => membership.workspaceId === workspaceId);
+  return applyPatch(document, {
+    meta: { createdBy: person?.name ?? null, legalOwner: workspace?.workspaceName ?? null },
+  });
 }
 
 async function documentOf(context: Context, personId: string, designId: string): Promise<Design> {

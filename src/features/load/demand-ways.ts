@@ -2,7 +2,7 @@ import type { CarriedDirection, Way } from '../../engine/load/carried-direction.
 import type { DemandWay, LoadReport } from '../../engine/load/load-of.ts';
 import type { Ceiling, Reachable } from '../../engine/load/reachable.ts';
 import type { Design, ElementRef, Entry } from '../../engine/model/design.ts';
-import { kindOf, nameOf } from '../../workspace/operations/name-of.ts';
+import { demandPlaceName, kindOf, nameOf } from '../../workspace/operations/name-of.ts';
 import { limitInRow } from './limit-rows.ts';
 
 /** One way of a demand, as it is carried. */
@@ -31,22 +31,15 @@ export interface DemandWayRow {
   readonly reachable?: Reachable;
 }
 
-const placeName = (design: Design, place: Entry<'demands'>['from']): string =>
-  'site' in place
-    ? `all of ${design.sites[place.site]?.name ?? place.site}`
-    : nameOf(design, { collection: 'devices', id: place.host });
-
 /** A demand by its name, or by where it leads. */
-export const demandName = (design: Design, id: string): string => {
-  const demand = design.demands[id]!;
-  return demand.name ?? `${placeName(design, demand.from)} to ${placeName(design, demand.to)}`;
-};
+export const demandName = (design: Design, id: string): string =>
+  nameOf(design, { collection: 'demands', id });
 
 const whyNot = (design: Design, demand: Entry<'demands'>, direction: CarriedDirection): string => {
   if (direction.state === 'parted') return 'frames do not get there';
   if (direction.state !== 'no-point') return '';
   const place = direction.end === 'from' ? demand.from : demand.to;
-  return `${placeName(design, place)} has neither a host nor a port of the segment`;
+  return `${demandPlaceName(design, place)} has neither a host nor a port of the segment`;
 };
 
 /** Devices, cables and tunnels along the way, the sender first. */
@@ -85,8 +78,8 @@ const wayRow = (design: Design, id: string, way: Way, of: DemandWay): DemandWayR
     name: demandName(design, id),
     segment: segment.name,
     letter: segment.letter,
-    from: placeName(design, from),
-    to: placeName(design, to),
+    from: demandPlaceName(design, from),
+    to: demandPlaceName(design, to),
     path:
       direction.state === 'carried'
         ? elements

@@ -1,4 +1,5 @@
 import type { Design, ElementRef } from '../../engine/model/design.ts';
+import type { Demand } from '../../engine/model/intent.ts';
 import type { Plug } from '../../engine/model/underlay.ts';
 
 const portOf = (design: Design, plug: Pick<Plug, 'device' | 'port' | 'member'>): string => {
@@ -8,6 +9,12 @@ const portOf = (design: Design, plug: Pick<Plug, 'device' | 'port' | 'member'>):
     device?.kind === 'ha-pair' && plug.member !== undefined ? device.memberNames[plug.member] : device?.name;
   return `${plate ?? plug.device} ${port?.name ?? port?.number ?? plug.port}`;
 };
+
+/** Where a demand begins or ends: one host, or all of a site. */
+export const demandPlaceName = (design: Design, place: Demand['from']): string =>
+  'site' in place
+    ? `all of ${design.sites[place.site]?.name ?? place.site}`
+    : (design.devices[place.host]?.name ?? place.host);
 
 /** What a person calls an element: its own name, or what it joins. */
 export const nameOf = (design: Design, ref: ElementRef): string => {
@@ -20,7 +27,11 @@ export const nameOf = (design: Design, ref: ElementRef): string => {
     return `${portOf(design, link.a)} to ${portOf(design, link.b)}`;
   }
   if (ref.collection === 'notes') return design.notes[ref.id]?.text.split('\n')[0]?.slice(0, 40) ?? ref.id;
-  if (ref.collection === 'demands') return design.demands[ref.id]?.name ?? ref.id;
+  if (ref.collection === 'demands') {
+    const demand = design.demands[ref.id];
+    if (demand === undefined) return ref.id;
+    return demand.name ?? `${demandPlaceName(design, demand.from)} to ${demandPlaceName(design, demand.to)}`;
+  }
   if (ref.port !== undefined) return portOf(design, { device: ref.id, port: ref.port, member: ref.member });
   return design[ref.collection][ref.id]?.name ?? ref.id;
 };

@@ -121,7 +121,15 @@ describe('designs in an engagement', () => {
     });
     const opened = await open(summary.id);
     expect(opened).toMatchObject({ sequence: 0, workspaceId: workspace.id, summary });
-    expect(opened.document).toMatchObject({ meta: { title: 'Phase 1' }, devices: {} });
+    // Its title block says whose it is and who drew it, so that no export leaves without.
+    expect(opened.document).toMatchObject({
+      meta: {
+        title: 'Phase 1',
+        createdBy: workspace.people.architect.name,
+        legalOwner: expect.stringMatching(/^Workspace /) as string,
+      },
+      devices: {},
+    });
     expect(opened.actions).toContain('design.edit');
   });
 
