@@ -4,6 +4,7 @@ import { floodGraph } from '#engine/flood/flood-graph.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
 import { largestInnerPacket } from '#engine/wire/largest-inner-packet.ts';
 import { bareStack } from '#engine/wire/stack.ts';
+import type { Design } from '#engine/model/design.ts';
 import { applyPatch } from '#engine/model/merge-patch.ts';
 import { route } from '#drawing/routing/route.ts';
 import { tidy } from '#drawing/tidy/tidy.ts';
@@ -21,6 +22,8 @@ import { heldBytes, timesOf } from './measure.ts';
 const sizes = [10, 100, 1_000, 10_000];
 const spokes = [5, 20, 60];
 
+const spokesOfOneHub = 200;
+
 const named = process.argv.slice(2).map(Number);
 if (named.some((size) => !Number.isInteger(size) || size < 10)) {
   console.error(
@@ -29,6 +32,15 @@ if (named.some((size) => !Number.isInteger(size) || size < 10)) {
   process.exit(1);
 }
 const chosen = named.length > 0 ? named : sizes;
+
+const withSpanningTree = (design: Design): Design =>
+  applyPatch(design, {
+    devices: Object.fromEntries(
+      Object.entries(design.devices)
+        .filter(([, { kind }]) => kind === 'switch')
+        .map(([id]) => [id, { settings: { spanningTree: { mode: 'on' } } }]),
+    ),
+  });
 
 const inMs = (ms: number): string => (ms < 1 ? ms.toFixed(3) : ms < 100 ? ms.toFixed(1) : ms.toFixed(0));
 
@@ -48,26 +60,42 @@ console.log(
   `${availableParallelism()} cores, load ${loadavg()[0]!.toFixed(1)}: a load above the cores makes everything slower.`,
 );
 
-let before: { readonly size: number; readonly measured: Measured } | undefined;
-for (const size of chosen) {
-  const measured = measureEngine(size);
+const report = (
+  design: Design,
+  devices: number,
+  before?: { readonly size: number; readonly measured: Measured },
+): Measured => {
+  const measured = measureEngine(design);
   console.log(
     `\n${Object.entries(measured.counts)
       .map(([what, count]) => `${count} ${what}`)
       .join(', ')}`,
   );
   measured.work.forEach((work, i) => {
-    const factor = before === undefined ? 1 : size / before.size;
+    const factor = before === undefined ? 1 : devices / before.size;
     console.log(
-      `  ${work.what.padEnd(45)}${inMs(work.times.medianMs).padStart(9)} ms (least ${inMs(work.times.leastMs)})${bound(work, size)}${growth(before?.measured.work[i], work, factor)}`,
+      `  ${work.what.padEnd(45)}${inMs(work.times.medianMs).padStart(9)} ms (least ${inMs(work.times.leastMs)})${bound(work, devices)}${growth(before?.measured.work[i], work, factor)}`,
     );
   });
+  return measured;
+};
+
+let before: { readonly size: number; readonly measured: Measured } | undefined;
+for (const size of chosen) {
+  const design = largeDesign(size);
+  const measured = report(design, size, before);
   for (const { what, ratio } of measured.ratios)
     console.log(`  storms take ${ratio.toFixed(2)} times what graphology takes for ${what}`);
-  const design = largeDesign(size);
   const kept = heldBytes(() => [floodGraph(indexNetwork(design)), runRules(design)]);
   console.log(`  memory beside the design itself: ${(kept / 1e6).toFixed(1)} MB`);
   before = { size, measured };
+}
+
+if (chosen.includes(1_000)) {
+  console.log('\nSpanning tree on in every switch:');
+  report(withSpanningTree(largeDesign(1_000)), 1_000);
+  console.log(`\nOne hub with ${spokesOfOneHub} sites:`);
+  report(hubDesign(spokesOfOneHub, { segments: ['a', 'b'] }), 1_000);
 }
 
 const stack = {

@@ -2,7 +2,7 @@ import { DirectedGraph } from 'graphology';
 import { connectedComponents, stronglyConnectedComponents } from 'graphology-components';
 import type { Design } from '#engine/model/design.ts';
 import type { MergePatch } from '#engine/model/merge-patch.ts';
-import { applyPatch } from '#engine/model/merge-patch.ts';
+import { applyPatch, inversePatch } from '#engine/model/merge-patch.ts';
 import { parseDesign } from '#engine/model/parse-design.ts';
 import { findStorms } from '#engine/flood/find-storms.ts';
 import type { FloodGraph } from '#engine/flood/flood-graph.ts';
@@ -12,7 +12,6 @@ import { indexNetwork } from '#engine/network/index-network.ts';
 import { everySingleFailure } from '#engine/outage/every-single-failure.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
 import { traceFrame } from '#engine/trace/trace-frame.ts';
-import { largeDesign } from './large-design.ts';
 import type { Times } from './measure.ts';
 import { timesOf } from './measure.ts';
 
@@ -52,6 +51,7 @@ const editsOf = (design: Design): readonly Edit[] => {
   const segment = Object.keys(design.segments)[0]!;
   const association = Object.keys(design.associations)[0]!;
   const { site } = design.devices[host]!;
+  const otherSite = Object.keys(design.sites).find((id) => id !== site)!;
   const plug = (device: string) => ({
     device,
     port: Object.keys(design.devices[device]!.ports).at(-1)!,
@@ -75,6 +75,10 @@ const editsOf = (design: Design): readonly Edit[] => {
       patch: (n) => ({
         devices: { [`h-new-${n}`]: { kind: 'host', site, name: `new-${n}`, ports: {} } },
       }),
+    },
+    {
+      what: 'a host to another site',
+      patch: (n) => ({ devices: { [host]: { site: otherSite, name: `moved-${n}` } } }),
     },
     { what: "a transport's MTU", patch: (n) => ({ transports: { [transport]: { mtu: 1_380 + n } } }) },
     {
@@ -111,9 +115,36 @@ const traced = (design: Design): Times => {
       destination: { kind: 'broadcast' as const },
       packet: { kind: 'non-ip' as const, frameBytes: 64, etherType: 0x0806 },
     }),
-    (probe) => traceFrame(design, probe),
+    (probe) => {
+      const traced = traceFrame(design, probe);
+      if (!traced.ok) throw new Error(JSON.stringify(traced.problems));
+    },
   );
 };
+
+/** Checks of a design in which one edit was made, each time after the one before was taken back and checked. */
+const afterEdits = (design: Design): readonly Work[] =>
+  editsOf(design).map(({ what, patch }) => {
+    let current = design;
+    let undo: MergePatch = {};
+    return {
+      what: `all rules after an edit: ${what}`,
+      times: timesOf(
+        (run) => {
+          current = applyPatch(current, undo);
+          runRules(current);
+          const edit = patch(run + 2);
+          undo = inversePatch(current, edit);
+          return edit;
+        },
+        (edit) => {
+          current = applyPatch(current, edit);
+          return runRules(current);
+        },
+      ),
+      boundMs: 16,
+    };
+  });
 
 export interface Measured {
   readonly counts: Readonly<Record<string, number>>;
@@ -123,8 +154,8 @@ export interface Measured {
 }
 
 /** Times every part of a check of one design. */
-export const measureEngine = (deviceCount: number): Measured => {
-  const text = JSON.stringify(largeDesign(deviceCount));
+export const measureEngine = (measured: Design): Measured => {
+  const text = JSON.stringify(measured);
   const fresh = (): Design => read(text);
   const indexed = () => indexNetwork(fresh());
   const flooded = () => {
@@ -160,19 +191,9 @@ export const measureEngine = (deviceCount: number): Measured => {
       { what: 'storms', times: storms },
       { what: 'segments of tunnels', times: timesOf(flooded, tunnelSegments) },
       { what: 'all rules from scratch', times: timesOf(fresh, runRules), boundMs: 100 },
-      ...editsOf(design).map(({ what, patch }) => ({
-        what: `all rules after an edit: ${what}`,
-        times: timesOf(
-          (run) => {
-            runRules(design);
-            return patch(run + 2);
-          },
-          (edit) => runRules(applyPatch(design, edit)),
-        ),
-        boundMs: 16,
-      })),
+      ...afterEdits(design),
       { what: 'a broadcast traced', times: traced(design), boundMs: 5 },
-      ...(deviceCount > 1_000
+      ...(Object.keys(design.devices).length > 1_000
         ? []
         : [{ what: 'every single failure', times: timesOf(fresh, everySingleFailure), boundMs: 2_000 }]),
     ],
