@@ -169,6 +169,33 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
     },
   ],
   [
+    'load with a limit chosen',
+    async (page) => {
+      await signInAs(page, 'architect');
+      await openSheet(page, 'phase 1');
+      await goToPage(page, '?drawer=load');
+      await page.getByRole('table', { name: 'Load in its limits' }).waitFor();
+    },
+  ],
+  [
+    'an outage',
+    async (page) => {
+      await signInAs(page, 'reviewer');
+      await openSheet(page, 'phase 1');
+      await goToPage(page, '?drawer=outage&failed=devices%2Ffw-ske');
+      await page.getByRole('heading', { name: 'What has failed' }).waitFor();
+    },
+  ],
+  [
+    'the export of a sheet',
+    async (page) => {
+      await signInAs(page, 'presales');
+      await openSheet(page, 'phase 1');
+      await page.getByRole('button', { name: 'Export', exact: true }).click();
+      await page.getByRole('img', { name: /^Preview of the sheet/ }).waitFor();
+    },
+  ],
+  [
     'the reference of checks',
     async (page) => {
       await signInAs(page, 'reviewer');

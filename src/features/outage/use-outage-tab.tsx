@@ -1,4 +1,4 @@
-import { useDeferredValue, useMemo, useState } from 'react';
+import { useDeferredValue, useEffect, useMemo, useState } from 'react';
 import { setInspecting } from '../../canvas/desk-state.ts';
 import type { DeskTab } from '../../canvas/desk-tab.ts';
 import { Button } from '../../components/button.tsx';
@@ -56,6 +56,11 @@ export function useOutageTab(active: boolean): DeskTab {
     () => (facts === undefined || view !== 'hosts' ? [] : partedRows(design, facts.outage)),
     [design, facts, view],
   );
+  // An address that somebody was sent opens on what comes of the failure, as it did for the sender.
+  const anyFailed = failed.length > 0;
+  useEffect(() => {
+    if (anyFailed) setInspecting(true);
+  }, [anyFailed]);
   // The same while things are only moved about on the sheet.
   const tried = network?.design;
   const singles = useFailureRun('singles', view === 'every' ? tried : undefined);
