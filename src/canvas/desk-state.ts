@@ -31,8 +31,8 @@ interface DeskState {
   readonly listingKeys: boolean;
   /** The note whose words are typed on the sheet. */
   readonly editedNote: string | undefined;
-  /** A layout is being worked out. */
-  readonly tidying: boolean;
+  /** A layout is being worked out; aborting gives it up. */
+  readonly tidying: AbortController | undefined;
   /** The inspector stands beside the sheet; a selection opens it, its button shuts it. */
   readonly inspecting: boolean;
   /** Nobody has moved over the sheet since it was last fitted: it stays fitted while the room for it changes. */
@@ -48,7 +48,7 @@ const atRest: DeskState = {
   searching: false,
   listingKeys: false,
   editedNote: undefined,
-  tidying: false,
+  tidying: undefined,
   inspecting: false,
   fitted: true,
 };
@@ -68,6 +68,9 @@ export const setInspecting = (inspecting: boolean): void => useDesk.setState({ i
 export const setFitted = (fitted: boolean): void => useDesk.setState({ fitted });
 export const setListingKeys = (listingKeys: boolean): void => useDesk.setState({ listingKeys });
 export const editNote = (editedNote: string | undefined): void => useDesk.setState({ editedNote });
-export const setTidying = (tidying: boolean): void => useDesk.setState({ tidying });
+export const setTidying = (tidying: AbortController | undefined): void => useDesk.setState({ tidying });
 /** Forgets everything, as when another design is opened. */
-export const clearDesk = (): void => useDesk.setState(atRest);
+export const clearDesk = (): void => {
+  useDesk.getState().tidying?.abort();
+  useDesk.setState(atRest);
+};

@@ -5,9 +5,9 @@ import { route } from '../drawing/routing/route.ts';
 import type { SiteLayout } from '../drawing/tidy/site-layout.ts';
 import { tidySite } from '../drawing/tidy/tidy-site.ts';
 import { tidySelection } from '../drawing/tidy/tidy-selection.ts';
-import { tidy } from '../drawing/tidy/tidy.ts';
 import type { Design } from '../engine/model/design.ts';
 import type { MergePatch } from '../engine/model/merge-patch.ts';
+import { tidyHere, type TidyWhole } from './tidy-in-worker.ts';
 
 /** Lays out one graph; the browser does it in a worker. */
 export type LayOut = (graph: ElkNode) => Promise<ElkNode>;
@@ -18,14 +18,19 @@ const asAnswer = (answer: ElkNode): Pick<ElkGraph, 'children'> => ({
 });
 
 /** A new layout of the whole sheet. Sites that none of the drawing's own templates fits are laid out by `layOut`. */
-export const tidySheet = async (design: Design, layOut: LayOut): Promise<MergePatch> => {
+export const tidySheet = async (
+  design: Design,
+  layOut: LayOut,
+  tidyWhole: TidyWhole = tidyHere,
+  signal?: AbortSignal,
+): Promise<MergePatch> => {
   const laidOut = await Promise.all(
     unusualSites(design).map(async (site): Promise<readonly [string, SiteLayout]> => [
       site.id,
       positionsFromElk(site, asAnswer(await layOut(elkGraphOf(site) as ElkNode))),
     ]),
   );
-  return tidy(design, { siteLayouts: Object.fromEntries(laidOut) });
+  return tidyWhole(design, { siteLayouts: Object.fromEntries(laidOut) }, signal);
 };
 
 /** A new layout of some devices, where they stand together; locked ones stay. */

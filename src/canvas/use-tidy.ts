@@ -6,6 +6,7 @@ import { applyPatch } from '../engine/model/merge-patch.ts';
 import { useOpenDesign } from '../workspace/open-design-context.tsx';
 import { setTidying, useDesk } from './desk-state.ts';
 import { layOut } from './elk/lay-out.ts';
+import { tidyInWorker } from './tidy-in-worker.ts';
 import { tidyDevices, tidyOneSite, tidySheet } from './tidy-sheet.ts';
 import { useView } from './use-view.ts';
 
@@ -25,9 +26,11 @@ export function useTidy(): { readonly tidy: (refs: readonly ElementRef[]) => Pro
   const view = useView();
   const { fit } = view;
   const tidy = useCallback(
-    async (refs: readonly ElementRef[]): Promise<void> => {
-      if (useDesk.getState().tidying) return;
-      setTidying(true);
+    async function tidy(refs: readonly ElementRef[]): Promise<void> {
+      if (useDesk.getState().tidying !== undefined) return;
+      const working = new AbortController();
+      const { signal } = working;
+      setTidying(working);
       const { document } = open.store.getState();
       const { site, devices } = tidied(refs);
       try {
@@ -36,7 +39,16 @@ export function useTidy(): { readonly tidy: (refs: readonly ElementRef[]) => Pro
             ? await tidyOneSite(document, site, layOut)
             : devices.length > 0
               ? await tidyDevices(document, devices, layOut)
-              : await tidySheet(document, layOut);
+              : await tidySheet(document, layOut, tidyInWorker, signal);
+        if (signal.aborted) return;
+        if (open.store.getState().document !== document) {
+          showToast({
+            tone: 'other',
+            text: 'The design changed while its layout was worked out, so nothing was moved.',
+            action: { label: 'Tidy again', onSelect: () => void tidy(refs) },
+          });
+          return;
+        }
         const label =
           site !== undefined
             ? `Tidy ${document.sites[site]?.name ?? 'the site'}`
@@ -48,12 +60,13 @@ export function useTidy(): { readonly tidy: (refs: readonly ElementRef[]) => Pro
           showToast({ tone: 'failed', text: done.problems.map((problem) => problem.expected).join('; ') });
         else if (site === undefined && devices.length === 0) fit(route(applyPatch(document, patch)).sheet);
       } catch {
+        if (signal.aborted) return;
         showToast({
           tone: 'failed',
           text: 'The layout could not be worked out. Check your connection and try again.',
         });
       } finally {
-        setTidying(false);
+        if (useDesk.getState().tidying === working) setTidying(undefined);
       }
     },
     [open, fit],
