@@ -2,7 +2,7 @@ import type { Design } from '../model/design.ts';
 import type { Id } from '../model/scalars.ts';
 import { indexNetwork } from '../network/index-network.ts';
 import type { Network } from '../network/network.ts';
-import { freeVnis } from '../numbering/free-numbers.ts';
+import { freeTunnelName, freeVnis } from '../numbering/free-numbers.ts';
 import { segmentsByForwarder } from '../rules/carried-segments.ts';
 import type { Answer, Problem } from '../wire/problem.ts';
 import { refuse } from '../wire/problem.ts';
@@ -151,7 +151,7 @@ export const joinSites = (
   const { letter, mustBeFiltered } = draft.entries('segments')[segment]!;
   const tunnel = addTunnel(draft, a, b, {
     vni: vnis.vnis[0]!,
-    name: draft.freeName('tunnels', `tn-${a.code}-${b.code}-${letter.toLowerCase()}`),
+    name: freeTunnelName(draft.design(), `tn-${a.code}-${b.code}-${letter.toLowerCase()}`, context.numbering),
     ...(association === undefined ? {} : { association }),
   });
   const forwarders: Id[] = [];

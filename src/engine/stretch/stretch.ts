@@ -2,7 +2,7 @@ import type { Design, Entry } from '../model/design.ts';
 import type { MergePatch } from '../model/merge-patch.ts';
 import type { Id } from '../model/scalars.ts';
 import { freeLetters } from '../numbering/free-letters.ts';
-import { freeLoopbacks, freeVlans, freeVnis } from '../numbering/free-numbers.ts';
+import { freeLoopbacks, freeTunnelName, freeVlans, freeVnis } from '../numbering/free-numbers.ts';
 import type { NumberingContext } from '../numbering/numbering-context.ts';
 import { STANDARD_PAYLOAD_BYTES } from '../reference/ethernet.ts';
 import type { Answer, Problem } from '../wire/problem.ts';
@@ -229,7 +229,7 @@ const addForwarders = (built: Built, segment: number, site: number): ((join: Joi
   return () => forwarder;
 };
 
-const addOverlay = (built: Built): void => {
+const addOverlay = (built: Built, numbering: NumberingContext | undefined): void => {
   const { form, numbers, draft, sites, endpoints, transports } = built;
   const endOf = (site: number, join: Join): OverlayEnd => {
     const { gateway, code, landings } = sites[site]!;
@@ -261,7 +261,7 @@ const addOverlay = (built: Built): void => {
     const association = associations.get(join.join(' '));
     const tunnel = addTunnel(draft, endOf(a, join), endOf(b, join), {
       vni: numbers.vnis[i]!,
-      name: draft.freeName('tunnels', `tn-${sites[a]!.code}-${sites[b]!.code}-${letter}`),
+      name: freeTunnelName(draft.design(), `tn-${sites[a]!.code}-${sites[b]!.code}-${letter}`, numbering),
       ...(association === undefined ? {} : { association }),
     });
     const isMesh = form.topology.kind === 'mesh' && sitesOf(form, form.segments[segment]!).length > 2;
@@ -365,7 +365,7 @@ export const stretch = (input: unknown, context: StretchContext): Answer<{ reado
   if (!numbers.ok) return numbers;
   const draft = draftOf(context.design, context.newId);
   const built = addGround(form, numbers, draft);
-  addOverlay(built);
+  addOverlay(built, context.numbering);
   const problems = sizeSegments(built);
   if (problems.length > 0) return refuse(problems);
   addPolicies(built);

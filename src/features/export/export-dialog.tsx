@@ -19,8 +19,8 @@ import type { SheetChoice } from './use-sheet-export.ts';
 import { useChosenPicture, useSheetExport } from './use-sheet-export.ts';
 
 const lookWords: { readonly [look in ExportChoice['look']]: string } = {
-  paper: 'Light',
-  slate: 'Dark',
+  paper: 'Paper',
+  slate: 'Slate',
   print: 'Black on white',
   'print-colour': 'Black on white, segments in colour',
 };
@@ -139,7 +139,7 @@ export function ExportDialog({ onClose }: { readonly onClose: () => void }) {
                 />
                 {format !== 'png' && (
                   <SelectCell
-                    label="Paper"
+                    label="Sheet size"
                     span={2}
                     value={choice.paper}
                     options={[

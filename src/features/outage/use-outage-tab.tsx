@@ -7,6 +7,7 @@ import { showToast } from '../../components/toast.tsx';
 import type { ElementRef } from '../../engine/model/design.ts';
 import { indexNetwork } from '../../engine/network/index-network.ts';
 import type { DesignFacts } from '../../engine/network/network.ts';
+import { useMedia } from '../../lib/use-media.ts';
 import { useSearchValues } from '../../lib/use-search-values.ts';
 import { useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { kindOf } from '../../workspace/operations/name-of.ts';
@@ -58,9 +59,11 @@ export function useOutageTab(active: boolean): DeskTab {
   );
   // An address that somebody was sent opens on what comes of the failure, as it did for the sender.
   const anyFailed = failed.length > 0;
+  // On a phone it would leave the sheet no room; there the drawer says it, and the bar's button opens the rest.
+  const isNarrow = useMedia('(max-width: 767px)');
   useEffect(() => {
-    if (anyFailed) setInspecting(true);
-  }, [anyFailed]);
+    if (anyFailed && !isNarrow) setInspecting(true);
+  }, [anyFailed, isNarrow]);
   // The same while things are only moved about on the sheet.
   const tried = network?.design;
   const singles = useFailureRun('singles', view === 'every' ? tried : undefined);
@@ -87,7 +90,7 @@ export function useOutageTab(active: boolean): DeskTab {
     change({ failed: failedText(next) });
     // What has come of it stands where the inspector would.
     open.select([]);
-    setInspecting(true);
+    if (!isNarrow) setInspecting(true);
   };
   const restore = (ref: ElementRef): void => fail(toggled(failed, ref));
   const restoreAll = (): void => fail([]);

@@ -9,6 +9,8 @@ import { emptyDesign } from '#engine/model/design.ts';
 import { applyPatch, inversePatch } from '#engine/model/merge-patch.ts';
 import { parseDesign } from '#engine/model/parse-design.ts';
 import { indexNetwork } from '#engine/network/index-network.ts';
+import { numberClashes } from '#engine/numbering/number-clashes.ts';
+import { numbersOf } from '#engine/numbering/numbers-of.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
 import { stretch } from '#engine/stretch/stretch.ts';
 import { formOf, stemIds, validForms } from '../../support/stretch-forms.ts';
@@ -28,6 +30,14 @@ const told = (design: Design): readonly string[] =>
   runRules({ ...design, meta: { ...design.meta, example: true } }).map(
     ({ rule, severity, sentence }) => `${rule} (${severity}): ${sentence}`,
   );
+
+test('tunnels get names and numbers that no other design of the workspace has', () => {
+  const form = formOf(3);
+  const other = numbersOf(built(form));
+  const answer = stretch(form, { design: empty, newId: stemIds, numbering: { otherDesigns: [other] } });
+  if (!answer.ok) throw new Error(JSON.stringify(answer.problems));
+  expect(numberClashes(applyPatch(empty, answer.patch), { otherDesigns: [other] })).toEqual([]);
+});
 
 describe('any valid form', () => {
   // What nobody told the form stays unknown, and LLDP stays at home: all is said, and none of it blocks.
