@@ -25,9 +25,9 @@ describe('load and outage', () => {
     await signInAs(page, 'architect');
     await newDesign(page, 'Load of the terminals', 'Demo');
     await page.getByRole('tab', { name: 'Load' }).click();
-    await page.getByText(/fw-ske wan1 on Coastal access, out, fills first: 65 %/).waitFor();
+    await page.getByText(/fw-ske wan1 on Coastal access, out, fills first: 65\s%/).waitFor();
     await page.locator('[data-part="tag"]').first().waitFor();
-    expect(await page.locator('[data-part="tag"]').first().textContent()).toContain('first full, 65 %');
+    expect(await page.locator('[data-part="tag"]').first().textContent()).toMatch(/first full, 65\s%/);
 
     const times = page.getByLabel('Times');
     await times.fill('2000');
@@ -35,7 +35,9 @@ describe('load and outage', () => {
     await page.getByText('Times 2000 is not possible. Type a number above 0, up to 1000.').waitFor();
     await times.fill('3');
     await times.press('Enter');
-    await page.getByText(/is asked for 19\.5 Mbit\/s and has 10 Mbit\/s: only 51 % of this fits/).waitFor();
+    await page
+      .getByText(/is asked for 19\.5\sMbit\/s and has 10\sMbit\/s: only 51\s% of this fits/)
+      .waitFor();
     expect(new URL(page.url()).searchParams.get('times')).toBe('3');
 
     await page.getByText('Demands', { exact: true }).click();

@@ -80,8 +80,10 @@ describe('an architect on a real design', () => {
 
     // The offered fix makes it whole.
     await finding(page, /VNI 10001/)
-      .getByRole('button', { name: /10001/ })
-      .last()
+      .getByRole('button', { name: /VNI 10001/ })
+      .click();
+    await finding(page, /VNI 10001/)
+      .getByRole('button', { name: /^Set Site \d to 10001$/ })
       .click();
     await expect.poll(() => finding(page, /VNI 10001 at/).count()).toBe(0);
     await expect.poll(() => page.locator('[data-part="cut"]').count()).toBe(0);
