@@ -114,7 +114,7 @@ export function SinglesTable({ design, rows, failed, onFail, ...table }: Failure
     <WorkTable
       {...table}
       caption="Every single failure"
-      filterLabel="Name, kind or yes"
+      filterLabel="Name or kind"
       columns={columns}
       rows={rows}
       rowKey={({ element }) => elementKey(element)}
