@@ -15,6 +15,15 @@ const words: { readonly [action in Action]: string } = {
   'finding.waive': 'waive findings',
   'pools.edit': 'change the pools of numbers',
   'profile.edit': 'change equipment profiles',
+  'comment.write': 'write comments',
+  'review.ask': 'ask for a review or take the question back',
+  'review.decide': 'approve designs or send them back',
+  'design.build': 'say that a design was built or superseded',
+  'revision.read': 'open revisions of designs',
+  'share.manage': 'share revisions or end shares',
+  'people.manage': 'invite people, change their roles or remove them',
+  'workspace.manage': 'change the workspace itself',
+  'activity.read': 'read who did what',
 };
 
 /**

@@ -1,17 +1,34 @@
 import type { Action, Role } from '#contract/session.ts';
 import { actions } from '#contract/session.ts';
 
-/**
- * What each role may do. Every design is a draft so far, and installers work from approved revisions alone: they see which
- * engagements and designs there are, and open none.
- */
+const ofOwnersAlone: readonly Action[] = ['pools.edit', 'profile.edit', 'people.manage', 'workspace.manage'];
+const ofSecondPairsOfEyes: readonly Action[] = ['finding.waive', 'review.decide'];
+
+/** What each role may do. Installers work from approved revisions alone: drafts they see in lists and can't open. */
 export const permissions: { readonly [role in Role]: readonly Action[] } = {
   owner: actions,
-  // Who draws does not waive: that takes a second pair of eyes. Pools and profiles are the team's, not one design's.
-  architect: actions.filter((action) => !['finding.waive', 'pools.edit', 'profile.edit'].includes(action)),
-  reviewer: ['workspace.read', 'design.read', 'finding.waive'],
-  presales: ['workspace.read', 'design.read', 'design.create'],
-  installer: ['workspace.read'],
+  // Who draws neither waives nor approves. Pools and profiles are the team's, not one design's.
+  architect: actions.filter(
+    (action) => !ofOwnersAlone.includes(action) && !ofSecondPairsOfEyes.includes(action),
+  ),
+  reviewer: [
+    'workspace.read',
+    'design.read',
+    'finding.waive',
+    'comment.write',
+    'review.decide',
+    'revision.read',
+    'activity.read',
+  ],
+  presales: [
+    'workspace.read',
+    'design.read',
+    'design.create',
+    'comment.write',
+    'revision.read',
+    'share.manage',
+  ],
+  installer: ['workspace.read', 'revision.read'],
 };
 
 /** An action that a membership must allow, or the weaker wishes of routes that belong to no workspace. */

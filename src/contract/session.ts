@@ -16,6 +16,15 @@ export const actions = [
   'finding.waive',
   'pools.edit',
   'profile.edit',
+  'comment.write',
+  'review.ask',
+  'review.decide',
+  'design.build',
+  'revision.read',
+  'share.manage',
+  'people.manage',
+  'workspace.manage',
+  'activity.read',
 ] as const;
 export type Action = (typeof actions)[number];
 
