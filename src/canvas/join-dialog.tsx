@@ -7,6 +7,7 @@ import type { Design } from '../engine/model/design.ts';
 import { isGateway } from '../engine/model/devices.ts';
 import { associationPath } from '../engine/network/association-path.ts';
 import { indexNetwork } from '../engine/network/index-network.ts';
+import { useNumbering } from '../workspace/checks-context.tsx';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
 import { linksIn } from '../workspace/operations/connect-ports.ts';
 import { freeVni } from '../workspace/operations/free-names.ts';
@@ -113,11 +114,12 @@ const runsOver = (design: Design, association: string, transport: string): boole
 
 function OpenJoinDialog({ request }: { readonly request: JoinRequest }) {
   const open = useOpenDesign();
+  const numbering = useNumbering();
   const design = useOpenState((state) => state.document);
   const { kind } = request;
   const [a, setA] = useState(valueOf(request.a));
   const [b, setB] = useState(valueOf(request.b));
-  const [vni, setVni] = useState<number | undefined>(() => freeVni(design));
+  const [vni, setVni] = useState<number | undefined>(() => freeVni(design, numbering));
   const [segment, setSegment] = useState<string>(
     Object.entries(design.segments).length === 1 ? Object.keys(design.segments)[0]! : '',
   );
@@ -157,6 +159,7 @@ function OpenJoinDialog({ request }: { readonly request: JoinRequest }) {
           ...(segment === '' ? {} : { segment }),
         },
         newEntryId,
+        numbering,
       );
     }
     if (kind === 'association') return associateGateways(design, a, b, newEntryId);

@@ -5,6 +5,7 @@ import type { Design, ElementRef } from '../engine/model/design.ts';
 import type { DeviceKind } from '../engine/model/devices.ts';
 import { isGateway } from '../engine/model/devices.ts';
 import { applyPatch, joinPatches } from '../engine/model/merge-patch.ts';
+import type { NumberingContext } from '../engine/numbering/numbering-context.ts';
 import type { NewId, Operation } from '../workspace/operations/operation.ts';
 import { refused } from '../workspace/operations/operation.ts';
 import {
@@ -65,6 +66,7 @@ export const placePart = (
   part: PlacedPart,
   at: Point,
   newId: NewId,
+  context: NumberingContext,
   site: string | undefined = siteAt(geometry, at),
 ): Operation => {
   const { frame, titleBlock } = geometry.sheet;
@@ -93,7 +95,7 @@ export const placePart = (
   const device = deviceAt(geometry, at) ?? deviceAt(geometry, at, deviceReachPx);
   if (device === undefined)
     return refused('A loopback endpoint docks on a device: drop it on a firewall, an HA pair or a router.');
-  return placeEndpoint(design, device, newId);
+  return placeEndpoint(design, device, newId, context);
 };
 
 /**

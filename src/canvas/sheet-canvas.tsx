@@ -14,6 +14,7 @@ import type { Decorations, Tone } from '../drawing/decorations.ts';
 import { elementKey } from '../drawing/decorations.ts';
 import { levelOf, type Level } from '../drawing/parts/level-of-detail.ts';
 import type { ElementRef } from '../engine/model/design.ts';
+import { useNumbering } from '../workspace/checks-context.tsx';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
 import { isCollapsed } from '../workspace/operations/collapse-sites.ts';
 import { dockEndpoint, isLocked } from '../workspace/operations/move-parts.ts';
@@ -77,6 +78,7 @@ const tonesWith = (
 /** The sheet: everything of the design that is drawn, to be looked at, selected, moved and connected. */
 export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon }: SheetCanvasProps) {
   const open = useOpenDesign();
+  const numbering = useNumbering();
   const design = useOpenState((state) => state.document);
   const editable = useOpenState((state) => state.editable);
   const selection = useOpenState((state) => state.selection);
@@ -247,7 +249,7 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
     const pinned = about === undefined ? undefined : pinNoteBeside(design, about, newEntryId);
     const done = perform(
       open,
-      pinned?.ok === true ? pinned : placePart(design, settled, part, at, newEntryId),
+      pinned?.ok === true ? pinned : placePart(design, settled, part, at, newEntryId, numbering),
     );
     if (!done.ok) return say(done.why);
     startPlacing(undefined);

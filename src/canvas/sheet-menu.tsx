@@ -2,6 +2,7 @@ import { useRef } from 'react';
 import { Menu, type MenuGroup, type MenuItem } from '../components/menu.tsx';
 import type { Design } from '../engine/model/design.ts';
 import type { Point } from '../drawing/geometry.ts';
+import { useNumbering } from '../workspace/checks-context.tsx';
 import { newEntryId, useOpenDesign } from '../workspace/open-design-context.tsx';
 import { pasteParts, type Parts } from '../workspace/operations/copy-parts.ts';
 import { kindOf, nameOf } from '../workspace/operations/name-of.ts';
@@ -47,6 +48,7 @@ const placed: readonly (readonly [PlacedPart, string])[] = [
 
 function OpenSheetMenu({ menu, commands }: { readonly menu: OpenedMenu; readonly commands: Commands }) {
   const open = useOpenDesign();
+  const numbering = useNumbering();
   const { settled } = useDrawn();
   const view = useView();
   const { isWhole } = useViewChoice();
@@ -70,7 +72,14 @@ function OpenSheetMenu({ menu, commands }: { readonly menu: OpenedMenu; readonly
             detail: keyWords('paste'),
             onSelect: () =>
               void actions.run(
-                pasteParts(open.store.getState().document, parts, pasteBy(parts, at), site, newEntryId),
+                pasteParts(
+                  open.store.getState().document,
+                  parts,
+                  pasteBy(parts, at),
+                  site,
+                  newEntryId,
+                  numbering,
+                ),
               ),
           },
         ];
@@ -78,7 +87,9 @@ function OpenSheetMenu({ menu, commands }: { readonly menu: OpenedMenu; readonly
     const at = view.fromScreen(menu.at);
     const site = siteAt(settled, at);
     const put = (part: PlacedPart): void => {
-      const done = actions.run(placePart(open.store.getState().document, settled, part, at, newEntryId));
+      const done = actions.run(
+        placePart(open.store.getState().document, settled, part, at, newEntryId, numbering),
+      );
       if (done && part === 'note') editNote(open.store.getState().selection[0]?.id);
     };
     const name = site === undefined ? undefined : design.sites[site]?.name;

@@ -24,7 +24,7 @@ export function SegmentsPage() {
   const document = useOpenState((state) => state.document);
   const selection = useOpenState((state) => state.selection);
   const editable = useOpenState((state) => state.editable);
-  const { openFindings } = useChecks();
+  const { openFindings, numbering } = useChecks();
   const { valueOf, change } = useSearchValues();
   const [inventory, setInventory] = useState(false);
   usePageTitle(`Segments of ${document.meta.title}`);
@@ -41,7 +41,7 @@ export function SegmentsPage() {
     const done = perform(open, operation);
     if (!done.ok) showToast({ tone: 'failed', text: done.why });
   };
-  const addSegment = editable ? () => act(placeSegment(document, newEntryId)) : undefined;
+  const addSegment = editable ? () => act(placeSegment(document, newEntryId, numbering)) : undefined;
   // A demand needs a segment that lands at two sites.
   const demandFor = only ?? segments.find(({ sites }) => sites > 1)?.id;
   const addDemand =

@@ -26,6 +26,7 @@ export interface Checks {
 }
 
 const ChecksContext = createContext<Checks | null>(null);
+const Numbering = createContext(noNumberingContext);
 
 interface ChecksProviderProps {
   readonly numbering?: NumberingContext;
@@ -60,7 +61,11 @@ export function ChecksProvider({
       behind: checked !== current,
     };
   }, [findings, waived, checked, current, numbering]);
-  return <ChecksContext value={checks}>{children}</ChecksContext>;
+  return (
+    <Numbering value={numbering}>
+      <ChecksContext value={checks}>{children}</ChecksContext>
+    </Numbering>
+  );
 }
 
 export function useChecks(): Checks {
@@ -68,6 +73,9 @@ export function useChecks(): Checks {
   if (checks === null) throw new Error('No checks run here.');
   return checks;
 }
+
+/** Pools and other designs' numbers, for who gives new ones: unlike the checks the same until the server says otherwise. */
+export const useNumbering = (): NumberingContext => use(Numbering);
 
 /** The tried cures of one finding; each costs a run of all rules, so ask only for what is shown. */
 export function useFixes(finding: Finding | undefined): readonly Fix[] {

@@ -169,7 +169,7 @@ describe('putting parts down', () => {
   const site = geometry.sites.find((candidate) => candidate.id === 's1')!.rect;
 
   it('takes the site whose frame is there, or makes one', () => {
-    const inside = placePart(design, geometry, 'switch', { x: site.x + 50, y: site.y + 50 }, newId);
+    const inside = placePart(design, geometry, 'switch', { x: site.x + 50, y: site.y + 50 }, newId, {});
     expect(inside).toMatchObject({ patch: { devices: { 'sw-new': { site: 's1' } } } });
     const outside = placePart(
       design,
@@ -177,6 +177,7 @@ describe('putting parts down', () => {
       'switch',
       { x: geometry.sheet.frame.x + 4, y: geometry.sheet.frame.y + 4 },
       newId,
+      {},
     );
     expect(outside).toMatchObject({
       patch: { sites: { 'site-new': {} }, devices: { 'sw-new': { site: 'site-new' } } },
@@ -193,6 +194,7 @@ describe('putting parts down', () => {
         part,
         { x: 400, y: 300 },
         (prefix) => `${prefix}-${Math.abs(prefix.length)}${part}`,
+        {},
       );
       expect(operation.ok && parseDesign(applyPatch(design, operation.patch)).ok).toBe(true);
     },

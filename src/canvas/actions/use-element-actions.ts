@@ -4,6 +4,7 @@ import { showToast } from '../../components/toast.tsx';
 import { anchorOf } from '../../drawing/routing/anchors.ts';
 import type { ElementRef } from '../../engine/model/design.ts';
 import { patchAt } from '../../engine/model/merge-patch.ts';
+import { useNumbering } from '../../workspace/checks-context.tsx';
 import { newEntryId, perform, useOpenDesign } from '../../workspace/open-design-context.tsx';
 import { alignElements, distributeElements } from '../../workspace/operations/align-parts.ts';
 import { setCollapsed } from '../../workspace/operations/collapse-sites.ts';
@@ -65,6 +66,7 @@ const focusInspector = (named = false): void => {
 /** Does what menus, keys and search offer for elements. The same object as long as the design is open. */
 export const useElementActions = (around: Surroundings = {}): DeskActions => {
   const open = useOpenDesign();
+  const numbering = useNumbering();
   const { settled } = useDrawn();
   const sheet = useView();
   const tidy = useTidy();
@@ -88,7 +90,7 @@ export const useElementActions = (around: Surroundings = {}): DeskActions => {
     const place = (part: PlacedPart, site?: string): void => {
       const { settled, sheet } = latest.current;
       const at = freePlace(now(), settled, part, site, sheet.middle());
-      make(placePart(now(), settled, part, at, newEntryId, site));
+      make(placePart(now(), settled, part, at, newEntryId, numbering, site));
     };
     const go = (ref: ElementRef): boolean => {
       const at = anchorOf(latest.current.settled, ref, now());
@@ -148,7 +150,9 @@ export const useElementActions = (around: Surroundings = {}): DeskActions => {
       duplicate: (refs) => {
         const parts = copied(refs);
         if (parts === undefined) return say('Select a device, a site or a note to duplicate it.');
-        make(pasteParts(now(), parts, { dx: copyOffsetPx, dy: copyOffsetPx }, undefined, newEntryId));
+        make(
+          pasteParts(now(), parts, { dx: copyOffsetPx, dy: copyOffsetPx }, undefined, newEntryId, numbering),
+        );
       },
       copy: (refs) => {
         const parts = copied(refs);
@@ -186,7 +190,7 @@ export const useElementActions = (around: Surroundings = {}): DeskActions => {
       showOnly: (segments) => latest.current.choice.showOnly(segments),
       join: askToJoin,
       addDevice: (kind, site) => place(kind, site),
-      addEndpoint: (device) => make(placeEndpoint(now(), device, newEntryId)),
+      addEndpoint: (device) => make(placeEndpoint(now(), device, newEntryId, numbering)),
       addNote: (about) => {
         if (!run(pinNoteBeside(now(), about, newEntryId))) return;
         const { onMade } = latest.current.around;
@@ -195,5 +199,5 @@ export const useElementActions = (around: Surroundings = {}): DeskActions => {
         if (note !== undefined) editNote(note.id);
       },
     };
-  }, [open]);
+  }, [open, numbering]);
 };

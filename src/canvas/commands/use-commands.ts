@@ -3,6 +3,7 @@ import { showToast } from '../../components/toast.tsx';
 import { around } from '../../drawing/routing/rects.ts';
 import { anchorOf } from '../../drawing/routing/anchors.ts';
 import type { Design, ElementRef } from '../../engine/model/design.ts';
+import { useNumbering } from '../../workspace/checks-context.tsx';
 import { newEntryId, useOpenDesign } from '../../workspace/open-design-context.tsx';
 import type { Alignment } from '../../workspace/operations/align-parts.ts';
 import { canCollapse, isCollapsed } from '../../workspace/operations/collapse-sites.ts';
@@ -54,6 +55,7 @@ export const siteOf = (design: Design, ref: ElementRef | undefined): string | un
 /** What every command of the sheet does. The same object as long as the design is open. */
 export function useCommands(): Commands {
   const open = useOpenDesign();
+  const numbering = useNumbering();
   const { settled } = useDrawn();
   const view = useView();
   const nudge = useNudge();
@@ -233,8 +235,9 @@ export function useCommands(): Commands {
             { dx: pasteOffsetPx, dy: pasteOffsetPx },
             siteOf(now(), first()),
             newEntryId,
+            numbering,
           ),
         ),
     };
-  }, [open, actions]);
+  }, [open, actions, numbering]);
 }

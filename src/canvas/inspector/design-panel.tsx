@@ -1,6 +1,7 @@
 import { CellGrid, ReadCell } from '../../components/cell.tsx';
 import { collections, type Collection } from '../../engine/model/design.ts';
 import { sheetSizes } from '../../engine/model/layout.ts';
+import { useNumbering } from '../../workspace/checks-context.tsx';
 import { newEntryId, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { placeSegment } from '../../workspace/operations/place-parts.ts';
 import { AddButton } from './add-button.tsx';
@@ -30,6 +31,7 @@ const countLabels: Readonly<Record<Collection, string>> = {
 export function DesignPanel() {
   const design = useOpenState((state) => state.document);
   const open = useOpenDesign();
+  const numbering = useNumbering();
   const run = usePerform();
   const editable = useEditable();
   const segments = Object.entries(design.segments).sort(
@@ -75,7 +77,7 @@ export function DesignPanel() {
           editable && (
             <AddButton
               subject="a segment"
-              onClick={() => run(placeSegment(open.store.getState().document, newEntryId))}
+              onClick={() => run(placeSegment(open.store.getState().document, newEntryId, numbering))}
             >
               Add
             </AddButton>

@@ -3,6 +3,7 @@ import type { ElementRef, Entry } from '../../engine/model/design.ts';
 import { hostFaces, isGateway } from '../../engine/model/devices.ts';
 import { patchAt } from '../../engine/model/merge-patch.ts';
 import { otherEnd } from '../../engine/network/network.ts';
+import { useNumbering } from '../../workspace/checks-context.tsx';
 import { newEntryId, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { freeName } from '../../workspace/operations/free-names.ts';
 import { placeEndpoint } from '../../workspace/operations/place-parts.ts';
@@ -166,6 +167,7 @@ function PairCells({ id }: { readonly id: string }) {
 function Overlay({ id, device }: { readonly id: string; readonly device: Entry<'devices'> }) {
   const network = useNetwork();
   const open = useOpenDesign();
+  const numbering = useNumbering();
   const editable = useEditable();
   const commit = useCommit();
   const run = usePerform();
@@ -186,7 +188,7 @@ function Overlay({ id, device }: { readonly id: string; readonly device: Entry<'
           editable && (
             <AddButton
               subject="an endpoint"
-              onClick={() => run(placeEndpoint(open.store.getState().document, id, newEntryId))}
+              onClick={() => run(placeEndpoint(open.store.getState().document, id, newEntryId, numbering))}
             >
               Add
             </AddButton>

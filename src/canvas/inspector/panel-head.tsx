@@ -8,6 +8,7 @@ import { Tooltip } from '../../components/tooltip.tsx';
 import { useCommittedText } from '../../components/use-committed-text.ts';
 import type { Design, ElementRef } from '../../engine/model/design.ts';
 import { classNames } from '../../lib/class-names.ts';
+import { useNumbering } from '../../workspace/checks-context.tsx';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { copyParts, pasteParts } from '../../workspace/operations/copy-parts.ts';
 import { canLock, isLocked, setLocked, type Standing } from '../../workspace/operations/move-parts.ts';
@@ -113,6 +114,7 @@ function LockButton({ of: ref }: { readonly of: ElementRef }) {
 
 function ElementMenu({ of: ref }: { readonly of: ElementRef }) {
   const open = useOpenDesign();
+  const numbering = useNumbering();
   const standing = useStanding();
   const run = usePerform();
   const { menuOf } = useInspectorTools();
@@ -121,7 +123,9 @@ function ElementMenu({ of: ref }: { readonly of: ElementRef }) {
     const design = now();
     const parts = copyParts(design, standing(design), [ref]);
     if (parts !== undefined)
-      run(pasteParts(design, parts, { dx: copyOffsetPx, dy: copyOffsetPx }, undefined, newEntryId));
+      run(
+        pasteParts(design, parts, { dx: copyOffsetPx, dy: copyOffsetPx }, undefined, newEntryId, numbering),
+      );
   };
   const canCopy =
     ref.port === undefined &&

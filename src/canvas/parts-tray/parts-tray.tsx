@@ -7,6 +7,7 @@ import { Icon } from '../../components/icon.tsx';
 import { SegmentSwatch } from '../../components/segment-swatch.tsx';
 import { showToast } from '../../components/toast.tsx';
 import { Tooltip } from '../../components/tooltip.tsx';
+import { useNumbering } from '../../workspace/checks-context.tsx';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { placeSegment } from '../../workspace/operations/place-parts.ts';
 import { keyWords, type ShortcutId } from '../commands/shortcuts.ts';
@@ -158,6 +159,7 @@ function PartGroup({ title, parts }: (typeof groups)[number]) {
 /** Dragged onto the sheet, clicked and put down with the next click, or placed at once by the keyboard. */
 function PartButton({ part, name }: { readonly part: TrayPart; readonly name: string }) {
   const open = useOpenDesign();
+  const numbering = useNumbering();
   const { settled } = useDrawn();
   const view = useView();
   const placing = useDesk((state) => state.placing);
@@ -174,7 +176,7 @@ function PartButton({ part, name }: { readonly part: TrayPart; readonly name: st
           ? document.devices[first.id]?.site
           : undefined;
     const at = freePlace(document, settled, part, site, view.middle());
-    const done = perform(open, placePart(document, settled, part, at, newEntryId, site));
+    const done = perform(open, placePart(document, settled, part, at, newEntryId, numbering, site));
     if (!done.ok) showToast({ tone: 'failed', text: done.why });
     else {
       view.showPoint(at);
@@ -201,6 +203,7 @@ function PartButton({ part, name }: { readonly part: TrayPart; readonly name: st
 
 function Segments({ editable }: { readonly editable: boolean }) {
   const open = useOpenDesign();
+  const numbering = useNumbering();
   const segments = useOpenState((state) => state.document.segments);
   const selection = useOpenState((state) => state.selection);
   const { choice, toggleSegment } = useViewChoice();
@@ -219,7 +222,9 @@ function Segments({ editable }: { readonly editable: boolean }) {
               iconOnly
               aria-label="Add a segment"
               icon={<Icon name="plus" size={14} />}
-              onClick={() => perform(open, placeSegment(open.store.getState().document, newEntryId))}
+              onClick={() =>
+                perform(open, placeSegment(open.store.getState().document, newEntryId, numbering))
+              }
             />
           )
         }

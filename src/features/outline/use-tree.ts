@@ -8,6 +8,7 @@ import { standingOf } from '../../canvas/flow-changes-to-patch.ts';
 import { useDrawn } from '../../canvas/geometry-context.tsx';
 import { elementKey } from '../../drawing/decorations.ts';
 import type { ElementRef } from '../../engine/model/design.ts';
+import { useNumbering } from '../../workspace/checks-context.tsx';
 import { newEntryId, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { placeSegment } from '../../workspace/operations/place-parts.ts';
 import { lineId, type LineTools } from './outline-line.tsx';
@@ -32,6 +33,7 @@ interface Tree {
 /** Lets keyboard and pointer work on the rows, and keeps selection, focus and what is in view together. */
 export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
   const open = useOpenDesign();
+  const numbering = useNumbering();
   const selection = useOpenState((state) => state.selection);
   const { settled } = useDrawn();
   const [menuKey, setMenuKey] = useState<string>();
@@ -175,13 +177,13 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
       addTo: (group) => {
         if (group === 'associations') return askToJoin({ kind: 'association' });
         if (group === 'segments')
-          return actions.make(placeSegment(open.store.getState().document, newEntryId));
+          return actions.make(placeSegment(open.store.getState().document, newEntryId, numbering));
         if (group === 'sites') return actions.place('site');
         if (group === 'transports') return actions.place('transport');
         if (group === 'notes') return actions.place('note');
       },
     }),
-    [open, view, move, actions, extra],
+    [open, view, move, actions, extra, numbering],
   );
 
   const typed = useRef({ text: '', atMs: 0 });

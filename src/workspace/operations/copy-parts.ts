@@ -4,6 +4,9 @@ import { emptyDesign, entrySchemas } from '../../engine/model/design.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { applyPatch, diffPatch, patchAt } from '../../engine/model/merge-patch.ts';
 import { danglingPatch, listReferences } from '../../engine/model/references.ts';
+import { freeTunnelName } from '../../engine/numbering/free-numbers.ts';
+import type { NumberingContext } from '../../engine/numbering/numbering-context.ts';
+import { noNumberingContext } from '../../engine/numbering/numbering-context.ts';
 import { openedFor } from './collapse-sites.ts';
 import { freeLoopback, freeName, freeVni } from './free-names.ts';
 import type { Standing } from './move-parts.ts';
@@ -139,7 +142,7 @@ const withNewIds = (parts: Parts, ids: ReadonlyMap<string, string>): Design => {
 };
 
 /** What must differ from the original: names, loopback addresses, VNIs, outside addresses. */
-const withOwnValues = (design: Design, parts: Design): Design => {
+const withOwnValues = (design: Design, parts: Design, context: NumberingContext): Design => {
   let after = design;
   const add = (collection: Copied, id: string, entry: object): void => {
     after = applyPatch(after, { [collection]: { [id]: entry } } as MergePatch);
@@ -157,7 +160,7 @@ const withOwnValues = (design: Design, parts: Design): Design => {
     add('endpoints', id, {
       ...rest,
       name: freeName(after.endpoints, endpoint.name, false),
-      ipv4: freeLoopback(after),
+      ipv4: freeLoopback(after, context),
     });
   }
   for (const [id, association] of Object.entries(parts.associations)) {
@@ -173,10 +176,10 @@ const withOwnValues = (design: Design, parts: Design): Design => {
     });
   }
   for (const [id, tunnel] of Object.entries(parts.tunnels)) {
-    const vni = freeVni(after);
+    const vni = freeVni(after, context);
     add('tunnels', id, {
       ...tunnel,
-      name: freeName(after.tunnels, tunnel.name, false),
+      name: freeTunnelName(after, tunnel.name, context),
       a: { ...tunnel.a, vni },
       b: { ...tunnel.b, vni },
     });
@@ -197,6 +200,7 @@ export const pasteParts = (
   by: { readonly dx: number; readonly dy: number },
   site: string | undefined,
   newId: NewId,
+  context: NumberingContext = noNumberingContext,
 ): Operation => {
   const ids = new Map<string, string>();
   for (const collection of copied)
@@ -207,7 +211,7 @@ export const pasteParts = (
     for (const [id, device] of Object.entries(fresh.devices))
       if (!Object.hasOwn(fresh.sites, device.site))
         fresh = applyPatch(fresh, { devices: { [id]: { site } } });
-  let after = withOwnValues(design, fresh);
+  let after = withOwnValues(design, fresh, context);
   const shift = <T extends { readonly x: number; readonly y: number }>(
     collection: Copied,
     places: { readonly [id: string]: T },

@@ -1,6 +1,7 @@
 import type { Design } from '../../engine/model/design.ts';
 import { freeLetters } from '../../engine/numbering/free-letters.ts';
-import { freeLoopbacks, freeVnis } from '../../engine/numbering/free-numbers.ts';
+import { freeLoopbacks, freeVlans, freeVnis } from '../../engine/numbering/free-numbers.ts';
+import type { NumberingContext } from '../../engine/numbering/numbering-context.ts';
 
 const lowestFree = (taken: (n: number) => boolean, from: number): number => {
   let n = from;
@@ -23,24 +24,38 @@ export const freeName = (
 /** A, B … Z, then AA, AB …, the first that no segment has. */
 export const freeLetter = (design: Design): string => freeLetters(design, 1)[0]!;
 
-/** The lowest VLAN from 10 in tens that no segment uses at any site. */
-export const freeVlan = (design: Design): number => {
-  const taken = new Set(
-    Object.values(design.segments).flatMap((segment) => Object.values(segment.sites).map((at) => at.vlan)),
-  );
-  return 10 * lowestFree((n) => taken.has(n * 10), 11);
+/** The context first, then without its pools: where these are used up, the checks say that the number lies in none. */
+const triedOn = (context: NumberingContext): readonly NumberingContext[] => [
+  context,
+  { ...context, pools: undefined },
+];
+
+/** The lowest VLAN in tens, else the lowest, that is in the pools and that no site of the design uses. */
+export const freeVlan = (design: Design, context: NumberingContext): number => {
+  for (const at of triedOn(context))
+    for (const step of [10, 1]) {
+      const answer = freeVlans(design, 1, { step }, at);
+      if (answer.ok) return answer.vlans[0]!;
+    }
+  // A network of 4,094 VLANs in use: the checks show the one that clashes.
+  return 110;
 };
 
-/** The lowest VNI from 10001 that no end of a tunnel has, so that every tunnel gets a number of its own. */
-export const freeVni = (design: Design): number => {
-  const answer = freeVnis(design, 1);
-  if (!answer.ok) throw new Error('the design holds every VNI there is');
-  return answer.vnis[0]!;
+/** The lowest VNI that no end of a tunnel has, here or in another design, so that every tunnel gets a number of its own. */
+export const freeVni = (design: Design, context: NumberingContext): number => {
+  for (const at of triedOn(context)) {
+    const answer = freeVnis(design, 1, at);
+    if (answer.ok) return answer.vnis[0]!;
+  }
+  throw new Error('the workspace holds every VNI there is');
 };
 
-/** The lowest loopback address from 10.255.0.1 that nobody has and that no segment's subnet holds. */
-export const freeLoopback = (design: Design): string => {
-  const answer = freeLoopbacks(design, 4, 1);
+/** The lowest loopback address that nobody has, here or in another design, and that no segment's subnet holds. */
+export const freeLoopback = (design: Design, context: NumberingContext): string => {
+  for (const at of triedOn(context)) {
+    const answer = freeLoopbacks(design, 4, 1, at);
+    if (answer.ok) return answer.loopbacks[0]!;
+  }
   // Where segments take all usual ranges in, the checks say that this endpoint lies in one.
-  return answer.ok ? answer.loopbacks[0]! : '10.255.0.1/32';
+  return '10.255.0.1/32';
 };

@@ -7,6 +7,9 @@ import { firstRanks, inRankOrder, rankAtEnd } from '../../engine/model/rank.ts';
 import type { Landing } from '../../engine/model/underlay.ts';
 import { tunnelPath } from '../../engine/network/association-path.ts';
 import { indexNetwork } from '../../engine/network/index-network.ts';
+import { freeTunnelName } from '../../engine/numbering/free-numbers.ts';
+import type { NumberingContext } from '../../engine/numbering/numbering-context.ts';
+import { noNumberingContext } from '../../engine/numbering/numbering-context.ts';
 import { freeName } from './free-names.ts';
 import { linksIn } from './connect-ports.ts';
 import { landSegment, segmentBridge } from './segment-bridge.ts';
@@ -268,7 +271,12 @@ const joinBridge = (
 };
 
 /** A tunnel from ring to ring, with its association and its place in both bridges, as one step. */
-export const joinEndpoints = (design: Design, choice: JoinChoice, newId: NewId): Operation => {
+export const joinEndpoints = (
+  design: Design,
+  choice: JoinChoice,
+  newId: NewId,
+  context: NumberingContext = noNumberingContext,
+): Operation => {
   const why = whyNoTunnel(design, choice.a, choice.b);
   if (why !== undefined) return refused(why);
   const [endA, endB] = [design.endpoints[choice.a]!, design.endpoints[choice.b]!];
@@ -300,7 +308,7 @@ export const joinEndpoints = (design: Design, choice: JoinChoice, newId: NewId):
   const letter =
     choice.segment === undefined ? undefined : design.segments[choice.segment]?.letter.toLowerCase();
   const base = `tn-${design.devices[endA.device]!.name}-${design.devices[endB.device]!.name}${letter === undefined ? '' : `-${letter}`}`;
-  const name = freeName(design.tunnels, base, false);
+  const name = freeTunnelName(design, base, context);
   patches.push({
     tunnels: {
       [id]: {
@@ -315,7 +323,7 @@ export const joinEndpoints = (design: Design, choice: JoinChoice, newId: NewId):
   if (choice.segment !== undefined) {
     let landed = design;
     for (const device of [endA.device, endB.device]) {
-      const landing = landSegment(landed, choice.segment, design.devices[device]!.site);
+      const landing = landSegment(landed, choice.segment, design.devices[device]!.site, context);
       landed = applyPatch(landed, landing);
       patches.push(landing);
     }

@@ -3,6 +3,8 @@ import type { Device, DeviceKind, Port } from '../../engine/model/devices.ts';
 import { isGateway } from '../../engine/model/devices.ts';
 import { noteSchema } from '../../engine/model/intent.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
+import type { NumberingContext } from '../../engine/numbering/numbering-context.ts';
+import { noNumberingContext } from '../../engine/numbering/numbering-context.ts';
 import { openedFor } from './collapse-sites.ts';
 import { freeLetter, freeLoopback, freeName, freeVlan } from './free-names.ts';
 import { nameOf } from './name-of.ts';
@@ -171,7 +173,12 @@ export const placeTransport = (
 };
 
 /** A new loopback endpoint on a gateway, with the lowest free address. */
-export const placeEndpoint = (design: Design, device: string, newId: NewId): Operation => {
+export const placeEndpoint = (
+  design: Design,
+  device: string,
+  newId: NewId,
+  context: NumberingContext = noNumberingContext,
+): Operation => {
   const target = design.devices[device];
   if (target === undefined || !isGateway(target))
     return refused('A loopback endpoint belongs on a firewall, an HA pair or a router: drop it on one.');
@@ -180,16 +187,20 @@ export const placeEndpoint = (design: Design, device: string, newId: NewId): Ope
   return {
     ok: true,
     label: `Place ${name}`,
-    patch: { endpoints: { [id]: { device, name, ipv4: freeLoopback(design) } } },
+    patch: { endpoints: { [id]: { device, name, ipv4: freeLoopback(design, context) } } },
     created: [{ collection: 'endpoints', id }],
   };
 };
 
 /** A new segment that lands at every site of the design, on the lowest free VLAN. */
-export const placeSegment = (design: Design, newId: NewId): Operation => {
+export const placeSegment = (
+  design: Design,
+  newId: NewId,
+  context: NumberingContext = noNumberingContext,
+): Operation => {
   const id = newId('seg');
   const letter = freeLetter(design);
-  const vlan = freeVlan(design);
+  const vlan = freeVlan(design, context);
   const sites = Object.fromEntries(Object.keys(design.sites).map((site) => [site, { vlan }]));
   return {
     ok: true,

@@ -2,6 +2,7 @@ import type { DeepReadonly, Design } from '../../engine/model/design.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { patchAt } from '../../engine/model/merge-patch.ts';
 import type { Circuit, Forwarder } from '../../engine/model/overlay.ts';
+import type { NumberingContext } from '../../engine/numbering/numbering-context.ts';
 import { freeVlan } from './free-names.ts';
 
 /** The forwarder on a gateway that takes a segment's frames at its site; of several the one with the lowest id. */
@@ -25,14 +26,19 @@ export const isUnclaimed = (design: Design, device: string, port: string): boole
   );
 
 /** Lets a segment land at a site where it does not yet: on the VLAN that it has at most other sites, else on a free one. */
-export const landSegment = (design: Design, segment: string, site: string): MergePatch => {
+export const landSegment = (
+  design: Design,
+  segment: string,
+  site: string,
+  context: NumberingContext,
+): MergePatch => {
   const { sites } = design.segments[segment]!;
   if (sites[site] !== undefined) return {};
   const counts = new Map<number, number>();
   for (const { vlan } of Object.values(sites))
     if (vlan !== undefined) counts.set(vlan, (counts.get(vlan) ?? 0) + 1);
   const [usual] = [...counts].sort(([a, n], [b, m]) => m - n || a - b);
-  return patchAt(['segments', segment, 'sites', site], { vlan: usual?.[0] ?? freeVlan(design) });
+  return patchAt(['segments', segment, 'sites', site], { vlan: usual?.[0] ?? freeVlan(design, context) });
 };
 
 const forwardersOn = (

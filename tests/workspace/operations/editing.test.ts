@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import type { Design, ElementRef } from '../../../src/engine/model/design.ts';
 import { emptyDesign } from '../../../src/engine/model/design.ts';
 import { applyPatch } from '../../../src/engine/model/merge-patch.ts';
+import type { NumberingContext } from '../../../src/engine/numbering/numbering-context.ts';
 import { parseDesign } from '../../../src/engine/model/parse-design.ts';
 import { danglingPatch } from '../../../src/engine/model/references.ts';
 import { landPort, pullCable } from '../../../src/workspace/operations/connect-ports.ts';
@@ -88,7 +89,7 @@ describe('drawing a two-site overlay from nothing', () => {
     expect(likelyTransport(design, a, b)).toBe(coast);
     expect(mayGoBare(design, coast)).toBe(false);
     const tunnel = step(
-      joinEndpoints(design, { a, b, vni: freeVni(design), association: 'new', segment }, newId),
+      joinEndpoints(design, { a, b, vni: freeVni(design, {}), association: 'new', segment }, newId),
     );
     expect(design.tunnels[tunnel]).toMatchObject({
       a: { vni: 10_001, udpPort: 4789 },
@@ -194,17 +195,57 @@ describe('a host plugged into a gateway', () => {
 describe('numbers and names offered', () => {
   const design = meshDesign(3);
   it('are the lowest that are free', () => {
-    expect(freeVni(design)).toBe(10_003);
-    expect(freeLoopback(design)).toBe('10.255.0.4/32');
+    expect(freeVni(design, {})).toBe(10_003);
+    expect(freeLoopback(design, {})).toBe('10.255.0.4/32');
     expect(freeLetter(design)).toBe('B');
-    expect(freeVlan(design)).toBe(120);
+    expect(freeVlan(design, {})).toBe(120);
     expect(freeName(design.devices, 'fw')).toBe('fw-1');
     expect(freeName(design.devices, 'fw-s0', false)).toBe('fw-s0-2');
   });
 
   it('keep a loopback out of every segment', () => {
     const taken = applyPatch(design, { segments: { a: { sites: { s0: { subnets: ['10.255.0.0/24'] } } } } });
-    expect(freeLoopback(taken)).toBe('10.255.1.1/32');
+    expect(freeLoopback(taken, {})).toBe('10.255.1.1/32');
+  });
+
+  const known: NumberingContext = {
+    pools: {
+      vnis: [{ from: 20_001, to: 20_002 }],
+      vlans: [{ from: 300, to: 304 }],
+      loopbacks: ['172.20.0.0/29'],
+    },
+    otherDesigns: [{ vnis: [20_001, 10_003], loopbacks: ['172.20.0.1'], tunnelNames: ['tn-fw-s0-fw-s1-a'] }],
+  };
+  it('come from the pools and from nothing that another design holds', () => {
+    expect(freeVni(design, known)).toBe(20_002);
+    expect(freeLoopback(design, known)).toBe('172.20.0.2/32');
+    expect(freeVlan(design, known)).toBe(300);
+    const taken = applyPatch(design, { segments: { a: { sites: { s0: { vlan: 300 } } } } });
+    expect(freeVlan(taken, known)).toBe(301);
+  });
+
+  it('are beyond the pools once these are used up, and still of no other design', () => {
+    const usedUp = { ...known, pools: { ...known.pools, vnis: [{ from: 20_001, to: 20_001 }] } };
+    expect(freeVni(design, usedUp)).toBe(10_004);
+  });
+
+  it('name a tunnel, a copy and an endpoint as no other design does', () => {
+    const bare = done(design, removeElements(design, [{ collection: 'tunnels', id: 'tn-s0-s1' }]));
+    const joined = done(
+      bare,
+      joinEndpoints(
+        bare,
+        { a: 'lo-s0', b: 'lo-s1', vni: 5, association: 'as-s0-s1', segment: 'a' },
+        counter(),
+        known,
+      ),
+    );
+    expect(joined.tunnels['tn-x1']!.name).toBe('tn-fw-s0-fw-s1-a-2');
+    const placed = done(design, placeEndpoint(design, 'fw-s0', counter(), known));
+    expect(placed.endpoints['lo-x1']!.ipv4).toBe('172.20.0.2/32');
+    const parts = copyParts(design, standing, [{ collection: 'sites', id: 's0' }])!;
+    const pasted = done(design, pasteParts(design, parts, { dx: 0, dy: 0 }, undefined, counter(), known));
+    expect(Object.values(pasted.endpoints).map(({ ipv4 }) => ipv4)).toContain('172.20.0.2/32');
   });
 
   it('go on after Z', () => {
