@@ -8,6 +8,7 @@ export const statusOfCode: { readonly [code in ErrorCode]: number } = {
   'not-signed-in': 401,
   'wrong-credentials': 401,
   'not-allowed': 403,
+  'second-step-required': 403,
   csrf: 403,
   'not-found': 404,
   conflict: 409,

@@ -31,6 +31,8 @@ export const activityActions = [
   'person.joined',
   'person.role-changed',
   'person.removed',
+  'person.left',
+  'workspace.created',
   'workspace.changed',
   'workspace.exported',
 ] as const;

@@ -6,6 +6,7 @@ export const errorCodes = [
   'not-signed-in',
   'wrong-credentials',
   'not-allowed',
+  'second-step-required',
   'not-found',
   'conflict',
   'csrf',
