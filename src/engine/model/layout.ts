@@ -43,7 +43,7 @@ export const layoutSchema = z.strictObject({
     .record(
       idSchema,
       z.strictObject({
-        limbs: z.array(rectSchema).min(1).max(16),
+        limbs: z.array(rectSchema).min(1).max(64),
         header: rectSchema.optional(),
         locked: z.boolean().optional(),
       }),

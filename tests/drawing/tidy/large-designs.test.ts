@@ -1,5 +1,6 @@
 import { expect, it } from 'vitest';
 import { applyPatch } from '#engine/model/merge-patch.ts';
+import { parseDesign } from '#engine/model/parse-design.ts';
 import { overlap } from '#drawing/routing/rects.ts';
 import { legendColumns, sheetFrame } from '#drawing/routing/sheet-frame.ts';
 import { tidy } from '#drawing/tidy/tidy.ts';
@@ -7,7 +8,9 @@ import { largeDesign } from '../../support/large-design.ts';
 
 it('a design of 1,000 devices stands in columns within the height of the largest sheet, clear of each other', () => {
   const design = largeDesign();
-  const { layout } = applyPatch(design, tidy(design));
+  const tidied = applyPatch(design, tidy(design));
+  expect(parseDesign(tidied)).toMatchObject({ ok: true });
+  const { layout } = tidied;
   expect(layout.sheet).toBe('A0');
   const sites = Object.entries(layout.sites!).map(([id, { x, y, width, height }]) => ({
     id,
