@@ -156,6 +156,11 @@ const layoutReferences = (layout: Design['layout']): readonly Reference[] => {
       const path = ['layout', collection, id];
       list.push({ path, target: collection, id, removes: path });
     }
+  for (const [sheet, { transports }] of Object.entries(layout.furtherSheets ?? {}))
+    for (const id of Object.keys(transports ?? {})) {
+      const path = ['layout', 'furtherSheets', sheet, 'transports', id];
+      list.push({ path, target: 'transports', id, removes: path });
+    }
   return list;
 };
 
