@@ -11,12 +11,14 @@ import { clientFiles } from './middleware/client-files.ts';
 import { answerUnknownPaths, errorAnswers } from './middleware/error-answers.ts';
 import { requestLog } from './middleware/request-log.ts';
 import { securityHeaders } from './middleware/security-headers.ts';
+import { commentRoutes } from './routes/comment-routes.ts';
 import { designRoutes } from './routes/design-routes.ts';
 import { engagementRoutes } from './routes/engagement-routes.ts';
 import { engineRoutes } from './routes/engine-routes.ts';
 import { healthRoutes } from './routes/health-routes.ts';
 import { numberingRoutes } from './routes/numbering-routes.ts';
 import { profileRoutes } from './routes/profile-routes.ts';
+import { revisionRoutes } from './routes/revision-routes.ts';
 import { sessionRoutes } from './routes/session-routes.ts';
 import { sheetExportRoutes } from './routes/sheet-export-routes.ts';
 import { waiverRoutes } from './routes/waiver-routes.ts';
@@ -46,6 +48,7 @@ export function createApp({
   const context: Context = {
     database,
     clock,
+    publicUrl: config.publicUrl,
     documents: createDocumentCache(),
     thumbnails: createThumbnailCache(),
     numbering: createNumberingCache(),
@@ -74,6 +77,8 @@ export function createApp({
   app.use(designRoutes(context));
   app.use(sheetExportRoutes(context));
   app.use(waiverRoutes(context));
+  app.use(commentRoutes(context));
+  app.use(revisionRoutes(context));
   app.use(numberingRoutes(context));
   app.use(profileRoutes(context));
   app.use('/api', answerUnknownPaths);

@@ -7,6 +7,8 @@ import type { ThumbnailCache } from './thumbnails.ts';
 export interface Context {
   readonly database: Database;
   readonly clock: () => Date;
+  /** Origin that people type, without a slash at the end; links in mails start with it. */
+  readonly publicUrl: string;
   readonly documents: DocumentCache;
   readonly thumbnails: ThumbnailCache;
   readonly numbering: NumberingCache;
