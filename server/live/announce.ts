@@ -20,3 +20,17 @@ export interface Announcement {
 export async function announce(trx: Knex, announcement: Announcement): Promise<void> {
   await trx.raw('select pg_notify(?, ?)', [liveChannel, JSON.stringify(announcement)]);
 }
+
+/** Somebody's place in a workspace changed: another role, or none any more. */
+export interface PlaceAnnouncement {
+  readonly workspaceId: string;
+  readonly personId: string;
+}
+
+/** Tells every process, once the transaction is committed, to ask again what a person may see in a workspace. */
+export async function announcePlace(trx: Knex, { workspaceId, personId }: PlaceAnnouncement): Promise<void> {
+  await trx.raw('select pg_notify(?, ?)', [
+    liveChannel,
+    JSON.stringify({ change: 'place', workspaceId, personId }),
+  ]);
+}
