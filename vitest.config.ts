@@ -1,9 +1,12 @@
+import { availableParallelism } from 'node:os';
 import react from '@vitejs/plugin-react';
 import { defineConfig } from 'vitest/config';
 
 export default defineConfig({
   plugins: [react()],
   test: {
+    // Every core, which the runner would leave one of idle; more than eight would ask PostgreSQL for too many connections.
+    maxWorkers: Math.min(availableParallelism(), 8),
     projects: [
       {
         extends: true,

@@ -35,17 +35,12 @@ export async function runTests(lifetime, args) {
   const counts = [];
   try {
     await withSetupLock(say, () => ensureDependencies({ say, signal: lifetime.signal }));
-    for (const step of chosen.steps) {
+    // Programs that check the source need one core each and nothing else, so they run side by side.
+    const checks = chosen.steps.filter(({ vitest }) => vitest === null);
+    counts.push(...(await Promise.all(checks.map((step) => countStep(lifetime, step, [])))));
+    for (const step of chosen.steps.filter(({ vitest }) => vitest !== null)) {
       say(`\n── ${step.name}`);
-      const startedAt = Date.now();
-      const count = await runStep(lifetime, step, chosen.rest).catch((error) => {
-        if (lifetime.signal.aborted) throw error;
-        return { passed: 0, failed: 1, note: messageOf(error) };
-      });
-      counts.push(count);
-      const note = count.note === undefined ? '' : `: ${count.note}`;
-      const seconds = ((Date.now() - startedAt) / 1000).toFixed(1);
-      say(`── ${step.name}: ${closingLine([count])} in ${seconds} s${note}`);
+      counts.push(await countStep(lifetime, step, chosen.rest));
     }
   } catch (error) {
     if (lifetime.signal.aborted) throw error;
@@ -60,6 +55,25 @@ export async function runTests(lifetime, args) {
   }
   say(`\n${closingLine(counts)}`);
   return counts.some((count) => count.failed > 0) ? '' : null;
+}
+
+/**
+ * Runs a step and says how it went; one that cannot be run counts as failed.
+ * @param {Lifetime} lifetime
+ * @param {import('./test-steps.mjs').TestStep} step
+ * @param {readonly string[]} rest
+ * @returns {Promise<TestCount>}
+ */
+async function countStep(lifetime, step, rest) {
+  const startedAt = Date.now();
+  const count = await runStep(lifetime, step, rest).catch((error) => {
+    if (lifetime.signal.aborted) throw error;
+    return { passed: 0, failed: 1, note: messageOf(error) };
+  });
+  const note = count.note === undefined ? '' : `: ${count.note}`;
+  const seconds = ((Date.now() - startedAt) / 1000).toFixed(1);
+  say(`── ${step.name}: ${closingLine([count])} in ${seconds} s${note}`);
+  return count;
 }
 
 /**
