@@ -1,36 +1,35 @@
-import type { Membership, Person, Session } from '#contract/session.ts';
-import { permissions } from '../auth/permissions.ts';
+import type { Person, Session } from '#contract/session.ts';
 import { listDemoPeople } from '../repositories/demo-people.ts';
-import { listMemberships } from '../repositories/memberships.ts';
 import type { Account } from '../repositories/people.ts';
 import type { Context } from './context.ts';
+import { readMemberships } from './workspaces.ts';
 
 /** Who is signed in, where they may do what, and who the demo offers. */
 export async function describeSession(
-  { database }: Context,
+  context: Context,
   account: Account | null,
-): Promise<Omit<Session, 'csrfToken'>> {
+): Promise<Omit<Session, 'csrfToken' | 'secondStepAsked'>> {
   const [memberships, demo] = await Promise.all([
-    account === null ? [] : listMemberships(database.knex, account.id),
-    listDemoPeople(database.knex),
+    account === null ? [] : readMemberships(context, account.id),
+    listDemoPeople(context.database.knex),
   ]);
   return {
     person: account === null ? null : personOf(account),
-    memberships: memberships.map((row): Membership => ({ ...row, actions: [...permissions[row.role]] })),
+    memberships,
     demo: demo.map(({ role, name, email }) => ({ role, name, email })),
   };
 }
 
 function personOf({ id, name, email }: Account): Person {
-  const words = name.split(/\s+/).filter((word) => word !== '');
+  return { id, name, email, initials: initialsOf(name) };
+}
+
+/** The first letters of a person's first and last name; what stands in brackets is none. */
+export function initialsOf(name: string): string {
+  const words = name.split(/\s+/).filter((word) => word !== '' && !word.startsWith('('));
   const letters = words.length > 1 ? [words[0], words.at(-1)] : words;
-  return {
-    id,
-    name,
-    email,
-    initials: letters
-      .map((word) => [...(word ?? '')][0] ?? '')
-      .join('')
-      .toUpperCase(),
-  };
+  return letters
+    .map((word) => [...(word ?? '')][0] ?? '')
+    .join('')
+    .toUpperCase();
 }
