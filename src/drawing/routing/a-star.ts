@@ -7,8 +7,8 @@ export interface GridSearch {
   readonly goal: { readonly column: number; readonly row: number; readonly direction: Direction };
   /** Cost of the step from a crossing in a direction, Infinity where there is no passing. */
   readonly cost: (column: number, row: number, direction: Direction) => number;
-  /** Whether that step fulfils what the way must have fulfilled before its end. */
-  readonly fulfils: (column: number, row: number, direction: Direction) => boolean;
+  /** Whether that step fulfils what the way must have fulfilled before its end; absent: nothing has to be. */
+  readonly fulfils?: (column: number, row: number, direction: Direction) => boolean;
   readonly bendCost: number;
   readonly leastCostPerPx: number;
 }
@@ -23,6 +23,82 @@ export const stepOf: { readonly [direction in Direction]: readonly [number, numb
   3: [0, -1],
 };
 
+/** Binary heap of (cost, node); the node number breaks ties. */
+const costHeap = () => {
+  let costs = new Float64Array(1024);
+  let nodes = new Int32Array(1024);
+  let size = 0;
+  return {
+    clear: (): void => {
+      size = 0;
+    },
+    isEmpty: (): boolean => size === 0,
+    push: (cost: number, node: number): void => {
+      if (size === costs.length) {
+        const [moreCosts, moreNodes] = [new Float64Array(2 * size), new Int32Array(2 * size)];
+        moreCosts.set(costs);
+        moreNodes.set(nodes);
+        [costs, nodes] = [moreCosts, moreNodes];
+      }
+      let i = size;
+      size += 1;
+      while (i > 0) {
+        const parent = (i - 1) >> 1;
+        const above = costs[parent]!;
+        if (above < cost || (above === cost && nodes[parent]! <= node)) break;
+        costs[i] = above;
+        nodes[i] = nodes[parent]!;
+        i = parent;
+      }
+      costs[i] = cost;
+      nodes[i] = node;
+    },
+    pop: (): number => {
+      const top = nodes[0]!;
+      size -= 1;
+      const cost = costs[size]!;
+      const node = nodes[size]!;
+      let i = 0;
+      for (let left = 1; left < size; left = 2 * i + 1) {
+        const beside = left + 1;
+        const isBesideLess =
+          beside < size &&
+          (costs[beside]! < costs[left]! ||
+            (costs[beside]! === costs[left]! && nodes[beside]! < nodes[left]!));
+        const child = isBesideLess ? beside : left;
+        const below = costs[child]!;
+        if (below > cost || (below === cost && nodes[child]! >= node)) break;
+        costs[i] = below;
+        nodes[i] = nodes[child]!;
+        i = child;
+      }
+      costs[i] = cost;
+      nodes[i] = node;
+      return top;
+    },
+  };
+};
+
+// A sheet takes many searches, and clearing lists of their size would cost more than most of them: what an earlier search left
+// is told by its number.
+const open = costHeap();
+let lastSearch = 0;
+let searchOf = new Int32Array(0);
+let best = new Float64Array(0);
+let from = new Int32Array(0);
+let done = new Uint8Array(0);
+
+const beginSearch = (size: number): number => {
+  if (searchOf.length < size) {
+    const room = Math.max(size, 2 * searchOf.length);
+    [searchOf, best] = [new Int32Array(room), new Float64Array(room)];
+    [from, done] = [new Int32Array(room), new Uint8Array(room)];
+    lastSearch = 0;
+  }
+  open.clear();
+  return (lastSearch += 1);
+};
+
 /**
  * The cheapest way over a sparse orthogonal grid by A* (Hart, Nilsson and Raphael 1968), bends counted. Among equals the
  * lower node number wins, so the answer depends on the grid alone. Undefined where there is no way.
@@ -30,65 +106,29 @@ export const stepOf: { readonly [direction in Direction]: readonly [number, numb
 export const searchGrid = (
   search: GridSearch,
 ): readonly { readonly column: number; readonly row: number }[] | undefined => {
-  const { xs, ys, start, goal } = search;
+  const { xs, ys, start, goal, bendCost, fulfils } = search;
   const columns = xs.length;
-  const size = columns * ys.length * 8;
-  const best = new Float64Array(size).fill(Infinity);
-  const from = new Int32Array(size).fill(-1);
-  const done = new Uint8Array(size);
+  const rows = ys.length;
+  const now = beginSearch(columns * rows * 8);
   const number = (column: number, row: number, direction: Direction, fulfilled: number): number =>
     ((row * columns + column) * 4 + direction) * 2 + fulfilled;
-
-  // Binary heap of (estimate, node); the node number breaks ties.
-  const heapCost: number[] = [];
-  const heapNode: number[] = [];
-  const before = (i: number, j: number): boolean =>
-    heapCost[i]! < heapCost[j]! || (heapCost[i]! === heapCost[j]! && heapNode[i]! < heapNode[j]!);
-  const swap = (i: number, j: number): void => {
-    [heapCost[i], heapCost[j]] = [heapCost[j]!, heapCost[i]!];
-    [heapNode[i], heapNode[j]] = [heapNode[j]!, heapNode[i]!];
-  };
-  const push = (cost: number, node: number): void => {
-    heapCost.push(cost);
-    heapNode.push(node);
-    let i = heapCost.length - 1;
-    while (i > 0) {
-      const parent = (i - 1) >> 1;
-      if (!before(i, parent)) break;
-      swap(i, parent);
-      i = parent;
-    }
-  };
-  const pop = (): number => {
-    const node = heapNode[0]!;
-    const cost = heapCost.pop()!;
-    const last = heapNode.pop()!;
-    if (heapCost.length > 0) {
-      heapCost[0] = cost;
-      heapNode[0] = last;
-      let i = 0;
-      for (;;) {
-        const left = 2 * i + 1;
-        if (left >= heapCost.length) break;
-        const child = left + 1 < heapCost.length && before(left + 1, left) ? left + 1 : left;
-        if (!before(child, i)) break;
-        swap(i, child);
-        i = child;
-      }
-    }
-    return node;
-  };
 
   const goalX = xs[goal.column]!;
   const goalY = ys[goal.row]!;
   const estimate = (column: number, row: number): number =>
     (Math.abs(xs[column]! - goalX) + Math.abs(ys[row]! - goalY)) * search.leastCostPerPx;
+  const reach = (node: number, cost: number, before: number): void => {
+    if (searchOf[node] !== now) done[node] = 0;
+    searchOf[node] = now;
+    best[node] = cost;
+    from[node] = before;
+  };
 
   const first = number(start.column, start.row, start.direction, 0);
-  best[first] = 0;
-  push(estimate(start.column, start.row), first);
-  while (heapNode.length > 0) {
-    const node = pop();
+  reach(first, 0, -1);
+  open.push(estimate(start.column, start.row), first);
+  while (!open.isEmpty()) {
+    const node = open.pop();
     if (done[node] === 1) continue;
     done[node] = 1;
     const fulfilled = node & 1;
@@ -114,19 +154,68 @@ export const searchGrid = (
       const [dx, dy] = stepOf[next];
       const toColumn = column + dx;
       const toRow = row + dy;
-      if (toColumn < 0 || toRow < 0 || toColumn >= columns || toRow >= ys.length) continue;
+      if (toColumn < 0 || toRow < 0 || toColumn >= columns || toRow >= rows) continue;
       const step = search.cost(column, row, next);
       if (step === Infinity) continue;
       const endsAskew = toColumn === goal.column && toRow === goal.row && next !== goal.direction;
-      const now = fulfilled === 1 || search.fulfils(column, row, next) ? 1 : 0;
-      const arrived = number(toColumn, toRow, next, now);
-      const cost =
-        best[node]! + step + (next === direction ? 0 : search.bendCost) + (endsAskew ? search.bendCost : 0);
-      if (cost >= best[arrived]! - 1e-9) continue;
-      best[arrived] = cost;
-      from[arrived] = node;
-      push(cost + estimate(toColumn, toRow), arrived);
+      const held = fulfilled === 1 || fulfils === undefined || fulfils(column, row, next) ? 1 : 0;
+      const arrived = number(toColumn, toRow, next, held);
+      const cost = best[node]! + step + (next === direction ? 0 : bendCost) + (endsAskew ? bendCost : 0);
+      if (searchOf[arrived] === now && cost >= best[arrived]! - 1e-9) continue;
+      reach(arrived, cost, node);
+      open.push(cost + estimate(toColumn, toRow), arrived);
     }
   }
   return undefined;
+};
+
+let marks = new Int32Array(0);
+let lastMark = 0;
+const frontiers = [new Int32Array(0), new Int32Array(0)] as [Int32Array, Int32Array];
+
+/**
+ * Whether any way leads from start to goal, bends and what it has to fulfil aside. Both ends spread by turns, so an end that is
+ * walled in shows by a look at its own surroundings.
+ */
+export const isReachable = ({ xs, ys, start, goal, cost }: GridSearch): boolean => {
+  const columns = xs.length;
+  const rows = ys.length;
+  if (marks.length < columns * rows) {
+    const room = Math.max(columns * rows, 2 * marks.length);
+    marks = new Int32Array(room);
+    frontiers[0] = new Int32Array(room);
+    frontiers[1] = new Int32Array(room);
+    lastMark = 0;
+  }
+  const mine = [lastMark + 1, lastMark + 2] as const;
+  lastMark += 2;
+  const next = [0, 0] as [number, number];
+  const size = [1, 1] as [number, number];
+  [start, goal].forEach(({ column, row }, end) => {
+    frontiers[end as 0 | 1][0] = row * columns + column;
+  });
+  if (frontiers[0][0] === frontiers[1][0]) return true;
+  marks[frontiers[0][0]!] = mine[0];
+  marks[frontiers[1][0]!] = mine[1];
+  for (;;)
+    for (const end of [0, 1] as const) {
+      const frontier = frontiers[end];
+      if (next[end] === size[end]) return false;
+      const cell = frontier[next[end]]!;
+      next[end] += 1;
+      const column = cell % columns;
+      const row = (cell - column) / columns;
+      for (const direction of directions) {
+        const [dx, dy] = stepOf[direction];
+        const toColumn = column + dx;
+        const toRow = row + dy;
+        if (toColumn < 0 || toRow < 0 || toColumn >= columns || toRow >= rows) continue;
+        const to = toRow * columns + toColumn;
+        if (marks[to] === mine[end] || cost(column, row, direction) === Infinity) continue;
+        if (marks[to] === mine[1 - end]) return true;
+        marks[to] = mine[end];
+        frontier[size[end]] = to;
+        size[end] += 1;
+      }
+    }
 };

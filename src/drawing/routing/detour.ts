@@ -1,7 +1,7 @@
 import type { Side } from '../../engine/model/layout.ts';
 import type { Point, Rect } from '../geometry.ts';
-import type { Direction } from './a-star.ts';
-import { searchGrid, stepOf } from './a-star.ts';
+import type { Direction, GridSearch } from './a-star.ts';
+import { isReachable, searchGrid, stepOf } from './a-star.ts';
 import { gridCosts } from './grid-costs.ts';
 import { bandRects } from './bands.ts';
 import type { Cord, Corners, Ground, Mouth, Way } from './ground.ts';
@@ -178,13 +178,41 @@ const attempt = (
   const columns = sortedUnique(xs.filter((x) => x === p.x || x === q.x || (x > edge.x && x < right(edge))));
   const rows = sortedUnique(ys.filter((y) => y === p.y || y === q.y || (y > edge.y && y < bottom(edge))));
   const costs = gridCosts(columns, rows, manner.open);
+  for (const { rect } of obstacles) costs.close(grown(rect, half + clearance - 0.1));
+  if (manner.foreignBand === Infinity) for (const rect of foreign) costs.close(rect);
+
+  const columnOf = (x: number): number => columns.findIndex((value) => Math.abs(value - x) <= 0.01);
+  const rowOf = (y: number): number => rows.findIndex((value) => Math.abs(value - y) <= 0.01);
+  const isInOwn = (column: number, row: number): boolean =>
+    own.some((rect) => contains(rect, { x: columns[column]!, y: rows[row]! }));
+  const search: GridSearch = {
+    xs: columns,
+    ys: rows,
+    start: { column: columnOf(p.x), row: rowOf(p.y), direction: directionOf[cord.a.side] },
+    goal: {
+      column: columnOf(q.x),
+      row: rowOf(q.y),
+      direction: ((directionOf[cord.b.side] + 2) % 4) as Direction,
+    },
+    cost: costs.of,
+    ...(needsBand
+      ? {
+          fulfils: (column: number, row: number, direction: Direction): boolean => {
+            const [dx, dy] = stepOf[direction];
+            return isInOwn(column, row) || isInOwn(column + dx, row + dy);
+          },
+        }
+      : {}),
+    bendCost: manner.bend,
+    leastCostPerPx: own.length === 0 ? manner.open : Math.min(manner.open, manner.ownBand),
+  };
+  if (!isReachable(search)) return undefined;
+
   for (const rect of outsideOf(ground.sheet)) costs.weigh(rect, offSheet);
   for (const rect of own) costs.weigh(rect, manner.ownBand / manner.open);
   for (const { site, rect } of frames)
     if (site !== cord.a.site && site !== cord.b.site) costs.weigh(rect, manner.foreignSite);
-  for (const rect of foreign)
-    if (manner.foreignBand === Infinity) costs.close(rect);
-    else costs.weigh(rect, manner.foreignBand);
+  if (manner.foreignBand !== Infinity) for (const rect of foreign) costs.weigh(rect, manner.foreignBand);
   for (const rect of avoided) costs.weigh(rect, manner.alongRun);
   for (const run of known) {
     costs.cross(run.from, run.to, manner.crossing);
@@ -199,30 +227,8 @@ const attempt = (
     };
     costs.weigh(along, manner.alongRun);
   }
-  for (const { rect } of obstacles) costs.close(grown(rect, half + clearance - 0.1));
 
-  const columnOf = (x: number): number => columns.findIndex((value) => Math.abs(value - x) <= 0.01);
-  const rowOf = (y: number): number => rows.findIndex((value) => Math.abs(value - y) <= 0.01);
-  const inOwn = rows.map((y) =>
-    columns.map((x) => !needsBand || own.some((rect) => contains(rect, { x, y }))),
-  );
-  const way = searchGrid({
-    xs: columns,
-    ys: rows,
-    start: { column: columnOf(p.x), row: rowOf(p.y), direction: directionOf[cord.a.side] },
-    goal: {
-      column: columnOf(q.x),
-      row: rowOf(q.y),
-      direction: ((directionOf[cord.b.side] + 2) % 4) as Direction,
-    },
-    cost: costs.of,
-    fulfils: (column, row, direction) => {
-      const [dx, dy] = stepOf[direction];
-      return inOwn[row]![column]! || inOwn[row + dy]![column + dx]!;
-    },
-    bendCost: manner.bend,
-    leastCostPerPx: own.length === 0 ? manner.open : Math.min(manner.open, manner.ownBand),
-  });
+  const way = searchGrid(search);
   if (way === undefined) return undefined;
   return withoutIdlePoints([
     cord.a.at,
