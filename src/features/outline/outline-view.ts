@@ -1,4 +1,5 @@
 import { createStore, type StoreApi } from 'zustand/vanilla';
+import type { ElementRef } from '../../engine/model/design.ts';
 import type { Openings } from './visible-rows.ts';
 
 export interface OutlineView {
@@ -10,6 +11,8 @@ export interface OutlineView {
   readonly current: string | undefined;
   /** The key of the row that a range of rows is selected from. */
   readonly anchor: string | undefined;
+  /** What the keys have selected while the sheet and the inspector have yet to follow; undefined once they have. */
+  readonly ahead: readonly ElementRef[] | undefined;
 }
 
 /** How somebody has the outline before them. Kept by the screen, so that it is the same when they come back to it. */
@@ -22,6 +25,7 @@ export const createOutlineView = (): OutlineViewStore =>
     filterOpenings: new Map(),
     current: undefined,
     anchor: undefined,
+    ahead: undefined,
   }));
 
 export const setFilter = (view: OutlineViewStore, filter: string): void =>

@@ -1,4 +1,13 @@
-import { useEffect, useLayoutEffect, useMemo, useReducer, useRef, useState, type KeyboardEvent } from 'react';
+import {
+  useEffect,
+  useLayoutEffect,
+  useMemo,
+  useReducer,
+  useRef,
+  useState,
+  type FocusEvent,
+  type KeyboardEvent,
+} from 'react';
 import type { Subject } from '../../canvas/actions/element-actions.ts';
 import { namePathOf } from '../../canvas/actions/element-menu.ts';
 import { useExtraActions } from '../../canvas/actions/extra-actions.ts';
@@ -7,7 +16,6 @@ import { askToJoin } from '../../canvas/desk-state.ts';
 import { standingOf } from '../../canvas/flow-changes-to-patch.ts';
 import { useDrawn } from '../../canvas/geometry-context.tsx';
 import { elementKey } from '../../drawing/decorations.ts';
-import type { ElementRef } from '../../engine/model/design.ts';
 import { useNumbering } from '../../workspace/checks-context.tsx';
 import { newEntryId, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { placeSegment } from '../../workspace/operations/place-parts.ts';
@@ -17,17 +25,24 @@ import { setFilter, setOpenings, type OutlineViewStore } from './outline-view.ts
 import { rowMenu, subjectOf } from './row-menu.ts';
 import { neighbourOf, treeStep, type TreeStep } from './tree-keys.ts';
 import type { OutlineRows } from './use-outline-rows.ts';
+import { useSelectionAhead } from './use-selection-ahead.ts';
 import { keyOfElement, keysAbove, type VisibleRow } from './visible-rows.ts';
 
 // As long as somebody takes between two letters of one name.
 const typingMs = 700;
 
+/** The row whose name is being changed, and where that is kept. */
+export interface Renaming {
+  readonly key: string;
+  readonly path: readonly string[];
+}
+
 interface Tree {
   readonly tools: LineTools;
   readonly onKeyDown: (event: KeyboardEvent) => void;
+  readonly onBlur: (event: FocusEvent) => void;
   readonly menuKey: string | undefined;
-  /** The row whose name is being changed, and where that is kept. */
-  readonly renaming: { readonly key: string; readonly path: readonly string[] } | undefined;
+  readonly renaming: Renaming | undefined;
 }
 
 /** Lets keyboard and pointer work on the rows, and keeps selection, focus and what is in view together. */
@@ -37,7 +52,7 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
   const selection = useOpenState((state) => state.selection);
   const { settled } = useDrawn();
   const [menuKey, setMenuKey] = useState<string>();
-  const [renaming, setRenaming] = useState<Tree['renaming']>();
+  const [renaming, setRenaming] = useState<Renaming>();
   const { rows, at, roots } = shown;
   const here = rows[at];
   const hereKey = here?.row.key;
@@ -58,18 +73,13 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
   useEffect(() => {
     latest.current = { ...shown, settled };
   });
-  /** The selection that the rows show already. */
-  const known = useRef<readonly ElementRef[]>([]);
+  const { select, catchUp, isKnown, takeOver } = useSelectionAhead(view);
   const wasMade = useRef(false);
 
   const move = useMemo(() => {
     const focusCurrent = (): void => {
       wantsFocus.current = true;
       drawAgain();
-    };
-    const select = (refs: readonly ElementRef[]): void => {
-      known.current = refs;
-      open.select(refs);
     };
     /** To a row, with it alone selected, all from the anchor to it, or nothing changed. */
     const goTo = ({ row }: VisibleRow, how: 'select' | 'extend' | 'only'): void => {
@@ -90,14 +100,16 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
       select([...new Map(refs.map((ref) => [elementKey(ref), ref])).values()]);
     };
     const toggleSelection = ({ ref, key }: OutlineRow): void => {
+      catchUp();
       view.setState({ anchor: key, current: key });
       if (ref === undefined) return;
       const { selection } = open.store.getState();
       const without = selection.filter((one) => elementKey(one) !== elementKey(ref));
       select(without.length < selection.length ? without : [...selection, ref]);
+      catchUp();
     };
     return { focusCurrent, goTo, toggleSelection };
-  }, [open, view]);
+  }, [open, view, select, catchUp]);
 
   /** The row that an action was asked for on: one element may have several. */
   const rowOf = ({ ref, detach }: Subject): OutlineRow | undefined => {
@@ -131,17 +143,18 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
   // What was selected elsewhere is brought to light here.
   useEffect(() => {
     const [first] = selection;
-    if (first === undefined || selection === known.current) return;
+    if (isKnown(selection)) return;
+    if (first === undefined) return takeOver(selection);
     const key = keyOfElement(roots, first);
     // Not in the outline yet: the rows of a newer design are on their way.
     if (key === undefined) return;
-    known.current = selection;
+    takeOver(selection);
     setOpenings(view, keysAbove(key), true);
     view.setState({ current: key, anchor: key });
     if (!wasMade.current) return;
     wasMade.current = false;
     move.focusCurrent();
-  }, [selection, roots, view, move]);
+  }, [selection, roots, view, move, isKnown, takeOver]);
 
   const tools = useMemo(
     (): LineTools => ({
@@ -150,6 +163,7 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
         if (visible === undefined) return;
         if (toggle) move.toggleSelection(row);
         else move.goTo(visible, extend ? 'extend' : 'select');
+        catchUp();
       },
       focus: ({ key }) => {
         if (view.getState().current !== key) view.setState({ current: key });
@@ -160,6 +174,7 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
         move.focusCurrent();
       },
       openMenu: ({ key }) => {
+        catchUp();
         view.setState({ current: key });
         setMenuKey(key);
       },
@@ -183,7 +198,7 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
         if (group === 'notes') return actions.place('note');
       },
     }),
-    [open, view, move, actions, extra, numbering],
+    [open, view, move, catchUp, actions, extra, numbering],
   );
 
   const typed = useRef({ text: '', atMs: 0 });
@@ -227,9 +242,14 @@ export const useTree = (view: OutlineViewStore, shown: OutlineRows): Tree => {
     const isOnButton = event.target instanceof Element && event.target.closest('button') !== null;
     if (here === undefined || (isOnButton && (event.key === 'Enter' || event.key === ' '))) return;
     const step = treeStep(rows, at, event, typedWith(event));
+    // Whatever else a key does, here or on the whole page, it does to what is selected.
+    if (step?.does !== 'go') catchUp();
     if (step === undefined) return;
     event.preventDefault();
     follow(step, here, event);
   };
-  return { tools, onKeyDown, menuKey, renaming };
+  const onBlur = ({ currentTarget, relatedTarget }: FocusEvent): void => {
+    if (!currentTarget.contains(relatedTarget)) catchUp();
+  };
+  return { tools, onKeyDown, onBlur, menuKey, renaming };
 };

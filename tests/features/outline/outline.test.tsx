@@ -1,4 +1,4 @@
-import { act, screen, waitFor, within } from '@testing-library/react';
+import { act, fireEvent, screen, waitFor, within } from '@testing-library/react';
 import { afterEach, describe, expect, it } from 'vitest';
 import { clearDesk } from '../../../src/canvas/desk-state.ts';
 import { emptyDesign } from '../../../src/engine/model/design.ts';
@@ -18,12 +18,33 @@ describe('the keyboard in the outline', () => {
     await user.click(row('Sites, 2'));
     await user.keyboard('{ArrowDown}');
     expect(row('Site Gullhaven')).toHaveFocus();
-    expect(selection()).toEqual([{ collection: 'sites', id: 's1' }]);
+    await waitFor(() => expect(selection()).toEqual([{ collection: 'sites', id: 's1' }]));
     await user.keyboard('{ArrowDown}{ArrowDown}');
     expect(row('Host h-s1-a')).toHaveFocus();
     expect(row('Host h-s1-a')).toHaveAttribute('aria-selected', 'true');
     expect(row('Site Gullhaven')).toHaveAttribute('aria-selected', 'false');
     expect(screen.getAllByRole('treeitem').filter((item) => item.tabIndex === 0)).toHaveLength(1);
+  });
+
+  it('moves on at once while a key is held, and lets the sheet follow when it rests', async () => {
+    const { user, row, design } = renderOutline(pair);
+    await user.click(row('Site Gullhaven'));
+    const followed: string[] = [];
+    design.store.subscribe(({ selection }) => followed.push(selection.map(({ id }) => id).join()));
+    for (const from of ['Site Gullhaven', 'Firewall fw-s1', 'Host h-s1-a'])
+      fireEvent.keyDown(row(from), { key: 'ArrowDown' });
+    expect(row('Host h-s1-b')).toHaveFocus();
+    expect(row('Host h-s1-b')).toHaveAttribute('aria-selected', 'true');
+    await waitFor(() => expect(followed).toEqual(['h-s1-b']));
+  });
+
+  it('does to the row that it has just come to what the next key asks for', async () => {
+    const { user, row, document: design } = renderOutline(pair);
+    await user.click(row('Firewall fw-s1'));
+    fireEvent.keyDown(row('Firewall fw-s1'), { key: 'ArrowDown' });
+    fireEvent.keyDown(row('Host h-s1-a'), { key: 'Delete' });
+    expect(Object.keys(design().devices)).not.toContain('h-s1-a');
+    expect(Object.keys(design().devices)).toContain('fw-s1');
   });
 
   it('opens, goes in, goes out and shuts', async () => {
@@ -52,9 +73,9 @@ describe('the keyboard in the outline', () => {
     const { user, row, selection } = renderOutline(pair);
     await user.click(row('Firewall fw-s1'));
     await user.keyboard('{Shift>}{ArrowDown}{ArrowDown}{/Shift}');
-    expect(selection().map(({ id }) => id)).toEqual(['fw-s1', 'h-s1-a', 'h-s1-b']);
+    await waitFor(() => expect(selection().map(({ id }) => id)).toEqual(['fw-s1', 'h-s1-a', 'h-s1-b']));
     await user.keyboard('{Shift>}{ArrowUp}{/Shift}');
-    expect(selection().map(({ id }) => id)).toEqual(['fw-s1', 'h-s1-a']);
+    await waitFor(() => expect(selection().map(({ id }) => id)).toEqual(['fw-s1', 'h-s1-a']));
     await user.keyboard('{Control>}{ArrowDown}{ArrowDown}{/Control}');
     expect(row('Switch sw-s1')).toHaveFocus();
     expect(selection()).toHaveLength(2);
