@@ -4,7 +4,7 @@ import type { Knex } from 'knex';
 export const liveChannel = 'longpatch';
 
 /** What changed of a design, as one word; who listens reads the rest from the database. */
-export type DesignChange = 'patches' | 'waivers' | 'comments' | 'state' | 'shares';
+export type DesignChange = 'patches' | 'waivers' | 'comments' | 'state' | 'shares' | 'presence';
 
 export interface Announcement {
   readonly designId: string;
