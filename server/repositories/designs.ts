@@ -23,7 +23,11 @@ export interface DesignRow {
   readonly changedBy: string | null;
   readonly archivedAt: Date | null;
   readonly deletedAt: Date | null;
+  /** The revision to build from: approved or built, and not superseded. */
+  readonly issued: IssuedRevision | null;
 }
+
+export type IssuedRevision = NonNullable<DesignSummary['issued']>;
 
 /** How many findings no waiver covers, and the last day on which that is so. */
 export interface OpenCounts {
@@ -45,12 +49,19 @@ export interface DocumentSummary extends OpenCounts {
   readonly profileCopies: ProfileCopies;
 }
 
-interface Flat extends Omit<DesignRow, 'counts'>, Counts {}
+interface Flat extends Omit<DesignRow, 'counts' | 'issued'>, Counts {
+  readonly issuedId: IssuedRevision['id'] | null;
+  readonly issuedLabel: IssuedRevision['label'];
+  readonly issuedState: IssuedRevision['state'];
+}
 
 function selectDesigns(knex: Knex): Knex.QueryBuilder {
   return knex('designs')
     .join('engagements', 'engagements.id', 'designs.engagement_id')
     .leftJoin('people', 'people.id', 'designs.changed_by')
+    .leftJoin('revisions', (join) =>
+      join.on('revisions.design_id', 'designs.id').andOnIn('revisions.state', ['approved', 'built']),
+    )
     .select({
       id: 'designs.id',
       engagementId: 'designs.engagement_id',
@@ -70,11 +81,26 @@ function selectDesigns(knex: Knex): Knex.QueryBuilder {
       changedBy: 'people.name',
       archivedAt: 'designs.archived_at',
       deletedAt: 'designs.deleted_at',
+      issuedId: 'revisions.id',
+      issuedLabel: 'revisions.label',
+      issuedState: 'revisions.state',
     });
 }
 
-function fromFlat({ blocking, degrading, advisory, ...row }: Flat): DesignRow {
-  return { ...row, counts: { blocking, degrading, advisory } };
+function fromFlat({
+  blocking,
+  degrading,
+  advisory,
+  issuedId,
+  issuedLabel,
+  issuedState,
+  ...row
+}: Flat): DesignRow {
+  return {
+    ...row,
+    counts: { blocking, degrading, advisory },
+    issued: issuedId === null ? null : { id: issuedId, label: issuedLabel, state: issuedState },
+  };
 }
 
 export async function findDesign(knex: Knex, id: string): Promise<DesignRow | null> {
@@ -114,6 +140,7 @@ export async function insertDesign(
       engagement_id: engagementId,
       ...summaryColumns(summary),
       created_at: at,
+      created_by: personId,
       changed_at: at,
       changed_by: personId,
     })
@@ -140,6 +167,26 @@ export async function updateAfterSave(
       changed_at: change.at,
       changed_by: change.personId,
     });
+}
+
+export async function setDesignState(knex: Knex, id: string, state: DesignRow['state']): Promise<void> {
+  await knex('designs').where({ id }).update({ state });
+}
+
+/** Who began a design, and when. */
+export async function findCreation(
+  knex: Knex,
+  id: string,
+): Promise<{ readonly personId: string | null; readonly name: string | null; readonly at: Date } | null> {
+  const row = await knex('designs')
+    .leftJoin('people', 'people.id', 'designs.created_by')
+    .where({ 'designs.id': id })
+    .first<{ personId: string | null; name: string | null; at: Date } | undefined>({
+      personId: 'designs.created_by',
+      name: 'people.name',
+      at: 'designs.created_at',
+    });
+  return row ?? null;
 }
 
 export async function setDesignPutAway(

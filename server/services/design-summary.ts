@@ -64,5 +64,6 @@ export function summaryOf(row: DesignRow): DesignSummary {
     changedBy: row.changedBy,
     archivedAt: row.archivedAt?.toISOString() ?? null,
     deletedAt: row.deletedAt?.toISOString() ?? null,
+    issued: row.issued,
   };
 }

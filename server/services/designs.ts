@@ -58,7 +58,9 @@ export async function openDesign(context: Context, personId: string, designId: s
     summary: summaryOf(design),
     engagementName: design.engagementName,
     workspaceId: design.workspaceId,
-    actions: permissions[role].filter((action) => !isPutAway || action !== 'design.edit'),
+    actions: permissions[role].filter(
+      (action) => action !== 'design.edit' || (!isPutAway && design.state === 'draft'),
+    ),
     sequence: design.sequence,
     document,
   };

@@ -26,6 +26,8 @@ export const limits = {
   profiles: 500,
   /** Waivers that were withdrawn, as far back as one list tells of them. */
   withdrawnWaivers: 200,
+  /** Sittings of one design, as far back as its history tells of them. */
+  sittings: 500,
   /** Designs whose counts one list brings up to date; the others follow with the next. */
   recountedAtOnce: 20,
 } as const;

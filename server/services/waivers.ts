@@ -16,7 +16,7 @@ import { checkFactsOf, dayOf, findingsBy } from './check-facts.ts';
 import type { Context } from './context.ts';
 import { countOpen } from './design-summary.ts';
 import { limits } from './limits.ts';
-import { refuseArchived } from './save-edits.ts';
+import { refuseArchived } from './design-states.ts';
 import { loadDocument } from './stored-documents.ts';
 
 /** A design's waivers, the newest first: all that stand, and those that were withdrawn last. */
@@ -147,6 +147,6 @@ function refuseExpiry(expiresOn: string, now: Date): void {
   );
 }
 
-function waiverOf({ designId: _, ...waiver }: WaiverRow): Waiver {
+export function waiverOf({ designId: _, ...waiver }: WaiverRow): Waiver {
   return waiver;
 }

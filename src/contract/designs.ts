@@ -37,6 +37,8 @@ export const designSummarySchema = z.object({
   archivedAt: z.iso.datetime().nullable(),
   /** A deleted design is in the archive, too, and gone for good `deletedForDays` later. */
   deletedAt: z.iso.datetime().nullable(),
+  /** The revision to build from: the last that was approved. While there is a later draft, `state` is the draft's. */
+  issued: z.object({ id: z.string(), label: z.string(), state: z.enum(['approved', 'built']) }).nullable(),
 });
 export type DesignSummary = z.infer<typeof designSummarySchema>;
 
@@ -106,7 +108,7 @@ export const openDesignSchema = z.object({
   summary: designSummarySchema,
   engagementName: z.string(),
   workspaceId: z.string(),
-  /** What the reader may do with it; nobody edits what is archived. */
+  /** What the reader may do with it; nobody edits what is archived, in review, approved, built or superseded. */
   actions: z.array(z.enum(actions)),
   sequence: z.int(),
   /** The engine's document; parse with parseDesign. */

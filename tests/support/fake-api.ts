@@ -70,6 +70,7 @@ export function designSummary(changes: Partial<DesignSummary> = {}): DesignSumma
     changedBy: 'Rosa Halloran',
     archivedAt: null,
     deletedAt: null,
+    issued: null,
     ...changes,
   };
 }

@@ -28,6 +28,8 @@ let engagementId: string;
 let designId: string;
 let waiverId: string;
 let profileId: string;
+let reviewedId: string;
+let revisionId: string;
 let stranger: TestBrowser;
 let nobody: TestBrowser;
 const members = {} as { [role in Role]: TestBrowser };
@@ -37,6 +39,8 @@ beforeAll(async () => {
   workspace = await addWorkspace(application);
   engagementId = await addEngagement(application, workspace.id);
   designId = await addDesign(application, engagementId, document);
+  reviewedId = await addDesign(application, engagementId);
+  revisionId = reviewedId;
   for (const role of roles) members[role] = await signIn(application, workspace.people[role]);
   const made = await requests['POST /api/designs/:designId/waivers'](members.reviewer, ids()).expect(201);
   waiverId = (made.body as { id: string }).id;
@@ -59,6 +63,8 @@ const missing: Ids = {
   engagement: missingId,
   design: missingId,
   waiver: missingId,
+  reviewed: missingId,
+  revision: missingId,
   profile: missingId,
 };
 
@@ -70,6 +76,8 @@ interface Ids {
   readonly engagement: string;
   readonly design: string;
   readonly waiver: string;
+  readonly reviewed: string;
+  readonly revision: string;
   readonly profile: string;
 }
 
@@ -128,6 +136,27 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
     }),
   'DELETE /api/designs/:designId/waivers/:waiverId': (browser, { design: id, waiver }) =>
     browser.delete(`/api/designs/${id}/waivers/${waiver}`),
+  'GET /api/designs/:designId/revisions': (browser, { reviewed: id }) =>
+    browser.get(`/api/designs/${id}/revisions`),
+  'POST /api/designs/:designId/revisions': (browser, { reviewed: id }) =>
+    browser.post(`/api/designs/${id}/revisions`, { sequence: reviewedSequence }),
+  'GET /api/revisions/:revisionId': (browser, { revision: id }) => browser.get(`/api/revisions/${id}`),
+  'POST /api/revisions/:revisionId/withdrawal': (browser, { revision: id }) =>
+    browser.post(`/api/revisions/${id}/withdrawal`),
+  'POST /api/revisions/:revisionId/decision': (browser, { revision: id }) =>
+    browser.post(`/api/revisions/${id}/decision`, { decision: 'send-back', note: 'Name the sites' }),
+  'POST /api/revisions/:revisionId/build': (browser, { revision: id }) =>
+    browser.post(`/api/revisions/${id}/build`, { builtOn: new Date().toISOString().slice(0, 10) }),
+  'POST /api/revisions/:revisionId/supersession': (browser, { revision: id }) =>
+    browser.post(`/api/revisions/${id}/supersession`, { reason: 'The customer left' }),
+  'POST /api/designs/:designId/draft': (browser, { reviewed: id }) =>
+    browser.post(`/api/designs/${id}/draft`),
+  'POST /api/designs/:designId/restoration': (browser, { reviewed: id }) =>
+    browser.post(`/api/designs/${id}/restoration`, { sequence: 0 }),
+  'GET /api/designs/:designId/document': (browser, { design: id }) =>
+    browser.get(`/api/designs/${id}/document?sequence=0`),
+  'GET /api/designs/:designId/sittings': (browser, { design: id }) =>
+    browser.get(`/api/designs/${id}/sittings`),
   'GET /api/workspaces/:workspaceId/pools': (browser, { workspace: id }) =>
     browser.get(`/api/workspaces/${id}/pools`),
   'PUT /api/workspaces/:workspaceId/pools': (browser, { workspace: id }) =>
@@ -140,6 +169,42 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
     browser.patch(`/api/profiles/${id}`, { profile: { name: 'Renamed' } }),
 };
 
+let reviewedSequence = 0;
+
+/** Brings the design of the revision routes back to a draft, whatever the last request made of it. */
+async function makeDraft(): Promise<void> {
+  const { knex } = application.database;
+  await knex('revisions').where({ design_id: reviewedId, state: 'in-review' }).update({ state: 'withdrawn' });
+  const issued = knex('revisions').where({ design_id: reviewedId }).whereIn('state', ['approved', 'built']);
+  await issued.update({ state: 'superseded' });
+  await knex('designs').where({ id: reviewedId }).update({ state: 'draft' });
+  reviewedSequence = (await knex('designs').where({ id: reviewedId }).first<{ sequence: number }>()).sequence;
+}
+
+async function putToReview(): Promise<void> {
+  await makeDraft();
+  const asked = await requests['POST /api/designs/:designId/revisions'](members.owner, ids()).expect(201);
+  revisionId = (asked.body as { id: string }).id;
+}
+
+async function makeApproved(): Promise<void> {
+  await putToReview();
+  const { knex } = application.database;
+  await knex('revisions').where({ id: revisionId }).update({ state: 'approved', decided_at: new Date() });
+  await knex('designs').where({ id: reviewedId }).update({ state: 'approved' });
+}
+
+/** What has to be so before a request that succeeds once alone. */
+const ready: { readonly [route in Route]?: () => Promise<void> } = {
+  'POST /api/designs/:designId/revisions': makeDraft,
+  'POST /api/designs/:designId/restoration': makeDraft,
+  'GET /api/revisions/:revisionId': makeApproved,
+  'POST /api/revisions/:revisionId/withdrawal': putToReview,
+  'POST /api/revisions/:revisionId/decision': putToReview,
+  'POST /api/revisions/:revisionId/build': makeApproved,
+  'POST /api/revisions/:revisionId/supersession': makeApproved,
+};
+
 const isAction = (access: Access): access is Action => (actions as readonly string[]).includes(access);
 const guarded = (Object.keys(routes) as Route[]).filter((route) => isAction(routes[route]));
 const ids = (): Ids => ({
@@ -147,6 +212,8 @@ const ids = (): Ids => ({
   engagement: engagementId,
   design: designId,
   waiver: waiverId,
+  reviewed: reviewedId,
+  revision: revisionId,
   profile: profileId,
 });
 
@@ -209,6 +276,7 @@ describe.each(guarded)('%s', (route) => {
   const action = routes[route] as Action;
 
   test.each(roles)('answers a member by what the role %s may do', async (role) => {
+    await ready[route]?.();
     const response = await requests[route](members[role], ids());
     if (permits(role, action)) {
       expect(response.status).toBeLessThan(300);
@@ -228,6 +296,8 @@ describe.each(guarded)('%s', (route) => {
         engagement: '1; drop',
         design: '../x',
         waiver: '%',
+        reviewed: '../y',
+        revision: '%00',
         profile: "'",
       }),
     ];
