@@ -28,7 +28,7 @@ export async function seedSaltmarsh({ knex }: Pick<Database, 'knex'>): Promise<v
     for (const { role, name, email, password } of demoPeople) {
       const id = await insertPerson(trx, { name, email, passwordHash: await hashPassword(password) });
       await insertMembership(trx, workspaceId, id, role);
-      await insertDemoPerson(trx, id);
+      await insertDemoPerson(trx, id, workspaceId);
       ids.set(role, id);
     }
     const now = Date.now();

@@ -9,7 +9,9 @@ export interface Config {
   /** Origin that people type, without a slash at the end; links in mails start with it. */
   readonly publicUrl: string;
   readonly sessionSecret: string;
-  /** Where mail is handed over; null means that no mail can be sent. */
+  /** The one before, after a change; null where there was none. */
+  readonly previousSessionSecret: string | null;
+  /** Where mail is handed over; null means that it is kept in the database, for the mailbox page. */
   readonly smtpUrl: string | null;
 }
 
@@ -59,6 +61,12 @@ const environmentSchema = z.object({
     .min(minSecretCharacters, {
       error: `is too short; give at least ${minSecretCharacters} random characters`,
     }),
+  SESSION_SECRET_BEFORE: z
+    .string()
+    .min(minSecretCharacters, {
+      error: `is too short; give the secret that SESSION_SECRET was before, of at least ${minSecretCharacters} characters`,
+    })
+    .optional(),
   SMTP_URL: z
     .string()
     .refine(hasScheme('smtp:', 'smtps:'), {
@@ -82,6 +90,11 @@ export function localUrl(host: string, port: number): string {
   return isIP(host) === 6 ? `http://[${host}]:${port}` : `http://${host}:${port}`;
 }
 
+/** The secrets that count, the present one first. */
+export function serverSecrets({ sessionSecret, previousSessionSecret }: Config): string[] {
+  return previousSessionSecret === null ? [sessionSecret] : [sessionSecret, previousSessionSecret];
+}
+
 /** Reads the server's configuration; an empty variable counts as unset. Each problem is a sentence with variable, value and way out. */
 export function readConfig(environment: Readonly<Record<string, string | undefined>>): ConfigResult {
   const given = Object.fromEntries(Object.entries(environment).filter(([, value]) => value !== ''));
@@ -93,7 +106,8 @@ export function readConfig(environment: Readonly<Record<string, string | undefin
     });
     return { ok: false, problems };
   }
-  const { DATABASE_URL, HOST, PORT, PUBLIC_URL, SESSION_SECRET, SMTP_URL } = parsed.data;
+  const { DATABASE_URL, HOST, PORT, PUBLIC_URL, SMTP_URL } = parsed.data;
+  const { SESSION_SECRET, SESSION_SECRET_BEFORE } = parsed.data;
   return {
     ok: true,
     config: {
@@ -102,6 +116,7 @@ export function readConfig(environment: Readonly<Record<string, string | undefin
       port: PORT,
       publicUrl: PUBLIC_URL ?? localUrl(HOST, PORT),
       sessionSecret: SESSION_SECRET,
+      previousSessionSecret: SESSION_SECRET_BEFORE ?? null,
       smtpUrl: SMTP_URL ?? null,
     },
   };
@@ -110,6 +125,6 @@ export function readConfig(environment: Readonly<Record<string, string | undefin
 // Problems end up in terminals and logs, so no secret may stand in them.
 function shown(name: string, value: string | undefined): string {
   if (value === undefined) return '';
-  if (name === 'SESSION_SECRET') return ` (${value.length} characters)`;
+  if (name.startsWith('SESSION_SECRET')) return ` (${value.length} characters)`;
   return ` '${value.replace(/(:\/\/[^:/@]*:)[^@]*@/, '$1***@').replace(/(password=)[^&\s]*/gi, '$1***')}'`;
 }

@@ -5,6 +5,7 @@ import session from 'express-session';
 import passport from 'passport';
 import { Strategy as LocalStrategy } from 'passport-local';
 import type { Config } from '../config.ts';
+import { serverSecrets } from '../config.ts';
 import type { Database } from '../db/open-database.ts';
 import { Refusal } from '../errors.ts';
 import type { Account } from '../repositories/people.ts';
@@ -20,6 +21,22 @@ declare global {
   }
 }
 
+/** Somebody whose password was right and whose code is still to come. */
+export interface PendingSignIn {
+  readonly personId: string;
+  readonly credentialVersion: number;
+  readonly keep: boolean;
+  readonly atMs: number;
+}
+
+declare module 'express-session' {
+  interface SessionData {
+    /** How the session began, for its owner to tell it from others by. */
+    about: { readonly startedAt: string; readonly address: string; readonly userAgent: string };
+    pendingSignIn: PendingSignIn;
+  }
+}
+
 interface StoredUser {
   readonly id: string;
   readonly credentialVersion: number;
@@ -27,7 +44,10 @@ interface StoredUser {
 
 const keptForMs = 30 * 24 * 60 * 60 * 1000;
 const anonymousForMs = 2 * 60 * 60 * 1000;
-const idleSeconds = 24 * 60 * 60;
+/** How long a session that isn't kept lasts after its last use. */
+export const idleSeconds = 24 * 60 * 60;
+const secondStepWithinMs = 10 * 60 * 1000;
+const userAgentCharacters = 300;
 
 const csrf = csrfSync({ size: 32 });
 
@@ -62,7 +82,8 @@ export function createSessions(
           ttl: idleSeconds,
           errorLog: onError,
         }),
-        secret: config.sessionSecret,
+        // What was signed with the secret before the present one still counts.
+        secret: serverSecrets(config),
         // RFC 6265bis (draft) section 4.1.3.2: the prefix keeps other hosts and plain HTTP from setting this cookie.
         name: isHttps ? '__Host-longpatch' : 'longpatch',
         cookie: { httpOnly: true, sameSite: 'lax', secure: isHttps, path: '/' },
@@ -82,28 +103,59 @@ export function createSessions(
   };
 }
 
-/** Starts a new session for a person, under a new id: one that was planted before is worth nothing. */
+/**
+ * Starts a new session for a person, under a new id: one that was planted before is worth nothing. It asks for no second
+ * step: whoever comes with a password alone is `admit`ted.
+ */
 export async function startSession(req: Request, account: Account, keep: boolean): Promise<void> {
-  await new Promise<void>((resolve, reject) => {
-    req.logIn(account, (error?: unknown) => (error ? reject(error as Error) : resolve()));
-  });
+  const { about: before } = req.session;
+  const isSamePerson = req.user?.id === account.id;
+  await done((settle) => req.logIn(account, settle));
   if (keep) req.session.cookie.maxAge = keptForMs;
+  req.session.about = {
+    startedAt: (isSamePerson ? before?.startedAt : undefined) ?? new Date().toISOString(),
+    address: req.ip ?? '',
+    userAgent: (req.headers['user-agent'] ?? '').slice(0, userAgentCharacters),
+  };
+  await saveWithToken(req);
+}
+
+/** Starts a session that waits for a second step; nobody is signed in with it yet. */
+export async function askForSecondStep(req: Request, account: Account, keep: boolean): Promise<void> {
+  await done((settle) => req.session.regenerate(settle));
+  req.user = undefined;
+  req.session.cookie.maxAge = secondStepWithinMs;
+  const { id, credentialVersion } = account;
+  req.session.pendingSignIn = { personId: id, credentialVersion, keep, atMs: Date.now() };
+  await saveWithToken(req);
+}
+
+/** Whose second step this session waits for; null when it waits for none or has waited too long. */
+export function pendingSignInOf(req: Request): PendingSignIn | null {
+  const pending = req.session.pendingSignIn;
+  if (pending === undefined || Date.now() - pending.atMs > secondStepWithinMs) return null;
+  return pending;
+}
+
+async function saveWithToken(req: Request): Promise<void> {
   csrf.generateToken(req, true);
-  await new Promise<void>((resolve, reject) => {
-    req.session.save((error?: unknown) => (error ? reject(error as Error) : resolve()));
+  await done((settle) => req.session.save(settle));
+}
+
+function done(work: (settle: (error?: unknown) => void) => unknown): Promise<void> {
+  return new Promise<void>((resolve, reject) => {
+    work((error) => (error ? reject(error as Error) : resolve()));
   });
 }
 
 /** Ends this session for good. */
 export async function endSession(req: Request): Promise<void> {
-  await new Promise<void>((resolve, reject) => {
-    req.session.destroy((error?: unknown) => (error ? reject(error as Error) : resolve()));
-  });
+  await done((settle) => req.session.destroy(settle));
 }
 
 /** The token that changing requests must carry; a visitor's session is made for it, and short. */
 export function csrfTokenOf(req: Request): string {
-  if (req.user === undefined) req.session.cookie.maxAge = anonymousForMs;
+  if (req.user === undefined && pendingSignInOf(req) === null) req.session.cookie.maxAge = anonymousForMs;
   return csrf.generateToken(req);
 }
 

@@ -18,7 +18,16 @@ export interface Throttles {
   /** Guesses at the current password of somebody who is signed in. */
   passwordAttempt(personId: string): Promise<void>;
   passwordFound(personId: string): Promise<void>;
+  /** Codes of somebody whose password was right, or who is signed in. Right ones don't count. */
+  secondStepAttempt(personId: string): Promise<void>;
+  secondStepTaken(personId: string): Promise<void>;
+  /** Guesses at the code for the first owner. */
+  firstOwnerAttempt(address: string): Promise<void>;
   demoSignIn(address: string): Promise<void>;
+  workspaceStart(personId: string): Promise<void>;
+  /** Requests that carry a token that is none, and those that carry a good one. */
+  badToken(address: string): Promise<void>;
+  tokenRequest(tokenId: string): Promise<void>;
   /** `weight` is how many ordinary requests the work of this one amounts to. */
   engineRequest(address: string, weight?: number): Promise<void>;
 }
@@ -29,7 +38,14 @@ export const allowances = {
   signInOfPerson: { times: 100, seconds: 60 * 60 },
   signInFromAddress: { times: 100, seconds: 15 * 60 },
   currentPassword: { times: 10, seconds: 15 * 60 },
+  // RFC 4226 section 7.3: with three codes that fit at a time, 30 guesses a day find one in about 11,000 days.
+  secondStep: { times: 5, seconds: 15 * 60 },
+  secondStepOfDay: { times: 30, seconds: 24 * 60 * 60 },
+  firstOwner: { times: 20, seconds: 60 * 60 },
   demoSignIn: { times: 120, seconds: 60 },
+  workspaceStart: { times: 20, seconds: 24 * 60 * 60 },
+  badToken: { times: 30, seconds: 15 * 60 },
+  tokenRequest: { times: 600, seconds: 60 },
   engineRequest: { times: 120, seconds: 60 },
 } as const satisfies { readonly [name: string]: Allowance };
 
@@ -51,7 +67,13 @@ export function createThrottles(pool: Pool): Throttles {
   const ofPerson = limiter('signInOfPerson');
   const fromAddress = limiter('signInFromAddress');
   const currentPassword = limiter('currentPassword');
+  const secondStep = limiter('secondStep');
+  const secondStepOfDay = limiter('secondStepOfDay');
+  const firstOwner = limiter('firstOwner');
   const demo = limiter('demoSignIn');
+  const workspaces = limiter('workspaceStart');
+  const badTokens = limiter('badToken');
+  const tokens = limiter('tokenRequest');
   // The engine answers without a database too.
   const engine = limiter('engineRequest', true);
   const both = (email: string, address: string) => shortKey(`${email} ${addressKey(address)}`);
@@ -73,6 +95,17 @@ export function createThrottles(pool: Pool): Throttles {
     async passwordFound(personId) {
       await currentPassword.delete(personId);
     },
+    async secondStepAttempt(personId) {
+      await take(secondStep, personId);
+      await take(secondStepOfDay, personId);
+    },
+    async secondStepTaken(personId) {
+      await Promise.all([secondStep.delete(personId), secondStepOfDay.reward(personId, 1)]);
+    },
+    firstOwnerAttempt: (address) => take(firstOwner, addressKey(address)),
+    workspaceStart: (personId) => take(workspaces, personId),
+    badToken: (address) => take(badTokens, addressKey(address)),
+    tokenRequest: (tokenId) => take(tokens, tokenId),
     demoSignIn: (address) => take(demo, addressKey(address)),
     engineRequest: (address, weight = 1) => take(engine, addressKey(address), weight),
   };

@@ -5,13 +5,27 @@ export interface MembershipRow {
   readonly workspaceId: string;
   readonly workspaceName: string;
   readonly role: Role;
+  readonly requiresSecondStep: boolean;
 }
 
-export async function findRole(knex: Knex, workspaceId: string, personId: string): Promise<Role | null> {
-  const row = await knex('memberships')
-    .where({ workspace_id: workspaceId, person_id: personId })
-    .first<{ role: Role }>('role');
-  return row?.role ?? null;
+/** A person's place in a workspace. */
+export interface Place {
+  readonly role: Role;
+  /** The workspace asks for two-step sign-in, and the person has none. */
+  readonly lacksSecondStep: boolean;
+}
+
+export async function findPlace(knex: Knex, workspaceId: string, personId: string): Promise<Place | null> {
+  const row = (await knex('memberships')
+    .join('workspaces', 'workspaces.id', 'memberships.workspace_id')
+    .leftJoin('second_steps', 'second_steps.person_id', 'memberships.person_id')
+    .where({ workspace_id: workspaceId, 'memberships.person_id': personId })
+    .select({
+      role: 'role',
+      lacksSecondStep: knex.raw('requires_second_step and confirmed_at is null'),
+    })
+    .first()) as Place | undefined;
+  return row ?? null;
 }
 
 /** A person's workspaces by name. */
@@ -24,6 +38,7 @@ export function listMemberships(knex: Knex, personId: string): Promise<Membershi
       workspaceId: 'workspaces.id',
       workspaceName: 'workspaces.name',
       role: 'role',
+      requiresSecondStep: 'requires_second_step',
     });
 }
 

@@ -13,8 +13,9 @@ export interface AccountWithPassword extends Account {
 
 const columns = { id: 'id', name: 'name', email: 'email', credentialVersion: 'credential_version' };
 
+/** Nobody is found who left. */
 export async function findAccount(knex: Knex, id: string): Promise<Account | null> {
-  return (await knex('people').where({ id }).first<Account>(columns)) ?? null;
+  return (await knex('people').where({ id }).whereNull('left_at').first<Account>(columns)) ?? null;
 }
 
 export async function findAccountByEmail(knex: Knex, email: string): Promise<AccountWithPassword | null> {
@@ -23,7 +24,7 @@ export async function findAccountByEmail(knex: Knex, email: string): Promise<Acc
 }
 
 export async function findPasswordHash(knex: Knex, id: string): Promise<string | null> {
-  const row = await knex('people').where({ id }).first<{ hash: string }>({ hash: 'password_hash' });
+  const row = await knex('people').where({ id }).first<{ hash: string | null }>({ hash: 'password_hash' });
   return row?.hash ?? null;
 }
 
@@ -47,4 +48,28 @@ export async function insertPerson(
     .insert({ name, email, password_hash: passwordHash })
     .returning<{ id: string }[]>('id');
   return rows[0]!.id;
+}
+
+/** Notes that somebody was here. */
+export async function setLastSeen(knex: Knex, id: string, at: Date): Promise<void> {
+  await knex('people').where({ id }).update({ last_seen_at: at });
+}
+
+/** Empties an account of all but its name, which stays readable on what the person did. */
+export async function emptyAccount(trx: Knex.Transaction, id: string, at: Date): Promise<void> {
+  await trx('people')
+    .where({ id })
+    .update({
+      name: trx.raw("name || ' (left)'"),
+      email: null,
+      password_hash: null,
+      credential_version: trx.raw('credential_version + 1'),
+      last_seen_at: null,
+      left_at: at,
+    });
+}
+
+/** Whether anybody at all could sign in. */
+export async function isAnybodyHere(knex: Knex): Promise<boolean> {
+  return (await knex('people').whereNull('left_at').first('id')) !== undefined;
 }

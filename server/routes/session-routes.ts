@@ -1,33 +1,46 @@
 import type { Request, Response } from 'express';
 import { Router } from 'express';
 import type { Session } from '#contract/session.ts';
-import { changePasswordSchema, demoSignInSchema, signInSchema } from '#contract/session.ts';
+import { changePasswordSchema, demoSignInSchema, secondStepSchema, signInSchema } from '#contract/session.ts';
 import type { Sessions } from '../auth/sessions.ts';
-import { csrfTokenOf, endSession, isKept, requirePerson, startSession } from '../auth/sessions.ts';
+import {
+  askForSecondStep,
+  csrfTokenOf,
+  endSession,
+  isKept,
+  pendingSignInOf,
+  requirePerson,
+  startSession,
+} from '../auth/sessions.ts';
 import type { Throttles } from '../auth/throttles.ts';
 import { Refusal } from '../errors.ts';
 import { jsonBody } from '../middleware/json-body.ts';
-import { changePassword, findDemoAccount } from '../services/accounts.ts';
+import { changePassword, findDemoAccount, findSigningIn, isSecondStepNeeded } from '../services/accounts.ts';
 import type { Context } from '../services/context.ts';
 import { describeSession } from '../services/describe-session.ts';
 import { limits } from '../services/limits.ts';
+import { requireSecondStep } from '../services/second-step.ts';
 import { mountRoute } from './mount-route.ts';
 import { readBody } from './read-request.ts';
+
+/** The session as its answer says it. */
+export async function answerSession(context: Context, req: Request, res: Response): Promise<void> {
+  const session: Session = {
+    ...(await describeSession(context, req.user ?? null)),
+    secondStepAsked: pendingSignInOf(req) !== null,
+    csrfToken: csrfTokenOf(req),
+  };
+  res.json(session);
+}
 
 /** Signing in and out, and one's own password. */
 export function sessionRoutes(context: Context, sessions: Sessions, throttles: Throttles): Router {
   const router = Router();
   const body = jsonBody(limits.bodyBytes);
 
-  const answerSession = async (req: Request, res: Response): Promise<void> => {
-    const session: Session = {
-      ...(await describeSession(context, req.user ?? null)),
-      csrfToken: csrfTokenOf(req),
-    };
-    res.json(session);
-  };
+  const answer = (req: Request, res: Response): Promise<void> => answerSession(context, req, res);
 
-  mountRoute(router, 'GET /api/session', answerSession);
+  mountRoute(router, 'GET /api/session', answer);
 
   mountRoute(router, 'POST /api/session', ...body, async (req, res) => {
     const { email, password, keep = false } = readBody(req, signInSchema);
@@ -42,15 +55,33 @@ export function sessionRoutes(context: Context, sessions: Sessions, throttles: T
       );
     }
     await throttles.signedIn(email, address);
-    await startSession(req, account, keep);
-    await answerSession(req, res);
+    if (await isSecondStepNeeded(context, account.id)) await askForSecondStep(req, account, keep);
+    else await startSession(req, account, keep);
+    await answer(req, res);
+  });
+
+  mountRoute(router, 'POST /api/session/second-step', ...body, async (req, res) => {
+    const { code } = readBody(req, secondStepSchema);
+    const pending = pendingSignInOf(req);
+    const account = pending === null ? null : await findSigningIn(context, pending);
+    if (pending === null || account === null) {
+      throw new Refusal(
+        'conflict',
+        'No sign-in waits for a code, or it has waited too long; begin again with e-mail and password.',
+      );
+    }
+    await throttles.secondStepAttempt(account.id);
+    await requireSecondStep(context, account.id, code);
+    await throttles.secondStepTaken(account.id);
+    await startSession(req, account, pending.keep);
+    await answer(req, res);
   });
 
   mountRoute(router, 'POST /api/session/demo', ...body, async (req, res) => {
     const { role } = readBody(req, demoSignInSchema);
     await throttles.demoSignIn(req.ip ?? '');
     await startSession(req, await findDemoAccount(context, role), false);
-    await answerSession(req, res);
+    await answer(req, res);
   });
 
   mountRoute(router, 'DELETE /api/session', async (req, res) => {
@@ -66,7 +97,7 @@ export function sessionRoutes(context: Context, sessions: Sessions, throttles: T
     const changed = await changePassword(context, person, passwords, req.sessionID);
     await throttles.passwordFound(person.id);
     await startSession(req, changed, keep);
-    await answerSession(req, res);
+    await answer(req, res);
   });
 
   return router;

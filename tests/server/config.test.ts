@@ -21,6 +21,7 @@ describe('the configuration', () => {
         port: 3000,
         publicUrl: 'http://127.0.0.1:3000',
         sessionSecret: complete.SESSION_SECRET,
+        previousSessionSecret: null,
         smtpUrl: null,
       },
     });

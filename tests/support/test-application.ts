@@ -30,6 +30,7 @@ export const testConfig: Config = {
   port: 3000,
   publicUrl: 'http://127.0.0.1:3000',
   sessionSecret: 'a secret of more than thirty-two characters',
+  previousSessionSecret: null,
   smtpUrl: null,
 };
 

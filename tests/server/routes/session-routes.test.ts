@@ -1,6 +1,7 @@
 import supertest from 'supertest';
 import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
 import { sessionSchema } from '#contract/session.ts';
+import { permissions } from '../../../server/auth/permissions.ts';
 import { allowances } from '../../../server/auth/throttles.ts';
 import { insertDemoPerson } from '../../../server/repositories/demo-people.ts';
 import type { TestApplication, TestWorkspace } from '../../support/test-application.ts';
@@ -55,7 +56,8 @@ describe('signing in', () => {
         workspaceId: workspace.id,
         workspaceName: expect.any(String) as string,
         role: 'reviewer',
-        actions: ['workspace.read', 'design.read', 'finding.waive'],
+        actions: permissions.reviewer,
+        needsSecondStep: false,
       },
     ]);
     expect(session.demo).toEqual([]);
@@ -325,7 +327,7 @@ describe('the demo', () => {
 
   test('signs in as the demo’s person of a role, and nobody else', async () => {
     const { reviewer } = workspace.people;
-    await insertDemoPerson(application.database.knex, reviewer.id);
+    await insertDemoPerson(application.database.knex, reviewer.id, workspace.id);
     const browser = await openBrowser(application);
     const session = sessionSchema.parse((await browser.get('/api/session')).body);
     expect(session.demo).toEqual([{ role: 'reviewer', name: reviewer.name, email: reviewer.email }]);
