@@ -3,18 +3,24 @@ import express from 'express';
 import type { Express } from 'express';
 import { pino } from 'pino';
 import type { Logger } from 'pino';
+import { createSecretBox } from './auth/secret-box.ts';
 import { createSessions, refuseForgedRequests } from './auth/sessions.ts';
 import { createThrottles } from './auth/throttles.ts';
 import type { Config } from './config.ts';
+import { serverSecrets } from './config.ts';
 import type { Database } from './db/open-database.ts';
+import { bearerTokens, unlessByToken } from './middleware/bearer-tokens.ts';
 import { clientFiles } from './middleware/client-files.ts';
 import { answerUnknownPaths, errorAnswers } from './middleware/error-answers.ts';
+import { lastSeen } from './middleware/last-seen.ts';
 import { requestLog } from './middleware/request-log.ts';
 import { securityHeaders } from './middleware/security-headers.ts';
 import { commentRoutes } from './routes/comment-routes.ts';
+import { accountRoutes } from './routes/account-routes.ts';
 import { designRoutes } from './routes/design-routes.ts';
 import { engagementRoutes } from './routes/engagement-routes.ts';
 import { engineRoutes } from './routes/engine-routes.ts';
+import { firstOwnerRoutes } from './routes/first-owner-routes.ts';
 import { healthRoutes } from './routes/health-routes.ts';
 import { numberingRoutes } from './routes/numbering-routes.ts';
 import { profileRoutes } from './routes/profile-routes.ts';
@@ -22,6 +28,7 @@ import { revisionRoutes } from './routes/revision-routes.ts';
 import { sessionRoutes } from './routes/session-routes.ts';
 import { sheetExportRoutes } from './routes/sheet-export-routes.ts';
 import { waiverRoutes } from './routes/waiver-routes.ts';
+import { workspaceRoutes } from './routes/workspace-routes.ts';
 import type { Context } from './services/context.ts';
 import { createNumberingCache } from './services/numbering.ts';
 import { createDocumentCache } from './services/stored-documents.ts';
@@ -49,6 +56,7 @@ export function createApp({
     database,
     clock,
     publicUrl: config.publicUrl,
+    secretBox: createSecretBox(serverSecrets(config)),
     documents: createDocumentCache(),
     thumbnails: createThumbnailCache(),
     numbering: createNumberingCache(),
@@ -71,8 +79,12 @@ export function createApp({
   });
   app.use(healthRoutes(database));
   app.use(engineRoutes(throttles));
-  app.use('/api', ...sessions.handlers, refuseForgedRequests);
+  app.use('/api', bearerTokens(context, throttles));
+  app.use('/api', ...[...sessions.handlers, lastSeen(context), refuseForgedRequests].map(unlessByToken));
   app.use(sessionRoutes(context, sessions, throttles));
+  app.use(firstOwnerRoutes(context, throttles));
+  app.use(accountRoutes(context, throttles));
+  app.use(workspaceRoutes(context, throttles));
   app.use(engagementRoutes(context));
   app.use(designRoutes(context));
   app.use(sheetExportRoutes(context));

@@ -1,3 +1,4 @@
+import type { TokenScope } from '#contract/account.ts';
 import type { Action, Role } from '#contract/session.ts';
 import { actions } from '#contract/session.ts';
 
@@ -47,7 +48,30 @@ export const routes = {
   'POST /api/session': 'anyone',
   'POST /api/session/demo': 'anyone',
   'DELETE /api/session': 'anyone',
+  'POST /api/session/second-step': 'anyone',
   'PUT /api/account/password': 'signed-in',
+  'GET /api/account/second-step': 'signed-in',
+  'POST /api/account/second-step': 'signed-in',
+  'PUT /api/account/second-step': 'signed-in',
+  'POST /api/account/second-step/off': 'signed-in',
+  'POST /api/account/second-step/recovery-codes': 'signed-in',
+  'GET /api/account/sessions': 'signed-in',
+  'DELETE /api/account/sessions': 'signed-in',
+  'DELETE /api/account/sessions/:sessionId': 'signed-in',
+  'GET /api/account/tokens': 'signed-in',
+  'POST /api/account/tokens': 'signed-in',
+  'DELETE /api/account/tokens/:tokenId': 'signed-in',
+  'GET /api/account/deletion': 'signed-in',
+  'POST /api/account/deletion': 'signed-in',
+  'GET /api/first-owner': 'anyone',
+  'POST /api/first-owner': 'anyone',
+  'GET /api/workspaces': 'signed-in',
+  'POST /api/workspaces': 'signed-in',
+  'GET /api/workspaces/:workspaceId': 'workspace.manage',
+  'PATCH /api/workspaces/:workspaceId': 'workspace.manage',
+  'GET /api/workspaces/:workspaceId/people': 'workspace.read',
+  'PATCH /api/workspaces/:workspaceId/people/:personId': 'people.manage',
+  'DELETE /api/workspaces/:workspaceId/people/:personId': 'people.manage',
   'GET /api/workspaces/:workspaceId/engagements': 'workspace.read',
   'POST /api/workspaces/:workspaceId/engagements': 'engagement.create',
   'PATCH /api/engagements/:engagementId': 'engagement.edit',
@@ -82,6 +106,39 @@ export const routes = {
 } as const satisfies { readonly [route: string]: Access };
 
 export type Route = keyof typeof routes;
+
+/**
+ * What personal tokens reach, besides what their owner may anyway. Judging, sharing and whatever concerns people or the
+ * workspace itself stays with people.
+ */
+export const tokenActions: { readonly [scope in TokenScope]: readonly Action[] } = {
+  read: ['workspace.read', 'design.read', 'revision.read', 'activity.read'],
+  write: [
+    'workspace.read',
+    'design.read',
+    'revision.read',
+    'activity.read',
+    'engagement.create',
+    'engagement.edit',
+    'design.create',
+    'design.edit',
+    'design.archive',
+    'pools.edit',
+    'profile.edit',
+    'comment.write',
+    'review.ask',
+  ],
+};
+
+/** Routes of no workspace that tokens are answered at. */
+const openToTokens: readonly Route[] = ['GET /api/workspaces'];
+
+/** Whether a token of this scope is answered at a route at all; `authorise` holds it to its actions again. */
+export function isOpenToToken(route: Route, scope: TokenScope): boolean {
+  const access: Access = routes[route];
+  if (access === 'signed-in' || access === 'anyone') return openToTokens.includes(route);
+  return tokenActions[scope].includes(access) && (scope === 'write' || route.startsWith('GET '));
+}
 
 export function permits(role: Role, action: Action): boolean {
   return permissions[role].includes(action);

@@ -24,6 +24,8 @@ export const limits = {
   neighbourNumbers: 100_000,
   /** Equipment profiles of a workspace, archived ones among them. */
   profiles: 500,
+  /** Personal tokens of one person that work at a time. */
+  tokens: 50,
   /** Waivers that were withdrawn, as far back as one list tells of them. */
   withdrawnWaivers: 200,
   /** Sittings of one design, as far back as its history tells of them. */

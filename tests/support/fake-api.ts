@@ -45,12 +45,27 @@ const demo: Session['demo'] = [
   { role: 'architect', name: 'Rosa Halloran', email: 'r.halloran@ternwick.example' },
 ];
 
-export const strangerSession: Session = { person: null, memberships: [], csrfToken: 'token-0', demo };
+export const strangerSession: Session = {
+  person: null,
+  secondStepAsked: false,
+  memberships: [],
+  csrfToken: 'token-0',
+  demo,
+};
 
 export function sessionOf(role: Role, may: readonly Action[] = actions): Session {
   return {
     person: { id: 'p-1', name: 'Rosa Halloran', email: 'r.halloran@ternwick.example', initials: 'RH' },
-    memberships: [{ workspaceId: 'w-1', workspaceName: 'Ternwick Net', role, actions: [...may] }],
+    secondStepAsked: false,
+    memberships: [
+      {
+        workspaceId: 'w-1',
+        workspaceName: 'Ternwick Net',
+        role,
+        actions: [...may],
+        needsSecondStep: false,
+      },
+    ],
     csrfToken: 'token-1',
     demo,
   };
