@@ -1,9 +1,10 @@
 import type { Point } from '../geometry.ts';
 import type { CableEnd, CableRun } from './cable-ends.ts';
-import type { KnownRun, SearchManner } from './detour.ts';
+import type { SearchManner } from './detour.ts';
 import { detour, withoutIdlePoints } from './detour.ts';
 import type { Corners, Ground, Mouth } from './ground.ts';
 import { runIsBlocked } from './ground.ts';
+import type { KnownRun, KnownRuns } from './known-runs.ts';
 import { isUpright, opposite, outward } from './rects.ts';
 
 const clearance = 2;
@@ -27,11 +28,9 @@ export const cableManner: SearchManner = {
 
 const widthOf = (run: CableRun): number => (run.aggregated ? aggregatedWidth : cableWidth);
 
-/** Runs of cables laid before, so that later ones keep off them. */
-export const runsOfCables = (ways: readonly Corners[]): readonly KnownRun[] =>
-  ways.flatMap((corners) =>
-    corners.slice(1).map((to, i) => ({ from: corners[i]!, to, width: cableWidth, fixed: true })),
-  );
+/** Runs of a cable that is laid, so that later ones keep off them. */
+export const runsOfCable = (corners: Corners): readonly KnownRun[] =>
+  corners.slice(1).map((to, i) => ({ from: corners[i]!, to, width: cableWidth, fixed: true }));
 
 const isFree = (ground: Ground, corners: Corners, half: number): boolean =>
   corners.slice(1).every((q, i) => !runIsBlocked(ground, corners[i]!, q, half, clearance));
@@ -115,7 +114,7 @@ export const cableWay = (
   ground: Ground,
   run: CableRun,
   share: number,
-  known: readonly KnownRun[],
+  known: KnownRuns,
   siteOf: (device: string) => string,
 ): Corners | undefined => {
   if (run.within) return [run.a.at, run.b.at];

@@ -3,15 +3,16 @@ import type { CableGeometry, JacketGeometry, Path, Point } from '../geometry.ts'
 import { cable as cableSizes } from '../parts/sizes.ts';
 import type { CableEnd, LandingRun } from './cable-ends.ts';
 import { cableRuns } from './cable-ends.ts';
-import { cableWay, jogShares, runsOfCables } from './cable-ways.ts';
+import { cableWay, jogShares, runsOfCable } from './cable-ways.ts';
 import { combRect } from './combs.ts';
 import { pathThrough } from './corners.ts';
-import type { KnownRun } from './detour.ts';
+import type { KnownRun, KnownRuns } from './known-runs.ts';
+import { runRegister } from './known-runs.ts';
 import type { FurnishedSheet } from './furnish.ts';
 import type { Corners, Ground } from './ground.ts';
 import type { ElbowRoom, LandedWay } from './landings.ts';
 import { landingRegister, landingWay } from './landings.ts';
-import { bottom } from './rects.ts';
+import { bottom, runRect } from './rects.ts';
 
 const shortJog = 20;
 
@@ -31,19 +32,19 @@ const smooth = (corners: Corners): { readonly path: Path; readonly radius: numbe
 };
 
 /** Where one line crosses others at right angles, away from their ends. */
-const crossingsWith = (corners: Corners, others: readonly Corners[]): readonly Point[] => {
+const crossingsWith = (corners: Corners, others: KnownRuns): readonly Point[] => {
   const found: Point[] = [];
   const between = (value: number, p: number, q: number): boolean =>
     value > Math.min(p, q) + 0.5 && value < Math.max(p, q) - 0.5;
-  for (const other of others)
-    for (let i = 0; i + 1 < corners.length; i += 1)
-      for (let j = 0; j + 1 < other.length; j += 1) {
-        const [p, q, r, s] = [corners[i]!, corners[i + 1]!, other[j]!, other[j + 1]!];
-        if (p.y === q.y && r.x === s.x && between(r.x, p.x, q.x) && between(p.y, r.y, s.y))
-          found.push({ x: r.x, y: p.y });
-        if (p.x === q.x && r.y === s.y && between(p.x, r.x, s.x) && between(r.y, p.y, q.y))
-          found.push({ x: p.x, y: r.y });
-      }
+  for (const [i, q] of corners.slice(1).entries()) {
+    const p = corners[i]!;
+    for (const { from: r, to: s } of others.near(runRect(p, q, 1))) {
+      if (p.y === q.y && r.x === s.x && between(r.x, p.x, q.x) && between(p.y, r.y, s.y))
+        found.push({ x: r.x, y: p.y });
+      if (p.x === q.x && r.y === s.y && between(p.x, r.x, s.x) && between(r.y, p.y, q.y))
+        found.push({ x: p.x, y: r.y });
+    }
+  }
   return found;
 };
 
@@ -95,9 +96,14 @@ export const cableGeometries = (
     .flatMap(({ polyline, width }) =>
       polyline.slice(1).map((to, i) => ({ from: polyline[i]!, to, width, fixed: true })),
     );
-  const laid: Corners[] = [];
   const drawn: { geometry: CableGeometry; landing?: LandingRun }[] = [];
-  const known = (): readonly KnownRun[] => [...cords, ...runsOfCables(laid)];
+  const known = runRegister(cords);
+  const laid = runRegister();
+  const lay = (corners: Corners): void => {
+    const runs = runsOfCable(corners);
+    known.add(runs);
+    laid.add(runs);
+  };
   const heldByLink = new Map(held.map((geometry) => [geometry.links[0]!, geometry]));
   const kept = (link: string, from: Point, to: Point | undefined): CableGeometry | undefined => {
     const geometry = heldByLink.get(link);
@@ -115,7 +121,7 @@ export const cableGeometries = (
     const same = kept(run.link, run.from.at, undefined);
     if (same !== undefined) {
       drawn.push({ geometry: same, landing: run });
-      laid.push(same.polyline);
+      lay(same.polyline);
       continue;
     }
     const way: LandedWay | undefined = landingWay(
@@ -124,7 +130,7 @@ export const cableGeometries = (
       siteOf(run.from.device),
       elbowRoomOf(furnished, run.from),
       register,
-      known(),
+      known,
     );
     const shared = { links: [run.link], aggregated: false };
     if (way === undefined) {
@@ -150,16 +156,16 @@ export const cableGeometries = (
       },
       landing: run,
     });
-    laid.push(corners);
+    lay(corners);
   }
   for (const run of cables) {
     const same = kept(run.links[0]!, run.a.at, run.b.at);
     if (same !== undefined) {
       drawn.push({ geometry: same });
-      laid.push(same.polyline);
+      lay(same.polyline);
       continue;
     }
-    const way = cableWay(ground, run, shares.get(run.key) ?? 0.5, known(), siteOf);
+    const way = cableWay(ground, run, shares.get(run.key) ?? 0.5, known, siteOf);
     const shared = { links: run.links, aggregated: run.aggregated };
     if (way === undefined) {
       drawn.push({ geometry: { ...shared, ...leader(run.a.at, run.b.at), crossings: [], noWay: true } });
@@ -175,7 +181,7 @@ export const cableGeometries = (
         noWay: false,
       },
     });
-    laid.push(corners);
+    lay(corners);
   }
   return drawn;
 };

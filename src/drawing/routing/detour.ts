@@ -4,8 +4,9 @@ import type { Direction, GridSearch } from './a-star.ts';
 import { isReachable, searchGrid, stepOf } from './a-star.ts';
 import { gridCosts } from './grid-costs.ts';
 import { bandRects } from './bands.ts';
-import type { Cord, Corners, Ground, Mouth, Way } from './ground.ts';
+import type { Cord, Corners, Ground, Mouth } from './ground.ts';
 import { bandOf, foreignBands, isLevelRun, isOwn } from './ground.ts';
+import type { KnownRun, KnownRuns } from './known-runs.ts';
 import { bottom, centre, contains, grown, outward, overlap, right } from './rects.ts';
 
 /** How a search weighs what it may pass, and how near it may come to what it may not. */
@@ -50,27 +51,6 @@ const cordManner: SearchManner = {
 const windowReach = 420;
 
 const directionOf: { readonly [side in Side]: Direction } = { right: 0, bottom: 1, left: 2, top: 3 };
-
-/** A run of a cord that has its way already: crossing it costs, and so does running on top of it where it can't move. */
-export interface KnownRun {
-  readonly from: Point;
-  readonly to: Point;
-  readonly width: number;
-  readonly fixed: boolean;
-}
-
-/** The runs of ways found so far; the first and last of each are fixed by their mouths. */
-export const knownRuns = (ways: readonly Way[]): readonly KnownRun[] =>
-  ways
-    .filter((way) => way.found !== 'none')
-    .flatMap(({ cord, corners }) =>
-      corners.slice(1).map((to, i) => ({
-        from: corners[i]!,
-        to,
-        width: cord.width,
-        fixed: i === 0 || i === corners.length - 2,
-      })),
-    );
 
 /** How far a mouth can run straight out before it meets an obstacle. */
 const freeRun = (ground: Ground, mouth: Mouth, half: number): number => {
@@ -261,7 +241,7 @@ export const withoutIdlePoints = (corners: Corners): Corners => {
 export const detour = (
   ground: Ground,
   cord: Cord,
-  known: readonly KnownRun[],
+  known: KnownRuns,
   avoided: readonly Rect[] = [],
   manner: SearchManner = cordManner,
 ): Corners | undefined => {
@@ -294,7 +274,7 @@ export const detour = (
     ...manner.clearances.map((clearance) => ({ clearance, window: undefined })),
   ];
   for (const trial of trials) {
-    const found = attempt(ground, cord, [p, q], known, avoided, manner, trial);
+    const found = attempt(ground, cord, [p, q], known.all(), avoided, manner, trial);
     if (found !== undefined) return found;
   }
   return undefined;

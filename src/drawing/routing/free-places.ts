@@ -12,7 +12,8 @@ import type {
 import { site as siteSizes, text } from '../parts/sizes.ts';
 import { textWidth } from '../text-width.ts';
 import type { Design } from '../../engine/model/design.ts';
-import { overlap, runRect } from './rects.ts';
+import { rectIndex } from './rect-index.ts';
+import { runRect } from './rects.ts';
 
 /** The boxes that words must not cover, by what they belong to. */
 export interface Occupied {
@@ -21,11 +22,8 @@ export interface Occupied {
 }
 
 export const occupied = (boxes: readonly Rect[]): Occupied => {
-  const taken = [...boxes];
-  return {
-    hits: (box) => taken.some((other) => overlap(other, box)),
-    add: (...more) => void taken.push(...more),
-  };
+  const taken = rectIndex((box: Rect) => box, boxes);
+  return { hits: (box) => taken.isAny(box), add: taken.add };
 };
 
 /** The ground that a polyline covers, run by run. */

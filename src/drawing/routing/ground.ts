@@ -3,7 +3,9 @@ import type { EndName, Point, Rect } from '../geometry.ts';
 import { trunkWidth } from '../parts/sizes.ts';
 import type { BandPlace } from './bands.ts';
 import { bandRects } from './bands.ts';
-import { overlap, runRect } from './rects.ts';
+import { rectIndex } from './rect-index.ts';
+import { runRect } from './rects.ts';
+import { remembered } from './remember.ts';
 
 /** Something no cord may cross: a plate, a comb, the title block or the legend. `owner` is the device it belongs to. */
 export interface Obstacle {
@@ -24,6 +26,11 @@ export interface Ground {
   readonly frames: readonly SiteFrame[];
   readonly bands: readonly BandPlace[];
 }
+
+/** What stands where; a ground's obstacles are looked through for every run. */
+export const obstacleIndex = remembered((obstacles: readonly Obstacle[]) =>
+  rectIndex((obstacle: Obstacle) => obstacle.rect, obstacles),
+);
 
 /** Where a cord or a cable begins, with the direction away from its device; a cable has no endpoint. */
 export interface Mouth {
@@ -92,7 +99,7 @@ export const runIsBlocked = (
   own?: (obstacle: Obstacle) => boolean,
 ): boolean => {
   const room = runRect(p, q, half + clear);
-  return ground.obstacles.some((obstacle) => overlap(obstacle.rect, room) && !(own?.(obstacle) ?? false));
+  return obstacleIndex(ground.obstacles).isAny(room, (obstacle) => !(own?.(obstacle) ?? false));
 };
 
 /** True when any run of a way passes over an obstacle. */
@@ -106,7 +113,7 @@ export const wayIsBlocked = (ground: Ground, way: Way, clear = 0): boolean => {
       (i === 0 && isOwn(obstacle, cord.a)) || (i === corners.length - 2 && isOwn(obstacle, cord.b));
     const inner = i > 0 && i < corners.length - 2;
     const room = runRect(p, q, half, inner ? half - 1 : 0);
-    if (ground.obstacles.some((o) => overlap(o.rect, room) && !own(o))) return true;
+    if (obstacleIndex(ground.obstacles).isAny(room, (obstacle) => !own(obstacle))) return true;
   }
   return false;
 };

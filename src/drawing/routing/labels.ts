@@ -5,7 +5,8 @@ import { textWidth } from '../text-width.ts';
 import type { LandingRun } from './cable-ends.ts';
 import type { Occupied } from './free-places.ts';
 import { landingLabel } from './label-text.ts';
-import { around, contains, frameLines, grown, outward, overlap, right } from './rects.ts';
+import { rectIndex } from './rect-index.ts';
+import { around, contains, frameLines, grown, outward, right } from './rects.ts';
 import { labelBeside } from './combs.ts';
 
 const height = 16;
@@ -54,20 +55,20 @@ const labelAt = (
 };
 
 /** Where an outside address may stand: over or under the level run that lands, near its band, inside the site's frame first. */
-const candidatesFor = (
+function* candidatesFor(
   words: string,
   cable: CableGeometry,
   frame: Rect | undefined,
-): readonly LabelGeometry[] => {
+): Generator<LabelGeometry, void> {
   const { polyline } = cable;
-  const found: LabelGeometry[] = [];
   const below = polyline.length > 2 && polyline[1]!.y > polyline[0]!.y;
   for (let run = polyline.length - 2; run >= 0; run -= 1) {
     const p = polyline[run]!;
     const q = polyline[run + 1]!;
     if (p.y !== q.y) {
       const y = (p.y + q.y) / 2;
-      found.push(labelAt(words, p.x + 6, y + 5, 'start'), labelAt(words, p.x - 6, y + 5, 'end'));
+      yield labelAt(words, p.x + 6, y + 5, 'start');
+      yield labelAt(words, p.x - 6, y + 5, 'end');
       continue;
     }
     const fromRight = p.x > q.x;
@@ -80,13 +81,12 @@ const candidatesFor = (
     ];
     const anchor = fromRight ? 'start' : 'end';
     const lines = below ? [p.y + 16, p.y - 5] : [p.y - 5, p.y + 16];
-    for (const x of ends) for (const line of lines) found.push(labelAt(words, x, line, anchor));
+    for (const x of ends) for (const line of lines) yield labelAt(words, x, line, anchor);
     const towards = fromRight ? 1 : -1;
     for (let along = 24; along < Math.abs(p.x - q.x); along += 24)
-      for (const line of lines) found.push(labelAt(words, ends[0]! + towards * along, line, anchor));
+      for (const line of lines) yield labelAt(words, ends[0]! + towards * along, line, anchor);
   }
-  return found;
-};
+}
 
 /** The outside address of every WAN cable. */
 export const placeLandingLabels = (
@@ -95,19 +95,30 @@ export const placeLandingLabels = (
   sites: readonly SiteGeometry[],
   taken: Occupied,
 ): readonly { readonly geometry: CableGeometry; readonly crowded: boolean }[] => {
-  const lines = sites.flatMap((site) => frameLines(site.rect));
+  const lines = rectIndex(
+    (line: Rect) => line,
+    sites.flatMap((site) => frameLines(site.rect)),
+  );
+  const frames = new Map(sites.map((site) => [site.id, site.rect]));
   return cables.map(({ geometry, landing }) => {
     if (landing === undefined || geometry.noWay) return { geometry, crowded: false };
     const device = design.devices[landing.from.device];
     const words = landingLabel(landing.landing, device, landing.from.member);
     if (words === '') return { geometry, crowded: false };
-    const frame = sites.find((site) => site.id === device?.site)?.rect;
-    const candidates = candidatesFor(words, geometry, frame);
-    const fitting = candidates.filter((candidate) => !taken.hits(candidate.rect));
-    // Rather off the lines of frames than on them, where there is the choice.
-    const free =
-      fitting.find(({ rect }) => !lines.some((line) => overlap(line, grown(rect, 1)))) ?? fitting[0];
-    const label = free ?? candidates[0]!;
+    const frame = frames.get(device?.site ?? '');
+    let first: LabelGeometry | undefined;
+    let free: LabelGeometry | undefined;
+    for (const candidate of candidatesFor(words, geometry, frame)) {
+      first ??= candidate;
+      if (taken.hits(candidate.rect)) continue;
+      // Rather off the lines of frames than on them, where there is the choice.
+      if (!lines.isAny(grown(candidate.rect, 1))) {
+        free = candidate;
+        break;
+      }
+      free ??= candidate;
+    }
+    const label = free ?? first!;
     taken.add(label.rect);
     return { geometry: { ...geometry, label }, crowded: free === undefined };
   });

@@ -5,10 +5,10 @@ import type { BandPlace } from './bands.ts';
 import { bandRects } from './bands.ts';
 import type { LandingRun } from './cable-ends.ts';
 import { cableManner } from './cable-ways.ts';
-import type { KnownRun } from './detour.ts';
 import { detour } from './detour.ts';
 import type { Corners, Ground } from './ground.ts';
 import { bandOf, foreignBands, runIsBlocked } from './ground.ts';
+import type { KnownRuns } from './known-runs.ts';
 import {
   bottom,
   clamp,
@@ -118,7 +118,7 @@ export const landingWay = (
   site: string,
   elbow: ElbowRoom,
   register: ReturnType<typeof landingRegister>,
-  known: readonly KnownRun[],
+  known: KnownRuns,
 ): LandedWay | undefined => {
   const band = bandOf(ground, run.landing.transport);
   if (band === undefined) return undefined;

@@ -2,9 +2,10 @@ import type { Rect } from '../geometry.ts';
 import type { BandPlace } from './bands.ts';
 import { meetings } from './corners.ts';
 import type { WayCrossing, WayOverlap } from './corners.ts';
-import { detour, knownRuns, withoutIdlePoints } from './detour.ts';
+import { detour, withoutIdlePoints } from './detour.ts';
 import type { Cord, Corners, Ground, Mouth, Way } from './ground.ts';
 import { isTrunkRun, wayIsBlocked } from './ground.ts';
+import { runRegister, runsOfWays } from './known-runs.ts';
 import { patternWay } from './patterns.ts';
 import { bottom, byText, grown, right, runRect } from './rects.ts';
 import { settleTracks } from './tracks.ts';
@@ -55,7 +56,9 @@ const firstWays = (
     const known = [...ways.values()].filter((way) => way.found !== 'none');
     const avoid = avoided.get(cord.key) ?? [];
     const key = signature(ground, cord, known, avoid);
-    const corners = searches.has(key) ? searches.get(key) : detour(ground, cord, knownRuns(known), avoid);
+    const corners = searches.has(key)
+      ? searches.get(key)
+      : detour(ground, cord, runRegister(runsOfWays(known)), avoid);
     searches.set(key, corners);
     ways.set(
       cord.key,
