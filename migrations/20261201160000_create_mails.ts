@@ -35,16 +35,9 @@ export async function up(knex: Knex): Promise<void> {
     }
     table.text('time_zone').notNullable();
   });
-  // Whose jobs are free again once the process behind them is gone.
-  await knex.schema.createTable('job_workers', (table) => {
-    table.text('worker_id').primary();
-    table.integer('process_key').notNullable().index();
-  });
   // What the local catcher received.
   await knex.schema.createTable('caught_mails', (table) => {
-    table.uuid('id').primary().defaultTo(knex.raw('gen_random_uuid()'));
-    table.text('message_id').notNullable().unique();
-    table.uuid('mail_id').references('mails.id').onDelete('cascade').index();
+    table.uuid('mail_id').primary().references('mails.id').onDelete('cascade');
     table.timestamp('caught_at').notNullable().defaultTo(knex.fn.now());
     table.text('from_address').notNullable();
     table.text('to_address').notNullable();
@@ -57,7 +50,6 @@ export async function up(knex: Knex): Promise<void> {
 
 export async function down(knex: Knex): Promise<void> {
   await knex.schema.dropTable('caught_mails');
-  await knex.schema.dropTable('job_workers');
   await knex.schema.dropTable('mail_settings');
   await knex.schema.dropTable('mails');
 }

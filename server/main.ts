@@ -3,6 +3,8 @@ import { pino } from 'pino';
 import { createApp } from './app.ts';
 import { readConfig } from './config.ts';
 import { openDatabase } from './db/open-database.ts';
+import type { JobRunner } from './jobs/job-runner.ts';
+import { startJobs } from './jobs/start-jobs.ts';
 
 const log = pino({
   // Nothing of this is written on purpose; errors of libraries may carry it along.
@@ -30,17 +32,22 @@ if (result.ok) {
   });
   const server = createServer(createApp({ database, config, log }));
 
+  let jobs: Promise<JobRunner> | undefined;
+
   const stop = (signal: string): void => {
     log.info({ signal }, 'stopping');
+    const jobsEnded = jobs?.then((runner) => runner.stop());
     setTimeout(() => {
       log.error('some requests did not end in time');
       process.exit(1);
     }, shutdownMs).unref();
     server.close(() => {
-      void database.close().then(
-        () => log.info('stopped'),
-        (error: unknown) => log.error({ err: error }, 'the database did not close'),
-      );
+      void Promise.resolve(jobsEnded)
+        .then(() => database.close())
+        .then(
+          () => log.info('stopped'),
+          (error: unknown) => log.error({ err: error }, 'the database did not close'),
+        );
     });
     server.closeIdleConnections();
   };
@@ -52,9 +59,11 @@ if (result.ok) {
     process.exitCode = 1;
     void database.close();
   });
-  server.listen(config.port, config.host, () =>
-    log.info({ host: config.host, port: config.port, publicUrl: config.publicUrl }, 'listening'),
-  );
+  server.listen(config.port, config.host, () => {
+    log.info({ host: config.host, port: config.port, publicUrl: config.publicUrl }, 'listening');
+    jobs = startJobs({ database, config, log });
+    jobs.catch((error: unknown) => log.error({ err: error }, 'jobs do not run, mail among them'));
+  });
 } else {
   for (const problem of result.problems) log.fatal(problem);
   process.exitCode = 1;

@@ -3,24 +3,7 @@ import { roleSchema } from '#contract/session.ts';
 
 const personSchema = z.object({ email: z.string(), name: z.string(), personId: z.string() });
 
-/** Every mail of the program. Links begin with the public address of the site. */
-export const mailSchema = z.discriminatedUnion('kind', [
-  z.object({
-    kind: z.literal('invitation'),
-    workspaceId: z.string(),
-    to: z.string(),
-    workspaceName: z.string(),
-    inviterName: z.string(),
-    role: roleSchema,
-    link: z.string(),
-    expiresAt: z.coerce.date(),
-  }),
-  z.object({
-    kind: z.literal('reset'),
-    to: personSchema,
-    link: z.string(),
-    expiresAt: z.coerce.date(),
-  }),
+const notificationSchema = z.discriminatedUnion('kind', [
   z.object({
     kind: z.enum(['review-asked', 'approved', 'sent-back']),
     workspaceId: z.string(),
@@ -52,7 +35,39 @@ export const mailSchema = z.discriminatedUnion('kind', [
     link: z.string(),
   }),
 ]);
+
+/** Every mail that others may queue. Links begin with the public address of the site. */
+export const mailSchema = z.discriminatedUnion('kind', [
+  z.object({
+    kind: z.literal('invitation'),
+    workspaceId: z.string(),
+    to: z.string(),
+    workspaceName: z.string(),
+    inviterName: z.string(),
+    role: roleSchema,
+    link: z.string(),
+    expiresAt: z.coerce.date(),
+  }),
+  z.object({
+    kind: z.literal('reset'),
+    to: personSchema,
+    link: z.string(),
+    expiresAt: z.coerce.date(),
+  }),
+  notificationSchema,
+]);
 export type Mail = z.infer<typeof mailSchema>;
 
 /** A mail that a person may have at once, in one mail a day, or not at all. */
-export type Notification = Exclude<Mail, { kind: 'invitation' | 'reset' }>;
+export type Notification = z.infer<typeof notificationSchema>;
+
+/** What a person wants to have in one mail a day. */
+const digestSchema = z.object({
+  kind: z.literal('digest'),
+  to: personSchema,
+  items: z.array(notificationSchema),
+});
+export type Digest = z.infer<typeof digestSchema>;
+
+/** What the table of mails holds. */
+export const queuedMailSchema = z.union([mailSchema, digestSchema]);

@@ -1,6 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import type { Knex } from 'knex';
-import type { Mail } from './mail.ts';
+import type { Digest, Mail } from './mail.ts';
 import { readMailSettings, settingOfKind } from './mail-wishes.ts';
 
 export type { Mail } from './mail.ts';
@@ -42,8 +42,21 @@ export async function queueMail(
   return id;
 }
 
+/** Has a mail of the day sent once the caller's transaction is committed. */
+export async function queueDigest(trx: Knex, id: string, digest: Digest): Promise<void> {
+  await trx('mails').insert({
+    id,
+    kind: digest.kind,
+    to_email: digest.to.email,
+    person_id: digest.to.personId,
+    content: JSON.stringify(digest),
+    state: 'queued',
+  });
+  await queueSending(trx, id);
+}
+
 /** Puts the sending of a mail into the queue, once whatever happens. */
-export async function queueSending(trx: Knex, mailId: string): Promise<void> {
+async function queueSending(trx: Knex, mailId: string): Promise<void> {
   await trx.raw(
     'select graphile_worker.add_job(?, payload := json_build_object(?::text, ?::text), job_key := ?, max_attempts := ?)',
     [sendMailTask, 'mailId', mailId, `mail:${mailId}`, attempts],

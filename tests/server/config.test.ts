@@ -23,6 +23,7 @@ describe('the configuration', () => {
         sessionSecret: complete.SESSION_SECRET,
         previousSessionSecret: null,
         smtpUrl: null,
+        mailFrom: { name: 'Longpatch', address: 'longpatch@localhost' },
       },
     });
   });
@@ -38,6 +39,20 @@ describe('the configuration', () => {
   });
 
   test.each([
+    ['plan@mail.example', { name: 'Longpatch', address: 'plan@mail.example' }],
+    ['Saltmarsh plans <plan@mail.example>', { name: 'Saltmarsh plans', address: 'plan@mail.example' }],
+    ['"Plans, Saltmarsh" <plan@mail.example>', { name: 'Plans, Saltmarsh', address: 'plan@mail.example' }],
+  ])('takes %s for who mail is from', (value, mailFrom) => {
+    const result = readConfig({ ...complete, MAIL_FROM: value });
+    expect(result.ok && result.config.mailFrom).toEqual(mailFrom);
+  });
+
+  test('sends mail from the host that people type', () => {
+    const result = readConfig({ ...complete, PUBLIC_URL: 'https://plan.example' });
+    expect(result.ok && result.config.mailFrom.address).toBe('longpatch@plan.example');
+  });
+
+  test.each([
     ['PORT', 'eighty', "PORT 'eighty' is not a TCP port; give a whole number from 1 to 65535."],
     ['PORT', '0', "PORT '0' is not a TCP port; give a whole number from 1 to 65535."],
     ['PORT', '65536', "PORT '65536' is not a TCP port; give a whole number from 1 to 65535."],
@@ -45,6 +60,9 @@ describe('the configuration', () => {
     ['HOST', '192.0.2.300', "HOST '192.0.2.300' is not an address to listen on"],
     ['DATABASE_URL', 'mysql://127.0.0.1/x', "DATABASE_URL 'mysql://127.0.0.1/x' is not a PostgreSQL address"],
     ['SMTP_URL', 'mail.example', "SMTP_URL 'mail.example' is not a mail server"],
+    ['MAIL_FROM', 'Plans', "MAIL_FROM 'Plans' is not a sender; write it as"],
+    ['MAIL_FROM', 'Plans <a@b@c>', "MAIL_FROM 'Plans <a@b@c>' is not a sender"],
+    ['MAIL_FROM', 'a\r\nBcc: <x@mail.example>', 'is not a sender'],
     ['PUBLIC_URL', 'plan.example', "PUBLIC_URL 'plan.example' is not the address of a site"],
     [
       'PUBLIC_URL',

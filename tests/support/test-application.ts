@@ -32,6 +32,7 @@ export const testConfig: Config = {
   sessionSecret: 'a secret of more than thirty-two characters',
   previousSessionSecret: null,
   smtpUrl: null,
+  mailFrom: { name: 'Longpatch', address: 'longpatch@mail.example' },
 };
 
 export interface TestApplication {
