@@ -10,6 +10,8 @@ import { danglingPatch } from '../engine/model/references.ts';
 import { settlePatch } from '../engine/model/settle-patch.ts';
 import type { Edit, EditStorage } from './edit-storage.ts';
 import type { PatchHistory } from './patch-history.ts';
+import type { Told } from './meet-others.ts';
+import { meetOthers } from './meet-others.ts';
 import { emptyHistory, record, redo, undo } from './patch-history.ts';
 
 /** What the bar says about the work's safety. */
@@ -74,12 +76,15 @@ interface Options {
   readonly storage: EditStorage;
   readonly newEditId: () => string;
   readonly now: () => number;
+  readonly tell?: (told: Told) => void;
 }
 
 // Long enough to gather a burst of typing into one request, short enough that nobody waits for "saved".
 const quietMs = 300;
 const firstRetryMs = 1_000;
 const lastRetryMs = 15_000;
+// Who changes what somebody else changed a moment ago has probably not seen it.
+const sameMomentMs = 30_000;
 // The contract's limit for one request.
 const editsPerRequest = 500;
 
@@ -93,6 +98,8 @@ export const openDesign = (options: Options): OpenDesign => {
   const { server, storage } = options;
   let base = options.document;
   let pending: readonly Edit[] = [];
+  /** This tab's own edits of the last moment, acknowledged or not. */
+  let recent: readonly (Edit & { readonly at: number })[] = [];
   let timer: ReturnType<typeof setTimeout> | undefined;
   let running: Promise<void> | undefined;
   let retryMs = firstRetryMs;
@@ -134,6 +141,9 @@ export const openDesign = (options: Options): OpenDesign => {
     const fresh = patches.filter((logged) => logged.sequence > known);
     const acknowledged = new Set(fresh.map((logged) => logged.editId));
     storage.remove([...acknowledged]);
+    recent = recent.filter(({ at }) => at > options.now() - sameMomentMs);
+    const met = meetOthers({ document: base, fresh, recent, pending, history: get().history });
+    for (const told of met.told) options.tell?.(told);
     base = fresh.reduce<Design>((document, logged) => applyPatch(document, logged.patch as MergePatch), base);
     pending = settled(
       pending.filter((edit) => !acknowledged.has(edit.editId)),
@@ -141,6 +151,7 @@ export const openDesign = (options: Options): OpenDesign => {
     );
     set((state) => ({
       sequence: Math.max(sequence, known),
+      history: met.history,
       document: shared(state.document, withPending()),
     }));
     keepSelection();
@@ -209,6 +220,7 @@ export const openDesign = (options: Options): OpenDesign => {
   const enqueue = (patch: MergePatch): void => {
     const edit = { editId: options.newEditId(), patch };
     pending = [...pending, edit];
+    recent = [...recent, { ...edit, at: options.now() }].slice(-editsPerRequest);
     storage.add(edit);
     const { save } = get();
     if (save.kind === 'offline') set({ save: { kind: 'offline', edits: pending.length } });
@@ -224,6 +236,12 @@ export const openDesign = (options: Options): OpenDesign => {
     const { document, history } = get();
     const step = way(history, document);
     if (step === undefined) return undefined;
+    const { takenOverBy, label } = step.step;
+    if (takenOverBy !== undefined) {
+      set({ history: step.history });
+      options.tell?.({ kind: 'taken-over', label, by: takenOverBy });
+      return undefined;
+    }
     const after = applyPatch(document, step.patch);
     if (changedProblems(document, after).length > 0) {
       // Somebody else's edits left no room for it; it is dropped from the history rather than block what lies before.

@@ -4,6 +4,7 @@ import type { Design } from '../../src/engine/model/design.ts';
 import { applyPatch } from '../../src/engine/model/merge-patch.ts';
 import type { MergePatch } from '../../src/engine/model/merge-patch.ts';
 import { browserEditStorage } from '../../src/workspace/edit-storage.ts';
+import type { Told } from '../../src/workspace/meet-others.ts';
 import type { OpenDesignServer, SaveFailure } from '../../src/workspace/open-design.ts';
 import { openDesign } from '../../src/workspace/open-design.ts';
 import { pairDesign } from '../support/designs.ts';
@@ -13,12 +14,12 @@ const memoryServer = (document: Design) => {
   const log: LoggedPatch[] = [];
   let failure: SaveFailure | undefined;
   let loseAnswers = false;
-  const append = (editId: string, patch: MergePatch) => {
+  const append = (editId: string, patch: MergePatch, by: string | null = null) => {
     if (log.some((entry) => entry.editId === editId)) return;
     log.push({
       sequence: log.length + 1,
       editId,
-      by: null,
+      by,
       at: '2026-03-18T14:32:00.000Z',
       patch,
       repair: false,
@@ -40,7 +41,7 @@ const memoryServer = (document: Design) => {
   return {
     server,
     log,
-    other: (patch: MergePatch) => append(`other-${log.length}`, patch),
+    other: (patch: MergePatch, by?: string) => append(`other-${log.length}`, patch, by),
     fail: (next: SaveFailure | undefined) => (failure = next),
     loseAnswers: (lose: boolean) => (loseAnswers = lose),
     document: () => log.reduce<Design>((d, entry) => applyPatch(d, entry.patch as MergePatch), document),
@@ -52,6 +53,8 @@ const open = (
   memory: ReturnType<typeof memoryServer>,
   document: Design,
   storage = browserEditStorage(localStorage, 'd1', Date.now),
+  tell?: (told: Told) => void,
+  now = () => 0,
 ) =>
   openDesign({
     document,
@@ -60,7 +63,8 @@ const open = (
     server: memory.server,
     storage,
     newEditId: () => `edit-${(edits += 1)}`,
-    now: () => 0,
+    now,
+    ...(tell === undefined ? {} : { tell }),
   });
 
 const rename = (name: string): MergePatch => ({ sites: { s0: { name } } });
@@ -213,5 +217,94 @@ describe('the open design', () => {
     ]);
     design.commit('Remove', { tunnels: { 'tn-s0-s1-a': null } });
     expect(design.store.getState().selection).toEqual([{ collection: 'sites', id: 's0' }]);
+  });
+});
+
+describe('two people on the same things', () => {
+  const setUp = () => {
+    const document = pairDesign();
+    const memory = memoryServer(document);
+    const told: Told[] = [];
+    const design = open(memory, document, undefined, (each) => told.push(each));
+    const name = () => design.store.getState().document.sites.s0!.name;
+    return { memory, design, told, name, before: document.sites.s0!.name };
+  };
+
+  it('lets the later edit stand and tells whose it is', async () => {
+    const { memory, design, told, name } = setUp();
+    design.commit('Rename', rename('Mine'));
+    await design.flush();
+    memory.other(rename('Theirs'), 'Noor Okafor');
+    await design.catchUp();
+    expect(name()).toBe('Theirs');
+    expect(told).toMatchObject([
+      {
+        kind: 'settled',
+        stands: 'theirs',
+        by: 'Noor Okafor',
+        before: { sites: { s0: { name: 'Mine' } } },
+        after: { sites: { s0: { name: 'Theirs' } } },
+      },
+    ]);
+  });
+
+  it('lets an edit that waited stand over one that was logged before it', async () => {
+    const { memory, design, told, name } = setUp();
+    memory.other(rename('Theirs'), 'Noor Okafor');
+    design.commit('Rename', rename('Mine'));
+    await design.flush();
+    expect(name()).toBe('Mine');
+    expect(told).toMatchObject([{ kind: 'settled', stands: 'mine', by: 'Noor Okafor' }]);
+  });
+
+  it('takes such an edit back to what the other one had left', async () => {
+    const { memory, design, name, before } = setUp();
+    design.commit('Rename', rename('First'));
+    await design.flush();
+    memory.other(rename('Theirs'), 'Noor Okafor');
+    design.commit('Rename', rename('Mine'));
+    await design.flush();
+    expect(design.undo()).toBe('Rename');
+    expect(name()).toBe('Theirs');
+    expect(design.undo()).toBeUndefined();
+    expect(name()).toBe('Theirs');
+    expect(name()).not.toBe(before);
+  });
+
+  it('does not take back what somebody else has changed since, and says so', async () => {
+    const { memory, design, told, name } = setUp();
+    design.commit('Rename', { sites: { s0: { name: 'Mine' }, s1: { name: 'Also mine' } } });
+    design.commit('Move', { sites: { s1: { name: 'Again mine' } } });
+    await design.flush();
+    memory.other({ sites: { s1: { name: 'Theirs' } } }, 'Noor Okafor');
+    await design.catchUp();
+    told.length = 0;
+    expect(design.undo()).toBeUndefined();
+    expect(told).toEqual([{ kind: 'taken-over', label: 'Move', by: 'Noor Okafor' }]);
+    expect(design.undo()).toBe('Rename');
+    expect(name()).not.toBe('Mine');
+    expect(design.store.getState().document.sites.s1!.name).toBe('Theirs');
+  });
+
+  it('says nothing of different properties of one thing, nor of what was long ago', async () => {
+    const document = pairDesign();
+    const memory = memoryServer(document);
+    const told: Told[] = [];
+    let now = 0;
+    const design = open(
+      memory,
+      document,
+      undefined,
+      (each) => told.push(each),
+      () => now,
+    );
+    design.commit('VNI', { tunnels: { 'tn-s0-s1-a': { a: { vni: 77 } } } });
+    await design.flush();
+    memory.other({ tunnels: { 'tn-s0-s1-a': { b: { vni: 78 } } } }, 'Noor Okafor');
+    await design.catchUp();
+    now = 31_000;
+    memory.other({ tunnels: { 'tn-s0-s1-a': { a: { vni: 79 } } } }, 'Noor Okafor');
+    await design.catchUp();
+    expect(told).toEqual([]);
   });
 });
