@@ -9,6 +9,8 @@ import { createThrottles } from './auth/throttles.ts';
 import type { Config } from './config.ts';
 import { serverSecrets } from './config.ts';
 import type { Database } from './db/open-database.ts';
+import type { LiveHub } from './live/live-hub.ts';
+import { createLiveHub } from './live/live-hub.ts';
 import { bearerTokens, unlessByToken } from './middleware/bearer-tokens.ts';
 import { clientFiles } from './middleware/client-files.ts';
 import { answerUnknownPaths, errorAnswers } from './middleware/error-answers.ts';
@@ -22,6 +24,7 @@ import { engagementRoutes } from './routes/engagement-routes.ts';
 import { engineRoutes } from './routes/engine-routes.ts';
 import { firstOwnerRoutes } from './routes/first-owner-routes.ts';
 import { healthRoutes } from './routes/health-routes.ts';
+import { liveRoutes } from './routes/live-routes.ts';
 import { numberingRoutes } from './routes/numbering-routes.ts';
 import { profileRoutes } from './routes/profile-routes.ts';
 import { revisionRoutes } from './routes/revision-routes.ts';
@@ -39,6 +42,8 @@ export interface AppOptions {
   readonly config: Config;
   readonly clock?: () => Date;
   readonly log?: Logger;
+  /** Whoever ends the process closes it first. */
+  readonly live?: LiveHub;
   /** The built client. */
   readonly clientFolder?: string;
 }
@@ -50,6 +55,7 @@ export function createApp({
   config,
   clock = () => new Date(),
   log = pino({ level: 'silent' }),
+  live = createLiveHub(database),
   clientFolder = builtClient,
 }: AppOptions): Express {
   const context: Context = {
@@ -87,6 +93,7 @@ export function createApp({
   app.use(workspaceRoutes(context, throttles));
   app.use(engagementRoutes(context));
   app.use(designRoutes(context));
+  app.use(liveRoutes(context, live));
   app.use(sheetExportRoutes(context));
   app.use(waiverRoutes(context));
   app.use(commentRoutes(context));

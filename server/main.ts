@@ -5,6 +5,7 @@ import { readConfig } from './config.ts';
 import { openDatabase } from './db/open-database.ts';
 import type { JobRunner } from './jobs/job-runner.ts';
 import { startJobs } from './jobs/start-jobs.ts';
+import { createLiveHub } from './live/live-hub.ts';
 
 const log = pino({
   // Nothing of this is written on purpose; errors of libraries may carry it along.
@@ -30,7 +31,8 @@ if (result.ok) {
   const database = openDatabase(config.databaseUrl, {
     onError: (error) => log.error({ err: error }, 'database'),
   });
-  const server = createServer(createApp({ database, config, log }));
+  const live = createLiveHub(database);
+  const server = createServer(createApp({ database, config, log, live }));
 
   let jobs: Promise<JobRunner> | undefined;
 
@@ -49,6 +51,8 @@ if (result.ok) {
           (error: unknown) => log.error({ err: error }, 'the database did not close'),
         );
     });
+    // Streams never end by themselves; their browsers look for another process.
+    live.close();
     server.closeIdleConnections();
   };
   process.once('SIGTERM', stop);

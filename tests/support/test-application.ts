@@ -179,6 +179,18 @@ export async function signIn(
   return browser;
 }
 
+/** What the browser would send as its Cookie header. */
+export function cookieOf({ agent }: TestBrowser): string {
+  const { jar } = agent as unknown as { jar: CookieJar };
+  const access = { domain: '127.0.0.1', path: '/', secure: false, script: false };
+  return jar.getCookies(access).toValueString();
+}
+
+/** What supertest keeps cookies in. */
+interface CookieJar {
+  getCookies(access: object): { toValueString(): string };
+}
+
 export function tokenOf(response: supertest.Response): string {
   return (response.body as { csrfToken: string }).csrfToken;
 }
