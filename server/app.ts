@@ -19,6 +19,7 @@ import { requestLog } from './middleware/request-log.ts';
 import { securityHeaders } from './middleware/security-headers.ts';
 import { commentRoutes } from './routes/comment-routes.ts';
 import { accountRoutes } from './routes/account-routes.ts';
+import { commentRoutes } from './routes/comment-routes.ts';
 import { designRoutes } from './routes/design-routes.ts';
 import { engagementRoutes } from './routes/engagement-routes.ts';
 import { engineRoutes } from './routes/engine-routes.ts';

@@ -46,7 +46,15 @@ export class Refusal extends Error {
 
 /** The same answer for what does not exist and for what belongs to others, so that nobody can probe for ids. */
 export function notFound(
-  what: 'workspace' | 'engagement' | 'design' | 'revision' | 'waiver' | 'equipment profile' | 'page',
+  what:
+    | 'workspace'
+    | 'engagement'
+    | 'design'
+    | 'revision'
+    | 'waiver'
+    | 'comment'
+    | 'equipment profile'
+    | 'page',
 ): Refusal {
   return new Refusal(
     'not-found',

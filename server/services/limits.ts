@@ -30,6 +30,10 @@ export const limits = {
   withdrawnWaivers: 200,
   /** Sittings of one design, as far back as its history tells of them. */
   sittings: 500,
+  /** A comment that suggests a change: it may place whole sites. */
+  suggestionBodyBytes: 1024 * 1024,
+  /** Comments of one design, replies and resolved ones among them: one answer holds them all. */
+  commentsOfDesign: 5_000,
   /** Designs whose counts one list brings up to date; the others follow with the next. */
   recountedAtOnce: 20,
 } as const;

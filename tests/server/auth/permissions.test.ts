@@ -27,6 +27,7 @@ let workspace: TestWorkspace;
 let engagementId: string;
 let designId: string;
 let waiverId: string;
+let commentId: string;
 let profileId: string;
 let reviewedId: string;
 let revisionId: string;
@@ -63,6 +64,7 @@ const missing: Ids = {
   engagement: missingId,
   design: missingId,
   waiver: missingId,
+  comment: missingId,
   reviewed: missingId,
   revision: missingId,
   profile: missingId,
@@ -76,6 +78,7 @@ interface Ids {
   readonly engagement: string;
   readonly design: string;
   readonly waiver: string;
+  readonly comment: string;
   readonly reviewed: string;
   readonly revision: string;
   readonly profile: string;
@@ -157,6 +160,19 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
     browser.get(`/api/designs/${id}/document?sequence=0`),
   'GET /api/designs/:designId/sittings': (browser, { design: id }) =>
     browser.get(`/api/designs/${id}/sittings`),
+  'GET /api/designs/:designId/comments': (browser, { design: id }) =>
+    browser.get(`/api/designs/${id}/comments`),
+  'POST /api/designs/:designId/comments': (browser, { design: id }) =>
+    browser.post(`/api/designs/${id}/comments`, { body: 'Why this VNI?' }),
+  'PATCH /api/comments/:commentId': (browser, { comment: id }) =>
+    browser.patch(`/api/comments/${id}`, { body: 'Why that VNI?' }),
+  'DELETE /api/comments/:commentId': (browser, { comment: id }) => browser.delete(`/api/comments/${id}`),
+  'POST /api/comments/:commentId/resolution': (browser, { comment: id }) =>
+    browser.post(`/api/comments/${id}/resolution`),
+  'DELETE /api/comments/:commentId/resolution': (browser, { comment: id }) =>
+    browser.delete(`/api/comments/${id}/resolution`),
+  'POST /api/comments/:commentId/application': (browser, { comment: id }) =>
+    browser.post(`/api/comments/${id}/application`, { editId: crypto.randomUUID() }),
   'GET /api/workspaces/:workspaceId/pools': (browser, { workspace: id }) =>
     browser.get(`/api/workspaces/${id}/pools`),
   'PUT /api/workspaces/:workspaceId/pools': (browser, { workspace: id }) =>
@@ -194,8 +210,28 @@ async function makeApproved(): Promise<void> {
   await knex('designs').where({ id: reviewedId }).update({ state: 'approved' });
 }
 
-/** What has to be so before a request that succeeds once alone. */
-const ready: { readonly [route in Route]?: () => Promise<void> } = {
+/** A comment of the member's own, or of the owner's where that role writes none; with a change that nobody applied yet. */
+async function writeComment(role: Role): Promise<void> {
+  const author = members[permits(role, 'comment.write') ? role : 'owner'];
+  const written = await author
+    .post(`/api/designs/${designId}/comments`, {
+      body: 'Name it so.',
+      suggestion: {
+        patch: { notes: { [crypto.randomUUID()]: { text: 'As at the near end' } } },
+        baseSequence: 0,
+      },
+    })
+    .expect(201);
+  commentId = (written.body as { id: string }).id;
+}
+
+/** What has to be so before a member's request that succeeds once alone. */
+const ready: { readonly [route in Route]?: (role: Role) => Promise<void> } = {
+  'PATCH /api/comments/:commentId': writeComment,
+  'DELETE /api/comments/:commentId': writeComment,
+  'POST /api/comments/:commentId/resolution': writeComment,
+  'DELETE /api/comments/:commentId/resolution': writeComment,
+  'POST /api/comments/:commentId/application': writeComment,
   'POST /api/designs/:designId/revisions': makeDraft,
   'POST /api/designs/:designId/restoration': makeDraft,
   'GET /api/revisions/:revisionId': makeApproved,
@@ -212,6 +248,7 @@ const ids = (): Ids => ({
   engagement: engagementId,
   design: designId,
   waiver: waiverId,
+  comment: commentId,
   reviewed: reviewedId,
   revision: revisionId,
   profile: profileId,
@@ -276,7 +313,7 @@ describe.each(guarded)('%s', (route) => {
   const action = routes[route] as Action;
 
   test.each(roles)('answers a member by what the role %s may do', async (role) => {
-    await ready[route]?.();
+    await ready[route]?.(role);
     const response = await requests[route](members[role], ids());
     if (permits(role, action)) {
       expect(response.status).toBeLessThan(300);
@@ -296,6 +333,7 @@ describe.each(guarded)('%s', (route) => {
         engagement: '1; drop',
         design: '../x',
         waiver: '%',
+        comment: '?',
         reviewed: '../y',
         revision: '%00',
         profile: "'",
