@@ -17,7 +17,6 @@ import { answerUnknownPaths, errorAnswers } from './middleware/error-answers.ts'
 import { lastSeen } from './middleware/last-seen.ts';
 import { requestLog } from './middleware/request-log.ts';
 import { securityHeaders } from './middleware/security-headers.ts';
-import { commentRoutes } from './routes/comment-routes.ts';
 import { accountRoutes } from './routes/account-routes.ts';
 import { commentRoutes } from './routes/comment-routes.ts';
 import { designRoutes } from './routes/design-routes.ts';
