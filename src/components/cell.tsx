@@ -33,6 +33,8 @@ export interface CellProps {
   readonly label: string;
   /** Where the value stands, said to screen readers where two cells side by side have one label. */
   readonly place?: string;
+  /** What has the value, said so where that is no place. */
+  readonly subject?: string;
   /** How many columns of its grid the cell takes. */
   readonly span?: number;
   /** Right-aligned, as the far end's cells in a mirror. */
@@ -46,11 +48,12 @@ const cellBase = 'relative -mt-px -ml-px flex min-w-0 flex-col border px-9 pt-4 
 const spanStyle = (span: number | undefined) =>
   span === undefined || span === 1 ? undefined : { gridColumn: `span ${span}` };
 
-function CellLabel({ label, place }: Pick<CellProps, 'label' | 'place'>) {
+function CellLabel({ label, place, subject }: Pick<CellProps, 'label' | 'place' | 'subject'>) {
   return (
     <span className="block text-label text-ink-3">
       {label}
       {place !== undefined && <span className="sr-only"> at {place}</span>}
+      {subject !== undefined && <span className="sr-only"> of {subject}</span>}
     </span>
   );
 }
@@ -81,6 +84,7 @@ const markOutline = (mark: CellMark): string =>
 export function ReadCell({
   label,
   place,
+  subject,
   span,
   alignRight = false,
   className,
@@ -99,7 +103,7 @@ export function ReadCell({
         className,
       )}
     >
-      <CellLabel label={label} place={place} />
+      <CellLabel {...{ label, place, subject }} />
       <div
         className={classNames(
           'min-h-18 text-value break-words',
@@ -150,6 +154,7 @@ const throughToLabel =
 export function FieldCell({
   label,
   place,
+  subject,
   span,
   alignRight = false,
   className,
@@ -184,12 +189,12 @@ export function FieldCell({
     <>
       {group ? (
         <span id={`${id}-label`}>
-          <CellLabel label={label} place={place} />
+          <CellLabel {...{ label, place, subject }} />
         </span>
       ) : (
         // Spread over the whole cell, which therefore takes a press for its control.
         <label htmlFor={id} className="after:absolute after:inset-0">
-          <CellLabel label={label} place={place} />
+          <CellLabel {...{ label, place, subject }} />
         </label>
       )}
       <span

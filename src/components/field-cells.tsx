@@ -19,6 +19,7 @@ export interface InputCellProps
 export function InputCell({
   label,
   place,
+  subject,
   span,
   alignRight,
   className,
@@ -31,7 +32,9 @@ export function InputCell({
   ...input
 }: InputCellProps) {
   return (
-    <FieldCell {...{ label, place, span, alignRight, className, error, marked, hint, after, disabled }}>
+    <FieldCell
+      {...{ label, place, subject, span, alignRight, className, error, marked, hint, after, disabled }}
+    >
       {({ id, describedBy }) => (
         <input
           {...input}

@@ -77,6 +77,21 @@ export const firstForm = (design: Design): StretchForm => {
   return { ...one, sites: [...one.sites, nextSite(one)] };
 };
 
+/** What a site is called until somebody names it. */
+const isUnnamed = ({ name }: SitePlan): boolean => /^Site \d+$/.test(name.trim()) || name.trim() === '';
+
+/** The form with sites of these names: those that have none yet take the first of them, the rest are added, up to `most`. */
+export const withNamedSites = (form: StretchForm, names: readonly string[], most: number): StretchForm => {
+  const left = [...names];
+  const named: StretchForm = {
+    ...form,
+    sites: form.sites.map((site) => (isUnnamed(site) ? { ...site, name: left.shift() ?? site.name } : site)),
+  };
+  return left
+    .slice(0, most - named.sites.length)
+    .reduce<StretchForm>((so, name) => withSites(so, [...so.sites, nextSite(so, name)]), named);
+};
+
 /** The form with its sites changed: topology and segments follow. */
 export const withSites = (form: StretchForm, sites: readonly SitePlan[]): StretchForm => {
   const keys = sites.map(({ key }) => key);

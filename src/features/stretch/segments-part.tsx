@@ -88,7 +88,7 @@ function SegmentRow({
         />
         <NumberCell
           label="VLAN"
-          place={name}
+          subject={name}
           value={vlan}
           min={1}
           max={4094}
@@ -98,7 +98,7 @@ function SegmentRow({
         />
         <CommitCell
           label="Subnet"
-          place={name}
+          subject={name}
           value={subnet ?? ''}
           placeholder="not known yet"
           error={problemAt(problems, `${at}.subnet`, 'Subnet')}
@@ -106,7 +106,7 @@ function SegmentRow({
         />
         <NumberCell
           label="MTU"
-          place={name}
+          subject={name}
           value={mtu}
           min={68}
           max={65_535}
@@ -121,7 +121,7 @@ function SegmentRow({
       <CellGrid columns={needsEtherTypes ? 2 : 1} className="-mt-px">
         <ChoiceCell
           label="Between its sites"
-          place={name}
+          subject={name}
           value={mustBeFiltered === true ? 'filtered' : 'open'}
           options={[
             { value: 'open', label: 'Not filtered' },
@@ -133,7 +133,7 @@ function SegmentRow({
         {needsEtherTypes && (
           <CommitCell
             label="EtherTypes to let through"
-            place={name}
+            subject={name}
             value={etherTypeText(segment.etherTypes)}
             placeholder="such as 0x88b5"
             validate={etherTypeProblem}

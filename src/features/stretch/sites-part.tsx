@@ -5,7 +5,7 @@ import { Icon } from '../../components/icon.tsx';
 import { CommitAreaCell, CommitCell, SelectCell } from '../../components/field-cells.tsx';
 import type { LandingPlan, SitePlan } from '../../engine/stretch/stretch-form.ts';
 import { MOST_SITES } from '../../engine/stretch/stretch-form.ts';
-import { nextSite, withSites } from './first-form.ts';
+import { nextSite, withNamedSites, withSites } from './first-form.ts';
 import { AddButton, FormPart, type FormPartProps, RemoveButton, replaced } from './form-part.tsx';
 import { gateways, LandingCells } from './landing-cells.tsx';
 import { problemAt } from './problem-words.ts';
@@ -19,11 +19,7 @@ export function SitesPart({ form, problems, onChange }: FormPartProps) {
       .split('\n')
       .map((name) => name.trim())
       .filter((name) => name !== '');
-    onChange(
-      names
-        .slice(0, MOST_SITES - sites.length)
-        .reduce((so, name) => withSites(so, [...so.sites, nextSite(so, name)]), form),
-    );
+    onChange(withNamedSites(form, names, MOST_SITES));
   };
   return (
     <FormPart
@@ -48,7 +44,7 @@ export function SitesPart({ form, problems, onChange }: FormPartProps) {
             label="Names, one on each line"
             value=""
             rows={4}
-            hint="They are added when you leave the cell."
+            hint="When you leave the cell, sites that have no name yet take the first, and the others are added."
             onCommit={addNamed}
           />
         </CellGrid>

@@ -83,13 +83,15 @@ describe('the Stretch form', () => {
     const names = within(dialog).getByRole('textbox', { name: 'Names, one on each line' });
     fireEvent.change(names, { target: { value: 'Gullhaven\n\nOrrin Point\nSkerry' } });
     fireEvent.blur(names);
-    expect(await within(dialog).findByText('Sites (5)')).toBeVisible();
+    expect(await within(dialog).findByText('Sites (3)')).toBeVisible();
+    expect(within(dialog).queryByDisplayValue(/^Site \d/)).toBeNull();
+    expect(within(dialog).getByLabelText('VLAN of Segment 1')).toBeVisible();
     expect(within(dialog).getByRole('radio', { name: 'Hub' })).toBeChecked();
     await first.user.click(within(dialog).getByRole('button', { name: 'Cancel' }));
     first.unmount();
 
     const again = renderAt('/?stretch=Form');
-    expect(await screen.findByText('Sites (5)')).toBeVisible();
+    expect(await screen.findByText('Sites (3)')).toBeVisible();
     expect(screen.getByDisplayValue('Orrin Point')).toBeVisible();
     await again.user.click(screen.getByRole('button', { name: 'Start over' }));
     expect(await screen.findByText('Sites (2)')).toBeVisible();
