@@ -1,4 +1,4 @@
-import { useId, useMemo } from 'react';
+import { useId, useMemo, useRef, useState } from 'react';
 import { Button } from '../../components/button.tsx';
 import { CellGrid, ReadCell } from '../../components/cell.tsx';
 import { ComboCell } from '../../components/combo-cell.tsx';
@@ -52,16 +52,27 @@ const prescribed = (destination: ProbeInput['destination'] | undefined): string 
   }
 };
 
+const missingWords = {
+  from: 'From is empty: choose a host or a port, or pick one on the sheet.',
+  to: 'To is empty: choose a host, or pick one on the sheet.',
+} as const;
+
 /** What is followed: from where, to where, and what it is. Every change is followed at once. */
 export function TraceForm({ design, question, problems, onChange, picking, onPick, onSend }: TraceFormProps) {
   const noteId = useId();
+  const missingId = useId();
+  const form = useRef<HTMLDivElement>(null);
+  /** Somebody wanted to send without an end: the cell that lacks it says so from then on. */
+  const [isAskedFor, setIsAskedFor] = useState(false);
+  const missing = missingField(question);
   const sources = useMemo(() => sourceOptions(design), [design]);
   const hosts = useMemo(() => hostOptions(design), [design]);
   const send = sendOf(question.send)!;
   const probe = useMemo(() => probeOf(design, question), [design, question]);
   const problemOf = (field: QuestionField): string | undefined => {
     const found = problems.find((problem) => problem.field === field);
-    return found && `${fieldLabels[field]} is ${found.value}: expected ${found.expected}.`;
+    if (found !== undefined) return `${fieldLabels[field]} is ${found.value}: expected ${found.expected}.`;
+    return isAskedFor && field === missing ? missingWords[missing] : undefined;
   };
   const put = (change: Partial<TraceQuestion>): void => {
     const next: { -readonly [field in keyof TraceQuestion]: TraceQuestion[field] } = {
@@ -81,7 +92,7 @@ export function TraceForm({ design, question, problems, onChange, picking, onPic
     </Button>
   );
   return (
-    <div className="flex flex-col gap-12">
+    <div ref={form} className="flex flex-col gap-12">
       <CellGrid>
         <ComboCell
           label="From"
@@ -123,15 +134,27 @@ export function TraceForm({ design, question, problems, onChange, picking, onPic
         </p>
       )}
       <PacketCells {...{ design, question, probe, problemOf, put, onChange }} />
-      <Button
-        kind="primary"
-        className="w-full"
-        icon={<Icon name="play" size={14} />}
-        disabled={missingField(question) !== undefined}
-        onClick={onSend}
-      >
-        Send it
-      </Button>
+      <div>
+        <Button
+          kind="primary"
+          className="w-full"
+          icon={<Icon name="play" size={14} />}
+          aria-describedby={missing === undefined ? undefined : missingId}
+          onClick={() => {
+            if (missing === undefined) return onSend();
+            setIsAskedFor(true);
+            const ends = form.current?.querySelectorAll<HTMLElement>('[role="combobox"]');
+            ends?.[missing === 'from' ? 0 : 1]?.focus();
+          }}
+        >
+          Send it
+        </Button>
+        {missing !== undefined && (
+          <p id={missingId} className="mt-5 text-note text-ink-2">
+            {missingWords[missing]}
+          </p>
+        )}
+      </div>
       <p className="text-note text-ink-3">{send.shows}</p>
     </div>
   );

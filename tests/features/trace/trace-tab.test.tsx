@@ -164,6 +164,19 @@ describe('the form', () => {
     expect(desk().address().get('df')).toBe('no');
   });
 
+  it('says what is missing beside its button, and in the cell once it is pressed all the same', async () => {
+    const { user } = renderTab(pairDesign(), 'drawer=trace&from=h-s0-a&send=ping');
+    const button = side().getByRole('button', { name: 'Send it' });
+    expect(button).toHaveAccessibleDescription(/^To is empty: choose a host/);
+    expect(side().getByRole('combobox', { name: 'To' })).not.toBeInvalid();
+    await user.click(button);
+    expect(side().getByRole('combobox', { name: 'To' })).toBeInvalid();
+    expect(side().getByRole('combobox', { name: 'To' })).toHaveFocus();
+    await user.keyboard('h-s1{Enter}');
+    expect(button).not.toHaveAccessibleDescription();
+    expect(verdict()).toHaveTextContent('Reaches h-s1-a.');
+  });
+
   it('refuses a length that no packet has where it is typed', async () => {
     const { user, desk } = renderTab(pairDesign(), failing);
     const bytes = side().getByLabelText('IP packet, bytes');
