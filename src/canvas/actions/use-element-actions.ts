@@ -15,8 +15,9 @@ import type { Operation } from '../../workspace/operations/operation.ts';
 import { placeEndpoint } from '../../workspace/operations/place-parts.ts';
 import { removeElements } from '../../workspace/operations/remove-parts.ts';
 import { boxesOf } from '../boxes-of.ts';
-import { askToJoin, editNote, setInspecting } from '../desk-state.ts';
+import { askToJoin, editNote } from '../desk-state.ts';
 import { standingOf } from '../flow-changes-to-patch.ts';
+import { focusInspector } from '../focus-inspector.ts';
 import { useDrawn } from '../geometry-context.tsx';
 import { freePlace, pinNoteBeside, placePart, type PlacedPart } from '../place-part.ts';
 import { useTidy } from '../use-tidy.ts';
@@ -48,20 +49,6 @@ export interface DeskActions extends ElementActions {
   readonly place: (part: PlacedPart, site?: string) => void;
   readonly copied: (refs: readonly ElementRef[]) => Parts | undefined;
 }
-
-const inInspector = (selector: string): HTMLElement | null =>
-  document.querySelector('aside[aria-label="Inspector"]')?.querySelector<HTMLElement>(selector) ?? null;
-
-/** The field of the element's name takes the focus, or the first field of what the inspector shows, or its first button. */
-const focusInspector = (named = false): void => {
-  flushSync(() => setInspecting(true));
-  const field =
-    (named ? inInspector('input[aria-label="Name"], textarea') : null) ??
-    inInspector('input, select, textarea') ??
-    inInspector('button');
-  field?.focus();
-  if (named && field instanceof HTMLInputElement) field.select();
-};
 
 /** Does what menus, keys and search offer for elements. The same object as long as the design is open. */
 export const useElementActions = (around: Surroundings = {}): DeskActions => {

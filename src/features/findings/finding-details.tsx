@@ -1,5 +1,6 @@
 import { Link } from 'react-router-dom';
 import { Button, buttonClasses } from '../../components/button.tsx';
+import { focusWhenGone } from '../../lib/focus-when-gone.ts';
 import type { FindingItem } from './finding-item.ts';
 import { previewHandlers } from './preview-handlers.ts';
 import type { WaivingTools } from './waiving-tools.ts';
@@ -78,7 +79,13 @@ export function FindingDetails({
               </Button>
             )}
             {waiving !== undefined && waiver !== undefined && (
-              <Button small onClick={() => waiving.onWithdraw(waiver.id)}>
+              <Button
+                small
+                onClick={(event) => {
+                  focusWhenGone(event.currentTarget);
+                  waiving.onWithdraw(waiver.id);
+                }}
+              >
                 Withdraw the waiver
               </Button>
             )}

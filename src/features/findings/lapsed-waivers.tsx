@@ -2,6 +2,7 @@ import { Button } from '../../components/button.tsx';
 import { SeverityMark } from '../../components/severity-mark.tsx';
 import type { Waiver } from '../../contract/waivers.ts';
 import type { Waived } from '../../engine/rules/waived.ts';
+import { focusWhenGone } from '../../lib/focus-when-gone.ts';
 import { dayInWords } from '../../lib/format-time.ts';
 import type { WaivingTools } from './waiving-tools.ts';
 
@@ -61,7 +62,13 @@ export function LapsedWaivers({
                       Waive anew…
                     </Button>
                   )}
-                  <Button small onClick={() => waiving.onWithdraw(waiver.id)}>
+                  <Button
+                    small
+                    onClick={(event) => {
+                      focusWhenGone(event.currentTarget);
+                      waiving.onWithdraw(waiver.id);
+                    }}
+                  >
                     Withdraw
                   </Button>
                 </div>

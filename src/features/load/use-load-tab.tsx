@@ -1,6 +1,7 @@
 import { useDeferredValue, useMemo, useState } from 'react';
 import { setInspecting } from '../../canvas/desk-state.ts';
 import type { DeskTab } from '../../canvas/desk-tab.ts';
+import { focusInspector } from '../../canvas/focus-inspector.ts';
 import { Button } from '../../components/button.tsx';
 import { ErrorNotice } from '../../components/notice.tsx';
 import { showToast } from '../../components/toast.tsx';
@@ -89,6 +90,8 @@ export function useLoadTab(active: boolean): DeskTab {
     const done = perform(open, addDemands(open.store.getState().document, newEntryId));
     if (!done.ok) return void showToast({ tone: 'failed', text: done.why });
     change({ load: 'demands' });
+    // The first of them is selected: what is known of it is what comes next.
+    focusInspector();
   };
   const addOne = editable && demandableSegments(design).length > 0 ? add : undefined;
 

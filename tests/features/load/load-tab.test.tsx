@@ -131,6 +131,18 @@ describe('the load tab', () => {
     expect(screen.getByRole('table', { name: 'Demands on their way' })).toBeVisible();
   });
 
+  test('the focus goes on in the inspector, where the first of them waits for its rate', async () => {
+    const { user, open } = renderTab('', { design: pairDesign({ segments: ['a', 'b'] }) });
+    const aside = document.createElement('aside');
+    aside.setAttribute('aria-label', 'Inspector');
+    const field = aside.appendChild(document.createElement('input'));
+    document.body.append(aside);
+    await user.click(screen.getByRole('button', { name: 'Add a demand for each of 2 segments' }));
+    expect(open.store.getState().selection).toMatchObject([{ collection: 'demands' }]);
+    expect(field).toHaveFocus();
+    aside.remove();
+  });
+
   test('without demands a reader is taught and offered nothing', () => {
     renderTab('', { design: pairDesign(), editable: false });
     expect(screen.getByText('No demand is stated')).toBeVisible();
