@@ -20,6 +20,7 @@ import type { Context } from './context.ts';
 import { freezeChecks } from './freeze-checks.ts';
 import { onLockedDesign } from './log-edits.ts';
 import { actorOf, moveDesign } from './on-revision.ts';
+import { mailReviewAsked } from './review-mails.ts';
 import { nextLabel } from './revision-labels.ts';
 import { loadDocument } from './stored-documents.ts';
 
@@ -67,6 +68,7 @@ export function askForReview(
       designId,
       details: { revision: label },
     });
+    await mailReviewAsked(context, trx, moved.answer, actor, message);
     const revision = await findRevision(trx, id);
     if (revision === null) throw notFound('revision');
     return { saved: moved.saved, answer: revision };

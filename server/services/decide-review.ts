@@ -19,6 +19,7 @@ import type { Context } from './context.ts';
 import { freezeChecks } from './freeze-checks.ts';
 import type { HeldRevision } from './on-revision.ts';
 import { moveDesign, onRevision } from './on-revision.ts';
+import { mailDecision } from './review-mails.ts';
 import { nextLabel } from './revision-labels.ts';
 import type { StoredDocument } from './stored-documents.ts';
 
@@ -54,6 +55,7 @@ async function backToDraft(
   refuseUnlessInReview(revision);
   await settleRevision(trx, revision.id, { state, by: actor, at, note });
   await record(trx, held, state === 'withdrawn' ? 'review.withdrawn' : 'review.sent-back', revision);
+  if (state === 'sent-back') await mailDecision(context, trx, state, held.design, revision, actor, note);
   return startDraft(context, trx, held);
 }
 
@@ -88,6 +90,7 @@ async function approve(
   });
   await settleRevision(trx, revision.id, { state: 'approved', by: actor, at, note, checks });
   await record(trx, held, 'review.approved', revision);
+  await mailDecision(context, trx, 'approved', design, revision, actor, note);
   if (before !== null) await record(trx, held, 'design.superseded', before, { by: revision.label });
   const issue = issueOf({
     label: revision.label,
