@@ -9,8 +9,9 @@ const patienceMs = 20_000;
 export const focusWhenGone = (control: Element): void => {
   const main = document.getElementById('main');
   const all = [...(main ?? document.body).querySelectorAll<HTMLElement>(reachable)];
-  const at = all.indexOf(control as HTMLElement);
-  const next = [...all.slice(at + 1), ...all.slice(0, Math.max(at, 0)).reverse()];
+  const isAfter = (element: Element): boolean =>
+    (control.compareDocumentPosition(element) & Node.DOCUMENT_POSITION_FOLLOWING) !== 0;
+  const next = [...all.filter(isAfter), ...all.filter((element) => !isAfter(element)).reverse()];
   const observer = new MutationObserver(() => {
     if (control.isConnected) return;
     stop();
