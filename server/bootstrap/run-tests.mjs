@@ -155,7 +155,16 @@ function runNode(args, signal) {
  * @returns {NodeJS.ProcessEnv}
  */
 function environmentOfTests(environment) {
-  const ofStart = ['DATABASE_URL', 'HOST', 'PORT', 'PUBLIC_URL', 'SESSION_SECRET', 'SMTP_URL', 'MAIL_FROM'];
+  const ofStart = [
+    'DATABASE_URL',
+    'HOST',
+    'PORT',
+    'PUBLIC_URL',
+    'SESSION_SECRET',
+    'SESSION_SECRET_BEFORE',
+    'SMTP_URL',
+    'MAIL_FROM',
+  ];
   const kept = Object.entries(withoutPostgresVariables(environment)).filter(
     ([name]) => !ofStart.includes(name),
   );

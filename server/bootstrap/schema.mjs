@@ -24,3 +24,14 @@ export async function seedDemo(databaseUrl) {
   await demo.seedDemo(databaseUrl);
   return demo.demoSignIns;
 }
+
+/**
+ * The one-time code with which an empty database gets its first owner; null where somebody is there.
+ * @param {string} databaseUrl
+ * @param {string} sessionSecret
+ * @returns {Promise<string | null>}
+ */
+export async function firstOwnerCode(databaseUrl, sessionSecret) {
+  const { prepareFirstOwnerCode } = await importTypeScript('server/db/first-owner-code.ts');
+  return prepareFirstOwnerCode(databaseUrl, sessionSecret);
+}

@@ -16,7 +16,7 @@ import { requireDatabase } from './postgres-access.mjs';
 import { acquireCluster } from './postgres-cluster.mjs';
 import { withoutPostgresVariables } from './postgres-programs.mjs';
 import { takeProcessLock } from './process-lock.mjs';
-import { migrate, seedDemo } from './schema.mjs';
+import { firstOwnerCode, migrate, seedDemo } from './schema.mjs';
 import { keptSessionSecret } from './session-secret.mjs';
 import { withSetupLock } from './setup-lock.mjs';
 import { SetupProblem } from './setup-problem.mjs';
@@ -60,6 +60,8 @@ export async function startApplication(lifetime, { isDevelopment }) {
   const migrations = await migrate(databaseUrl);
   if (migrations.length > 0) say(`Brought the database up to date (${migrations.length} migrations)`);
   const signIns = isOwnDatabase ? await seedDemo(databaseUrl) : [];
+  const code = isOwnDatabase ? null : await firstOwnerCode(databaseUrl, sessionSecret);
+  const firstOwner = code === null ? null : { url: `${checked.publicUrl}/first-owner`, code };
   signal.throwIfAborted();
   if (!isDevelopment) await withSetupLock(say, () => ensureClientBuild({ say, signal }));
 
@@ -93,16 +95,22 @@ export async function startApplication(lifetime, { isDevelopment }) {
     void vite.ended.then((how) => lifetime.end(`The client's server ended unexpectedly (${how}).`));
   }
 
-  say(announcement({ url: checked.localUrl, signIns, logFile, durationMs: Date.now() - startedAt }));
+  const durationMs = Date.now() - startedAt;
+  say(announcement({ url: checked.localUrl, signIns, firstOwner, logFile, durationMs }));
   return lifetime.untilEnd();
 }
 
 /**
  * What is printed once people can sign in.
- * @param {{ url: string, signIns: readonly import('./schema.mjs').SignIn[], logFile: string | null, durationMs: number }} facts
+ * @param {object} facts
+ * @param {string} facts.url
+ * @param {readonly import('./schema.mjs').SignIn[]} facts.signIns
+ * @param {{ readonly url: string, readonly code: string } | null} facts.firstOwner
+ * @param {string | null} facts.logFile
+ * @param {number} facts.durationMs
  * @returns {string}
  */
-export function announcement({ url, signIns, logFile, durationMs }) {
+export function announcement({ url, signIns, firstOwner, logFile, durationMs }) {
   const widths = ['email', 'password'].map((field) =>
     Math.max(0, ...signIns.map((signIn) => signIn[/** @type {'email' | 'password'} */ (field)].length)),
   );
@@ -114,6 +122,13 @@ export function announcement({ url, signIns, logFile, durationMs }) {
       ({ email, password, role }) =>
         `  ${email.padEnd(widths[0] ?? 0)}  ${password.padEnd(widths[1] ?? 0)}  ${role}`,
     ),
+    ...(firstOwner === null
+      ? []
+      : [
+          '',
+          `Nobody has an account yet. Become the first owner at ${firstOwner.url} with this code, which works once:`,
+          `  ${firstOwner.code}`,
+        ]),
     '',
     ...(logFile === null ? [] : [`The server's log is '${logFile}'.`]),
     'Ctrl-C stops it.',

@@ -7,7 +7,7 @@ const unknown = process.argv.slice(2).filter((argument) => argument !== '--dev')
 const problem =
   nodeVersionProblem(process.versions.node, engines.node) ??
   (unknown.length > 0
-    ? `'${unknown[0]}' is not an option of npm start; it is set up by the variables PORT, HOST, DATABASE_URL, SESSION_SECRET, SMTP_URL, MAIL_FROM and PUBLIC_URL.`
+    ? `'${unknown[0]}' is not an option of npm start; it is set up by the variables PORT, HOST, DATABASE_URL, SESSION_SECRET, SESSION_SECRET_BEFORE, SMTP_URL, MAIL_FROM and PUBLIC_URL.`
     : null);
 
 if (problem !== null) {
