@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { collections } from '../engine/model/design.ts';
 
 /** Pages of a design on which somebody can be. */
 const pageSchema = z
@@ -8,10 +9,10 @@ const coordinate = z.number().min(-1e6, 'expected at least -1000000').max(1e6, '
 const word = z.string().min(1, 'expected a name').max(80, 'expected at most 80 characters');
 
 const selectedSchema = z.strictObject({
-  collection: word,
+  collection: z.enum(collections),
   id: word,
   port: word.optional(),
-  member: z.enum(['a', 'b']).optional(),
+  member: z.union([z.literal(1), z.literal(2)]).optional(),
 });
 
 /** Where somebody is in a design: the page, what is selected, and the part of the sheet in view, in units of the sheet. */

@@ -8,12 +8,14 @@ import type { Design } from '../engine/model/design.ts';
 import { parseDesign } from '../engine/model/parse-design.ts';
 import { DesignBar } from '../features/design-bar/design-bar.tsx';
 import { useTravelKeys } from '../features/design-bar/use-travel-keys.ts';
+import { PresentPeople } from '../features/presence/present-people.tsx';
 import { StretchDialogs } from '../features/stretch/stretch-dialogs.tsx';
 import { callApi } from '../lib/api-client.ts';
 import { asApiError } from '../lib/api-error.ts';
 import { DesignPlaceProvider } from '../workspace/design-place.tsx';
 import { designServer } from '../workspace/design-server.ts';
 import { browserEditStorage } from '../workspace/edit-storage.ts';
+import { useLiveDesign } from '../workspace/live/use-live-design.ts';
 import { openDesign, type OpenDesign } from '../workspace/open-design.ts';
 import { OpenDesignProvider } from '../workspace/open-design-context.tsx';
 import { StoredChecks } from '../workspace/stored-checks.tsx';
@@ -103,11 +105,13 @@ function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonl
   return (
     <DesignPlaceProvider place={place}>
       <OpenDesignProvider open={open}>
+        <Live designId={id} />
         <StoredChecks>
           <DesignBar
             engagementName={answer.engagementName}
             workspaceId={answer.workspaceId}
             summary={answer.summary}
+            people={<PresentPeople designId={id} />}
           />
           <TravelKeys />
           <WorkspaceProfilesProvider>
@@ -120,6 +124,11 @@ function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonl
       </OpenDesignProvider>
     </DesignPlaceProvider>
   );
+}
+
+function Live({ designId }: { readonly designId: string }) {
+  useLiveDesign(designId);
+  return null;
 }
 
 function TravelKeys() {

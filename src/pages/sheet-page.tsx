@@ -34,6 +34,7 @@ import { useLoadTab } from '../features/load/use-load-tab.tsx';
 import { useOutageTab } from '../features/outage/use-outage-tab.tsx';
 import { createOutlineView } from '../features/outline/outline-view.ts';
 import { Outline } from '../features/outline/outline.tsx';
+import { PresenceOnSheet } from '../features/presence/presence-on-sheet.tsx';
 import { useTraceFromHere } from '../features/trace/use-trace-from-here.ts';
 import { useTraceTab } from '../features/trace/use-trace-tab.tsx';
 import { usePageTitle } from '../lib/page-title.ts';
@@ -56,6 +57,7 @@ export function SheetPage() {
           <Surface />
         </ExtraActionsProvider>
         <JoinDialog />
+        <PresenceOnSheet />
       </GeometryProvider>
     </ReactFlowProvider>
   );

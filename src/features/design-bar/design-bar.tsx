@@ -1,3 +1,4 @@
+import type { ReactNode } from 'react';
 import { Link, useLocation, useNavigate } from 'react-router-dom';
 import { BarCell, BarContents, BarNav, type BarDestination } from '../../components/bar.tsx';
 import { Button } from '../../components/button.tsx';
@@ -14,10 +15,12 @@ interface DesignBarProps {
   readonly engagementName: string;
   readonly workspaceId: string;
   readonly summary: DesignSummary;
+  /** Who else has it open. */
+  readonly people?: ReactNode;
 }
 
 /** The bar over every page of a design: where it belongs, whether it is saved, its pages, undo. A page adds its own. */
-export function DesignBar({ engagementName, workspaceId, summary }: DesignBarProps) {
+export function DesignBar({ engagementName, workspaceId, summary, people }: DesignBarProps) {
   const title = useOpenState((state) => state.document.meta.title);
   const revision = useOpenState((state) => state.document.meta.revision);
   const editable = useOpenState((state) => state.editable);
@@ -48,7 +51,8 @@ export function DesignBar({ engagementName, workspaceId, summary }: DesignBarPro
       <div className="flex shrink-0 items-center pl-8 md:hidden">
         <PagesMenu pages={pages} />
       </div>
-      <div className="ml-auto flex shrink-0 items-center gap-4 not-empty:pl-8">{editable && <Travel />}</div>
+      <div className="ml-auto flex shrink-0 items-center gap-8 not-empty:pl-8">{people}</div>
+      <div className="flex shrink-0 items-center gap-4 not-empty:pl-8">{editable && <Travel />}</div>
     </BarContents>
   );
 }
