@@ -72,6 +72,13 @@ export const routes: RouteObject[] = [
                     }),
                   },
                   {
+                    path: 'review',
+                    ErrorBoundary: PageError,
+                    lazy: async () => ({
+                      Component: (await import('../pages/review-page.tsx')).ReviewPage,
+                    }),
+                  },
+                  {
                     path: 'numbering',
                     ErrorBoundary: PageError,
                     lazy: async () => ({

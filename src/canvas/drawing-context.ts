@@ -2,6 +2,7 @@ import { createContext, use } from 'react';
 import type { SheetGeometry } from '../drawing/geometry.ts';
 import type { DrawingFacts } from '../drawing/parts/drawing-facts.ts';
 import type { Look } from '../drawing/parts/look.ts';
+import type { ElementRef } from '../engine/model/design.ts';
 
 /** What all nodes and edges of one sheet draw from. */
 export interface Drawing {
@@ -11,6 +12,8 @@ export interface Drawing {
   readonly editable: boolean;
   readonly acceptGhost: (id: string) => void;
   readonly pickBalloon: (number: number) => void;
+  /** A slip of threads was pressed. */
+  readonly pickFlag: (ref: ElementRef) => void;
 }
 
 export const DrawingContext = createContext<Drawing | null>(null);

@@ -48,6 +48,8 @@ interface SheetCanvasProps {
   /** A balloon was pressed; its number is the finding's. */
   readonly onPickBalloon: (number: number) => void;
 }
+  /** The slip of an element's threads was pressed. */
+  readonly onPickFlag?: (ref: ElementRef) => void;
 
 // Below this many parts drawing them all is cheaper than deciding which are in view.
 const cullFrom = 400;
@@ -76,7 +78,13 @@ const tonesWith = (
 };
 
 /** The sheet: everything of the design that is drawn, to be looked at, selected, moved and connected. */
-export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon }: SheetCanvasProps) {
+export function SheetCanvas({
+  decorations,
+  onPick,
+  onAcceptGhost,
+  onPickBalloon,
+  onPickFlag,
+}: SheetCanvasProps) {
   const open = useOpenDesign();
   const numbering = useNumbering();
   const design = useOpenState((state) => state.document);
@@ -102,8 +110,16 @@ export function SheetCanvas({ decorations, onPick, onAcceptGhost, onPickBalloon 
     [level, marks, selection, settled, design],
   );
   const drawing = useMemo<Drawing>(
-    () => ({ geometry, facts, look, editable, acceptGhost: onAcceptGhost, pickBalloon: onPickBalloon }),
-    [geometry, facts, look, editable, onAcceptGhost, onPickBalloon],
+    () => ({
+      geometry,
+      facts,
+      look,
+      editable,
+      acceptGhost: onAcceptGhost,
+      pickBalloon: onPickBalloon,
+      pickFlag: (ref) => onPickFlag?.(ref),
+    }),
+    [geometry, facts, look, editable, onAcceptGhost, onPickBalloon, onPickFlag],
   );
   const selected = useMemo(
     () => new Set(selection.map(({ collection, id }) => elementKey({ collection, id }))),

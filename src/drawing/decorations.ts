@@ -58,6 +58,12 @@ export interface Decorations {
     /** Parts of a million, drawn as a bar under the words; what is over a million sticks out of it. */
     readonly fillPerMillion?: number;
   }[];
+  /** Slips of open threads, one at each element that has some: how many, and whether one suggests a change. */
+  readonly flags?: readonly {
+    readonly at: ElementRef;
+    readonly count: number;
+    readonly suggests: boolean;
+  }[];
   /** Segments whose cords are hidden from view (faded). */
   readonly hiddenSegments: readonly string[];
 }

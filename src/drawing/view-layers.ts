@@ -188,5 +188,6 @@ export const visibleDecorations = (decorations: Decorations, visibilityOf: Visib
     ),
     overhangs: decorations.overhangs.filter(tunnelShown),
     balloons: decorations.balloons.filter(({ at }) => isShown(at)),
+    ...(decorations.flags === undefined ? {} : { flags: decorations.flags.filter(({ at }) => isShown(at)) }),
   };
 };

@@ -9,6 +9,7 @@ import { parseDesign } from '../engine/model/parse-design.ts';
 import { DesignBar } from '../features/design-bar/design-bar.tsx';
 import { useTravelKeys } from '../features/design-bar/use-travel-keys.ts';
 import { PresentPeople } from '../features/presence/present-people.tsx';
+import { SuggestingBar } from '../features/review/suggesting-bar.tsx';
 import { StretchDialogs } from '../features/stretch/stretch-dialogs.tsx';
 import { callApi } from '../lib/api-client.ts';
 import { asApiError } from '../lib/api-error.ts';
@@ -19,6 +20,7 @@ import { useLiveDesign } from '../workspace/live/use-live-design.ts';
 import { openDesign, type OpenDesign } from '../workspace/open-design.ts';
 import { OpenDesignProvider } from '../workspace/open-design-context.tsx';
 import { StoredChecks } from '../workspace/stored-checks.tsx';
+import { SuggestingProvider } from '../workspace/suggesting.tsx';
 import { WorkspaceProfilesProvider } from '../workspace/workspace-profiles.tsx';
 
 const phone = '(max-width: 767px)';
@@ -106,21 +108,24 @@ function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonl
     <DesignPlaceProvider place={place}>
       <OpenDesignProvider open={open}>
         <Live designId={id} />
-        <StoredChecks>
-          <DesignBar
-            engagementName={answer.engagementName}
-            workspaceId={answer.workspaceId}
-            summary={answer.summary}
-            people={<PresentPeople designId={id} />}
-          />
-          <TravelKeys />
-          <WorkspaceProfilesProvider>
-            <Suspense fallback={<Opening />}>
-              <Outlet />
-            </Suspense>
-          </WorkspaceProfilesProvider>
-          <StretchDialogs />
-        </StoredChecks>
+        <SuggestingProvider>
+          <StoredChecks>
+            <DesignBar
+              engagementName={answer.engagementName}
+              workspaceId={answer.workspaceId}
+              summary={answer.summary}
+              people={<PresentPeople designId={id} />}
+            />
+            <TravelKeys />
+            <SuggestingBar />
+            <WorkspaceProfilesProvider>
+              <Suspense fallback={<Opening />}>
+                <Outlet />
+              </Suspense>
+            </WorkspaceProfilesProvider>
+            <StretchDialogs />
+          </StoredChecks>
+        </SuggestingProvider>
       </OpenDesignProvider>
     </DesignPlaceProvider>
   );

@@ -19,6 +19,7 @@ import { SeverityCounts } from '../components/severity-mark.tsx';
 import { showToast } from '../components/toast.tsx';
 import { elementKey, layOver } from '../drawing/decorations.ts';
 import { anchorOf } from '../drawing/routing/anchors.ts';
+import type { ElementRef } from '../engine/model/design.ts';
 import { rules } from '../engine/rules/index.ts';
 import { countBySeverity } from '../engine/rules/run-rules.ts';
 import { SheetDrawer } from '../features/drawer/sheet-drawer.tsx';
@@ -30,6 +31,10 @@ import { useAskedFinding } from '../features/findings/use-asked-finding.ts';
 import { useFindingDecorations } from '../features/findings/use-finding-decorations.ts';
 import { useFindingFixes } from '../features/findings/use-finding-fixes.ts';
 import { useWaiving } from '../features/findings/use-waiving.tsx';
+import { ElementComments } from '../features/review/element-comments.tsx';
+import { SuggestButton } from '../features/review/suggest-button.tsx';
+import { useCommenting, type Commenting } from '../features/review/use-commenting.tsx';
+import { useCommentsTab } from '../features/review/use-comments-tab.tsx';
 import { useLoadTab } from '../features/load/use-load-tab.tsx';
 import { useOutageTab } from '../features/outage/use-outage-tab.tsx';
 import { createOutlineView } from '../features/outline/outline-view.ts';
@@ -44,26 +49,42 @@ import { useOpenDesign, useOpenState } from '../workspace/open-design-context.ts
 
 /** /designs/:designId: the drawing, with its tray, drawer and inspector. */
 export function SheetPage() {
-  const { actionsOf } = useTraceFromHere();
+  const { actionsOf: tracesFrom } = useTraceFromHere();
+  const { change } = useSearchValues();
+  const openThread = (thread: string): void => change({ drawer: 'comments', thread });
+  const commenting = useCommenting(openThread);
+  const { actionsOf: commentsOn } = commenting;
+  const actionsOf = useCallback(
+    (ref: ElementRef) => [...tracesFrom(ref), ...commentsOn(ref)],
+    [tracesFrom, commentsOn],
+  );
   useEffect(() => clearDesk, []);
   return (
     <ReactFlowProvider>
       <GeometryProvider>
         <SheetActions>
+          <SuggestButton />
           <ExportButton />
         </SheetActions>
         <PrintedSheet />
         <ExtraActionsProvider value={actionsOf}>
-          <Surface />
+          <Surface commenting={commenting} onOpenThread={openThread} />
         </ExtraActionsProvider>
         <JoinDialog />
         <PresenceOnSheet />
+        {commenting.dialog}
       </GeometryProvider>
     </ReactFlowProvider>
   );
 }
 
-function Surface() {
+interface SurfaceProps {
+  readonly commenting: Commenting;
+  readonly onOpenThread: (threadId: string) => void;
+}
+
+function Surface({ commenting, onOpenThread }: SurfaceProps) {
+  const { ask, suggestFix } = commenting;
   const open = useOpenDesign();
   const { findings, openFindings, waiverOf, document } = useChecks();
   const waiving = useWaiving();
@@ -84,7 +105,15 @@ function Surface() {
   const [outline] = useState(createOutlineView);
   usePageTitle(title);
   useEffect(() => {
-    if (anySelected) setInspecting(true);
+    if (!anySelected) return;
+    if (useDesk.getState().menu === undefined) return setInspecting(true);
+    // What a menu was opened on stays in sight until it is shut.
+    const stop = useDesk.subscribe(({ menu }) => {
+      if (menu !== undefined) return;
+      stop();
+      setInspecting(true);
+    });
+    return stop;
   }, [anySelected]);
 
   const found = useFindingDecorations(selectedKey, preview);
@@ -147,6 +176,17 @@ function Surface() {
         canFix={editable}
         onApplyFix={apply}
         waiving={waiving.tools}
+        commenting={
+          ask && {
+            onComment: (key) => ask({ kind: 'finding', key }),
+            onSuggest:
+              suggestFix &&
+              ((key, fixId) => {
+                const fix = fixes.get(key)?.find(({ id }) => id === fixId);
+                if (fix !== undefined) suggestFix(key, fix);
+              }),
+          }
+        }
         empty={`All ${rules.length} checks pass. They run again with every change.`}
       />
     ),
@@ -160,7 +200,12 @@ function Surface() {
   const traceTab = useTraceTab(valueOf('drawer') === 'trace', { onShowFinding: showFinding });
   const loadTab = useLoadTab(valueOf('drawer') === 'load');
   const outageTab = useOutageTab(valueOf('drawer') === 'outage');
-  const tabs = [findingsTab, traceTab, loadTab, outageTab, outlineTab];
+  const comments = useCommentsTab(commenting, (ref) => {
+    open.select([ref]);
+    const at = anchorOf(settled, ref, document);
+    if (at !== undefined) view.showPoint(at);
+  });
+  const tabs = [findingsTab, comments.tab, traceTab, loadTab, outageTab, outlineTab];
   const openTab = (tab: string): void => change({ drawer: tab === 'findings' ? '' : tab });
   // The first is open where the address says nothing.
   const active = tabs.find((tab) => tab.value === valueOf('drawer')) ?? findingsTab;
@@ -171,7 +216,8 @@ function Surface() {
     detail: '',
     run: () => openTab(value),
   }));
-  const decorations = useMemo(() => (upper === undefined ? found : layOver(found, upper)), [found, upper]);
+  const { flags } = comments;
+  const decorations = useMemo(() => layOver(layOver(found, { flags }), upper ?? {}), [found, flags, upper]);
 
   return (
     <main id="main" tabIndex={-1} className="sheet-desk" data-selected={anySelected}>
@@ -183,6 +229,7 @@ function Surface() {
           decorations={decorations}
           onPick={onPick}
           onAcceptGhost={acceptGhost}
+          onPickFlag={comments.onPickFlag}
           onPickBalloon={(number) => findings[number - 1] !== undefined && select(findings[number - 1]!.key)}
         />
         <SheetDrawer
@@ -221,6 +268,13 @@ function Surface() {
             askToJoin({ kind, ...(end === undefined ? {} : { a: end }) });
           }}
           onShowFinding={select}
+          footOf={(ref) => (
+            <ElementComments
+              of={ref}
+              onComment={ask && (() => ask({ kind: 'element', ref }))}
+              onOpenThread={onOpenThread}
+            />
+          )}
           standing={standing}
           menuOf={menuOf}
         />

@@ -53,9 +53,7 @@ export function SuggestingProvider({ children }: { readonly children: ReactNode 
     const { document, sequence } = open.store.getState();
     return { base: document, baseSequence: sequence };
   }, [open]);
-  const [begun, setBegun] = useState(() =>
-    maySuggest && storage.load().length > 0 ? fresh() : undefined,
-  );
+  const [begun, setBegun] = useState(() => (maySuggest && storage.load().length > 0 ? fresh() : undefined));
   const suggesting = useMemo(
     (): Suggesting => ({
       draft:

@@ -1,4 +1,4 @@
-import { createContext, use } from 'react';
+import { createContext, use, type ReactNode } from 'react';
 import type { MenuGroup } from '../../components/menu.tsx';
 import type { ElementRef } from '../../engine/model/design.ts';
 import type { Standing } from '../../workspace/operations/move-parts.ts';
@@ -17,6 +17,8 @@ export interface InspectorTools {
   readonly standing?: Standing;
   /** What can be done with an element where there is a sheet to do it on. */
   readonly menuOf?: (ref: ElementRef) => readonly MenuGroup[];
+  /** Stands under the fields of an element, such as what was said about it. */
+  readonly footOf?: (ref: ElementRef) => ReactNode;
   /** Sections that a person opened or closed; they stay so from one element to the next. */
   readonly sections: Map<string, boolean>;
 }

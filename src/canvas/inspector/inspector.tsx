@@ -36,7 +36,7 @@ const panels = {
 } satisfies Record<Collection, (props: { readonly id: string }) => ReactNode>;
 
 /** What is selected, with every field of it; the design itself where nothing is. */
-export function Inspector({ onConnect, onShowFinding, standing, menuOf }: InspectorProps) {
+export function Inspector({ onConnect, onShowFinding, standing, menuOf, footOf }: InspectorProps) {
   const selection = useOpenState((state) => state.selection);
   const [sections] = useState(() => new Map<string, boolean>());
   const [first] = selection;
@@ -55,6 +55,7 @@ export function Inspector({ onConnect, onShowFinding, standing, menuOf }: Inspec
           ) : (
             <SeveralPanel of={selection} />
           )}
+          {first !== undefined && selection.length === 1 && footOf?.(first)}
         </div>
       </aside>
     </InspectorContext>

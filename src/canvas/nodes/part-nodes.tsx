@@ -3,6 +3,7 @@ import { memo, useMemo, type ReactNode } from 'react';
 import type { Point, Rect } from '../../drawing/geometry.ts';
 import { balloonParts } from '../../drawing/parts/balloon-part.ts';
 import { bandPart } from '../../drawing/parts/band-part.ts';
+import { commentSlips } from '../../drawing/parts/comment-slip.ts';
 import { devicePart } from '../../drawing/parts/device-part.ts';
 import { legendPart } from '../../drawing/parts/legend-part.ts';
 import { pinnedNotePart, standingNotesPart } from '../../drawing/parts/notes-part.ts';
@@ -29,6 +30,7 @@ import type {
 import { bodyHandle, pipHandle } from '../design-to-flow.ts';
 import { useDrawing } from '../drawing-context.ts';
 import { useDesk } from '../desk-state.ts';
+import { refAt } from '../ref-at.ts';
 import { FaultMarks } from './fault-marks.tsx';
 import { NoteEditor } from './note-editor.tsx';
 import { Shapes } from '../../components/shapes.tsx';
@@ -256,6 +258,26 @@ function Balloons() {
   ));
 }
 
+/** Slips of open threads; the drawer's list of them is the keyboard's way to the same. */
+function Slips() {
+  const { facts, look, geometry, pickFlag } = useDrawing();
+  const slips = useMemo(() => commentSlips(geometry, facts, look), [geometry, facts, look]);
+  return slips.map((shape) => (
+    <g
+      key={shape.key}
+      aria-hidden="true"
+      className="balloon-button"
+      onClick={(event) => {
+        event.stopPropagation();
+        const ref = refAt(event.target as Element);
+        if (ref !== undefined) pickFlag(ref);
+      }}
+    >
+      <Shapes shapes={[shape]} />
+    </g>
+  ));
+}
+
 /** Numbers of a trace's hops; the trace's own list says the same. */
 function Hops() {
   const { facts, look, geometry } = useDrawing();
@@ -285,6 +307,7 @@ const Marks = memo(function Marks(_props: NodeProps<MarksNode>) {
       <Tags />
       <Hops />
       <Balloons />
+      <Slips />
     </World>
   );
 });

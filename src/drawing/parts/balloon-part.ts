@@ -1,7 +1,7 @@
 import type { Decorations } from '../decorations.ts';
 import type { JacketGeometry, Point, Rect, SheetGeometry } from '../geometry.ts';
 import { pathAt, pathLength } from '../path-geometry.ts';
-import { placeBalloons } from '../routing/balloons.ts';
+import { placeBalloons, type PlacedBalloon } from '../routing/balloons.ts';
 import { contains, grown } from '../routing/rects.ts';
 import type { Shape } from '../shape.ts';
 import { group } from '../shape.ts';
@@ -91,14 +91,18 @@ const anchorsOf = (
   return anchors;
 };
 
-/** The balloons of all findings that have a place on the sheet, with words beside blocking ones. */
-export const balloonParts = (geometry: SheetGeometry, facts: DrawingFacts, look: Look): readonly Shape[] => {
+/** Where the balloons of all findings stand that have a place on the sheet. */
+export const placedBalloons = (
+  geometry: SheetGeometry,
+  facts: DrawingFacts,
+  look: Look,
+): readonly PlacedBalloon[] => {
   const { balloons } = look.decorations;
   if (balloons.length === 0) return [];
   const anchors = anchorsOf(geometry, balloons, facts, look);
   const wordsOf = ({ severity, words }: Balloon): string | undefined =>
     severity === 'blocking' && look.level !== 'far' ? words : undefined;
-  const placed = placeBalloons(
+  return placeBalloons(
     geometry,
     [...anchors].map(([balloon, at]) => {
       const words = wordsOf(balloon);
@@ -112,8 +116,12 @@ export const balloonParts = (geometry: SheetGeometry, facts: DrawingFacts, look:
       scale: balloonScale[look.level],
     },
   );
-  return placed.flatMap((place) => {
-    const balloon = balloons.find(({ number }) => number === place.number);
+};
+
+/** The balloons of all findings that have a place on the sheet, with words beside blocking ones. */
+export const balloonParts = (geometry: SheetGeometry, facts: DrawingFacts, look: Look): readonly Shape[] =>
+  placedBalloons(geometry, facts, look).flatMap((place) => {
+    const balloon = look.decorations.balloons.find(({ number }) => number === place.number);
     if (balloon === undefined) return [];
     const { words: _words, ...rest } = balloon;
     const words = place.words?.text;
@@ -133,4 +141,3 @@ export const balloonParts = (geometry: SheetGeometry, facts: DrawingFacts, look:
       ),
     ];
   });
-};

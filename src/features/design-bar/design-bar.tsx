@@ -30,6 +30,7 @@ export function DesignBar({ engagementName, workspaceId, summary, people }: Desi
     { to: `${path}/segments`, label: 'Segments' },
     { to: `${path}/numbering`, label: 'Numbering' },
     { to: `${path}/checks`, label: 'Checks' },
+    { to: `${path}/review`, label: 'Review' },
   ];
   return (
     <BarContents>

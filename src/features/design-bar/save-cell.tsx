@@ -2,6 +2,7 @@ import { BarCell } from '../../components/bar.tsx';
 import { Button } from '../../components/button.tsx';
 import { Icon } from '../../components/icon.tsx';
 import { Menu } from '../../components/menu.tsx';
+import { useSuggesting } from '../../workspace/suggesting.tsx';
 import { useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 
 const edits = (count: number): string => (count === 1 ? '1 edit kept' : `${count} edits kept`);
@@ -12,6 +13,13 @@ export function SaveCell() {
   const open = useOpenDesign();
   const save = useOpenState((state) => state.save);
   const editable = useOpenState((state) => state.editable);
+  const { draft } = useSuggesting();
+  if (draft !== undefined)
+    return (
+      <BarCell label="Suggesting" className="max-md:hidden">
+        Not saved
+      </BarCell>
+    );
   if (!editable)
     return (
       <BarCell label="Access" className="max-md:hidden">

@@ -8,7 +8,7 @@ import { SearchField } from '../../components/search-field.tsx';
 import { SegmentedChoice } from '../../components/segmented-choice.tsx';
 import { severities, severityWords, SeverityShape } from '../../components/severity-mark.tsx';
 import { showToast } from '../../components/toast.tsx';
-import type { Finding } from '../../engine/rules/finding.ts';
+import type { Finding, Fix } from '../../engine/rules/finding.ts';
 import { rules } from '../../engine/rules/index.ts';
 import { countBySeverity } from '../../engine/rules/run-rules.ts';
 import { useSearchValues } from '../../lib/use-search-values.ts';
@@ -34,8 +34,15 @@ const titles = new Map(rules.map(({ id, title }) => [id, title]));
 const titleOfRule = (rule: string): string => titles.get(rule) ?? rule;
 const noFilter = { severity: '', rule: '', site: '', segment: '', waivers: '', q: '' };
 
-/** All findings of the open design: filtered, grouped, explained, cured and waived. */
-export function ChecksDesk() {
+interface ChecksDeskProps {
+  /** Begins a thread about a finding, for readers who may comment. */
+  readonly onComment?: ((findingKey: string) => void) | undefined;
+  /** Sends a cure to who edits the design, for readers who can't apply it themselves. */
+  readonly onSuggestFix?: ((findingKey: string, fix: Fix) => void) | undefined;
+}
+
+/** All findings of the open design: filtered, grouped, explained, cured, waived and talked about. */
+export function ChecksDesk({ onComment, onSuggestFix }: ChecksDeskProps) {
   const { findings, openFindings, waived, waiverOf, document } = useChecks();
   const { settled } = useDrawn();
   const { designId } = useDesignPlace();
@@ -87,6 +94,15 @@ export function ChecksDesk() {
     },
     [fixes, open],
   );
+  const commenting = onComment && {
+    onComment,
+    onSuggest:
+      onSuggestFix &&
+      ((key: string, fixId: string): void => {
+        const fix = fixes.get(key)?.find(({ id }) => id === fixId);
+        if (fix !== undefined) onSuggestFix(key, fix);
+      }),
+  };
   const counts = countBySeverity(findings);
   const foundOpen = found.filter(({ key }) => waiverOf(key) === undefined);
   const rulesAsked = rules.filter(
@@ -159,6 +175,7 @@ export function ChecksDesk() {
             canFix={editable}
             onApplyFix={apply}
             waiving={waiving.tools}
+            commenting={commenting}
             sheetPathOf={(key) => `${designPath(designId)}?finding=${encodeURIComponent(key)}`}
             empty={null}
           />

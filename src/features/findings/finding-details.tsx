@@ -1,6 +1,7 @@
 import { Link } from 'react-router-dom';
 import { Button, buttonClasses } from '../../components/button.tsx';
 import { focusWhenGone } from '../../lib/focus-when-gone.ts';
+import type { CommentingTools } from './commenting-tools.ts';
 import type { FindingItem } from './finding-item.ts';
 import { previewHandlers } from './preview-handlers.ts';
 import type { WaivingTools } from './waiving-tools.ts';
@@ -10,6 +11,7 @@ interface FindingDetailsProps {
   readonly finding: FindingItem;
   readonly canFix: boolean;
   readonly waiving: WaivingTools | undefined;
+  readonly commenting: CommentingTools | undefined;
   readonly sheetPath: string | undefined;
   readonly onApplyFix: (fixId: string) => void;
   readonly onPreviewFix: (fixId: string | null) => void;
@@ -21,6 +23,7 @@ export function FindingDetails({
   finding,
   canFix,
   waiving,
+  commenting,
   sheetPath,
   onApplyFix,
   onPreviewFix,
@@ -64,6 +67,16 @@ export function FindingDetails({
                 >
                   {fix.label}
                 </Button>
+              ) : commenting?.onSuggest !== undefined ? (
+                <Button
+                  kind="accent"
+                  small
+                  className="mt-4"
+                  onClick={() => commenting.onSuggest?.(finding.key, fix.id)}
+                  {...previewHandlers(fix, onPreviewFix)}
+                >
+                  Suggest: {fix.label}
+                </Button>
               ) : (
                 <span className="font-medium">{fix.label}</span>
               )}
@@ -71,7 +84,7 @@ export function FindingDetails({
             </li>
           ))}
         </ul>
-        {(waiving !== undefined || sheetPath !== undefined) && (
+        {(waiving !== undefined || commenting !== undefined || sheetPath !== undefined) && (
           <div className="mt-14 flex flex-wrap items-center gap-8">
             {waiving !== undefined && (
               <Button small onClick={() => waiving.onWaive(finding.key)}>
@@ -87,6 +100,11 @@ export function FindingDetails({
                 }}
               >
                 Withdraw the waiver
+              </Button>
+            )}
+            {commenting !== undefined && (
+              <Button small onClick={() => commenting.onComment(finding.key)}>
+                Comment…
               </Button>
             )}
             {sheetPath !== undefined && (

@@ -3,6 +3,7 @@ import { Button } from '../../components/button.tsx';
 import { Icon } from '../../components/icon.tsx';
 import { SeverityMark } from '../../components/severity-mark.tsx';
 import { classNames } from '../../lib/class-names.ts';
+import type { CommentingTools } from './commenting-tools.ts';
 import { FindingDetails } from './finding-details.tsx';
 import type { FindingItem } from './finding-item.ts';
 import { FindingNumber } from './finding-number.tsx';
@@ -16,6 +17,7 @@ interface FindingRowProps {
   readonly tabStop: boolean;
   readonly canFix: boolean;
   readonly waiving: WaivingTools | undefined;
+  readonly commenting: CommentingTools | undefined;
   readonly sheetPath: string | undefined;
   readonly onPress: () => void;
   readonly onApplyFix: (fixId: string) => void;
@@ -29,6 +31,7 @@ export function FindingRow({
   tabStop,
   canFix,
   waiving,
+  commenting,
   sheetPath,
   onPress,
   onApplyFix,
@@ -99,6 +102,7 @@ export function FindingRow({
           finding={finding}
           canFix={canFix}
           waiving={waiving}
+          commenting={commenting}
           sheetPath={sheetPath}
           onApplyFix={onApplyFix}
           onPreviewFix={onPreviewFix}

@@ -1,6 +1,7 @@
 import { useEffect, useRef, useState, type KeyboardEvent, type ReactNode } from 'react';
 import type { FindingItem } from './finding-item.ts';
 import { FindingRow } from './finding-row.tsx';
+import type { CommentingTools } from './commenting-tools.ts';
 import type { WaivingTools } from './waiving-tools.ts';
 
 interface FindingsListProps {
@@ -15,6 +16,8 @@ interface FindingsListProps {
   readonly onPreviewFix?: (preview: { readonly findingKey: string; readonly fixId: string } | null) => void;
   /** Given to readers who may waive. */
   readonly waiving?: WaivingTools;
+  /** Given to readers who may comment. */
+  readonly commenting?: CommentingTools | undefined;
   /** Where a finding is seen on the sheet, for lists that stand elsewhere. */
   readonly sheetPathOf?: (key: string) => string;
   /** Names the list where there are several. */
@@ -35,6 +38,7 @@ export function FindingsList({
   onApplyFix,
   onPreviewFix,
   waiving,
+  commenting,
   sheetPathOf,
   label = 'Findings',
   empty,
@@ -88,6 +92,7 @@ export function FindingsList({
           tabStop={at === stopAt}
           canFix={canFix}
           waiving={waiving}
+          commenting={commenting}
           sheetPath={sheetPathOf?.(finding.key)}
           onPress={() => press(finding.key)}
           onApplyFix={(fixId) => onApplyFix(finding.key, fixId)}
