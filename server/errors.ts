@@ -54,6 +54,11 @@ export function notFound(
     | 'waiver'
     | 'comment'
     | 'equipment profile'
+    | 'person'
+    | 'session'
+    | 'token'
+    | 'invitation'
+    | 'mail'
     | 'page',
 ): Refusal {
   return new Refusal(

@@ -24,6 +24,14 @@ export interface Throttles {
   /** Guesses at the code for the first owner. */
   firstOwnerAttempt(address: string): Promise<void>;
   demoSignIn(address: string): Promise<void>;
+  /** Invitations that a person sends, those sent again among them. */
+  invitation(personId: string): Promise<void>;
+  /** Guesses at links that are keys. */
+  linkOpened(address: string): Promise<void>;
+  /** Asking for a new password, whoever for. */
+  resetAsked(address: string): Promise<void>;
+  /** Whether somebody may be sent a link for a new password; never told to who asks. */
+  isResetMailDue(email: string): Promise<boolean>;
   workspaceStart(personId: string): Promise<void>;
   /** Requests that carry a token that is none, and those that carry a good one. */
   badToken(address: string): Promise<void>;
@@ -43,6 +51,10 @@ export const allowances = {
   secondStepOfDay: { times: 30, seconds: 24 * 60 * 60 },
   firstOwner: { times: 20, seconds: 60 * 60 },
   demoSignIn: { times: 120, seconds: 60 },
+  invitation: { times: 100, seconds: 60 * 60 },
+  linkOpened: { times: 100, seconds: 15 * 60 },
+  resetAsked: { times: 20, seconds: 60 * 60 },
+  resetOfPerson: { times: 5, seconds: 60 * 60 },
   workspaceStart: { times: 20, seconds: 24 * 60 * 60 },
   badToken: { times: 30, seconds: 15 * 60 },
   tokenRequest: { times: 600, seconds: 60 },
@@ -71,6 +83,10 @@ export function createThrottles(pool: Pool): Throttles {
   const secondStepOfDay = limiter('secondStepOfDay');
   const firstOwner = limiter('firstOwner');
   const demo = limiter('demoSignIn');
+  const invitations = limiter('invitation');
+  const links = limiter('linkOpened');
+  const resets = limiter('resetAsked');
+  const resetsOfPerson = limiter('resetOfPerson');
   const workspaces = limiter('workspaceStart');
   const badTokens = limiter('badToken');
   const tokens = limiter('tokenRequest');
@@ -106,6 +122,17 @@ export function createThrottles(pool: Pool): Throttles {
     workspaceStart: (personId) => take(workspaces, personId),
     badToken: (address) => take(badTokens, addressKey(address)),
     tokenRequest: (tokenId) => take(tokens, tokenId),
+    invitation: (personId) => take(invitations, personId),
+    linkOpened: (address) => take(links, addressKey(address)),
+    resetAsked: (address) => take(resets, addressKey(address)),
+    isResetMailDue: (email) =>
+      take(resetsOfPerson, shortKey(email)).then(
+        () => true,
+        (error: unknown) => {
+          if (error instanceof Refusal) return false;
+          throw error;
+        },
+      ),
     demoSignIn: (address) => take(demo, addressKey(address)),
     engineRequest: (address, weight = 1) => take(engine, addressKey(address), weight),
   };

@@ -19,6 +19,8 @@ export function securityHeaders(config: Config): RequestHandler {
         manifestSrc: ["'self'"],
         baseUri: ["'none'"],
         formAction: ["'self'"],
+        // Kept mails, each under a stricter policy of its own.
+        frameSrc: ["'self'"],
         frameAncestors: ["'none'"],
         objectSrc: ["'none'"],
         // Over plain HTTP these would make the pages unreachable.

@@ -36,4 +36,6 @@ export const limits = {
   commentsOfDesign: 5_000,
   /** Designs whose counts one list brings up to date; the others follow with the next. */
   recountedAtOnce: 20,
+  /** Kept mails that one list of the mailbox shows, the newest first. */
+  keptMails: 200,
 } as const;

@@ -1,20 +1,25 @@
 import { readFileSync, readdirSync } from 'node:fs';
+import type { IncomingMessage } from 'node:http';
 import { join } from 'node:path';
 import type { Test } from 'supertest';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import type { Action, Role } from '#contract/session.ts';
+import { defaultMailSettings } from '#contract/mail-settings.ts';
 import { noPools } from '#contract/numbering.ts';
 import { actions, roles } from '#contract/session.ts';
 import { applyPatch } from '#engine/model/merge-patch.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
 import type { Access, Route } from '../../../server/auth/permissions.ts';
 import { permissions, permits, routes } from '../../../server/auth/permissions.ts';
+import { keepCaughtMail } from '../../../server/repositories/caught-mails.ts';
 import { insertProfile } from '../../../server/repositories/equipment-profiles.ts';
+import { insertMembership } from '../../../server/repositories/memberships.ts';
 import { pairDesign } from '../../support/designs.ts';
 import type { TestApplication, TestBrowser, TestWorkspace } from '../../support/test-application.ts';
 import {
   addDesign,
   addEngagement,
+  addPerson,
   addWorkspace,
   openBrowser,
   signIn,
@@ -31,6 +36,9 @@ let commentId: string;
 let profileId: string;
 let reviewedId: string;
 let revisionId: string;
+let spareMemberId: string;
+let invitationId: string;
+let mailId: string;
 let stranger: TestBrowser;
 let nobody: TestBrowser;
 const members = {} as { [role in Role]: TestBrowser };
@@ -52,6 +60,12 @@ beforeAll(async () => {
     null,
     new Date(),
   );
+  spareMemberId = (await addPerson(application.database, 'Spare Member')).id;
+  await insertMembership(application.database.knex, workspace.id, spareMemberId, 'installer');
+  const invite = requests['POST /api/workspaces/:workspaceId/invitations'];
+  const invited = await invite(members.owner, ids()).expect(201);
+  invitationId = (invited.body as { id: string }).id;
+  mailId = await keepMail();
   const elsewhere = await addWorkspace(application);
   stranger = await signIn(application, elsewhere.people.owner);
   nobody = await openBrowser(application);
@@ -68,6 +82,9 @@ const missing: Ids = {
   reviewed: missingId,
   revision: missingId,
   profile: missingId,
+  person: missingId,
+  invitation: missingId,
+  mail: missingId,
 };
 
 const document = applyPatch(pairDesign(), { tunnels: { 'tn-s0-s1-a': { b: { vni: 777 } } } });
@@ -82,7 +99,12 @@ interface Ids {
   readonly reviewed: string;
   readonly revision: string;
   readonly profile: string;
+  readonly person: string;
+  readonly invitation: string;
+  readonly mail: string;
 }
+
+const wrongProof = { code: '000000', password: 'wrong' };
 
 /** A request to each route that succeeds for whoever may make it. */
 const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) => Test } = {
@@ -102,6 +124,48 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
   'DELETE /api/session': (browser) => browser.delete('/api/session'),
   'PUT /api/account/password': (browser) =>
     browser.put('/api/account/password', { current: testPassword, next: testPassword }),
+  'POST /api/session/second-step': (browser) => browser.post('/api/session/second-step', { code: '000000' }),
+  'GET /api/account/second-step': (browser) => browser.get('/api/account/second-step'),
+  'POST /api/account/second-step': (browser) => browser.post('/api/account/second-step'),
+  'PUT /api/account/second-step': (browser) => browser.put('/api/account/second-step', wrongProof),
+  'POST /api/account/second-step/off': (browser) => browser.post('/api/account/second-step/off', wrongProof),
+  'POST /api/account/second-step/recovery-codes': (browser) =>
+    browser.post('/api/account/second-step/recovery-codes', wrongProof),
+  'GET /api/account/sessions': (browser) => browser.get('/api/account/sessions'),
+  'DELETE /api/account/sessions': (browser) => browser.delete('/api/account/sessions'),
+  'DELETE /api/account/sessions/:sessionId': (browser) =>
+    browser.delete(`/api/account/sessions/${missingId}`),
+  'GET /api/account/tokens': (browser) => browser.get('/api/account/tokens'),
+  'POST /api/account/tokens': (browser) =>
+    browser.post('/api/account/tokens', {
+      name: 'Nightly checks',
+      scope: 'read',
+      workspaceId: null,
+      expiresOn: new Date().toISOString().slice(0, 10),
+    }),
+  'DELETE /api/account/tokens/:tokenId': (browser) => browser.delete(`/api/account/tokens/${missingId}`),
+  'GET /api/account/deletion': (browser) => browser.get('/api/account/deletion'),
+  'POST /api/account/deletion': (browser) => browser.post('/api/account/deletion', { password: 'wrong' }),
+  'GET /api/first-owner': (browser) => browser.get('/api/first-owner'),
+  'POST /api/first-owner': (browser) =>
+    browser.post('/api/first-owner', {
+      code: '0000',
+      name: 'Mara Tadese',
+      email: 'm.tadese@ternwick.example',
+      password: testPassword,
+      workspaceName: 'Ternwick Net',
+    }),
+  'GET /api/workspaces': (browser) => browser.get('/api/workspaces'),
+  'POST /api/workspaces': (browser) => browser.post('/api/workspaces', { name: 'Another' }),
+  'GET /api/workspaces/:workspaceId': (browser, { workspace: id }) => browser.get(`/api/workspaces/${id}`),
+  'PATCH /api/workspaces/:workspaceId': (browser, { workspace: id }) =>
+    browser.patch(`/api/workspaces/${id}`, { name: 'Renamed' }),
+  'GET /api/workspaces/:workspaceId/people': (browser, { workspace: id }) =>
+    browser.get(`/api/workspaces/${id}/people`),
+  'PATCH /api/workspaces/:workspaceId/people/:personId': (browser, { workspace: id, person }) =>
+    browser.patch(`/api/workspaces/${id}/people/${person}`, { role: 'presales' }),
+  'DELETE /api/workspaces/:workspaceId/people/:personId': (browser, { workspace: id, person }) =>
+    browser.delete(`/api/workspaces/${id}/people/${person}`),
   'GET /api/workspaces/:workspaceId/engagements': (browser, { workspace: id }) =>
     browser.get(`/api/workspaces/${id}/engagements`),
   'POST /api/workspaces/:workspaceId/engagements': (browser, { workspace: id }) =>
@@ -119,6 +183,24 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
     browser.post(`/api/designs/${id}/patches`, {
       baseSequence: 0,
       edits: [{ editId: crypto.randomUUID(), patch: { meta: { documentType: 'Plan' } } }],
+    }),
+  'GET /api/designs/:designId/live': (browser, { design: id }) =>
+    browser
+      .get(`/api/designs/${id}/live?connectionId=${missingId}`)
+      // A stream never ends by itself.
+      .parse((answer, done) => {
+        const response = answer as unknown as IncomingMessage;
+        if (response.statusCode === 200) response.destroy();
+        let text = '';
+        response.on('data', (chunk) => (text += String(chunk)));
+        response.on('close', () =>
+          done(null, text === '' || response.statusCode === 200 ? {} : JSON.parse(text)),
+        );
+      }),
+  'PUT /api/designs/:designId/presence': (browser, { design: id }) =>
+    browser.put(`/api/designs/${id}/presence`, {
+      connectionId: crypto.randomUUID(),
+      place: { page: 'sheet', selection: [], view: null },
     }),
   'GET /api/designs/:designId/thumbnail': (browser, { design: id }) =>
     browser.get(`/api/designs/${id}/thumbnail?v=0&theme=paper`),
@@ -173,6 +255,35 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
     browser.delete(`/api/comments/${id}/resolution`),
   'POST /api/comments/:commentId/application': (browser, { comment: id }) =>
     browser.post(`/api/comments/${id}/application`, { editId: crypto.randomUUID() }),
+  'GET /api/account/mail': (browser) => browser.get('/api/account/mail'),
+  'PUT /api/account/mail': (browser) => browser.put('/api/account/mail', defaultMailSettings),
+  'POST /api/password-reset': (browser) =>
+    browser.post('/api/password-reset', { email: 'nobody@ternwick.example' }),
+  'POST /api/password-reset/link': (browser) => browser.post('/api/password-reset/link', { token: 'none' }),
+  'POST /api/password-reset/password': (browser) =>
+    browser.post('/api/password-reset/password', { token: 'none', password: testPassword }),
+  'POST /api/invitation': (browser) => browser.post('/api/invitation', { token: 'none' }),
+  'POST /api/invitation/acceptance': (browser) =>
+    browser.post('/api/invitation/acceptance', { token: 'none' }),
+  'GET /api/workspaces/:workspaceId/invitations': (browser, { workspace: id }) =>
+    browser.get(`/api/workspaces/${id}/invitations`),
+  'POST /api/workspaces/:workspaceId/invitations': (browser, { workspace: id }) =>
+    browser.post(`/api/workspaces/${id}/invitations`, {
+      email: `${crypto.randomUUID()}@ternwick.example`,
+      role: 'installer',
+    }),
+  'POST /api/workspaces/:workspaceId/invitations/:invitationId/mail': (
+    browser,
+    { workspace: id, invitation },
+  ) => browser.post(`/api/workspaces/${id}/invitations/${invitation}/mail`),
+  'DELETE /api/workspaces/:workspaceId/invitations/:invitationId': (browser, { workspace: id, invitation }) =>
+    browser.delete(`/api/workspaces/${id}/invitations/${invitation}`),
+  'GET /api/workspaces/:workspaceId/mailbox': (browser, { workspace: id }) =>
+    browser.get(`/api/workspaces/${id}/mailbox`),
+  'GET /api/workspaces/:workspaceId/mailbox/:mailId': (browser, { workspace: id, mail }) =>
+    browser.get(`/api/workspaces/${id}/mailbox/${mail}`),
+  'GET /api/workspaces/:workspaceId/mailbox/:mailId/page': (browser, { workspace: id, mail }) =>
+    browser.get(`/api/workspaces/${id}/mailbox/${mail}/page`),
   'GET /api/workspaces/:workspaceId/pools': (browser, { workspace: id }) =>
     browser.get(`/api/workspaces/${id}/pools`),
   'PUT /api/workspaces/:workspaceId/pools': (browser, { workspace: id }) =>
@@ -184,6 +295,16 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
   'PATCH /api/profiles/:profileId': (browser, { profile: id }) =>
     browser.patch(`/api/profiles/${id}`, { profile: { name: 'Renamed' } }),
 };
+
+/** What a catcher kept of the invitation that was just sent. */
+async function keepMail(): Promise<string> {
+  const { knex } = application.database;
+  const messageId = '<kept@mail.example>';
+  await knex('mails').where({ workspace_id: workspace.id }).update({ message_id: messageId });
+  const words = { from: '', to: '', subject: '', text: '', html: '', source: '' };
+  await keepCaughtMail(knex, { messageId, ...words });
+  return (await knex('caught_mails').first<{ mail_id: string }>('mail_id')).mail_id;
+}
 
 let reviewedSequence = 0;
 
@@ -252,6 +373,9 @@ const ids = (): Ids => ({
   reviewed: reviewedId,
   revision: revisionId,
   profile: profileId,
+  person: spareMemberId,
+  invitation: invitationId,
+  mail: mailId,
 });
 
 describe('the table of roles', () => {
@@ -337,6 +461,9 @@ describe.each(guarded)('%s', (route) => {
         reviewed: '../y',
         revision: '%00',
         profile: "'",
+        person: '\\',
+        invitation: '-',
+        mail: '$',
       }),
     ];
     const [first] = answers;
@@ -366,6 +493,29 @@ describe('routes that belong to no workspace', () => {
   });
 
   test.each([
+    ['GET /api/account/second-step', 200],
+    ['POST /api/account/second-step', 200],
+    ['PUT /api/account/second-step', 403],
+    ['POST /api/account/second-step/off', 403],
+    ['POST /api/account/second-step/recovery-codes', 403],
+    ['GET /api/account/sessions', 200],
+    ['DELETE /api/account/sessions', 204],
+    ['DELETE /api/account/sessions/:sessionId', 404],
+    ['GET /api/account/tokens', 200],
+    ['POST /api/account/tokens', 201],
+    ['DELETE /api/account/tokens/:tokenId', 404],
+    ['GET /api/account/deletion', 200],
+    ['POST /api/account/deletion', 403],
+    ['GET /api/account/mail', 200],
+    ['PUT /api/account/mail', 200],
+    ['GET /api/workspaces', 200],
+    ['POST /api/workspaces', 201],
+  ] as const)('%s answers whoever is signed in, and nobody else', async (route, status) => {
+    await requests[route](stranger, ids()).expect(status);
+    expect((await requests[route](nobody, ids()).expect(401)).body).toMatchObject({ code: 'not-signed-in' });
+  });
+
+  test.each([
     ['GET /api/health', 200],
     ['POST /api/engine/check', 422],
     ['POST /api/engine/wire', 200],
@@ -375,7 +525,15 @@ describe('routes that belong to no workspace', () => {
     ['POST /api/engine/trace', 400],
     ['GET /api/session', 200],
     ['POST /api/session', 401],
+    ['POST /api/session/second-step', 409],
+    ['GET /api/first-owner', 200],
+    ['POST /api/first-owner', 409],
     ['POST /api/session/demo', 404],
+    ['POST /api/password-reset', 202],
+    ['POST /api/password-reset/link', 404],
+    ['POST /api/password-reset/password', 404],
+    ['POST /api/invitation', 404],
+    ['POST /api/invitation/acceptance', 404],
   ] as const)('%s answers everybody', async (route, status) => {
     await requests[route](nobody, ids()).expect(status);
   });
