@@ -31,6 +31,8 @@ interface DeskState {
   readonly listingKeys: boolean;
   /** The note whose words are typed on the sheet. */
   readonly editedNote: string | undefined;
+  /** It was put down just now: who gives up its words gives it up. */
+  readonly isNewNote: boolean;
   /** A layout is being worked out; aborting gives it up. */
   readonly tidying: AbortController | undefined;
   /** The inspector stands beside the sheet; a selection opens it, its button shuts it. */
@@ -48,6 +50,7 @@ const atRest: DeskState = {
   searching: false,
   listingKeys: false,
   editedNote: undefined,
+  isNewNote: false,
   tidying: undefined,
   inspecting: false,
   fitted: true,
@@ -67,7 +70,8 @@ export const setSearching = (searching: boolean): void => useDesk.setState({ sea
 export const setInspecting = (inspecting: boolean): void => useDesk.setState({ inspecting });
 export const setFitted = (fitted: boolean): void => useDesk.setState({ fitted });
 export const setListingKeys = (listingKeys: boolean): void => useDesk.setState({ listingKeys });
-export const editNote = (editedNote: string | undefined): void => useDesk.setState({ editedNote });
+export const editNote = (editedNote: string | undefined, isNewNote = false): void =>
+  useDesk.setState({ editedNote, isNewNote });
 export const setTidying = (tidying: AbortController | undefined): void => useDesk.setState({ tidying });
 /** Forgets everything, as when another design is opened. */
 export const clearDesk = (): void => {

@@ -1,16 +1,13 @@
 import type { Point, Rect, SheetGeometry } from '../drawing/geometry.ts';
 import { plateSizes, type Size } from '../drawing/parts/sizes.ts';
-import { route } from '../drawing/routing/route.ts';
-import type { Design, ElementRef } from '../engine/model/design.ts';
+import type { Design } from '../engine/model/design.ts';
 import type { DeviceKind } from '../engine/model/devices.ts';
 import { isGateway } from '../engine/model/devices.ts';
-import { applyPatch, joinPatches } from '../engine/model/merge-patch.ts';
 import type { NumberingContext } from '../engine/numbering/numbering-context.ts';
 import type { NewId, Operation } from '../workspace/operations/operation.ts';
 import { refused } from '../workspace/operations/operation.ts';
 import {
   newSiteSize,
-  pinNote,
   placeDevice,
   placeEndpoint,
   placeNote,
@@ -96,20 +93,6 @@ export const placePart = (
   if (device === undefined)
     return refused('A loopback endpoint docks on a device: drop it on a firewall, an HA pair or a router.');
   return placeEndpoint(design, device, newId, context);
-};
-
-/**
- * A note pinned to an element, at the free place beside it that the drawing finds now: it goes along when the element moves
- * and stays when other things do.
- */
-export const pinNoteBeside = (design: Design, about: ElementRef, newId: NewId): Operation => {
-  const pinned = pinNote(design, about, newId);
-  const id = pinned.ok ? pinned.created?.[0]?.id : undefined;
-  if (!pinned.ok || id === undefined) return pinned;
-  const at = route(applyPatch(design, pinned.patch)).notes.find((note) => note.id === id)?.at;
-  if (at === undefined) return pinned;
-  const place = { layout: { notes: { [id]: { x: Math.round(at.x), y: Math.round(at.y) } } } };
-  return { ...pinned, patch: joinPatches(design, [pinned.patch, place]) };
 };
 
 /**

@@ -27,7 +27,8 @@ import { edgeTypes } from './edges/part-edges.tsx';
 import { dockingSide } from './flow-changes-to-patch.ts';
 import { useDrawn } from './geometry-context.tsx';
 import { nodeTypes } from './nodes/part-nodes.tsx';
-import { endAt, isJoining, pinNoteBeside, placePart, type TrayPart } from './place-part.ts';
+import { pinNoteBeside } from './place-note.ts';
+import { endAt, isJoining, placePart, type TrayPart } from './place-part.ts';
 import { PullLine } from './pull-line.tsx';
 import { readPartDrag } from './parts-tray/part-drag.ts';
 import { portNear } from './port-near.ts';
@@ -47,9 +48,9 @@ interface SheetCanvasProps {
   readonly onAcceptGhost: (id: string) => void;
   /** A balloon was pressed; its number is the finding's. */
   readonly onPickBalloon: (number: number) => void;
-}
   /** The slip of an element's threads was pressed. */
   readonly onPickFlag?: (ref: ElementRef) => void;
+}
 
 // Below this many parts drawing them all is cheaper than deciding which are in view.
 const cullFrom = 400;
@@ -262,14 +263,14 @@ export function SheetCanvas({
     }
     // A note that is put down on something is pinned to it.
     const about = part === 'note' && on instanceof Element ? elementAt(on) : undefined;
-    const pinned = about === undefined ? undefined : pinNoteBeside(design, about, newEntryId);
+    const pinned = about === undefined ? undefined : pinNoteBeside(design, settled, about, newEntryId);
     const done = perform(
       open,
       pinned?.ok === true ? pinned : placePart(design, settled, part, at, newEntryId, numbering),
     );
     if (!done.ok) return say(done.why);
     startPlacing(undefined);
-    if (part === 'note') editNote(open.store.getState().selection[0]?.id);
+    if (part === 'note') editNote(open.store.getState().selection[0]?.id, true);
   };
   const onClickCapture = (event: MouseEvent): void => {
     if (placing === undefined || !editable) return;
@@ -290,13 +291,14 @@ export function SheetCanvas({
     const { pointerType } = event.nativeEvent as PointerEvent;
     if ((event.button !== 2 && pointerType !== 'touch') || placing !== undefined) return;
     const ref = elementAt(event.target as Element);
-    if (ref !== undefined && !selection.some((one) => elementKey(one) === elementKey(ref)))
-      open.select([ref]);
+    // The menu first: while it is open the sheet stays where it is, whatever the selection opens beside it.
     openMenu({
       at: { x: event.clientX, y: event.clientY },
       of: 'all',
       ...(ref === undefined ? {} : { ref }),
     });
+    if (ref !== undefined && !selection.some((one) => elementKey(one) === elementKey(ref)))
+      open.select([ref]);
   };
   /** Opens what there is to open: a site, a note's words, the inspector. */
   const onDoubleClick = (event: MouseEvent): void => {

@@ -90,7 +90,7 @@ function OpenSheetMenu({ menu, commands }: { readonly menu: OpenedMenu; readonly
       const done = actions.run(
         placePart(open.store.getState().document, settled, part, at, newEntryId, numbering),
       );
-      if (done && part === 'note') editNote(open.store.getState().selection[0]?.id);
+      if (done && part === 'note') editNote(open.store.getState().selection[0]?.id, true);
     };
     const name = site === undefined ? undefined : design.sites[site]?.name;
     return [

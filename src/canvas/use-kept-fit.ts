@@ -8,13 +8,15 @@ import type { View } from './use-view.ts';
 export const useKeptFit = (sheet: SheetFrame, view: View): void => {
   const width = useStore((state) => state.width);
   const height = useStore((state) => state.height);
+  // What a menu was opened on stays beneath it.
+  const hasMenu = useDesk((state) => state.menu !== undefined);
   const latest = useRef({ sheet, view });
   const fittedBefore = useRef(false);
   useEffect(() => {
     latest.current = { sheet, view };
   });
   useEffect(() => {
-    if (width === 0 || height === 0 || !useDesk.getState().fitted) return;
+    if (width === 0 || height === 0 || hasMenu || !useDesk.getState().fitted) return;
     const fit = (): void => {
       if (!useDesk.getState().fitted) return;
       latest.current.view.fit(latest.current.sheet, fittedBefore.current);
@@ -28,5 +30,5 @@ export const useKeptFit = (sheet: SheetFrame, view: View): void => {
     if (!held) return fit();
     window.addEventListener('pointerup', fit, { once: true });
     return () => window.removeEventListener('pointerup', fit);
-  }, [width, height, sheet.width, sheet.height]);
+  }, [width, height, sheet.width, sheet.height, hasMenu]);
 };

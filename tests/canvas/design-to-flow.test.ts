@@ -10,10 +10,12 @@ import {
   snapDrag,
   standingOf,
 } from '../../src/canvas/flow-changes-to-patch.ts';
-import { endAt, freePlace, pinNoteBeside, placePart } from '../../src/canvas/place-part.ts';
+import { pinNoteBeside } from '../../src/canvas/place-note.ts';
+import { endAt, freePlace, placePart } from '../../src/canvas/place-part.ts';
 import { refOfKey } from '../../src/canvas/ref-at.ts';
 import { elementKey } from '../../src/drawing/decorations.ts';
 import { drawingFacts } from '../../src/drawing/parts/drawing-facts.ts';
+import { anchorOf } from '../../src/drawing/routing/anchors.ts';
 import { route } from '../../src/drawing/routing/route.ts';
 import { tidy } from '../../src/drawing/tidy/tidy.ts';
 import { tunnelSegments } from '../../src/engine/flood/tunnel-segments.ts';
@@ -225,13 +227,18 @@ describe('putting parts down', () => {
 });
 
 it('a note that is pinned to an element stands beside it, clear of all devices, in one step', () => {
-  const operation = pinNoteBeside(design, { collection: 'devices', id: 'fw-s2' }, () => 'note-1');
+  const operation = pinNoteBeside(design, geometry, { collection: 'devices', id: 'fw-s2' }, () => 'note-1');
   const after = applyPatch(design, operation.ok ? operation.patch : {});
   expect(parseDesign(after)).toMatchObject({ ok: true });
   expect(after.notes['note-1']!.target).toEqual({ collection: 'devices', id: 'fw-s2' });
   const drawn = route(after);
   const note = drawn.notes.find(({ id }) => id === 'note-1')!.rect;
-  expect(after.layout.notes!['note-1']).toEqual({ x: Math.round(note.x), y: Math.round(note.y) });
+  expect(after.layout.notes!['note-1']).toEqual({ x: note.x, y: note.y });
+  // Near enough that its leader is seen at a glance.
+  const anchor = anchorOf(drawn, { collection: 'devices', id: 'fw-s2' })!;
+  const dx = Math.max(note.x - anchor.x, anchor.x - note.x - note.width, 0);
+  const dy = Math.max(note.y - anchor.y, anchor.y - note.y - note.height, 0);
+  expect(Math.hypot(dx, dy)).toBeLessThan(120);
   for (const { rect } of drawn.devices)
     expect(
       note.x < rect.x + rect.width &&

@@ -58,6 +58,23 @@ describe('arranging a sheet', () => {
     await atRest(page);
     const after = await places(page);
 
+    // A right press opens its menu where it was, on what stays there; the inspector comes when the menu is gone.
+    const inspector = page.getByRole('complementary', { name: 'Inspector' });
+    await page.keyboard.press('Escape');
+    await page.getByRole('button', { name: 'Inspector', exact: true }).click();
+    await inspector.waitFor({ state: 'hidden' });
+    await page.getByRole('button', { name: 'Fit', exact: true }).click();
+    await atRest(page);
+    const pressed = await middleOf(cam!);
+    await page.mouse.click(pressed.x, pressed.y, { button: 'right' });
+    const menu = (await page.getByRole('menu').boundingBox())!;
+    expect(Math.abs(menu.x - pressed.x)).toBeLessThan(12);
+    await atRest(page);
+    expect(await middleOf(cam!)).toEqual(pressed);
+    await page.keyboard.press('Escape');
+    await inspector.waitFor();
+    await atRest(page);
+
     // A locked one stays where it is, whatever tries to move it.
     await cam!.click({ button: 'right' });
     expect(await seriousIn(page)).toEqual([]);
@@ -171,6 +188,15 @@ describe('arranging a sheet', () => {
       text: 'Short rails only',
       target: { collection: 'devices', id: 'fw-gul' },
     });
+
+    // Who gives up the words of a new note has none.
+    await page.keyboard.press('Shift+N');
+    await text.waitFor();
+    await page.keyboard.press('Escape');
+    await text.waitFor({ state: 'detached' });
+    expect(Object.values((await storedDesignOnceSaved(page))['notes']!)).toHaveLength(
+      Object.keys(notes).length,
+    );
     await page.context().close();
   });
 });

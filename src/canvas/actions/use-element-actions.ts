@@ -19,7 +19,8 @@ import { askToJoin, editNote } from '../desk-state.ts';
 import { standingOf } from '../flow-changes-to-patch.ts';
 import { focusInspector } from '../focus-inspector.ts';
 import { useDrawn } from '../geometry-context.tsx';
-import { freePlace, pinNoteBeside, placePart, type PlacedPart } from '../place-part.ts';
+import { pinNoteBeside } from '../place-note.ts';
+import { freePlace, placePart, type PlacedPart } from '../place-part.ts';
 import { useTidy } from '../use-tidy.ts';
 import { useView } from '../use-view.ts';
 import { useViewChoice } from '../use-view-choice.ts';
@@ -179,11 +180,11 @@ export const useElementActions = (around: Surroundings = {}): DeskActions => {
       addDevice: (kind, site) => place(kind, site),
       addEndpoint: (device) => make(placeEndpoint(now(), device, newEntryId, numbering)),
       addNote: (about) => {
-        if (!run(pinNoteBeside(now(), about, newEntryId))) return;
+        if (!run(pinNoteBeside(now(), latest.current.settled, about, newEntryId))) return;
         const { onMade } = latest.current.around;
         if (onMade !== undefined) return onMade();
         const [note] = open.store.getState().selection;
-        if (note !== undefined) editNote(note.id);
+        if (note !== undefined) editNote(note.id, true);
       },
     };
   }, [open, numbering]);

@@ -1,7 +1,8 @@
 import { useStore } from '@xyflow/react';
 import { useId, useRef, useState, type KeyboardEvent } from 'react';
 import { FieldError } from '../../components/cell.tsx';
-import { editNote } from '../desk-state.ts';
+import { editNote, useDesk } from '../desk-state.ts';
+import { useOpenDesign } from '../../workspace/open-design-context.tsx';
 import { useField } from '../inspector/use-field.ts';
 
 const takeFocus = (area: HTMLTextAreaElement | null): void => {
@@ -10,7 +11,7 @@ const takeFocus = (area: HTMLTextAreaElement | null): void => {
   area.select();
 };
 
-/** A note's words, typed where they stand: Enter or leaving them keeps the new ones, Escape the old ones. */
+/** A note's words, typed where they stand: Enter or leaving them keeps the new ones, Escape the old ones or no note. */
 export function NoteEditor({
   note,
   widthPx,
@@ -20,6 +21,8 @@ export function NoteEditor({
   readonly widthPx: number;
   readonly heightPx: number;
 }) {
+  const open = useOpenDesign();
+  const isNew = useDesk((state) => state.isNewNote);
   const { value = '', refusal, commit } = useField<string>(['notes', note, 'text']);
   const [draft, setDraft] = useState(value);
   const [problem, setProblem] = useState<string>();
@@ -48,7 +51,10 @@ export function NoteEditor({
       keep(node);
     } else if (event.key === 'Escape') {
       event.preventDefault();
-      end(node);
+      if (!isNew) return end(node);
+      end(document.getElementById('main'));
+      // Its making and its going are one: nothing is left to be undone.
+      open.undo();
     }
   };
   return (
@@ -72,7 +78,9 @@ export function NoteEditor({
         onKeyDown={onKeyDown}
       />
       {problem === undefined ? (
-        <p>Enter keeps it, Shift Enter begins a line, Esc leaves it as it was.</p>
+        <p>
+          Enter keeps it, Shift Enter begins a line, Esc {isNew ? 'takes it away' : 'leaves it as it was'}.
+        </p>
       ) : (
         <FieldError id={problemId}>{problem}</FieldError>
       )}

@@ -180,7 +180,7 @@ function PartButton({ part, name }: { readonly part: TrayPart; readonly name: st
     if (!done.ok) showToast({ tone: 'failed', text: done.why });
     else {
       view.showPoint(at);
-      if (part === 'note') editNote(open.store.getState().selection[0]?.id);
+      if (part === 'note') editNote(open.store.getState().selection[0]?.id, true);
     }
   };
 
