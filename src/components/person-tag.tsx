@@ -2,7 +2,7 @@ import { classNames } from '../lib/class-names.ts';
 
 const looks = {
   here: 'border-strip bg-strip text-strip-ink',
-  editing: 'border-blue bg-blue-wash text-blue',
+  other: 'border-blue bg-blue-wash text-blue',
   away: 'border-dashed border-ink-3 text-ink-3',
 } as const;
 
@@ -16,7 +16,7 @@ interface PersonTagProps {
 
 /** Somebody's initials. The name and what they are doing are said to screen readers and shown on hover. */
 export function PersonTag({ initials, name, presence = 'here' }: PersonTagProps) {
-  const words = presence === 'here' ? name : `${name}, ${presence}`;
+  const words = presence !== 'away' ? name : `${name}, ${presence}`;
   return (
     <span
       title={words}

@@ -66,7 +66,7 @@ export function ToastRegion() {
           )}
         >
           {toast.tone === 'failed' && <SeverityShape severity="blocking" />}
-          {toast.person !== undefined && <PersonTag {...toast.person} presence="editing" />}
+          {toast.person !== undefined && <PersonTag {...toast.person} presence="other" />}
           <Primitive.Description className="min-w-0 flex-1">{toast.text}</Primitive.Description>
           {toast.action !== undefined && (
             <Primitive.Action asChild altText={toast.action.label}>

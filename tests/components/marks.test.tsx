@@ -46,8 +46,8 @@ test('a stamp can name the revision it is on', () => {
 });
 
 test('initials are read as the name, with what the person is doing', () => {
-  const { container } = render(<PersonTag initials="NO" name="Noor Okafor" presence="editing" />);
-  expect(container.querySelector('.sr-only')).toHaveTextContent('Noor Okafor, editing');
+  const { container } = render(<PersonTag initials="NO" name="Noor Okafor" presence="away" />);
+  expect(container.querySelector('.sr-only')).toHaveTextContent('Noor Okafor, away');
   expect(screen.getByText('NO')).toHaveAttribute('aria-hidden', 'true');
 });
 

@@ -1,12 +1,8 @@
-import type { ChildProcess } from 'node:child_process';
-import { spawn } from 'node:child_process';
 import { once } from 'node:events';
 import { connect } from 'node:net';
-import { join } from 'node:path';
 import { setTimeout as delay } from 'node:timers/promises';
 import supertest from 'supertest';
 import { afterAll, afterEach, beforeAll, describe, expect, test } from 'vitest';
-import { freeLoopbackPort } from '../../server/bootstrap/free-port.mjs';
 import { patchListSchema, savedPatchesSchema } from '#contract/designs.ts';
 import { openDatabase } from '../../server/db/open-database.ts';
 import {
@@ -16,12 +12,13 @@ import {
   testPassword,
   tokenOf,
 } from '../support/test-application.ts';
+import type { ServerProcess } from '../support/server-process.ts';
+import { startServerProcess, untilHealthy } from '../support/server-process.ts';
 import { createTestDatabase } from '../support/test-database.ts';
 import type { TestDatabase } from '../support/test-database.ts';
 
-const projectFolder = join(import.meta.dirname, '..', '..');
 let database: TestDatabase;
-const started: Server[] = [];
+const started: ServerProcess[] = [];
 
 beforeAll(async () => {
   database = await createTestDatabase();
@@ -31,42 +28,11 @@ afterEach(() => {
   for (const { child } of started.splice(0)) child.kill('SIGKILL');
 });
 
-interface Server {
-  readonly child: ChildProcess;
-  readonly output: () => string;
-  readonly url: string;
-}
-
-async function start(environment: Record<string, string> = {}): Promise<Server> {
-  const port = await freeLoopbackPort();
-  const child = spawn(process.execPath, ['--import', 'tsx', 'server/main.ts'], {
-    cwd: projectFolder,
-    env: {
-      PATH: process.env['PATH'],
-      DATABASE_URL: database.url,
-      PORT: String(port),
-      SESSION_SECRET: 'a secret of more than thirty-two characters',
-      ...environment,
-    },
-  });
-  let output = '';
-  for (const stream of [child.stdout, child.stderr]) stream.on('data', (chunk) => (output += String(chunk)));
-  const server = { child, output: () => output, url: `http://127.0.0.1:${port}` };
+const start = async (environment: Record<string, string> = {}): Promise<ServerProcess> => {
+  const server = await startServerProcess(database.url, environment);
   started.push(server);
   return server;
-}
-
-async function untilHealthy({ url, child, output }: Server): Promise<void> {
-  for (;;) {
-    if (child.exitCode !== null) throw new Error(output());
-    const status = await fetch(`${url}/api/health`).then(
-      (response) => response.status,
-      () => 0,
-    );
-    if (status === 200) return;
-    await delay(50);
-  }
-}
+};
 
 const lines = (output: string): readonly { msg: string }[] =>
   output

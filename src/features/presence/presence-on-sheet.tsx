@@ -63,10 +63,12 @@ function OthersMarks() {
           style={{
             transform: `translate(${at.x}px, ${at.y}px) scale(${1 / zoom}) translate(4px, -26px)`,
             transformOrigin: '0 0',
+            // Over every part, of which the last drawn has no higher place.
+            zIndex: 10_000,
           }}
         >
           {people.map(({ initials, name }) => (
-            <PersonTag key={name} initials={initials} name={name} presence="editing" />
+            <PersonTag key={name} initials={initials} name={name} presence="other" />
           ))}
         </div>
       ))}

@@ -75,7 +75,7 @@ function PersonMenu({ person, isFollowed }: { readonly person: PersonHere; reado
       ]}
       trigger={
         <button type="button" aria-label={`${name}, ${where}`} className="inline-flex">
-          <PersonTag initials={initials} name={name} presence="editing" />
+          <PersonTag initials={initials} name={name} presence="other" />
         </button>
       }
     />
