@@ -150,8 +150,12 @@ export interface TestBrowser {
 }
 
 /** A browser that nobody is signed in with. */
-export async function openBrowser({ server }: TestApplication): Promise<TestBrowser> {
-  const agent = supertest.agent(server);
+export function openBrowser({ server }: TestApplication): Promise<TestBrowser> {
+  return browserOf(supertest.agent(server));
+}
+
+/** A browser at any address. */
+export async function browserOf(agent: ReturnType<typeof supertest.agent>): Promise<TestBrowser> {
   const change = (method: 'post' | 'put' | 'patch' | 'delete', path: string, body?: unknown) => {
     const request = agent[method](path).set('X-CSRF-Token', browser.csrfToken);
     return body === undefined ? request : request.send(body as object);
