@@ -3,12 +3,14 @@ import { Suspense, useMemo } from 'react';
 import { Outlet } from 'react-router-dom';
 import { Button } from '../components/button.tsx';
 import { ErrorNotice } from '../components/notice.tsx';
+import { showToast } from '../components/toast.tsx';
 import { openDesignSchema, type OpenDesign as OpenDesignAnswer } from '../contract/designs.ts';
 import type { Design } from '../engine/model/design.ts';
 import { parseDesign } from '../engine/model/parse-design.ts';
 import { DesignBar } from '../features/design-bar/design-bar.tsx';
 import { useTravelKeys } from '../features/design-bar/use-travel-keys.ts';
 import { PresentPeople } from '../features/presence/present-people.tsx';
+import { toldWords } from '../features/presence/told-words.ts';
 import { SuggestingBar } from '../features/review/suggesting-bar.tsx';
 import { StretchDialogs } from '../features/stretch/stretch-dialogs.tsx';
 import { callApi } from '../lib/api-client.ts';
@@ -103,6 +105,10 @@ function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonl
       storage: browserEditStorage(localStorage, id, Date.now),
       newEditId: () => crypto.randomUUID(),
       now: Date.now,
+      tell: (told) => {
+        const text = toldWords(told);
+        if (text !== undefined) showToast({ tone: 'other', text });
+      },
     });
   return (
     <DesignPlaceProvider place={place}>

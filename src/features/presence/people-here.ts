@@ -33,8 +33,7 @@ const pageNames: Readonly<Record<string, string>> = {
 /** Where somebody is, as in 'on the sheet, at Gullhaven firewall'. */
 export const whereWords = ({ page, selection }: PlaceInDesign, design: Design): string => {
   const at = `on ${pageNames[page] ?? 'another page'}`;
-  const [first] = selection.filter(({ collection, id }) => Object.hasOwn(design[collection], id));
+  const [first, ...more] = selection.filter(({ collection, id }) => Object.hasOwn(design[collection], id));
   if (first === undefined) return at;
-  const more = selection.length - 1;
-  return `${at}, at ${nameOf(design, first)}${more > 0 ? ` and ${more} more` : ''}`;
+  return `${at}, at ${nameOf(design, first)}${more.length > 0 ? ` and ${more.length} more` : ''}`;
 };
