@@ -1,6 +1,7 @@
 import { create } from 'zustand';
 import type { ElementRef } from '../engine/model/design.ts';
 import type { ConnectEnd } from './connect-ends.ts';
+import type { PageCommands } from './named-command.ts';
 import type { TrayPart } from './place-part.ts';
 
 /** What a join dialog starts from; what is missing is chosen in it. */
@@ -27,6 +28,7 @@ interface DeskState {
   readonly join: JoinRequest | undefined;
   readonly menu: OpenedMenu | undefined;
   readonly searching: boolean;
+  readonly offered: PageCommands | undefined;
   /** The list of all keys is open. */
   readonly listingKeys: boolean;
   /** The note whose words are typed on the sheet. */
@@ -48,6 +50,7 @@ const atRest: DeskState = {
   join: undefined,
   menu: undefined,
   searching: false,
+  offered: undefined,
   listingKeys: false,
   editedNote: undefined,
   isNewNote: false,
@@ -67,6 +70,7 @@ export const askToJoin = (join: JoinRequest | undefined): void =>
   useDesk.setState({ join, placing: undefined, firstEnd: undefined });
 export const openMenu = (menu: OpenedMenu | undefined): void => useDesk.setState({ menu });
 export const setSearching = (searching: boolean): void => useDesk.setState({ searching });
+export const offerCommands = (offered: PageCommands | undefined): void => useDesk.setState({ offered });
 export const setInspecting = (inspecting: boolean): void => useDesk.setState({ inspecting });
 export const setFitted = (fitted: boolean): void => useDesk.setState({ fitted });
 export const setListingKeys = (listingKeys: boolean): void => useDesk.setState({ listingKeys });

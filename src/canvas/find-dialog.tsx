@@ -2,29 +2,17 @@ import { useEffect, useMemo, useRef, useState, type KeyboardEvent } from 'react'
 import { Button } from '../components/button.tsx';
 import { Dialog } from '../components/dialog.tsx';
 import { classNames } from '../lib/class-names.ts';
-import { anchorOf } from '../drawing/routing/anchors.ts';
 import type { Design, ElementRef } from '../engine/model/design.ts';
-import { useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
+import { useOpenState } from '../workspace/open-design-context.tsx';
 import { kindOf, nameOf } from '../workspace/operations/name-of.ts';
-import { isCommand, isPossible, keyWords, shortcutIds, shortcuts } from './commands/shortcuts.ts';
-import type { Commands } from './commands/use-commands.ts';
 import { setListingKeys, setSearching, useDesk } from './desk-state.ts';
-import { useDrawn } from './geometry-context.tsx';
-import { useView } from './use-view.ts';
+import type { NamedCommand } from './named-command.ts';
 
 interface FoundPart {
   readonly ref: ElementRef;
   readonly name: string;
   readonly kind: string;
   readonly detail: string;
-}
-/** Something that can be done, by its name. */
-export interface NamedCommand {
-  readonly name: string;
-  /** What it belongs to, in one word. */
-  readonly kind: string;
-  readonly detail: string;
-  readonly run: () => void;
 }
 type Found = FoundPart | NamedCommand;
 
@@ -109,43 +97,28 @@ export const findParts = (design: Design, text: string): readonly FoundPart[] =>
 };
 
 interface FindDialogProps {
-  readonly commands: Commands;
-  /** What the page adds to the sheet's own commands. */
-  readonly more: readonly NamedCommand[];
+  /** Where one gets from here: pages, other designs. */
+  readonly destinations: readonly NamedCommand[];
+  /** Shows an element where the page itself has no place for it. */
+  readonly onGoTo: (ref: ElementRef) => void;
 }
 
-/** Find something on the sheet and jump there, or do something by its name. */
+/** Find an element and go there, go to another page or design, or do something by its name. */
 export function FindDialog(props: FindDialogProps) {
   const searching = useDesk((state) => state.searching);
   return searching ? <OpenFindDialog {...props} /> : null;
 }
 
 const focusAtOnce = (input: HTMLInputElement | null): void => input?.focus();
+const noCommands: readonly NamedCommand[] = [];
 
-function OpenFindDialog({ commands, more }: FindDialogProps) {
-  const open = useOpenDesign();
+function OpenFindDialog({ destinations, onGoTo }: FindDialogProps) {
   const design = useOpenState((state) => state.document);
-  const editable = useOpenState((state) => state.editable);
-  const anySelected = useOpenState((state) => state.selection.length > 0);
-  const { geometry } = useDrawn();
-  const view = useView();
+  const offered = useDesk((state) => state.offered);
+  const commands = offered?.commands ?? noCommands;
   const [text, setText] = useState('');
   const [at, setAt] = useState(0);
-  const possible = useMemo(
-    (): readonly NamedCommand[] => [
-      ...shortcutIds
-        .filter(isCommand)
-        .filter((id) => id !== 'find' && id !== 'menu' && isPossible(id, { editable, anySelected }))
-        .map((id) => ({
-          name: shortcuts[id].words,
-          kind: shortcuts[id].group,
-          detail: keyWords(id),
-          run: commands.run[id],
-        })),
-      ...more,
-    ],
-    [commands, more, editable, anySelected],
-  );
+  const possible = useMemo(() => [...commands, ...destinations], [commands, destinations]);
   const found = useMemo((): readonly Found[] => {
     const wanted = text.trim().toLowerCase();
     const parts = findParts(design, text);
@@ -170,9 +143,7 @@ function OpenFindDialog({ commands, more }: FindDialogProps) {
     if (one === undefined) return;
     if ('run' in one) return doAfter(one.run);
     setSearching(false);
-    open.select([one.ref]);
-    const anchor = anchorOf(geometry, one.ref, design);
-    if (anchor !== undefined) view.showPoint(anchor);
+    (offered?.goTo ?? onGoTo)(one.ref);
   };
   const onKeyDown = (event: KeyboardEvent): void => {
     const step = event.key === 'ArrowDown' ? 1 : event.key === 'ArrowUp' ? -1 : 0;
@@ -197,8 +168,8 @@ function OpenFindDialog({ commands, more }: FindDialogProps) {
         aria-expanded={found.length > 0}
         aria-controls="find-results"
         aria-activedescendant={found.length > 0 ? `find-${chosen}` : undefined}
-        aria-label="Name, address, VNI, VLAN or command"
-        placeholder="Name, address, VNI, VLAN or command"
+        aria-label="Name, address, VNI, VLAN, page or command"
+        placeholder="Name, address, VNI, VLAN, page or command"
         autoComplete="off"
         spellCheck={false}
         ref={focusAtOnce}
@@ -221,7 +192,9 @@ function OpenFindDialog({ commands, more }: FindDialogProps) {
           // The text field keeps the focus and takes the keys, as a combobox's does.
           // eslint-disable-next-line jsx-a11y/click-events-have-key-events
           <li
-            key={'run' in one ? `command ${one.name}` : `${one.ref.collection} ${one.ref.id}`}
+            key={
+              'run' in one ? `${one.kind} ${one.name} ${one.detail}` : `${one.ref.collection} ${one.ref.id}`
+            }
             id={`find-${i}`}
             role="option"
             aria-selected={i === chosen}
@@ -240,7 +213,7 @@ function OpenFindDialog({ commands, more }: FindDialogProps) {
       </ul>
       {found.length === 0 && (
         <p className="mt-8 text-base text-ink-2">
-          Nothing on this sheet is called or numbered “{text.trim()}”, and no command.
+          Nothing in this design is called or numbered “{text.trim()}”, and no page, design or command.
         </p>
       )}
     </Dialog>

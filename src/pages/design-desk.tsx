@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { Suspense, useMemo } from 'react';
+import { Suspense, useEffect, useMemo } from 'react';
 import { Outlet } from 'react-router-dom';
 import { Button } from '../components/button.tsx';
 import { ErrorNotice } from '../components/notice.tsx';
@@ -12,6 +12,9 @@ import { useTravelKeys } from '../features/design-bar/use-travel-keys.ts';
 import { PresentPeople } from '../features/presence/present-people.tsx';
 import { toldWords } from '../features/presence/told-words.ts';
 import { SuggestingBar } from '../features/review/suggesting-bar.tsx';
+import { ReleaseMenu } from '../features/revisions/release-menu.tsx';
+import { StateBar } from '../features/revisions/state-bar.tsx';
+import { useRelease } from '../features/revisions/use-release.tsx';
 import { StretchDialogs } from '../features/stretch/stretch-dialogs.tsx';
 import { callApi } from '../lib/api-client.ts';
 import { asApiError } from '../lib/api-error.ts';
@@ -20,10 +23,11 @@ import { designServer } from '../workspace/design-server.ts';
 import { browserEditStorage } from '../workspace/edit-storage.ts';
 import { useLiveDesign } from '../workspace/live/use-live-design.ts';
 import { openDesign, type OpenDesign } from '../workspace/open-design.ts';
-import { OpenDesignProvider } from '../workspace/open-design-context.tsx';
+import { OpenDesignProvider, useOpenDesign } from '../workspace/open-design-context.tsx';
 import { StoredChecks } from '../workspace/stored-checks.tsx';
 import { SuggestingProvider } from '../workspace/suggesting.tsx';
 import { WorkspaceProfilesProvider } from '../workspace/workspace-profiles.tsx';
+import { FindAnywhere } from './find-anywhere.tsx';
 
 const phone = '(max-width: 767px)';
 
@@ -99,8 +103,7 @@ function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonl
     openDesign({
       document,
       sequence: answer.sequence,
-      // A phone shows the sheet; to draw on it takes a larger screen.
-      editable: answer.actions.includes('design.edit') && !window.matchMedia(phone).matches,
+      editable: isEditable(answer),
       server: designServer(id),
       storage: browserEditStorage(localStorage, id, Date.now),
       newEditId: () => crypto.randomUUID(),
@@ -114,15 +117,12 @@ function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonl
     <DesignPlaceProvider place={place}>
       <OpenDesignProvider open={open}>
         <Live designId={id} />
+        <FollowAnswer answer={answer} />
         <SuggestingProvider>
           <StoredChecks>
-            <DesignBar
-              engagementName={answer.engagementName}
-              workspaceId={answer.workspaceId}
-              summary={answer.summary}
-              people={<PresentPeople designId={id} />}
-            />
+            <ReleasedBars answer={answer} />
             <TravelKeys />
+            <FindAnywhere />
             <SuggestingBar />
             <WorkspaceProfilesProvider>
               <Suspense fallback={<Opening />}>
@@ -134,6 +134,41 @@ function Desk({ answer, document }: { readonly answer: OpenDesignAnswer; readonl
         </SuggestingProvider>
       </OpenDesignProvider>
     </DesignPlaceProvider>
+  );
+}
+
+// A phone shows the sheet; to draw on it takes a larger screen.
+const isEditable = ({ actions }: OpenDesignAnswer): boolean =>
+  actions.includes('design.edit') && !window.matchMedia(phone).matches;
+
+/** The state of a design decides who may edit it: the open design follows what the server says of it. */
+function FollowAnswer({ answer }: { readonly answer: OpenDesignAnswer }) {
+  const open = useOpenDesign();
+  useEffect(() => {
+    open.setEditable(isEditable(answer));
+    if (open.store.getState().sequence < answer.sequence) void open.catchUp();
+  }, [open, answer]);
+  return null;
+}
+
+function ReleasedBars({
+  answer: { summary, engagementName, workspaceId },
+}: {
+  readonly answer: OpenDesignAnswer;
+}) {
+  const release = useRelease(summary);
+  return (
+    <>
+      <DesignBar
+        engagementName={engagementName}
+        workspaceId={workspaceId}
+        summary={summary}
+        people={<PresentPeople designId={summary.id} />}
+        release={summary.state === 'draft' && <ReleaseMenu commands={release.commands} />}
+      />
+      <StateBar summary={summary} release={release} />
+      {release.dialog}
+    </>
   );
 }
 

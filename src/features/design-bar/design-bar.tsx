@@ -7,8 +7,9 @@ import { Menu } from '../../components/menu.tsx';
 import { Stamp } from '../../components/stamp.tsx';
 import { Tooltip } from '../../components/tooltip.tsx';
 import type { DesignSummary } from '../../contract/designs.ts';
-import { designPath, engagementsPath } from '../../lib/workspace-path.ts';
+import { engagementsPath } from '../../lib/workspace-path.ts';
 import { useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
+import { designPages } from './design-pages.ts';
 import { SaveCell } from './save-cell.tsx';
 
 interface DesignBarProps {
@@ -17,21 +18,16 @@ interface DesignBarProps {
   readonly summary: DesignSummary;
   /** Who else has it open. */
   readonly people?: ReactNode;
+  /** What can be done with its revision, beside the stamp. */
+  readonly release?: ReactNode;
 }
 
 /** The bar over every page of a design: where it belongs, whether it is saved, its pages, undo. A page adds its own. */
-export function DesignBar({ engagementName, workspaceId, summary, people }: DesignBarProps) {
+export function DesignBar({ engagementName, workspaceId, summary, people, release }: DesignBarProps) {
   const title = useOpenState((state) => state.document.meta.title);
   const revision = useOpenState((state) => state.document.meta.revision);
   const editable = useOpenState((state) => state.editable);
-  const path = designPath(summary.id);
-  const pages: readonly BarDestination[] = [
-    { to: path, label: 'Sheet', end: true },
-    { to: `${path}/segments`, label: 'Segments' },
-    { to: `${path}/numbering`, label: 'Numbering' },
-    { to: `${path}/checks`, label: 'Checks' },
-    { to: `${path}/review`, label: 'Review' },
-  ];
+  const pages = designPages(summary.id);
   return (
     <BarContents>
       <BarCell label="Engagement" className="max-xl:hidden">
@@ -44,6 +40,7 @@ export function DesignBar({ engagementName, workspaceId, summary, people }: Desi
       </BarCell>
       <BarCell label="Revision" className="max-xl:hidden">
         <Stamp state={summary.state} prefix={revision} />
+        {release}
       </BarCell>
       <SaveCell />
       <div className="flex shrink-0 max-md:hidden">
@@ -67,7 +64,7 @@ function PagesMenu({ pages }: { readonly pages: readonly BarDestination[] }) {
       align="end"
       trigger={
         <Button small icon={<Icon name="chevron-down" size={13} />} className="flex-row-reverse">
-          {pages.find(({ to }) => to === pathname)?.label ?? 'Pages'}
+          {pages.find(({ to }) => to === pathname.replace(/\/$/, ''))?.label ?? 'Pages'}
         </Button>
       }
       groups={[{ actions: pages.map(({ to, label }) => ({ label, onSelect: () => void navigate(to) })) }]}

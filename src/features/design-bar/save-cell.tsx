@@ -20,7 +20,8 @@ export function SaveCell() {
         Not saved
       </BarCell>
     );
-  if (!editable)
+  // Refused edits stay in sight when the design's state is why.
+  if (!editable && save.kind !== 'refused')
     return (
       <BarCell label="Access" className="max-md:hidden">
         Read only
