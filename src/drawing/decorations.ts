@@ -4,7 +4,17 @@ import type { Plug } from '../engine/model/underlay.ts';
 export type Severity = 'blocking' | 'degrading' | 'advisory';
 
 /** How an element stands out; several may hold at once. */
-export type Tone = 'selected' | 'hovered' | 'lit' | 'dimmed' | 'failed' | 'fault';
+export type Tone =
+  | 'selected'
+  | 'hovered'
+  | 'lit'
+  | 'dimmed'
+  | 'failed'
+  | 'fault'
+  // In a drawing of two designs at once.
+  | 'added'
+  | 'removed'
+  | 'changed';
 
 /** A step of a loop: along a tunnel or a cable, from its end a to its end b or back. */
 export interface LoopStep {

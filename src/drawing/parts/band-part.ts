@@ -152,7 +152,7 @@ export const bandPart = (band: BandGeometry, sheet: SheetFrame, facts: DrawingFa
     {
       key: elementKey(ref),
       data: { ref, part: 'band' },
-      ...(tones.includes('dimmed') ? { attrs: { opacity: dimmedOpacity } } : {}),
+      ...(tones.includes('dimmed') || tones.includes('removed') ? { attrs: { opacity: dimmedOpacity } } : {}),
     },
   );
 };

@@ -5,6 +5,7 @@ import type { Shape } from '../shape.ts';
 import { group, shape } from '../shape.ts';
 import { paint } from '../theme/paint.ts';
 import type { BaseToken } from '../theme/tokens.ts';
+import { changeToneOf, changeUnderlay } from './change-marks.ts';
 import { measures } from './level-of-detail.ts';
 import type { Look } from './look.ts';
 import { dimmedOpacity, tonesOf } from './look.ts';
@@ -52,10 +53,21 @@ export const cablePart = (cable: CableGeometry, look: Look): Shape => {
   const failed = tones.includes('failed');
   const marked = tones.includes('selected') || tones.includes('hovered');
   const lit = tones.includes('lit');
+  const change = changeToneOf(tones);
   const spread = cable.aggregated ? size.lagGap : 0;
   const whole = pathData(cable.path);
-  const colour = cable.noWay ? 'blue' : failed || tones.includes('fault') ? 'red' : 'ink';
-  const dash = cable.noWay ? { strokeDasharray: '7 5' } : failed ? { strokeDasharray: '7 4' } : {};
+  const colour = cable.noWay
+    ? 'blue'
+    : failed || tones.includes('fault')
+      ? 'red'
+      : change === 'removed'
+        ? 'ink-3'
+        : 'ink';
+  const dash = cable.noWay
+    ? { strokeDasharray: '7 5' }
+    : failed || change === 'removed'
+      ? { strokeDasharray: '7 4' }
+      : {};
   const lines = cable.aggregated
     ? [
         line(pathData(offsetPath(cable.path, -spread / 2)), colour, widthPx, 'line-1', dash),
@@ -70,6 +82,7 @@ export const cablePart = (cable: CableGeometry, look: Look): Shape => {
       lit && line(whole, 'lamp', 10 + spread, 'lamp'),
       marked && line(whole, 'blue', 11 + spread, 'pencil-edge'),
       marked && line(whole, 'blue-soft', 8.4 + spread, 'pencil'),
+      ...changeUnderlay(whole, change, widthPx + spread),
       ...lines,
       cable.aggregated && look.level !== 'far' && tie(cable),
       cable.landing !== undefined &&

@@ -6,6 +6,7 @@ import { paint } from '../theme/paint.ts';
 import type { DeviceFacts, DrawingFacts } from './drawing-facts.ts';
 import { faceplate } from './faceplate.ts';
 import { pairBracket, pairTitle } from './ha-pair.ts';
+import { changeFrame, changeToneOf } from './change-marks.ts';
 import { cornerTicks, selectionWash } from './highlight.ts';
 import type { Look } from './look.ts';
 import { dimmedOpacity, hasTone, tonesOf } from './look.ts';
@@ -125,6 +126,7 @@ export const devicePart = (device: DeviceGeometry, facts: DrawingFacts, look: Lo
     );
   });
   const failed = device.plates.length > 0 && device.plates.every((plate) => memberTone(plate, 'failed'));
+  const change = changeToneOf(tones);
   const lit = device.plates.filter((plate) => memberTone(plate, 'lit'));
   return group(
     [
@@ -137,6 +139,7 @@ export const devicePart = (device: DeviceGeometry, facts: DrawingFacts, look: Lo
       ...plates,
       device.plates.length > 1 && pairTitle(device, own.name, look.level, dimmed),
       ...pips(device, own, look, failed),
+      change !== undefined && changeFrame(device.rect, change),
       selected && cornerTicks(device.rect),
     ],
     { key, data: { ref }, ...(dimmed ? { attrs: { opacity: dimmedOpacity } } : {}) },

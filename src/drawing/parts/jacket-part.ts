@@ -5,6 +5,8 @@ import type { Shape } from '../shape.ts';
 import { group, shape } from '../shape.ts';
 import { paint } from '../theme/paint.ts';
 import type { BaseToken } from '../theme/tokens.ts';
+import type { ChangeTone } from './change-marks.ts';
+import { changeToneOf, changeUnderlay } from './change-marks.ts';
 import { cordStrokes, coreStrokes, failedStrokes, palettesOf } from './cord.ts';
 import { cutOpening } from './cuts.ts';
 import type { DrawingFacts, TunnelFacts } from './drawing-facts.ts';
@@ -28,6 +30,7 @@ interface LaneLook {
   readonly dimmed: boolean;
   readonly failed: boolean;
   readonly hidden: boolean;
+  readonly change: ChangeTone | undefined;
 }
 
 const laneLooks = (jacket: JacketGeometry, facts: DrawingFacts, look: Look): readonly LaneLook[] =>
@@ -42,20 +45,22 @@ const laneLooks = (jacket: JacketGeometry, facts: DrawingFacts, look: Look): rea
         marked: tones.includes('selected') || tones.includes('hovered'),
         lit: tones.includes('lit'),
         dimmed: tones.includes('dimmed'),
-        failed: tones.includes('failed'),
+        // What was removed is drawn as thin and broken as what failed.
+        failed: tones.includes('failed') || tones.includes('removed'),
         hidden: tunnelHidden(tunnel, look),
+        change: changeToneOf(tones),
       },
     ];
   });
 
 /** What lies under a cord that is selected or lit. */
-const underlay = (path: Path, { marked, lit }: LaneLook, casingPx: number): readonly Shape[] => {
+const underlay = (path: Path, { marked, lit, change }: LaneLook, casingPx: number): readonly Shape[] => {
   if (lit)
     return [
       stroke(path, 'lamp-line', casingPx + 10.8, 'lamp-edge'),
       stroke(path, 'lamp', casingPx + 8.2, 'lamp'),
     ];
-  if (!marked) return [];
+  if (!marked) return changeUnderlay(pathData(path), change, casingPx);
   return [
     stroke(path, 'blue', casingPx + 12.2, 'pencil-edge'),
     stroke(path, 'blue-soft', casingPx + 9.2, 'pencil'),
@@ -156,7 +161,11 @@ const wholeJacket = (
   const ref = { collection: 'associations' as const, id: jacket.id };
   const tones = tonesOf(look, ref);
   const width = drawnWidth(jacket, geometry, look);
-  const failed = tones.includes('failed') || (lanes.length > 0 && lanes.every((lane) => lane.failed));
+  const change = changeToneOf(tones);
+  const failed =
+    tones.includes('failed') ||
+    change === 'removed' ||
+    (lanes.length > 0 && lanes.every((lane) => lane.failed));
   const quiet = lanes.every((lane) => lane.dimmed || lane.hidden);
   const hidden = lanes.length > 0 && lanes.every((lane) => lane.hidden);
   const marked = tones.includes('selected') || tones.includes('hovered');
@@ -168,6 +177,7 @@ const wholeJacket = (
       marked && stroke(jacket.path, 'blue-soft', width + 9.2, 'pencil'),
       lit && stroke(jacket.path, 'lamp-line', width + 14.6, 'lamp-edge'),
       lit && stroke(jacket.path, 'lamp', width + 12, 'lamp'),
+      ...(marked || lit ? [] : changeUnderlay(pathData(jacket.path), change, width)),
       ...(failed
         ? []
         : [

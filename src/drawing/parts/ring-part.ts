@@ -98,7 +98,7 @@ const ferrulePart = (
   const faded = tunnelHidden(tunnel, look);
   const opacity = faded
     ? hiddenOpacity
-    : tones.includes('dimmed') || tones.includes('failed')
+    : tones.includes('dimmed') || tones.includes('failed') || tones.includes('removed')
       ? dimmedOpacity
       : undefined;
   return group(

@@ -118,7 +118,7 @@ export const sitePart = (site: SiteGeometry, facts: DrawingFacts, look: Look): S
     {
       key: elementKey(ref),
       data: { ref, part: 'site' },
-      ...(tones.includes('dimmed') ? { attrs: { opacity: dimmedOpacity } } : {}),
+      ...(tones.includes('dimmed') || tones.includes('removed') ? { attrs: { opacity: dimmedOpacity } } : {}),
     },
   );
 };
