@@ -1,6 +1,5 @@
 import { createHash, randomBytes } from 'node:crypto';
-import type { ApiToken } from '#contract/account.ts';
-import type { TokenScope } from '#contract/account.ts';
+import type { ApiToken, TokenScope } from '#contract/account.ts';
 import { authorise } from '../auth/authorise.ts';
 import type { TokenLimits } from '../auth/token-limits.ts';
 import { Refusal, notFound } from '../errors.ts';

@@ -17,6 +17,11 @@ export const routes: RouteObject[] = [
         lazy: async () => ({ Component: (await import('../pages/sign-in-page.tsx')).SignInPage }),
       },
       {
+        path: 'first-owner',
+        ErrorBoundary: PageError,
+        lazy: async () => ({ Component: (await import('../pages/first-owner-page.tsx')).FirstOwnerPage }),
+      },
+      {
         lazy: async () => ({ Component: (await import('./shell.tsx')).Shell }),
         children: [
           {
@@ -45,6 +50,18 @@ export const routes: RouteObject[] = [
                 ErrorBoundary: PageError,
                 lazy: async () => ({
                   Component: (await import('../pages/profiles-page.tsx')).ProfilesPage,
+                }),
+              },
+              {
+                path: 'workspaces/:workspaceId/people',
+                ErrorBoundary: PageError,
+                lazy: async () => ({ Component: (await import('../pages/people-page.tsx')).PeoplePage }),
+              },
+              {
+                path: 'workspaces/:workspaceId/settings',
+                ErrorBoundary: PageError,
+                lazy: async () => ({
+                  Component: (await import('../pages/workspace-settings-page.tsx')).WorkspaceSettingsPage,
                 }),
               },
               {
@@ -99,6 +116,28 @@ export const routes: RouteObject[] = [
                 ErrorBoundary: PageError,
                 lazy: async () => ({
                   Component: (await import('../pages/change-password-page.tsx')).ChangePasswordPage,
+                }),
+              },
+              {
+                path: 'account/two-step',
+                ErrorBoundary: PageError,
+                lazy: async () => ({ Component: (await import('../pages/two-step-page.tsx')).TwoStepPage }),
+              },
+              {
+                path: 'account/sessions',
+                ErrorBoundary: PageError,
+                lazy: async () => ({ Component: (await import('../pages/sessions-page.tsx')).SessionsPage }),
+              },
+              {
+                path: 'account/tokens',
+                ErrorBoundary: PageError,
+                lazy: async () => ({ Component: (await import('../pages/tokens-page.tsx')).TokensPage }),
+              },
+              {
+                path: 'account/deletion',
+                ErrorBoundary: PageError,
+                lazy: async () => ({
+                  Component: (await import('../pages/delete-account-page.tsx')).DeleteAccountPage,
                 }),
               },
               {

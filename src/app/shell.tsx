@@ -2,6 +2,7 @@ import { Suspense } from 'react';
 import { Outlet } from 'react-router-dom';
 import { WithBar } from '../components/bar.tsx';
 import { AccountMenu } from '../features/account/account-menu.tsx';
+import { SecondStepGate } from '../features/account/second-step-gate.tsx';
 
 /** The bar above every page behind the sign-in. */
 export function Shell() {
@@ -15,7 +16,9 @@ export function Shell() {
             </p>
           }
         >
-          <Outlet />
+          <SecondStepGate>
+            <Outlet />
+          </SecondStepGate>
         </Suspense>
       </WithBar>
     </div>

@@ -49,3 +49,4 @@ export const firstOwnerSchema = z.strictObject({
   password: newPasswordSchema,
   workspaceName: workspaceNameSchema,
 });
+export type FirstOwner = z.input<typeof firstOwnerSchema>;

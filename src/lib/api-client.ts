@@ -11,12 +11,21 @@ interface Call {
 
 let csrfToken: string | null = null;
 let sessionEnded: () => void = () => undefined;
+let secondStepRequired: () => void = () => undefined;
 
 /** Tells the client what to do once the server no longer knows this session; undone by the returned function. */
 export function onSessionEnded(listener: () => void): () => void {
   sessionEnded = listener;
   return () => {
     sessionEnded = () => undefined;
+  };
+}
+
+/** Tells the client what to do once a workspace asks the reader for two-step sign-in; undone by the returned function. */
+export function onSecondStepRequired(listener: () => void): () => void {
+  secondStepRequired = listener;
+  return () => {
+    secondStepRequired = () => undefined;
   };
 }
 
@@ -106,5 +115,6 @@ async function refusalOf(response: Response): Promise<ApiError> {
     });
   }
   if (refusal.data.code === 'not-signed-in') sessionEnded();
+  if (refusal.data.code === 'second-step-required') secondStepRequired();
   return new ApiError(refusal.data);
 }

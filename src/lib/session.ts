@@ -1,5 +1,6 @@
 import { queryOptions, useMutation, useQuery, useQueryClient, type QueryClient } from '@tanstack/react-query';
 import type { Action, Membership, Role, Session, SignIn } from '../contract/session.ts';
+import type { FirstOwner } from '../contract/workspaces.ts';
 import { callApiForNothing, fetchSession } from './api-client.ts';
 import { rememberedWorkspace } from './workspace-path.ts';
 
@@ -47,6 +48,47 @@ export function useSignIn() {
       callApiForNothing('/api/session', { method: 'POST', body: credentials }),
     onSuccess: takeOver,
   });
+}
+
+/** The code that follows a right password. */
+export function useSecondStep() {
+  const takeOver = useTakeOver();
+  return useMutation({
+    mutationFn: (code: string) =>
+      callApiForNothing('/api/session/second-step', { method: 'POST', body: { code } }),
+    onSuccess: takeOver,
+  });
+}
+
+/** Makes the first person of an empty server, who is then signed in. */
+export function useBecomeFirstOwner() {
+  const takeOver = useTakeOver();
+  return useMutation({
+    mutationFn: (wanted: FirstOwner) =>
+      callApiForNothing('/api/first-owner', { method: 'POST', body: wanted }),
+    onSuccess: takeOver,
+  });
+}
+
+/** Deletes the reader's account, who is then signed out. */
+export function useDeleteAccount() {
+  const queryClient = useQueryClient();
+  const takeOver = useTakeOver();
+  return useMutation({
+    mutationFn: (proof: { readonly password: string; readonly code?: string }) =>
+      callApiForNothing('/api/account/deletion', { method: 'POST', body: proof }),
+    onSuccess: () => {
+      const taken = takeOver();
+      queryClient.setQueryData(leftKey, true);
+      return taken;
+    },
+  });
+}
+
+/** Reads the session again: the reader's places or rights have changed. */
+export function useRefreshSession(): () => Promise<void> {
+  const queryClient = useQueryClient();
+  return () => queryClient.invalidateQueries({ queryKey: sessionQuery.queryKey });
 }
 
 export function useDemoSignIn() {

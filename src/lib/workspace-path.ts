@@ -4,7 +4,14 @@ export const engagementsPath = (workspaceId: string): string => `/workspaces/${w
 
 export const profilesPath = (workspaceId: string): string => `/workspaces/${workspaceId}/profiles`;
 
+export const peoplePath = (workspaceId: string): string => `/workspaces/${workspaceId}/people`;
+
+export const settingsPath = (workspaceId: string): string => `/workspaces/${workspaceId}/settings`;
+
 export const designPath = (designId: string): string => `/designs/${designId}`;
+
+export const revisionPath = (designId: string, revisionId: string): string =>
+  `/designs/${designId}/revisions/${revisionId}`;
 
 /** The workspace that this browser last showed. */
 export function rememberedWorkspace(): string | null {

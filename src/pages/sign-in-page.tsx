@@ -3,6 +3,7 @@ import { Navigate, useSearchParams } from 'react-router-dom';
 import { Cautions } from '../features/sign-in/cautions.tsx';
 import { CordInTheGround, workingLine } from '../features/sign-in/cord-in-the-ground.tsx';
 import { DemoPeople } from '../features/sign-in/demo-people.tsx';
+import { SecondStepForm } from '../features/sign-in/second-step-form.tsx';
 import { SheetFrame } from '../features/sign-in/sheet-frame.tsx';
 import { SignInForm } from '../features/sign-in/sign-in-form.tsx';
 import { usePageTitle } from '../lib/page-title.ts';
@@ -51,7 +52,7 @@ export function SignInPage() {
             )}
           </div>
           <div className="w-570 shrink-0 border-t-[2.4px] border-l-[2.4px] border-ink max-lg:order-1 max-lg:w-auto max-lg:border-0 max-lg:border-b-[2.4px]">
-            <SignInForm />
+            {session?.secondStepAsked === true ? <SecondStepForm /> : <SignInForm />}
           </div>
         </div>
       </SheetFrame>

@@ -32,6 +32,7 @@ test('the start is the workspace last worked in, else the first', async () => {
     workspaceName: 'Harbour works',
     role: 'reviewer' as const,
     actions: [],
+    needsSecondStep: false,
   };
   signedInApi({
     'GET /api/session': json({ ...session, memberships: [...session.memberships, second] }),

@@ -1,3 +1,4 @@
+import { useState } from 'react';
 import { useNavigate, useParams } from 'react-router-dom';
 import { Icon } from '../../components/icon.tsx';
 import { Menu, type MenuGroup } from '../../components/menu.tsx';
@@ -7,12 +8,14 @@ import { roleWords } from '../../lib/role-words.ts';
 import { useCurrentWorkspaceId, useSession, useSignOut } from '../../lib/session.ts';
 import { chooseTheme, themeChoices, useThemeChoice } from '../../lib/theme.ts';
 import { engagementsPath } from '../../lib/workspace-path.ts';
+import { NewWorkspaceDialog } from './new-workspace-dialog.tsx';
 
 const themeWords = { paper: 'Paper', slate: 'Slate', system: 'As the system' } as const;
 
-/** Who is signed in, and what concerns them rather than a design: theme, password, workspace, signing out. */
+/** Who is signed in, and what concerns them rather than a design: theme, account, workspace, signing out. */
 export function AccountMenu() {
   const session = useSession();
+  const [isStarting, setStarting] = useState(false);
   const themeChoice = useThemeChoice();
   const signOut = useSignOut();
   const navigate = useNavigate();
@@ -36,7 +39,7 @@ export function AccountMenu() {
     {
       actions: [
         { label: 'Reference of checks', onSelect: () => void navigate('/checks') },
-        { label: 'Change password', onSelect: () => void navigate('/account/password') },
+        { label: 'Account', onSelect: () => void navigate('/account/password') },
         {
           label: 'Sign out',
           onSelect: () =>
@@ -47,6 +50,7 @@ export function AccountMenu() {
       ],
     },
   ];
+  groups.unshift({ actions: [{ label: 'New workspace…', onSelect: () => setStarting(true) }] });
   if (memberships.length > 1) {
     groups.unshift({
       choice: {
@@ -58,30 +62,33 @@ export function AccountMenu() {
     });
   }
   return (
-    <Menu
-      align="end"
-      groups={groups}
-      heading={
-        <>
-          <p className="text-value font-semibold text-ink">{person.name}</p>
-          <p className="text-note text-ink-2">{person.email}</p>
-          {membership !== undefined && (
-            <p className="text-note text-ink-2">
-              {roleWords[membership.role]} in {membership.workspaceName}
-            </p>
-          )}
-        </>
-      }
-      trigger={
-        <button
-          type="button"
-          className="inline-flex h-30 items-center gap-4 text-ink-2"
-          aria-label={`Account of ${person.name}`}
-        >
-          <PersonTag initials={person.initials} name={person.name} />
-          <Icon name="chevron-down" size={12} />
-        </button>
-      }
-    />
+    <>
+      <Menu
+        align="end"
+        groups={groups}
+        heading={
+          <>
+            <p className="text-value font-semibold text-ink">{person.name}</p>
+            <p className="text-note text-ink-2">{person.email}</p>
+            {membership !== undefined && (
+              <p className="text-note text-ink-2">
+                {roleWords[membership.role]} in {membership.workspaceName}
+              </p>
+            )}
+          </>
+        }
+        trigger={
+          <button
+            type="button"
+            className="inline-flex h-30 items-center gap-4 text-ink-2"
+            aria-label={`Account of ${person.name}`}
+          >
+            <PersonTag initials={person.initials} name={person.name} />
+            <Icon name="chevron-down" size={12} />
+          </button>
+        }
+      />
+      {isStarting && <NewWorkspaceDialog onClose={() => setStarting(false)} />}
+    </>
   );
 }

@@ -1,7 +1,7 @@
 import type { ReactNode } from 'react';
 import { BarContents, BarNav } from '../../components/bar.tsx';
-import { useCurrentWorkspaceId } from '../../lib/session.ts';
-import { engagementsPath, profilesPath } from '../../lib/workspace-path.ts';
+import { may, useCurrentWorkspaceId, useMembership } from '../../lib/session.ts';
+import { engagementsPath, peoplePath, profilesPath, settingsPath } from '../../lib/workspace-path.ts';
 import { WorkspaceCell } from './workspace-cell.tsx';
 
 interface MainBarProps {
@@ -15,6 +15,7 @@ interface MainBarProps {
 export function MainBar({ workspaceId, children }: MainBarProps) {
   const current = useCurrentWorkspaceId();
   const here = workspaceId ?? current;
+  const membership = useMembership(here ?? undefined);
   return (
     <BarContents>
       {here !== null && (
@@ -25,6 +26,8 @@ export function MainBar({ workspaceId, children }: MainBarProps) {
             destinations={[
               { to: engagementsPath(here), label: 'Engagements' },
               { to: profilesPath(here), label: 'Equipment' },
+              { to: peoplePath(here), label: 'People' },
+              ...(may(membership, 'workspace.manage') ? [{ to: settingsPath(here), label: 'Settings' }] : []),
               { to: '/checks', label: 'Checks' },
               { to: '/wire', label: 'Wire' },
             ]}

@@ -1,0 +1,25 @@
+import { queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
+import type { z } from 'zod';
+import { workspaceSettingsSchema, type changeWorkspaceSchema } from '../../contract/workspaces.ts';
+import { callApi } from '../../lib/api-client.ts';
+import { sessionQuery } from '../../lib/session.ts';
+
+const path = (workspaceId: string): string => `/api/workspaces/${workspaceId}`;
+
+export const settingsQuery = (workspaceId: string) =>
+  queryOptions({
+    queryKey: ['workspace-settings', workspaceId],
+    queryFn: ({ signal }) => callApi(workspaceSettingsSchema, path(workspaceId), { signal }),
+  });
+
+export function useChangeSettings(workspaceId: string) {
+  const queryClient = useQueryClient();
+  return useMutation({
+    mutationFn: (body: z.input<typeof changeWorkspaceSchema>) =>
+      callApi(workspaceSettingsSchema, path(workspaceId), { method: 'PATCH', body }),
+    onSuccess: (settings) => {
+      queryClient.setQueryData(settingsQuery(workspaceId).queryKey, settings);
+      return queryClient.invalidateQueries({ queryKey: sessionQuery.queryKey });
+    },
+  });
+}
