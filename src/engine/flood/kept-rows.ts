@@ -66,13 +66,15 @@ export const keptRows = ({ network: before }: FloodGraph, now: Network): KeptRow
     elementBefore[element] = old;
     elementNow[old] = element;
   };
-  for (const { index, cables } of now.bundles) {
-    const old = before.bundleByCable.get(cables[0]!);
-    if (old?.cables[0] === cables[0]) pair(old?.index, index);
-  }
+  if (now.bundles === before.bundles) now.bundles.forEach((_bundle, i) => pair(i, i));
+  else
+    for (const { index, cables } of now.bundles) {
+      const old = before.bundleByCable.get(cables[0]!);
+      if (old?.cables[0] === cables[0]) pair(old?.index, index);
+    }
   const { tunnelIndex } = placesOf(before);
   now.tunnelIds.forEach((id, i) => {
-    const old = tunnelIndex.get(id);
+    const old = now.tunnelIds === before.tunnelIds ? i : tunnelIndex.get(id);
     pair(old === undefined ? undefined : before.bundles.length + old, now.bundles.length + i);
   });
   const placeNow = new Int32Array(placesOf(before).all.length).fill(-1);
@@ -85,7 +87,9 @@ export const keptRows = ({ network: before }: FloodGraph, now: Network): KeptRow
           placeNow[index] = places[i]!.index;
           placeBefore[places[i]!.index] = index;
         });
-  const isTouched = Uint8Array.from(devicesArrivedAt(now), (device) => (touched.has(device) ? 1 : 0));
+  const arrivedAt = devicesArrivedAt(now);
+  const isTouched = new Uint8Array(arrivedAt.length);
+  for (let at = 0; at < arrivedAt.length; at += 1) if (touched.has(arrivedAt[at]!)) isTouched[at] = 1;
   return {
     stirredSites: stirred,
     stirredSegments: segmentsOfTouchedHosts(before, now),

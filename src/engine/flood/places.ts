@@ -3,14 +3,7 @@ import type { Id } from '../model/scalars.ts';
 import type { Tags } from '../network/frame-tags.ts';
 import { isTrunk, untagged } from '../network/frame-tags.ts';
 import type { Answer, CircuitAt, Network, Port, PortCircuit, PortGroup } from '../network/network.ts';
-import {
-  deviceOfTunnelEnd,
-  ends,
-  entryOf,
-  forwardingMembers,
-  otherEnd,
-  perNetwork,
-} from '../network/network.ts';
+import { deviceOfTunnelEnd, entryOf, forwardingMembers, otherEnd, perNetwork } from '../network/network.ts';
 import { portGroupAt } from '../network/port-groups.ts';
 import type { ClassSet } from './frame-classes.ts';
 import { classesPassed } from './frame-classes.ts';
@@ -105,20 +98,29 @@ const outsOf = (
   network: Network,
   group: PortGroup,
 ): { readonly outs: readonly Out[]; readonly shutOuts: readonly Out[] } => {
-  const all = group.bundles.map(({ bundle, end }) => ({ bundle: network.bundles[bundle]!, end }));
-  const alive = all.filter(({ bundle }) => bundle.alive.length > 0);
-  const used =
-    group.aggregation === undefined
-      ? alive
-      : [alive.find(({ bundle, end }) => speaks(network, bundle[otherEnd(end)])) ?? alive[0]].filter(
-          (one) => one !== undefined,
-        );
-  const asOuts = (list: typeof all): readonly Out[] =>
-    list.map(({ bundle, end }) => ({ element: bundle.index, direction: end === 'a' ? 0 : 1 }));
-  return {
-    outs: asOuts(used),
-    shutOuts: asOuts(all.filter(({ bundle }) => bundle.alive.length === 0)),
-  };
+  const outs: Out[] = [];
+  const shutOuts: Out[] = [];
+  let isSpeaking = false;
+  for (const { bundle, end } of group.bundles) {
+    const out: Out = { element: bundle, direction: end === 'a' ? 0 : 1 };
+    const crossed = network.bundles[bundle]!;
+    if (crossed.alive.length === 0) shutOuts.push(out);
+    else if (group.aggregation === undefined) outs.push(out);
+    else if (!isSpeaking) {
+      isSpeaking = speaks(network, crossed[otherEnd(end)]);
+      if (isSpeaking || outs.length === 0) outs[0] = out;
+    }
+  }
+  return { outs, shutOuts };
+};
+
+/** Numbers by key in the order in which keys are met; -1 where there is none. */
+const numberFor = (numbers: Map<string, number>, key: string | undefined): number => {
+  if (key === undefined) return -1;
+  const known = numbers.get(key);
+  if (known !== undefined) return known;
+  numbers.set(key, numbers.size);
+  return numbers.size - 1;
 };
 
 const buildCircuits = (
@@ -133,31 +135,32 @@ const buildCircuits = (
     device.profile !== undefined && entryOf(design.profiles, device.profile).vniScope === 'multipoint';
   const isolations = new Map<string, number>();
   const horizons = new Map<string, number>();
-  const numberOf = (numbers: Map<string, number>, key: string | undefined): number => {
-    if (key === undefined) return -1;
-    if (!numbers.has(key)) numbers.set(key, numbers.size);
-    return numbers.get(key)!;
-  };
   const circuits: PlaceCircuit[] = [];
   for (const at of network.circuitsByForwarder.get(forwarder) ?? []) {
     const { circuit } = at;
-    const isolation = numberOf(isolations, circuit.isolation);
+    const isolation = numberFor(isolations, circuit.isolation);
     if (circuit.kind === 'port') {
       const group = portGroupAt(network, at.device, circuit.port, member);
       // A member link carries no segment frames, whatever claims it.
       if (group === undefined) continue;
       const port = device.ports[group.port]!;
-      circuits.push({ kind: 'port', at, isolation, circuit, group, port, ...outsOf(network, group) });
+      const { outs, shutOuts } = outsOf(network, group);
+      circuits.push({ kind: 'port', at, isolation, circuit, group, port, outs, shutOuts });
       continue;
     }
     const tunnel = entryOf(design.tunnels, circuit.tunnel);
-    const end = ends.find((candidate) => deviceOfTunnelEnd(network, tunnel, candidate) === at.device);
+    const end =
+      deviceOfTunnelEnd(network, tunnel, 'a') === at.device
+        ? 'a'
+        : deviceOfTunnelEnd(network, tunnel, 'b') === at.device
+          ? 'b'
+          : undefined;
     if (end === undefined) continue;
     const { endpoint, vni, innerTags } = tunnel[end];
     const owner = entryOf(design.endpoints, endpoint).member;
     if (owner !== undefined && device.kind === 'ha-pair' && owner !== member) continue;
     const keepsTags = (innerTags ?? (device.settings?.keepInnerTags === true ? 'keep' : 'strip')) === 'keep';
-    const horizon = numberOf(horizons, isMultipoint && vni !== undefined ? `${endpoint}/${vni}` : undefined);
+    const horizon = numberFor(horizons, isMultipoint && vni !== undefined ? `${endpoint}/${vni}` : undefined);
     const out: Out = {
       element: network.bundles.length + tunnelIndex.get(circuit.tunnel)!,
       direction: end === 'a' ? 0 : 1,
@@ -187,20 +190,20 @@ const placesIn = (
   const device = entryOf(design.devices, id);
   const groups = network.portGroupsByDevice.get(id) ?? [];
   if (device.kind === 'switch') {
-    const ports = groups.map((group) => ({
-      group,
-      port: device.ports[group.port]!,
-      ...outsOf(network, group),
-    }));
-    const ordinalByGroup = new Map(groups.map((group, ordinal) => [group.index, ordinal]));
+    const ports = groups.map((group): SwitchPort => {
+      const { outs, shutOuts } = outsOf(network, group);
+      return { group, port: device.ports[group.port]!, outs, shutOuts };
+    });
+    const ordinalByGroup = new Map<number, number>();
+    for (let ordinal = 0; ordinal < groups.length; ordinal += 1)
+      ordinalByGroup.set(groups[ordinal]!.index, ordinal);
     return [{ kind: 'switch', index: firstIndex, device: id, ports, ordinalByGroup }];
   }
   if (device.kind === 'host') {
-    const ports = groups.map((group) => ({
-      group,
-      tags: hostTags(network, id, device.ports[group.port]!),
-      ...outsOf(network, group),
-    }));
+    const ports = groups.map((group) => {
+      const { outs, shutOuts } = outsOf(network, group);
+      return { group, tags: hostTags(network, id, device.ports[group.port]!), outs, shutOuts };
+    });
     return [{ kind: 'host', index: firstIndex, device: id, ports }];
   }
   const places: ForwarderPlace[] = [];
@@ -221,13 +224,23 @@ const placesIn = (
   return places;
 };
 
+/** Whether cables and tunnels have the numbers that they had. */
+const areElementsKept = (before: Network, now: Network): boolean =>
+  before.bundles === now.bundles && before.tunnelIds === now.tunnelIds;
+
 /** Every place in which frames of the design can be, with the ways in and out of it. */
 export const placesOf = perNetwork((network, earlier?: Answer<Places>): Places => {
+  const areDevicesSame = earlier?.network.design.devices === network.design.devices;
+  if (
+    areDevicesSame &&
+    areElementsKept(earlier!.network, network) &&
+    rebuiltDevices(earlier!.network, network).size === 0
+  )
+    return earlier!.value;
   const all: Place[] = [];
   const byDevice = new Map<Id, readonly Place[]>();
   const byForwarder = new Map<string, ForwarderPlace>();
-  const areElementsSame =
-    earlier?.network.bundles === network.bundles && earlier.network.tunnelIds === network.tunnelIds;
+  const areElementsSame = earlier !== undefined && areElementsKept(earlier.network, network);
   const tunnelIndex = areElementsSame
     ? earlier.value.tunnelIndex
     : new Map(network.tunnelIds.map((id, index) => [id, index]));
@@ -252,10 +265,12 @@ export const placesOf = perNetwork((network, earlier?: Answer<Places>): Places =
 });
 
 /** By element and direction (2n along it, 2n + 1 back): the device that a frame crossing it comes to. */
-export const devicesArrivedAt = perNetwork((network): readonly Id[] => [
-  ...network.bundles.flatMap(({ a, b }) => [b.device, a.device]),
-  ...network.tunnelIds.flatMap((id) => {
+export const devicesArrivedAt = perNetwork((network): readonly Id[] => {
+  const devices: Id[] = [];
+  for (const { a, b } of network.bundles) devices.push(b.device, a.device);
+  for (const id of network.tunnelIds) {
     const tunnel = entryOf(network.design.tunnels, id);
-    return [deviceOfTunnelEnd(network, tunnel, 'b'), deviceOfTunnelEnd(network, tunnel, 'a')];
-  }),
-]);
+    devices.push(deviceOfTunnelEnd(network, tunnel, 'b'), deviceOfTunnelEnd(network, tunnel, 'a'));
+  }
+  return devices;
+});

@@ -1,18 +1,22 @@
+import type { Design } from '../model/design.ts';
 import type { Id } from '../model/scalars.ts';
 import { circuitIn, untagged } from '../network/frame-tags.ts';
 import type { Network } from '../network/network.ts';
-import { entryOf } from '../network/network.ts';
+import { entryOf, perObject } from '../network/network.ts';
 import { entrancesAt } from './entrances.ts';
 import type { FloodGraph } from './flood-graph.ts';
 import type { Emit } from './forwarding.ts';
 
 /** Segments in the order of their letters: A to Z, then AA and on. */
-export const inLetterOrder = (network: Network): readonly Id[] =>
-  Object.keys(network.design.segments).sort((idA, idB) => {
-    const a = entryOf(network.design.segments, idA).letter;
-    const b = entryOf(network.design.segments, idB).letter;
+export const inLetterOrder = (network: Network): readonly Id[] => idsByLetter(network.design.segments);
+
+const idsByLetter = perObject((segments: Design['segments']): readonly Id[] =>
+  Object.keys(segments).sort((idA, idB) => {
+    const a = entryOf(segments, idA).letter;
+    const b = entryOf(segments, idB).letter;
     return a.length - b.length || (a < b ? -1 : a > b ? 1 : idA < idB ? -1 : 1);
-  });
+  }),
+);
 
 export interface SegmentNodes {
   readonly segment: Id;

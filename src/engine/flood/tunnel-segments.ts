@@ -13,13 +13,15 @@ export const tunnelSegments: (network: Network) => ReadonlyMap<Id, readonly Id[]
     const graph = floodGraph(network);
     if (earlier !== undefined && floodGraph(earlier.network).identity === graph.identity)
       return earlier.value;
-    const carried = new Map<Id, Id[]>(network.tunnelIds.map((id) => [id, []]));
+    const bundleCount = network.bundles.length;
+    const lists = network.tunnelIds.map((): Id[] => []);
     for (const { segment, nodes } of segmentReaches(graph))
       for (const node of nodes) {
-        const id = network.tunnelIds[graph.element[node]! - network.bundles.length];
-        const list = id === undefined ? undefined : carried.get(id);
-        if (list !== undefined && list.at(-1) !== segment) list.push(segment);
+        const element = graph.element[node]!;
+        if (element < bundleCount) continue;
+        const list = lists[element - bundleCount]!;
+        if (list.length === 0 || list[list.length - 1] !== segment) list.push(segment);
       }
-    return carried;
+    return new Map(network.tunnelIds.map((id, i) => [id, lists[i]!]));
   },
 );

@@ -217,6 +217,15 @@ export const loadOf = (design: DesignFacts, options: LoadOptions = {}): Answer<L
 
 /** The same for a design that is indexed already. */
 export const loadOfNetwork = (network: Network, options: LoadOptions = {}): Answer<LoadReport> => {
+  const steps = loadSteps(network, options);
+  for (let step = steps.next(); ; step = steps.next()) if (step.done === true) return step.value;
+};
+
+/** The same demand by demand, with how many are laid; the report comes last. */
+export function* loadSteps(
+  network: Network,
+  options: LoadOptions = {},
+): Generator<{ readonly done: number; readonly total: number }, Answer<LoadReport>> {
   const problems = [...optionProblems(options)];
   if (problems.length > 0) return refuse(problems);
   const { design } = network;
@@ -227,7 +236,9 @@ export const loadOfNetwork = (network: Network, options: LoadOptions = {}): Answ
   const demands: DemandLoad[] = [];
   const missing: Missing[] = [];
 
-  for (const id of Object.keys(design.demands).sort()) {
+  const ids = Object.keys(design.demands).sort();
+  for (const id of ids) {
+    yield { done: demands.length, total: ids.length };
     const ways = { forward: carried('forward'), reverse: carried('reverse') };
     const { latencyAllowedUs, windowBytes: own } = entryOf(design.demands, id);
     const wayOf = (way: Way): DemandWay => {
@@ -286,7 +297,7 @@ export const loadOfNetwork = (network: Network, options: LoadOptions = {}): Answ
     ...(first?.sharePerMillion === undefined || first.used === 0 ? {} : { bottleneck: first }),
     missing: distinct(missing),
   };
-};
+}
 
 const keepFullest = (known: Map<string, LimitUsed>, use: LimitUsed): void => {
   const before = known.get(use.limit.key);

@@ -11,6 +11,7 @@ import type {
   CircuitAt,
   DesignFacts,
   Device,
+  Forwarder,
   Landing,
   Network,
   TunnelAt,
@@ -143,35 +144,40 @@ const listTunnels = (
   return { tunnelIds: tunnels.map(([id]) => id), tunnelsByEndpoint, tunnelsByAssociation, tunnelsByDevice };
 };
 
-const listForwarders = (
-  design: DesignFacts,
-): Lists<
+const circuitsOf = (forwarder: Id, { device, circuits }: Forwarder): readonly CircuitAt[] =>
+  inRankOrder(circuits).map(([id, circuit]) => ({ forwarder, device, id, circuit }));
+
+/** Under what a circuit is listed. */
+type Keys = (at: CircuitAt) => readonly string[];
+const tunnelKeys: Keys = ({ circuit }) => (circuit.kind === 'tunnel' ? [circuit.tunnel] : []);
+const portKeys: Keys = ({ device, circuit }) =>
+  circuit.kind === 'port' ? [portKey(device, circuit.port)] : [];
+const portVlanKeys: Keys = ({ device, circuit }) => {
+  if (circuit.kind !== 'port') return [];
+  const { port, vlans } = circuit;
+  return typeof vlans === 'string'
+    ? [portVlanKey(device, port, vlans)]
+    : [...new Set(vlans)].map((vlan) => portVlanKey(device, port, vlan));
+};
+
+type ForwarderLists = Lists<
   'forwardersByDevice' | 'circuitsByForwarder' | 'circuitsByTunnel' | 'circuitsByPort' | 'circuitsByPortVlan'
-> => {
+>;
+
+const listForwarders = (design: DesignFacts): ForwarderLists => {
   const forwardersByDevice: Index<Id, Id> = new Map();
   const circuitsByForwarder = new Map<Id, readonly CircuitAt[]>();
   const circuitsByTunnel: Index<Id, CircuitAt> = new Map();
   const circuitsByPort: Index<string, CircuitAt> = new Map();
   const circuitsByPortVlan: Index<string, CircuitAt> = new Map();
   for (const [id, forwarder] of entriesOf(design, 'forwarders')) {
-    const device = forwarder.device;
-    put(forwardersByDevice, device, id);
-    const circuits = inRankOrder(forwarder.circuits).map(([circuitId, circuit]): CircuitAt => ({
-      forwarder: id,
-      device,
-      id: circuitId,
-      circuit,
-    }));
+    put(forwardersByDevice, forwarder.device, id);
+    const circuits = circuitsOf(id, forwarder);
     circuitsByForwarder.set(id, circuits);
     for (const at of circuits) {
-      if (at.circuit.kind === 'tunnel') {
-        put(circuitsByTunnel, at.circuit.tunnel, at);
-        continue;
-      }
-      const { port, vlans } = at.circuit;
-      put(circuitsByPort, portKey(device, port), at);
-      const claims = typeof vlans === 'string' ? [vlans] : [...new Set(vlans)];
-      for (const vlan of claims) put(circuitsByPortVlan, portVlanKey(device, port, vlan), at);
+      for (const key of tunnelKeys(at)) put(circuitsByTunnel, key, at);
+      for (const key of portKeys(at)) put(circuitsByPort, key, at);
+      for (const key of portVlanKeys(at)) put(circuitsByPortVlan, key, at);
     }
   }
   return { forwardersByDevice, circuitsByForwarder, circuitsByTunnel, circuitsByPort, circuitsByPortVlan };
@@ -185,11 +191,8 @@ const listSegments = (design: DesignFacts): Lists<'segmentsBySiteVlan'> => {
   return { segmentsBySiteVlan };
 };
 
-const listCabling = (design: DesignFacts): Cabling => {
-  const cables: (readonly [Id, Cable])[] = [];
-  for (const [id, link] of entriesOf(design, 'links')) if (link.kind === 'cable') cables.push([id, link]);
-  return cablingOf(entriesOf(design, 'devices'), cables);
-};
+const listCabling = (design: DesignFacts): Cabling =>
+  cablingOf(design, idsOf(design.devices), idsOf(design.links));
 
 const build = (design: DesignFacts): Network => ({
   design,
@@ -278,6 +281,30 @@ const renewLinks = (before: Network, now: DesignFacts, changes: Changes['links']
   };
 };
 
+const renewForwarders = (before: Network, changes: Changes['forwarders']): ForwarderLists => {
+  const devices = (id: Id, { device }: Forwarder): Listed<Id> => [[device, id]];
+  const circuitsByForwarder = new Map(before.circuitsByForwarder);
+  for (const { id, now } of changes)
+    if (now === undefined) circuitsByForwarder.delete(id);
+    else circuitsByForwarder.set(id, circuitsOf(id, now));
+  const renewed = (lists: ReadonlyMap<string, readonly CircuitAt[]>, keysOf: Keys) =>
+    listsAfter(
+      lists,
+      changes,
+      ({ forwarder }) => forwarder,
+      (id) =>
+        before.circuitsByForwarder.get(id)!.flatMap((at) => keysOf(at).map((key) => [key, at] as const)),
+      (id) => circuitsByForwarder.get(id)!.flatMap((at) => keysOf(at).map((key) => [key, at] as const)),
+    );
+  return {
+    forwardersByDevice: listsAfter(before.forwardersByDevice, changes, itself, devices, devices),
+    circuitsByForwarder,
+    circuitsByTunnel: renewed(before.circuitsByTunnel, tunnelKeys),
+    circuitsByPort: renewed(before.circuitsByPort, portKeys),
+    circuitsByPortVlan: renewed(before.circuitsByPortVlan, portVlanKeys),
+  };
+};
+
 /** Whether a device forms the same logical ports as before, in and out of service as before. */
 const hasTheSamePorts = ({ before, now }: EntryChange<Device>): boolean => {
   if (before === undefined || now === undefined || before.kind !== now.kind) return false;
@@ -345,7 +372,7 @@ const renew = (before: Network, design: DesignFacts): Network => {
       ({ before: old, now }) => old?.circuits === now?.circuits && old?.device === now?.device,
     )
       ? {}
-      : listForwarders(design)),
+      : renewForwarders(before, forwarders)),
     ...(segments.every(({ before: old, now }) => old?.sites === now?.sites) ? {} : listSegments(design)),
     ...(linksJoinTheSame ? renewCabling(before, design, devices) : listCabling(design)),
   };

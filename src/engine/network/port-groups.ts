@@ -1,7 +1,7 @@
 import type { Member } from '../model/devices.ts';
 import type { Id } from '../model/scalars.ts';
-import type { Bundle, Cable, Device, End, Network, PortGroup } from './network.ts';
-import { ends, otherEnd, perObject } from './network.ts';
+import type { Bundle, Cable, DesignFacts, Device, End, Network, PortGroup } from './network.ts';
+import { otherEnd, perObject } from './network.ts';
 
 type Draft = Omit<PortGroup, 'bundles'> & { readonly bundles: PortGroup['bundles'][number][] };
 
@@ -49,15 +49,11 @@ const groupsOf = (id: Id, device: Device): Draft[] => {
   const groups: Draft[] = [];
   for (const member of membersOf(device))
     for (const { ports, aggregation } of logicalPorts(device).all)
-      groups.push({
-        index: groups.length,
-        device: id,
-        member,
-        port: ports[0]!,
-        ports,
-        bundles: [],
-        ...(aggregation === undefined ? {} : { aggregation }),
-      });
+      groups.push(
+        aggregation === undefined
+          ? { index: groups.length, device: id, member, port: ports[0]!, ports, bundles: [] }
+          : { index: groups.length, device: id, member, port: ports[0]!, ports, bundles: [], aggregation },
+      );
   return groups;
 };
 
@@ -80,47 +76,58 @@ export const portGroupAt = (
   return index === undefined ? undefined : portGroupsByDevice.get(device)?.[index];
 };
 
-/** Groups ports by aggregation and cables by the two groups they join. Devices and cables come in order of id. */
+type BundleDraft = Bundle & { readonly cables: Id[]; readonly alive: Id[] };
+
+/** The bundle that joins the two groups already; undefined where there is none. */
+const bundleBetween = (bundles: readonly BundleDraft[], a: Draft, b: Draft): BundleDraft | undefined => {
+  for (const { bundle } of a.bundles) {
+    const other = bundles[bundle]!;
+    if ((other.a === a && other.b === b) || (other.a === b && other.b === a)) return other;
+  }
+  return undefined;
+};
+
+/** Groups ports by aggregation and cables by the two groups they join. Ids of devices and links come in order. */
 export const cablingOf = (
-  devices: readonly (readonly [Id, Device])[],
-  cables: readonly (readonly [Id, Cable])[],
+  { devices, links }: DesignFacts,
+  deviceIds: readonly Id[],
+  linkIds: readonly Id[],
 ): Cabling => {
-  const byDevice = new Map(devices.map(([id, device]) => [id, { device, groups: groupsOf(id, device) }]));
-  type Plugged = { readonly group: Draft; readonly isShut: boolean };
-  const pluggedIn = ({ device: id, port, member }: Cable['a']): Plugged | undefined => {
-    const { device, groups } = byDevice.get(id)!;
+  const portGroupsByDevice = new Map<Id, Draft[]>();
+  for (const id of deviceIds) {
+    const groups = groupsOf(id, devices[id]!);
+    if (groups.length > 0) portGroupsByDevice.set(id, groups);
+  }
+  const groupOf = (device: Device, { device: id, port, member }: Cable['a']): Draft | undefined => {
     // Only a pair has members: on anything else a plug that names one is in the device all the same.
     const index = groupIndex(device, port, device.kind === 'ha-pair' ? member : undefined);
-    const group = index === undefined ? undefined : groups[index];
-    return group === undefined ? undefined : { group, isShut: device.ports[port]?.shut === true };
+    return index === undefined ? undefined : portGroupsByDevice.get(id)![index];
   };
 
-  const bundles: (Bundle & { readonly cables: Id[]; readonly alive: Id[] })[] = [];
+  const bundles: BundleDraft[] = [];
   const bundleByCable = new Map<Id, Bundle>();
-  for (const [id, cable] of cables) {
-    const [plugA, plugB] = [pluggedIn(cable.a), pluggedIn(cable.b)];
-    if (plugA === undefined || plugB === undefined) continue;
-    const [a, b] = [plugA.group, plugB.group];
+  for (const id of linkIds) {
+    const cable = links[id]!;
+    if (cable.kind !== 'cable') continue;
+    const deviceA = devices[cable.a.device]!;
+    const deviceB = devices[cable.b.device]!;
+    const a = groupOf(deviceA, cable.a);
+    const b = groupOf(deviceB, cable.b);
+    if (a === undefined || b === undefined) continue;
     // Two cables between the same single ports stay two: only an aggregate makes one crossing of several.
     const isAggregated = a.aggregation !== undefined || b.aggregation !== undefined;
-    const joinsTheSame = ({ bundle }: Draft['bundles'][number]): boolean => {
-      const other = bundles[bundle]!;
-      return (other.a === a && other.b === b) || (other.a === b && other.b === a);
-    };
-    const known = isAggregated ? a.bundles.find(joinsTheSame) : undefined;
-    let bundle = known === undefined ? undefined : bundles[known.bundle];
+    let bundle = isAggregated ? bundleBetween(bundles, a, b) : undefined;
     if (bundle === undefined) {
       bundle = { index: bundles.length, cables: [], alive: [], a, b };
       bundles.push(bundle);
-      const at = { a, b };
-      for (const end of ends) at[end].bundles.push({ bundle: bundle.index, end });
+      a.bundles.push({ bundle: bundle.index, end: 'a' });
+      b.bundles.push({ bundle: bundle.index, end: 'b' });
     }
     bundle.cables.push(id);
-    if (!plugA.isShut && !plugB.isShut) bundle.alive.push(id);
+    const isShut = deviceA.ports[cable.a.port]?.shut === true || deviceB.ports[cable.b.port]?.shut === true;
+    if (!isShut) bundle.alive.push(id);
     bundleByCable.set(id, bundle);
   }
-  const portGroupsByDevice = new Map<Id, readonly PortGroup[]>();
-  for (const [id, { groups }] of byDevice) if (groups.length > 0) portGroupsByDevice.set(id, groups);
   return { portGroupsByDevice, bundles, bundleByCable };
 };
 

@@ -6,7 +6,7 @@ export const activeActiveSharesAssociation = defineRule({
   id: 'active-active-shares-association',
   title: 'Only one member of a pair sends under the keys of an association',
   severity: 'blocking',
-  looksAt: ['devices', 'associations', 'links', 'transports'],
+  looksAt: ['gateways', 'associations', 'landings', 'carriers'],
   why: 'Both members count packets from their own last number. The peer takes the slower one’s packets for replays, and with counter-based encryption the same number under the same key gives both packets away.',
   seen: 'About half of the traffic is missing, and the peer’s replay counter rises with every packet of one member.',
   sources: [

@@ -47,7 +47,7 @@ export const aggregateEndsApart = defineRule({
   id: 'aggregate-ends-apart',
   title: 'All cables of a link aggregate end at one device',
   severity: 'degrading',
-  looksAt: ['devices', 'links', 'forwarders', 'profiles'],
+  looksAt: ['devices', 'cables', 'forwarders', 'profiles'],
   why: 'The sender spreads flows over all cables, as if one partner held the other ends. Two devices that don’t act as one, or a member that stands by, lose the flows that come their way.',
   seen: 'With LACP one of the cables never joins the aggregate; with a static one some pairs of hosts reach each other and others, by chance, never do.',
   sources: ['common practice, no source'],
@@ -60,8 +60,7 @@ export const aggregateEndsApart = defineRule({
   },
   check: (network) =>
     [...network.portGroupsByDevice.values()]
-      .flat()
-      .filter((group) => isApart(network, group))
+      .flatMap((groups) => groups.filter((group) => isApart(network, group)))
       .map((group) => {
         const far = farEnds(network, group);
         const cables = group.bundles.flatMap(({ bundle }) => network.bundles[bundle]!.alive);

@@ -6,7 +6,7 @@ export const associationBothBehindNat = defineRule({
   id: 'association-both-behind-nat',
   title: 'At least one end of an association can be reached from outside',
   severity: 'blocking',
-  looksAt: ['associations', 'links', 'transports', 'devices', 'sites'],
+  looksAt: ['associations', 'landings', 'carriers', 'gateways', 'sites'],
   why: 'A NAT lets nothing in that was not asked for from inside. With one at both ends neither first packet arrives.',
   seen: 'Both ends send the first IKE packet again and again; neither sees the one of the other.',
   sources: [{ document: 'RFC 7296', clause: 'section 2.23' }],

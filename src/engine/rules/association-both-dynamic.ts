@@ -6,7 +6,7 @@ export const associationBothDynamic = defineRule({
   id: 'association-both-dynamic',
   title: 'At least one end of an association has a lasting address or name',
   severity: 'blocking',
-  looksAt: ['associations', 'links', 'transports', 'devices', 'sites'],
+  looksAt: ['associations', 'landings', 'carriers', 'gateways', 'sites'],
   why: 'Neither end knows where to send the first packet, since both outside addresses change.',
   seen: 'The association works until an address changes, then stays down until somebody looks up the new one by hand.',
   sources: [{ document: 'RFC 7296', clause: 'section 2.23' }, 'common practice, no source'],

@@ -39,7 +39,7 @@ export const associationClearWhenDown = defineRule({
   id: 'association-clear-when-down',
   title: 'Without keys the tunnels’ packets are dropped, not sent in clear',
   severity: 'blocking',
-  looksAt: ['associations', 'tunnels', 'links', 'transports', 'devices', 'sites'],
+  looksAt: ['associations', 'tunnels', 'landings', 'carriers', 'gateways', 'sites'],
   why: 'Whenever the association is down, at every restart at the latest, frames of the segments cross the transport readable, and answers may be taken from anybody.',
   seen: 'Pings between the endpoints go on while the association is down, and a capture on the WAN port shows UDP 4789.',
   sources: [

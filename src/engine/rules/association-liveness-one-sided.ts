@@ -6,7 +6,7 @@ export const associationLivenessOneSided = defineRule({
   id: 'association-liveness-one-sided',
   title: 'Both ends of an association check that the other is alive, or neither does',
   severity: 'degrading',
-  looksAt: ['associations', 'devices', 'sites'],
+  looksAt: ['associations', 'gateways', 'sites'],
   why: 'The end that doesn’t check keeps sending into keys that the other has long dropped.',
   seen: 'After a failure one gateway shows the association as up and the other as down; traffic from the first vanishes until its keys run out.',
   sources: [{ document: 'RFC 7296', clause: 'section 2.4' }],

@@ -6,7 +6,7 @@ export const associationModeMismatch = defineRule({
   id: 'association-mode-mismatch',
   title: 'Both ends of an association use one mode',
   severity: 'degrading',
-  looksAt: ['associations', 'devices', 'sites'],
+  looksAt: ['associations', 'gateways', 'sites'],
   why: 'Transport mode is a wish that the other end may leave unanswered: keys are then made in tunnel mode, with an IP header more on every packet, unless the end that asked gives up.',
   seen: 'The association is up and large packets don’t fit; or it comes up and is deleted at once, again and again.',
   sources: [{ document: 'RFC 7296', clause: 'section 1.3.1' }],

@@ -8,7 +8,7 @@ export const associationNeitherReachable = defineRule({
   id: 'association-neither-reachable',
   title: 'A first packet can reach one end of an association',
   severity: 'blocking',
-  looksAt: ['associations', 'links', 'transports', 'devices', 'sites'],
+  looksAt: ['associations', 'landings', 'carriers', 'gateways', 'sites'],
   why: 'One end can’t be found because its address changes, the other can’t be entered because its NAT forwards nothing: no first packet arrives.',
   seen: 'The end behind NAT has nobody to call; what the other end sends dies at the NAT.',
   sources: [{ document: 'RFC 7296', clause: 'section 2.23' }],

@@ -7,7 +7,7 @@ export const associationNoCommonPath = defineRule({
   id: 'association-no-common-path',
   title: 'Both ends of an association land on one transport with one address family',
   severity: 'blocking',
-  looksAt: ['associations', 'links', 'transports', 'devices', 'sites'],
+  looksAt: ['associations', 'landings', 'carriers', 'gateways', 'sites'],
   why: 'The two gateways have no way to each other, so that the association and every tunnel inside it stay down.',
   seen: 'The first IKE packet is never answered, or never leaves.',
   sources: [{ document: 'RFC 7296', clause: 'section 2' }],

@@ -6,7 +6,7 @@ export const associationNobodyStarts = defineRule({
   id: 'association-nobody-starts',
   title: 'At least one end of an association starts it',
   severity: 'blocking',
-  looksAt: ['associations', 'devices', 'sites'],
+  looksAt: ['associations', 'gateways', 'sites'],
   why: 'Two ends that only answer wait for each other forever.',
   seen: 'No IKE packet is ever sent; both gateways show the association as waiting.',
   sources: [{ document: 'RFC 7296', clause: 'section 1.2' }],

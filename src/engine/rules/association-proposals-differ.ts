@@ -83,7 +83,7 @@ export const associationProposalsDiffer = defineRule({
   id: 'association-proposals-differ',
   title: 'Both ends of an association propose something in common',
   severity: 'blocking',
-  looksAt: ['associations', 'devices', 'sites'],
+  looksAt: ['associations', 'gateways', 'sites'],
   why: 'The end that answers accepts only a proposal it knows whole. Without one in common there are no keys and no association.',
   seen: 'The end that starts logs that no proposal was chosen and tries again forever.',
   sources: [{ document: 'RFC 7296', clause: 'section 2.7' }],

@@ -5,6 +5,7 @@ import { associationPath, landingFamilies, landingOf, landingSpeaks } from '../n
 import type { End, Network } from '../network/network.ts';
 import { ends, entryOf } from '../network/network.ts';
 import { defineRule } from './define-rule.ts';
+import { perEntry } from './facts.ts';
 import { unusedId } from './unused-id.ts';
 import { counted, sentenceCase } from './wording.ts';
 
@@ -16,34 +17,38 @@ interface Spare {
 }
 
 /** A transport on which both ends land, and which their association can't turn to. */
-const spareOf = (network: Network, id: Id): Spare | undefined => {
-  const association = entryOf(network.design.associations, id);
-  const path = associationPath(network, id);
-  if (!path.ok) return undefined;
-  const named = (end: End): readonly Id[] =>
-    inRankOrder(association[end].via).map(([, step]) => step.landing);
-  const own = (end: End): readonly Id[] =>
-    (network.landingsByDevice.get(association[end].device) ?? []).filter((landing) =>
-      landingSpeaks(network, landing),
-    );
-  const mayUse = (end: End): readonly Id[] => (named(end).length > 0 ? named(end) : own(end));
-  const meets = (a: Id, b: Id): boolean =>
-    landingOf(network, a).transport === landingOf(network, b).transport &&
-    landingOf(network, a).transport !== path.transport &&
-    landingFamilies(network, a).some((family) => landingFamilies(network, b).includes(family));
-  if (mayUse('a').some((a) => mayUse('b').some((b) => meets(a, b)))) return undefined;
-  for (const a of own('a')) {
-    const b = own('b').find((other) => meets(a, other));
-    if (b !== undefined)
-      return {
-        association: id,
-        used: path.transport,
-        transport: landingOf(network, a).transport,
-        landings: { a, b },
-      };
-  }
-  return undefined;
-};
+const spareOf = perEntry(
+  'associations',
+  ['gateways', 'landings', 'carriers'],
+  (network, id): Spare | undefined => {
+    const association = entryOf(network.design.associations, id);
+    const path = associationPath(network, id);
+    if (!path.ok) return undefined;
+    const named = (end: End): readonly Id[] =>
+      inRankOrder(association[end].via).map(([, step]) => step.landing);
+    const own = (end: End): readonly Id[] =>
+      (network.landingsByDevice.get(association[end].device) ?? []).filter((landing) =>
+        landingSpeaks(network, landing),
+      );
+    const mayUse = (end: End): readonly Id[] => (named(end).length > 0 ? named(end) : own(end));
+    const meets = (a: Id, b: Id): boolean =>
+      landingOf(network, a).transport === landingOf(network, b).transport &&
+      landingOf(network, a).transport !== path.transport &&
+      landingFamilies(network, a).some((family) => landingFamilies(network, b).includes(family));
+    if (mayUse('a').some((a) => mayUse('b').some((b) => meets(a, b)))) return undefined;
+    for (const a of own('a')) {
+      const b = own('b').find((other) => meets(a, other));
+      if (b !== undefined)
+        return {
+          association: id,
+          used: path.transport,
+          transport: landingOf(network, a).transport,
+          landings: { a, b },
+        };
+    }
+    return undefined;
+  },
+);
 
 /** Associations that leave the same transport out in favour of the same other: one fault, however many they are. */
 const spares = (network: Network): ReadonlyMap<string, readonly Spare[]> => {
@@ -63,7 +68,7 @@ export const associationWithoutSecondPath = defineRule({
   id: 'association-without-second-path',
   title: 'An association may turn to every transport that joins its ends',
   severity: 'degrading',
-  looksAt: ['associations', 'links', 'devices', 'transports'],
+  looksAt: ['associations', 'landings', 'gateways', 'carriers'],
   why: 'Both ends land on a second transport, but the association names addresses of the first alone: when that fails the tunnels are down, although a way is left.',
   seen: 'The first line is cut, the second one is up and idle, and the segment is parted.',
   sources: [{ document: 'RFC 4555', clause: 'section 1.1' }],

@@ -7,7 +7,7 @@ export const associationWrongInitiator = defineRule({
   id: 'association-wrong-initiator',
   title: 'The end that can’t be reached from outside starts the association',
   severity: 'blocking',
-  looksAt: ['associations', 'links', 'transports', 'devices', 'sites'],
+  looksAt: ['associations', 'landings', 'carriers', 'gateways', 'sites'],
   why: 'A first packet can’t be sent to an end behind NAT or with a changing address. If that end only answers, nobody ever reaches it.',
   seen: 'The other end sends the first IKE packet again and again without an answer; nothing arrives at this one.',
   sources: [{ document: 'RFC 7296', clause: 'section 2.23' }],

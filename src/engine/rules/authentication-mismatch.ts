@@ -19,7 +19,7 @@ export const authenticationMismatch = defineRule({
   id: 'authentication-mismatch',
   title: 'Both ends of an association prove themselves in the same way',
   severity: 'blocking',
-  looksAt: ['associations', 'devices', 'sites'],
+  looksAt: ['associations', 'gateways', 'sites'],
   why: 'Each end must be able to check what the other presents. A key against a certificate, or two different keys, ends in refusal.',
   seen: 'IKE gets as far as its second exchange and stops there: authentication failed.',
   sources: [{ document: 'RFC 7296', clause: 'section 2.15' }],

@@ -1,6 +1,7 @@
 import type { Collection } from '../model/design.ts';
 import type { Network, PortCircuit } from '../network/network.ts';
-import { entryOf, perNetwork, segmentsAt } from '../network/network.ts';
+import { entryOf, segmentsAt } from '../network/network.ts';
+import { perFacts } from './facts.ts';
 
 /** What decides which segments a tunnel carries: every collection that says how frames travel. */
 export const segmentPathFacts = [
@@ -32,8 +33,12 @@ export const segmentsOfCircuit = (
   return taken.flatMap((vlan) => segmentsAt(network, site, vlan));
 };
 
+/** What decides which segments a circuit takes in. */
+export const circuitFacts = ['forwarders', 'gateways', 'addressing'] as const;
+
 /** The segments that each forwarder serves, in order of id. */
-export const segmentsByForwarder = perNetwork(
+export const segmentsByForwarder = perFacts(
+  circuitFacts,
   (network): ReadonlyMap<string, readonly string[]> =>
     new Map(
       [...network.circuitsByForwarder].map(([forwarder, circuits]) => [

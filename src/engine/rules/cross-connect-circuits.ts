@@ -8,7 +8,7 @@ export const crossConnectCircuits = defineRule({
   id: 'cross-connect-circuits',
   title: 'A cross-connect joins exactly one port and one tunnel',
   severity: 'blocking',
-  looksAt: ['forwarders', 'devices', 'sites', 'tunnels', 'endpoints'],
+  looksAt: ['forwarders', 'gateways', 'sites', 'tunnels', 'endpoints'],
   why: 'A cross-connect learns no addresses: it hands every frame from its one side to its other. With more or fewer circuits there is no other side to hand it to.',
   seen: 'The equipment refuses the setting, or frames of the surplus circuit go nowhere.',
   sources: [{ document: 'RFC 4664', clause: 'section 3.1.1' }],

@@ -7,7 +7,7 @@ export const crossConnectWithoutPolicy = defineRule({
   id: 'cross-connect-without-policy',
   title: 'Every cross-connect has a filter policy that permits something',
   severity: 'blocking',
-  looksAt: ['forwarders', 'devices', 'sites', 'segments'],
+  looksAt: ['forwarders', 'gateways', 'sites', 'addressing'],
   why: 'A cross-connect drops what no rule permits. Without a permitting rule not even address resolution passes.',
   seen: 'The tunnel is up and nothing crosses it; the cross-connect’s drop counter rises with every ARP request.',
   sources: ['common practice, no source', { document: 'RFC 826' }],

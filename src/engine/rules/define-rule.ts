@@ -1,6 +1,8 @@
 import type { Collection, ElementRef } from '../model/design.ts';
 import type { Network } from '../network/network.ts';
 import type { CheckContext } from './check-context.ts';
+import type { Fact } from './facts.ts';
+import { placeOfFact } from './facts.ts';
 import type { Finding, Fix, JsonValue, Mark, PropertyRef, Severity, Source } from './finding.ts';
 import { fingerprintOf } from './fingerprint.ts';
 
@@ -15,8 +17,6 @@ export interface Message<Values> {
   readonly seen?: string;
 }
 type Messages = { readonly [name: string]: Message<never> };
-/** What a rule may look at: a collection, or what the design says of itself. */
-export type Fact = Collection | 'meta';
 type JsonRecord = { readonly [name: string]: JsonValue };
 
 /** What every fault says about itself beside its message. */
@@ -48,7 +48,7 @@ export interface RuleDefinition<M extends Messages> {
   /** The good state. */
   readonly title: string;
   readonly severity: Severity;
-  /** Collections that the check reads, names for its sentences included: untouched ones let an earlier answer stand. */
+  /** All that the check reads, names for its sentences included: while none of it is touched an earlier answer stands. */
   readonly looksAt: readonly [Fact, ...Fact[]];
   /** Why it hurts. */
   readonly why: string;
@@ -74,7 +74,9 @@ export interface Rule {
   readonly id: string;
   readonly title: string;
   readonly severity: Severity;
-  readonly looksAt: readonly Fact[];
+  readonly facts: readonly Fact[];
+  /** Where its facts stand in the document. */
+  readonly looksAt: readonly ('meta' | Collection)[];
   readonly why: string;
   readonly seen: string;
   readonly sources: readonly Source[];
@@ -120,7 +122,8 @@ export const defineRule = <const M extends Messages>(definition: RuleDefinition<
     id,
     title,
     severity,
-    looksAt,
+    facts: looksAt,
+    looksAt: [...new Set(looksAt.map(placeOfFact))],
     why,
     seen,
     sources,

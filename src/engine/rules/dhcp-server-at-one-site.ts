@@ -6,7 +6,7 @@ export const dhcpServerAtOneSite = defineRule({
   id: 'dhcp-server-at-one-site',
   title: 'Leases outlast a cut of the tunnels to the DHCP server',
   severity: 'degrading',
-  looksAt: segmentGatewayFacts,
+  looksAt: [...segmentGatewayFacts, 'segments'],
   why: 'While the tunnels are down nobody at the other sites gets or renews an address. Leases longer than the longest outage you expect are enough, or a server at each site with its own part of the range and a filter between.',
   seen: 'During a long outage hosts of the other sites lose their addresses one by one, and those that start up get none.',
   sources: ['common practice, no source'],

@@ -34,13 +34,22 @@ const scopeOf = (entry: Entries[string]): string => {
 };
 
 const gather = (marks: Iterable<readonly [mark: string, id: string]>): readonly (readonly string[])[] => {
+  const first = new Map<string, string>();
+  // Most names are used once: a set is made at the second use only.
   const byMark = new Map<string, Set<string>>();
-  for (const [mark, id] of marks) byMark.set(mark, (byMark.get(mark) ?? new Set()).add(id));
+  for (const [mark, id] of marks) {
+    const before = first.get(mark);
+    if (before === undefined) first.set(mark, id);
+    else byMark.set(mark, (byMark.get(mark) ?? new Set([before])).add(id));
+  }
   return [...byMark.values()].filter((ids) => ids.size > 1).map((ids) => [...ids].sort());
 };
 
+/** An entry's name as it is compared, in its scope. */
+const markOf = perObject((entry: Entries[string]): string => `${scopeOf(entry)} ${spelt(entry.name)}`);
+
 const namesakes = perObject((entries: Entries): readonly (readonly string[])[] =>
-  gather(Object.entries(entries).map(([id, entry]) => [`${scopeOf(entry)} ${spelt(entry.name)}`, id])),
+  gather(Object.entries(entries).map(([id, entry]) => [markOf(entry), id])),
 );
 
 const identities = ({ design }: Network): readonly (readonly [identity: string, device: string])[] =>

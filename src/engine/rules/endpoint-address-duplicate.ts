@@ -3,8 +3,9 @@ import type { MergePatch } from '../model/merge-patch.ts';
 import { applyPatch, diffPatch } from '../model/merge-patch.ts';
 import { indexNetwork } from '../network/index-network.ts';
 import type { Network } from '../network/network.ts';
-import { perNetwork, perObject } from '../network/network.ts';
+import { perObject } from '../network/network.ts';
 import { defineRule } from './define-rule.ts';
+import { perFacts } from './facts.ts';
 import { betterAddress, families, familyField, plainAddress, readdressPatch } from './endpoint-addresses.ts';
 import { sharedSets } from './grouping.ts';
 import { counted, listed, namedOrCounted, sentenceCase } from './wording.ts';
@@ -17,20 +18,23 @@ const plainAddresses = perObject((endpoint: Entry<'endpoints'>): readonly string
 );
 
 /** Endpoints that have an address in common; the two members of one pair may share theirs. */
-export const duplicateEndpoints = perNetwork(({ design }): readonly (readonly string[])[] => {
-  const marked = Object.entries(design.endpoints).flatMap(([id, endpoint]) =>
-    plainAddresses(endpoint).map((address) => [address, id] as const),
-  );
-  return sharedSets(marked).filter((ids) => {
-    const [first, ...others] = ids.map((id) => design.endpoints[id]!);
-    const isOnePair =
-      design.devices[first!.device]!.kind === 'ha-pair' &&
-      others.every((other) => other.device === first!.device) &&
-      new Set(ids.map((id) => design.endpoints[id]!.member)).size === ids.length &&
-      ids.every((id) => design.endpoints[id]!.member !== undefined);
-    return !isOnePair;
-  });
-});
+export const duplicateEndpoints = perFacts(
+  ['endpoints', 'gateways'],
+  ({ design }): readonly (readonly string[])[] => {
+    const marked = Object.entries(design.endpoints).flatMap(([id, endpoint]) =>
+      plainAddresses(endpoint).map((address) => [address, id] as const),
+    );
+    return sharedSets(marked).filter((ids) => {
+      const [first, ...others] = ids.map((id) => design.endpoints[id]!);
+      const isOnePair =
+        design.devices[first!.device]!.kind === 'ha-pair' &&
+        others.every((other) => other.device === first!.device) &&
+        new Set(ids.map((id) => design.endpoints[id]!.member)).size === ids.length &&
+        ids.every((id) => design.endpoints[id]!.member !== undefined);
+      return !isOnePair;
+    });
+  },
+);
 
 const addressesOf = (design: Network['design'], id: string): readonly string[] =>
   plainAddresses(design.endpoints[id]!);
@@ -39,7 +43,7 @@ export const endpointAddressDuplicate = defineRule({
   id: 'endpoint-address-duplicate',
   title: 'Every endpoint has an address of its own',
   severity: 'blocking',
-  looksAt: ['endpoints', 'devices', 'tunnels', 'associations', 'links', 'segments'],
+  looksAt: ['endpoints', 'gateways', 'tunnels', 'associations', 'landings', 'addressing'],
   why: 'A receiver learns hosts behind the outer source address. With one address at two places it sends frames to the wrong one, and the selectors of two associations claim the same packets.',
   seen: 'Hosts answer now from one site, now from another; a second association comes up and the first goes silent.',
   sources: [

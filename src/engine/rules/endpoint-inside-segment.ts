@@ -1,5 +1,5 @@
-import { perNetwork } from '../network/network.ts';
 import { defineRule } from './define-rule.ts';
+import { perFacts } from './facts.ts';
 import type { Family } from '../network/association-path.ts';
 import {
   betterAddress,
@@ -19,7 +19,7 @@ interface Inside {
 }
 
 /** Endpoints whose address lies in a subnet of a segment. */
-export const insideSegments = perNetwork((network): readonly Inside[] =>
+export const insideSegments = perFacts(['endpoints', 'addressing'], (network): readonly Inside[] =>
   Object.entries(network.design.endpoints).flatMap(([endpoint, entry]) =>
     families.flatMap((family) => {
       const address = entry[familyField(family)];
@@ -33,7 +33,7 @@ export const endpointInsideSegment = defineRule({
   id: 'endpoint-inside-segment',
   title: 'Endpoints have addresses outside every segment',
   severity: 'blocking',
-  looksAt: ['endpoints', 'segments', 'devices', 'tunnels', 'associations', 'links'],
+  looksAt: ['endpoints', 'addressing', 'gateways', 'tunnels', 'associations', 'landings'],
   why: 'Gateways look for an address of a segment’s subnet on that segment: the tunnel’s own packets are then sent into the tunnel, or asked for by ARP among the hosts.',
   seen: 'The tunnel comes up and goes down again within seconds, or the endpoint can be reached from one side only.',
   sources: ['common practice, no source'],

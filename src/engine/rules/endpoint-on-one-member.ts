@@ -13,7 +13,7 @@ export const endpointOnOneMember = defineRule({
   id: 'endpoint-on-one-member',
   title: 'An HA pair’s endpoint belongs to the pair, or each member has its own tunnels',
   severity: 'blocking',
-  looksAt: ['endpoints', 'tunnels', 'devices'],
+  looksAt: ['endpoints', 'tunnels', 'gateways'],
   why: 'When the other member takes over, the address to which the far ends send stays behind on the failed one, and every tunnel to it with it.',
   seen: 'All is well until the first failover; then the pair’s new active member is up and no site reaches it.',
   sources: [{ document: 'RFC 8014', clause: 'section 4.4' }],

@@ -33,7 +33,7 @@ export const forwardSecrecyMismatch = defineRule({
   id: 'forward-secrecy-mismatch',
   title: 'Both ends of an association renew child keys in the same way',
   severity: 'degrading',
-  looksAt: ['associations', 'devices', 'sites'],
+  looksAt: ['associations', 'gateways', 'sites'],
   why: 'The first child keys come from the IKE keys without an exchange of their own. Only at the first renewal one end asks for an exchange that the other refuses.',
   seen: 'Everything works after the change and for the first hours; then the tunnel stops, and works again after a restart. Test a rekey before you leave.',
   sources: [{ document: 'RFC 7296', clause: 'section 1.2 and section 1.3.1' }],

@@ -59,7 +59,7 @@ export const gatewayAddressDuplicate = defineRule({
   id: 'gateway-address-duplicate',
   title: 'A gateway’s own address is its alone on the segment',
   severity: 'blocking',
-  looksAt: segmentGatewayFacts,
+  looksAt: [...segmentGatewayFacts, 'hosts'],
   why: 'Both answer to ARP for the address, and each host believes whoever answered last. Two gateways that shall share one address need a first-hop redundancy group, with an address of its own for each.',
   seen: 'Connections out of the segment break and heal every few minutes; hosts log that an address is in use twice.',
   sources: [{ document: 'RFC 5227', clause: 'section 2.4' }],

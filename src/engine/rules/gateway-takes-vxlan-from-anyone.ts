@@ -7,7 +7,7 @@ export const gatewayTakesVxlanFromAnyone = defineRule({
   id: 'gateway-takes-vxlan-from-anyone',
   title: 'Gateways take VXLAN from their peers only',
   severity: 'blocking',
-  looksAt: ['devices', 'links', 'transports'],
+  looksAt: ['gateways', 'landings', 'carriers'],
   why: 'VXLAN knows no passwords: anybody who sends to UDP 4789 with the right VNI puts frames into the segment, behind every firewall.',
   seen: 'Nothing on site; in a capture on the WAN port, VXLAN from addresses that nobody knows.',
   sources: [{ document: 'RFC 7348', clause: 'section 7' }],

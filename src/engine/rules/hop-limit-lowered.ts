@@ -13,7 +13,7 @@ export const hopLimitLowered = defineRule({
   id: 'hop-limit-lowered',
   title: 'Nothing between the sites of a segment lowers the TTL of its packets',
   severity: 'blocking',
-  looksAt: ['devices', 'profiles', 'forwarders', 'segments'],
+  looksAt: ['gateways', 'profiles', 'forwarders', 'segments'],
   why: 'Neighbours of these protocols believe only packets that no router has handled: sent with a TTL of 1, which doesn’t survive, or of 255, which is checked.',
   seen: 'Neighbours see each other’s packets in a capture, with a TTL of 0 or 254, and still don’t come up.',
   sources: [

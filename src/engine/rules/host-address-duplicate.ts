@@ -1,12 +1,20 @@
+import type { Device } from '../network/network.ts';
+import { perObject } from '../network/network.ts';
 import { defineRule } from './define-rule.ts';
 import { plainAddress } from './endpoint-addresses.ts';
 import { counted, listed, sentenceCase } from './wording.ts';
+
+/** A host's addresses, each in one spelling. */
+const addressesOf = perObject(
+  (device: Device): ReadonlySet<string> =>
+    new Set(device.kind === 'host' ? (device.addresses ?? []).map(plainAddress) : []),
+);
 
 export const hostAddressDuplicate = defineRule({
   id: 'host-address-duplicate',
   title: 'No two hosts of a segment have one address',
   severity: 'blocking',
-  looksAt: ['devices', 'segments'],
+  looksAt: ['hosts', 'addressing'],
   why: 'As long as the sites were apart both could have it. Once the segment is stretched, both answer for the address and each neighbour believes whoever answered last.',
   seen: 'Both hosts report that their address is in use; connections to either break off at random. Make an inventory and renumber before stretching.',
   sources: [{ document: 'RFC 5227', clause: 'section 2.4' }],
@@ -21,10 +29,11 @@ export const hostAddressDuplicate = defineRule({
     [...hostsBySegment].flatMap(([segment, hosts]) => {
       const owners = new Map<string, string[]>();
       for (const id of hosts) {
-        const device = design.devices[id]!;
-        if (device.kind !== 'host') continue;
-        for (const address of new Set((device.addresses ?? []).map(plainAddress)))
-          owners.set(address, [...(owners.get(address) ?? []), id]);
+        for (const address of addressesOf(design.devices[id]!)) {
+          const known = owners.get(address);
+          if (known === undefined) owners.set(address, [id]);
+          else known.push(id);
+        }
       }
       return [...owners].flatMap(([address, ids]) => {
         if (ids.length < 2) return [];

@@ -70,7 +70,7 @@ export const identityFollowsAddress = defineRule({
   id: 'identity-follows-address',
   title: 'Ends without a fixed public address identify themselves by a name',
   severity: 'degrading',
-  looksAt: ['associations', 'links', 'transports', 'devices', 'sites'],
+  looksAt: ['associations', 'landings', 'carriers', 'gateways', 'sites'],
   why: 'The other end looks the key up by this identity. An address that changes, or that NAT replaces, is another one the next time.',
   seen: 'The association comes up until the provider assigns a new address; then authentication fails.',
   sources: [{ document: 'RFC 7296', clause: 'section 3.5' }, 'common practice, no source'],

@@ -33,7 +33,7 @@ export const ikeFragmentsDropped = defineRule({
   id: 'ike-fragments-dropped',
   title: 'IKE cuts its long messages itself where a transport drops fragments',
   severity: 'blocking',
-  looksAt: ['associations', 'links', 'transports', 'devices'],
+  looksAt: ['associations', 'landings', 'carriers', 'gateways'],
   why: 'A certificate makes the message that carries it longer than a packet. IP cuts it, the transport drops the pieces, and the exchange never ends.',
   seen: 'The first two messages are answered, the one with the certificate never is; with a pre-shared key the same line works.',
   sources: [

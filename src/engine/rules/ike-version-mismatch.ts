@@ -6,7 +6,7 @@ export const ikeVersionMismatch = defineRule({
   id: 'ike-version-mismatch',
   title: 'Both ends of an association speak the same version of IKE',
   severity: 'blocking',
-  looksAt: ['associations', 'devices', 'sites'],
+  looksAt: ['associations', 'gateways', 'sites'],
   why: 'The two versions don’t understand each other, so that no association comes up. IKEv1 is historic besides.',
   seen: 'The answering end drops the first packet or complains of its version.',
   sources: [

@@ -8,7 +8,7 @@ export const integrityTruncationDiffers = defineRule({
   id: 'integrity-truncation-differs',
   title: 'Both ends cut the integrity value to the same length',
   severity: 'blocking',
-  looksAt: ['associations', 'devices', 'profiles', 'sites'],
+  looksAt: ['associations', 'gateways', 'profiles', 'sites'],
   why: 'Some equipment cuts HMAC-SHA2-256 to 96 bits, as an early draft said, instead of 128. Keys are made, but each end refuses every packet of the other.',
   seen: 'The association is up at both ends, and both count an integrity failure for every packet.',
   sources: [

@@ -75,7 +75,7 @@ export const landingAddressUnroutable = defineRule({
   id: 'landing-address-unroutable',
   title: 'WAN ports have addresses that the transport can carry',
   severity: 'blocking',
-  looksAt: ['links', 'transports', 'devices', 'sites', 'meta'],
+  looksAt: ['landings', 'carriers', 'gateways', 'sites', 'meta'],
   why: 'Such an address means nothing beyond its own wire, or its own device: nobody can send to it.',
   seen: 'The gateway shows its WAN port as up, and no packet ever comes back.',
   sources: [

@@ -6,7 +6,7 @@ export const landingInsideSegment = defineRule({
   id: 'landing-inside-segment',
   title: 'Tunnels run outside the segments that they carry',
   severity: 'blocking',
-  looksAt: ['links', 'segments', 'devices', 'sites'],
+  looksAt: ['landings', 'addressing', 'gateways', 'sites'],
   why: 'A gateway looks for an address of a segment’s subnet on that segment, and so sends the tunnel’s own packets into the tunnel. The way to the other end must never lead through the overlay.',
   seen: 'The tunnel comes up, learns the way through itself, goes down and starts again, every few seconds.',
   sources: ['common practice, no source'],

@@ -52,7 +52,7 @@ export const landingOnOneMember = defineRule({
   id: 'landing-on-one-member',
   title: 'Both members of an HA pair are plugged into the transport',
   severity: 'blocking',
-  looksAt: ['links', 'devices', 'transports', 'associations', 'tunnels', 'endpoints'],
+  looksAt: ['landings', 'gateways', 'carriers', 'associations', 'tunnels', 'endpoints'],
   why: 'The member that takes over has the addresses and the keys, and no line to send them over.',
   seen: 'All is well until the pair fails over; then its outside line is dark and every association over it is down until it fails back.',
   sources: ['common practice, no source'],

@@ -50,7 +50,7 @@ export const livenessShorterThanFailover = defineRule({
   id: 'liveness-shorter-than-failover',
   title: 'Liveness checks wait longer than the peer takes to fail over',
   severity: 'degrading',
-  looksAt: ['associations', 'devices', 'sites'],
+  looksAt: ['associations', 'gateways', 'sites'],
   why: 'The end gives its peer up while the other member is just taking over, and tears down keys that would have gone on working.',
   seen: 'Every failover of the pair costs a full negotiation, although its members share their state.',
   sources: ['common practice, no source'],

@@ -6,7 +6,7 @@ export const managementInsideSegment = defineRule({
   id: 'management-inside-segment',
   title: 'Devices are administered outside the stretched segments',
   severity: 'degrading',
-  looksAt: ['devices', 'segments'],
+  looksAt: ['devices', 'addressing'],
   why: 'Whoever is on the segment, at any of its sites, reaches the administration of these devices; and in a storm on the segment nobody does.',
   seen: 'In the storm that you want to stop, the devices that could stop it can’t be reached.',
   sources: ['common practice, no source'],

@@ -2,7 +2,7 @@ import { tunnelSegments } from '../flood/tunnel-segments.ts';
 import type { Protocol } from '../model/intent.ts';
 import type { Id } from '../model/scalars.ts';
 import type { Network } from '../network/network.ts';
-import { entryOf, perNetwork } from '../network/network.ts';
+import { entryOf } from '../network/network.ts';
 import { segmentPathFacts } from './carried-segments.ts';
 import { defineRule } from './define-rule.ts';
 import { siteNameOf } from './places.ts';
@@ -16,22 +16,18 @@ const needsGroups = (protocols: readonly Protocol[] | undefined): boolean =>
   protocols?.some((each) => needGroups.includes(each)) === true ||
   (protocols?.includes('ipv6') === true && protocols.includes('ipv4'));
 
-/** The segments whose frames pass each forwarder into or out of a tunnel. */
-export const segmentsThrough: (network: Network) => ReadonlyMap<Id, readonly Id[]> = perNetwork((network) => {
+/** The segments whose frames pass a forwarder into or out of a tunnel, in order of id. */
+export const segmentsThrough = (network: Network, forwarder: Id): readonly Id[] => {
   const carried = tunnelSegments(network);
-  return new Map(
-    [...network.circuitsByForwarder].map(([forwarder, circuits]) => [
-      forwarder,
-      [
-        ...new Set(
-          circuits.flatMap(({ circuit }) =>
-            circuit.kind === 'tunnel' ? (carried.get(circuit.tunnel) ?? []) : [],
-          ),
-        ),
-      ].sort(),
-    ]),
-  );
-});
+  const circuits = network.circuitsByForwarder.get(forwarder) ?? [];
+  return [
+    ...new Set(
+      circuits.flatMap(({ circuit }) =>
+        circuit.kind === 'tunnel' ? (carried.get(circuit.tunnel) ?? []) : [],
+      ),
+    ),
+  ].sort();
+};
 
 export const multicastDroppedOnPath = defineRule({
   id: 'multicast-dropped-on-path',
@@ -53,11 +49,11 @@ export const multicastDroppedOnPath = defineRule({
   },
   check: (network) => {
     const { design } = network;
-    return [...segmentsThrough(network)].flatMap(([id, segments]) => {
+    return [...network.circuitsByForwarder.keys()].flatMap((id) => {
       const { multicast, name, device } = entryOf(design.forwarders, id);
       if (multicast !== 'drop') return [];
       const ref = { collection: 'forwarders' as const, id };
-      return segments
+      return segmentsThrough(network, id)
         .filter((segment) => needsGroups(entryOf(design.segments, segment).protocols))
         .map((segment) => ({
           message: 'dropped' as const,

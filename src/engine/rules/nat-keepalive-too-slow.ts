@@ -12,7 +12,7 @@ export const natKeepaliveTooSlow = defineRule({
   id: 'nat-keepalive-too-slow',
   title: 'An end behind NAT speaks up before the NAT forgets it',
   severity: 'degrading',
-  looksAt: ['associations', 'links', 'transports', 'devices', 'sites'],
+  looksAt: ['associations', 'landings', 'carriers', 'gateways', 'sites'],
   why: 'The NAT lets packets in only as long as it remembers that this end sent one. Once it has forgotten, the other end can’t reach it until it sends again.',
   seen: 'After quiet minutes the far site’s first packets are lost; a ping from the near site mends it at once.',
   sources: [

@@ -4,7 +4,7 @@ export const pairWithoutStateSync = defineRule({
   id: 'pair-without-state-sync',
   title: 'The members of an HA pair share the state of its associations',
   severity: 'degrading',
-  looksAt: ['devices', 'associations'],
+  looksAt: ['gateways', 'associations'],
   why: 'The member that takes over knows no keys. Far ends go on sending into the old ones until they notice that nobody answers; then everything is negotiated anew.',
   seen: 'A failover that should take a second takes as long as the far ends’ liveness checks and a negotiation, for every site at once.',
   sources: [{ document: 'RFC 6027', clause: 'sections 3.2 to 3.5' }, { document: 'RFC 6311' }],

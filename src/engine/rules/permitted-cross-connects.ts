@@ -21,4 +21,4 @@ export const permittedCrossConnects = perNetwork((network): readonly PermittedCr
     }),
 );
 
-export const permittedCrossConnectFacts = ['forwarders', 'devices', 'segments', 'sites'] as const;
+export const permittedCrossConnectFacts = ['forwarders', 'gateways', 'segments', 'sites'] as const;

@@ -7,6 +7,7 @@ import type { Network } from '../network/network.ts';
 import { entryOf } from '../network/network.ts';
 import { segmentPathFacts } from './carried-segments.ts';
 import { defineRule, type Fault } from './define-rule.ts';
+import { perFacts } from './facts.ts';
 import { portLabel, portRef } from './port-label.ts';
 import { needOf } from './segment-capacity.ts';
 import { sentenceStart } from './sentence-start.ts';
@@ -35,16 +36,30 @@ interface Narrow {
   readonly ports: readonly { readonly device: Id; readonly port: Id; readonly mtuBytes: number }[];
 }
 
+/** By bundle: the least MTU that one of its ports states, hosts' own left out; Infinity where none does. */
+const leastMtus = perFacts(['devices', 'cables'], ({ design, bundles }): readonly number[] =>
+  bundles.map(({ a, b }) => {
+    let least = Infinity;
+    for (const { device, ports } of [a, b]) {
+      const { kind, ports: all } = entryOf(design.devices, device);
+      if (kind !== 'host') for (const port of ports) least = Math.min(least, all[port]?.mtu ?? Infinity);
+    }
+    return least;
+  }),
+);
+
 /** Ports of switches and gateways that a segment's frames cross and that are smaller than its packets. A host's own port is its own affair. */
 const narrowPorts = (network: Network): readonly Narrow[] => {
   const graph = floodGraph(network);
+  const least = leastMtus(network);
   return segmentReaches(graph).flatMap(({ segment, nodes }): readonly Narrow[] => {
     const need = needOf(network, segment);
     if (need === undefined) return [];
     const ports = new Map<string, Narrow['ports'][number]>();
-    for (const element of new Set(nodes.map((node) => graph.element[node]!))) {
-      const bundle = network.bundles[element];
-      if (bundle === undefined) continue;
+    for (const node of nodes) {
+      const element = graph.element[node]!;
+      if (!(least[element]! < need.needBytes)) continue;
+      const bundle = network.bundles[element]!;
       for (const group of [bundle.a, bundle.b]) {
         const { kind, ports: all } = entryOf(network.design.devices, group.device);
         if (kind === 'host') continue;

@@ -78,7 +78,7 @@ export const portVlanClaimedTwice = defineRule({
   id: 'port-vlan-claimed-twice',
   title: 'A VLAN of a port goes to one forwarder',
   severity: 'blocking',
-  looksAt: ['forwarders', 'devices'],
+  looksAt: ['forwarders', 'gateways'],
   why: 'A gateway refuses the second claim, or the frames go to one forwarder by chance and to the other not at all; where both get them two networks are merged.',
   seen: 'The device rejects the configuration, or one of the two segments is dead at this site, perhaps after the next restart the other one.',
   sources: ['common practice, no source'],

@@ -11,7 +11,7 @@ export const replayProtectionOff = defineRule({
   id: 'replay-protection-off',
   title: 'Gateways drop packets that they have seen before',
   severity: 'advisory',
-  looksAt: ['associations', 'links', 'transports', 'devices', 'sites'],
+  looksAt: ['associations', 'landings', 'carriers', 'gateways', 'sites'],
   why: 'Whoever recorded a packet can send it again, and it is taken for new: frames enter the segment twice, or later when they fit the attacker.',
   seen: 'Nothing on site; hosts act on old commands, and nothing tells why.',
   sources: [{ document: 'RFC 4303', clause: 'section 3.4.3' }],

@@ -33,7 +33,7 @@ export const replayWindowTooSmall = defineRule({
   id: 'replay-window-too-small',
   title: 'The replay window is wider than the transport’s paths differ',
   severity: 'degrading',
-  looksAt: ['associations', 'links', 'transports', 'devices', 'sites'],
+  looksAt: ['associations', 'landings', 'transports', 'gateways', 'sites'],
   why: 'Over several paths packets overtake each other. One that arrives after more others than the window holds is taken for a replay and dropped.',
   seen: 'Losses under load that no port counts, while the replay counter of the receiving gateway rises; TCP stays slow.',
   sources: [{ document: 'RFC 4303', clause: 'section 3.4.3' }],

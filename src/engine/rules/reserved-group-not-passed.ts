@@ -36,13 +36,23 @@ interface Stopped {
 const stoppedNeeds = (network: Network): readonly Stopped[] => {
   const { design } = network;
   const bySegment = new Map<Id, Id[]>();
-  for (const [forwarder, segments] of segmentsThrough(network))
-    for (const segment of segments) bySegment.set(segment, [...(bySegment.get(segment) ?? []), forwarder]);
+  const needed = new Map(
+    Object.entries(design.segments).flatMap(([id, { protocols }]) => {
+      const asked = reserved.filter(({ protocol }) => protocols?.includes(protocol));
+      return asked.length === 0 ? [] : [[id, asked] as const];
+    }),
+  );
+  if (needed.size === 0) return [];
+  for (const forwarder of network.circuitsByForwarder.keys())
+    for (const segment of segmentsThrough(network, forwarder)) {
+      const list = bySegment.get(segment);
+      if (list !== undefined) list.push(forwarder);
+      else if (needed.has(segment)) bySegment.set(segment, [forwarder]);
+    }
   return [...bySegment].flatMap(([segment, list]): readonly Stopped[] => {
-    const needed = reserved.filter(
-      ({ protocol }) => entryOf(design.segments, segment).protocols?.includes(protocol) === true,
-    );
-    const protocols = needed.filter(({ octet }) => list.some((id) => stops(network, id, octet)));
+    const protocols = needed
+      .get(segment)!
+      .filter(({ octet }) => list.some((id) => stops(network, id, octet)));
     const forwarders = list.filter((id) => protocols.some(({ octet }) => stops(network, id, octet))).sort();
     return protocols.length === 0 ? [] : [{ segment, protocols, forwarders }];
   });

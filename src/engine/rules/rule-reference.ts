@@ -1,4 +1,4 @@
-import type { Fact, MessageWords } from './define-rule.ts';
+import type { MessageWords, Rule } from './define-rule.ts';
 import type { Severity, Source } from './finding.ts';
 import { rules } from './index.ts';
 
@@ -12,7 +12,7 @@ export interface RuleReference {
   readonly sources: readonly Source[];
   readonly messages: readonly MessageWords[];
   /** The parts of a design that it reads. */
-  readonly looksAt: readonly Fact[];
+  readonly looksAt: Rule['looksAt'];
   readonly canFix: boolean;
 }
 

@@ -1,7 +1,10 @@
 import type { Design } from '../model/design.ts';
 import { indexNetwork } from '../network/index-network.ts';
+import type { Answer, Network } from '../network/network.ts';
+import { perNetwork } from '../network/network.ts';
 import { noContext, type CheckContext } from './check-context.ts';
 import type { Rule } from './define-rule.ts';
+import { factIdentities } from './facts.ts';
 import { compareFindings, type Finding, type Severity } from './finding.ts';
 import { rules } from './index.ts';
 
@@ -10,19 +13,19 @@ interface Remembered {
   readonly context: CheckContext;
   readonly findings: readonly Finding[];
 }
+type Memory = Map<Rule, Remembered>;
 
-// By rule, then by the identity of the first collection it looks at: forgotten together with the design.
-const memory = new Map<Rule, WeakMap<object, Remembered>>();
+const memoryOf = perNetwork((_network, earlier?: Answer<Memory>): Memory => new Map(earlier?.value));
 
-const findingsOf = (rule: Rule, design: Design, context: CheckContext): readonly Finding[] => {
-  const inputs = rule.looksAt.map((collection) => design[collection]);
-  const byFirst = memory.get(rule) ?? new WeakMap<object, Remembered>();
-  memory.set(rule, byFirst);
-  const before = byFirst.get(inputs[0]!);
+const findingsOf = (rule: Rule, network: Network, context: CheckContext): readonly Finding[] => {
+  const identities = factIdentities(network);
+  const inputs = rule.facts.map((fact) => identities[fact]);
+  const memory = memoryOf(network);
+  const before = memory.get(rule);
   if (before?.context === context && before.inputs.every((input, i) => input === inputs[i]))
     return before.findings;
-  const findings = rule.check(indexNetwork(design), context);
-  byFirst.set(inputs[0]!, { inputs, context, findings });
+  const findings = rule.check(network, context);
+  memory.set(rule, { inputs, context, findings });
   return findings;
 };
 
@@ -31,11 +34,14 @@ export const runTheseRules = (
   these: readonly Rule[],
   design: Design,
   context: CheckContext = noContext,
-): readonly Finding[] => these.flatMap((rule) => findingsOf(rule, design, context)).sort(compareFindings);
+): readonly Finding[] => {
+  const network = indexNetwork(design);
+  return these.flatMap((rule) => findingsOf(rule, network, context)).sort(compareFindings);
+};
 
 /**
- * Everything the checks find in a design, most severe first, then by rule and key. Rules whose collections kept their
- * identity since their last run answer from memory.
+ * Everything the checks find in a design, most severe first, then by rule and key. Rules answer from memory while
+ * nothing of what they look at was touched.
  */
 export const runRules = (design: Design, context: CheckContext = noContext): readonly Finding[] =>
   runTheseRules(rules, design, context);

@@ -7,6 +7,7 @@ import { associationEndOf } from '../network/selectors-cover.ts';
 import { tunnelSegments } from '../flood/tunnel-segments.ts';
 import { segmentPathFacts } from './carried-segments.ts';
 import { defineRule } from './define-rule.ts';
+import { perEntry } from './facts.ts';
 import { lowerSegment } from './packet-size-fixes.ts';
 import { capacitiesOf, innerTagsOf, needOf, type Tight } from './segment-capacity.ts';
 import { capacityOnPath } from './tunnel-capacity.ts';
@@ -35,23 +36,27 @@ const mayUse = (network: Network, id: Id, end: End): readonly Id[] => {
 };
 
 /** The paths that a tunnel may turn to when its first one fails. */
-export const otherPaths = (network: Network, id: Id): readonly Extract<Path, { ok: true }>[] => {
-  const [atA, atB] = [mayUse(network, id, 'a'), mayUse(network, id, 'b')];
-  if (atA.length < 2 && atB.length < 2) return [];
-  const first = tunnelPath(network, id);
-  if (!first.ok) return [];
-  return atA.flatMap((landingA) =>
-    atB.flatMap((landingB): readonly Extract<Path, { ok: true }>[] => {
-      const { transport } = landingOf(network, landingA);
-      if (landingOf(network, landingB).transport !== transport) return [];
-      if (landingA === first.landingA && landingB === first.landingB) return [];
-      const family = landingFamilies(network, landingA).find((each) =>
-        landingFamilies(network, landingB).includes(each),
-      );
-      return family === undefined ? [] : [{ ok: true, transport, landingA, landingB, family }];
-    }),
-  );
-};
+export const otherPaths = perEntry(
+  'tunnels',
+  ['associations', 'endpoints', 'gateways', 'landings', 'carriers'],
+  (network, id): readonly Extract<Path, { ok: true }>[] => {
+    const [atA, atB] = [mayUse(network, id, 'a'), mayUse(network, id, 'b')];
+    if (atA.length < 2 && atB.length < 2) return [];
+    const first = tunnelPath(network, id);
+    if (!first.ok) return [];
+    return atA.flatMap((landingA) =>
+      atB.flatMap((landingB): readonly Extract<Path, { ok: true }>[] => {
+        const { transport } = landingOf(network, landingA);
+        if (landingOf(network, landingB).transport !== transport) return [];
+        if (landingA === first.landingA && landingB === first.landingB) return [];
+        const family = landingFamilies(network, landingA).find((each) =>
+          landingFamilies(network, landingB).includes(each),
+        );
+        return family === undefined ? [] : [{ ok: true, transport, landingA, landingB, family }];
+      }),
+    );
+  },
+);
 
 interface Small extends Tight {
   readonly segment: Id;

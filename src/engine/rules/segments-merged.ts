@@ -4,10 +4,11 @@ import type { Id } from '../model/scalars.ts';
 import { tunnelStates } from '../network/can-come-up.ts';
 import { accessVlan, circuitRemovesTag, isTrunk } from '../network/frame-tags.ts';
 import type { CircuitAt, Network, PortGroup } from '../network/network.ts';
-import { deviceOfTunnelEnd, ends, entryOf, perNetwork, segmentsAt } from '../network/network.ts';
+import { deviceOfTunnelEnd, ends, entryOf, segmentsAt } from '../network/network.ts';
 import { removalPatch } from '../flood/removal-patch.ts';
-import { segmentPathFacts, segmentsOfCircuit } from './carried-segments.ts';
+import { circuitFacts, segmentPathFacts, segmentsOfCircuit } from './carried-segments.ts';
 import { defineRule, type Fault } from './define-rule.ts';
+import { perFacts } from './facts.ts';
 import type { Fix } from './finding.ts';
 import { siteNameOf, tunnelPlaces } from './places.ts';
 import { portLabel, portRef } from './port-label.ts';
@@ -58,7 +59,7 @@ const letters = ({ design }: Network, segments: Iterable<Id>): readonly string[]
 const segmentRefs = (segments: readonly Id[]): readonly ElementRef[] =>
   segments.map((id) => ({ collection: 'segments', id }));
 
-const byVlan = (network: Network): readonly Found[] =>
+const byVlan = perFacts(['addressing', 'sites'], (network): readonly Found[] =>
   [...network.segmentsBySiteVlan]
     .filter(([, segments]) => segments.length > 1)
     .map(([key, segments]): Found => {
@@ -75,7 +76,8 @@ const byVlan = (network: Network): readonly Found[] =>
         properties: segmentRefs(segments).map((ref) => ({ ref, path: ['sites', site, 'vlan'] })),
         basis: [Number(vlan)],
       };
-    });
+    }),
+);
 
 /** The VLAN that a switch gives to untagged frames of the port. */
 const untaggedVlan = ({ design }: Network, { device, port }: PortGroup): number | undefined => {
@@ -85,7 +87,7 @@ const untaggedVlan = ({ design }: Network, { device, port }: PortGroup): number 
   return isTrunk(entry) ? entry.nativeVlan : accessVlan(entry);
 };
 
-const byNative = (network: Network): readonly Found[] =>
+const byNative = perFacts(['devices', 'cables', 'addressing'], (network): readonly Found[] =>
   network.bundles.flatMap(({ a, b, alive }): readonly Found[] => {
     const [vlanA, vlanB] = [untaggedVlan(network, a), untaggedVlan(network, b)];
     const [cable] = alive;
@@ -115,14 +117,16 @@ const byNative = (network: Network): readonly Found[] =>
         sources: ['common practice, no source'],
       },
     ];
-  });
+  }),
+);
 
 interface Brought {
   readonly at: CircuitAt;
   readonly segments: readonly Id[];
 }
 
-const untaggedByForwarder = perNetwork(
+const untaggedByForwarder = perFacts(
+  circuitFacts,
   (network): ReadonlyMap<Id, readonly Brought[]> =>
     new Map(
       [...network.circuitsByForwarder].map(([forwarder, circuits]) => [
@@ -138,7 +142,8 @@ const untaggedByForwarder = perNetwork(
     ),
 );
 
-const untaggedSegments = perNetwork(
+const untaggedSegments = perFacts(
+  circuitFacts,
   (network): ReadonlyMap<Id, readonly Id[]> =>
     new Map(
       [...untaggedByForwarder(network)].map(([forwarder, brought]) => [
@@ -155,7 +160,7 @@ const untaggedInside = (network: Network, forwarder: Id): readonly Brought[] =>
 const isIsolated = (one: CircuitAt, other: CircuitAt): boolean =>
   one.circuit.isolation !== undefined && one.circuit.isolation === other.circuit.isolation;
 
-const byForwarder = (network: Network): readonly Found[] =>
+const byForwarder = perFacts([...circuitFacts, 'sites'], (network): readonly Found[] =>
   [...network.circuitsByForwarder.keys()].flatMap((forwarder): readonly Found[] => {
     const inside = untaggedInside(network, forwarder);
     const joined = inside.filter((one) =>
@@ -184,7 +189,8 @@ const byForwarder = (network: Network): readonly Found[] =>
         basis: segments,
       },
     ];
-  });
+  }),
+);
 
 /** Forwarders that hold the tunnel at one of its ends. */
 const holders = (network: Network, tunnel: Id, end: 'a' | 'b'): readonly CircuitAt[] => {

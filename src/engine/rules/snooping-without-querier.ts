@@ -1,7 +1,8 @@
 import type { Id } from '../model/scalars.ts';
 import type { Network } from '../network/network.ts';
 import { entryOf } from '../network/network.ts';
-import { segmentPathFacts, segmentsByForwarder } from './carried-segments.ts';
+import { circuitFacts, segmentPathFacts, segmentsByForwarder } from './carried-segments.ts';
+import { perFacts } from './facts.ts';
 import { defineRule, type Fault } from './define-rule.ts';
 import type { Fix } from './finding.ts';
 import { siteNameOf } from './places.ts';
@@ -28,7 +29,7 @@ interface Watched {
   readonly asking: readonly Id[];
 }
 
-const watchedSegments = (network: Network): readonly Watched[] => {
+const watchedSegments = perFacts([...circuitFacts, 'segments'], (network): readonly Watched[] => {
   const { design } = network;
   const bySegment = new Map<Id, Id[]>();
   for (const [forwarder, segments] of segmentsByForwarder(network))
@@ -49,7 +50,7 @@ const watchedSegments = (network: Network): readonly Watched[] => {
     });
     return [{ segment, forwarders, snooping, asking }];
   });
-};
+});
 
 const siteOf = ({ design }: Network, forwarder: Id): Id =>
   entryOf(design.devices, entryOf(design.forwarders, forwarder).device).site;

@@ -50,7 +50,7 @@ export const subnetInTwoSegments = defineRule({
   id: 'subnet-in-two-segments',
   title: 'Segments have subnets that do not overlap',
   severity: 'degrading',
-  looksAt: ['segments'],
+  looksAt: ['addressing'],
   why: 'A router can send to one of them only. Hosts of the two can never reach each other, and joining them by mistake brings every address twice. Harmless only where nothing routes to both.',
   seen: 'Traffic for one segment turns up in the other, or is dropped, depending on which route is better that day.',
   sources: [{ document: 'RFC 5227', clause: 'section 2.4' }, 'common practice, no source'],

@@ -37,7 +37,7 @@ export const transportFiltersNeeded = defineRule({
   id: 'transport-filters-needed',
   title: 'A transport lets through what the tunnels over it are made of',
   severity: 'blocking',
-  looksAt: ['transports', 'associations', 'tunnels', 'endpoints', 'links', 'devices'],
+  looksAt: ['carriers', 'associations', 'tunnels', 'endpoints', 'landings', 'gateways'],
   why: 'IKE, ESP and VXLAN each need their own port or protocol on the way. What one of them is refused never comes up.',
   seen: 'Without UDP 500 the first packet is never answered; without UDP 4500 IKE stops after it has found the NAT; without ESP the association is up and empty.',
   sources: [

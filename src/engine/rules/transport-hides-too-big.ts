@@ -20,7 +20,7 @@ export const transportHidesTooBig = defineRule({
   id: 'transport-hides-too-big',
   title: 'Transports tell when a packet is too big for them',
   severity: 'degrading',
-  looksAt: ['transports', 'associations', 'tunnels', 'endpoints', 'links', 'devices'],
+  looksAt: ['carriers', 'associations', 'tunnels', 'endpoints', 'landings', 'gateways'],
   why: 'A gateway learns of a narrower path from ICMP messages alone. Where these are filtered it goes on sending packets that nobody delivers.',
   seen: 'After the provider moves the line to another path large packets vanish, and neither end logs anything.',
   sources: [

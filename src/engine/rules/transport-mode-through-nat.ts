@@ -8,7 +8,7 @@ export const transportModeThroughNat = defineRule({
   id: 'transport-mode-through-nat',
   title: 'Associations through NAT use tunnel mode',
   severity: 'degrading',
-  looksAt: ['associations', 'links', 'transports', 'devices', 'sites'],
+  looksAt: ['associations', 'landings', 'carriers', 'gateways', 'sites'],
   why: 'In transport mode the addresses that NAT rewrites are those of the protected packet itself, and both ends have to undo it. Two peers behind one NAT can’t be told apart.',
   seen: 'It works with one peer and fails with the second behind the same NAT, or packets arrive with wrong checksums.',
   sources: [{ document: 'RFC 7296', clause: 'section 2.23.1' }],

@@ -4,7 +4,7 @@ export const transportMtuUnknown = defineRule({
   id: 'transport-mtu-unknown',
   title: 'The MTU of every transport in use is known',
   severity: 'advisory',
-  looksAt: ['transports', 'links'],
+  looksAt: ['transports', 'landings'],
   why: 'Without it nobody can say which packets fit through the tunnels, and no check of packet sizes speaks. Measure it between the two outside addresses with pings that must not be fragmented.',
   seen: 'Pings and small requests work from the first day; whatever fills a packet may hang.',
   sources: ['common practice, no source'],

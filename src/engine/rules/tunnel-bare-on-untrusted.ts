@@ -71,7 +71,7 @@ export const tunnelBareOnUntrusted = defineRule({
   id: 'tunnel-bare-on-untrusted',
   title: 'Tunnels over transports that are not trusted run inside IPsec',
   severity: 'blocking',
-  looksAt: ['tunnels', 'endpoints', 'links', 'transports', 'devices', 'associations'],
+  looksAt: ['tunnels', 'endpoints', 'landings', 'carriers', 'gateways', 'associations'],
   why: 'VXLAN neither hides nor authenticates anything: whoever is on the path reads every frame and can put more into the segment.',
   seen: 'Frames of the segment can be read in a capture anywhere on the transport; nothing else tells.',
   sources: [{ document: 'RFC 7348', clause: 'section 7' }],

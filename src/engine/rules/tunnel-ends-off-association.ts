@@ -10,7 +10,7 @@ export const tunnelEndsOffAssociation = defineRule({
   id: 'tunnel-ends-off-association',
   title: 'A tunnel ends on the two devices that its association joins',
   severity: 'blocking',
-  looksAt: ['tunnels', 'endpoints', 'associations', 'devices', 'sites', 'links', 'transports'],
+  looksAt: ['tunnels', 'endpoints', 'associations', 'gateways', 'sites', 'landings', 'carriers'],
   why: 'An association carries packets between its two devices only. A tunnel that ends elsewhere finds no way into it and leaves unprotected, or not at all.',
   seen: 'The association is up and idle; the tunnel’s packets are missing from it and may turn up in clear on the WAN port.',
   sources: [{ document: 'RFC 4301', clause: 'section 4.4.1' }],

@@ -17,7 +17,7 @@ export const tunnelNoCommonPath = defineRule({
   id: 'tunnel-no-common-path',
   title: 'Both ends of a tunnel outside IPsec land on one transport with one address family',
   severity: 'blocking',
-  looksAt: ['tunnels', 'endpoints', 'links', 'transports', 'devices', 'sites'],
+  looksAt: ['tunnels', 'endpoints', 'landings', 'carriers', 'gateways', 'sites'],
   why: 'The endpoints have no way to each other, so that nothing crosses the tunnel.',
   seen: 'Pings between the endpoints fail, and hosts see their own site only.',
   sources: [{ document: 'RFC 7348', clause: 'section 4' }],

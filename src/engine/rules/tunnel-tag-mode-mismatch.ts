@@ -18,7 +18,7 @@ export const tunnelTagModeMismatch = defineRule({
   id: 'tunnel-tag-mode-mismatch',
   title: 'Both ends of a tunnel treat inner VLAN tags alike',
   severity: 'blocking',
-  looksAt: ['tunnels', 'endpoints', 'forwarders', 'devices', 'sites'],
+  looksAt: ['tunnels', 'endpoints', 'forwarders', 'gateways', 'sites'],
   why: 'Frames that one end sends with their VLAN tag are discarded by an end that expects none; frames whose tag is stripped lose their VLAN on the way to an end that expects it.',
   seen: 'Untagged frames cross, tagged ones vanish without a message, or come out in the wrong VLAN.',
   sources: [

@@ -25,7 +25,7 @@ export const tunnelUdpPortMismatch = defineRule({
   id: 'tunnel-udp-port-mismatch',
   title: 'Both ends of a tunnel use the same UDP port',
   severity: 'blocking',
-  looksAt: ['tunnels', 'endpoints', 'devices', 'sites'],
+  looksAt: ['tunnels', 'endpoints', 'gateways', 'sites'],
   why: 'An end takes VXLAN out of UDP only on its own port; packets to another port are answered with port unreachable or dropped.',
   seen: 'The association is up and pings between the endpoints pass. VXLAN packets arrive, and the far gateway answers them with port unreachable or says nothing.',
   sources: [{ document: 'RFC 7348', clause: 'section 5' }],

@@ -14,7 +14,7 @@ export const tunnelVniMismatch = defineRule({
   id: 'tunnel-vni-mismatch',
   title: 'Both ends of a tunnel have the same VNI',
   severity: 'blocking',
-  looksAt: ['tunnels', 'endpoints', 'devices', 'sites'],
+  looksAt: ['tunnels', 'endpoints', 'gateways', 'sites'],
   why: 'Each end knows only its own VNI and drops what the other sends. IPsec and the endpoints’ pings know nothing of VNIs and look healthy.',
   seen: 'The association is up and the endpoints answer pings, yet no host of one site learns an address of the other. VXLAN packets arrive at both ends; the counter for unknown VNIs rises.',
   sources: [

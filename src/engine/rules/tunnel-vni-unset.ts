@@ -23,7 +23,7 @@ export const tunnelVniUnset = defineRule({
   id: 'tunnel-vni-unset',
   title: 'Every tunnel has a VNI at both ends',
   severity: 'advisory',
-  looksAt: ['tunnels', 'endpoints', 'devices', 'sites'],
+  looksAt: ['tunnels', 'endpoints', 'gateways', 'sites'],
   why: 'Whoever builds the tunnel will have to choose a number on the spot, and the checks of VNIs say nothing of this tunnel until then.',
   seen: 'The build sheet has an empty cell; two people at two sites fill it in differently.',
   sources: [{ document: 'RFC 7348', clause: 'section 5' }],

@@ -33,11 +33,32 @@ const marksOf = (network: Network, id: string, end: End): readonly string[] => {
   return scope === 'endpoint' ? [number] : [towardsPeer];
 };
 
+/** Tunnels that have their endpoint, VNI and UDP port in common with another: all others share nothing in any scope. */
+const repeated = (network: Network): readonly string[] => {
+  const first = new Map<string, Map<number, string>>();
+  const found = new Set<string>();
+  for (const id of network.tunnelIds)
+    for (const end of ends) {
+      const { vni, udpPort, endpoint } = network.design.tunnels[id]![end];
+      if (vni === undefined) continue;
+      const number = vni * 0x1_0000 + (udpPort ?? VXLAN_UDP_PORT);
+      const here = first.get(endpoint) ?? new Map<number, string>();
+      first.set(endpoint, here);
+      const other = here.get(number);
+      if (other === undefined) here.set(number, id);
+      else found.add(other).add(id);
+    }
+  return [...found].sort();
+};
+
 /** Tunnels of one VNI at a multipoint endpoint that lie in different forwarders, which its single circuit can't. */
-const splitMultipoint = (network: Network): readonly (readonly [string, string])[] => {
+const splitMultipoint = (
+  network: Network,
+  tunnels: readonly string[],
+): readonly (readonly [string, string])[] => {
   const { design } = network;
   const byNumber = new Map<string, { readonly tunnel: string; readonly forwarders: string }[]>();
-  for (const id of network.tunnelIds)
+  for (const id of tunnels)
     for (const end of ends) {
       const tunnel = design.tunnels[id]!;
       const device = deviceOfTunnelEnd(network, tunnel, end);
@@ -61,7 +82,7 @@ export const vniUsedTwice = defineRule({
   id: 'vni-used-twice',
   title: 'A VNI names one tunnel at an endpoint, as far as the equipment asks for it',
   severity: 'blocking',
-  looksAt: ['tunnels', 'endpoints', 'devices', 'profiles', 'forwarders'],
+  looksAt: ['tunnels', 'endpoints', 'gateways', 'profiles', 'forwarders'],
   why: 'The VNI alone tells the receiving endpoint which bridge a frame belongs to. Two tunnels with one number merge their segments, or the equipment refuses the second.',
   seen: 'The second tunnel can’t be saved, or broadcasts and addresses of one segment turn up in the other.',
   sources: [{ document: 'RFC 7348', clause: 'section 4' }],
@@ -74,10 +95,11 @@ export const vniUsedTwice = defineRule({
   },
   check: (network) => {
     const { design } = network;
-    const marked = network.tunnelIds.flatMap((id) =>
+    const tunnels = repeated(network);
+    const marked = tunnels.flatMap((id) =>
       ends.flatMap((end) => marksOf(network, id, end).map((mark) => [mark, id] as const)),
     );
-    return sharedSets([...marked, ...splitMultipoint(network)]).map((ids) => {
+    return sharedSets([...marked, ...splitMultipoint(network, tunnels)]).map((ids) => {
       const marks = ids.map((id) => ends.flatMap((end) => marksOf(network, id, end)));
       const atSeveral = (endpoint: string): boolean =>
         ids.filter((id) => ends.some((end) => design.tunnels[id]![end].endpoint === endpoint)).length > 1;

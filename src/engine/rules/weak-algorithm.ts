@@ -1,8 +1,8 @@
 import type { MergePatch } from '../model/merge-patch.ts';
 import { applyPatch, diffPatch } from '../model/merge-patch.ts';
 import { inRankOrder } from '../model/rank.ts';
-import type { DesignFacts, End } from '../network/network.ts';
-import { ends } from '../network/network.ts';
+import type { Association, DesignFacts, End } from '../network/network.ts';
+import { ends, perObject } from '../network/network.ts';
 import { keyExchangeGroupNames } from '../reference/key-exchange-groups.ts';
 import {
   encryptionName,
@@ -27,15 +27,15 @@ interface Use {
   readonly weakness: Weakness;
 }
 
-const usesIn = (design: DesignFacts, association: string): readonly Use[] =>
+const usesIn = perObject((association: Association): readonly Use[] =>
   ends.flatMap((end) =>
     layers.flatMap((layer) =>
-      inRankOrder<IkeProposal | EspProposal>(design.associations[association]![end][fieldOf[layer]]).flatMap(
-        ([proposal, entry]) =>
-          weaknessesOf(layer, entry).map((weakness) => ({ end, layer, proposal, weakness })),
+      inRankOrder<IkeProposal | EspProposal>(association[end][fieldOf[layer]]).flatMap(([proposal, entry]) =>
+        weaknessesOf(layer, entry).map((weakness) => ({ end, layer, proposal, weakness })),
       ),
     ),
-  );
+  ),
+);
 
 const algorithmName = ({ part, algorithm }: Weakness): string => {
   switch (part) {
@@ -108,7 +108,7 @@ export const weakAlgorithm = defineRule({
   id: 'weak-algorithm',
   title: 'Associations propose only algorithms that the standards still recommend',
   severity: 'degrading',
-  looksAt: ['associations', 'devices', 'sites'],
+  looksAt: ['associations', 'gateways', 'sites'],
   why: 'An algorithm that can be broken, or soon may be, opens all that the association carries; and a weak proposal beside a strong one may be the one that is chosen.',
   seen: 'Nothing, until an audit or an attacker finds it; newer software may refuse the proposal after an update.',
   sources: [
@@ -149,7 +149,7 @@ export const weakAlgorithm = defineRule({
   },
   check: ({ design }) =>
     Object.entries(design.associations).flatMap(([id, association]) => {
-      const uses = usesIn(design, id);
+      const uses = usesIn(association);
       if (uses.length === 0) return [];
       const places = associationPlaces(design, association);
       const ref = { collection: 'associations', id } as const;
@@ -186,7 +186,7 @@ export const weakAlgorithm = defineRule({
     }),
   fixes: (fault, { design }) => {
     const [id, key] = fault.identity as readonly [string, string];
-    const all = new Set(usesIn(design, id).map(({ weakness }) => weaknessKey(weakness)));
+    const all = new Set(usesIn(design.associations[id]!).map(({ weakness }) => weaknessKey(weakness)));
     const { association, algorithm } = fault.values;
     const one = {
       id: 'replace',

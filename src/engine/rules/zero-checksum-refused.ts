@@ -7,7 +7,7 @@ export const zeroChecksumRefused = defineRule({
   id: 'zero-checksum-refused',
   title: 'Over IPv6 an end that sends no UDP checksum meets one that takes such packets',
   severity: 'blocking',
-  looksAt: ['tunnels', 'endpoints', 'devices', 'sites'],
+  looksAt: ['tunnels', 'endpoints', 'gateways', 'sites'],
   why: 'Over IPv6 a UDP checksum of zero is an error unless the receiver was told to take it for this port.',
   seen: 'Packets arrive and are counted as checksum errors; nothing comes out of the tunnel in this direction.',
   sources: [
