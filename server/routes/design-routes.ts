@@ -1,6 +1,6 @@
 import { Router } from 'express';
-import { z } from 'zod';
-import { changeDesignSchema, savePatchesSchema, thumbnailThemes } from '#contract/designs.ts';
+import { changeDesignSchema, savePatchesSchema } from '#contract/designs.ts';
+import { patchesQuerySchema, thumbnailQuerySchema } from '#contract/queries.ts';
 import type { MergePatch } from '#engine/model/merge-patch.ts';
 import { requirePerson } from '../auth/sessions.ts';
 import { jsonBody } from '../middleware/json-body.ts';
@@ -11,21 +11,6 @@ import { readPatches, saveEdits } from '../services/save-edits.ts';
 import { readThumbnail } from '../services/thumbnails.ts';
 import { mountRoute } from './mount-route.ts';
 import { readBody, readId, readQuery } from './read-request.ts';
-
-const sequenceSchema = z
-  .string()
-  .regex(/^\d{1,9}$/, 'expected a sequence number such as 17')
-  .transform(Number);
-const countSchema = z.string().regex(/^\d{1,9}$/, 'expected a number of findings such as 3');
-const patchesQuerySchema = z.strictObject({
-  after: sequenceSchema,
-});
-
-const thumbnailQuerySchema = z.strictObject({
-  v: sequenceSchema.optional(),
-  open: countSchema.optional(),
-  theme: z.enum(thumbnailThemes).default('paper'),
-});
 
 /** One design: its document, its log of patches, its place in the list. */
 export function designRoutes(context: Context): Router {

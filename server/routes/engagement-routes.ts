@@ -1,6 +1,6 @@
 import { Router } from 'express';
-import { z } from 'zod';
 import { changeEngagementSchema, createDesignSchema, createEngagementSchema } from '#contract/designs.ts';
+import { engagementsQuerySchema } from '#contract/queries.ts';
 import { requirePerson } from '../auth/sessions.ts';
 import { jsonBody } from '../middleware/json-body.ts';
 import type { Context } from '../services/context.ts';
@@ -10,10 +10,6 @@ import { limits } from '../services/limits.ts';
 import { mountRoute } from './mount-route.ts';
 import { readBody, readId, readQuery } from './read-request.ts';
 
-const listQuerySchema = z.strictObject({
-  archived: z.enum(['true', 'false'], 'expected true or false').default('false'),
-});
-
 /** The customers' pieces of work, and the designs started in them. */
 export function engagementRoutes(context: Context): Router {
   const router = Router();
@@ -22,7 +18,7 @@ export function engagementRoutes(context: Context): Router {
   mountRoute(router, 'GET /api/workspaces/:workspaceId/engagements', async (req, res) => {
     const person = requirePerson(req);
     const workspaceId = readId(req, 'workspaceId', 'workspace');
-    const { archived } = readQuery(req, listQuerySchema);
+    const { archived } = readQuery(req, engagementsQuerySchema);
     const engagements = await readEngagements(context, person.id, workspaceId, archived === 'true');
     res.json({ engagements });
   });

@@ -1,7 +1,7 @@
 import { Router } from 'express';
 import type { Request, Response } from 'express';
-import { z } from 'zod';
 import { sayPresenceSchema } from '#contract/live.ts';
+import { liveQuerySchema } from '#contract/queries.ts';
 import { requirePerson } from '../auth/sessions.ts';
 import type { LiveHub } from '../live/live-hub.ts';
 import { jsonBody } from '../middleware/json-body.ts';
@@ -13,7 +13,6 @@ import { followDesign, sayPresence } from '../services/live.ts';
 import { mountRoute } from './mount-route.ts';
 import { readBody, readId, readQuery } from './read-request.ts';
 
-const liveQuerySchema = z.strictObject({ connectionId: z.uuid('expected a UUID') });
 // What a browser waits before it asks again; after that its own patience counts.
 const retryMs = 1_000;
 

@@ -1,5 +1,5 @@
 import { Router } from 'express';
-import { z } from 'zod';
+import { pastDocumentQuerySchema } from '#contract/queries.ts';
 import {
   askForReviewSchema,
   buildSchema,
@@ -19,13 +19,6 @@ import { restoreDesign } from '../services/restore-design.ts';
 import { readRevision, readRevisions } from '../services/revisions.ts';
 import { mountRoute } from './mount-route.ts';
 import { readBody, readId, readQuery } from './read-request.ts';
-
-const pastQuerySchema = z.strictObject({
-  sequence: z
-    .string()
-    .regex(/^\d{1,9}$/, 'expected a sequence number such as 17')
-    .transform(Number),
-});
 
 /** What a design was: revisions and what becomes of them, and the log. */
 export function revisionRoutes(context: Context): Router {
@@ -87,7 +80,7 @@ export function revisionRoutes(context: Context): Router {
   mountRoute(router, 'GET /api/designs/:designId/document', async (req, res) => {
     const person = requirePerson(req);
     const designId = readId(req, 'designId', 'design');
-    const { sequence } = readQuery(req, pastQuerySchema);
+    const { sequence } = readQuery(req, pastDocumentQuerySchema);
     res.json(await readPastDocument(context, person.id, designId, sequence));
   });
 

@@ -1,29 +1,45 @@
-import type { RequestHandler, Response } from 'express';
+import type { Request, RequestHandler, Response } from 'express';
 import { Router } from 'express';
 import { sheetExportQuerySchema } from '#contract/sheet-exports.ts';
 import { requirePerson } from '../auth/sessions.ts';
 import type { Context } from '../services/context.ts';
-import { exportSheet } from '../services/sheet-drawing/export-sheet.ts';
+import type { DrawnFile, Wanted } from '../services/sheet-drawing/export-sheet.ts';
+import { exportRevision, exportSheet } from '../services/sheet-drawing/export-sheet.ts';
 import { mountRoute } from './mount-route.ts';
 import { readId, readQuery } from './read-request.ts';
 
-/** A design's sheet as a file. */
+/** The sheet of a design or of one of its revisions as a file. */
 export function sheetExportRoutes(context: Context): Router {
   const router = Router();
-  mountRoute(router, 'GET /api/designs/:designId/sheet.svg', answerWith(context, 'svg', 'image/svg+xml'));
-  mountRoute(router, 'GET /api/designs/:designId/sheet.pdf', answerWith(context, 'pdf', 'application/pdf'));
+  const design = (format: Format): RequestHandler =>
+    answerWith(format, (personId, req, wanted) =>
+      exportSheet(context, personId, readId(req, 'designId', 'design'), wanted),
+    );
+  const revision = (format: Format): RequestHandler =>
+    answerWith(format, (personId, req, wanted) =>
+      exportRevision(context, personId, readId(req, 'revisionId', 'revision'), wanted),
+    );
+  mountRoute(router, 'GET /api/designs/:designId/sheet.svg', design('svg'));
+  mountRoute(router, 'GET /api/designs/:designId/sheet.pdf', design('pdf'));
+  mountRoute(router, 'GET /api/revisions/:revisionId/sheet.svg', revision('svg'));
+  mountRoute(router, 'GET /api/revisions/:revisionId/sheet.pdf', revision('pdf'));
   return router;
 }
 
+type Format = Wanted['format'];
+const types = { svg: 'image/svg+xml', pdf: 'application/pdf' } as const;
+
 const answerWith =
-  (context: Context, format: 'svg' | 'pdf', type: string): RequestHandler =>
+  (
+    format: Format,
+    draw: (personId: string, req: Request, wanted: Wanted) => Promise<DrawnFile>,
+  ): RequestHandler =>
   async (req, res) => {
     const person = requirePerson(req);
-    const designId = readId(req, 'designId', 'design');
     const query = readQuery(req, sheetExportQuerySchema);
     const signal = abortedWith(res);
     try {
-      const { file, name } = await exportSheet(context, person.id, designId, format, query, signal);
+      const { file, name } = await draw(person.id, req, { format, query, signal });
       res.setHeader('Cache-Control', 'private, no-cache');
       res.setHeader('Content-Disposition', `attachment; filename="${name}"`);
       // As a page of its own the drawing may do nothing at all.
@@ -31,7 +47,7 @@ const answerWith =
         'Content-Security-Policy',
         "default-src 'none'; style-src 'unsafe-inline'; font-src data:; sandbox",
       );
-      res.type(type).send(Buffer.from(file));
+      res.type(types[format]).send(Buffer.from(file));
     } catch (error) {
       // Where nobody waits for the answer any more, none is due.
       if (!signal.aborted) throw error;
