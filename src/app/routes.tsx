@@ -17,6 +17,21 @@ export const routes: RouteObject[] = [
         lazy: async () => ({ Component: (await import('../pages/sign-in-page.tsx')).SignInPage }),
       },
       {
+        path: 'invitation/:token',
+        ErrorBoundary: PageError,
+        lazy: async () => ({ Component: (await import('../pages/invitation-page.tsx')).InvitationPage }),
+      },
+      {
+        path: 'reset',
+        ErrorBoundary: PageError,
+        lazy: async () => ({ Component: (await import('../pages/ask-for-reset-page.tsx')).AskForResetPage }),
+      },
+      {
+        path: 'reset/:token',
+        ErrorBoundary: PageError,
+        lazy: async () => ({ Component: (await import('../pages/new-password-page.tsx')).NewPasswordPage }),
+      },
+      {
         path: 'first-owner',
         ErrorBoundary: PageError,
         lazy: async () => ({ Component: (await import('../pages/first-owner-page.tsx')).FirstOwnerPage }),
@@ -109,6 +124,18 @@ export const routes: RouteObject[] = [
                 ErrorBoundary: PageError,
                 lazy: async () => ({
                   Component: (await import('../pages/checks-reference-page.tsx')).ChecksReferencePage,
+                }),
+              },
+              {
+                path: 'workspaces/:workspaceId/mailbox',
+                ErrorBoundary: PageError,
+                lazy: async () => ({ Component: (await import('../pages/mailbox-page.tsx')).MailboxPage }),
+              },
+              {
+                path: 'account/mail',
+                ErrorBoundary: PageError,
+                lazy: async () => ({
+                  Component: (await import('../pages/mail-settings-page.tsx')).MailSettingsPage,
                 }),
               },
               {

@@ -8,6 +8,7 @@ const places = [
   { to: '/account/password', label: 'Password' },
   { to: '/account/two-step', label: 'Two-step sign-in' },
   { to: '/account/sessions', label: 'Sessions' },
+  { to: '/account/mail', label: 'Mail' },
   { to: '/account/tokens', label: 'API tokens' },
   { to: '/account/deletion', label: 'Delete account' },
 ] as const;

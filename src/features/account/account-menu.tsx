@@ -5,9 +5,9 @@ import { Menu, type MenuGroup } from '../../components/menu.tsx';
 import { PersonTag } from '../../components/person-tag.tsx';
 import { showToast } from '../../components/toast.tsx';
 import { roleWords } from '../../lib/role-words.ts';
-import { useCurrentWorkspaceId, useSession, useSignOut } from '../../lib/session.ts';
+import { may, useCurrentWorkspaceId, useSession, useSignOut } from '../../lib/session.ts';
 import { chooseTheme, themeChoices, useThemeChoice } from '../../lib/theme.ts';
-import { engagementsPath } from '../../lib/workspace-path.ts';
+import { engagementsPath, mailboxPath } from '../../lib/workspace-path.ts';
 import { NewWorkspaceDialog } from './new-workspace-dialog.tsx';
 
 const themeWords = { paper: 'Paper', slate: 'Slate', system: 'As the system' } as const;
@@ -40,6 +40,9 @@ export function AccountMenu() {
       actions: [
         { label: 'Reference of checks', onSelect: () => void navigate('/checks') },
         { label: 'Account', onSelect: () => void navigate('/account/password') },
+        ...(membership !== undefined && may(membership, 'people.manage')
+          ? [{ label: 'Mailbox', onSelect: () => void navigate(mailboxPath(membership.workspaceId)) }]
+          : []),
         {
           label: 'Sign out',
           onSelect: () =>

@@ -1,6 +1,7 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useState } from 'react';
 import { useForm } from 'react-hook-form';
+import { Link } from 'react-router-dom';
 import type { z } from 'zod';
 import { Button } from '../../components/button.tsx';
 import { CheckBox } from '../../components/check-box.tsx';
@@ -41,7 +42,12 @@ export function SignInForm() {
       }
       actions={
         <>
-          <CheckBox {...register('keep')}>Keep me signed in</CheckBox>
+          <div className="flex flex-wrap gap-x-20 gap-y-6">
+            <CheckBox {...register('keep')}>Keep me signed in</CheckBox>
+            <Link to="/reset" className="text-base text-blue underline">
+              Password lost
+            </Link>
+          </div>
           <Button
             type="submit"
             kind="primary"
