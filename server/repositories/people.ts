@@ -55,8 +55,10 @@ export async function setLastSeen(knex: Knex, id: string, at: Date): Promise<voi
   await knex('people').where({ id }).update({ last_seen_at: at });
 }
 
-/** Empties an account of all but its name, which stays readable on what the person did. */
+/** Empties an account of all but its name, which stays readable on what the person did; mails to them go as well. */
 export async function emptyAccount(trx: Knex.Transaction, id: string, at: Date): Promise<void> {
+  for (const table of ['mails', 'mail_settings', 'password_resets'])
+    await trx(table).where({ person_id: id }).delete();
   await trx('people')
     .where({ id })
     .update({

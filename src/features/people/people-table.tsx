@@ -38,7 +38,6 @@ export function PeopleTable({ workspaceId, people, readerId, manages, onRemove }
       ),
       sortBy: ({ name }) => name,
     },
-    { key: 'email', head: 'E-mail', cell: ({ email }) => email, sortBy: ({ email }) => email },
     {
       key: 'role',
       head: 'Role',
@@ -88,6 +87,7 @@ export function PeopleTable({ workspaceId, people, readerId, manages, onRemove }
       sortBy: ({ role }) => roles.indexOf(role),
       text: ({ role }) => roleWords[role],
     },
+    { key: 'email', head: 'E-mail', cell: ({ email }) => email, sortBy: ({ email }) => email },
     ...(manages
       ? [
           {

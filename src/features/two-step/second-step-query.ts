@@ -25,11 +25,11 @@ function useProved<Answer>(change: (proof: Proof) => Promise<Answer>) {
   const queryClient = useQueryClient();
   return useMutation({
     mutationFn: change,
-    onSuccess: () =>
-      Promise.all([
-        queryClient.invalidateQueries({ queryKey: secondStepQuery.queryKey }),
-        queryClient.invalidateQueries({ queryKey: sessionQuery.queryKey }),
-      ]),
+    // Not waited for: what shows the recovery codes goes as soon as the state is read again.
+    onSuccess: () => {
+      void queryClient.invalidateQueries({ queryKey: secondStepQuery.queryKey });
+      void queryClient.invalidateQueries({ queryKey: sessionQuery.queryKey });
+    },
   });
 }
 

@@ -48,7 +48,7 @@ export function SetUpForm({ offer, onCancel, onDone }: SetUpFormProps) {
               Any app that shows six digits every half minute will do. Without a camera type this secret into
               it:
             </p>
-            <p className="mt-8 border border-rule-strong bg-raise px-9 py-6 text-value font-medium break-words select-all">
+            <p className="mt-8 border border-rule-strong bg-raise px-9 py-6 text-value font-medium text-balance break-words select-all">
               {offer.secret.replace(/(.{4})(?=.)/g, '$1 ')}
             </p>
           </div>
