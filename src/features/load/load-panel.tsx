@@ -73,16 +73,20 @@ export function VerdictLine({ verdict }: { readonly verdict: LoadVerdict }) {
 
 /** Verdict and what-if above, the table below, which scrolls. */
 export function LoadFrame({
+  status,
   verdict,
   whatIf,
   children,
 }: {
+  /** What is under way, if anything is. */
+  readonly status: ReactNode;
   readonly verdict: ReactNode;
   readonly whatIf: ReactNode;
   readonly children: ReactNode;
 }) {
   return (
     <div className="flex h-full min-h-0 flex-col gap-8 px-14 py-10 max-md:h-auto">
+      {status}
       <div className="flex shrink-0 flex-wrap items-center gap-x-24 gap-y-8">
         {verdict}
         {whatIf}

@@ -5,7 +5,6 @@ import { focusInspector } from '../../canvas/focus-inspector.ts';
 import { Button } from '../../components/button.tsx';
 import { ErrorNotice } from '../../components/notice.tsx';
 import { showToast } from '../../components/toast.tsx';
-import { loadOfNetwork } from '../../engine/load/load-of.ts';
 import { indexNetwork } from '../../engine/network/index-network.ts';
 import { useSearchValues } from '../../lib/use-search-values.ts';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
@@ -18,8 +17,10 @@ import { limitRows, type LimitRow } from './limit-rows.ts';
 import { LimitsTable } from './limits-table.tsx';
 import { loadDecorations } from './load-decorations.ts';
 import { kindsShown, LoadChoices, LoadFrame, loadViews, VerdictLine } from './load-panel.tsx';
+import { LoadStatus } from './load-status.tsx';
 import { loadVerdict } from './load-verdict.ts';
 import { NoDemands } from './no-demands.tsx';
+import { useLoadReport } from './use-load-report.ts';
 import { WhatIf } from './what-if.tsx';
 
 const tab = { value: 'load', label: 'Load', usualHeightPx: 340 } as const;
@@ -35,7 +36,7 @@ export function useLoadTab(active: boolean): DeskTab {
   const { valueOf, change } = useSearchValues();
   const [tried, setTried] = useState<number>();
   const [chosenKey, setChosenKey] = useState<string>();
-  const design = useDeferredValue(current);
+  const latest = useDeferredValue(current);
 
   const settled = valueOf('times') === '' ? 1 : Number(valueOf('times'));
   const multiplier = useDeferredValue(tried ?? settled);
@@ -43,14 +44,11 @@ export function useLoadTab(active: boolean): DeskTab {
   const view = oneOf(loadViews, valueOf('load'));
   const kind = oneOf(kindsShown, valueOf('limits-of'));
 
+  const run = useLoadReport(active ? latest : undefined, multiplier, windowBytes);
+  // While a new run is under way what is shown is about the design before.
+  const design = run.report?.of.design ?? latest;
+  const answer = run.report?.answer;
   const network = useMemo(() => (active ? indexNetwork(design) : undefined), [active, design]);
-  const answer = useMemo(
-    () =>
-      network === undefined
-        ? undefined
-        : loadOfNetwork(network, { multiplier, ...(windowBytes === undefined ? {} : { windowBytes }) }),
-    [network, multiplier, windowBytes],
-  );
   const report = answer?.ok === true ? answer : undefined;
   const rows = useMemo(
     () => (network === undefined || report === undefined ? [] : limitRows(network, report, design)),
@@ -78,7 +76,7 @@ export function useLoadTab(active: boolean): DeskTab {
     [report, rows, bottleneck, lit],
   );
 
-  if (!active || network === undefined || answer === undefined) return { ...tab, panel: null };
+  if (!active || network === undefined) return { ...tab, panel: null };
 
   const choose = ({ key }: LimitRow | DemandWayRow): void => {
     setChosenKey(key);
@@ -100,6 +98,8 @@ export function useLoadTab(active: boolean): DeskTab {
       ...tab,
       panel: <NoDemands segments={demandableSegments(design).length} onAdd={editable ? add : undefined} />,
     };
+  const status = <LoadStatus run={run} />;
+  if (answer === undefined) return { ...tab, panel: <div className="px-14 py-10">{status}</div> };
   if (!answer.ok)
     return {
       ...tab,
@@ -137,6 +137,7 @@ export function useLoadTab(active: boolean): DeskTab {
     ...tab,
     panel: (
       <LoadFrame
+        status={status}
         verdict={<VerdictLine verdict={loadVerdict(answer, rows, design)} />}
         whatIf={
           <WhatIf

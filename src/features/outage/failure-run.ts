@@ -1,3 +1,4 @@
+import type { Progress } from '../../lib/worker-run.ts';
 import type { ElementRef } from '../../engine/model/design.ts';
 import { indexNetwork } from '../../engine/network/index-network.ts';
 import type { DesignFacts } from '../../engine/network/network.ts';
@@ -37,10 +38,6 @@ export interface RunResults {
   readonly cuts: readonly SegmentCut[];
 }
 export type RunKind = keyof RunResults;
-export interface Progress {
-  readonly done: number;
-  readonly total: number;
-}
 
 // Some twenty seconds of work on the largest designs, where all pairs would take hours.
 export const mostPairs = 10_000;

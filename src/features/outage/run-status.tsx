@@ -1,6 +1,6 @@
 import type { ReactNode } from 'react';
-import { Button } from '../../components/button.tsx';
 import { ErrorNotice } from '../../components/notice.tsx';
+import { RunProgress } from '../../components/run-progress.tsx';
 import type { FailureRun } from './use-failure-run.ts';
 import type { RunKind } from './failure-run.ts';
 
@@ -25,25 +25,7 @@ export function RunStatus({ run, doing, onCancel, before, idle, children }: RunS
       {result === undefined && <div className="flex shrink-0 flex-wrap items-center gap-8">{before}</div>}
       {result === undefined && progress === undefined && failed === undefined && idle}
       {failed !== undefined && <ErrorNotice>{failed}</ErrorNotice>}
-      {progress !== undefined && (
-        <div className="flex shrink-0 items-center gap-12 text-base text-ink-2">
-          <progress
-            aria-label={doing}
-            className="h-8 w-180 appearance-none border border-ink bg-field [&::-moz-progress-bar]:bg-ink [&::-webkit-progress-bar]:bg-field [&::-webkit-progress-value]:bg-ink"
-            max={Math.max(1, progress.total)}
-            value={progress.done}
-          />
-          <span>
-            {doing}
-            {progress.total > 0 && `: ${progress.done} of ${progress.total}`}
-          </span>
-          {onCancel !== undefined && (
-            <Button small onClick={onCancel}>
-              Cancel
-            </Button>
-          )}
-        </div>
-      )}
+      {progress !== undefined && <RunProgress doing={doing} progress={progress} onCancel={onCancel} />}
       {result !== undefined && <div className="min-h-0 flex-1">{children}</div>}
     </div>
   );

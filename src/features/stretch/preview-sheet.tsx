@@ -1,3 +1,4 @@
+import { ErrorNotice } from '../../components/notice.tsx';
 import { SeverityCounts, SeverityShape } from '../../components/severity-mark.tsx';
 import { Shapes } from '../../components/shapes.tsx';
 import { rules } from '../../engine/rules/index.ts';
@@ -25,13 +26,18 @@ export function PreviewSheet({
   preview,
   last,
   behind,
+  doing,
+  failed,
 }: {
-  readonly preview: Preview;
+  readonly preview: Preview | undefined;
   readonly last: Drawn | undefined;
   readonly behind: boolean;
+  /** The step that a large plan is at. */
+  readonly doing: string | undefined;
+  readonly failed: string | undefined;
 }) {
-  const drawn = preview.ok ? preview : last;
-  const faulty = !preview.ok;
+  const drawn = preview?.ok === true ? preview : last;
+  const faulty = preview?.ok === false;
   return (
     <div className="flex min-h-0 flex-1 flex-col">
       <div className="flex min-h-0 flex-1 items-center justify-center p-16">
@@ -51,8 +57,10 @@ export function PreviewSheet({
         )}
       </div>
       <div role="status" className="border-t border-rule-2 bg-panel px-20 py-12 text-base">
-        {behind ? (
-          <p className="text-ink-2">Drawing…</p>
+        {failed !== undefined ? (
+          <ErrorNotice>{failed}</ErrorNotice>
+        ) : behind || preview === undefined ? (
+          <p className="text-ink-2">{doing ?? 'Drawing'}…</p>
         ) : preview.ok ? (
           <Verdict drawn={preview} />
         ) : (

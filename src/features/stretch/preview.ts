@@ -15,6 +15,7 @@ import { runRules } from '../../engine/rules/run-rules.ts';
 import { stretch } from '../../engine/stretch/stretch.ts';
 import type { StretchForm } from '../../engine/stretch/stretch-form.ts';
 import type { Problem } from '../../engine/wire/problem.ts';
+import { endOf, type Progress } from '../../lib/worker-run.ts';
 
 /** What a form would put on the sheet. */
 export type Preview =
@@ -27,22 +28,44 @@ export type Preview =
       readonly findings: readonly Finding[];
     };
 
+/** What a preview is made of. */
+export interface PreviewRequest {
+  readonly form: StretchForm;
+  readonly design: Design;
+  readonly numbering: NumberingContext;
+}
+
+/** What a preview is doing at each of its steps. */
+export const previewSteps = ['Numbering', 'Laying out', 'Drawing', 'Checking'] as const;
+
 /** Builds, lays out, draws and checks what a form describes, on a design that stays as it is. */
-export const previewOf = (form: StretchForm, start: Design, numbering: NumberingContext): Preview => {
+export function* previewRun({
+  form,
+  design: start,
+  numbering,
+}: PreviewRequest): Generator<Progress, Preview> {
+  const at = (done: number): Progress => ({ done, total: previewSteps.length });
+  yield at(0);
   const answer = stretch(form, { design: start, newId: (stem) => stem, numbering });
   if (!answer.ok) return answer;
   const built = applyPatch(start, answer.patch);
+  yield at(1);
   const design = applyPatch(built, tidy(built));
+  yield at(2);
   const geometry = route(design);
+  const layers = sheetShapes(geometry, {
+    level: 'plan',
+    decorations: noDecorations,
+    facts: drawingFacts(design, tunnelSegments(indexNetwork(design))),
+  });
+  yield at(3);
   return {
     ok: true,
     design,
     sheet: geometry.sheet,
-    layers: sheetShapes(geometry, {
-      level: 'plan',
-      decorations: noDecorations,
-      facts: drawingFacts(design, tunnelSegments(indexNetwork(design))),
-    }),
+    layers,
     findings: runRules(design, numbering),
   };
-};
+}
+
+export const previewOf = (request: PreviewRequest): Preview => endOf(previewRun(request));

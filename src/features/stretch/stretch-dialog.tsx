@@ -46,12 +46,12 @@ export function StretchDialog({
   const document = useOpenState((state) => state.document);
   const { numbering } = useChecks();
   const [form, setForm] = useState(() => keptForm(designId) ?? firstForm(document));
-  const { preview, behind } = usePreview(form, document, numbering);
+  const { preview, behind, doing, failed } = usePreview(form, document, numbering);
   const [last, setLast] = useState<Drawn>();
   const [busy, setBusy] = useState(false);
   const [failure, setFailure] = useState<string>();
-  if (preview.ok && preview !== last) setLast(preview);
-  const problems = preview.ok ? [] : preview.problems;
+  if (preview?.ok === true && preview !== last) setLast(preview);
+  const problems = preview === undefined || preview.ok ? [] : preview.problems;
   const change = (next: StretchForm): void => {
     setForm(next);
     setFailure(undefined);
@@ -97,7 +97,12 @@ export function StretchDialog({
             Start over
           </Button>
           <Button onClick={onClose}>Cancel</Button>
-          <Button kind="primary" busy={busy} disabled={!preview.ok || behind} onClick={() => void submit()}>
+          <Button
+            kind="primary"
+            busy={busy}
+            disabled={preview?.ok !== true || behind}
+            onClick={() => void submit()}
+          >
             Put it on the sheet
           </Button>
         </>
@@ -116,7 +121,7 @@ export function StretchDialog({
           {failure !== undefined && <ErrorNotice>{failure}</ErrorNotice>}
         </div>
         <div className="flex min-h-0 flex-col bg-desk max-lg:h-[70vh]">
-          <PreviewSheet preview={preview} last={last} behind={behind} />
+          <PreviewSheet {...{ preview, last, behind, doing, failed }} />
         </div>
       </div>
     </Dialog>

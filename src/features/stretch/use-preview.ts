@@ -1,35 +1,43 @@
-import { useEffect, useState } from 'react';
+import { useEffect, useMemo, useState } from 'react';
 import type { Design } from '../../engine/model/design.ts';
 import type { NumberingContext } from '../../engine/numbering/numbering-context.ts';
 import type { StretchForm } from '../../engine/stretch/stretch-form.ts';
-import type { Preview } from './preview.ts';
-import { previewOf } from './preview.ts';
+import { useWorkerRun } from '../../lib/use-worker-run.ts';
+import { previewOf, previewSteps, type Preview, type PreviewRequest } from './preview.ts';
+import { startPreviewWorker } from './start-preview-worker.ts';
 
-/** Typing goes on undisturbed: a large plan waits for a longer pause. */
-const pauseMs = ({ sites }: StretchForm): number => (sites.length > 16 ? 700 : 120);
+/** Typing goes on undisturbed: a preview waits for a pause. */
+const pauseMs = 120;
+/** A plan of so many sites is drawn before anybody feels it. */
+const atOnceUpTo = 16;
 
-interface Shown {
-  readonly of: StretchForm;
-  readonly preview: Preview;
+export interface ShownPreview {
+  /** Absent until the first is there. */
+  readonly preview: Preview | undefined;
+  /** The form has changed since. */
+  readonly behind: boolean;
+  /** What is being done, while that takes its time. */
+  readonly doing: string | undefined;
+  readonly failed: string | undefined;
 }
 
-/** What the form comes to, a moment after its last change; `behind` while that is still to be worked out. */
-export function usePreview(
-  form: StretchForm,
-  design: Design,
-  numbering: NumberingContext,
-): { readonly preview: Preview; readonly behind: boolean } {
-  const [shown, setShown] = useState<Shown>(() => ({
-    of: form,
-    preview: previewOf(form, design, numbering),
-  }));
+/** What the form comes to, a moment after its last change; a large plan in a worker, each change ending the run before. */
+export function usePreview(form: StretchForm, design: Design, numbering: NumberingContext): ShownPreview {
+  const [request, setRequest] = useState<PreviewRequest>({ form, design, numbering });
+  const isAsked = request.form === form && request.numbering === numbering;
   useEffect(() => {
-    if (shown.of === form) return;
-    const timer = setTimeout(
-      () => setShown({ of: form, preview: previewOf(form, design, numbering) }),
-      pauseMs(form),
-    );
+    if (isAsked) return;
+    const timer = setTimeout(() => setRequest({ form, design, numbering }), pauseMs);
     return () => clearTimeout(timer);
-  }, [form, shown.of, design, numbering]);
-  return { preview: shown.preview, behind: shown.of !== form };
+  }, [isAsked, form, design, numbering]);
+  const isLarge = request.form.sites.length > atOnceUpTo;
+  const here = useMemo(() => (isLarge ? undefined : previewOf(request)), [isLarge, request]);
+  const run = useWorkerRun<PreviewRequest, Preview>(startPreviewWorker, isLarge ? request : undefined);
+  if (!isLarge) return { preview: here, behind: !isAsked, doing: undefined, failed: undefined };
+  return {
+    preview: run.result,
+    behind: !isAsked || run.of !== request,
+    doing: run.progress && previewSteps[Math.min(run.progress.done, previewSteps.length - 1)],
+    failed: run.failed,
+  };
 }

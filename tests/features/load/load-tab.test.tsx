@@ -1,15 +1,39 @@
 import { fireEvent, render, screen, within } from '@testing-library/react';
 import userEvent from '@testing-library/user-event';
 import { MemoryRouter, useLocation } from 'react-router-dom';
-import { describe, expect, test } from 'vitest';
+import { beforeEach, describe, expect, test, vi } from 'vitest';
 import { ToastRegion } from '../../../src/components/toast.tsx';
 import type { Design } from '../../../src/engine/model/design.ts';
+import type { LoadRequest } from '../../../src/features/load/use-load-report.ts';
 import { useLoadTab } from '../../../src/features/load/use-load-tab.tsx';
+import { loadSteps } from '../../../src/engine/load/load-of.ts';
+import { indexNetwork } from '../../../src/engine/network/index-network.ts';
+import { endOf } from '../../../src/lib/worker-run.ts';
 import { ChecksProvider } from '../../../src/workspace/checks-context.tsx';
 import { OpenDesignProvider } from '../../../src/workspace/open-design-context.tsx';
 import { terminalsStretch } from '../../../seeds/demo-designs/terminals-stretch.ts';
 import { openInMemory } from '../../canvas/inspector/render-inspector.tsx';
 import { pairDesign } from '../../support/designs.ts';
+
+const worker = vi.hoisted(() => ({ started: 0, ended: 0, holds: false }));
+// jsdom has no workers: this one does the same work as soon as it is asked, or says how far it is.
+vi.mock('../../../src/features/load/start-load-worker.ts', () => ({
+  startLoadWorker: () => {
+    worker.started += 1;
+    const self = {
+      onmessage: undefined as ((event: { readonly data: unknown }) => void) | undefined,
+      postMessage: (request: LoadRequest) => {
+        if (worker.holds) return self.onmessage?.({ data: { progress: { done: 7, total: 40 } } });
+        const { design, options } = structuredClone(request);
+        const result = structuredClone(endOf(loadSteps(indexNetwork(design), options)));
+        return self.onmessage?.({ data: { result } });
+      },
+      terminate: () => void (worker.ended += 1),
+    };
+    return self;
+  },
+}));
+beforeEach(() => Object.assign(worker, { started: 0, ended: 0, holds: false }));
 
 const demo = terminalsStretch('Terminals stretch', 'SMF-L2-004');
 
@@ -147,5 +171,42 @@ describe('the load tab', () => {
     renderTab('', { design: pairDesign(), editable: false });
     expect(screen.getByText('No demand is stated')).toBeVisible();
     expect(screen.queryByRole('button', { name: /Add a demand/ })).not.toBeInTheDocument();
+  });
+});
+
+describe('the load of a large design', () => {
+  /** The demo among so many hosts that nobody waits for it on the page. */
+  const large: Design = {
+    ...demo,
+    devices: {
+      ...demo.devices,
+      ...Object.fromEntries(
+        Array.from({ length: 160 }, (_, i) => [
+          `spare-${i}`,
+          { kind: 'host' as const, name: `spare-${i}`, site: Object.keys(demo.sites)[0]!, ports: {} },
+        ]),
+      ),
+    },
+  };
+
+  test('comes from a worker, and is the same', () => {
+    const { side } = renderTab('?limits-of=transports', { design: large });
+    expect(worker.started).toBe(1);
+    expect(
+      screen.getByText(/^The rate ordered for fw-ske wan1 on Coastal access, out, fills first: 65 %/),
+    ).toBeVisible();
+    expect(side.getByText('6 Mbit/s of packets, grown')).toBeVisible();
+  });
+
+  test('says how far it is, and ends when it is cancelled', async () => {
+    worker.holds = true;
+    const { user } = renderTab('', { design: large });
+    expect(screen.getByRole('progressbar', { name: 'Laying demands on their way' })).toHaveValue(7);
+    await user.click(screen.getByRole('button', { name: 'Cancel' }));
+    expect(worker.ended).toBe(worker.started);
+    expect(screen.queryByRole('progressbar')).toBeNull();
+    worker.holds = false;
+    await user.click(screen.getByRole('button', { name: 'Work it out' }));
+    expect(screen.getByText(/fills first: 65 %/)).toBeVisible();
   });
 });

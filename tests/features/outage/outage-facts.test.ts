@@ -8,7 +8,8 @@ import {
   readFailed,
   toggled,
 } from '../../../src/features/outage/failable.ts';
-import { failureRun, type Progress } from '../../../src/features/outage/failure-run.ts';
+import { failureRun } from '../../../src/features/outage/failure-run.ts';
+import type { Progress } from '../../../src/lib/worker-run.ts';
 import { outageDecorations } from '../../../src/features/outage/outage-decorations.ts';
 import {
   outageFacts,

@@ -5,7 +5,7 @@ import { afterEach, beforeEach, describe, expect, test, vi } from 'vitest';
 import { ToastRegion } from '../../../src/components/toast.tsx';
 import { emptyDesign, type Design, type ElementRef } from '../../../src/engine/model/design.ts';
 import { failureRun } from '../../../src/features/outage/failure-run.ts';
-import type { RunRequest } from '../../../src/features/outage/outage-worker.ts';
+import type { RunRequest } from '../../../src/features/outage/use-failure-run.ts';
 import { useOutageTab } from '../../../src/features/outage/use-outage-tab.tsx';
 import { ChecksProvider } from '../../../src/workspace/checks-context.tsx';
 import { OpenDesignProvider } from '../../../src/workspace/open-design-context.tsx';

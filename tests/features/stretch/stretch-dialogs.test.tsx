@@ -1,7 +1,7 @@
-import { fireEvent, render, screen, waitFor, within } from '@testing-library/react';
+import { act, fireEvent, render, screen, waitFor, within } from '@testing-library/react';
 import userEvent from '@testing-library/user-event';
 import { createMemoryRouter, RouterProvider } from 'react-router-dom';
-import { beforeEach, describe, expect, test } from 'vitest';
+import { beforeEach, describe, expect, test, vi } from 'vitest';
 import { emptyDesign, type Design } from '#engine/model/design.ts';
 import { applyPatch } from '#engine/model/merge-patch.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
@@ -9,12 +9,42 @@ import { stretch } from '#engine/stretch/stretch.ts';
 import { ToastRegion } from '../../../src/components/toast.tsx';
 import { TooltipProvider } from '../../../src/components/tooltip.tsx';
 import { keptForm } from '../../../src/features/stretch/kept-form.ts';
+import { previewOf, type PreviewRequest } from '../../../src/features/stretch/preview.ts';
 import { StretchDialogs } from '../../../src/features/stretch/stretch-dialogs.tsx';
 import { ChecksProvider } from '../../../src/workspace/checks-context.tsx';
 import { DesignPlaceProvider } from '../../../src/workspace/design-place.tsx';
 import { OpenDesignProvider } from '../../../src/workspace/open-design-context.tsx';
 import { openInMemory } from '../../canvas/inspector/render-inspector.tsx';
 import { formOf, stemIds } from '../../support/stretch-forms.ts';
+
+interface Run {
+  ended: boolean;
+  readonly finish: () => void;
+}
+const worker = vi.hoisted(() => ({ runs: [] as Run[] }));
+// jsdom has no workers: this one does the same work once the test lets it.
+vi.mock('../../../src/features/stretch/start-preview-worker.ts', () => ({
+  startPreviewWorker: () => {
+    let run: Run | undefined;
+    const self = {
+      onmessage: undefined as ((event: { readonly data: unknown }) => void) | undefined,
+      postMessage: (request: PreviewRequest) => {
+        const { form, design, numbering } = structuredClone(request);
+        run = {
+          ended: false,
+          finish: () =>
+            self.onmessage?.({ data: { result: structuredClone(previewOf({ form, design, numbering })) } }),
+        };
+        worker.runs.push(run);
+        self.onmessage?.({ data: { progress: { done: 1, total: 4 } } });
+      },
+      terminate: () => {
+        if (run !== undefined) run.ended = true;
+      },
+    };
+    return self;
+  },
+}));
 
 const place = { designId: 'd1', workspaceId: 'w1', actions: [] };
 const empty: Design = { ...emptyDesign('Stretch'), meta: { title: 'Stretch', example: true } };
@@ -46,7 +76,10 @@ const renderAt = (address: string, document: Design = empty) => {
   };
 };
 
-beforeEach(() => sessionStorage.clear());
+beforeEach(() => {
+  sessionStorage.clear();
+  worker.runs.length = 0;
+});
 
 describe('the Stretch form', () => {
   test('begins with a pair, drawn and checked, and puts it on the sheet as one step that can be undone', async () => {
@@ -74,6 +107,29 @@ describe('the Stretch form', () => {
     expect(within(dialog).getByRole('button', { name: 'Put it on the sheet' })).toBeDisabled();
     await user.click(within(dialog).getByRole('checkbox', { name: 'Trusted' }));
     expect(await within(dialog).findByText(/^All \d+ checks pass$/)).toBeVisible();
+  });
+
+  test('draws a plan of many sites in a worker, each change ending the run before', async () => {
+    const { user } = renderAt('/?stretch=Form');
+    const dialog = await screen.findByRole('dialog', { name: 'Stretch' });
+    expect(worker.runs).toEqual([]);
+    await user.click(within(dialog).getByRole('button', { name: 'Add by names…' }));
+    const names = within(dialog).getByRole('textbox', { name: 'Names, one on each line' });
+    const add = (count: number, stem: string): void => {
+      const value = Array.from({ length: count }, (_, i) => `${stem} ${i + 1}`).join('\n');
+      fireEvent.change(names, { target: { value } });
+      fireEvent.blur(names);
+    };
+    add(17, 'Pier');
+    await waitFor(() => expect(worker.runs).toHaveLength(1));
+    expect(within(dialog).getByText('Laying out…')).toBeVisible();
+    expect(within(dialog).getByRole('button', { name: 'Put it on the sheet' })).toBeDisabled();
+    add(1, 'Jetty');
+    await waitFor(() => expect(worker.runs).toHaveLength(2));
+    expect(worker.runs[0]!.ended).toBe(true);
+    act(() => worker.runs[1]!.finish());
+    expect(await within(dialog).findByRole('img', { name: /18 sites/ })).toBeVisible();
+    expect(within(dialog).getByRole('button', { name: 'Put it on the sheet' })).toBeEnabled();
   });
 
   test('adds sites by their names, and keeps what was filled in while the tab lives', async () => {
