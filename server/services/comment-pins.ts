@@ -1,7 +1,6 @@
 import type { Pin, PinTo } from '#contract/comments.ts';
+import { elementName, plugName } from '#engine/diff/element-names.ts';
 import type { Design, ElementRef } from '#engine/model/design.ts';
-import { demandName } from '#engine/rules/load-report.ts';
-import { portLabel } from '#engine/rules/port-label.ts';
 import { Refusal } from '../errors.ts';
 import type { CheckFacts } from './check-facts.ts';
 import { findingsBy } from './check-facts.ts';
@@ -36,21 +35,10 @@ export function pinnedTo(document: Design, facts: CheckFacts, pin: PinTo): Pin |
   }
 }
 
-/** What a person calls an element: its own name, or what it joins. */
-export function calledIn(document: Design, { collection, id, port, member }: ElementRef): string {
-  if (port !== undefined) return portLabel(document, id, port, member);
-  if (collection === 'notes') return document.notes[id]?.text.split('\n')[0] ?? id;
-  if (collection === 'demands') return demandName(document, id);
-  const link = collection === 'links' ? document.links[id] : undefined;
-  if (link !== undefined && link.name === undefined) {
-    if (link.kind === 'landing')
-      return `${portLabel(document, link.device, link.port)} on ${document.transports[link.transport]?.name ?? link.transport}`;
-    return [link.a, link.b]
-      .map((plug) => portLabel(document, plug.device, plug.port, plug.member))
-      .join(' to ');
-  }
-  return document[collection][id]?.name ?? id;
-}
+const calledIn = (document: Design, { collection, id, port, member }: ElementRef): string =>
+  port === undefined
+    ? elementName(document, collection, id)
+    : plugName(document, { device: id, port, member });
 
 function isThere(document: Design, { collection, id, port, member }: ElementRef): boolean {
   if (!Object.hasOwn(document[collection], id)) return false;

@@ -76,7 +76,7 @@ export function SheetHint() {
     placing !== undefined
       ? placingHint(placing, hasFirst)
       : preview !== undefined
-        ? 'The sheet as this fix would leave it.'
+        ? 'The sheet as this change would leave it.'
         : undefined;
   return hint === undefined ? null : (
     <p className="sheet-hint" role="status">

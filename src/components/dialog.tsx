@@ -68,6 +68,10 @@ export function Dialog({
               opener.current = document.activeElement;
               focusFirstField(event);
             }}
+            onEscapeKeyDown={(event) => {
+              // A list that is open in a field closes first.
+              if (document.activeElement?.hasAttribute('aria-activedescendant')) event.preventDefault();
+            }}
             onCloseAutoFocus={(event) => {
               const back = opener.current;
               if (!(back instanceof HTMLElement)) return;

@@ -245,6 +245,7 @@ function Surface({ commenting, onOpenThread }: SurfaceProps) {
             />
           }
           tabs={tabs}
+          asked={[active.value, valueOf('thread'), valueOf('on')].join(' ')}
         />
       </div>
       {waiving.dialog}

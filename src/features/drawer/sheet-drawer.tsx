@@ -10,6 +10,8 @@ interface SheetDrawerProps {
   readonly value: string;
   readonly onChange: (value: string) => void;
   readonly openAtFirst: boolean;
+  /** What of a tab the address asks for; a change of it opens the drawer. */
+  readonly asked?: string;
   /** How many findings there are of each severity, at the right of the drawer's edge. */
   readonly counts: ReactNode;
 }
@@ -21,8 +23,13 @@ const mostPx = 520;
  * The drawer under the sheet, a tab for each thing in it. Its edge stays in view when it is shut and can be dragged, or
  * moved by arrow keys; each tab keeps the height it was given.
  */
-export function SheetDrawer({ tabs, value, onChange, openAtFirst, counts }: SheetDrawerProps) {
+export function SheetDrawer({ tabs, value, onChange, openAtFirst, asked = '', counts }: SheetDrawerProps) {
   const [isOpen, setOpen] = useState(openAtFirst);
+  const [answered, setAnswered] = useState(asked);
+  if (asked !== answered) {
+    setAnswered(asked);
+    setOpen(true);
+  }
   const [heights, setHeights] = useState<Readonly<Record<string, number>>>({});
   const heightPx = heights[value] ?? tabs.find((tab) => tab.value === value)?.usualHeightPx ?? leastPx;
   const resize = (next: number): void =>

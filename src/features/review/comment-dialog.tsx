@@ -117,5 +117,5 @@ const titleOf = (design: Design, pin: PinTo): string => {
 const propertiesOfElement = (design: Design, { ref }: Extract<PinTo, { kind: 'element' }>) => {
   const device = ref.collection === 'devices' ? design.devices[ref.id] : undefined;
   const entry = ref.port === undefined ? design[ref.collection][ref.id] : device?.ports[ref.port];
-  return entry === undefined ? [] : propertiesOf(entry);
+  return entry === undefined ? [] : propertiesOf(ref, entry);
 };

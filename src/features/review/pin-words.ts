@@ -1,7 +1,7 @@
 import type { Pin } from '../../contract/comments.ts';
 import type { Design, ElementRef } from '../../engine/model/design.ts';
 import { kindOf, nameOf } from '../../workspace/operations/name-of.ts';
-import { propertyWords } from './property-words.ts';
+import { propertyLabel } from './property-words.ts';
 
 /** Whether an element is in the design now. */
 export const isThere = (design: Design, { collection, id, port }: ElementRef): boolean =>
@@ -29,7 +29,7 @@ export const pinWords = (pin: Pin, design: Design, hasFinding: (findingKey: stri
       return {
         kind: there ? kindOf(design, pin.ref) : 'Element',
         name: there ? nameOf(design, pin.ref) : pin.called,
-        ...(pin.path.length === 0 ? {} : { property: propertyWords(pin.path) }),
+        ...(pin.path.length === 0 ? {} : { property: propertyLabel(pin.ref, pin.path) }),
         gone: !there,
       };
     }

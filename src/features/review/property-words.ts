@@ -1,50 +1,35 @@
-const short: { readonly [word: string]: string } = {
-  mtu: 'MTU',
-  vni: 'VNI',
-  vlan: 'VLAN',
-  vlans: 'VLANs',
-  ip: 'IP',
-  ike: 'IKE',
-  esp: 'ESP',
-  df: 'DF',
-  mac: 'MAC',
-  nat: 'NAT',
-  bps: '(bit/s)',
-  bytes: '(bytes)',
-  us: '(µs)',
-  ms: '(ms)',
-  wan: 'WAN',
-  lan: 'LAN',
-  a: 'end A',
-  b: 'end B',
+import { propertyWords } from '../../engine/diff/property-words.ts';
+import type { ElementRef } from '../../engine/model/design.ts';
+
+const capital = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
+
+/** What the differences of revisions call a property of an element; undefined for one that they have no word for. */
+const wordsFor = ({ collection, port }: ElementRef, path: readonly string[]): string | undefined => {
+  if (port !== undefined) return propertyWords['devices.ports']?.[path.join('.')]?.words;
+  const own = propertyWords[collection]?.[path.join('.')]?.words;
+  if (own !== undefined) return capital(own);
+  const [end = '', ...rest] = path;
+  const atEnd = end === 'a' || end === 'b' ? propertyWords[collection]?.[rest.join('.')]?.words : undefined;
+  return atEnd === undefined ? undefined : `End ${end.toUpperCase()}: ${atEnd}`;
 };
 
-const words = (key: string): string =>
-  key
-    .replace(/([a-z0-9])([A-Z])/g, '$1 $2')
-    .toLowerCase()
-    .split(/[\s-]+/)
-    .map((word) => short[word] ?? word)
-    .join(' ');
-
-/** A property by the keys that lead to it: 'End B, VNI'. */
-export const propertyWords = (path: readonly string[]): string => {
-  const all = path.map(words).join(', ');
-  return all.charAt(0).toUpperCase() + all.slice(1);
-};
+/** A property by the keys that lead to it from its element. */
+export const propertyLabel = (ref: ElementRef, path: readonly string[]): string =>
+  wordsFor(ref, path) ?? path.join(', ');
 
 const mostDeep = 3;
 
-/** The properties of an entry that have a value of their own, with the keys that lead there. */
+/** The properties of an element's entry that have a value and a word of their own, with the keys that lead there. */
 export const propertiesOf = (
+  ref: ElementRef,
   entry: object,
   at: readonly string[] = [],
 ): readonly { readonly path: readonly string[]; readonly label: string }[] =>
   Object.entries(entry).flatMap(([key, value]: [string, unknown]) => {
     const path = [...at, key];
-    // Ranks say where something stands in a list and mean nothing by themselves.
-    if (key === 'rank' || key === 'kind') return [];
-    if (typeof value === 'object' && value !== null && !Array.isArray(value))
-      return path.length < mostDeep ? propertiesOf(value, path) : [];
-    return [{ path, label: propertyWords(path) }];
+    const words = wordsFor(ref, path);
+    if (words !== undefined) return [{ path, label: words }];
+    return typeof value === 'object' && value !== null && !Array.isArray(value) && path.length < mostDeep
+      ? propertiesOf(ref, value, path)
+      : [];
   });

@@ -1,9 +1,7 @@
 import { useState } from 'react';
 import { Button } from '../../components/button.tsx';
 import { Dialog } from '../../components/dialog.tsx';
-import { Icon } from '../../components/icon.tsx';
 import { isEmptyPatch } from '../../engine/model/merge-patch.ts';
-import { useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { useSuggestedPatch, useSuggesting, type SuggestionDraft } from '../../workspace/suggesting.tsx';
 import { SendSuggestionDialog } from './send-suggestion-dialog.tsx';
 import { patchWords } from './suggestion-words.ts';
@@ -15,10 +13,8 @@ export function SuggestingBar() {
 }
 
 function DraftBar({ draft }: { readonly draft: SuggestionDraft }) {
-  const open = useOpenDesign();
   const patch = useSuggestedPatch(draft);
   const changes = patchWords(draft.base, patch).length;
-  const canUndo = useOpenState((state) => state.history.done.length > 0);
   const [sending, setSending] = useState(false);
   const [discarding, setDiscarding] = useState(false);
   const isEmpty = isEmptyPatch(patch);
@@ -34,11 +30,6 @@ function DraftBar({ draft }: { readonly draft: SuggestionDraft }) {
           : `${changes === 1 ? '1 change' : `${changes} changes`}, kept in this browser until you send them.`}
       </p>
       <div className="flex flex-wrap gap-8">
-        {canUndo && (
-          <Button small icon={<Icon name="undo" size={14} />} onClick={() => open.undo()}>
-            Undo
-          </Button>
-        )}
         <Button small onClick={() => (isEmpty ? draft.end() : setDiscarding(true))}>
           {isEmpty ? 'Stop suggesting' : 'Discard…'}
         </Button>

@@ -35,10 +35,14 @@ export function SuggestionBlock({ commentId, suggestion, onPreview }: Suggestion
   const [asking, setAsking] = useState(false);
   const [unsaved, setUnsaved] = useState(false);
   const { mutate, isPending, error } = useApplySuggestion(designId);
-  const lines = useMemo(() => suggestionWords(document, suggestion), [document, suggestion]);
   const drift = useMemo(
     () => (suggestion.appliedAt === null ? patchDrift(document, suggestion.patch, suggestion.before) : []),
     [document, suggestion],
+  );
+  const lines = useMemo(() => suggestionWords(document, suggestion, drift), [document, suggestion, drift]);
+  const moved = useMemo(
+    () => (drift.length === 0 ? [] : driftWords(document, suggestion, drift)),
+    [document, suggestion, drift],
   );
 
   const preview = (on: boolean): void => {
@@ -100,7 +104,7 @@ export function SuggestionBlock({ commentId, suggestion, onPreview }: Suggestion
             <div className="mt-6 border-l-4 border-degr bg-degr-wash px-8 py-4">
               <p className="font-medium">The design has changed since:</p>
               <ul>
-                {driftWords(document, drift.slice(0, linesShown)).map((line) => (
+                {moved.slice(0, linesShown).map((line) => (
                   <li key={line} className="break-words">
                     {line}
                   </li>
@@ -150,7 +154,7 @@ export function SuggestionBlock({ commentId, suggestion, onPreview }: Suggestion
         }
       >
         <ul className="flex flex-col gap-4 text-base">
-          {driftWords(document, drift).map((line) => (
+          {moved.map((line) => (
             <li key={line} className="break-words">
               {line}
             </li>

@@ -1,57 +1,76 @@
 import type { Suggestion } from '../../contract/comments.ts';
+import { compareDesigns } from '../../engine/diff/compare-designs.ts';
 import type { Design } from '../../engine/model/design.ts';
+import { collections } from '../../engine/model/design.ts';
 import type { MergePatch } from '../../engine/model/merge-patch.ts';
 import { applyPatch } from '../../engine/model/merge-patch.ts';
 import type { Drift } from '../../engine/model/patch-drift.ts';
-import { parseDesign } from '../../engine/model/parse-design.ts';
-import { kindOf, nameOf } from '../../workspace/operations/name-of.ts';
-import { changedElements } from './changed-elements.ts';
-import { propertyWords } from './property-words.ts';
+import { changedProblems } from '../../engine/model/parse-design.ts';
 
-const verbs = { added: 'Adds', changed: 'Changes', removed: 'Removes' } as const;
+/** What turns one design into the other, a sentence for each change; undefined where one of them is none. */
+const between = (design: Design, before: Design, after: Design): readonly string[] | undefined =>
+  [before, after].every((each) => changedProblems(design, each).length === 0)
+    ? compareDesigns(before, after).changes.map(({ sentence }) => sentence)
+    : undefined;
 
-/** What a patch would do to a design, a line for each element. */
-export const patchWords = (design: Design, patch: MergePatch): readonly string[] => {
-  const after = applyPatch(design, patch);
-  const lines = changedElements(design, patch).map(({ ref, change }) => {
-    const known = change === 'added' ? after : design;
-    return `${verbs[change]} ${kindOf(known, ref).toLowerCase()} ${nameOf(known, ref)}`;
-  });
-  return [
-    ...(patch['meta'] === undefined ? [] : ['Changes the title block']),
-    ...lines,
-    ...(patch['layout'] === undefined ? [] : ['Moves what is drawn']),
-  ];
+/** What a patch does to a design that it was made on. */
+export const patchWords = (design: Design, patch: MergePatch): readonly string[] =>
+  between(design, design, applyPatch(design, patch)) ?? [];
+
+/** The entries that are gone, out of a patch: onto nothing it would leave fragments of them. */
+const without = (patch: MergePatch, gone: readonly Drift[]): MergePatch => {
+  const paths = new Set(gone.map(({ path }) => path.join('/')));
+  return Object.fromEntries(
+    Object.entries(patch).map(([collection, entries]) => [
+      collection,
+      typeof entries === 'object' && entries !== null && !Array.isArray(entries)
+        ? Object.fromEntries(Object.entries(entries).filter(([id]) => !paths.has(`${collection}/${id}`)))
+        : entries,
+    ]),
+  );
 };
 
-/** What a suggestion does, told on the design that it was made for, as far as that can be had again. */
-export const suggestionWords = (design: Design, { patch, before }: Suggestion): readonly string[] => {
-  const made = applyPatch(design, before);
-  return patchWords(parseDesign(made).ok ? made : design, patch);
+const wholeEntry = ({ path: [collection = '', ...deeper], now }: Drift): boolean =>
+  now === undefined && deeper.length === 1 && collections.some((each) => each === collection);
+
+/** What a suggestion does, told on the design as it would be without it, leaving aside what is gone. */
+export const suggestionWords = (
+  design: Design,
+  { patch, before }: Pick<Suggestion, 'patch' | 'before'>,
+  drift: readonly Drift[],
+): readonly string[] => {
+  const gone = drift.filter(wholeEntry);
+  const base = applyPatch(design, without(before, gone));
+  const lines = between(design, base, applyPatch(base, without(patch, gone)));
+  return lines === undefined || lines.length === 0 ? ['Changes what is no longer in the design'] : lines;
 };
 
-const written = (value: unknown): string =>
-  value === undefined
-    ? 'nothing'
-    : typeof value === 'object'
-      ? 'something else'
-      : typeof value === 'string'
-        ? `“${value}”`
-        : String(value);
+const kinds = {
+  sites: 'A site',
+  devices: 'A device',
+  transports: 'A transport',
+  links: 'A cable or landing',
+  endpoints: 'An endpoint',
+  associations: 'An association',
+  tunnels: 'A tunnel',
+  forwarders: 'A forwarder',
+  segments: 'A segment',
+  demands: 'A demand',
+  profiles: 'An equipment profile',
+  notes: 'A note',
+} as const;
 
-/** Where the design has moved on from a suggestion, a line for each place. */
-export const driftWords = (design: Design, drift: readonly Drift[]): readonly string[] =>
-  drift.map(({ path: [collection = '', id = '', ...deeper], was, now, wanted }) => {
-    const ref = { collection: collection as 'devices', id };
-    const isElement = collection !== 'meta' && collection !== 'layout';
-    const isThere = isElement && Object.hasOwn(design[ref.collection] ?? {}, id);
-    const name = !isElement
-      ? propertyWords([collection, ...(id === '' ? [] : [id])])
-      : isThere
-        ? `${kindOf(design, ref)} ${nameOf(design, ref)}`
-        : `${collection} ${id}`;
-    const place = deeper.length === 0 ? name : `${name}, ${propertyWords(deeper)}`;
-    if (now === undefined && was !== undefined) return `${place}: is gone`;
-    if (JSON.stringify(now) === JSON.stringify(wanted)) return `${place}: is ${written(now)} already`;
-    return `${place}: is ${written(now)} now, was ${written(was)}`;
-  });
+/** Where the design has moved on from what a suggestion was made on, a sentence for each place. */
+export const driftWords = (
+  design: Design,
+  { before }: Pick<Suggestion, 'before'>,
+  drift: readonly Drift[],
+): readonly string[] => {
+  const gone = drift.filter(wholeEntry);
+  const removed = gone.map(
+    ({ path: [collection = ''] }) => `${kinds[collection as 'sites']} that it changes is gone`,
+  );
+  const changed = between(design, applyPatch(design, without(before, gone)), design) ?? [];
+  const lines = [...removed, ...changed];
+  return lines.length === 0 ? ['What it changes is no longer what it was'] : lines;
+};
