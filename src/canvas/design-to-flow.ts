@@ -5,6 +5,7 @@ import type {
   BandGeometry,
   CableGeometry,
   DeviceGeometry,
+  FlagGeometry,
   JacketGeometry,
   LaneGeometry,
   PipGeometry,
@@ -31,13 +32,15 @@ export type SheetNode = Node<Common & { readonly frame: SheetFrame }, 'sheet'>;
 export type SiteNode = Node<Common & { readonly site: SiteGeometry }, 'site'>;
 export type BandNode = Node<Common & { readonly band: BandGeometry }, 'band'>;
 export type DeviceNode = Node<Common & { readonly device: DeviceGeometry }, 'device'>;
+/** A flag that leads on to another sheet. */
+export type OnwardNode = Node<Common & { readonly flag: FlagGeometry }, 'onward'>;
 export type RingNode = Node<Common & { readonly ring: RingGeometry }, 'ring'>;
 export type NoteNode = Node<Common & { readonly note: string; readonly rect: Rect }, 'note'>;
 /** The trunks of manifolds, drawn under the jackets that leave them. */
 export type TrunksNode = Node<Common, 'trunks'>;
 export type MarksNode = Node<Common, 'marks'>;
 export type FlowNode =
-  SheetNode | SiteNode | BandNode | DeviceNode | RingNode | NoteNode | TrunksNode | MarksNode;
+  SheetNode | SiteNode | BandNode | DeviceNode | OnwardNode | RingNode | NoteNode | TrunksNode | MarksNode;
 
 export type CableEdge = Edge<Common & { readonly cable: CableGeometry }, 'cable'>;
 export type JacketEdge = Edge<Common & { readonly jacket: JacketGeometry }, 'jacket'>;
@@ -198,6 +201,22 @@ const nodesOf = (input: FlowInput): FlowNode[] => {
       style: groundStyle(ref),
     });
   }
+  for (const flag of geometry.flags ?? []) {
+    const ref: ElementRef = { collection: 'devices', id: flag.id };
+    nodes.push({
+      id: elementKey(ref),
+      type: 'onward',
+      ...box(flag.rect),
+      handles: [bodyOf(flag.rect, flag.rect)],
+      ...(flag.device === undefined ? { data: { flag } } : { data: { ref, flag } }),
+      selected: flag.device !== undefined && selected.has(elementKey(ref)),
+      ariaLabel: `Go to ${[flag.head.toLowerCase(), ...flag.lines].join(', ')}`,
+      draggable: false,
+      connectable: false,
+      deletable: false,
+      zIndex: depth.device,
+    });
+  }
   for (const ring of geometry.rings) {
     const ref: ElementRef = { collection: 'endpoints', id: ring.endpoint };
     const bounds = { x: ring.centre.x - 14, y: ring.centre.y - 14, width: 28, height: 28 };
@@ -244,7 +263,7 @@ const edgesOf = ({ design, geometry, selected }: FlowInput): FlowEdge[] => {
     ariaLabel: labelOf(design, ref),
   });
   const edges: FlowEdge[] = [];
-  const drawn = new Set(geometry.devices.map((device) => device.id));
+  const drawn = new Set([...geometry.devices, ...(geometry.flags ?? [])].map(({ id }) => id));
   for (const cable of geometry.cables) {
     const id = cable.links[0]!;
     const link = design.links[id];

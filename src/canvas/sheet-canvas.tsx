@@ -12,6 +12,7 @@ import { useCallback, useMemo, useState, type DragEvent, type KeyboardEvent, typ
 import { showToast } from '../components/toast.tsx';
 import type { Decorations, Tone } from '../drawing/decorations.ts';
 import { elementKey } from '../drawing/decorations.ts';
+import { sheetOfDesign } from '../drawing/sheets/draw-sheet.ts';
 import { levelOf, type Level } from '../drawing/parts/level-of-detail.ts';
 import type { ElementRef } from '../engine/model/design.ts';
 import { useNumbering } from '../workspace/checks-context.tsx';
@@ -34,9 +35,11 @@ import { readPartDrag } from './parts-tray/part-drag.ts';
 import { portNear } from './port-near.ts';
 import { elementAt, refAt } from './ref-at.ts';
 import { CrowdedNotice, EmptySheetHint, SheetHint, ViewNotice } from './sheet-hints.tsx';
+import { SheetTurner } from './sheet-turner.tsx';
 import { SnapGuides } from './snap-guides.tsx';
 import { useKeptFit } from './use-kept-fit.ts';
 import { useMoving } from './use-moving.ts';
+import { useTurnToSelection } from './use-turn-to-selection.ts';
 import { useViewed } from './use-viewed.ts';
 import { useView, zoomLimits } from './use-view.ts';
 
@@ -91,7 +94,7 @@ export function SheetCanvas({
   const design = useOpenState((state) => state.document);
   const editable = useOpenState((state) => state.editable);
   const selection = useOpenState((state) => state.selection);
-  const { settled, facts, drag, shown } = useDrawn();
+  const { settled, facts, drag, onSheet, sheet } = useDrawn();
   const { geometry, decorations: marks, visibilityOf } = useViewed(decorations);
   const flow = useReactFlow<FlowNode, FlowEdge>();
   const view = useView();
@@ -129,15 +132,15 @@ export function SheetCanvas({
   const { nodes, edges } = useMemo(
     () =>
       designToFlow({
-        design: shown,
+        design: onSheet,
         geometry,
         facts,
         selected,
         editable,
-        isLocked: (ref) => isLocked(shown, ref),
+        isLocked: (ref) => isLocked(onSheet, ref),
         visibilityOf,
       }),
-    [shown, geometry, facts, selected, editable, visibilityOf],
+    [onSheet, geometry, facts, selected, editable, visibilityOf],
   );
   // Moves are measured from where things stood when the drag began.
   const settledNodes = useMemo(
@@ -145,14 +148,14 @@ export function SheetCanvas({
       drag === undefined
         ? nodes
         : designToFlow({
-            design,
+            design: sheetOfDesign(design, sheet.number).design,
             geometry: settled,
             facts,
             selected,
             editable,
             isLocked: (ref) => isLocked(design, ref),
           }).nodes,
-    [drag, nodes, design, settled, facts, selected, editable],
+    [drag, nodes, design, sheet.number, settled, facts, selected, editable],
   );
 
   const say = useCallback((why: string): void => void showToast({ tone: 'failed', text: why }), []);
@@ -175,7 +178,11 @@ export function SheetCanvas({
         .selection.map((ref) => [elementKey({ collection: ref.collection, id: ref.id }), ref]),
     );
     for (const pick of picks) {
-      const ref = [...nodes, ...edges].find((part) => part.id === pick.id)?.data?.ref;
+      const part = [...nodes, ...edges].find((one) => one.id === pick.id);
+      // A flag for many leads to their sheet; one for a single device leads to it by selecting it.
+      if (part?.type === 'onward' && pick.selected && part.data.flag.device === undefined)
+        sheet.turnTo(part.data.flag.sheet);
+      const ref = part?.data?.ref;
       if (ref === undefined) continue;
       const key = elementKey(ref);
       if (!pick.selected) refs.delete(key);
@@ -322,6 +329,7 @@ export function SheetCanvas({
   };
 
   useKeptFit(geometry.sheet, view);
+  useTurnToSelection(view);
 
   return (
     <DrawingContext value={drawing}>
@@ -387,6 +395,7 @@ export function SheetCanvas({
         <EmptySheetHint />
         <SheetHint />
         <ViewNotice />
+        <SheetTurner />
       </div>
     </DrawingContext>
   );

@@ -1,7 +1,8 @@
 import type { ElkNode } from 'elkjs/lib/elk-api.js';
 import type { ElkGraph } from '../drawing/tidy/elk-graph.ts';
 import { elkGraphOf, positionsFromElk, selectionGraph, unusualSites } from '../drawing/tidy/elk-graph.ts';
-import { route } from '../drawing/routing/route.ts';
+import { drawSheet } from '../drawing/sheets/draw-sheet.ts';
+import { sheetOfSite } from '../drawing/sheets/sheet-numbers.ts';
 import type { SiteLayout } from '../drawing/tidy/site-layout.ts';
 import { tidySite } from '../drawing/tidy/tidy-site.ts';
 import { tidySelection } from '../drawing/tidy/tidy-selection.ts';
@@ -50,5 +51,5 @@ export const tidyOneSite = async (design: Design, site: string, layOut: LayOut):
     unusual === undefined
       ? undefined
       : positionsFromElk(unusual, asAnswer(await layOut(elkGraphOf(unusual) as ElkNode)));
-  return tidySite(design, route(design), site, given);
+  return tidySite(design, drawSheet(design, sheetOfSite(design.layout, site)), site, given);
 };

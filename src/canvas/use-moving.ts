@@ -3,8 +3,10 @@ import { useRef, useState } from 'react';
 import { showToast } from '../components/toast.tsx';
 import type { ElementRef } from '../engine/model/design.ts';
 import { isEmptyPatch, type MergePatch } from '../engine/model/merge-patch.ts';
+import { currentSheet } from '../workspace/current-sheet.ts';
 import { useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
 import { moveElements } from '../workspace/operations/move-parts.ts';
+import { designOnSheet, patchOnSheet } from '../workspace/operations/on-sheet.ts';
 import type { Guide } from '../workspace/operations/snap-move.ts';
 import type { FlowNode } from './design-to-flow.ts';
 import { dragOf, dropToPatch, movesIn, snapDrag, standingOf } from './flow-changes-to-patch.ts';
@@ -37,7 +39,10 @@ export function useMoving(settledNodes: readonly FlowNode[], zoom: number): Movi
     setGuides(none);
     setDrag(undefined);
     if (drag === undefined || isEmptyPatch(drag.patch)) return;
-    const committed = open.commit('Move', dropToPatch(design, settled, drag.patch, drag.refs));
+    const committed = open.commit(
+      'Move',
+      patchOnSheet(design, dropToPatch(design, settled, drag.patch, drag.refs), currentSheet()),
+    );
     if (!committed.ok)
       showToast({
         tone: 'failed',
@@ -59,7 +64,13 @@ export function useMoving(settledNodes: readonly FlowNode[], zoom: number): Movi
       const { dx, dy, guides } = isFree.current
         ? { ...drag, guides: none }
         : snapDrag(design, settled, drag, reachOnScreenPx / zoom);
-      const operation = moveElements(design, standingOf(settled), drag.refs, dx, dy);
+      const operation = moveElements(
+        designOnSheet(design, currentSheet()),
+        standingOf(settled),
+        drag.refs,
+        dx,
+        dy,
+      );
       if (!operation.ok) return;
       held.current = { patch: operation.patch, refs: drag.refs };
       setGuides(guides);

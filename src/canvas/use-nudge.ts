@@ -3,9 +3,11 @@ import { showToast } from '../components/toast.tsx';
 import type { ElementRef } from '../engine/model/design.ts';
 import type { MergePatch } from '../engine/model/merge-patch.ts';
 import { isEmptyPatch } from '../engine/model/merge-patch.ts';
+import { currentSheet } from '../workspace/current-sheet.ts';
 import { useOpenDesign } from '../workspace/open-design-context.tsx';
 import { isLocked, moveElements } from '../workspace/operations/move-parts.ts';
 import { nameOf } from '../workspace/operations/name-of.ts';
+import { designOnSheet, patchOnSheet } from '../workspace/operations/on-sheet.ts';
 import { dropToPatch, standingOf } from './flow-changes-to-patch.ts';
 import { useDrawn } from './geometry-context.tsx';
 
@@ -45,14 +47,23 @@ export function useNudge(): (dx: number, dy: number) => void {
         latest.current.setDrag(undefined);
         if (move === undefined || isEmptyPatch(move.patch)) return;
         const now = open.store.getState().document;
-        const done = open.commit('Move', dropToPatch(now, latest.current.settled, move.patch, move.refs));
+        const done = open.commit(
+          'Move',
+          patchOnSheet(now, dropToPatch(now, latest.current.settled, move.patch, move.refs), currentSheet()),
+        );
         if (!done.ok)
           showToast({ tone: 'failed', text: done.problems.map((problem) => problem.expected).join('; ') });
       };
       const before = held.current;
       if (before !== undefined) clearTimeout(before.timer);
       const by = { dx: (before?.dx ?? 0) + dx, dy: (before?.dy ?? 0) + dy };
-      const operation = moveElements(document, standingOf(latest.current.settled), refs, by.dx, by.dy);
+      const operation = moveElements(
+        designOnSheet(document, currentSheet()),
+        standingOf(latest.current.settled),
+        refs,
+        by.dx,
+        by.dy,
+      );
       if (!operation.ok) return;
       held.current = { ...by, refs, patch: operation.patch, timer: setTimeout(drop, quietMs) };
       latest.current.setDrag(operation.patch);

@@ -1,6 +1,6 @@
 import { useCallback } from 'react';
 import { showToast } from '../components/toast.tsx';
-import { route } from '../drawing/routing/route.ts';
+import { drawSheet } from '../drawing/sheets/draw-sheet.ts';
 import type { ElementRef } from '../engine/model/design.ts';
 import { applyPatch } from '../engine/model/merge-patch.ts';
 import { useOpenDesign } from '../workspace/open-design-context.tsx';
@@ -58,7 +58,8 @@ export function useTidy(): { readonly tidy: (refs: readonly ElementRef[]) => Pro
         const done = open.commit(label, patch);
         if (!done.ok)
           showToast({ tone: 'failed', text: done.problems.map((problem) => problem.expected).join('; ') });
-        else if (site === undefined && devices.length === 0) fit(route(applyPatch(document, patch)).sheet);
+        else if (site === undefined && devices.length === 0)
+          fit(drawSheet(applyPatch(document, patch)).sheet);
       } catch {
         if (signal.aborted) return;
         showToast({

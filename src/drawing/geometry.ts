@@ -198,6 +198,22 @@ export interface Crowded {
   readonly ids: readonly string[];
 }
 
+/** What stands at the edge of a sheet for the far ends of cords and cables that lie on another one. */
+export interface FlagGeometry {
+  /** The id that its rings and cables know it by. */
+  readonly id: string;
+  /** The sheet that it leads to. */
+  readonly sheet: number;
+  /** The far device, where it stands for one alone. */
+  readonly device?: string;
+  readonly head: string;
+  readonly lines: readonly string[];
+  /** Towards the sheet's middle; the other end points off the sheet. */
+  readonly looks: 'left' | 'right';
+  readonly rect: Rect;
+  readonly pips: readonly PipGeometry[];
+}
+
 export interface SheetGeometry {
   readonly sheet: SheetFrame;
   readonly sites: readonly SiteGeometry[];
@@ -207,6 +223,8 @@ export interface SheetGeometry {
   readonly jackets: readonly JacketGeometry[];
   readonly trunks: readonly TrunkGeometry[];
   readonly cables: readonly CableGeometry[];
+  /** Of one sheet of several; rings of a flag are among the others. */
+  readonly flags?: readonly FlagGeometry[];
   /** `at` is the top left corner of a note's words, `rect` the room kept for them at 14 px; standing notes leave 18 px for their number and 26 px above the first for a heading. */
   readonly notes: readonly {
     readonly id: string;

@@ -13,6 +13,7 @@ import { Inspector } from '../canvas/inspector/inspector.tsx';
 import { JoinDialog } from '../canvas/join-dialog.tsx';
 import { PartsTray } from '../canvas/parts-tray/parts-tray.tsx';
 import { SheetActions } from '../canvas/sheet-actions.tsx';
+import { sheetCommands } from '../canvas/sheet-turner.tsx';
 import { SheetCanvas } from '../canvas/sheet-canvas.tsx';
 import { useView } from '../canvas/use-view.ts';
 import { SeverityCounts } from '../components/severity-mark.tsx';
@@ -92,7 +93,7 @@ function Surface({ commenting, onOpenThread }: SurfaceProps) {
   const title = useOpenState((state) => state.document.meta.title);
   const anySelected = useOpenState((state) => state.selection.length > 0);
   const inspecting = useDesk((state) => state.inspecting);
-  const { settled, preview, setPreview } = useDrawn();
+  const { settled, preview, setPreview, sheet } = useDrawn();
   const view = useView();
   const standing = useMemo(() => standingOf(settled), [settled]);
   const menuOf = useElementMenu();
@@ -222,7 +223,7 @@ function Surface({ commenting, onOpenThread }: SurfaceProps) {
   return (
     <main id="main" tabIndex={-1} className="sheet-desk" data-selected={anySelected}>
       <h1 className="sr-only">{title}</h1>
-      <DeskCommands more={openings} />
+      <DeskCommands more={[...openings, ...sheetCommands(document, sheet)]} />
       <PartsTray />
       <div className="flex min-w-0 flex-1 flex-col">
         <SheetCanvas

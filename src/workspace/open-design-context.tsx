@@ -1,6 +1,8 @@
 import { createContext, use, useEffect, useState, type ReactNode } from 'react';
 import { useStore } from 'zustand';
 import type { Committed, OpenDesign, OpenDesignState } from './open-design.ts';
+import { currentSheet } from './current-sheet.ts';
+import { patchOnSheet } from './operations/on-sheet.ts';
 import type { Operation } from './operations/operation.ts';
 
 const OpenDesignContext = createContext<OpenDesign | null>(null);
@@ -52,7 +54,11 @@ export const perform = (
   operation: Operation,
 ): { readonly ok: true } | { readonly ok: false; readonly why: string } => {
   if (!operation.ok) return operation;
-  const committed: Committed = design.commit(operation.label, operation.patch);
+  const { document } = design.store.getState();
+  const committed: Committed = design.commit(
+    operation.label,
+    patchOnSheet(document, operation.patch, currentSheet()),
+  );
   if (!committed.ok)
     return {
       ok: false,

@@ -2,6 +2,8 @@ import { useEffect, useMemo, useRef } from 'react';
 import { flushSync } from 'react-dom';
 import { showToast } from '../../components/toast.tsx';
 import { anchorOf } from '../../drawing/routing/anchors.ts';
+import { sheetsOf } from '../../drawing/sheets/sheet-numbers.ts';
+import { currentSheet } from '../../workspace/current-sheet.ts';
 import type { ElementRef } from '../../engine/model/design.ts';
 import { patchAt } from '../../engine/model/merge-patch.ts';
 import { useNumbering } from '../../workspace/checks-context.tsx';
@@ -81,6 +83,9 @@ export const useElementActions = (around: Surroundings = {}): DeskActions => {
       make(placePart(now(), settled, part, at, newEntryId, numbering, site));
     };
     const go = (ref: ElementRef): boolean => {
+      const on = sheetsOf(now(), ref);
+      // Selecting it turns to its sheet and shows it there.
+      if (on.length > 0 && !on.includes(currentSheet())) return true;
       const at = anchorOf(latest.current.settled, ref, now());
       if (at !== undefined) latest.current.sheet.showPoint(at);
       return at !== undefined;

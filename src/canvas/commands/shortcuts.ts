@@ -37,6 +37,8 @@ export const shortcuts = {
   zoomIn: { words: 'Zoom in', group: 'Sheet', keys: ['+', '='] },
   zoomOut: { words: 'Zoom out', group: 'Sheet', keys: ['-'] },
   zoomSelection: { words: 'Zoom to what is selected', group: 'Sheet', keys: ['.'], needs: selected },
+  previousSheet: { words: 'Previous sheet', group: 'Sheet', keys: ['Alt+PageUp'] },
+  nextSheet: { words: 'Next sheet', group: 'Sheet', keys: ['Alt+PageDown'] },
   inspector: { words: 'Show the inspector, or put it away', group: 'Sheet', keys: ['I'] },
 
   layerCabling: { words: 'Cabling on or off', group: 'Layers', keys: ['1'] },
@@ -195,6 +197,8 @@ const shown: { readonly [key: string]: string } = {
   Escape: 'Esc',
   Delete: 'Del',
   ContextMenu: 'Menu',
+  PageUp: 'Page up',
+  PageDown: 'Page down',
   '-': '−',
 };
 

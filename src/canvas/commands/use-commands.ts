@@ -2,6 +2,7 @@ import { useEffect, useMemo, useRef } from 'react';
 import { showToast } from '../../components/toast.tsx';
 import { around } from '../../drawing/routing/rects.ts';
 import { anchorOf } from '../../drawing/routing/anchors.ts';
+import { sheetsOf } from '../../drawing/sheets/sheet-numbers.ts';
 import type { Design, ElementRef } from '../../engine/model/design.ts';
 import { useNumbering } from '../../workspace/checks-context.tsx';
 import { newEntryId, useOpenDesign } from '../../workspace/open-design-context.tsx';
@@ -56,15 +57,15 @@ export const siteOf = (design: Design, ref: ElementRef | undefined): string | un
 export function useCommands(): Commands {
   const open = useOpenDesign();
   const numbering = useNumbering();
-  const { settled } = useDrawn();
+  const { settled, sheet } = useDrawn();
   const view = useView();
   const nudge = useNudge();
   const { tidy } = useTidy();
   const choice = useViewChoice();
   const actions = useElementActions();
-  const latest = useRef({ settled, view, nudge, tidy, choice });
+  const latest = useRef({ settled, sheet, view, nudge, tidy, choice });
   useEffect(() => {
-    latest.current = { settled, view, nudge, tidy, choice };
+    latest.current = { settled, sheet, view, nudge, tidy, choice };
   });
   return useMemo((): Commands => {
     const say = (text: string): void => void showToast({ tone: 'failed', text });
@@ -92,6 +93,13 @@ export function useCommands(): Commands {
           : { x: box.x + box.width / 2, y: box.y + box.height / 2 });
       openMenu({ at, ref, of });
     };
+    const turn = (by: number): void => {
+      const { number, of, turnTo } = latest.current.sheet;
+      if (of === 1) return say('The design has one sheet.');
+      const next = number + by;
+      if (next < 1 || next > of) return say(`This is the ${by < 0 ? 'first' : 'last'} sheet of ${of}.`);
+      turnTo(next);
+    };
     const run: Commands['run'] = {
       find: () => setSearching(true),
       keys: () => setListingKeys(true),
@@ -111,6 +119,8 @@ export function useCommands(): Commands {
           view.fitRect({ x: anchor.x - 160, y: anchor.y - 100, width: 320, height: 200 });
         else say('What is selected has no place of its own on the sheet.');
       },
+      previousSheet: () => turn(-1),
+      nextSheet: () => turn(1),
       inspector: () => setInspecting(!useDesk.getState().inspecting),
 
       layerCabling: () => latest.current.choice.toggleLayer('cabling'),
@@ -150,6 +160,9 @@ export function useCommands(): Commands {
         const { settled, view } = latest.current;
         const middle = view.middle();
         const away = (at: ElementRef): number => {
+          // What lies on another sheet is the far end, however near its flag.
+          const on = sheetsOf(now(), at);
+          if (on.length > 0 && !on.includes(latest.current.sheet.number)) return Infinity;
           const anchor = anchorOf(settled, at, now());
           return anchor === undefined ? -1 : Math.hypot(anchor.x - middle.x, anchor.y - middle.y);
         };

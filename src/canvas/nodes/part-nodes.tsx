@@ -32,6 +32,7 @@ import { useDrawing } from '../drawing-context.ts';
 import { useDesk } from '../desk-state.ts';
 import { refAt } from '../ref-at.ts';
 import { FaultMarks } from './fault-marks.tsx';
+import { FlagNode } from './flag-node.tsx';
 import { NoteEditor } from './note-editor.tsx';
 import { Shapes } from '../../components/shapes.tsx';
 
@@ -317,6 +318,7 @@ export const nodeTypes = {
   site: Site,
   band: Band,
   device: Device,
+  onward: FlagNode,
   ring: Ring,
   note: Note,
   trunks: Trunks,

@@ -25,6 +25,8 @@ export interface TunnelFacts {
   readonly vni: { readonly a?: number; readonly b?: number };
   readonly endpoints: { readonly a: string; readonly b: string };
   readonly association?: string;
+  /** Where one cord stands for several tunnels that leave the sheet together: how many. */
+  readonly count?: number;
 }
 export interface PortFacts {
   readonly number: number;

@@ -16,6 +16,8 @@ export interface FerruleLook {
   readonly capSide: Side;
   /** The VNI of this end; unknown while it isn't chosen. */
   readonly vni?: number;
+  /** Stands in place of a VNI. */
+  readonly words?: string;
   /** The other end's VNI where the two differ: digits apart are marked. */
   readonly farVni?: number;
   readonly segments: readonly CordSegment[];
@@ -46,7 +48,7 @@ const round = (value: number): number => Math.round(value * 100) / 100;
 /** The number with its differing digits in red and underlined. */
 const numberText = (look: FerruleLook, x: number, y: number, room: number): Shape => {
   const { vni } = look;
-  const digits = vni === undefined ? '–' : String(vni);
+  const digits = look.words ?? (vni === undefined ? '–' : String(vni));
   const sizePx = Math.min(13.8, (room / textWidth(digits, 1, 600)) * 1);
   const base = y + sizePx * capShift;
   const style = { fontSize: round(sizePx), fontWeight: 600, textAnchor: 'middle' as const };

@@ -111,6 +111,7 @@ const ferrulePart = (
       selected: tones.includes('selected') || tones.includes('hovered'),
       lit: tones.includes('lit'),
       ...(vni === undefined ? {} : { vni }),
+      ...(tunnel.count === undefined ? {} : { words: `${tunnel.count} ×` }),
       ...(farVni === undefined ? {} : { farVni }),
     }),
     {

@@ -15,6 +15,7 @@ import type { Look } from '../parts/look.ts';
 import { loopChevrons } from '../parts/loop-chevrons.ts';
 import { pinnedNotePart, standingNotesPart } from '../parts/notes-part.ts';
 import { overhangParts } from '../parts/overhang-part.ts';
+import { flagPart } from '../parts/flag-part.ts';
 import { framePart, paperPart } from '../parts/paper-part.ts';
 import { ringPart } from '../parts/ring-part.ts';
 import { sitePart } from '../parts/site-part.ts';
@@ -51,7 +52,13 @@ export const sheetShapes = (geometry: SheetGeometry, view: SheetView): readonly 
         ...geometry.jackets.map((jacket) => jacketPart(jacket, geometry, facts, look)),
       ],
     },
-    { name: 'devices', shapes: geometry.devices.map((device) => devicePart(device, facts, look)) },
+    {
+      name: 'devices',
+      shapes: [
+        ...geometry.devices.map((device) => devicePart(device, facts, look)),
+        ...(geometry.flags ?? []).map((flag) => flagPart(flag, look)),
+      ],
+    },
     { name: 'rings', shapes: geometry.rings.map((ring) => ringPart(ring, facts, look)) },
     {
       name: 'furniture',

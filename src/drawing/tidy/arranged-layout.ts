@@ -6,12 +6,28 @@ import { facingOf } from './arrangement.ts';
 import type { SiteBlock } from './site-block.ts';
 import type { Level } from './site-parts.ts';
 
+/** Sites that stand with their back close to the next limb: their rings would turn round to it. */
+const backedByLimb = ({ columns }: Arrangement['seating']): ReadonlySet<string> =>
+  new Set(
+    columns.flatMap((sites, i) => (facingOf(i) === 'left' && columns[i + 1]?.length === 0 ? sites : [])),
+  );
+
+/** Their rings, held on the side that looks at the limb in front of them. */
+const heldRings = (design: Design, arrangement: Arrangement): Pick<Layout, 'endpoints'> => {
+  const backed = backedByLimb(arrangement.seating);
+  const held = Object.entries(design.endpoints)
+    .filter(([, { device }]) => backed.has(design.devices[device]?.site ?? ''))
+    .map(([id]) => [id, { side: 'left' as const }]);
+  return held.length === 0 ? {} : { endpoints: Object.fromEntries(held) };
+};
+
 /** The layout that an arrangement stands for; what a person locked keeps its place. */
 export const layoutOf = (
   design: Design,
   arrangement: Arrangement,
   blockOf: (site: string, facing: Level) => SiteBlock,
   collapsed: ReadonlySet<string>,
+  holdsRings = false,
 ): Layout => {
   const facing = new Map<string, Level>();
   arrangement.seating.columns.forEach((sites, i) => sites.forEach((site) => facing.set(site, facingOf(i))));
@@ -48,6 +64,7 @@ export const layoutOf = (
     sites,
     devices,
     transports,
+    ...(holdsRings ? heldRings(design, arrangement) : {}),
     ...(before.notes === undefined ? {} : { notes: before.notes }),
   };
 };
