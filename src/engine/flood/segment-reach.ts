@@ -130,6 +130,25 @@ const reachOf = (
   });
 };
 
+/** Clusters that reach the same others and are reached by the same, and each other. */
+const groupsOf = (reached: readonly ReadonlySet<number>[]): readonly (readonly number[])[] => {
+  const all = reached.map((_set, i) => i);
+  if (all.length > 0 && reached.every((set) => set.size === all.length)) return [all];
+  const alike = new Map<string, number[]>();
+  for (const i of all) {
+    const hears = all.map((k) => (reached[k]!.has(i) ? 1 : 0)).join('');
+    const isHeard = all.map((k) => (reached[i]!.has(k) ? 1 : 0)).join('');
+    const key = `${hears} ${isHeard}`;
+    const list = alike.get(key);
+    if (list === undefined) alike.set(key, [i]);
+    else list.push(i);
+  }
+  // Those that neither reach nor hear one another may still be alike towards all others: they stay apart.
+  return [...alike.values()].flatMap((list) =>
+    list.every((i) => list.every((k) => reached[i]!.has(k))) ? [list] : list.map((i) => [i]),
+  );
+};
+
 const compute = (graph: FloodGraph, segment: Id, devicesPast: Set<Id>): SegmentReach => {
   const { network } = graph;
   const { protocols } = entryOf(network.design.segments, segment);
@@ -137,17 +156,7 @@ const compute = (graph: FloodGraph, segment: Id, devicesPast: Set<Id>): SegmentR
   const { points, unattachedSites } = attachmentPoints(graph, segment);
   const clusters = clustersOf(graph, points);
   const reached = reachOf(graph, clusters, classBit(frame));
-  const alike = new Map<string, number[]>();
-  clusters.forEach((_cluster, i) => {
-    const hears = clusters.map((_other, k) => (reached[k]!.has(i) ? 1 : 0)).join('');
-    const isHeard = clusters.map((_other, k) => (reached[i]!.has(k) ? 1 : 0)).join('');
-    const key = `${hears} ${isHeard}`;
-    alike.set(key, [...(alike.get(key) ?? []), i]);
-  });
-  // Those that neither reach nor hear one another may still be alike towards all others: they stay apart.
-  const groups = [...alike.values()].flatMap((list) =>
-    list.every((i) => list.every((k) => reached[i]!.has(k))) ? [list] : list.map((i) => [i]),
-  );
+  const groups = groupsOf(reached);
   const partings: Parting[] = [];
   groups.forEach((own, from) => {
     const missed = groups.flatMap((other, to) => (reached[own[0]!]!.has(other[0]!) ? [] : [to]));

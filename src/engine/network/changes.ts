@@ -3,6 +3,7 @@ import { collections } from '../model/design.ts';
 import { sameJson } from '../model/merge-patch.ts';
 import type { Id } from '../model/scalars.ts';
 import type { DesignFacts } from './network.ts';
+import { perObject } from './network.ts';
 
 /** An entry that is not the same object in two versions of a design; absent where the version doesn't hold it. */
 export interface EntryChange<E> {
@@ -14,12 +15,22 @@ export type Changes = { readonly [C in Collection]: readonly EntryChange<Entry<C
 
 type Entries = { readonly [id: Id]: object };
 
+const idsOf = perObject((entries: Entries): readonly Id[] => Object.keys(entries));
+const valuesOf = perObject((entries: Entries): readonly object[] => Object.values(entries));
+
 const changesOf = (before: Entries, now: Entries): readonly EntryChange<object>[] => {
   if (before === now) return [];
   const changes: EntryChange<object>[] = [];
+  const ids = idsOf(before);
+  const idsNow = idsOf(now);
+  const values = valuesOf(before);
+  const valuesNow = valuesOf(now);
   let kept = 0;
-  for (const id of Object.keys(now)) {
-    const [old, entry] = [before[id], now[id]!];
+  for (let i = 0; i < idsNow.length; i += 1) {
+    const id = idsNow[i]!;
+    const entry = valuesNow[i]!;
+    // A patch leaves entries in their places, so that most need not be looked up.
+    const old = ids[i] === id ? values[i] : before[id];
     if (old === entry) kept += 1;
     else if (old === undefined) changes.push({ id, now: entry });
     else {
@@ -27,7 +38,6 @@ const changesOf = (before: Entries, now: Entries): readonly EntryChange<object>[
       changes.push({ id, before: old, now: entry });
     }
   }
-  const ids = Object.keys(before);
   if (kept < ids.length)
     for (const id of ids) if (now[id] === undefined) changes.push({ id, before: before[id]! });
   return changes;

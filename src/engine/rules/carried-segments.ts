@@ -1,7 +1,7 @@
 import type { Collection } from '../model/design.ts';
 import type { Network, PortCircuit } from '../network/network.ts';
 import { entryOf, segmentsAt } from '../network/network.ts';
-import { perFacts } from './facts.ts';
+import { perEntry, perFacts } from './facts.ts';
 
 /** What decides which segments a tunnel carries: every collection that says how frames travel. */
 export const segmentPathFacts = [
@@ -40,16 +40,20 @@ export const circuitFacts = ['forwarders', 'gateways', 'addressing'] as const;
 export const segmentsByForwarder = perFacts(
   circuitFacts,
   (network): ReadonlyMap<string, readonly string[]> =>
-    new Map(
-      [...network.circuitsByForwarder].map(([forwarder, circuits]) => [
-        forwarder,
-        [
-          ...new Set(
-            circuits.flatMap(({ device, circuit }) =>
-              circuit.kind === 'port' ? segmentsOfCircuit(network, device, circuit) : [],
-            ),
+    new Map([...network.circuitsByForwarder.keys()].map((id) => [id, segmentsOfForwarder(network, id)])),
+);
+
+const segmentsOfForwarder = perEntry(
+  'forwarders',
+  ['gateways', 'addressing'],
+  (network, forwarder): readonly string[] =>
+    [
+      ...new Set(
+        network.circuitsByForwarder
+          .get(forwarder)!
+          .flatMap(({ device, circuit }) =>
+            circuit.kind === 'port' ? segmentsOfCircuit(network, device, circuit) : [],
           ),
-        ].sort(),
-      ]),
-    ),
+      ),
+    ].sort(),
 );

@@ -1,6 +1,7 @@
 import { expectedForwarding } from '../flood/expected-forwarding.ts';
 import type { Id } from '../model/scalars.ts';
-import { perNetwork, perObject, portKey, type Device, type Network } from '../network/network.ts';
+import { perObject, portKey, type Device, type Network } from '../network/network.ts';
+import { perFacts } from './facts.ts';
 
 /** Hosts of the design whose frames a port takes in: those behind a gateway's circuits, or plugged into a switch's port. */
 export const hostsBehindPort = (network: Network, device: string, port: string): ReadonlySet<string> => {
@@ -35,7 +36,7 @@ const portsWithLimits = perObject(({ ports }: Device): readonly Id[] =>
 );
 
 /** How many hosts the design has, and which devices have a port with a limit. */
-const hostsAndLimits = perNetwork(({ design, deviceIds }) => {
+const hostsAndLimits = perFacts(['devices'], ({ design, deviceIds }) => {
   const limited: Id[] = [];
   let hostCount = 0;
   for (const id of deviceIds) {

@@ -21,7 +21,7 @@ export const portRoutedAndBridged = defineRule({
   id: 'port-routed-and-bridged',
   title: 'A port on a transport is in no forwarder',
   severity: 'blocking',
-  looksAt: ['links', 'forwarders', 'gateways'],
+  looksAt: ['landings', 'forwarders', 'gateways'],
   why: 'A port in a forwarder hands every frame to it and keeps none for an address of its own: either the outside address can’t be reached, or the frames are not bridged.',
   seen: 'The gateway refuses one of the two settings; where it doesn’t, tunnels over the port drop as soon as the forwarder is up, and frames of the segment get out on the transport.',
   sources: ['common practice, no source'],

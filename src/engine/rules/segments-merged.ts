@@ -8,7 +8,7 @@ import { deviceOfTunnelEnd, ends, entryOf, segmentsAt } from '../network/network
 import { removalPatch } from '../flood/removal-patch.ts';
 import { circuitFacts, segmentPathFacts, segmentsOfCircuit } from './carried-segments.ts';
 import { defineRule, type Fault } from './define-rule.ts';
-import { perFacts } from './facts.ts';
+import { perEntry, perFacts } from './facts.ts';
 import type { Fix } from './finding.ts';
 import { siteNameOf, tunnelPlaces } from './places.ts';
 import { portLabel, portRef } from './port-label.ts';
@@ -125,37 +125,26 @@ interface Brought {
   readonly segments: readonly Id[];
 }
 
-const untaggedByForwarder = perFacts(
-  circuitFacts,
-  (network): ReadonlyMap<Id, readonly Brought[]> =>
-    new Map(
-      [...network.circuitsByForwarder].map(([forwarder, circuits]) => [
-        forwarder,
-        circuits.flatMap((at): readonly Brought[] => {
-          const { circuit } = at;
-          if (circuit.kind !== 'port' || (circuit.vlans !== 'untagged' && !circuitRemovesTag(circuit)))
-            return [];
-          const segments = segmentsOfCircuit(network, at.device, circuit);
-          return segments.length === 0 ? [] : [{ at, segments }];
-        }),
-      ]),
-    ),
-);
-
-const untaggedSegments = perFacts(
-  circuitFacts,
-  (network): ReadonlyMap<Id, readonly Id[]> =>
-    new Map(
-      [...untaggedByForwarder(network)].map(([forwarder, brought]) => [
-        forwarder,
-        [...new Set(brought.flatMap(({ segments }) => segments))],
-      ]),
-    ),
-);
-
 /** Circuits of a forwarder whose frames are untagged inside, with the segments that they bring in. */
-const untaggedInside = (network: Network, forwarder: Id): readonly Brought[] =>
-  untaggedByForwarder(network).get(forwarder) ?? [];
+const untaggedInside = perEntry(
+  'forwarders',
+  ['gateways', 'addressing'],
+  (network, forwarder): readonly Brought[] =>
+    network.circuitsByForwarder.get(forwarder)!.flatMap((at): readonly Brought[] => {
+      const { circuit } = at;
+      if (circuit.kind !== 'port' || (circuit.vlans !== 'untagged' && !circuitRemovesTag(circuit))) return [];
+      const segments = segmentsOfCircuit(network, at.device, circuit);
+      return segments.length === 0 ? [] : [{ at, segments }];
+    }),
+);
+
+const untaggedSegments = perEntry(
+  'forwarders',
+  ['gateways', 'addressing'],
+  (network, forwarder): readonly Id[] => [
+    ...new Set(untaggedInside(network, forwarder).flatMap(({ segments }) => segments)),
+  ],
+);
 
 const isIsolated = (one: CircuitAt, other: CircuitAt): boolean =>
   one.circuit.isolation !== undefined && one.circuit.isolation === other.circuit.isolation;
@@ -200,12 +189,11 @@ const holders = (network: Network, tunnel: Id, end: 'a' | 'b'): readonly Circuit
 
 /** Segments whose frames are untagged inside the forwarders of one end. */
 const untaggedAt = (network: Network, tunnel: Id, end: 'a' | 'b'): readonly Id[] => {
-  const segmentsOf = untaggedSegments(network);
   const [first, ...others] = holders(network, tunnel, end);
-  const own = first === undefined ? [] : (segmentsOf.get(first.forwarder) ?? []);
+  const own = first === undefined ? [] : untaggedSegments(network, first.forwarder);
   return others.length === 0
     ? own
-    : [...new Set([...own, ...others.flatMap(({ forwarder }) => segmentsOf.get(forwarder) ?? [])])];
+    : [...new Set([...own, ...others.flatMap(({ forwarder }) => untaggedSegments(network, forwarder))])];
 };
 
 /** Segments by the tag that they keep inside the forwarders of one end. */
@@ -223,11 +211,11 @@ const keptTags = (network: Network, tunnel: Id, end: 'a' | 'b'): ReadonlyMap<num
   return kept;
 };
 
-const byTunnel = (network: Network): readonly Found[] =>
+/** What tunnels would merge, were they all up. */
+const byTunnel = perFacts([...circuitFacts, 'tunnels', 'endpoints', 'sites'], (network): readonly Found[] =>
   network.tunnelIds.flatMap((tunnel): readonly Found[] => {
     const { design } = network;
     const entry = entryOf(design.tunnels, tunnel);
-    if (tunnelStates(network).get(tunnel)?.up !== true) return [];
     const ref: ElementRef = { collection: 'tunnels', id: tunnel };
     const [atA, atB] = [untaggedAt(network, tunnel, 'a'), untaggedAt(network, tunnel, 'b')];
     if (atA.length > 0 && atB.length > 0 && !atA.some((id) => atB.includes(id))) {
@@ -269,7 +257,8 @@ const byTunnel = (network: Network): readonly Found[] =>
         basis: crossed,
       },
     ];
-  });
+  }),
+);
 
 const nativeFixes = (network: Network, fault: Found): readonly Fix[] => {
   const [, a, b] = fault.elements;
@@ -321,7 +310,9 @@ export const segmentsMerged = defineRule({
     ...byVlan(network),
     ...byNative(network),
     ...byForwarder(network),
-    ...byTunnel(network),
+    ...byTunnel(network).filter(
+      ({ elements: [tunnel] }) => tunnelStates(network).get(tunnel!.id)?.up === true,
+    ),
   ],
   fixes: (fault, network) => {
     const [first] = fault.elements;
