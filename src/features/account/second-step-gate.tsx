@@ -17,10 +17,10 @@ export function SecondStepGate({ children }: { readonly children: ReactNode }) {
   useEffect(
     () =>
       onSecondStepRequired(() => {
-        setRefusedAt(window.location.pathname);
+        setRefusedAt(pathname);
         void refreshSession();
       }),
-    [refreshSession],
+    [pathname, refreshSession],
   );
   const shut = (useSession()?.memberships ?? []).filter(({ needsSecondStep }) => needsSecondStep);
   const here = shut.find((membership) => membership.workspaceId === workspaceId);
