@@ -18,6 +18,7 @@ import { lastSeen } from './middleware/last-seen.ts';
 import { requestLog } from './middleware/request-log.ts';
 import { securityHeaders } from './middleware/security-headers.ts';
 import { accountRoutes } from './routes/account-routes.ts';
+import { apiDescriptionRoutes } from './routes/api-description-routes.ts';
 import { commentRoutes } from './routes/comment-routes.ts';
 import { designRoutes } from './routes/design-routes.ts';
 import { engagementRoutes } from './routes/engagement-routes.ts';
@@ -87,6 +88,7 @@ export function createApp({
     next();
   });
   app.use(healthRoutes(database));
+  app.use(apiDescriptionRoutes(config.publicUrl));
   app.use(engineRoutes(throttles));
   app.use('/api', bearerTokens(context, throttles));
   app.use('/api', ...[...sessions.handlers, lastSeen(context), refuseForgedRequests].map(unlessByToken));

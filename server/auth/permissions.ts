@@ -38,6 +38,7 @@ export type Access = Action | 'signed-in' | 'anyone';
 /** Every route of the server, and what one must be allowed to do to be answered. */
 export const routes = {
   'GET /api/health': 'anyone',
+  'GET /api/openapi.json': 'anyone',
   'POST /api/engine/check': 'anyone',
   'POST /api/engine/wire': 'anyone',
   'POST /api/engine/load': 'anyone',

@@ -19,6 +19,7 @@ import { insertEngagement } from '../../server/repositories/engagements.ts';
 import { insertMembership, insertWorkspace } from '../../server/repositories/memberships.ts';
 import { insertPerson } from '../../server/repositories/people.ts';
 import { summarise } from '../../server/services/design-summary.ts';
+import { witnessed } from './api-witness.ts';
 import { createTestDatabase } from './test-database.ts';
 
 export const testPassword = 'a password for tests';
@@ -70,7 +71,8 @@ async function startOn(url: string, options: Partial<AppOptions>): Promise<TestA
   const database = openDatabase(url);
   const log = pino({ level: 'debug' }, { write: (line: string) => void lines.push(line) });
   const app: Express = createApp({ database, config: testConfig, log, ...options });
-  const server = createServer(app);
+  const disagreements: string[] = [];
+  const server = createServer(witnessed(app, disagreements));
   await new Promise<void>((resolve) => server.listen(0, '127.0.0.1', resolve));
   return {
     url,
@@ -82,6 +84,10 @@ async function startOn(url: string, options: Partial<AppOptions>): Promise<TestA
       server.closeAllConnections();
       await new Promise((resolve) => server.close(resolve));
       await database.close();
+      if (disagreements.length > 0)
+        throw new Error(
+          `Answers other than the API's description says:\n${[...new Set(disagreements)].join('\n')}`,
+        );
     },
   };
 }

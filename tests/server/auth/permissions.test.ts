@@ -109,6 +109,7 @@ const wrongProof = { code: '000000', password: 'wrong' };
 /** A request to each route that succeeds for whoever may make it. */
 const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) => Test } = {
   'GET /api/health': (browser) => browser.get('/api/health'),
+  'GET /api/openapi.json': (browser) => browser.get('/api/openapi.json'),
   'POST /api/engine/check': (browser) => browser.post('/api/engine/check', { design: {} }),
   'POST /api/engine/wire': (browser) =>
     browser.post('/api/engine/wire', { stack: {}, innerPacketBytes: 1500 }),
@@ -423,7 +424,7 @@ describe('the table of roles', () => {
     const files = readdirSync(folder).filter((name) => name !== 'mount-route.ts');
     const source = files.map((name) => readFileSync(join(folder, name), 'utf8')).join('\n');
     expect(source).not.toMatch(/\brouter\s*(\.|\[)/);
-    const mounted = [...source.matchAll(/mountRoute\(router, '([^']+)'/g)].map(([, route]) => route);
+    const mounted = [...source.matchAll(/mountRoute\(\s*router,\s*'([^']+)'/g)].map(([, route]) => route);
     expect(mounted.sort()).toEqual(Object.keys(routes).sort());
   });
 
@@ -517,6 +518,7 @@ describe('routes that belong to no workspace', () => {
 
   test.each([
     ['GET /api/health', 200],
+    ['GET /api/openapi.json', 200],
     ['POST /api/engine/check', 422],
     ['POST /api/engine/wire', 200],
     ['POST /api/engine/load', 422],
