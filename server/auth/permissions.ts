@@ -107,6 +107,8 @@ export const routes = {
   'GET /api/designs/:designId/revisions': 'revision.read',
   'POST /api/designs/:designId/revisions': 'review.ask',
   'GET /api/revisions/:revisionId': 'revision.read',
+  'GET /api/revisions/:revisionId/sheet.svg': 'revision.read',
+  'GET /api/revisions/:revisionId/sheet.pdf': 'revision.read',
   'POST /api/revisions/:revisionId/withdrawal': 'review.ask',
   'POST /api/revisions/:revisionId/decision': 'review.decide',
   'POST /api/revisions/:revisionId/build': 'design.build',

@@ -80,6 +80,11 @@ export const routes: RouteObject[] = [
                 }),
               },
               {
+                path: 'designs/:designId/revisions/:revisionId',
+                ErrorBoundary: PageError,
+                lazy: async () => ({ Component: (await import('../pages/revision-page.tsx')).RevisionPage }),
+              },
+              {
                 path: 'designs/:designId',
                 ErrorBoundary: PageError,
                 lazy: async () => ({ Component: (await import('../pages/design-page.tsx')).DesignPage }),
@@ -108,6 +113,13 @@ export const routes: RouteObject[] = [
                     ErrorBoundary: PageError,
                     lazy: async () => ({
                       Component: (await import('../pages/review-page.tsx')).ReviewPage,
+                    }),
+                  },
+                  {
+                    path: 'history',
+                    ErrorBoundary: PageError,
+                    lazy: async () => ({
+                      Component: (await import('../pages/history-page.tsx')).HistoryPage,
                     }),
                   },
                   {

@@ -4,7 +4,7 @@ import { Outlet } from 'react-router-dom';
 import { Button } from '../components/button.tsx';
 import { ErrorNotice } from '../components/notice.tsx';
 import { showToast } from '../components/toast.tsx';
-import { openDesignSchema, type OpenDesign as OpenDesignAnswer } from '../contract/designs.ts';
+import type { OpenDesign as OpenDesignAnswer } from '../contract/designs.ts';
 import type { Design } from '../engine/model/design.ts';
 import { parseDesign } from '../engine/model/parse-design.ts';
 import { DesignBar } from '../features/design-bar/design-bar.tsx';
@@ -16,13 +16,13 @@ import { ReleaseMenu } from '../features/revisions/release-menu.tsx';
 import { StateBar } from '../features/revisions/state-bar.tsx';
 import { useRelease } from '../features/revisions/use-release.tsx';
 import { StretchDialogs } from '../features/stretch/stretch-dialogs.tsx';
-import { callApi } from '../lib/api-client.ts';
 import { asApiError } from '../lib/api-error.ts';
 import { DesignPlaceProvider } from '../workspace/design-place.tsx';
 import { designServer } from '../workspace/design-server.ts';
 import { browserEditStorage } from '../workspace/edit-storage.ts';
 import { useLiveDesign } from '../workspace/live/use-live-design.ts';
 import { openDesign, type OpenDesign } from '../workspace/open-design.ts';
+import { openDesignQuery } from '../workspace/open-design-query.ts';
 import { OpenDesignProvider, useOpenDesign } from '../workspace/open-design-context.tsx';
 import { StoredChecks } from '../workspace/stored-checks.tsx';
 import { SuggestingProvider } from '../workspace/suggesting.tsx';
@@ -33,22 +33,14 @@ const phone = '(max-width: 767px)';
 
 /** Opens one design for the pages on it: each shows a side of the same open document, so edits and undo go across. */
 export function DesignDesk({ designId }: { readonly designId: string }) {
-  // Read once: from then on the open design keeps itself up to date.
-  const answer = useQuery({
-    queryKey: ['open-design', designId],
-    queryFn: ({ signal }) =>
-      callApi(openDesignSchema, `/api/designs/${encodeURIComponent(designId)}`, { signal }),
-    staleTime: Infinity,
-    gcTime: 0,
-    refetchOnWindowFocus: false,
-  });
+  const answer = useQuery(openDesignQuery(designId));
   if (answer.error !== null)
     return <CannotOpen message={asApiError(answer.error).message} onRetry={() => void answer.refetch()} />;
   if (answer.data === undefined) return <Opening />;
   return <ReadDesign answer={answer.data} />;
 }
 
-function Opening() {
+export function Opening() {
   return (
     <main
       id="main"
@@ -63,7 +55,7 @@ function Opening() {
   );
 }
 
-function CannotOpen({ message, onRetry }: { readonly message: string; readonly onRetry: () => void }) {
+export function CannotOpen({ message, onRetry }: { readonly message: string; readonly onRetry: () => void }) {
   return (
     <main
       id="main"

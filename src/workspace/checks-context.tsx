@@ -68,6 +68,35 @@ export function ChecksProvider({
   );
 }
 
+/** The checks as they were frozen with a revision: what they say stays, whatever they would say today. */
+export function FrozenChecksProvider({
+  findings,
+  waivers,
+  children,
+}: {
+  readonly findings: readonly Finding[];
+  /** Those that covered a finding then. */
+  readonly waivers: readonly Waiver[];
+  readonly children: ReactNode;
+}) {
+  const document = useOpenState((state) => state.document);
+  const checks = useMemo((): Checks => {
+    // No day is past for what held when it was frozen.
+    const waived = applyWaivers(findings, waivers, '');
+    const waiverByKey = new Map(waived.covered.map(({ finding, waiver }) => [finding.key, waiver]));
+    return {
+      findings,
+      openFindings: waived.open,
+      waived,
+      waiverOf: (key) => waiverByKey.get(key),
+      document,
+      numbering: noNumberingContext,
+      behind: false,
+    };
+  }, [findings, waivers, document]);
+  return <ChecksContext value={checks}>{children}</ChecksContext>;
+}
+
 export function useChecks(): Checks {
   const checks = use(ChecksContext);
   if (checks === null) throw new Error('No checks run here.');

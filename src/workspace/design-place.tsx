@@ -6,6 +6,8 @@ export interface DesignPlace {
   readonly designId: string;
   readonly workspaceId: string;
   readonly actions: readonly Action[];
+  /** Where the server draws what is shown, without the ending; the design's own sheet where absent. */
+  readonly sheetPath?: string;
 }
 
 const DesignPlaceContext = createContext<DesignPlace | null>(null);

@@ -65,6 +65,8 @@ export interface OpenDesign {
   readonly catchUp: () => Promise<void>;
   /** Gives up the edits that the server refused and goes back to what it has. */
   readonly discardRefused: () => void;
+  /** Lets the person edit from now on, or not, as when the design's state changes; what waits to be saved stays. */
+  readonly setEditable: (editable: boolean) => void;
   readonly close: () => void;
 }
 
@@ -233,7 +235,8 @@ export const openDesign = (options: Options): OpenDesign => {
   };
 
   const travel = (way: typeof undo): string | undefined => {
-    const { document, history } = get();
+    const { document, history, editable } = get();
+    if (!editable) return undefined;
     const step = way(history, document);
     if (step === undefined) return undefined;
     const { takenOverBy, label } = step.step;
@@ -296,6 +299,7 @@ export const openDesign = (options: Options): OpenDesign => {
       }));
       keepSelection();
     },
+    setEditable: (editable) => set({ editable }),
     close: () => {
       closed = true;
       if (timer !== undefined) clearTimeout(timer);

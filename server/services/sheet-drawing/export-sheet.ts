@@ -6,27 +6,65 @@ import { Refusal } from '../../errors.ts';
 import { checkFactsOf } from '../check-facts.ts';
 import type { Context } from '../context.ts';
 import { requireDesign } from '../designs.ts';
+import { loadIssued, openRevision } from '../revisions.ts';
 import { loadDocument } from '../stored-documents.ts';
 import { createSheetDrawer } from './sheet-drawer.ts';
+import type { SheetJob } from './sheet-job.ts';
 
 // One thread for the whole process, whoever asks.
 const drawer = createSheetDrawer();
 
-/** The saved design's sheet as a file, with a name for it. */
+/** A file that was drawn, with a name for it. */
+export interface DrawnFile {
+  readonly file: Uint8Array;
+  readonly name: string;
+}
+
+export interface Wanted {
+  readonly format: 'svg' | 'pdf';
+  readonly query: SheetExportQuery;
+  /** Aborts when nobody waits for the file any more. */
+  readonly signal: AbortSignal;
+}
+
+/** The saved design's sheet. */
 export async function exportSheet(
   context: Context,
   personId: string,
   designId: string,
-  format: 'svg' | 'pdf',
-  query: SheetExportQuery,
-  signal: AbortSignal,
-): Promise<{ readonly file: Uint8Array; readonly name: string }> {
+  wanted: Wanted,
+): Promise<DrawnFile> {
   const { knex } = context.database;
   const design = await requireDesign(context, designId);
   await authorise(knex, personId, 'design.read', design.workspaceId, 'design');
   const { document } = await loadDocument(context, knex, design);
+  return draw(context, document, wanted, async () => {
+    const { numbering, waivers, today } = await checkFactsOf(context, knex, design);
+    return { from: { numbering }, waivers, today };
+  });
+}
+
+/** A revision's sheet: the document, the findings and the waivers that were frozen, under the title block of its state. */
+export async function exportRevision(
+  context: Context,
+  personId: string,
+  revisionId: string,
+  wanted: Wanted,
+): Promise<DrawnFile> {
+  const { knex } = context.database;
+  const { revision } = await openRevision(knex, personId, revisionId, 'revision.read');
+  const { document, findings, waivers } = await loadIssued(knex, revision);
+  // No day is past for what held when it was frozen.
+  return draw(context, document, wanted, () => Promise.resolve({ from: { findings }, waivers, today: '' }));
+}
+
+async function draw(
+  context: Context,
+  document: Design,
+  { format, query, signal }: Wanted,
+  checksOf: () => Promise<NonNullable<SheetJob['checks']>>,
+): Promise<DrawnFile> {
   refuseUnknownSegments(document, query.segments);
-  const checks = query.findings ? await checkFactsOf(context, knex, design) : undefined;
   const file = await drawer.draw(
     {
       format,
@@ -38,12 +76,21 @@ export async function exportSheet(
       },
       addresses: query.addresses,
       ...(query.size === undefined ? {} : { paper: query.size }),
-      ...(checks === undefined ? {} : { checks }),
+      ...(query.findings ? { checks: await checksOf() } : {}),
       drawnAt: context.clock(),
     },
     signal,
   );
   return { file, name: fileNameOf(document, format) };
+}
+
+function refuseUnknownSheet(document: Design, asked: number | undefined): void {
+  const of = sheetCount(document);
+  if (asked === undefined || asked <= of) return;
+  const expected = of === 1 ? 'expected 1: the design has one sheet' : `expected a number from 1 to ${of}`;
+  throw new Refusal('invalid-request', `'sheet' is ${asked}: ${expected}.`, {
+    details: [{ path: 'sheet', value: String(asked), expected }],
+  });
 }
 
 function refuseUnknownSegments({ segments }: Design, asked: readonly string[] = []): void {

@@ -10,6 +10,7 @@ import type { Design } from '#engine/model/design.ts';
 import { tunnelStates } from '#engine/network/can-come-up.ts';
 import { indexNetwork } from '#engine/network/index-network.ts';
 import type { NumberingContext } from '#engine/numbering/numbering-context.ts';
+import type { Finding } from '#engine/rules/finding.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
 import type { WaiverTerms } from '#engine/rules/waived.ts';
 import { applyWaivers } from '#engine/rules/waived.ts';
@@ -27,7 +28,8 @@ export interface SheetJob {
   readonly paper?: PaperName;
   /** Absent: a drawing without findings. */
   readonly checks?: {
-    readonly numbering: NumberingContext;
+    /** What is known beyond the document, or what was found when it was frozen. */
+    readonly from: { readonly numbering: NumberingContext } | { readonly findings: readonly Finding[] };
     readonly waivers: readonly WaiverTerms[];
     readonly today: string;
   };
@@ -35,7 +37,8 @@ export interface SheetJob {
 }
 
 function decorationsOf(document: Design, checks: NonNullable<SheetJob['checks']>): Decorations {
-  const findings = runRules(document, checks.numbering);
+  const { from } = checks;
+  const findings = 'findings' in from ? from.findings : runRules(document, from.numbering);
   const { covered } = applyWaivers(findings, checks.waivers, checks.today);
   const waived = new Set(covered.map(({ finding }) => finding.key));
   const down = [...tunnelStates(indexNetwork(document))].filter(([, state]) => !state.up).map(([id]) => id);

@@ -82,7 +82,7 @@ export interface SheetExport {
 /** Makes the chosen file and hands it to the person; one at a time, and it can be cancelled. */
 export function useSheetExport(choice: SheetChoice, picture: SheetPicture): SheetExport {
   const open = useOpenDesign();
-  const { designId } = useDesignPlace();
+  const { designId, sheetPath = `/api/designs/${encodeURIComponent(designId)}/sheet` } = useDesignPlace();
   const meta = useOpenState((state) => state.document.meta);
   const [doing, setDoing] = useState<string>();
   const [failure, setFailure] = useState<string>();
@@ -104,7 +104,7 @@ export function useSheetExport(choice: SheetChoice, picture: SheetPicture): Shee
         'The PDF is drawn by the server from what is saved, and your last edits are not. Wait until the bar says Saved, or export as SVG.',
       );
     setDoing('Drawing the PDF');
-    return fetchFile(`/api/designs/${encodeURIComponent(designId)}/sheet.pdf?${exportQuery(choice)}`, signal);
+    return fetchFile(`${sheetPath}.pdf?${exportQuery(choice)}`, signal);
   };
 
   const make = async (signal: AbortSignal): Promise<Blob> => {

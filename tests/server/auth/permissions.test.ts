@@ -227,6 +227,10 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
   'POST /api/designs/:designId/revisions': (browser, { reviewed: id }) =>
     browser.post(`/api/designs/${id}/revisions`, { sequence: reviewedSequence }),
   'GET /api/revisions/:revisionId': (browser, { revision: id }) => browser.get(`/api/revisions/${id}`),
+  'GET /api/revisions/:revisionId/sheet.svg': (browser, { revision: id }) =>
+    browser.get(`/api/revisions/${id}/sheet.svg`),
+  'GET /api/revisions/:revisionId/sheet.pdf': (browser, { revision: id }) =>
+    browser.get(`/api/revisions/${id}/sheet.pdf`),
   'POST /api/revisions/:revisionId/withdrawal': (browser, { revision: id }) =>
     browser.post(`/api/revisions/${id}/withdrawal`),
   'POST /api/revisions/:revisionId/decision': (browser, { revision: id }) =>
@@ -357,6 +361,8 @@ const ready: { readonly [route in Route]?: (role: Role) => Promise<void> } = {
   'POST /api/designs/:designId/revisions': makeDraft,
   'POST /api/designs/:designId/restoration': makeDraft,
   'GET /api/revisions/:revisionId': makeApproved,
+  'GET /api/revisions/:revisionId/sheet.svg': makeApproved,
+  'GET /api/revisions/:revisionId/sheet.pdf': makeApproved,
   'POST /api/revisions/:revisionId/withdrawal': putToReview,
   'POST /api/revisions/:revisionId/decision': putToReview,
   'POST /api/revisions/:revisionId/build': makeApproved,

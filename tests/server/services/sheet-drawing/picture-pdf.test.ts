@@ -9,7 +9,7 @@ import { demoDesign } from '../../../../seeds/demo-designs/demo-design.ts';
 import type { SheetJob } from '../../../../server/services/sheet-drawing/sheet-job.ts';
 import { drawSheet } from '../../../../server/services/sheet-drawing/sheet-job.ts';
 
-const checks = { numbering: noNumberingContext, waivers: [], today: '2026-01-05' };
+const checks = { from: { numbering: noNumberingContext }, waivers: [], today: '2026-01-05' };
 const jobOf = (document: Design, more: Partial<SheetJob> = {}): SheetJob => ({
   format: 'pdf',
   document,
