@@ -1,7 +1,7 @@
 import { useState, type ReactNode } from 'react';
 import type { z } from 'zod';
 import { Button } from '../../components/button.tsx';
-import { CellGrid } from '../../components/cell.tsx';
+import { CellGrid, ReadCell } from '../../components/cell.tsx';
 import { ErrorNotice } from '../../components/notice.tsx';
 import type { secondStepOfferSchema } from '../../contract/account.ts';
 import { emptyProof, proofProblems, type ProofProblems } from '../../lib/proof-problems.ts';
@@ -48,9 +48,13 @@ export function SetUpForm({ offer, onCancel, onDone }: SetUpFormProps) {
               Any app that shows six digits every half minute will do. Without a camera type this secret into
               it:
             </p>
-            <p className="mt-8 border border-rule-strong bg-raise px-9 py-6 text-value font-medium text-balance break-words select-all">
-              {offer.secret.replace(/(.{4})(?=.)/g, '$1 ')}
-            </p>
+            <CellGrid className="mt-8">
+              <ReadCell label="Secret">
+                <span className="block text-balance select-all">
+                  {offer.secret.replace(/(.{4})(?=.)/g, '$1 ')}
+                </span>
+              </ReadCell>
+            </CellGrid>
           </div>
         </div>
       </Step>
