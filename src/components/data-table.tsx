@@ -2,6 +2,7 @@ import { useMemo, useRef, useState, type ReactNode } from 'react';
 import { classNames } from '../lib/class-names.ts';
 import { Icon } from './icon.tsx';
 import { rowsSorted, widestCells, type Column, type Sorting } from './table-view.ts';
+import { useCutEdge } from './use-cut-edge.ts';
 import { useRowWindow } from './use-row-window.ts';
 
 export type { Column, Sorting } from './table-view.ts';
@@ -51,63 +52,84 @@ export function DataTable<Row>({
   const box = useRef<HTMLDivElement>(null);
   const isLong = shown.length > windowFrom;
   const { from, to, abovePx, belowPx } = useRowWindow(box, shown.length, isLong);
+  const cutPx = useCutEdge(box);
   const widest = useMemo(() => (isLong ? widestCells(columns, shown) : []), [isLong, columns, shown]);
   return (
-    <div
-      ref={box}
-      className={classNames(
-        // Placed, so that what is said to screen readers alone stays in it and doesn't widen the page.
-        'relative overflow-auto border border-rule-strong bg-field',
-        className ?? (isLong && 'max-h-[70dvh]'),
-      )}
-    >
-      <table
-        aria-rowcount={isLong ? shown.length + 1 : undefined}
-        className={classNames('w-full border-collapse text-base', isLong && 'whitespace-nowrap')}
+    <div className="relative flex min-h-0 min-w-0 flex-col">
+      <div
+        ref={box}
+        className={classNames(
+          // Placed, so that what is said to screen readers alone stays in it and doesn't widen the page.
+          'relative overflow-auto border border-rule-strong bg-field',
+          className ?? (isLong && 'max-h-[70dvh]'),
+        )}
       >
-        <caption className="sr-only">{caption}</caption>
-        <thead className="sticky top-0 z-1">
-          <tr className="bg-strip text-strip-ink">
-            {columns.map((column) => (
-              <HeadCell
-                key={column.key}
-                column={column}
-                sorting={sorting?.key === column.key ? sorting : undefined}
-                onSort={(descending) => (sorted?.onChange ?? setOwnSorting)({ key: column.key, descending })}
-              />
-            ))}
-          </tr>
-        </thead>
-        <tbody>
-          {isLong && (
-            // Takes no room itself, but keeps the columns as wide as their longest value while rows come and go.
-            <tr aria-hidden="true" className="collapse">
-              {widest.map(([column, row]) => (
-                <td key={column.key} className="px-10">
-                  {column.cell(row)}
-                </td>
+        <table
+          aria-rowcount={isLong ? shown.length + 1 : undefined}
+          className={classNames('w-full border-collapse text-base', isLong && 'whitespace-nowrap')}
+        >
+          <caption className="sr-only">{caption}</caption>
+          <thead className="sticky top-0 z-1">
+            <tr className="bg-strip text-strip-ink">
+              {columns.map((column) => (
+                <HeadCell
+                  key={column.key}
+                  column={column}
+                  sorting={sorting?.key === column.key ? sorting : undefined}
+                  onSort={(descending) =>
+                    (sorted?.onChange ?? setOwnSorting)({ key: column.key, descending })
+                  }
+                />
               ))}
             </tr>
-          )}
-          {abovePx > 0 && <Spacer heightPx={abovePx} columns={columns.length} />}
-          {shown.slice(from, to).map((row, at) => {
-            const key = rowKey(row);
-            return (
-              <BodyRow
-                key={key}
-                row={row}
-                columns={columns}
-                selected={key === selectedKey}
-                onSelect={onSelect}
-                // The head is the first.
-                number={isLong ? from + at + 2 : undefined}
-              />
-            );
-          })}
-          {belowPx > 0 && <Spacer heightPx={belowPx} columns={columns.length} />}
-        </tbody>
-      </table>
-      {rows.length === 0 && empty}
+          </thead>
+          <tbody>
+            {isLong && (
+              // Takes no room itself, but keeps the columns as wide as their longest value while rows come and go.
+              <tr aria-hidden="true" className="collapse">
+                {widest.map(([column, row]) => (
+                  <td key={column.key} className="px-10">
+                    {column.cell(row)}
+                  </td>
+                ))}
+              </tr>
+            )}
+            {abovePx > 0 && <Spacer heightPx={abovePx} columns={columns.length} />}
+            {shown.slice(from, to).map((row, at) => {
+              const key = rowKey(row);
+              return (
+                <BodyRow
+                  key={key}
+                  row={row}
+                  columns={columns}
+                  selected={key === selectedKey}
+                  onSelect={onSelect}
+                  // The head is the first.
+                  number={isLong ? from + at + 2 : undefined}
+                />
+              );
+            })}
+            {belowPx > 0 && <Spacer heightPx={belowPx} columns={columns.length} />}
+          </tbody>
+        </table>
+        {rows.length === 0 && empty}
+      </div>
+      {cutPx !== undefined && (
+        // For the eye and the pointer: the keys bring what they come to into sight by themselves.
+        <button
+          type="button"
+          tabIndex={-1}
+          aria-hidden="true"
+          title="Further columns"
+          className="absolute inset-y-0 z-2 flex w-16 flex-col items-center border-l-1.5 border-ink bg-raise text-ink"
+          style={{ right: cutPx }}
+          onClick={() => box.current?.scrollBy({ left: box.current.clientWidth / 2 })}
+        >
+          <span className="flex h-30 w-full items-center justify-center bg-strip text-strip-ink">
+            <Icon name="chevron-right" size={13} />
+          </span>
+        </button>
+      )}
     </div>
   );
 }

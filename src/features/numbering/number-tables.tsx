@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react';
 import { InlineField } from '../../canvas/inspector/inline-field.tsx';
-import { textList, wholeNumber } from '../../lib/written-value.ts';
+import { segmentColumn, siteColumns } from '../../canvas/inspector/segment-columns.tsx';
+import { wholeNumber } from '../../lib/written-value.ts';
 import { EmptyState } from '../../components/empty-state.tsx';
 import { SegmentSwatch } from '../../components/segment-swatch.tsx';
 import type { Column } from '../../components/table-view.ts';
@@ -185,48 +186,8 @@ export function LoopbackTable({ rows, selectedId, onSelect, beside }: TableProps
 }
 
 const vlanColumns: readonly Column<VlanRow>[] = [
-  {
-    key: 'segment',
-    head: 'Segment',
-    cell: (row) => (
-      <span className="flex items-center gap-10">
-        <SegmentSwatch letter={row.letter} />
-        {row.segmentName}
-      </span>
-    ),
-    sortBy: (row) => row.letter,
-    text: (row) => `${row.letter} ${row.segmentName}`,
-  },
-  { key: 'site', head: 'Site', cell: (row) => row.siteName, sortBy: (row) => row.siteName },
-  {
-    key: 'vlan',
-    head: 'VLAN',
-    align: 'right',
-    widthPx: 110,
-    cell: (row) => (
-      <InlineField
-        label={`VLAN of ${row.segmentName} at ${row.siteName}`}
-        path={['segments', row.segment, 'sites', row.site, 'vlan']}
-        writing={number}
-        alignRight
-      />
-    ),
-    sortBy: (row) => row.vlan,
-  },
-  {
-    key: 'subnets',
-    head: 'Subnets',
-    widthPx: 240,
-    cell: (row) => (
-      <InlineField
-        label={`Subnets of ${row.segmentName} at ${row.siteName}`}
-        path={['segments', row.segment, 'sites', row.site, 'subnets']}
-        writing={textList}
-      />
-    ),
-    sortBy: (row) => row.subnets[0],
-    text: (row) => row.subnets.join(' '),
-  },
+  segmentColumn(),
+  ...siteColumns<VlanRow>(),
   standingColumn(),
   heldColumn(),
 ];

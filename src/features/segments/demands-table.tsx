@@ -1,16 +1,28 @@
 import { milliseconds } from '../../lib/duration-text.ts';
 import { InlineField } from '../../canvas/inspector/inline-field.tsx';
+import { segmentColumn } from '../../canvas/inspector/segment-columns.tsx';
 import { rate } from '../../lib/rate-text.ts';
 import { wholeNumber } from '../../lib/written-value.ts';
 import { Button } from '../../components/button.tsx';
 import { EmptyState } from '../../components/empty-state.tsx';
-import { SegmentSwatch } from '../../components/segment-swatch.tsx';
 import type { Column } from '../../components/table-view.ts';
 import { useTableView } from '../../components/use-table-view.ts';
 import { WorkTable } from '../../components/work-table.tsx';
 import type { DemandRow } from './demand-rows.ts';
 
 const count = wholeNumber();
+
+const rateColumn = (way: 'forwardBps' | 'reverseBps', head: string): Column<DemandRow> => ({
+  key: way === 'forwardBps' ? 'forward' : 'reverse',
+  head,
+  align: 'right',
+  widthPx: 120,
+  cell: (row) => (
+    <InlineField label={`${head} of ${row.name}`} path={['demands', row.id, way]} writing={rate} alignRight />
+  ),
+  sortBy: (row) => row[way],
+  text: (row) => String(row[way] ?? ''),
+});
 
 const columns: readonly Column<DemandRow>[] = [
   {
@@ -20,52 +32,11 @@ const columns: readonly Column<DemandRow>[] = [
     sortBy: (row) => row.name,
     text: (row) => row.name,
   },
-  {
-    key: 'segment',
-    head: 'Segment',
-    cell: (row) => (
-      <span className="flex items-center gap-10">
-        <SegmentSwatch letter={row.letter} />
-        {row.segmentName}
-      </span>
-    ),
-    sortBy: (row) => row.letter,
-    text: (row) => `${row.letter} ${row.segmentName}`,
-  },
+  segmentColumn(),
   { key: 'from', head: 'From', cell: (row) => row.from, sortBy: (row) => row.from, text: (row) => row.from },
   { key: 'to', head: 'To', cell: (row) => row.to, sortBy: (row) => row.to, text: (row) => row.to },
-  {
-    key: 'forward',
-    head: 'Rate there',
-    align: 'right',
-    widthPx: 120,
-    cell: (row) => (
-      <InlineField
-        label={`Rate there of ${row.name}`}
-        path={['demands', row.id, 'forwardBps']}
-        writing={rate}
-        alignRight
-      />
-    ),
-    sortBy: (row) => row.forwardBps,
-    text: (row) => String(row.forwardBps ?? ''),
-  },
-  {
-    key: 'reverse',
-    head: 'Rate back',
-    align: 'right',
-    widthPx: 120,
-    cell: (row) => (
-      <InlineField
-        label={`Rate back of ${row.name}`}
-        path={['demands', row.id, 'reverseBps']}
-        writing={rate}
-        alignRight
-      />
-    ),
-    sortBy: (row) => row.reverseBps,
-    text: (row) => String(row.reverseBps ?? ''),
-  },
+  rateColumn('forwardBps', 'Rate there'),
+  rateColumn('reverseBps', 'Rate back'),
   {
     key: 'flows',
     head: 'Flows',

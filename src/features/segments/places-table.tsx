@@ -1,63 +1,12 @@
-import { InlineField } from '../../canvas/inspector/inline-field.tsx';
-import { textList, wholeNumber } from '../../lib/written-value.ts';
-import { SegmentSwatch } from '../../components/segment-swatch.tsx';
+import { segmentColumn, siteColumns } from '../../canvas/inspector/segment-columns.tsx';
 import type { Column } from '../../components/table-view.ts';
 import { useTableView } from '../../components/use-table-view.ts';
 import { WorkTable } from '../../components/work-table.tsx';
 import { landingWords, type PlaceRow } from './segment-rows.ts';
 
-const number = wholeNumber();
-
 const columns: readonly Column<PlaceRow>[] = [
-  {
-    key: 'segment',
-    head: 'Segment',
-    cell: (row) => (
-      <span className="flex items-center gap-10">
-        <SegmentSwatch letter={row.letter} />
-        {row.segmentName}
-      </span>
-    ),
-    sortBy: (row) => row.letter,
-    text: (row) => `${row.letter} ${row.segmentName}`,
-  },
-  {
-    key: 'site',
-    head: 'Site',
-    cell: (row) => row.siteName,
-    sortBy: (row) => row.siteName,
-    text: (row) => row.siteName,
-  },
-  {
-    key: 'vlan',
-    head: 'VLAN',
-    align: 'right',
-    widthPx: 96,
-    cell: (row) => (
-      <InlineField
-        label={`VLAN of ${row.segmentName} at ${row.siteName}`}
-        path={['segments', row.segment, 'sites', row.site, 'vlan']}
-        writing={number}
-        alignRight
-      />
-    ),
-    sortBy: (row) => row.vlan,
-    text: (row) => String(row.vlan ?? ''),
-  },
-  {
-    key: 'subnets',
-    head: 'Subnets',
-    widthPx: 260,
-    cell: (row) => (
-      <InlineField
-        label={`Subnets of ${row.segmentName} at ${row.siteName}`}
-        path={['segments', row.segment, 'sites', row.site, 'subnets']}
-        writing={textList}
-      />
-    ),
-    sortBy: (row) => row.subnets[0],
-    text: (row) => row.subnets.join(' '),
-  },
+  segmentColumn(),
+  ...siteColumns<PlaceRow>(),
   {
     key: 'hosts',
     head: 'Hosts',
