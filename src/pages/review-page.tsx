@@ -1,18 +1,22 @@
+import { useQuery } from '@tanstack/react-query';
 import { useNavigate } from 'react-router-dom';
 import { GeometryProvider } from '../canvas/geometry-context.tsx';
 import { CommentsDesk } from '../features/review/comments-desk.tsx';
 import { ReviewSide } from '../features/review/review-side.tsx';
 import { useCommenting } from '../features/review/use-commenting.tsx';
+import { ReleaseFacts } from '../features/revisions/release-facts.tsx';
 import { usePageTitle } from '../lib/page-title.ts';
 import { useSearchValues } from '../lib/use-search-values.ts';
 import { designPath } from '../lib/workspace-path.ts';
 import { useDesignPlace } from '../workspace/design-place.tsx';
+import { openDesignQuery } from '../workspace/open-design-query.ts';
 import { useOpenState } from '../workspace/open-design-context.tsx';
 
 /** /designs/:designId/review?threads=…&whose=…&on=…&thread=…: what people say about the design, and what is decided. */
 export function ReviewPage() {
   const { designId } = useDesignPlace();
   const navigate = useNavigate();
+  const answer = useQuery(openDesignQuery(designId));
   const { change } = useSearchValues();
   const { ask, dialog } = useCommenting((thread) => change({ thread }));
   usePageTitle(`Review of ${useOpenState((state) => state.document.meta.title)}`);
@@ -36,7 +40,9 @@ export function ReviewPage() {
           </GeometryProvider>
         </section>
         <section aria-label="State of the review">
-          <ReviewSide />
+          <ReviewSide>
+            {answer.data !== undefined && <ReleaseFacts summary={answer.data.summary} />}
+          </ReviewSide>
         </section>
       </div>
       {dialog}
