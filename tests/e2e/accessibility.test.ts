@@ -54,6 +54,14 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
       await page.getByText('Nothing is computed until this is mended.').waitFor();
     },
   ],
+  [
+    'the HTTP API',
+    async (page) => {
+      await signInAs(page, 'architect');
+      await page.goto('/http-api#postDesignsByDesignIdPatches');
+      await page.getByText('Answers these roles').first().waitFor();
+    },
+  ],
   ['engagements', (page) => signInAs(page, 'architect')],
   [
     'a new design',
@@ -166,6 +174,40 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
       await signInAs(page, 'owner');
       await page.getByRole('link', { name: 'Equipment' }).click();
       await page.getByRole('heading', { name: 'Pair of small gateways' }).waitFor();
+    },
+  ],
+  [
+    'the people of a workspace',
+    async (page) => {
+      await signInAs(page, 'owner');
+      await page.getByRole('link', { name: 'People' }).click();
+      await page.getByRole('table', { name: 'People' }).waitFor();
+    },
+  ],
+  [
+    'the settings of a workspace',
+    async (page) => {
+      await signInAs(page, 'owner');
+      await page.getByRole('link', { name: 'Settings' }).click();
+      await page.getByLabel('Name of the workspace').waitFor();
+    },
+  ],
+  [
+    'an API token being made',
+    async (page) => {
+      await signInAs(page, 'reviewer');
+      await page.goto('/account/tokens');
+      await page.getByRole('button', { name: 'New token' }).click();
+      await page.getByRole('button', { name: 'Make the token' }).click();
+      await page.getByText(/^Name is empty/).waitFor();
+    },
+  ],
+  [
+    'the sessions of an account',
+    async (page) => {
+      await signInAs(page, 'reviewer');
+      await page.goto('/account/sessions');
+      await page.getByRole('table', { name: 'Your sessions' }).waitFor();
     },
   ],
   [
