@@ -139,6 +139,13 @@ export const routes: RouteObject[] = [
                 }),
               },
               {
+                path: 'http-api',
+                ErrorBoundary: PageError,
+                lazy: async () => ({
+                  Component: (await import('../pages/api-reference-page.tsx')).ApiReferencePage,
+                }),
+              },
+              {
                 path: 'workspaces/:workspaceId/mailbox',
                 ErrorBoundary: PageError,
                 lazy: async () => ({ Component: (await import('../pages/mailbox-page.tsx')).MailboxPage }),

@@ -39,6 +39,7 @@ export function AccountMenu() {
     {
       actions: [
         { label: 'Reference of checks', onSelect: () => void navigate('/checks') },
+        { label: 'HTTP API', onSelect: () => void navigate('/http-api') },
         { label: 'Account', onSelect: () => void navigate('/account/password') },
         ...(membership !== undefined && may(membership, 'people.manage')
           ? [{ label: 'Mailbox', onSelect: () => void navigate(mailboxPath(membership.workspaceId)) }]
