@@ -86,9 +86,9 @@ export function InviteDialog({ workspaceId, onClose }: InviteDialogProps) {
           value={role}
           options={roles.map((each) => ({ value: each, label: roleWords[each] }))}
           onChange={setRole}
-          hint={mayDo[role]}
         />
       </CellGrid>
+      <p className="mt-8 text-base text-ink-2">{mayDo[role]}</p>
       {refusal !== null && !isOfEmail && <ErrorNotice className="mt-14">{refusal.message}</ErrorNotice>}
     </Dialog>
   );

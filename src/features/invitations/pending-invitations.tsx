@@ -43,8 +43,8 @@ export function PendingInvitations({ workspaceId }: { readonly workspaceId: stri
       head: 'Invited',
       cell: ({ email, invitedBy, invitedAt }) => (
         <>
-          <span className="font-medium break-all">{email}</span>
-          <span className="block text-note text-ink-3">
+          <span className="font-medium whitespace-nowrap">{email}</span>
+          <span className="block text-note whitespace-nowrap text-ink-3">
             {relativeTime(new Date(invitedAt), now)}
             {invitedBy !== null && ` by ${invitedBy}`}
           </span>

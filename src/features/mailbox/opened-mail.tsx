@@ -30,11 +30,10 @@ export function OpenedMail({ workspaceId, mail, look, onLook }: OpenedMailProps)
         </ReadCell>
         <ReadCell label="To">{mail.to}</ReadCell>
         <ReadCell label="From">{data?.from ?? '…'}</ReadCell>
-        <ReadCell label="Kept">{dateAndTime(new Date(mail.keptAt))}</ReadCell>
-        <PlainCell className="justify-center">
+        <PlainCell span={2} className="flex-row! flex-wrap items-center justify-between gap-8 py-8!">
+          <span className="text-base text-ink-2">kept {dateAndTime(new Date(mail.keptAt))}</span>
           <SegmentedChoice
             small
-            stretch
             label="Shown as"
             value={look}
             options={mailLooks.map((value) => ({ value, label: lookWords[value] }))}

@@ -20,7 +20,7 @@ export function FrontSheet({ beside, children }: FrontSheetProps) {
       <SheetFrame>
         <CordInTheGround
           view="whole"
-          className="mx-auto block max-h-[max(320px,calc(100dvh-480px))] w-full overflow-visible max-lg:hidden"
+          className="mx-auto block max-h-[max(280px,calc(100dvh-540px))] w-full overflow-visible max-lg:hidden"
         />
         <div className="mt-auto flex items-end justify-between gap-28 pt-16 max-lg:mt-0 max-lg:flex-col max-lg:items-stretch max-lg:gap-0 max-lg:pt-0">
           <div className="max-w-440 px-28 pb-28 text-base text-ink-2 max-lg:order-2 max-lg:p-14">

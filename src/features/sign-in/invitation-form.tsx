@@ -39,6 +39,12 @@ export function InvitationForm({ token, offered, reader, onJoined }: InvitationF
   const read = newcomerSchema.safeParse({ name, password });
   const problemOf = (field: 'name' | 'password'): string | undefined =>
     read.error?.issues.find(({ path }) => path[0] === field)?.message;
+  const nameProblem =
+    name.trim() === ''
+      ? 'Your name is empty. Type it as your colleagues know it.'
+      : problemOf('name') && `Name ${name}: ${problemOf('name')}.`;
+  const passwordProblem =
+    problemOf('password') && `The password has ${password.length} characters: ${problemOf('password')}.`;
   const submit = (): void => {
     setTried(true);
     const onSuccess = ({ workspaceId }: { readonly workspaceId: string }) => onJoined(workspaceId);
@@ -97,19 +103,13 @@ export function InvitationForm({ token, offered, reader, onJoined }: InvitationF
             className={blockCell}
             value={name}
             onChange={(event) => setName(event.target.value)}
-            error={
-              tried && problemOf('name') !== undefined ? `Name ${name}: ${problemOf('name')}.` : undefined
-            }
+            error={tried ? nameProblem : undefined}
           />
           <PasswordCell
             label="Password, at least 12 characters"
             value={password}
             onChange={setPassword}
-            error={
-              tried && problemOf('password') !== undefined
-                ? `The password has ${password.length} characters: ${problemOf('password')}.`
-                : undefined
-            }
+            error={tried ? passwordProblem : undefined}
           />
         </>
       )}
