@@ -68,7 +68,7 @@ function Entry({ entry, origin }: { readonly entry: ApiEntry; readonly origin: s
             {mediaType ?? 'nothing else'}
           </p>
         )}
-        <pre className="overflow-x-auto border border-rule-2 bg-panel px-12 py-8 text-note" tabIndex={0}>
+        <pre className="border border-rule-2 bg-panel px-12 py-8 text-note break-all whitespace-pre-wrap">
           <code>{curlOf(entry, origin)}</code>
         </pre>
       </div>
