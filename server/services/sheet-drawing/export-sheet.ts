@@ -84,15 +84,6 @@ async function draw(
   return { file, name: fileNameOf(document, format) };
 }
 
-function refuseUnknownSheet(document: Design, asked: number | undefined): void {
-  const of = sheetCount(document);
-  if (asked === undefined || asked <= of) return;
-  const expected = of === 1 ? 'expected 1: the design has one sheet' : `expected a number from 1 to ${of}`;
-  throw new Refusal('invalid-request', `'sheet' is ${asked}: ${expected}.`, {
-    details: [{ path: 'sheet', value: String(asked), expected }],
-  });
-}
-
 function refuseUnknownSegments({ segments }: Design, asked: readonly string[] = []): void {
   const unknown = asked.find((id) => !Object.hasOwn(segments, id));
   if (unknown === undefined) return;
