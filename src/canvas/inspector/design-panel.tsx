@@ -1,4 +1,5 @@
 import { CellGrid, ReadCell } from '../../components/cell.tsx';
+import { sheetCount } from '../../drawing/sheets/sheet-numbers.ts';
 import { collections, type Collection } from '../../engine/model/design.ts';
 import { sheetSizes } from '../../engine/model/layout.ts';
 import { useNumbering } from '../../workspace/checks-context.tsx';
@@ -63,6 +64,13 @@ export function DesignPanel() {
             emptyWord="as needed"
             choices={sheetSizes.map((size) => ({ value: size, label: size }))}
           />
+          <SelectField
+            label="Largest sheet"
+            path={['layout', 'largestSheet']}
+            emptyWord="A0"
+            choices={sheetSizes.filter((size) => size !== 'A0').map((size) => ({ value: size, label: size }))}
+          />
+          <ReadCell label="Sheets">{sheetCount(design)}</ReadCell>
           <FlagField
             label="Example"
             path={at('example')}
@@ -70,6 +78,12 @@ export function DesignPanel() {
             span={2}
           />
         </CellGrid>
+        {editable && (
+          <p className="mt-6 text-note text-ink-2">
+            Tidy takes the smallest sheet that holds everything. What the largest one you allow doesn’t hold
+            goes on to further sheets.
+          </p>
+        )}
       </Section>
       <Section
         title={`Segments (${segments.length})`}
