@@ -1,4 +1,4 @@
-import type { ReactNode } from 'react';
+import { useEffect, useRef, type ReactNode } from 'react';
 import { NavLink } from 'react-router-dom';
 import { classNames } from '../../lib/class-names.ts';
 import { MainBar } from './main-bar.tsx';
@@ -24,11 +24,17 @@ interface AccountFrameProps {
 
 /** Around every page of the reader's account: the way to the others, and what this one is for. */
 export function AccountFrame({ title, intro, wide = false, children }: AccountFrameProps) {
+  const nav = useRef<HTMLElement>(null);
+  // On a phone the places stand in a row that is wider than the screen.
+  useEffect(() => {
+    nav.current?.querySelector('[aria-current]')?.scrollIntoView({ block: 'nearest', inline: 'nearest' });
+  }, []);
   return (
     <>
       <MainBar />
       <div className="flex min-h-0 flex-1 max-md:flex-col max-md:overflow-y-auto">
         <nav
+          ref={nav}
           aria-label="Account"
           className="w-190 shrink-0 border-r border-rule-2 py-24 max-md:w-auto max-md:border-r-0 max-md:border-b max-md:py-0"
         >

@@ -60,7 +60,7 @@ export function FirstOwnerForm() {
         label="Your name"
         autoComplete="name"
         className={blockCell}
-        error={errors.name && `Name ${getValues('name')}: ${errors.name.message}.`}
+        error={problemOf('Name', getValues('name'), errors.name?.message)}
         {...register('name')}
       />
       <InputCell
@@ -68,7 +68,7 @@ export function FirstOwnerForm() {
         type="email"
         autoComplete="username"
         className={blockCell}
-        error={errors.email && `E-mail ${getValues('email')}: ${errors.email.message}.`}
+        error={problemOf('E-mail', getValues('email'), errors.email?.message)}
         {...register('email')}
       />
       <InputCell
@@ -78,7 +78,9 @@ export function FirstOwnerForm() {
         className={blockCell}
         error={
           errors.password &&
-          `The password has ${getValues('password').length} characters: ${errors.password.message}.`
+          (getValues('password') === ''
+            ? 'The password is empty: expected at least 12 characters.'
+            : `The password has ${getValues('password').length} characters: ${errors.password.message}.`)
         }
         {...register('password')}
       />
@@ -87,11 +89,15 @@ export function FirstOwnerForm() {
         autoComplete="organization"
         placeholder="Ternwick Net"
         className={blockCell}
-        error={
-          errors.workspaceName && `Workspace ${getValues('workspaceName')}: ${errors.workspaceName.message}.`
-        }
+        error={problemOf('Workspace', getValues('workspaceName'), errors.workspaceName?.message)}
         {...register('workspaceName')}
       />
     </FormBlock>
   );
+}
+
+/** Field, value and way out. */
+function problemOf(label: string, value: string, expected: string | undefined): string | undefined {
+  if (expected === undefined) return undefined;
+  return value.trim() === '' ? `${label} is empty: ${expected}.` : `${label} ${value.trim()}: ${expected}.`;
 }
