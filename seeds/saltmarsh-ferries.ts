@@ -1,3 +1,4 @@
+import type { Role } from '#contract/session.ts';
 import { hashPassword } from '../server/auth/passwords.ts';
 import type { Database } from '../server/db/open-database.ts';
 import { insertDemoPerson } from '../server/repositories/demo-people.ts';
@@ -13,8 +14,16 @@ import { demoDesign, largerDemoDesigns, smallerDemoDesigns } from './demo-design
 import { demoPeople } from './demo-people.ts';
 import { demoPools } from './demo-pools.ts';
 import { demoProfiles, withMeasuredGateways } from './demo-profiles.ts';
+import type { Reviewed } from './demo-revisions.ts';
+import { insertReviewedDesign } from './demo-revisions.ts';
 
 const oneMinuteMs = 60_000;
+
+/** Those of the demo that have been through a review, by title. */
+const reviewedDesigns: { readonly [title: string]: Reviewed } = {
+  'Skerry standby controller': 'approved-and-changed',
+  'Ring terminals, ticketing': 'in-review',
+};
 
 /** Fills a database with the demo, all or nothing, once. */
 export async function seedSaltmarsh({ knex }: Pick<Database, 'knex'>): Promise<void> {
@@ -31,6 +40,10 @@ export async function seedSaltmarsh({ knex }: Pick<Database, 'knex'>): Promise<v
       await insertDemoPerson(trx, id, workspaceId);
       ids.set(role, id);
     }
+    const actorOf = (role: Role) => ({
+      id: ids.get(role)!,
+      name: demoPeople.find((person) => person.role === role)!.name,
+    });
     const now = Date.now();
     const engagement = await insertEngagement(
       trx,
@@ -53,6 +66,16 @@ export async function seedSaltmarsh({ knex }: Pick<Database, 'knex'>): Promise<v
       // The list shows the last changed first.
       const at = new Date(now - index * oneMinuteMs);
       const changedBy = ids.get('architect')!;
+      const reviewed = reviewedDesigns[document.meta.title];
+      if (reviewed !== undefined) {
+        await insertReviewedDesign(trx, document, reviewed, {
+          engagementId: engagement.id,
+          architect: actorOf('architect'),
+          reviewer: actorOf('reviewer'),
+          at,
+        });
+        continue;
+      }
       const id = await insertDesign(trx, engagement.id, summarise(document), changedBy, at);
       await insertSnapshot(trx, id, { sequence: 0, document });
     }

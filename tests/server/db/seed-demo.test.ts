@@ -2,7 +2,9 @@ import { afterAll, beforeAll, expect, test } from 'vitest';
 import { engagementListSchema, openDesignSchema } from '#contract/designs.ts';
 import { workspacePoolsSchema } from '#contract/numbering.ts';
 import { profileListSchema } from '#contract/profiles.ts';
+import { frozenRevisionSchema } from '#contract/revisions.ts';
 import { sessionSchema } from '#contract/session.ts';
+import { compareDesigns } from '#engine/diff/compare-designs.ts';
 import { runRules } from '#engine/rules/run-rules.ts';
 import type { Design } from '#engine/model/design.ts';
 import { demoSignIns, seedDemo } from '../../../server/db/seed-demo.ts';
@@ -78,4 +80,28 @@ test('the demo’s team has pools, and profiles that designs hold current copies
     (await owner.get(`/api/workspaces/${workspaceId}/pools`).expect(200)).body,
   );
   expect(pools.pools.vnis).toMatchObject([{ from: 10_100, to: 10_999 }]);
+});
+
+test('one design of the demo is in review, and one has an approved revision and a later draft', async () => {
+  const reviewer = await signIn(application, demoSignIns[2]!, demoSignIns[2]!.password);
+  const session = sessionSchema.parse((await reviewer.get('/api/session')).body);
+  const { workspaceId } = session.memberships[0]!;
+  const list = await reviewer.get(`/api/workspaces/${workspaceId}/engagements`).expect(200);
+  const designs = engagementListSchema.parse(list.body).engagements[0]!.designs;
+  const inReview = designs.filter(({ state }) => state === 'in-review');
+  const issued = designs.filter((design) => design.issued !== null);
+  expect(inReview.map(({ title, revision }) => [title, revision])).toEqual([
+    ['Ring terminals, ticketing', 'A'],
+  ]);
+  expect(issued.map(({ title, state, revision, issued: of }) => [title, state, revision, of?.label])).toEqual(
+    [['Skerry standby controller', 'draft', 'B', 'A']],
+  );
+  const revision = frozenRevisionSchema.parse(
+    (await reviewer.get(`/api/revisions/${issued[0]!.issued!.id}`).expect(200)).body,
+  );
+  expect(runRules(revision.document as Design).filter(({ severity }) => severity === 'blocking')).toEqual([]);
+  const opened = openDesignSchema.parse((await reviewer.get(`/api/designs/${issued[0]!.id}`)).body);
+  expect(
+    compareDesigns(revision.document as Design, opened.document as Design).changes.length,
+  ).toBeGreaterThan(3);
 });
