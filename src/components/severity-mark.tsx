@@ -106,7 +106,10 @@ export function SeverityCounts({ counts, worded = false, clear = 'clear' }: Seve
           <SeverityShape severity={severity} size={worded ? 14 : 13} />
           <span>
             {counts[severity]}
-            <span className={worded ? 'max-sm:sr-only' : 'sr-only'}> {severity}</span>
+            <span className={worded ? 'max-sm:sr-only @max-[66rem]/tabs:sr-only' : 'sr-only'}>
+              {' '}
+              {severity}
+            </span>
           </span>
         </span>
       ))}

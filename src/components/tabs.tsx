@@ -25,7 +25,7 @@ interface TabsProps {
 export function Tabs({ label, tabs, value, onChange, trailing, children, className }: TabsProps) {
   return (
     <Primitive.Root value={value} onValueChange={onChange} className={className}>
-      <div className="flex h-35 shrink-0 items-stretch border-b border-rule-2 bg-panel">
+      <div className="@container/tabs flex h-35 shrink-0 items-stretch border-b border-rule-2 bg-panel">
         <Primitive.List aria-label={label} className="flex min-w-0 items-stretch overflow-x-auto">
           {tabs.map((tab) => (
             <Primitive.Trigger

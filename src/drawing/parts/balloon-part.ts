@@ -12,6 +12,7 @@ import type { DrawingFacts } from './drawing-facts.ts';
 import { ghostBoxes } from './ghost-part.ts';
 import type { Look } from './look.ts';
 import { overhangAnchors, overhangCallouts } from './overhang-part.ts';
+import { siteNameBoxes } from './site-part.ts';
 
 type Balloon = Decorations['balloons'][number];
 
@@ -112,6 +113,7 @@ export const placedBalloons = (
       marks: [
         ...[...cutBoxes(geometry, look), ...ghostBoxes(geometry, look)].map((box) => ({ box })),
         ...overhangCallouts(geometry, look),
+        ...siteNameBoxes(geometry, facts, look),
       ],
       scale: balloonScale[look.level],
     },

@@ -1,5 +1,5 @@
 import { elementKey } from '../decorations.ts';
-import type { SiteGeometry } from '../geometry.ts';
+import type { Rect, SheetGeometry, SiteGeometry } from '../geometry.ts';
 import type { Shape } from '../shape.ts';
 import { group, shape } from '../shape.ts';
 import { fitText } from '../text-width.ts';
@@ -65,19 +65,33 @@ const lid = (
   ];
 };
 
+const fittedName = ({ id, rect }: SiteGeometry, facts: DrawingFacts, { level }: Look) =>
+  fitText(facts.sites[id] ?? '', {
+    maxWidthPx: Math.max(60, rect.width - size.nameAt - 24),
+    sizePx: nameSizes[level],
+    minSizePx: leastNameSizes[level],
+    weight: 600,
+  });
+
+/** Where the sites' names stand at a level of detail: what is set beside elements keeps off them. */
+export const siteNameBoxes = (
+  geometry: SheetGeometry,
+  facts: DrawingFacts,
+  look: Look,
+): readonly { readonly box: Rect }[] =>
+  geometry.sites.map((site) => {
+    const { widthPx, sizePx } = fittedName(site, facts, look);
+    const { x, y } = site.rect;
+    return { box: { x: x + size.nameAt, y: y - sizePx * 0.6, width: widthPx, height: sizePx * 1.2 } };
+  });
+
 /** A site: a chain line that its name interrupts at the top; a collapsed one a plate with a lid. */
 export const sitePart = (site: SiteGeometry, facts: DrawingFacts, look: Look): Shape => {
   const ref = { collection: 'sites', id: site.id } as const;
   const tones = tonesOf(look, ref);
   const { x, y, width, height } = site.rect;
   const name = facts.sites[site.id] ?? '';
-  const sizePx = nameSizes[look.level];
-  const fitted = fitText(name, {
-    maxWidthPx: Math.max(60, width - size.nameAt - 24),
-    sizePx,
-    minSizePx: leastNameSizes[look.level],
-    weight: 600,
-  });
+  const fitted = fittedName(site, facts, look);
   const nameWidth = fitted.widthPx;
   const far = look.level === 'far';
   const gapFrom = x + size.nameAt - aroundName;

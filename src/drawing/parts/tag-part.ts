@@ -11,6 +11,7 @@ import { cutBoxes } from './cuts.ts';
 import type { DrawingFacts } from './drawing-facts.ts';
 import type { Look } from './look.ts';
 import { centredLine } from './text-shape.ts';
+import { siteNameBoxes } from './site-part.ts';
 
 type Tag = NonNullable<Look['decorations']['tags']>[number];
 
@@ -147,10 +148,10 @@ export const tagParts = (geometry: SheetGeometry, facts: DrawingFacts, look: Loo
   const tags = look.decorations.tags ?? [];
   if (tags.length === 0) return [];
   const scale = balloonScale[look.level];
-  let crowd = crowdOf(
-    geometry,
-    cutBoxes(geometry, look).map((box) => ({ box })),
-  );
+  let crowd = crowdOf(geometry, [
+    ...cutBoxes(geometry, look).map((box) => ({ box })),
+    ...siteNameBoxes(geometry, facts, look),
+  ]);
   const strongFirst = [...tags].sort((x, y) => Number(y.strong === true) - Number(x.strong === true));
   return strongFirst.flatMap((tag) => {
     const size = sizeOf(tag, scale);

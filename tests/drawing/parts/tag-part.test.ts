@@ -3,6 +3,8 @@ import { applyPatch } from '#engine/model/merge-patch.ts';
 import { noDecorations, type Decorations } from '#drawing/decorations.ts';
 import type { Rect } from '#drawing/geometry.ts';
 import { drawingFacts } from '#drawing/parts/drawing-facts.ts';
+import { placedBalloons } from '#drawing/parts/balloon-part.ts';
+import { siteNameBoxes } from '#drawing/parts/site-part.ts';
 import { tagParts } from '#drawing/parts/tag-part.ts';
 import { route } from '#drawing/routing/route.ts';
 import type { Shape } from '#drawing/shape.ts';
@@ -27,6 +29,34 @@ const overlap = (a: Rect, b: Rect): boolean =>
   a.x < b.x + b.width && b.x < a.x + a.width && a.y < b.y + b.height && b.y < a.y + a.height;
 
 const landing = { collection: 'links', id: 'ld-ho-coast' } as const;
+
+it('neither a tag nor a balloon covers a site’s name, however large that is from afar', () => {
+  const look = {
+    level: 'far' as const,
+    decorations: {
+      ...noDecorations,
+      tags: [{ at: landing, text: '7 %', fillPerMillion: 70_000 }],
+      balloons: Object.keys(design.devices).map((id, i) => ({
+        number: i + 1,
+        severity: 'blocking' as const,
+        waived: false,
+        at: { collection: 'devices' as const, id },
+      })),
+    },
+  };
+  const names = siteNameBoxes(geometry, facts, look).map(({ box }) => box);
+  expect(names.map(({ height }) => height > 36)).toEqual(names.map(() => true));
+  const covered = [
+    ...tagParts(geometry, facts, look).map(plateOf),
+    ...placedBalloons(geometry, facts, look).map(({ centre: { x, y } }) => ({
+      x: x - 12,
+      y: y - 12,
+      width: 24,
+      height: 24,
+    })),
+  ].filter((box) => names.some((name) => overlap(name, box)));
+  expect(covered).toEqual([]);
+});
 
 describe('tags beside elements', () => {
   it('cover no device, no name of a transport and not one another', () => {
