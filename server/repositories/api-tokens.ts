@@ -52,6 +52,12 @@ export async function findTokenByHash(knex: Knex, hash: Buffer): Promise<ApiToke
   return row ?? null;
 }
 
+/** Whether a token works at this moment. */
+export async function isTokenStanding(knex: Knex, id: string, now: Date): Promise<boolean> {
+  const standing = knex('api_tokens').where({ id }).whereNull('revoked_at').where('expires_at', '>', now);
+  return (await standing.first('id')) !== undefined;
+}
+
 /** How many tokens of a person work at this moment. */
 export async function countWorkingTokens(knex: Knex, personId: string, now: Date): Promise<number> {
   const rows = await knex('api_tokens')

@@ -5,6 +5,7 @@ import { liveQuerySchema } from '#contract/queries.ts';
 import { requirePerson } from '../auth/sessions.ts';
 import type { LiveHub } from '../live/live-hub.ts';
 import { jsonBody } from '../middleware/json-body.ts';
+import { isTokenStanding } from '../repositories/api-tokens.ts';
 import { isSessionStanding } from '../repositories/sessions.ts';
 import type { Context } from '../services/context.ts';
 import { limits } from '../services/limits.ts';
@@ -51,12 +52,14 @@ export function liveRoutes(context: Context, hub: LiveHub): Router {
   return router;
 }
 
-/** Whoever came with a token has no session that could end. */
-async function isStillSignedIn(
-  { database, clock }: Context,
-  { sessionID }: Partial<Request>,
+/** Whether the session, or the token, that the request came with still counts. */
+function isStillSignedIn(
+  { database: { knex }, clock }: Context,
+  { sessionID, tokenLimits }: Request,
 ): Promise<boolean> {
-  return sessionID === undefined || isSessionStanding(database.knex, sessionID, clock());
+  return tokenLimits === undefined
+    ? isSessionStanding(knex, sessionID, clock())
+    : isTokenStanding(knex, tokenLimits.tokenId, clock());
 }
 
 /** The answer as server-sent events (HTML Standard, section 9.2); begun by the first of them. */

@@ -6,6 +6,7 @@ import type { Account } from '../repositories/people.ts';
 import { findAccount, findPasswordHash, setPassword } from '../repositories/people.ts';
 import { hasSecondStep } from '../repositories/second-steps.ts';
 import { deleteOtherSessions } from '../repositories/sessions.ts';
+import { announcePlacesOf } from './announce-places.ts';
 import type { Context } from './context.ts';
 
 /** The demo's person of a role; not found while the demo is off. */
@@ -57,6 +58,7 @@ export async function changePassword(
   return context.database.knex.transaction(async (trx) => {
     const credentialVersion = await setPassword(trx, account.id, nextHash);
     await deleteOtherSessions(trx, account.id, keptSessionId);
+    await announcePlacesOf(trx, account.id);
     return { ...account, credentialVersion };
   });
 }

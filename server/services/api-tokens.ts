@@ -15,6 +15,7 @@ import {
 } from '../repositories/api-tokens.ts';
 import type { Account } from '../repositories/people.ts';
 import { findAccount } from '../repositories/people.ts';
+import { announcePlacesOf } from './announce-places.ts';
 import { dayOf } from './check-facts.ts';
 import type { Context } from './context.ts';
 import { limits } from './limits.ts';
@@ -74,6 +75,7 @@ export async function endToken(
   id: string,
 ): Promise<ApiToken> {
   await revokeToken(knex, personId, id, clock());
+  await announcePlacesOf(knex, personId);
   const token = await findToken(knex, personId, id);
   if (token === null) throw notFound('token');
   return tokenOf(token);

@@ -28,6 +28,7 @@ import {
 } from '../repositories/second-steps.ts';
 import { deleteOtherSessions } from '../repositories/sessions.ts';
 import { requirePassword } from './accounts.ts';
+import { announcePlacesOf } from './announce-places.ts';
 import type { Context } from './context.ts';
 
 /** Whether the person's sign-in asks for a code, and who asks them to have it so. */
@@ -90,6 +91,7 @@ export async function confirmSecondStep(
     if (!(await setConfirmed(trx, id, clock()))) throw alreadyOn();
     const codes = await renewedCodes(trx, id);
     await deleteOtherSessions(trx, id, keptSessionId);
+    await announcePlacesOf(trx, id);
     return codes;
   });
 }

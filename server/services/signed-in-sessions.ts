@@ -3,6 +3,7 @@ import { idleSeconds } from '../auth/sessions.ts';
 import { notFound } from '../errors.ts';
 import type { SessionRow } from '../repositories/sessions.ts';
 import { deleteOtherSessions, deleteSession, listSessions } from '../repositories/sessions.ts';
+import { announcePlacesOf } from './announce-places.ts';
 import type { Context } from './context.ts';
 
 /** Where the person is signed in, the last used first. */
@@ -23,6 +24,7 @@ export async function endOneSession(
   sessionId: string,
 ): Promise<void> {
   if (!(await deleteSession(database.knex, personId, sessionId))) throw notFound('session');
+  await announcePlacesOf(database.knex, personId);
 }
 
 export async function endOtherSessions(
@@ -31,6 +33,7 @@ export async function endOtherSessions(
   thisSessionId: string,
 ): Promise<void> {
   await deleteOtherSessions(database.knex, personId, thisSessionId);
+  await announcePlacesOf(database.knex, personId);
 }
 
 function sessionOf({ id, sid, expire, sess }: SessionRow, thisSessionId: string): SignedInSession {

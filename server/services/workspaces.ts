@@ -11,6 +11,7 @@ import type { MembershipRow } from '../repositories/memberships.ts';
 import { insertMembership, insertWorkspace, listMemberships } from '../repositories/memberships.ts';
 import { hasSecondStep } from '../repositories/second-steps.ts';
 import { findWorkspace, lockWorkspace, updateWorkspace } from '../repositories/workspaces.ts';
+import { announcePlacesIn } from './announce-places.ts';
 import type { Context } from './context.ts';
 
 /** A person's workspaces by name, and what they may do there; a request with a token sees those that the token reaches. */
@@ -104,6 +105,7 @@ export async function changeSettings(
       object: { kind: 'workspace', id: workspaceId, name: change.name ?? before.name },
       details,
     });
+    await announcePlacesIn(trx, workspaceId);
     return settingsOf(trx, workspaceId);
   });
 }

@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import type { AddressInfo } from 'node:net';
 import { afterAll, afterEach, beforeAll, describe, expect, test, vi } from 'vitest';
+import { createdApiTokenSchema } from '#contract/account.ts';
 import { livePresenceSchema } from '#contract/live.ts';
 import { announcePlace } from '../../../server/live/announce.ts';
 import { createLiveHub } from '../../../server/live/live-hub.ts';
@@ -107,6 +108,34 @@ describe('a stream', () => {
     await knex('memberships').where({ person_id: personId }).delete();
     await announcePlace(knex, { workspaceId: elsewhere.id, personId });
     await vi.waitFor(() => expect(stream.isEnded()).toBe(true), { timeout: 5_000 });
+  });
+
+  test('ends when its session is ended from elsewhere', async () => {
+    const there = await signIn(second, workspace.people.presales);
+    const here = await signIn(application, workspace.people.presales);
+    const stream = await follow(second, there);
+    const own = await follow(application, here);
+    await stream.next(named('patches'));
+    await own.next(named('patches'));
+    await here.delete('/api/account/sessions').expect(204);
+    await vi.waitFor(() => expect(stream.isEnded()).toBe(true), { timeout: 5_000 });
+    expect(own.isEnded()).toBe(false);
+  });
+
+  test('of a script ends when its token is revoked', async () => {
+    const expiresOn = new Date().toISOString().slice(0, 10);
+    const wanted = { name: 'Watcher', scope: 'read', workspaceId: null, expiresOn };
+    const made = await architect.post('/api/account/tokens', wanted).expect(201);
+    const { secret, token } = createdApiTokenSchema.parse(made.body);
+    const { port } = second.server.address() as AddressInfo;
+    const url = `http://127.0.0.1:${port}/api/designs/${designId}/live?connectionId=${randomUUID()}`;
+    const answer = await fetch(url, { headers: { authorization: `Bearer ${secret}` } });
+    expect(answer.status).toBe(200);
+    let hasEnded = false;
+    const read = answer.text().then(() => (hasEnded = true));
+    await architect.delete(`/api/account/tokens/${token.id}`).expect(200);
+    await vi.waitFor(() => expect(hasEnded).toBe(true), { timeout: 5_000 });
+    await read;
   });
 
   test('ends with its process, so that the browser looks for another', async () => {
