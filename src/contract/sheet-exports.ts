@@ -13,10 +13,16 @@ const list = z
 
 /**
  * GET /api/designs/:designId/sheet.svg and sheet.pdf: the saved design's sheet as a file, drawn from the model. `size` is the
- * sheet's own paper unless given, `layers` and `segments` (ids, separated by commas) all of them.
+ * sheet's own paper unless given, `layers` and `segments` (ids, separated by commas) all of them. Of a design on several sheets
+ * `sheet` names the one to draw; without it a PDF has a page for each, and an SVG is of the first.
  */
 export const sheetExportQuerySchema = z.strictObject({
   size: z.enum(exportPapers).optional(),
+  sheet: z
+    .string()
+    .regex(/^[1-9]\d?$/, 'expected the number of a sheet, from 1')
+    .transform(Number)
+    .optional(),
   look: z.enum(exportLooks).default('paper'),
   findings: flag.default(false),
   addresses: flag.default(true),

@@ -2,6 +2,7 @@ import type { SheetExportQuery } from '#contract/sheet-exports.ts';
 import { fileNameOf } from '#drawing/picture/file-name.ts';
 import type { Design } from '#engine/model/design.ts';
 import { authorise } from '../../auth/authorise.ts';
+import { sheetCount } from '#drawing/sheets/sheet-numbers.ts';
 import { Refusal } from '../../errors.ts';
 import { checkFactsOf } from '../check-facts.ts';
 import type { Context } from '../context.ts';
@@ -65,6 +66,7 @@ async function draw(
   checksOf: () => Promise<NonNullable<SheetJob['checks']>>,
 ): Promise<DrawnFile> {
   refuseUnknownSegments(document, query.segments);
+  refuseUnknownSheet(document, query.sheet);
   const file = await drawer.draw(
     {
       format,
@@ -76,12 +78,22 @@ async function draw(
       },
       addresses: query.addresses,
       ...(query.size === undefined ? {} : { paper: query.size }),
+      ...(query.sheet === undefined ? {} : { sheet: query.sheet }),
       ...(query.findings ? { checks: await checksOf() } : {}),
       drawnAt: context.clock(),
     },
     signal,
   );
-  return { file, name: fileNameOf(document, format) };
+  return { file, name: fileNameOf(document, format, sheetCount(document) === 1 ? undefined : query.sheet) };
+}
+
+function refuseUnknownSheet(document: Design, asked: number | undefined): void {
+  const of = sheetCount(document);
+  if (asked === undefined || asked <= of) return;
+  const expected = of === 1 ? 'expected 1: the design has one sheet' : `expected a number from 1 to ${of}`;
+  throw new Refusal('invalid-request', `'sheet' is ${asked}: ${expected}.`, {
+    details: [{ path: 'sheet', value: String(asked), expected }],
+  });
 }
 
 function refuseUnknownSegments({ segments }: Design, asked: readonly string[] = []): void {

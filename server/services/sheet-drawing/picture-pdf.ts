@@ -13,24 +13,25 @@ type Pdf = InstanceType<typeof PDFDocument>;
 const pointsPerMm = 72 / 25.4;
 
 export interface PdfFacts {
+  readonly title: string;
   readonly paper: PaperName;
   readonly author: string | undefined;
   readonly subject: string;
   readonly drawnAt: Date;
 }
 
-/** A picture as a PDF of one page: lines as lines, text as text in embedded Work Sans, at real size. */
-export function picturePdf(picture: SheetPicture, facts: PdfFacts): Promise<Buffer> {
+/** Pictures as a PDF, each a page: lines as lines, text as text in embedded Work Sans, at real size. */
+export function picturePdf(pictures: readonly SheetPicture[], facts: PdfFacts): Promise<Buffer> {
   const { width, height } = paperSizesMm[facts.paper];
-  const { box } = picture;
+  const page = { size: [width * pointsPerMm, height * pointsPerMm], margin: 0 };
   const pdf = new PDFDocument({
-    size: [width * pointsPerMm, height * pointsPerMm],
-    margin: 0,
+    ...page,
+    autoFirstPage: false,
     pdfVersion: '1.7',
     lang: 'en',
     displayTitle: true,
     info: {
-      Title: picture.title,
+      Title: facts.title,
       ...(facts.author === undefined ? {} : { Author: facts.author }),
       ...(facts.subject === '' ? {} : { Subject: facts.subject }),
       CreationDate: facts.drawnAt,
@@ -39,9 +40,11 @@ export function picturePdf(picture: SheetPicture, facts: PdfFacts): Promise<Buff
   for (const weight of [400, 500, 600, 700] as const)
     for (const script of ['latin', 'latin-ext'] as const)
       pdf.registerFont(faceName(weight, script), faceFile(weight, script, 'woff'));
-  const scale = (width * pointsPerMm) / box.width;
-  pdf.scale(scale).translate(-box.x, -box.y);
-  for (const { shapes } of picture.layers) for (const shape of shapes) draw(pdf, shape, 1);
+  for (const { box, layers } of pictures) {
+    pdf.addPage(page);
+    pdf.scale((width * pointsPerMm) / box.width).translate(-box.x, -box.y);
+    for (const { shapes } of layers) for (const shape of shapes) draw(pdf, shape, 1);
+  }
   return new Promise((resolve, reject) => {
     const chunks: Buffer[] = [];
     pdf.on('data', (chunk: Buffer) => chunks.push(chunk));

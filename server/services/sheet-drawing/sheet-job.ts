@@ -2,7 +2,9 @@ import type { Decorations } from '#drawing/decorations.ts';
 import { findingsToDecorations } from '#drawing/findings-to-decorations.ts';
 import type { PaperName } from '#drawing/picture/paper-sizes.ts';
 import { pictureSvgText } from '#drawing/picture/picture-svg.ts';
+import type { SheetPicture } from '#drawing/picture/sheet-picture.ts';
 import { sheetPicture } from '#drawing/picture/sheet-picture.ts';
+import { sheetCount } from '#drawing/sheets/sheet-numbers.ts';
 import type { Theme } from '#drawing/theme/tokens.ts';
 import type { ViewChoice } from '#drawing/view-layers.ts';
 import { tunnelSegments } from '#engine/flood/tunnel-segments.ts';
@@ -24,6 +26,8 @@ export interface SheetJob {
   readonly look: Theme;
   readonly view: ViewChoice;
   readonly addresses: boolean;
+  /** The sheet to draw; absent: all pages of a PDF, the first as SVG. */
+  readonly sheet?: number;
   /** Absent: the sheet's own. */
   readonly paper?: PaperName;
   /** Absent: a drawing without findings. */
@@ -48,20 +52,27 @@ function decorationsOf(document: Design, checks: NonNullable<SheetJob['checks']>
 /** Makes one drawing: routing, checks where findings are wanted, and the file. */
 export async function drawSheet(job: SheetJob): Promise<Uint8Array> {
   const { document, checks } = job;
-  const picture = sheetPicture(document, {
+  const options = {
     look: job.look,
     tunnelSegments: tunnelSegments(indexNetwork(document)),
     view: job.view,
     addresses: job.addresses,
     ...(checks === undefined ? {} : { decorations: decorationsOf(document, checks) }),
-  });
+  };
+  const pictureOf = (number: number): SheetPicture => sheetPicture(document, { ...options, number });
+  const picture = pictureOf(job.sheet ?? 1);
   const paper = job.paper ?? picture.sheet;
   if (job.format === 'svg') {
     const plain = pictureSvgText(picture, { paper });
     return new TextEncoder().encode(pictureSvgText(picture, { paper, fonts: embeddedFaces(plain) }));
   }
   const { createdBy, identification, revision } = document.meta;
-  return picturePdf(picture, {
+  const further =
+    job.sheet === undefined
+      ? Array.from({ length: sheetCount(document) - 1 }, (_, i) => pictureOf(i + 2))
+      : [];
+  return picturePdf([picture, ...further], {
+    title: further.length === 0 ? picture.title : document.meta.title,
     paper,
     author: createdBy,
     subject: [identification, revision === undefined ? undefined : `Rev. ${revision}`]

@@ -1,7 +1,7 @@
 import type { Design } from '../../engine/model/design.ts';
 
-/** A name for a file of a design: its number and title, in letters that every system takes. */
-export const fileNameOf = ({ meta }: Pick<Design, 'meta'>, ending: string): string => {
+/** A name for a file of a design, or of one sheet of it: its number and title, in letters that every system takes. */
+export const fileNameOf = ({ meta }: Pick<Design, 'meta'>, ending: string, sheet?: number): string => {
   const base = [meta.identification, meta.title]
     .filter(Boolean)
     .join(' ')
@@ -12,5 +12,6 @@ export const fileNameOf = ({ meta }: Pick<Design, 'meta'>, ending: string): stri
     .replace(/^-|-$/g, '')
     .toLowerCase()
     .slice(0, 120);
-  return `${base || 'sheet'}.${ending}`;
+  const part = sheet === undefined ? '' : `-sheet-${sheet}`;
+  return `${base || 'sheet'}${part}.${ending}`;
 };

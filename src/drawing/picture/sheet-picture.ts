@@ -4,8 +4,8 @@ import type { Decorations, Tone } from '../decorations.ts';
 import { noDecorations } from '../decorations.ts';
 import type { Rect, SheetGeometry } from '../geometry.ts';
 import type { DrawingFacts, TitleBlockFacts } from '../parts/drawing-facts.ts';
-import { drawingFacts } from '../parts/drawing-facts.ts';
-import { route } from '../routing/route.ts';
+import { drawSheet, sheetOfDesign } from '../sheets/draw-sheet.ts';
+import { segmentsOnSheet, sheetFacts } from '../sheets/sheet-facts.ts';
 import type { Shape } from '../shape.ts';
 import { shape } from '../shape.ts';
 import type { Layer } from '../svg/standalone-svg.ts';
@@ -28,6 +28,8 @@ import { fadedColours, pictureColours, withColours } from './written-colours.ts'
 
 export interface PictureOptions {
   readonly look: Theme;
+  /** Which sheet of several; absent: the first. */
+  readonly number?: number;
   /** Ids of the segments each tunnel carries, as the engine follows them. */
   readonly tunnelSegments: ReadonlyMap<string, readonly string[]>;
   /** Which layers and segments; absent: the whole sheet. */
@@ -37,7 +39,7 @@ export interface PictureOptions {
   /** What the checks have to show; absent: a drawing without findings. */
   readonly decorations?: Decorations;
   readonly titleBlock?: Partial<TitleBlockFacts>;
-  /** What `route` answers for the design, where the caller has it already. */
+  /** What `drawSheet` answers for it, where the caller has it already. */
   readonly geometry?: SheetGeometry;
 }
 
@@ -111,11 +113,12 @@ const fadedShapes =
  * caution under it. Blue pencil, lamp and selection stay behind.
  */
 export const sheetPicture = (design: Design, options: PictureOptions): SheetPicture => {
-  const { look, tunnelSegments, view = wholeSheet, addresses = true } = options;
-  const visibilityOf = partVisibility(design, tunnelSegments, view);
-  const routed = visibleGeometry(options.geometry ?? route(design), visibilityOf);
+  const { look, number = 1, tunnelSegments, view = wholeSheet, addresses = true } = options;
+  const drawn = sheetOfDesign(design, number);
+  const visibilityOf = partVisibility(drawn.design, segmentsOnSheet(drawn, tunnelSegments), view);
+  const routed = visibleGeometry(options.geometry ?? drawSheet(design, number), visibilityOf);
   const geometry = addresses ? routed : geometryWithoutAddresses(routed);
-  const all = drawingFacts(design, tunnelSegments, options.titleBlock);
+  const all = sheetFacts(drawn, tunnelSegments, options.titleBlock);
   const facts = addresses ? all : factsWithoutAddresses(all);
   const decorations = visibleDecorations(withoutPencil(options.decorations ?? noDecorations), visibilityOf);
   const colours = pictureColours(look);
@@ -125,16 +128,16 @@ export const sheetPicture = (design: Design, options: PictureOptions): SheetPict
     decorations,
     facts: { ...facts, segments: legendOf(facts, geometry, view) },
   });
-  const drawn = layers.map(({ name, shapes }): Layer => {
+  const coloured = layers.map(({ name, shapes }): Layer => {
     if (name === 'paper')
       return { name, shapes: [withColours(shape('rect', { ...box, fill: paint('paper') }), colours)] };
     return { name, shapes: shapes.map(fadedShapes(visibilityOf, colours)) };
   });
   const line = cautionLine(geometry.sheet, leftOutWords(all, view, addresses));
   return {
-    title: design.meta.title,
+    title: drawn.of === 1 ? design.meta.title : `${design.meta.title}, sheet ${number} of ${drawn.of}`,
     sheet: geometry.sheet.size,
     box,
-    layers: [...drawn, { name: 'caution', shapes: [withColours(line, colours)] }],
+    layers: [...coloured, { name: 'caution', shapes: [withColours(line, colours)] }],
   };
 };

@@ -35,6 +35,8 @@ const mostWidthRounds = 4;
 const widestWhenFull = 340;
 /** Of designs with more cords the first arrangement that fits is taken, without a look at how the others route. */
 const mostCompared = 120;
+/** Of further sheets, what moving columns may be able to mend: a few overlaps. */
+const mostMended = 1000;
 /** Steps in px by which right columns may be moved, so that runs of both sides don't meet. */
 const staggers = [16, -16, 24, -24, 32, -32, 44, -44, 58, -58];
 
@@ -232,15 +234,23 @@ export const onOneSheet = (
     fits: () => ways.some((seating) => attempt(largest, spacings.snug, seating, 0) !== undefined),
     layout: () => finished(find()),
     cleanest: () => {
+      const better = (best: Tidied | undefined, next: Tidied | undefined): Tidied | undefined =>
+        next === undefined || (best !== undefined && best.score().total <= next.score().total) ? best : next;
+      const isClean = (tidied: Tidied | undefined): boolean => tidied?.score().steps === 0;
       let best: Tidied | undefined;
       for (const spacing of [spacings.roomy, spacings.snug])
-        for (const seating of ways)
-          for (const stagger of [0, ...staggers]) {
-            const next = attempt(largest, spacing, seating, stagger);
-            if (next === undefined) continue;
-            if (best === undefined || next.score().total < best.score().total) best = next;
-            if (best.score().steps === 0) return finished(best);
-          }
+        for (const seating of ways) {
+          best = better(best, attempt(largest, spacing, seating, 0));
+          if (isClean(best)) return finished(best);
+        }
+      if (best === undefined) return undefined;
+      // Only what is nearly clean is worth moving columns for.
+      const { spacing, arrangement } = best;
+      if (best.score().steps <= mostMended)
+        for (const stagger of staggers) {
+          best = better(best, attempt(largest, spacing, arrangement.seating, stagger));
+          if (isClean(best)) break;
+        }
       return finished(best);
     },
   };

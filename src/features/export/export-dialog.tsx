@@ -7,8 +7,11 @@ import { ChoiceCell, SelectCell } from '../../components/field-cells.tsx';
 import { ErrorNotice } from '../../components/notice.tsx';
 import { SegmentSwatch } from '../../components/segment-swatch.tsx';
 import { exportLayers, exportPapers } from '../../contract/sheet-exports.ts';
-import { route } from '../../drawing/routing/route.ts';
+import { useViewChoice } from '../../canvas/use-view-choice.ts';
+import { drawSheet } from '../../drawing/sheets/draw-sheet.ts';
+import { sheetCount } from '../../drawing/sheets/sheet-numbers.ts';
 import { useChecks } from '../../workspace/checks-context.tsx';
+import { currentSheet } from '../../workspace/current-sheet.ts';
 import { exportFormats, pngScales, rememberChoice, rememberedChoice } from './export-choice.ts';
 import type { ExportChoice } from './export-choice.ts';
 import { pngExtent } from './picture-png.ts';
@@ -32,16 +35,26 @@ const layerWords: { readonly [layer in ExportChoice['layers'][number]]: string }
 
 /** Takes the sheet away as a file: what it is to look like on the left, what it is to be on the right. */
 export function ExportDialog({ onClose }: { readonly onClose: () => void }) {
-  const [kept, setKept] = useState(() => rememberedChoice(localStorage));
-  const [segments, setSegments] = useState<readonly string[]>();
-  const choice: SheetChoice = { ...kept, segments };
+  const { choice: view } = useViewChoice();
+  // What is on screen is what one means to take away, until one says otherwise.
+  const [kept, setKept] = useState(() => ({
+    ...rememberedChoice(localStorage),
+    layers: [...view.layers],
+  }));
+  const [segments, setSegments] = useState(view.segments);
+  const [pages, setPages] = useState<'all' | number>(() => (currentSheet() === 1 ? 'all' : currentSheet()));
+  const { document } = useChecks();
+  const of = sheetCount(document);
+  const shownSheet = pages === 'all' ? 1 : Math.min(pages, of);
+  // Only a PDF has pages.
+  const takesAll = pages === 'all' && kept.format === 'pdf';
+  const choice: SheetChoice = { ...kept, segments, sheet: takesAll || of === 1 ? undefined : shownSheet };
   const change = (changed: Partial<ExportChoice>): void => {
     const next = { ...kept, ...changed };
     setKept(next);
     rememberChoice(localStorage, next);
   };
-  const { document } = useChecks();
-  const { sheet, crowded } = route(document);
+  const { sheet, crowded } = drawSheet(document, shownSheet);
   const picture = useChosenPicture(choice);
   const running = useSheetExport(choice, picture);
   const { format } = choice;
@@ -137,6 +150,21 @@ export function ExportDialog({ onClose }: { readonly onClose: () => void }) {
                   }))}
                   onChange={(look) => change({ look })}
                 />
+                {of > 1 && (
+                  <SelectCell
+                    label="Sheet"
+                    span={2}
+                    value={takesAll ? 'all' : String(shownSheet)}
+                    options={[
+                      ...(format === 'pdf' ? [{ value: 'all', label: `All ${of}, a page each` }] : []),
+                      ...Array.from({ length: of }, (_, i) => ({
+                        value: String(i + 1),
+                        label: `Sheet ${i + 1} of ${of}`,
+                      })),
+                    ]}
+                    onChange={(value) => setPages(value === 'all' ? 'all' : Number(value))}
+                  />
+                )}
                 {format !== 'png' && (
                   <SelectCell
                     label="Sheet size"

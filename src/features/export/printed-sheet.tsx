@@ -2,12 +2,14 @@ import { useEffect, useState } from 'react';
 import { createPortal, flushSync } from 'react-dom';
 import { Shapes } from '../../components/shapes.tsx';
 import { sheetPicture } from '../../drawing/picture/sheet-picture.ts';
+import { sheetCount } from '../../drawing/sheets/sheet-numbers.ts';
 import { tunnelSegments } from '../../engine/flood/tunnel-segments.ts';
+import type { Design } from '../../engine/model/design.ts';
 import { indexNetwork } from '../../engine/network/index-network.ts';
 import { useOpenState } from '../../workspace/open-design-context.tsx';
 import './printed-sheet.css';
 
-/** What the browser's Print puts on paper in place of the page: the sheet, black on white. Drawn only while printing. */
+/** What the browser's Print puts on paper in place of the page: each sheet on one of its own, black on white. Drawn only while printing. */
 export function PrintedSheet() {
   const [printing, setPrinting] = useState(false);
   useEffect(() => {
@@ -21,13 +23,20 @@ export function PrintedSheet() {
       window.removeEventListener('afterprint', end);
     };
   }, []);
-  return printing ? createPortal(<Sheet />, document.body) : null;
+  return printing ? createPortal(<Sheets />, document.body) : null;
 }
 
-function Sheet() {
+function Sheets() {
   const design = useOpenState((state) => state.document);
+  return Array.from({ length: sheetCount(design) }, (_, i) => (
+    <Sheet key={i} design={design} number={i + 1} />
+  ));
+}
+
+function Sheet({ design, number }: { readonly design: Design; readonly number: number }) {
   const { title, box, layers } = sheetPicture(design, {
     look: 'print',
+    number,
     tunnelSegments: tunnelSegments(indexNetwork(design)),
   });
   return (

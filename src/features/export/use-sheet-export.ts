@@ -5,6 +5,7 @@ import { fileNameOf } from '../../drawing/picture/file-name.ts';
 import { pictureSvgText } from '../../drawing/picture/picture-svg.ts';
 import type { SheetPicture } from '../../drawing/picture/sheet-picture.ts';
 import { sheetPicture } from '../../drawing/picture/sheet-picture.ts';
+import { sheetCount } from '../../drawing/sheets/sheet-numbers.ts';
 import { tunnelSegments } from '../../engine/flood/tunnel-segments.ts';
 import type { Design } from '../../engine/model/design.ts';
 import { tunnelStates } from '../../engine/network/can-come-up.ts';
@@ -24,6 +25,8 @@ import { screenPng } from './screen-png.ts';
 export interface SheetChoice extends ExportChoice {
   /** Absent: all segments. */
   readonly segments: readonly string[] | undefined;
+  /** The sheet to draw of several; absent: all of them, of which a picture shows the first. */
+  readonly sheet: number | undefined;
 }
 
 function useFound(): Decorations {
@@ -38,29 +41,31 @@ function useFound(): Decorations {
 export function useChosenPicture(choice: SheetChoice): SheetPicture {
   const { document } = useChecks();
   const found = useFound();
-  const { look, findings, addresses, layers, segments } = useDeferredValue(choice);
+  const { look, findings, addresses, layers, segments, sheet } = useDeferredValue(choice);
   return useMemo(
     () =>
       sheetPicture(document, {
         look,
+        number: Math.min(sheet ?? 1, sheetCount(document)),
         tunnelSegments: tunnelSegments(indexNetwork(document)),
         view: { layers, ...(segments === undefined ? {} : { segments }) },
         addresses,
         ...(findings ? { decorations: found } : {}),
       }),
-    [document, found, look, findings, addresses, layers, segments],
+    [document, found, look, findings, addresses, layers, segments, sheet],
   );
 }
 
 const designText = (design: Design): string => `${JSON.stringify(design, null, 2)}\n`;
 
-const exportQuery = ({ look, paper, findings, addresses, layers, segments }: SheetChoice): string => {
+const exportQuery = ({ look, paper, findings, addresses, layers, segments, sheet }: SheetChoice): string => {
   const query = new URLSearchParams({
     look,
     findings: String(findings),
     addresses: String(addresses),
     layers: layers.join(','),
   });
+  if (sheet !== undefined) query.set('sheet', String(sheet));
   if (paper !== 'sheet') query.set('size', paper);
   if (segments !== undefined) query.set('segments', segments.join(','));
   return query.toString();
@@ -88,7 +93,9 @@ export function useSheetExport(choice: SheetChoice, picture: SheetPicture): Shee
   const [failure, setFailure] = useState<string>();
   const running = useRef<AbortController>(undefined);
   useEffect(() => () => running.current?.abort(), []);
-  const fileName = fileNameOf({ meta }, choice.format);
+  const isOneOfSeveral = useOpenState(({ document }) => sheetCount(document) > 1);
+  const isDrawn = choice.format !== 'json' && (choice.format !== 'png' || choice.shot === 'sheet');
+  const fileName = fileNameOf({ meta }, choice.format, isOneOfSeveral && isDrawn ? choice.sheet : undefined);
 
   const svgText = async (paper: ExportChoice['paper']): Promise<string> => {
     const fonts = await browserFaces(pictureSvgText(picture));
