@@ -33,6 +33,7 @@ import { passwordResetRoutes } from './routes/password-reset-routes.ts';
 import { profileRoutes } from './routes/profile-routes.ts';
 import { revisionRoutes } from './routes/revision-routes.ts';
 import { sessionRoutes } from './routes/session-routes.ts';
+import { shareRoutes } from './routes/share-routes.ts';
 import { sheetExportRoutes } from './routes/sheet-export-routes.ts';
 import { waiverRoutes } from './routes/waiver-routes.ts';
 import { workspaceRoutes } from './routes/workspace-routes.ts';
@@ -103,6 +104,7 @@ export function createApp({
   app.use(designRoutes(context));
   app.use(liveRoutes(context, live));
   app.use(sheetExportRoutes(context));
+  app.use(shareRoutes(context, throttles));
   app.use(waiverRoutes(context));
   app.use(commentRoutes(context));
   app.use(revisionRoutes(context));

@@ -51,6 +51,7 @@ export function notFound(
     | 'engagement'
     | 'design'
     | 'revision'
+    | 'share'
     | 'waiver'
     | 'comment'
     | 'equipment profile'

@@ -28,6 +28,9 @@ export interface Throttles {
   invitation(personId: string): Promise<void>;
   /** Guesses at links that are keys. */
   linkOpened(address: string): Promise<void>;
+  /** Guesses at the passphrase of a share, wherever they come from. */
+  passphraseAttempt(shareId: string): Promise<void>;
+  passphraseFound(shareId: string): Promise<void>;
   /** Asking for a new password, whoever for. */
   resetAsked(address: string): Promise<void>;
   /** Whether somebody may be sent a link for a new password; never told to who asks. */
@@ -53,6 +56,7 @@ export const allowances = {
   demoSignIn: { times: 120, seconds: 60 },
   invitation: { times: 100, seconds: 60 * 60 },
   linkOpened: { times: 100, seconds: 15 * 60 },
+  passphrase: { times: 20, seconds: 15 * 60 },
   resetAsked: { times: 20, seconds: 60 * 60 },
   resetOfPerson: { times: 5, seconds: 60 * 60 },
   workspaceStart: { times: 20, seconds: 24 * 60 * 60 },
@@ -85,6 +89,7 @@ export function createThrottles(pool: Pool): Throttles {
   const demo = limiter('demoSignIn');
   const invitations = limiter('invitation');
   const links = limiter('linkOpened');
+  const passphrases = limiter('passphrase');
   const resets = limiter('resetAsked');
   const resetsOfPerson = limiter('resetOfPerson');
   const workspaces = limiter('workspaceStart');
@@ -106,6 +111,10 @@ export function createThrottles(pool: Pool): Throttles {
         ofPerson.reward(shortKey(email), 1),
         ofPersonFromAddress.delete(both(email, address)),
       ]);
+    },
+    passphraseAttempt: (shareId) => take(passphrases, shareId),
+    async passphraseFound(shareId) {
+      await passphrases.delete(shareId);
     },
     passwordAttempt: (personId) => take(currentPassword, personId),
     async passwordFound(personId) {

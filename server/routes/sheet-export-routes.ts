@@ -1,4 +1,4 @@
-import type { Request, RequestHandler, Response } from 'express';
+import type { Request, RequestHandler } from 'express';
 import { Router } from 'express';
 import { sheetExportQuerySchema } from '#contract/sheet-exports.ts';
 import { requirePerson } from '../auth/sessions.ts';
@@ -7,6 +7,7 @@ import type { DrawnFile, Wanted } from '../services/sheet-drawing/export-sheet.t
 import { exportRevision, exportSheet } from '../services/sheet-drawing/export-sheet.ts';
 import { mountRoute } from './mount-route.ts';
 import { readId, readQuery } from './read-request.ts';
+import { sendDrawing } from './send-drawing.ts';
 
 /** The sheet of a design or of one of its revisions as a file. */
 export function sheetExportRoutes(context: Context): Router {
@@ -37,28 +38,5 @@ const answerWith =
   async (req, res) => {
     const person = requirePerson(req);
     const query = readQuery(req, sheetExportQuerySchema);
-    const signal = abortedWith(res);
-    try {
-      const { file, name } = await draw(person.id, req, { format, query, signal });
-      res.setHeader('Cache-Control', 'private, no-cache');
-      res.setHeader('Content-Disposition', `attachment; filename="${name}"`);
-      // As a page of its own the drawing may do nothing at all.
-      res.setHeader(
-        'Content-Security-Policy',
-        "default-src 'none'; style-src 'unsafe-inline'; font-src data:; sandbox",
-      );
-      res.type(types[format]).send(Buffer.from(file));
-    } catch (error) {
-      // Where nobody waits for the answer any more, none is due.
-      if (!signal.aborted) throw error;
-    }
+    await sendDrawing(res, types[format], (signal) => draw(person.id, req, { format, query, signal }));
   };
-
-/** Aborts when the one who asked goes away before the answer is there. */
-function abortedWith(res: Response): AbortSignal {
-  const controller = new AbortController();
-  res.on('close', () => {
-    if (!res.writableEnded) controller.abort();
-  });
-  return controller.signal;
-}

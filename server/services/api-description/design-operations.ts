@@ -35,6 +35,15 @@ import {
   sittingListSchema,
   supersedeSchema,
 } from '#contract/revisions.ts';
+import {
+  createShareSchema,
+  createdShareSchema,
+  openShareSchema,
+  openedShareSchema,
+  shareListSchema,
+  shareSchema,
+  sharedSheetSchema,
+} from '#contract/shares.ts';
 import { sheetExportQuerySchema } from '#contract/sheet-exports.ts';
 import { waiveSchema, waiverListSchema, waiverSchema } from '#contract/waivers.ts';
 import type { Operation } from './operation.ts';
@@ -188,6 +197,28 @@ export const reviewOperations = {
     summary: 'Read a design as it was',
     query: pastDocumentQuerySchema,
     answer: { schema: pastDocumentSchema },
+  },
+  'GET /api/designs/:designId/shares': {
+    summary: 'List links that show revisions to guests',
+    answer: { schema: shareListSchema },
+  },
+  'POST /api/designs/:designId/shares': {
+    summary: 'Make a link that shows a revision to guests',
+    description: 'The link is in this answer and never again.',
+    body: createShareSchema,
+    answer: { status: 201, schema: createdShareSchema },
+  },
+  'DELETE /api/shares/:shareId': { summary: 'Revoke a link', answer: { schema: shareSchema } },
+  'POST /api/share': {
+    summary: 'Open a link as a guest',
+    description: 'Locked until the passphrase comes with it, where there is one.',
+    body: openShareSchema,
+    answer: { schema: openedShareSchema },
+  },
+  'POST /api/share/sheet': {
+    summary: 'Draw a sheet of what a link shows',
+    body: sharedSheetSchema,
+    answer: { mediaType: 'image/svg+xml' },
   },
   'GET /api/designs/:designId/sittings': {
     summary: 'Read who changed a design when',

@@ -54,7 +54,15 @@ export async function exportRevision(
 ): Promise<DrawnFile> {
   const { knex } = context.database;
   const { revision } = await openRevision(knex, personId, revisionId, 'revision.read');
-  const { document, findings, waivers } = await loadIssued(knex, revision);
+  return drawIssued(context, await loadIssued(knex, revision), wanted);
+}
+
+/** The sheet of what was frozen. */
+export function drawIssued(
+  context: Context,
+  { document, findings, waivers }: Awaited<ReturnType<typeof loadIssued>>,
+  wanted: Wanted,
+): Promise<DrawnFile> {
   // No day is past for what held when it was frozen.
   return draw(context, document, wanted, () => Promise.resolve({ from: { findings }, waivers, today: '' }));
 }
@@ -92,7 +100,7 @@ function refuseUnknownSheet(document: Design, asked: number | undefined): void {
   if (asked === undefined || asked <= of) return;
   const expected = of === 1 ? 'expected 1: the design has one sheet' : `expected a number from 1 to ${of}`;
   throw new Refusal('invalid-request', `'sheet' is ${asked}: ${expected}.`, {
-    details: [{ path: 'sheet', value: String(asked), expected }],
+    details: [{ path: 'sheet', value: JSON.stringify(String(asked)), expected }],
   });
 }
 

@@ -36,6 +36,7 @@ let commentId: string;
 let profileId: string;
 let reviewedId: string;
 let revisionId: string;
+let shareId: string;
 let spareMemberId: string;
 let invitationId: string;
 let mailId: string;
@@ -50,6 +51,7 @@ beforeAll(async () => {
   designId = await addDesign(application, engagementId, document);
   reviewedId = await addDesign(application, engagementId);
   revisionId = reviewedId;
+  shareId = reviewedId;
   for (const role of roles) members[role] = await signIn(application, workspace.people[role]);
   const made = await requests['POST /api/designs/:designId/waivers'](members.reviewer, ids()).expect(201);
   waiverId = (made.body as { id: string }).id;
@@ -81,6 +83,7 @@ const missing: Ids = {
   comment: missingId,
   reviewed: missingId,
   revision: missingId,
+  share: missingId,
   profile: missingId,
   person: missingId,
   invitation: missingId,
@@ -98,6 +101,7 @@ interface Ids {
   readonly comment: string;
   readonly reviewed: string;
   readonly revision: string;
+  readonly share: string;
   readonly profile: string;
   readonly person: string;
   readonly invitation: string;
@@ -231,6 +235,19 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
     browser.get(`/api/revisions/${id}/sheet.svg`),
   'GET /api/revisions/:revisionId/sheet.pdf': (browser, { revision: id }) =>
     browser.get(`/api/revisions/${id}/sheet.pdf`),
+  'GET /api/designs/:designId/shares': (browser, { reviewed: id }) =>
+    browser.get(`/api/designs/${id}/shares`),
+  'POST /api/designs/:designId/shares': (browser, { reviewed: id, revision }) =>
+    browser.post(`/api/designs/${id}/shares`, {
+      revisionId: revision,
+      label: 'Saltmarsh Ferries',
+      expiresOn: new Date().toISOString().slice(0, 10),
+      showsAddresses: false,
+      showsFindings: false,
+    }),
+  'DELETE /api/shares/:shareId': (browser, { share: id }) => browser.delete(`/api/shares/${id}`),
+  'POST /api/share': (browser) => browser.post('/api/share', { token: 'x'.repeat(43) }),
+  'POST /api/share/sheet': (browser) => browser.post('/api/share/sheet', { token: 'x'.repeat(43) }),
   'POST /api/revisions/:revisionId/withdrawal': (browser, { revision: id }) =>
     browser.post(`/api/revisions/${id}/withdrawal`),
   'POST /api/revisions/:revisionId/decision': (browser, { revision: id }) =>
@@ -351,6 +368,13 @@ async function writeComment(role: Role): Promise<void> {
   commentId = (written.body as { id: string }).id;
 }
 
+/** A link to an approved revision that nobody has revoked. */
+async function makeShare(): Promise<void> {
+  await makeApproved();
+  const made = await requests['POST /api/designs/:designId/shares'](members.owner, ids()).expect(201);
+  shareId = (made.body as { share: { id: string } }).share.id;
+}
+
 /** What has to be so before a member's request that succeeds once alone. */
 const ready: { readonly [route in Route]?: (role: Role) => Promise<void> } = {
   'PATCH /api/comments/:commentId': writeComment,
@@ -363,6 +387,8 @@ const ready: { readonly [route in Route]?: (role: Role) => Promise<void> } = {
   'GET /api/revisions/:revisionId': makeApproved,
   'GET /api/revisions/:revisionId/sheet.svg': makeApproved,
   'GET /api/revisions/:revisionId/sheet.pdf': makeApproved,
+  'POST /api/designs/:designId/shares': makeApproved,
+  'DELETE /api/shares/:shareId': makeShare,
   'POST /api/revisions/:revisionId/withdrawal': putToReview,
   'POST /api/revisions/:revisionId/decision': putToReview,
   'POST /api/revisions/:revisionId/build': makeApproved,
@@ -379,6 +405,7 @@ const ids = (): Ids => ({
   comment: commentId,
   reviewed: reviewedId,
   revision: revisionId,
+  share: shareId,
   profile: profileId,
   person: spareMemberId,
   invitation: invitationId,
@@ -467,6 +494,7 @@ describe.each(guarded)('%s', (route) => {
         comment: '?',
         reviewed: '../y',
         revision: '%00',
+        share: '%00',
         profile: "'",
         person: '\\',
         invitation: '-',
@@ -540,6 +568,8 @@ describe('routes that belong to no workspace', () => {
     ['POST /api/password-reset', 202],
     ['POST /api/password-reset/link', 404],
     ['POST /api/password-reset/password', 404],
+    ['POST /api/share', 404],
+    ['POST /api/share/sheet', 404],
     ['POST /api/invitation', 404],
     ['POST /api/invitation/acceptance', 404],
   ] as const)('%s answers everybody', async (route, status) => {
