@@ -7,6 +7,7 @@ import { demoDesign } from '../../seeds/demo-designs/demo-design.ts';
 import { authorise } from '../auth/authorise.ts';
 import { permissions } from '../auth/permissions.ts';
 import { Refusal, notFound } from '../errors.ts';
+import { recordActivity } from '../repositories/activity.ts';
 import { insertSnapshot } from '../repositories/design-snapshots.ts';
 import type { DesignRow } from '../repositories/designs.ts';
 import { findDesign, insertDesign, lockDesign, setDesignPutAway } from '../repositories/designs.ts';
@@ -39,8 +40,18 @@ export async function createDesign(
     title,
   );
   const id = await database.knex.transaction(async (trx) => {
-    const inserted = await insertDesign(trx, engagementId, summarise(document), personId, clock());
+    const at = clock();
+    const inserted = await insertDesign(trx, engagementId, summarise(document), personId, at);
     await insertSnapshot(trx, inserted, { sequence: 0, document });
+    await recordActivity(trx, {
+      workspaceId: engagement.workspaceId,
+      at,
+      action: 'design.created',
+      personId,
+      object: { kind: 'design', id: inserted, name: title },
+      designId: inserted,
+      details: { engagement: engagement.name },
+    });
     return inserted;
   });
   return summaryOf(await requireDesign(context, id));
@@ -92,7 +103,7 @@ export async function changeDesign(
 
 /** What is put away already keeps the time at which it was. */
 async function putAway(
-  { database }: Context,
+  { database, clock }: Context,
   personId: string,
   designId: string,
   { archivedAt, deletedAt }: Pick<DesignRow, 'archivedAt' | 'deletedAt'>,
@@ -105,7 +116,29 @@ async function putAway(
       archivedAt: archivedAt && (design.archivedAt ?? archivedAt),
       deletedAt: deletedAt && (design.deletedAt ?? deletedAt),
     });
+    const action = putAwayAction(design, { archivedAt, deletedAt });
+    if (action !== null)
+      await recordActivity(trx, {
+        workspaceId: design.workspaceId,
+        at: clock(),
+        action,
+        personId,
+        object: { kind: 'design', id: designId, name: design.title },
+        designId,
+      });
   });
+}
+
+/** What became of a design; null where it was so before. */
+function putAwayAction(
+  before: DesignRow,
+  after: Pick<DesignRow, 'archivedAt' | 'deletedAt'>,
+): 'design.archived' | 'design.deleted' | 'design.restored' | null {
+  if (after.deletedAt !== null) return before.deletedAt === null ? 'design.deleted' : null;
+  if (after.archivedAt === null) return before.archivedAt === null ? null : 'design.restored';
+  // What was deleted and is only archived from now on has come back, too.
+  if (before.deletedAt !== null) return 'design.restored';
+  return before.archivedAt === null ? 'design.archived' : null;
 }
 
 export async function requireDesign({ database }: Context, designId: string): Promise<DesignRow> {

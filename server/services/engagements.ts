@@ -2,6 +2,7 @@ import type { Engagement } from '#contract/designs.ts';
 import { deletedForDays } from '#contract/designs.ts';
 import { authorise } from '../auth/authorise.ts';
 import { notFound } from '../errors.ts';
+import { recordActivity } from '../repositories/activity.ts';
 import { listDesigns, removeDeletedDesigns } from '../repositories/designs.ts';
 import type { EngagementRow } from '../repositories/engagements.ts';
 import {
@@ -38,14 +39,24 @@ export async function readEngagements(
 }
 
 export async function createEngagement(
-  { database: { knex }, clock }: Context,
+  { database, clock }: Context,
   personId: string,
   workspaceId: string,
   { name, summary = '' }: { readonly name: string; readonly summary?: string },
 ): Promise<Engagement> {
-  await authorise(knex, personId, 'engagement.create', workspaceId, 'workspace');
-  const engagement = await insertEngagement(knex, { workspaceId, name, summary }, clock());
-  return { ...withoutDesigns(engagement), designs: [] };
+  return database.knex.transaction(async (trx) => {
+    await authorise(trx, personId, 'engagement.create', workspaceId, 'workspace');
+    const at = clock();
+    const engagement = await insertEngagement(trx, { workspaceId, name, summary }, at);
+    await recordActivity(trx, {
+      workspaceId,
+      at,
+      action: 'engagement.created',
+      personId,
+      object: { kind: 'engagement', id: engagement.id, name },
+    });
+    return { ...withoutDesigns(engagement), designs: [] };
+  });
 }
 
 /** Renames, describes, archives or restores an engagement. */
@@ -61,17 +72,45 @@ export async function changeEngagement(
     if (before === null) throw notFound('engagement');
     await authorise(trx, personId, 'engagement.edit', before.workspaceId, 'engagement');
     const { archived, ...words } = change;
+    const at = clock();
     const isArchived = before.archivedAt !== null;
     await updateEngagement(trx, engagementId, {
       ...words,
-      ...(archived === undefined || archived === isArchived ? {} : { archivedAt: archived ? clock() : null }),
+      ...(archived === undefined || archived === isArchived ? {} : { archivedAt: archived ? at : null }),
     });
+    const details = changesOf(before, change);
+    if (Object.keys(details).length > 0)
+      await recordActivity(trx, {
+        workspaceId: before.workspaceId,
+        at,
+        action: 'engagement.changed',
+        personId,
+        object: { kind: 'engagement', id: engagementId, name: change.name ?? before.name },
+        details,
+      });
     return before.workspaceId;
   });
   const all = await readEngagements(context, personId, workspaceId, true);
   const changed = all.find(({ id }) => id === engagementId);
   if (changed === undefined) throw notFound('engagement');
   return changed;
+}
+
+function changesOf(
+  before: EngagementRow,
+  {
+    name,
+    summary,
+    archived,
+  }: { readonly name?: string; readonly summary?: string; readonly archived?: boolean },
+): Readonly<Record<string, string>> {
+  return {
+    ...(name === undefined || name === before.name ? {} : { nameBefore: before.name }),
+    ...(summary === undefined || summary === before.summary ? {} : { summary: 'changed' }),
+    ...(archived === undefined || archived === (before.archivedAt !== null)
+      ? {}
+      : { archived: archived ? 'yes' : 'no' }),
+  };
 }
 
 function withoutDesigns(row: EngagementRow): Omit<Engagement, 'designs'> {

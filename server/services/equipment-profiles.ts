@@ -4,6 +4,7 @@ import { copyIdOf } from '#contract/profiles.ts';
 import type { Profile } from '#engine/model/underlay.ts';
 import { authorise } from '../auth/authorise.ts';
 import { Refusal, notFound } from '../errors.ts';
+import { recordActivity } from '../repositories/activity.ts';
 import type { ProfileRow, ProfileUseRow } from '../repositories/equipment-profiles.ts';
 import {
   findProfile,
@@ -48,7 +49,17 @@ export async function createProfile(
         `The workspace has ${others.length} equipment profiles, expected at most ${limits.profiles}; change one that nobody uses instead.`,
       );
     }
-    return describe(trx, await insertProfile(trx, workspaceId, profile, personId, clock()));
+    const at = clock();
+    const id = await insertProfile(trx, workspaceId, profile, personId, at);
+    await recordActivity(trx, {
+      workspaceId,
+      at,
+      action: 'profile.changed',
+      personId,
+      object: { kind: 'profile', id, name: profile.name },
+      details: { made: 'yes' },
+    });
+    return describe(trx, id);
   });
 }
 
@@ -82,6 +93,17 @@ export async function changeProfile(
       personId,
       at,
     });
+    const isPutAway = isArchived !== (before.archivedAt !== null);
+    const isChanged = change.profile !== undefined && digestOf(change.profile) !== digestOf(before.profile);
+    if (isPutAway || isChanged)
+      await recordActivity(trx, {
+        workspaceId,
+        at,
+        action: 'profile.changed',
+        personId,
+        object: { kind: 'profile', id: profileId, name: (change.profile ?? before.profile).name },
+        details: isPutAway ? { archived: isArchived ? 'yes' : 'no' } : {},
+      });
     return describe(trx, profileId);
   });
 }

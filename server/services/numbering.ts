@@ -6,6 +6,7 @@ import type { DesignNumbers, NumberingContext } from '#engine/numbering/numberin
 import { numbersOf } from '#engine/numbering/numbers-of.ts';
 import { authorise } from '../auth/authorise.ts';
 import { Refusal, notFound } from '../errors.ts';
+import { recordActivity } from '../repositories/activity.ts';
 import type { NeighbourRow } from '../repositories/design-numbers.ts';
 import { findNumbers, listNeighbours } from '../repositories/design-numbers.ts';
 import type { DesignRow } from '../repositories/designs.ts';
@@ -65,7 +66,15 @@ export async function changePools(
         `${before.changedBy ?? 'Somebody'} has changed the pools since you read them; read them again, then make your change.`,
       );
     }
-    await putPools(trx, workspaceId, pools, personId, clock());
+    const at = clock();
+    await putPools(trx, workspaceId, pools, personId, at);
+    await recordActivity(trx, {
+      workspaceId,
+      at,
+      action: 'pools.changed',
+      personId,
+      object: { kind: 'workspace', id: workspaceId, name: 'Pools of numbers' },
+    });
     return workspacePoolsOf(await findPools(trx, workspaceId));
   });
 }

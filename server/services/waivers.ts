@@ -2,6 +2,7 @@ import type { Knex } from 'knex';
 import type { Waive, Waiver } from '#contract/waivers.ts';
 import { authorise } from '../auth/authorise.ts';
 import { Refusal, notFound } from '../errors.ts';
+import { recordActivity } from '../repositories/activity.ts';
 import type { DesignRow, OpenCounts } from '../repositories/designs.ts';
 import { findDesign, lockDesign, setOpenCounts } from '../repositories/designs.ts';
 import type { WaiverRow } from '../repositories/waivers.ts';
@@ -65,12 +66,22 @@ export function waiveFinding(
     }
     await withdrawWaivers(trx, designId, { finding_key: findingKey }, personId, at);
     const { rule, severity, sentence } = finding;
-    return insertWaiver(
+    const id = await insertWaiver(
       trx,
       { designId, findingKey, fingerprint, rule, severity, sentence, reason, expiresOn },
       personId,
       at,
     );
+    await recordActivity(trx, {
+      workspaceId: design.workspaceId,
+      at,
+      action: 'finding.waived',
+      personId,
+      object: { kind: 'waiver', id, name: sentence },
+      designId,
+      details: { design: design.title, reason, expiresOn },
+    });
+    return id;
   });
 }
 
@@ -81,8 +92,21 @@ export function withdrawWaiver(
   designId: string,
   waiverId: string,
 ): Promise<Waiver> {
-  return onDesign(context, personId, designId, async (trx) => {
-    await withdrawWaivers(trx, designId, { id: waiverId }, personId, context.clock());
+  return onDesign(context, personId, designId, async (trx, design) => {
+    const waiver = await findWaiver(trx, designId, waiverId);
+    if (waiver === null) throw notFound('waiver');
+    if (waiver.withdrawnAt !== null) return waiverId;
+    const at = context.clock();
+    await withdrawWaivers(trx, designId, { id: waiverId }, personId, at);
+    await recordActivity(trx, {
+      workspaceId: design.workspaceId,
+      at,
+      action: 'waiver.withdrawn',
+      personId,
+      object: { kind: 'waiver', id: waiverId, name: waiver.sentence },
+      designId,
+      details: { design: design.title },
+    });
     return waiverId;
   });
 }
