@@ -169,6 +169,17 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
     },
   ],
   [
+    'the review of a design, with a comment being written',
+    async (page) => {
+      await signInAs(page, 'reviewer');
+      await openSheet(page, 'with planted faults');
+      await goToPage(page, 'review');
+      await page.getByRole('button', { name: 'Comment on the design…' }).click();
+      await page.getByRole('textbox', { name: 'Comment' }).pressSequentially('See @');
+      await page.getByRole('option', { name: /Rosa Halloran/ }).waitFor();
+    },
+  ],
+  [
     'equipment profiles',
     async (page) => {
       await signInAs(page, 'owner');

@@ -122,11 +122,7 @@ export function CommentsDesk({ tools, onCommentDesign }: CommentsDeskProps) {
         </CellGrid>
         <div className="flex flex-wrap gap-8">
           {begin !== undefined && <Button onClick={begin}>Suggest a change</Button>}
-          {mayComment && (
-            <Button kind="primary" onClick={onCommentDesign}>
-              Comment on the design…
-            </Button>
-          )}
+          {mayComment && <Button onClick={onCommentDesign}>Comment on the design…</Button>}
         </div>
       </div>
       {error !== null && <ErrorNotice>{asApiError(error).message}</ErrorNotice>}

@@ -144,13 +144,14 @@ export function Composer({
           )}
         </FieldCell>
       </CellGrid>
-      <div className="relative">
+      <div>
         <ul
           id={listId}
           role="listbox"
           aria-label="People to mention"
           hidden={offered.length === 0}
-          className="absolute top-2 left-0 z-20 w-full max-w-320 border-1.5 border-ink bg-field py-4 shadow-sheet"
+          // In the flow, so that nothing it stands in cuts it off.
+          className="mt-2 max-h-200 overflow-y-auto border-1.5 border-ink bg-field py-4"
         >
           {offered.map((member, index) => (
             // The field keeps the focus and takes the keys; the pointer takes the rows.
