@@ -15,7 +15,7 @@ export interface JobRunnerOptions {
   readonly databaseUrl: string;
   readonly tasks: TaskList;
   /** Lines as of cron: when which task is to run by itself. */
-  readonly crontab?: string;
+  readonly crontab: string;
   readonly log: Logger;
 }
 
@@ -43,19 +43,23 @@ export function startJobRunner(options: JobRunnerOptions): JobRunner {
 
 /** Starts again whatever ends before it should: a database that was away comes back. */
 async function keepRunning(options: JobRunnerOptions, ended: AbortSignal): Promise<void> {
+  // Said once, not every other second.
+  let isTold = false;
   while (!ended.aborted) {
     try {
-      await runOnce(options, ended);
+      await runOnce(options, ended, () => (isTold = false));
     } catch (error) {
-      options.log.warn({ err: error }, 'jobs wait until the database answers');
+      if (!isTold) options.log.warn({ err: error }, 'jobs wait until the database answers');
+      isTold = true;
     }
     await delay(restartMs, undefined, { signal: ended }).catch(() => undefined);
   }
 }
 
 async function runOnce(
-  { databaseUrl, tasks, crontab = '', log }: JobRunnerOptions,
+  { databaseUrl, tasks, crontab, log }: JobRunnerOptions,
   ended: AbortSignal,
+  onRunning: () => void,
 ): Promise<void> {
   const connection = {
     connectionString: databaseUrl,
@@ -91,6 +95,7 @@ async function runOnce(
       logger: loggerOf(log),
       events,
     });
+    onRunning();
     await Promise.race([runner.promise, lost, sweeping(pool, ended)]);
   } finally {
     await runner?.stop().catch(() => undefined);

@@ -1,4 +1,4 @@
-import { Transform } from 'node:stream';
+import { Readable } from 'node:stream';
 import { createTransport } from 'nodemailer';
 import type { MailWords } from './mail-words.ts';
 import { htmlOf, textOf } from './render-mail.ts';
@@ -59,13 +59,9 @@ export function createMailSender({
   };
   return {
     async send({ messageId, to, words, date }, { beforeEnd, signal }) {
-      const holdBackEnd = new Transform({
-        transform: (chunk, _encoding, done) => done(null, chunk),
-        flush: (done) => void beforeEnd().then(() => done(), done),
-      });
       const transport = createTransport(settings);
       transport.use('stream', (mail, done) => {
-        mail.message.transform(holdBackEnd);
+        mail.message.processFunc((input) => Readable.from(endingAfter(input, beforeEnd)));
         done();
       });
       try {
@@ -86,6 +82,18 @@ export function createMailSender({
       }
     },
   };
+}
+
+/**
+ * The mail as it stands, its end held back until `beforeEnd` resolves. Read only once the server wants the mail's data: a
+ * stream that pushes would come to its end while recipients are still being asked about.
+ */
+async function* endingAfter(
+  mail: AsyncIterable<Uint8Array | string>,
+  beforeEnd: () => Promise<void>,
+): AsyncGenerator<Uint8Array | string> {
+  yield* mail;
+  await beforeEnd();
 }
 
 interface SmtpError {
