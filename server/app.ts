@@ -18,6 +18,7 @@ import { lastSeen } from './middleware/last-seen.ts';
 import { requestLog } from './middleware/request-log.ts';
 import { securityHeaders } from './middleware/security-headers.ts';
 import { accountRoutes } from './routes/account-routes.ts';
+import { activityRoutes } from './routes/activity-routes.ts';
 import { apiDescriptionRoutes } from './routes/api-description-routes.ts';
 import { commentRoutes } from './routes/comment-routes.ts';
 import { designRoutes } from './routes/design-routes.ts';
@@ -84,6 +85,11 @@ export function createApp({
 
   app.use(requestLog(log));
   app.use(securityHeaders(config));
+  // Nothing here is for search engines: plans, links to them, and pages that ask for a password.
+  app.use((_req, res, next) => {
+    res.setHeader('X-Robots-Tag', 'noindex, nofollow');
+    next();
+  });
   app.use('/api', (_req, res, next) => {
     res.setHeader('Cache-Control', 'no-store');
     next();
@@ -98,6 +104,7 @@ export function createApp({
   app.use(accountRoutes(context, throttles));
   app.use(passwordResetRoutes(context, throttles));
   app.use(workspaceRoutes(context, throttles));
+  app.use(activityRoutes(context));
   app.use(invitationRoutes(context, throttles));
   app.use(mailRoutes(context, { isKeeping: config.smtpUrl === null }));
   app.use(engagementRoutes(context));

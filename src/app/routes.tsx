@@ -22,6 +22,11 @@ export const routes: RouteObject[] = [
         lazy: async () => ({ Component: (await import('../pages/invitation-page.tsx')).InvitationPage }),
       },
       {
+        path: 'share/:token',
+        ErrorBoundary: PageError,
+        lazy: async () => ({ Component: (await import('../pages/shared-page.tsx')).SharedPage }),
+      },
+      {
         path: 'reset',
         ErrorBoundary: PageError,
         lazy: async () => ({ Component: (await import('../pages/ask-for-reset-page.tsx')).AskForResetPage }),
@@ -100,6 +105,11 @@ export const routes: RouteObject[] = [
                     lazy: async () => ({
                       Component: (await import('../pages/segments-page.tsx')).SegmentsPage,
                     }),
+                  },
+                  {
+                    path: 'shares',
+                    ErrorBoundary: PageError,
+                    lazy: async () => ({ Component: (await import('../pages/shares-page.tsx')).SharesPage }),
                   },
                   {
                     path: 'checks',

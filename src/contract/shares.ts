@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { severities } from '../engine/rules/finding.ts';
 import { countsSchema } from './designs.ts';
 import { linkTokenSchema } from './invitations.ts';
 import { oneLineSchema } from './one-line.ts';
@@ -96,7 +97,7 @@ export const sharedViewSchema = z.object({
   findings: z
     .object({
       counts: countsSchema,
-      open: z.array(z.object({ severity: z.string(), sentence: z.string() })),
+      open: z.array(z.object({ severity: z.enum(severities), sentence: z.string() })),
       waived: z.array(z.object({ sentence: z.string(), reason: z.string(), expiresOn: z.string() })),
     })
     .nullable(),

@@ -48,6 +48,13 @@ export async function fetchFile(path: string, signal: AbortSignal): Promise<Blob
   return response.blob();
 }
 
+/** A file that the server makes of what is sent. */
+export async function postForFile(path: string, body: unknown, signal: AbortSignal): Promise<Blob> {
+  const response = await sendSafely(path, { method: 'POST', body, signal });
+  if (!response.ok) throw await refusalOf(response);
+  return response.blob();
+}
+
 /** A request whose answer carries nothing. */
 export async function callApiForNothing(path: string, call: Call): Promise<void> {
   const response = await sendSafely(path, call);

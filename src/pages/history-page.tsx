@@ -1,6 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState, type ReactNode } from 'react';
-import { Button } from '../components/button.tsx';
+import { Link } from 'react-router-dom';
+import { Button, buttonClasses } from '../components/button.tsx';
 import { CellGrid } from '../components/cell.tsx';
 import { ErrorNotice } from '../components/notice.tsx';
 import { readPoint, writePoint, type HistoryPoint } from '../features/revisions/history-point.ts';
@@ -13,6 +14,7 @@ import { asApiError } from '../lib/api-error.ts';
 import { usePageTitle } from '../lib/page-title.ts';
 import { may, useMembership } from '../lib/session.ts';
 import { useSearchValues } from '../lib/use-search-values.ts';
+import { designPath } from '../lib/workspace-path.ts';
 import { useDesignPlace } from '../workspace/design-place.tsx';
 import { openDesignQuery } from '../workspace/open-design-query.ts';
 import { useOpenState } from '../workspace/open-design-context.tsx';
@@ -96,6 +98,11 @@ export function HistoryPage() {
           />
         </CellGrid>
         <div className="flex gap-8">
+          {may(membership, 'share.manage') && (
+            <Link to={`${designPath(designId)}/shares`} className={buttonClasses({})}>
+              Links for guests
+            </Link>
+          )}
           {isComparing && <Button onClick={() => compare(to, from)}>Swap</Button>}
           {(valueOf('from') !== '' || valueOf('to') !== '') && (
             <Button onClick={() => change({ from: '', to: '' })}>Back to the history</Button>

@@ -34,6 +34,14 @@ export function RevisionBar({
       </BarCell>
       {may(membership, 'design.read') && (
         <div className="ml-auto flex shrink-0 items-center gap-8 pl-8">
+          {may(membership, 'share.manage') && isShareable(revision.state) && (
+            <Link
+              to={`${designPath(revision.designId)}/shares?revision=${revision.id}`}
+              className={buttonClasses({ small: true })}
+            >
+              Share…
+            </Link>
+          )}
           <Link to={`${designPath(revision.designId)}/history`} className={buttonClasses({ small: true })}>
             History
           </Link>
@@ -45,3 +53,6 @@ export function RevisionBar({
     </BarContents>
   );
 }
+
+const isShareable = (state: FrozenRevision['revision']['state']): boolean =>
+  state === 'in-review' || state === 'approved' || state === 'built';

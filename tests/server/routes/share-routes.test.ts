@@ -208,3 +208,10 @@ test('only what is an address is left out of a text', () => {
     ),
   ).toBe('From (left out) to (left out) by (left out) at 10:30, version 7.2.1, 52:54:00:12:34:56.');
 });
+
+test('no search engine is to keep any of it', async () => {
+  for (const path of ['/api/session', '/share/x', '/sign-in']) {
+    const { headers } = await guest.get(path);
+    expect(headers['x-robots-tag']).toBe('noindex, nofollow');
+  }
+});
