@@ -61,7 +61,7 @@ describe('arranging a sheet', () => {
     // A right press opens its menu where it was, on what stays there; the inspector comes when the menu is gone.
     const inspector = page.getByRole('complementary', { name: 'Inspector' });
     await page.keyboard.press('Escape');
-    await page.getByRole('button', { name: 'Inspector', exact: true }).click();
+    await page.getByRole('button', { name: 'Show the inspector' }).click();
     await inspector.waitFor({ state: 'hidden' });
     await page.getByRole('button', { name: 'Fit', exact: true }).click();
     await atRest(page);
@@ -190,6 +190,9 @@ describe('arranging a sheet', () => {
     });
 
     // Who gives up the words of a new note has none.
+    await page.keyboard.press('Escape');
+    await node(page, 'devices/fw-gul').focus();
+    await page.keyboard.press('Enter');
     await page.keyboard.press('Shift+N');
     await text.waitFor();
     await page.keyboard.press('Escape');

@@ -1,32 +1,25 @@
-import { Button } from '../../components/button.tsx';
 import type { Entry } from '../../engine/model/design.ts';
-import { joinPatches, patchAt } from '../../engine/model/merge-patch.ts';
+import { patchAt } from '../../engine/model/merge-patch.ts';
 import { associationPath } from '../../engine/network/association-path.ts';
 import { canComeUp } from '../../engine/network/can-come-up.ts';
-import { negotiate, type Agreement } from '../../engine/network/negotiate.ts';
 import { ends, otherEnd, type End } from '../../engine/network/network.ts';
-import { proposalName, type EspProposal, type IkeProposal } from '../../engine/rules/algorithm-names.ts';
+import { Proposals, Selectors, type Heads } from './association-offers.tsx';
 import { usualLiveness } from '../../engine/rules/strong-suite.ts';
-import { listed } from '../../engine/rules/wording.ts';
 import { CellGrid, ReadCell } from '../../components/cell.tsx';
-import { useOpenState } from '../../workspace/open-design-context.tsx';
 import { useNetwork } from './carried-segments.tsx';
 import { lifetime } from '../../lib/duration-text.ts';
 import { ElementLink, ElementList } from './element-link.tsx';
 import { endHeads } from './end-heads.ts';
 import { LongTextField, SelectField, TextField, Unknown, YesNoField } from './fields.tsx';
 import { FindingBoxes } from './finding-box.tsx';
-import { Mirror, MirrorRow, type EndHead } from './mirror.tsx';
+import { Mirror, MirrorRow } from './mirror.tsx';
 import { PanelHead } from './panel-head.tsx';
-import { ProposalList } from './proposal-list.tsx';
 import { Section } from './section.tsx';
-import { SelectorList } from './selector-list.tsx';
-import { useCommit, useEditable } from './use-field.ts';
+import { useCommit } from './use-field.ts';
 import { ViaList } from './via-list.tsx';
 import { wholeNumber } from '../../lib/written-value.ts';
 
 type Association = Entry<'associations'>;
-type Heads = { readonly [E in End]: EndHead };
 
 const count = wholeNumber();
 const ikeVersions = [
@@ -297,93 +290,5 @@ function RenewalRows({ id, association, heads }: RowsProps) {
         {({ end: _end, ...cell }) => <TextField label="NAT keepalive" {...cell} writing={lifetime} />}
       </MirrorRow>
     </>
-  );
-}
-
-const agreementWords = (agreement: Agreement<IkeProposal | EspProposal>): string => {
-  if (agreement.state === 'agreed') return `Both ends settle on ${proposalName(agreement.proposal)}.`;
-  if (agreement.state === 'unknown') return 'An end does not say what it proposes.';
-  return agreement.parts.length === 0
-    ? 'No proposal of one end fits one of the other as a whole.'
-    : `The ends have no ${listed(agreement.parts)} in common.`;
-};
-
-function Proposals({
-  id,
-  layer,
-  heads,
-}: {
-  readonly id: string;
-  readonly layer: 'ike' | 'esp';
-  readonly heads: Heads;
-}) {
-  const document = useOpenState((state) => state.document);
-  const editable = useEditable();
-  const commit = useCommit();
-  const association = document.associations[id];
-  if (association === undefined) return null;
-  const field = layer === 'ike' ? 'ikeProposals' : 'espProposals';
-  const word = layer === 'ike' ? 'IKE' : 'ESP';
-  const agreement = negotiate(association)[layer];
-  return (
-    <Section
-      title={`${word} proposals`}
-      open={agreement.state === 'differ'}
-      about={ends.map((end) => ['associations', id, end, field])}
-    >
-      <p className={agreement.state === 'differ' ? 'text-note text-red' : 'text-note text-ink-2'}>
-        {agreementWords(agreement)}
-      </p>
-      {ends.map((end) => (
-        <div key={end} className="flex flex-col gap-4">
-          <h4 className="text-note text-ink-2">{heads[end].place}</h4>
-          <ProposalList path={['associations', id, end, field]} layer={layer} place={heads[end].place} />
-          {editable && association[otherEnd(end)][field] !== undefined && (
-            <Button
-              kind="quiet"
-              small
-              className="self-start"
-              onClick={() =>
-                commit(
-                  `${word} proposals of ${association.name} at ${heads[end].place}`,
-                  joinPatches(document, [
-                    patchAt(['associations', id, end, field], null),
-                    patchAt(['associations', id, end, field], association[otherEnd(end)][field]),
-                  ]),
-                )
-              }
-            >
-              Take over from {heads[otherEnd(end)].place}
-            </Button>
-          )}
-        </div>
-      ))}
-    </Section>
-  );
-}
-
-function Selectors({ id, heads }: { readonly id: string; readonly heads: Heads }) {
-  const network = useNetwork();
-  const association = network.design.associations[id]!;
-  const loopback = (device: string): string => {
-    const endpoint = network.design.endpoints[network.endpointsByDevice.get(device)?.[0] ?? ''];
-    return endpoint?.ipv4 ?? endpoint?.ipv6 ?? '0.0.0.0/0';
-  };
-  return (
-    <Section title="Selectors" open={false} about={ends.map((end) => ['associations', id, end, 'selectors'])}>
-      {ends.map((end) => (
-        <div key={end} className="flex flex-col gap-4">
-          <h4 className="text-note text-ink-2">{heads[end].place}</h4>
-          <SelectorList
-            path={['associations', id, end, 'selectors']}
-            place={heads[end].place}
-            suggested={{
-              local: loopback(association[end].device),
-              remote: loopback(association[otherEnd(end)].device),
-            }}
-          />
-        </div>
-      ))}
-    </Section>
   );
 }
