@@ -19,11 +19,12 @@ export const sharedQuery = (key: ShareKey) =>
     refetchOnReconnect: false,
   });
 
-/** One of its sheets, as an address that the browser can draw. */
+/** One of its sheets as SVG. */
 export const sharedSheetQuery = (key: ShareKey, look: 'paper' | 'slate', sheet: number) =>
   queryOptions({
     queryKey: ['share-sheet', key.token, key.passphrase ?? '', look, sheet],
-    queryFn: ({ signal }) => postForFile('/api/share/sheet', { ...key, look, sheet }, signal),
+    queryFn: async ({ signal }) =>
+      (await postForFile('/api/share/sheet', { ...key, look, sheet }, signal)).text(),
     staleTime: Infinity,
     retry: false,
     refetchOnWindowFocus: false,

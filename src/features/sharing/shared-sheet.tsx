@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { useEffect, useState } from 'react';
+import { useMemo, useState } from 'react';
 import { Button } from '../../components/button.tsx';
 import { ErrorNotice } from '../../components/notice.tsx';
 import { SegmentedChoice } from '../../components/segmented-choice.tsx';
@@ -25,7 +25,12 @@ export function SharedSheet({ shareKey, title, sheets }: SharedSheetProps) {
   const [size, setSize] = useState<(typeof sizes)[number]['value']>('fit');
   const theme = useTheme();
   const drawn = useQuery(sharedSheetQuery(shareKey, theme === 'slate' ? 'slate' : 'paper', sheet));
-  const address = useObjectUrl(drawn.data);
+  const svg = drawn.data;
+  // Drawn as a picture it can do nothing but be looked at.
+  const address = useMemo(
+    () => (svg === undefined ? undefined : `data:image/svg+xml,${encodeURIComponent(svg)}`),
+    [svg],
+  );
   return (
     <section aria-label="Sheet" className="border-1.5 border-ink bg-desk">
       <div className="flex flex-wrap items-center gap-10 border-b border-rule-2 bg-panel px-14 py-8">
@@ -44,8 +49,11 @@ export function SharedSheet({ shareKey, title, sheets }: SharedSheetProps) {
         <Button
           small
           className="ml-auto"
-          disabled={drawn.data === undefined}
-          onClick={() => drawn.data !== undefined && download(`${title}, sheet ${sheet}.svg`, drawn.data)}
+          disabled={svg === undefined}
+          onClick={() =>
+            svg !== undefined &&
+            download(`${title}, sheet ${sheet}.svg`, new Blob([svg], { type: 'image/svg+xml' }))
+          }
         >
           Save as SVG
         </Button>
@@ -78,18 +86,4 @@ export function SharedSheet({ shareKey, title, sheets }: SharedSheetProps) {
       </div>
     </section>
   );
-}
-
-function useObjectUrl(blob: Blob | undefined): string | undefined {
-  const [address, setAddress] = useState<string>();
-  useEffect(() => {
-    if (blob === undefined) return;
-    const made = URL.createObjectURL(blob);
-    setAddress(made);
-    return () => {
-      URL.revokeObjectURL(made);
-      setAddress(undefined);
-    };
-  }, [blob]);
-  return address;
 }
