@@ -1,3 +1,5 @@
+import { costHeap } from './cost-heap.ts';
+
 /** A node of the search: a crossing of two grid lines, entered in one direction, before or after the goal's condition held. */
 export interface GridSearch {
   readonly xs: readonly number[];
@@ -11,6 +13,10 @@ export interface GridSearch {
   readonly fulfils?: (column: number, row: number, direction: Direction) => boolean;
   readonly bendCost: number;
   readonly leastCostPerPx: number;
+  /** Never more than what the way from a crossing to the goal costs; absent: the distance at the least cost. */
+  readonly leastCostFrom?: (column: number, row: number) => number;
+  /** After so many crossings without an end the search is given up; absent: never. */
+  readonly mostLookedAt?: number;
 }
 
 /** 0 right, 1 down, 2 left, 3 up. */
@@ -21,62 +27,6 @@ export const stepOf: { readonly [direction in Direction]: readonly [number, numb
   1: [0, 1],
   2: [-1, 0],
   3: [0, -1],
-};
-
-/** Binary heap of (cost, node); the node number breaks ties. */
-const costHeap = () => {
-  let costs = new Float64Array(1024);
-  let nodes = new Int32Array(1024);
-  let size = 0;
-  return {
-    clear: (): void => {
-      size = 0;
-    },
-    isEmpty: (): boolean => size === 0,
-    push: (cost: number, node: number): void => {
-      if (size === costs.length) {
-        const [moreCosts, moreNodes] = [new Float64Array(2 * size), new Int32Array(2 * size)];
-        moreCosts.set(costs);
-        moreNodes.set(nodes);
-        [costs, nodes] = [moreCosts, moreNodes];
-      }
-      let i = size;
-      size += 1;
-      while (i > 0) {
-        const parent = (i - 1) >> 1;
-        const above = costs[parent]!;
-        if (above < cost || (above === cost && nodes[parent]! <= node)) break;
-        costs[i] = above;
-        nodes[i] = nodes[parent]!;
-        i = parent;
-      }
-      costs[i] = cost;
-      nodes[i] = node;
-    },
-    pop: (): number => {
-      const top = nodes[0]!;
-      size -= 1;
-      const cost = costs[size]!;
-      const node = nodes[size]!;
-      let i = 0;
-      for (let left = 1; left < size; left = 2 * i + 1) {
-        const beside = left + 1;
-        const isBesideLess =
-          beside < size &&
-          (costs[beside]! < costs[left]! ||
-            (costs[beside]! === costs[left]! && nodes[beside]! < nodes[left]!));
-        const child = isBesideLess ? beside : left;
-        const below = costs[child]!;
-        if (below > cost || (below === cost && nodes[child]! >= node)) break;
-        costs[i] = below;
-        nodes[i] = nodes[child]!;
-        i = child;
-      }
-      costs[i] = cost;
-      nodes[i] = node;
-      return top;
-    },
-  };
 };
 
 // A sheet takes many searches, and clearing lists of their size would cost more than most of them: what an earlier search left
@@ -115,8 +65,10 @@ export const searchGrid = (
 
   const goalX = xs[goal.column]!;
   const goalY = ys[goal.row]!;
-  const estimate = (column: number, row: number): number =>
-    (Math.abs(xs[column]! - goalX) + Math.abs(ys[row]! - goalY)) * search.leastCostPerPx;
+  const estimate =
+    search.leastCostFrom ??
+    ((column: number, row: number): number =>
+      (Math.abs(xs[column]! - goalX) + Math.abs(ys[row]! - goalY)) * search.leastCostPerPx);
   const reach = (node: number, cost: number, before: number): void => {
     if (searchOf[node] !== now) done[node] = 0;
     searchOf[node] = now;
@@ -127,10 +79,12 @@ export const searchGrid = (
   const first = number(start.column, start.row, start.direction, 0);
   reach(first, 0, -1);
   open.push(estimate(start.column, start.row), first);
-  while (!open.isEmpty()) {
+  let lookedAt = 0;
+  while (!open.isEmpty() && lookedAt < (search.mostLookedAt ?? Infinity)) {
     const node = open.pop();
     if (done[node] === 1) continue;
     done[node] = 1;
+    lookedAt += 1;
     const fulfilled = node & 1;
     const direction = ((node >> 1) & 3) as Direction;
     const cell = node >> 3;

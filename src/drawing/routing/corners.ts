@@ -49,14 +49,13 @@ const runsOf = (ways: readonly Way[]): readonly Run[] =>
         }),
   );
 
+/** A jacket between two manifolds runs into the other one's mouth along its trunk. */
+const joins = ({ cord }: Way, trunk: string | undefined): boolean =>
+  trunk !== undefined && (cord.a.endpoint === trunk || cord.b.endpoint === trunk);
+
 /** True when two runs belong together: of one way, or of one trunk and its branches. */
-const isSameStem = (ways: readonly Way[], p: Run, q: Run): boolean => {
-  if (p.way === q.way) return true;
-  // A jacket between two manifolds runs into the other one's mouth along its trunk.
-  const joins = (way: Way, trunk: string | undefined): boolean =>
-    trunk !== undefined && (way.cord.a.endpoint === trunk || way.cord.b.endpoint === trunk);
-  return joins(ways[p.way]!, q.trunk) || joins(ways[q.way]!, p.trunk);
-};
+const isSameStem = (ways: readonly Way[], p: Run, q: Run): boolean =>
+  p.way === q.way || joins(ways[p.way]!, q.trunk) || joins(ways[q.way]!, p.trunk);
 
 /**
  * Every place where ways meet: crossings, the later way above but a trunk below all, and stretches that overlap. A trunk
@@ -81,14 +80,15 @@ export const meetings = (
     for (let j = i + 1; j < runs.length; j += 1) {
       const p = runs[i]!;
       const q = runs[j]!;
-      if (isSameStem(ways, p, q)) continue;
       if (p.level === q.level) {
         const close = Math.abs(p.at - q.at) < (p.width + q.width) / 2 - 0.6;
-        if (close && Math.min(p.to, q.to) - Math.max(p.from, q.from) > 1 && isFirst(p, q, 'beside'))
+        if (!close || Math.min(p.to, q.to) - Math.max(p.from, q.from) <= 1) continue;
+        if (!isSameStem(ways, p, q) && isFirst(p, q, 'beside'))
           overlaps.push({ ways: [p.way, q.way], runs: [p.run, q.run] });
         continue;
       }
       if (q.at <= p.from || q.at >= p.to || p.at <= q.from || p.at >= q.to) continue;
+      if (isSameStem(ways, p, q)) continue;
       const at = p.level ? { x: q.at, y: p.at } : { x: p.at, y: q.at };
       if (!isFirst(p, q, `${at.x} ${at.y}`)) continue;
       const [under, over] = q.trunk !== undefined && p.trunk === undefined ? [q, p] : [p, q];

@@ -4,8 +4,10 @@ import type { Direction, GridSearch } from './a-star.ts';
 import { isReachable, searchGrid, stepOf } from './a-star.ts';
 import { gridCosts } from './grid-costs.ts';
 import { bandRects } from './bands.ts';
+import { farField } from './far-field.ts';
+import type { FarField, Region } from './far-field.ts';
 import type { Cord, Corners, Ground, Mouth } from './ground.ts';
-import { bandOf, foreignBands, isLevelRun, isOwn } from './ground.ts';
+import { bandOf, foreignBands, isLevelRun, isOwn, obstacleIndex } from './ground.ts';
 import type { KnownRun, KnownRuns } from './known-runs.ts';
 import { bottom, centre, contains, grown, outward, overlap, right } from './rects.ts';
 
@@ -109,7 +111,40 @@ const outsideOf = ({ x, y, width, height }: Rect): readonly Rect[] => [
 interface Trial {
   readonly clearance: number;
   readonly window: Rect | undefined;
+  /** Present on a large sheet: leads the search round bands. */
+  readonly field?: FarField;
 }
+
+/** On a sheet with more obstacles a search looks at its surroundings first, and never at the whole sheet. */
+const mostSeenWhole = 300;
+/** How far beyond the ends and the way between the bands a search on such a sheet looks. */
+const largeReaches = [windowReach, 3 * windowReach] as const;
+
+/**
+ * On such a sheet what lies ahead counts for more than it costs at least, so that fewer ways are followed that lead elsewhere;
+ * where that takes too many looks, for so much more that the search goes straight for its goal.
+ */
+const eagerness = [
+  { share: 1.2, mostLookedAt: 6_000 },
+  { share: 8, mostLookedAt: Infinity },
+] as const;
+
+export const isLargeGround = (ground: Ground): boolean => ground.obstacles.length > mostSeenWhole;
+
+const ownRects = (ground: Ground, transport: string | undefined): readonly Rect[] => {
+  const band = bandOf(ground, transport);
+  return band === undefined ? [] : bandRects(band);
+};
+
+/** What a search pays in bands, for a look ahead. */
+const regionsFor = (
+  ground: Ground,
+  transport: string | undefined,
+  manner: SearchManner,
+): readonly Region[] => [
+  ...foreignBands(ground, transport).map((rect) => ({ rect, costPerPx: manner.foreignBand * manner.open })),
+  ...ownRects(ground, transport).map((rect) => ({ rect, costPerPx: manner.ownBand })),
+];
 
 const attempt = (
   ground: Ground,
@@ -118,15 +153,14 @@ const attempt = (
   known: readonly KnownRun[],
   avoided: readonly Rect[],
   manner: SearchManner,
-  { clearance, window }: Trial,
+  { clearance, window, field }: Trial,
 ): Corners | undefined => {
   const half = cord.width / 2;
   const [p, q] = stubs;
-  const band = bandOf(ground, cord.transport);
-  const own = band === undefined ? [] : bandRects(band);
+  const own = ownRects(ground, cord.transport);
   const needsBand = manner.throughBand && own.length > 0;
   const within = (rect: Rect): boolean => window === undefined || overlap(window, rect);
-  const obstacles = ground.obstacles.filter((o) => within(o.rect));
+  const obstacles = window === undefined ? ground.obstacles : obstacleIndex(ground.obstacles).over(window);
   const frames = ground.frames.filter((f) => within(f.rect));
   const foreign = foreignBands(ground, cord.transport);
   const xs: number[] = [p.x, q.x];
@@ -208,7 +242,15 @@ const attempt = (
     costs.weigh(along, manner.alongRun);
   }
 
-  const way = searchGrid(search);
+  const ahead = field?.leastCostsOver(columns, rows);
+  let way = ahead === undefined ? searchGrid(search) : undefined;
+  if (ahead !== undefined)
+    for (const { share, mostLookedAt } of eagerness)
+      way ??= searchGrid({
+        ...search,
+        leastCostFrom: (column, row) => share * ahead(column, row),
+        mostLookedAt,
+      });
   if (way === undefined) return undefined;
   return withoutIdlePoints([
     cord.a.at,
@@ -237,6 +279,35 @@ export const withoutIdlePoints = (corners: Corners): Corners => {
   return kept;
 };
 
+/** The same on a large sheet: within reach of the way that the bands leave. */
+const farDetour = (
+  ground: Ground,
+  cord: Cord,
+  stubs: readonly [Point, Point],
+  known: KnownRuns,
+  avoided: readonly Rect[],
+  manner: SearchManner,
+): Corners | undefined => {
+  const [p, q] = stubs;
+  const field = farField(q, regionsFor(ground, cord.transport, manner), manner.open, [p]);
+  const room = field.roomOfWayFrom(p);
+  if (room === undefined) return undefined;
+  const tries = [
+    ...largeReaches.map((reach) => ({ reach, clearance: manner.clearances[0]! })),
+    { reach: largeReaches[0], clearance: manner.clearances.at(-1)! },
+  ];
+  for (const { reach, clearance } of tries) {
+    const window = grown(room, reach);
+    const found = attempt(ground, cord, stubs, known.near(window), avoided, manner, {
+      clearance,
+      window,
+      field,
+    });
+    if (found !== undefined) return found;
+  }
+  return undefined;
+};
+
 /** The cheapest way round whatever stands between two mouths and through their own band; undefined where there is none. */
 export const detour = (
   ground: Ground,
@@ -248,6 +319,7 @@ export const detour = (
   const p = stubOf(ground, cord, cord.a, manner);
   const q = stubOf(ground, cord, cord.b, manner);
   if (p === undefined || q === undefined) return undefined;
+  if (isLargeGround(ground)) return farDetour(ground, cord, [p, q], known, avoided, manner);
   const band = bandOf(ground, cord.transport);
   const points = [cord.a.at, cord.b.at];
   const x0 = Math.min(...points.map((point) => point.x));

@@ -1,8 +1,8 @@
-import type { Rect } from '../geometry.ts';
+import type { Point, Rect } from '../geometry.ts';
 import type { BandPlace } from './bands.ts';
 import { meetings } from './corners.ts';
 import type { WayCrossing, WayOverlap } from './corners.ts';
-import { detour, withoutIdlePoints } from './detour.ts';
+import { detour, isLargeGround, withoutIdlePoints } from './detour.ts';
 import type { Cord, Corners, Ground, Mouth, Way } from './ground.ts';
 import { isTrunkRun, wayIsBlocked } from './ground.ts';
 import { runRegister, runsOfWays } from './known-runs.ts';
@@ -12,6 +12,7 @@ import { settleTracks } from './tracks.ts';
 import type { TrackedWays } from './tracks.ts';
 
 const mostRipUps = 6;
+const mostLargeRipUps = 1;
 const mostIdleRipUps = 2;
 const mostWidenings = 3;
 const bandToFrame = 20;
@@ -26,17 +27,24 @@ export interface RoutedCords {
   readonly tracked: TrackedWays;
 }
 
-/** Searches done before with the same band, the same known ways and the same ground to avoid. */
-type Searches = Map<string, Corners | undefined>;
+/** Searches done before with the same bands, the same known ways and the same ground to avoid. */
+interface Searches {
+  readonly done: Map<string, Corners | undefined>;
+  /** Numbers for what was known: each for one way more than an earlier one. */
+  readonly states: Map<string, number>;
+}
 
-const signature = (ground: Ground, cord: Cord, known: readonly Way[], avoid: readonly Rect[]): string =>
-  JSON.stringify([
-    cord.key,
-    cord.width,
-    ground.bands.map((band) => band.limbs.map((limb) => [limb.x, limb.width, limb.y, limb.height])),
-    known.map((way) => way.corners.map(({ x, y }) => [x, y])),
-    avoid.map(({ x, y, width, height }) => [x, y, width, height]),
-  ]);
+const noSearches = (): Searches => ({ done: new Map(), states: new Map() });
+
+const numberOf = (states: Map<string, number>, state: unknown): number => {
+  const key = JSON.stringify(state);
+  const number = states.get(key) ?? states.size;
+  states.set(key, number);
+  return number;
+};
+
+const flat = (corners: Corners): readonly number[] => corners.flatMap(({ x, y }) => [x, y]);
+const flatRect = ({ x, y, width, height }: Rect): readonly number[] => [x, y, width, height];
 
 /** Patterns first, then a search for each cord that has none, in the order of their keys. */
 const firstWays = (
@@ -51,21 +59,25 @@ const firstWays = (
     const corners = patternWay(ground, cord);
     if (corners !== undefined) ways.set(cord.key, { cord, corners, found: 'pattern' });
   }
+  const known = runRegister(runsOfWays([...ways.values()]));
+  let state = numberOf(searches.states, [
+    ground.bands.map((band) => band.limbs.map(flatRect)),
+    [...ways.values()].map((way) => flat(way.corners)),
+  ]);
   for (const cord of cords) {
     if (ways.has(cord.key)) continue;
-    const known = [...ways.values()].filter((way) => way.found !== 'none');
     const avoid = avoided.get(cord.key) ?? [];
-    const key = signature(ground, cord, known, avoid);
-    const corners = searches.has(key)
-      ? searches.get(key)
-      : detour(ground, cord, runRegister(runsOfWays(known)), avoid);
-    searches.set(key, corners);
-    ways.set(
-      cord.key,
+    const key = JSON.stringify([state, cord.key, cord.width, avoid.map(flatRect)]);
+    const corners = searches.done.has(key) ? searches.done.get(key) : detour(ground, cord, known, avoid);
+    searches.done.set(key, corners);
+    const way: Way =
       corners === undefined
         ? { cord, corners: [cord.a.at, cord.b.at], found: 'none' }
-        : { cord, corners, found: 'search' },
-    );
+        : { cord, corners, found: 'search' };
+    ways.set(cord.key, way);
+    if (corners === undefined) continue;
+    known.add(runsOfWays([way]));
+    state = numberOf(searches.states, [state, flat(corners)]);
   }
   return cords.map((cord) => ways.get(cord.key)!);
 };
@@ -180,7 +192,7 @@ const lessBound = (
 export const bandNeeds = (ground: Ground, cords: readonly Cord[]): ReadonlyMap<string, number> => {
   const plain = cords.filter((cord) => patternWay(ground, cord) !== undefined);
   const measured = cords.length - plain.length > mostMeasuredSearches ? plain : cords;
-  return settleTracks(ground, firstWays(ground, measured, new Map(), new Map())).needs;
+  return settleTracks(ground, firstWays(ground, measured, new Map(), noSearches())).needs;
 };
 
 /**
@@ -190,9 +202,9 @@ export const bandNeeds = (ground: Ground, cords: readonly Cord[]): ReadonlyMap<s
 export const routeCords = (
   start: Ground,
   cords: readonly Cord[],
-  ripUps: number = mostRipUps,
+  ripUps: number = isLargeGround(start) ? mostLargeRipUps : mostRipUps,
 ): RoutedCords => {
-  const searches: Searches = new Map();
+  const searches = noSearches();
   let avoided = new Map<string, readonly Rect[]>();
   let state = settle(start, cords, avoided, searches);
   let best = state;
@@ -228,6 +240,42 @@ export const routeCords = (
   return { ways, bands: best.ground.bands, ...meetings(ways), tracked: best.tracked };
 };
 
+/** Where a step of a drag loosens more cords than this, or the sheet is large, each takes the first way at hand until the drop. */
+const mostRoutedInAStep = 12;
+
+/** A way before: the same shape, its ends drawn after their mouths. */
+const drawnAfter = (cord: Cord, corners: Corners): Corners | undefined => {
+  if (corners.length < 4) return undefined;
+  const last = corners.length - 1;
+  const upright = (run: number): boolean => Math.abs(corners[run]!.x - corners[run + 1]!.x) < 0.01;
+  return corners.map((corner, i): Point => {
+    if (i === 0) return cord.a.at;
+    if (i === last) return cord.b.at;
+    let { x, y } = corner;
+    if (i === 1) [x, y] = upright(0) ? [cord.a.at.x, y] : [x, cord.a.at.y];
+    if (i === last - 1) [x, y] = upright(last - 1) ? [cord.b.at.x, y] : [x, cord.b.at.y];
+    return { x, y };
+  });
+};
+
+/** A plain way into the band, or the last one with its ends moved; a leader where neither is free. */
+const quickWay = (ground: Ground, cord: Cord, before: Way | undefined): Way => {
+  const plain = patternWay(ground, cord);
+  const moved =
+    before === undefined || before.found === 'none' ? undefined : drawnAfter(cord, before.corners);
+  const ways: readonly Way[] = [
+    ...(plain === undefined ? [] : [{ cord, corners: plain, found: 'pattern' as const }]),
+    ...(moved === undefined ? [] : [{ cord, corners: moved, found: 'search' as const }]),
+  ];
+  return (
+    ways.find((way) => !wayIsBlocked(ground, way, -0.75)) ?? {
+      cord,
+      corners: [cord.a.at, cord.b.at],
+      found: 'none',
+    }
+  );
+};
+
 const sameMouth = (a: Mouth, b: Mouth): boolean =>
   a.at.x === b.at.x && a.at.y === b.at.y && a.side === b.side;
 
@@ -247,9 +295,13 @@ export const routeAround = (ground: Ground, cords: readonly Cord[], before: Rout
   };
   const kept = new Map(cords.map((cord) => [cord.key, keptWay(cord)]));
   const loose = cords.filter((cord) => kept.get(cord.key) === undefined);
-  const routed = new Map(
-    (loose.length === 0 ? [] : routeCords(ground, loose, 0).ways).map((way) => [way.cord.key, way]),
-  );
+  const laid =
+    isLargeGround(ground) || loose.length > mostRoutedInAStep
+      ? loose.map((cord) => quickWay(ground, cord, held.get(cord.key)))
+      : loose.length === 0
+        ? []
+        : routeCords(ground, loose, 0).ways;
+  const routed = new Map(laid.map((way) => [way.cord.key, way]));
   const ways = cords.map((cord) => kept.get(cord.key) ?? routed.get(cord.key)!);
   return { ways, bands: ground.bands, ...meetings(ways), tracked: before.tracked };
 };

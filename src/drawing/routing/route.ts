@@ -12,6 +12,7 @@ import { cableBoxes, jacketBoxes, occupied, siteNameRect, solidBoxes, trunkBoxes
 import { placeLandingLabels, placeRingLabels } from './labels.ts';
 import { trunkGeometries } from './trunks.ts';
 import { placeNotes } from './note-places.ts';
+import { isLargeGround } from './detour.ts';
 import { jacketGeometries } from './jackets.ts';
 import type { RoutedCords } from './route-cords.ts';
 import { covers } from './rects.ts';
@@ -39,15 +40,17 @@ const routeSheet = (design: Design): RoutedSheet => {
   const furnished = furnish(design);
   const pitches = new Map<string, number>();
   let best: RoutedSheet | undefined;
-  for (const pitch of [lane.pitch, ...lane.fallbackPitches]) {
+  const [closer, closest] = lane.fallbackPitches;
+  const tries = isLargeGround(furnished.ground) ? [lane.pitch, closest] : [lane.pitch, closer, closest];
+  for (const round of tries.keys()) {
     const cords = routeCords(
       furnished.ground,
       cordsOf(furnished, (transport) => pitches.get(transport ?? '') ?? lane.pitch),
     );
     const now: RoutedSheet = { furnished, cords, pitches: new Map(pitches) };
     if (best === undefined || trouble(now) < trouble(best)) best = now;
-    if (trouble(now) === 0 || pitch === lane.fallbackPitches.at(-1)) break;
-    const next = pitch === lane.pitch ? lane.fallbackPitches[0] : lane.fallbackPitches[1];
+    const next = tries[round + 1];
+    if (trouble(now) === 0 || next === undefined) break;
     for (const { ways } of cords.overlaps)
       for (const way of ways) pitches.set(cords.ways[way]!.cord.transport ?? '', next);
     if (cords.overlaps.length === 0) break;

@@ -7,6 +7,7 @@ import { withoutIdlePoints } from './detour.ts';
 import type { Corners, Way } from './ground.ts';
 import { isTrunkRun } from './ground.ts';
 import { byText } from './rects.ts';
+import { remembered } from './remember.ts';
 
 interface Member {
   readonly id: string;
@@ -45,8 +46,9 @@ export const branchOf = (way: Way, ways: readonly Way[]): Corners => {
   return cord.trunk!.end === 'a' ? [edge, mouth] : [mouth, edge];
 };
 
-const stemOf = ({ cord, corners }: Way): Corners =>
-  withoutIdlePoints(cord.trunk!.end === 'a' ? corners.slice(0, -1) : [...corners].reverse().slice(0, -1));
+const stemOf = remembered(({ cord, corners }: Way): Corners =>
+  withoutIdlePoints(cord.trunk!.end === 'a' ? corners.slice(0, -1) : [...corners].reverse().slice(0, -1)),
+);
 
 /** How far two stems run together. */
 const sharedLength = (a: Corners, b: Corners): number => {
