@@ -80,6 +80,8 @@ export const routes = {
   'GET /api/workspaces/:workspaceId/people': 'workspace.read',
   'PATCH /api/workspaces/:workspaceId/people/:personId': 'people.manage',
   'DELETE /api/workspaces/:workspaceId/people/:personId': 'people.manage',
+  'GET /api/workspaces/:workspaceId/activity': 'activity.read',
+  'GET /api/workspaces/:workspaceId/activity.csv': 'activity.read',
   'GET /api/workspaces/:workspaceId/invitations': 'people.manage',
   'POST /api/workspaces/:workspaceId/invitations': 'people.manage',
   'POST /api/workspaces/:workspaceId/invitations/:invitationId/mail': 'people.manage',

@@ -34,6 +34,8 @@ export const limits = {
   suggestionBodyBytes: 1024 * 1024,
   /** Comments of one design, replies and resolved ones among them: one answer holds them all. */
   commentsOfDesign: 5_000,
+  /** What one CSV file tells of a workspace's activity, the newest first. */
+  activityRowsOfCsv: 50_000,
   /** Designs whose counts one list brings up to date; the others follow with the next. */
   recountedAtOnce: 20,
   /** Kept mails that one list of the mailbox shows, the newest first. */

@@ -73,7 +73,7 @@ export async function changePools(
       at,
       action: 'pools.changed',
       personId,
-      object: { kind: 'workspace', id: workspaceId, name: 'Pools of numbers' },
+      object: { kind: 'workspace', id: workspaceId, name: 'numbers' },
     });
     return workspacePoolsOf(await findPools(trx, workspaceId));
   });

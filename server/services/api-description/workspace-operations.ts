@@ -1,3 +1,4 @@
+import { activityFilterSchema, activityPageSchema, activityQuerySchema } from '#contract/activity.ts';
 import {
   changeEngagementSchema,
   createDesignSchema,
@@ -61,6 +62,17 @@ export const workspaceOperations = {
     summary: 'Remove a member',
     description: 'With the id of the reader: leave the workspace.',
     answer: { status: 204 },
+  },
+  'GET /api/workspaces/:workspaceId/activity': {
+    summary: 'Read what was done',
+    description: 'The newest first, a hundred at a time; `before` is the `next` of the page before.',
+    query: activityQuerySchema,
+    answer: { schema: activityPageSchema },
+  },
+  'GET /api/workspaces/:workspaceId/activity.csv': {
+    summary: 'Read what was done as CSV',
+    query: activityFilterSchema,
+    answer: { mediaType: 'text/csv' },
   },
   'GET /api/workspaces/:workspaceId/invitations': {
     summary: 'List invitations',

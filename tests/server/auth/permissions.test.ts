@@ -171,6 +171,10 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
     browser.patch(`/api/workspaces/${id}/people/${person}`, { role: 'presales' }),
   'DELETE /api/workspaces/:workspaceId/people/:personId': (browser, { workspace: id, person }) =>
     browser.delete(`/api/workspaces/${id}/people/${person}`),
+  'GET /api/workspaces/:workspaceId/activity': (browser, { workspace: id }) =>
+    browser.get(`/api/workspaces/${id}/activity`),
+  'GET /api/workspaces/:workspaceId/activity.csv': (browser, { workspace: id }) =>
+    browser.get(`/api/workspaces/${id}/activity.csv`),
   'GET /api/workspaces/:workspaceId/engagements': (browser, { workspace: id }) =>
     browser.get(`/api/workspaces/${id}/engagements`),
   'POST /api/workspaces/:workspaceId/engagements': (browser, { workspace: id }) =>

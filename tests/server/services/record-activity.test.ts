@@ -97,7 +97,7 @@ test('waivers, pools and equipment are recorded', async () => {
   await owner.patch(`/api/profiles/${made.id}`, { profile }).expect(200);
   await owner.patch(`/api/profiles/${made.id}`, { archived: true }).expect(200);
   expect(await recorded()).toEqual([
-    ['pools.changed', 'Some Owner', 'Pools of numbers', {}],
+    ['pools.changed', 'Some Owner', 'numbers', {}],
     ['profile.changed', 'Some Owner', profile.name, { made: 'yes' }],
     ['profile.changed', 'Some Owner', profile.name, { archived: 'yes' }],
   ]);
