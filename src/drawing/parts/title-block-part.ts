@@ -184,7 +184,10 @@ const brief = (facts: TitleBlockFacts, rect: Rect): readonly Shape[] => {
     group(fittedLines(title, facts.title, x + 14, first, step, { weight: 600 }), { key: 'title' }),
     group(small(facts.identification, x, rev, { whole: true }), { key: 'number' }),
     group(small(`Rev. ${facts.revision}`, rev, status, { weight: 600 }), { key: 'revision' }),
-    group(small(facts.status, status, x + width), { key: 'status' }),
+    group(
+      small(facts.sheet === '1/1' ? facts.status : `${facts.status}, ${facts.sheet}`, status, x + width),
+      { key: 'status' },
+    ),
   ];
 };
 

@@ -37,6 +37,7 @@ const widestWhenFull = 340;
 const mostCompared = 120;
 /** Of further sheets, what moving columns may be able to mend: a few overlaps. */
 const mostMended = 1000;
+const mostHopeless = 3;
 /** Steps in px by which right columns may be moved, so that runs of both sides don't meet. */
 const staggers = [16, -16, 24, -24, 32, -32, 44, -44, 58, -58];
 
@@ -238,19 +239,23 @@ export const onOneSheet = (
         next === undefined || (best !== undefined && best.score().total <= next.score().total) ? best : next;
       const isClean = (tidied: Tidied | undefined): boolean => tidied?.score().steps === 0;
       let best: Tidied | undefined;
+      let tried = 0;
       for (const spacing of [spacings.roomy, spacings.snug])
         for (const seating of ways) {
-          best = better(best, attempt(largest, spacing, seating, 0));
+          // What the first ways leave far from clean is too interwoven for the others too.
+          if (tried >= mostHopeless && best!.score().steps > mostMended) return best!.layout;
+          const next = attempt(largest, spacing, seating, 0);
+          if (next === undefined) continue;
+          tried += 1;
+          best = better(best, next);
           if (isClean(best)) return finished(best);
         }
-      if (best === undefined) return undefined;
-      // Only what is nearly clean is worth moving columns for.
+      if (best === undefined || best.score().steps > mostMended) return best?.layout;
       const { spacing, arrangement } = best;
-      if (best.score().steps <= mostMended)
-        for (const stagger of staggers) {
-          best = better(best, attempt(largest, spacing, arrangement.seating, stagger));
-          if (isClean(best)) break;
-        }
+      for (const stagger of staggers) {
+        best = better(best, attempt(largest, spacing, arrangement.seating, stagger));
+        if (isClean(best)) break;
+      }
       return finished(best);
     },
   };

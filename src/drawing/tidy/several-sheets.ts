@@ -20,6 +20,8 @@ type Shares = readonly (readonly string[])[];
 
 /** The site of a cut that keeps room for all its flags. */
 const flagsSite = 'flags here';
+/** With more cords than this and no hub most of them would leave their sheet, and none could be followed. */
+const mostInterwoven = 120;
 /** Sheets that turn out too full give a site to the next; after so many times the design is left to overflow. */
 const mostRounds = 24;
 
@@ -64,6 +66,7 @@ export const onSeveralSheets = (
   const facts = siteGraphFacts(whole);
   const all = [...(facts.hub === undefined ? [] : [facts.hub]), ...facts.order];
   if (all.length < 2) return undefined;
+  if (facts.hub === undefined && bundlesOf(whole).length > mostInterwoven) return undefined;
   // What the whole design collapses is collapsed on its sheets too.
   const { collapsed } = siteBlocks(whole, facts, siteLayouts, spacings.snug);
   const before = whole.layout.sites ?? {};

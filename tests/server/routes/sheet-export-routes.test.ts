@@ -1,5 +1,8 @@
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { applyPatch } from '#engine/model/merge-patch.ts';
+import { tidy } from '#drawing/tidy/tidy.ts';
 import { demoDesign } from '../../../seeds/demo-designs/demo-design.ts';
+import { hubDesign } from '../../support/designs.ts';
 import type { TestApplication, TestBrowser, TestWorkspace } from '../../support/test-application.ts';
 import {
   addDesign,
@@ -69,6 +72,8 @@ describe('a sheet fetched as a file', () => {
     ['layers=cabling,roof', 'layers.1', '"roof"'],
     ['segments=nowhere', 'segments', '"nowhere"'],
     ['colour=red', 'colour', 'given'],
+    ['sheet=0', 'sheet', '"0"'],
+    ['sheet=2', 'sheet', '"2"'],
   ])('is refused with ?%s, and the answer names the field', async (query, field, value) => {
     for (const file of ['sheet.svg', 'sheet.pdf']) {
       const { body } = await presales.get(path(`${file}?${query}`)).expect(400);
@@ -89,5 +94,28 @@ describe('a sheet fetched as a file', () => {
     await stranger.get(path('sheet.svg')).expect(404);
     const installer = await signIn(application, workspace.people.installer);
     await installer.get(path('sheet.pdf')).expect(403);
+  });
+
+  test('has a page for each sheet of a design on several, or is the one asked for', async () => {
+    const made = hubDesign(9, { segments: ['a', 'b'] });
+    const design = applyPatch(made, tidy(made, { largest: 'A3' }));
+    const engagement = await addEngagement(application, workspace.id);
+    const id = await addDesign(application, engagement, design);
+    const of = Object.keys(design.layout.furtherSheets!).length + 1;
+    const fetched = async (file: string) => presales.get(`/api/designs/${id}/${file}`);
+    const pagesOf = (response: { readonly body: unknown }): number =>
+      bytesOf(response)
+        .toString('latin1')
+        .match(/\/Type \/Page\b/g)!.length;
+    expect(pagesOf(await fetched('sheet.pdf'))).toBe(of);
+    expect(pagesOf(await fetched('sheet.pdf?sheet=2'))).toBe(1);
+    const second = await fetched('sheet.svg?sheet=2');
+    expect(second.headers['content-disposition']).toMatch(/-sheet-2\.svg"$/);
+    expect(bytesOf(second).toString('utf8')).toContain(`>2/${of}<`);
+    const { body } = await fetched(`sheet.svg?sheet=${of + 1}`);
+    expect(body).toMatchObject({
+      code: 'invalid-request',
+      details: [{ path: 'sheet', value: `"${of + 1}"`, expected: `expected a number from 1 to ${of}` }],
+    });
   });
 });
