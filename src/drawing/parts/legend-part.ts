@@ -181,14 +181,17 @@ const inColumns = (
   const columns = legendColumns(sheet);
   const rows = Math.ceil(segments.length / columns);
   if (columns === 1) return draw(segments, sheet.legend, rows);
+  const { x, y, height } = sheet.legend;
   const width = sheet.legend.width / columns;
   return Array.from({ length: columns }, (_, i) =>
     group(
-      draw(
-        segments.slice(i * rows, (i + 1) * rows),
-        { ...sheet.legend, x: sheet.legend.x + i * width, width },
-        rows,
-      ),
+      [
+        ...draw(segments.slice(i * rows, (i + 1) * rows), { ...sheet.legend, x: x + i * width, width }, rows),
+        i > 0 && {
+          ...shape('path', { d: `M${x + i * width} ${y}v${height}`, stroke: paint('ink'), strokeWidth: 1.6 }),
+          key: 'divider',
+        },
+      ],
       { key: `column ${i + 1}` },
     ),
   );
