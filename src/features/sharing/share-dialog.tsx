@@ -99,7 +99,7 @@ export function ShareDialog({ designId, revisions, revisionId, now, onMade, onCl
           span={2}
           label="Passphrase, if one is to be asked for"
           autoComplete="off"
-          hint="Send it another way than the link."
+          hint="Send the passphrase another way than the link."
           value={passphrase}
           onChange={(event) => setPassphrase(event.target.value)}
           error={problems.passphrase}

@@ -24,13 +24,13 @@ export const shareProblems = (
   const words = label.trim();
   const last = lastDayFrom(now);
   return {
-    ...(words === '' ? { label: 'Empty. Say who the link is for, such as the customer.' } : {}),
-    ...(words.length > 80 ? { label: `${words.length} characters. Keep it to 80.` } : {}),
+    ...(words === '' ? { label: 'For is empty. Say who the link is for, such as the customer.' } : {}),
+    ...(words.length > 80 ? { label: `For has ${words.length} characters. Keep it to 80.` } : {}),
     ...(expiresOn < dayByUtc(now) || expiresOn > last
       ? { expiresOn: `Last day ${expiresOn || 'is empty: it'} has to be from today to ${last}.` }
       : {}),
     ...(passphrase !== '' && passphrase.length < 8
-      ? { passphrase: `${passphrase.length} characters. Use at least 8, or none.` }
+      ? { passphrase: `Passphrase has ${passphrase.length} characters. Use at least 8, or none.` }
       : {}),
   };
 };

@@ -10,12 +10,12 @@ test('takes a day within a year, somebody it is for, and a passphrase or none', 
 });
 
 test.each([
-  [{ label: ' ' }, 'label', 'Empty'],
-  [{ label: 'x'.repeat(81) }, 'label', '81 characters'],
+  [{ label: ' ' }, 'label', 'For is empty'],
+  [{ label: 'x'.repeat(81) }, 'label', 'For has 81 characters'],
   [{ expiresOn: '' }, 'expiresOn', 'is empty'],
   [{ expiresOn: '2027-02-28' }, 'expiresOn', '2027-02-28'],
   [{ expiresOn: '2028-03-01' }, 'expiresOn', '2028-02-29'],
-  [{ passphrase: 'short' }, 'passphrase', '5 characters'],
+  [{ passphrase: 'short' }, 'passphrase', 'Passphrase has 5 characters'],
 ] as const)('says what is wrong with %j', (wrong, field, words) => {
   expect(shareProblems({ ...right, ...wrong }, now)[field]).toContain(words);
 });
