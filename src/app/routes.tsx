@@ -78,6 +78,11 @@ export const routes: RouteObject[] = [
                 lazy: async () => ({ Component: (await import('../pages/people-page.tsx')).PeoplePage }),
               },
               {
+                path: 'workspaces/:workspaceId/activity',
+                ErrorBoundary: PageError,
+                lazy: async () => ({ Component: (await import('../pages/activity-page.tsx')).ActivityPage }),
+              },
+              {
                 path: 'workspaces/:workspaceId/settings',
                 ErrorBoundary: PageError,
                 lazy: async () => ({

@@ -6,6 +6,8 @@ export const profilesPath = (workspaceId: string): string => `/workspaces/${work
 
 export const peoplePath = (workspaceId: string): string => `/workspaces/${workspaceId}/people`;
 
+export const activityPath = (workspaceId: string): string => `/workspaces/${workspaceId}/activity`;
+
 export const mailboxPath = (workspaceId: string): string => `/workspaces/${workspaceId}/mailbox`;
 
 export const settingsPath = (workspaceId: string): string => `/workspaces/${workspaceId}/settings`;

@@ -1,7 +1,13 @@
 import type { ReactNode } from 'react';
 import { BarContents, BarNav } from '../../components/bar.tsx';
 import { may, useCurrentWorkspaceId, useMembership } from '../../lib/session.ts';
-import { engagementsPath, peoplePath, profilesPath, settingsPath } from '../../lib/workspace-path.ts';
+import {
+  activityPath,
+  engagementsPath,
+  peoplePath,
+  profilesPath,
+  settingsPath,
+} from '../../lib/workspace-path.ts';
 import { WorkspaceCell } from './workspace-cell.tsx';
 
 interface MainBarProps {
@@ -27,6 +33,7 @@ export function MainBar({ workspaceId, children }: MainBarProps) {
               { to: engagementsPath(here), label: 'Engagements' },
               { to: profilesPath(here), label: 'Equipment' },
               { to: peoplePath(here), label: 'People' },
+              ...(may(membership, 'activity.read') ? [{ to: activityPath(here), label: 'Activity' }] : []),
               ...(may(membership, 'workspace.manage') ? [{ to: settingsPath(here), label: 'Settings' }] : []),
               { to: '/checks', label: 'Checks' },
               { to: '/wire', label: 'Wire' },
