@@ -55,6 +55,24 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
     },
   ],
   [
+    'what changed since a revision',
+    async (page) => {
+      await signInAs(page, 'reviewer');
+      await openSheet(page, 'Skerry standby controller');
+      await goToPage(page, 'history?from=revision-A&to=now');
+      await page.getByRole('list', { name: 'Legend' }).waitFor();
+      await node(page, 'sheet').waitFor();
+    },
+  ],
+  [
+    'a frozen revision',
+    async (page) => {
+      await signInAs(page, 'installer');
+      await page.getByRole('link', { name: 'Revision A approved' }).click();
+      await node(page, 'sheet').waitFor();
+    },
+  ],
+  [
     'the HTTP API',
     async (page) => {
       await signInAs(page, 'architect');

@@ -10,7 +10,7 @@ import { classNames } from '../../lib/class-names.ts';
 import { dateAndTime, relativeTime } from '../../lib/format-time.ts';
 import { useTheme } from '../../lib/theme.ts';
 import { useNow } from '../../lib/use-now.ts';
-import { designPath } from '../../lib/workspace-path.ts';
+import { designPath, revisionPath } from '../../lib/workspace-path.ts';
 
 interface DesignCardProps {
   readonly design: DesignSummary;
@@ -24,12 +24,19 @@ export function DesignCard({ design, canOpen, actions }: DesignCardProps) {
   const now = useNow();
   const changed = new Date(design.changedAt);
   const archived = design.archivedAt !== null;
+  const { issued } = design;
+  // Who reads no drafts opens what is to be built from.
+  const to = canOpen
+    ? designPath(design.id)
+    : issued === null
+      ? undefined
+      : revisionPath(design.id, issued.id);
   const number = [design.identification, design.revision].filter((part) => part !== null).join(', ');
   return (
     <article
       className={classNames(
         'relative flex w-200 flex-col border border-rule-strong bg-paper max-sm:w-full',
-        canOpen &&
+        to !== undefined &&
           'hover:outline-2 hover:outline-offset-2 hover:outline-blue has-[a:focus-visible]:outline-2 has-[a:focus-visible]:outline-offset-2 has-[a:focus-visible]:outline-blue',
       )}
     >
@@ -37,9 +44,9 @@ export function DesignCard({ design, canOpen, actions }: DesignCardProps) {
       <div className="flex flex-1 flex-col border-t border-rule-2 bg-field px-9 pt-7 pb-6">
         <div className="flex items-start gap-2">
           <h3 className="line-clamp-2 min-w-0 flex-1 text-value font-semibold" title={design.title}>
-            {canOpen ? (
+            {to !== undefined ? (
               // The whole card takes a press for its title's link.
-              <Link to={designPath(design.id)} className="outline-none after:absolute after:inset-0">
+              <Link to={to} className="outline-none after:absolute after:inset-0">
                 {design.title}
               </Link>
             ) : (
@@ -81,7 +88,18 @@ export function DesignCard({ design, canOpen, actions }: DesignCardProps) {
             {design.deletedAt === null ? 'Archived' : `Deleted, gone ${lastDayOf(design.deletedAt)}`}
           </span>
         ) : (
-          <Stamp state={design.state} />
+          <span className="flex flex-wrap items-center gap-6">
+            <Stamp state={design.state} />
+            {issued !== null && issued.state !== design.state && (
+              <Link
+                to={revisionPath(design.id, issued.id)}
+                className="relative z-1 text-note text-ink underline hover:no-underline"
+              >
+                <span className="sr-only">Revision </span>
+                {issued.label} {issued.state}
+              </Link>
+            )}
+          </span>
         )}
         <SeverityCounts counts={design.counts} />
       </div>
@@ -113,7 +131,11 @@ function Thumbnail({ design, canOpen }: { readonly design: DesignSummary; readon
         />
       ) : (
         <p className="px-14 text-center text-note text-ink-3">
-          {canOpen ? 'Its picture cannot be shown just now' : 'Opens to you once it is approved'}
+          {canOpen
+            ? 'Its picture cannot be shown just now'
+            : design.issued === null
+              ? 'Opens to you once it is approved'
+              : `Revision ${design.issued.label} is ${design.issued.state}: open it to build from it`}
         </p>
       )}
     </div>

@@ -28,22 +28,26 @@ const begun: HistoryPoint = { kind: 'patch', sequence: 0 };
 
 /** A design's life from now back to its beginning: what was frozen and what became of it, who worked on it when. */
 export function Timeline({ summary, revision, entries, ...tools }: TimelineProps) {
-  const last = entries.find((entry) => entry.kind === 'revision');
-  const before: HistoryPoint =
-    last?.kind === 'revision' ? { kind: 'revision', label: last.revision.label } : begun;
+  const last = revisionIn(entries);
   return (
     <ol aria-label="History" className="flex flex-col">
       <Entry head={<Stamp state={summary.state} prefix={revision} />} title="The design as it is now">
-        <Button small onClick={() => tools.onCompare(before, now)}>
-          {last?.kind === 'revision'
-            ? `What changed since revision ${last.revision.label}`
+        <Button small onClick={() => tools.onCompare(last, now)}>
+          {last.kind === 'revision'
+            ? `What changed since revision ${last.label}`
             : 'What changed since the beginning'}
         </Button>
       </Entry>
-      {entries.map((entry) => {
+      {entries.map((entry, index) => {
         if (entry.kind === 'revision')
           return (
-            <RevisionEntry key={entry.revision.id} designId={summary.id} of={entry.revision} {...tools} />
+            <RevisionEntry
+              key={entry.revision.id}
+              designId={summary.id}
+              of={entry.revision}
+              before={revisionIn(entries.slice(index + 1))}
+              {...tools}
+            />
           );
         if (entry.kind === 'sitting')
           return <SittingEntry key={`s${entry.sitting.firstSequence}`} of={entry.sitting} {...tools} />;
@@ -64,6 +68,12 @@ export function Timeline({ summary, revision, entries, ...tools }: TimelineProps
     </ol>
   );
 }
+
+/** The newest revision of these entries; the beginning where there is none. */
+const revisionIn = (entries: readonly TimelineEntry[]): HistoryPoint => {
+  const entry = entries.find(({ kind }) => kind === 'revision');
+  return entry?.kind === 'revision' ? { kind: 'revision', label: entry.revision.label } : begun;
+};
 
 interface EntryProps {
   readonly title: ReactNode;
@@ -105,9 +115,15 @@ function Entry({ title, frozen = false, head, notes = [], children }: EntryProps
 function RevisionEntry({
   designId,
   of: revision,
+  before,
   onCompare,
   onRestore,
-}: TimelineTools & { readonly designId: string; readonly of: Revision }) {
+}: TimelineTools & {
+  readonly designId: string;
+  readonly of: Revision;
+  /** The revision before it, or the beginning. */
+  readonly before: HistoryPoint;
+}) {
   const point: HistoryPoint = { kind: 'revision', label: revision.label };
   const { state, counts, waived, message, note } = revision;
   return (
@@ -137,8 +153,8 @@ function RevisionEntry({
       <Link to={revisionPath(designId, revision.id)} className={buttonClasses({ small: true })}>
         Open<span className="sr-only"> revision {revision.label}</span>
       </Link>
-      <Button small onClick={() => onCompare(point, now)}>
-        What changed since<span className="sr-only"> revision {revision.label}</span>
+      <Button small onClick={() => onCompare(before, point)}>
+        What it changed<span className="sr-only">, revision {revision.label}</span>
       </Button>
       {onRestore && (
         <Button small kind="quiet" onClick={() => onRestore(point)}>
