@@ -513,3 +513,16 @@ describe('the past of a design', () => {
     expect(both.status).toBe(400);
   });
 });
+
+test('the sheet of a revision is drawn with what its state says in the title block, and the frozen findings', async () => {
+  const designId = await drawn(broken);
+  await waiveAll(designId);
+  const { id } = await asked(designId);
+  const early = await members.architect.get(`/api/revisions/${id}/sheet.svg`).expect(200);
+  expect(String(early.body)).toContain('In review');
+  await approve(members.reviewer, id).expect(200);
+  const sheet = await members.installer.get(`/api/revisions/${id}/sheet.svg?findings=true`).expect(200);
+  for (const words of ['Approved', 'Some Reviewer', '2026-12-01', '>A<'])
+    expect(String(sheet.body)).toContain(words);
+  expect(String(sheet.body)).not.toContain('In review');
+});
