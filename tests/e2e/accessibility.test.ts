@@ -214,6 +214,14 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
     },
   ],
   [
+    'the activity of a workspace',
+    async (page) => {
+      await signInAs(page, 'owner');
+      await page.getByRole('link', { name: 'Activity' }).click();
+      await page.getByRole('table', { name: 'Activity' }).waitFor();
+    },
+  ],
+  [
     'the settings of a workspace',
     async (page) => {
       await signInAs(page, 'owner');
