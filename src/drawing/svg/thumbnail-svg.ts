@@ -4,9 +4,9 @@ import { noDecorations } from '../decorations.ts';
 import type { SheetFrame, SheetGeometry } from '../geometry.ts';
 import { anchorFor } from '../parts/anchor-for.ts';
 import type { DrawingFacts } from '../parts/drawing-facts.ts';
-import { drawingFacts } from '../parts/drawing-facts.ts';
 import { octagon } from '../parts/severity-mark.ts';
-import { route } from '../routing/route.ts';
+import { drawSheet, sheetOfDesign } from '../sheets/draw-sheet.ts';
+import { sheetFacts } from '../sheets/sheet-facts.ts';
 import type { Shape } from '../shape.ts';
 import { group, shape } from '../shape.ts';
 import { paint } from '../theme/paint.ts';
@@ -105,11 +105,11 @@ export interface ThumbnailOptions {
   readonly decorations?: Decorations;
 }
 
-/** A design's sheet as a small picture without words, for lists: shapes, cords, cuts and where findings block. */
+/** A design's first sheet as a small picture without words, for lists: shapes, cords, cuts and where findings block. */
 export const thumbnailSvgText = (design: Design, options: ThumbnailOptions): string => {
-  const geometry = route(design);
+  const geometry = drawSheet(design);
   const decorations = options.decorations ?? noDecorations;
-  const facts = drawingFacts(design, options.tunnelSegments);
+  const facts = sheetFacts(sheetOfDesign(design), options.tunnelSegments);
   // Tones and ghosts belong to somebody's screen; a list shows the design itself.
   const layers = sheetShapes(geometry, {
     level: 'far',

@@ -1,7 +1,7 @@
 import type { SheetGeometry } from '../../drawing/geometry.ts';
 import { noDecorations } from '../../drawing/decorations.ts';
-import { drawingFacts } from '../../drawing/parts/drawing-facts.ts';
-import { route } from '../../drawing/routing/route.ts';
+import { drawSheet, sheetOfDesign } from '../../drawing/sheets/draw-sheet.ts';
+import { sheetFacts } from '../../drawing/sheets/sheet-facts.ts';
 import { sheetShapes } from '../../drawing/svg/sheet-shapes.ts';
 import type { Layer } from '../../drawing/svg/standalone-svg.ts';
 import { tidy } from '../../drawing/tidy/tidy.ts';
@@ -52,11 +52,11 @@ export function* previewRun({
   yield at(1);
   const design = applyPatch(built, tidy(built));
   yield at(2);
-  const geometry = route(design);
+  const geometry = drawSheet(design);
   const layers = sheetShapes(geometry, {
     level: 'plan',
     decorations: noDecorations,
-    facts: drawingFacts(design, tunnelSegments(indexNetwork(design))),
+    facts: sheetFacts(sheetOfDesign(design), tunnelSegments(indexNetwork(design))),
   });
   yield at(3);
   return {
