@@ -19,7 +19,7 @@ export function PresentPeople({ designId }: { readonly designId: string }) {
   useSamePage(designId, leader?.place.page);
   if (people.length === 0) return null;
   return (
-    <ul aria-label="Also here" className="flex items-center gap-4">
+    <ul aria-label="Also here" className="flex items-center gap-4 max-md:hidden">
       {people.slice(0, mostTags).map((person) => (
         <li key={person.personId}>
           <PersonMenu person={person} isFollowed={leader?.personId === person.personId} />
