@@ -49,6 +49,6 @@ it('a draft is put to review, sent back without a reason never, approved by anot
     .waitFor();
   await architect.getByRole('button', { name: 'Back to the history' }).click();
   await architect.getByRole('link', { name: 'Open revision C' }).click();
-  await architect.getByText(/^Approved by Noor Okafor/).waitFor();
+  await architect.getByText(/^Revision C\. Approved by Noor Okafor/).waitFor();
   await architect.locator('.sheet-canvas').waitFor();
 });

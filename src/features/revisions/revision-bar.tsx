@@ -26,14 +26,14 @@ export function RevisionBar({
       <BarCell label="Design" className="min-w-78! shrink!">
         <span className="max-w-260 truncate">{title}</span>
       </BarCell>
-      <BarCell label="Revision">
+      <BarCell label="Revision" className="max-sm:hidden">
         <Stamp state={stampOf(revision.state)} prefix={revision.label} />
       </BarCell>
       <BarCell label="Access" className="max-md:hidden">
         Read only
       </BarCell>
       {may(membership, 'design.read') && (
-        <div className="ml-auto flex shrink-0 items-center gap-8 pl-8">
+        <div className="ml-auto flex shrink-0 items-center gap-8 pl-8 max-sm:hidden">
           {may(membership, 'share.manage') && isShareable(revision.state) && (
             <Link
               to={`${designPath(revision.designId)}/shares?revision=${revision.id}`}

@@ -5,7 +5,7 @@ import { stepsOf } from './revision-words.ts';
 /** Under the bar of a frozen revision: what became of it, and a warning where it is not to be built from. */
 export function RevisionNote({ revision }: { readonly revision: Revision }) {
   const isToBuildFrom = revision.state === 'approved' || revision.state === 'built';
-  const last = stepsOf(revision).at(-1);
+  const last = `Revision ${revision.label}. ${stepsOf(revision).at(-1) ?? ''}`;
   if (isToBuildFrom)
     return (
       <p className="shrink-0 border-b border-rule-2 bg-ok-wash px-14 py-6 text-base text-ink">
