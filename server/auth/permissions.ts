@@ -77,6 +77,8 @@ export const routes = {
   'POST /api/workspaces': 'signed-in',
   'GET /api/workspaces/:workspaceId': 'workspace.manage',
   'PATCH /api/workspaces/:workspaceId': 'workspace.manage',
+  'GET /api/workspaces/:workspaceId/export': 'workspace.manage',
+  'POST /api/workspaces/:workspaceId/deletion': 'workspace.manage',
   'GET /api/workspaces/:workspaceId/people': 'workspace.read',
   'PATCH /api/workspaces/:workspaceId/people/:personId': 'people.manage',
   'DELETE /api/workspaces/:workspaceId/people/:personId': 'people.manage',

@@ -36,6 +36,7 @@ export interface Throttles {
   /** Whether somebody may be sent a link for a new password; never told to who asks. */
   isResetMailDue(email: string): Promise<boolean>;
   workspaceStart(personId: string): Promise<void>;
+  workspaceExport(personId: string): Promise<void>;
   /** Requests that carry a token that is none, and those that carry a good one. */
   badToken(address: string): Promise<void>;
   tokenRequest(tokenId: string): Promise<void>;
@@ -60,6 +61,7 @@ export const allowances = {
   resetAsked: { times: 20, seconds: 60 * 60 },
   resetOfPerson: { times: 5, seconds: 60 * 60 },
   workspaceStart: { times: 20, seconds: 24 * 60 * 60 },
+  workspaceExport: { times: 20, seconds: 60 * 60 },
   badToken: { times: 30, seconds: 15 * 60 },
   tokenRequest: { times: 600, seconds: 60 },
   engineRequest: { times: 120, seconds: 60 },
@@ -93,6 +95,7 @@ export function createThrottles(pool: Pool): Throttles {
   const resets = limiter('resetAsked');
   const resetsOfPerson = limiter('resetOfPerson');
   const workspaces = limiter('workspaceStart');
+  const workspaceExports = limiter('workspaceExport');
   const badTokens = limiter('badToken');
   const tokens = limiter('tokenRequest');
   // The engine answers without a database too.
@@ -129,6 +132,7 @@ export function createThrottles(pool: Pool): Throttles {
     },
     firstOwnerAttempt: (address) => take(firstOwner, addressKey(address)),
     workspaceStart: (personId) => take(workspaces, personId),
+    workspaceExport: (personId) => take(workspaceExports, personId),
     badToken: (address) => take(badTokens, addressKey(address)),
     tokenRequest: (tokenId) => take(tokens, tokenId),
     invitation: (personId) => take(invitations, personId),

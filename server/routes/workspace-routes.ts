@@ -1,4 +1,7 @@
+import { Readable } from 'node:stream';
+import { pipeline } from 'node:stream/promises';
 import { Router } from 'express';
+import { deleteWorkspaceSchema } from '#contract/workspace-export.ts';
 import { changeMemberSchema, changeWorkspaceSchema, createWorkspaceSchema } from '#contract/workspaces.ts';
 import { requirePerson } from '../auth/sessions.ts';
 import type { Throttles } from '../auth/throttles.ts';
@@ -6,6 +9,8 @@ import { jsonBody } from '../middleware/json-body.ts';
 import type { Context } from '../services/context.ts';
 import { limits } from '../services/limits.ts';
 import { changeRole, readPeople, removePerson } from '../services/people.ts';
+import { deleteWorkspace } from '../services/workspace-deletion.ts';
+import { exportWorkspace } from '../services/workspace-export.ts';
 import { changeSettings, readMemberships, readSettings, startWorkspace } from '../services/workspaces.ts';
 import { mountRoute } from './mount-route.ts';
 import { readBody, readId } from './read-request.ts';
@@ -36,6 +41,30 @@ export function workspaceRoutes(context: Context, throttles: Throttles): Router 
     const workspaceId = readId(req, 'workspaceId', 'workspace');
     const change = readBody(req, changeWorkspaceSchema);
     res.json(await changeSettings(context, person.id, workspaceId, change));
+  });
+
+  mountRoute(router, 'GET /api/workspaces/:workspaceId/export', async (req, res) => {
+    const person = requirePerson(req);
+    const workspaceId = readId(req, 'workspaceId', 'workspace');
+    await throttles.workspaceExport(person.id);
+    const pieces = await exportWorkspace(context, person.id, workspaceId);
+    res.setHeader('Content-Disposition', 'attachment; filename="workspace.json"');
+    res.type('application/json');
+    // A reader who takes nothing off must not hold a connection to the database for good.
+    await pipeline(Readable.from(pieces), res, { signal: AbortSignal.timeout(limits.exportMs) });
+  });
+
+  mountRoute(router, 'POST /api/workspaces/:workspaceId/deletion', ...body, async (req, res) => {
+    const person = requirePerson(req);
+    const workspaceId = readId(req, 'workspaceId', 'workspace');
+    const proof = readBody(req, deleteWorkspaceSchema);
+    // Guesses at password and code count; right ones don't.
+    await throttles.passwordAttempt(person.id);
+    if (proof.code !== undefined) await throttles.secondStepAttempt(person.id);
+    await deleteWorkspace(context, person.id, workspaceId, proof);
+    await throttles.passwordFound(person.id);
+    if (proof.code !== undefined) await throttles.secondStepTaken(person.id);
+    res.status(204).end();
   });
 
   mountRoute(router, 'GET /api/workspaces/:workspaceId/people', async (req, res) => {

@@ -36,6 +36,8 @@ export const limits = {
   commentsOfDesign: 5_000,
   /** What one CSV file tells of a workspace's activity, the newest first. */
   activityRowsOfCsv: 50_000,
+  /** How long a whole workspace may take to be read. */
+  exportMs: 10 * 60 * 1000,
   /** Designs whose counts one list brings up to date; the others follow with the next. */
   recountedAtOnce: 20,
   /** Kept mails that one list of the mailbox shows, the newest first. */

@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { oneLineSchema } from './one-line.ts';
 import { secondStepCodeSchema } from './session.ts';
 
-const passwordSchema = z
+export const passwordSchema = z
   .string()
   .min(1, 'expected your password')
   .max(200, 'expected at most 200 characters');

@@ -1,9 +1,12 @@
 import { useQuery } from '@tanstack/react-query';
 import { useEffect } from 'react';
-import { useParams } from 'react-router-dom';
+import { useNavigate, useParams } from 'react-router-dom';
 import { EmptyState } from '../components/empty-state.tsx';
 import { ReadingState } from '../components/reading-state.tsx';
+import { showToast } from '../components/toast.tsx';
 import { MainBar } from '../features/account/main-bar.tsx';
+import { DeleteSection } from '../features/workspace-settings/delete-section.tsx';
+import { ExportSection } from '../features/workspace-settings/export-section.tsx';
 import { NameSection } from '../features/workspace-settings/name-section.tsx';
 import { settingsQuery } from '../features/workspace-settings/settings-query.ts';
 import { TwoStepSection } from '../features/workspace-settings/two-step-section.tsx';
@@ -17,6 +20,7 @@ export function WorkspaceSettingsPage() {
   usePageTitle('Workspace settings');
   const { workspaceId = '' } = useParams();
   const membership = useMembership(workspaceId);
+  const navigate = useNavigate();
   const manages = may(membership, 'workspace.manage');
   const query = useQuery({ ...settingsQuery(workspaceId), enabled: manages });
   useEffect(() => {
@@ -45,6 +49,14 @@ export function WorkspaceSettingsPage() {
           <>
             <NameSection settings={query.data} />
             <TwoStepSection settings={query.data} />
+            <ExportSection settings={query.data} />
+            <DeleteSection
+              settings={query.data}
+              onDeleted={() => {
+                void navigate('/');
+                showToast({ tone: 'done', text: `${query.data.name} is deleted.` });
+              }}
+            />
           </>
         )}
       </main>

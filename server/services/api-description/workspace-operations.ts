@@ -27,6 +27,7 @@ import {
   workspaceListSchema,
   workspaceSettingsSchema,
 } from '#contract/workspaces.ts';
+import { deleteWorkspaceSchema, workspaceExportSchema } from '#contract/workspace-export.ts';
 import type { Operation } from './operation.ts';
 
 export const workspaceOperations = {
@@ -48,6 +49,17 @@ export const workspaceOperations = {
     summary: 'Change the settings of a workspace',
     body: changeWorkspaceSchema,
     answer: { schema: workspaceSettingsSchema },
+  },
+  'GET /api/workspaces/:workspaceId/export': {
+    summary: 'Take everything of the workspace along',
+    description:
+      'As one JSON file: designs with every edit, revisions, comments and shares; no key to anything.',
+    answer: { schema: workspaceExportSchema },
+  },
+  'POST /api/workspaces/:workspaceId/deletion': {
+    summary: 'Delete the workspace for good',
+    body: deleteWorkspaceSchema,
+    answer: { status: 204 },
   },
   'GET /api/workspaces/:workspaceId/people': {
     summary: 'List the members',

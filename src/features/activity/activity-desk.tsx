@@ -34,7 +34,7 @@ export function ActivityDesk({ workspaceId }: { readonly workspaceId: string }) 
       />
       <div className="flex flex-wrap items-center gap-8">
         <p role="status" className="text-note text-ink-2">
-          {first === undefined
+          {first === undefined || activity.length === 0
             ? ''
             : query.hasNextPage
               ? `The newest ${activity.length}; there is more`

@@ -40,7 +40,7 @@ export function ActivityFilters({ wish, people, designs, onChange }: ActivityFil
         label="Design"
         value={wish.design}
         options={optionsOf(designs)}
-        placeholder="All, and what is of none"
+        placeholder="All"
         onChange={(design) => onChange({ design })}
         onClear={() => onChange({ design: '' })}
       />

@@ -18,7 +18,7 @@ export function ActivityTable({ workspaceId, activity, empty }: ActivityTablePro
     {
       key: 'when',
       head: 'When',
-      widthPx: 190,
+      widthPx: 100,
       cell: ({ at }) => (
         <time dateTime={at} className="whitespace-nowrap text-ink-2 max-sm:whitespace-normal">
           {dateAndTime(new Date(at))}

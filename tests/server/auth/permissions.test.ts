@@ -13,7 +13,7 @@ import type { Access, Route } from '../../../server/auth/permissions.ts';
 import { permissions, permits, routes } from '../../../server/auth/permissions.ts';
 import { keepCaughtMail } from '../../../server/repositories/caught-mails.ts';
 import { insertProfile } from '../../../server/repositories/equipment-profiles.ts';
-import { insertMembership } from '../../../server/repositories/memberships.ts';
+import { insertMembership, insertWorkspace } from '../../../server/repositories/memberships.ts';
 import { pairDesign } from '../../support/designs.ts';
 import type { TestApplication, TestBrowser, TestWorkspace } from '../../support/test-application.ts';
 import {
@@ -29,6 +29,7 @@ import {
 
 let application: TestApplication;
 let workspace: TestWorkspace;
+let doomedId: string;
 let engagementId: string;
 let designId: string;
 let waiverId: string;
@@ -50,6 +51,7 @@ beforeAll(async () => {
   engagementId = await addEngagement(application, workspace.id);
   designId = await addDesign(application, engagementId, document);
   reviewedId = await addDesign(application, engagementId);
+  await makeDoomed();
   revisionId = reviewedId;
   shareId = reviewedId;
   for (const role of roles) members[role] = await signIn(application, workspace.people[role]);
@@ -77,6 +79,7 @@ afterAll(() => application.close());
 const missingId = '00000000-0000-4000-8000-000000000000';
 const missing: Ids = {
   workspace: missingId,
+  doomed: missingId,
   engagement: missingId,
   design: missingId,
   waiver: missingId,
@@ -95,6 +98,8 @@ const finding = runRules(document)[0]!;
 
 interface Ids {
   readonly workspace: string;
+  /** One to delete. */
+  readonly doomed: string;
   readonly engagement: string;
   readonly design: string;
   readonly waiver: string;
@@ -165,6 +170,10 @@ const requests: { readonly [route in Route]: (browser: TestBrowser, ids: Ids) =>
   'GET /api/workspaces/:workspaceId': (browser, { workspace: id }) => browser.get(`/api/workspaces/${id}`),
   'PATCH /api/workspaces/:workspaceId': (browser, { workspace: id }) =>
     browser.patch(`/api/workspaces/${id}`, { name: 'Renamed' }),
+  'GET /api/workspaces/:workspaceId/export': (browser, { workspace: id }) =>
+    browser.get(`/api/workspaces/${id}/export`),
+  'POST /api/workspaces/:workspaceId/deletion': (browser, { doomed: id }) =>
+    browser.post(`/api/workspaces/${id}/deletion`, { name: 'Doomed', password: testPassword }),
   'GET /api/workspaces/:workspaceId/people': (browser, { workspace: id }) =>
     browser.get(`/api/workspaces/${id}/people`),
   'PATCH /api/workspaces/:workspaceId/people/:personId': (browser, { workspace: id, person }) =>
@@ -380,12 +389,19 @@ async function makeShare(): Promise<void> {
 }
 
 /** What has to be so before a member's request that succeeds once alone. */
+const makeDoomed = async (): Promise<void> => {
+  const { knex } = application.database;
+  doomedId = await insertWorkspace(knex, 'Doomed');
+  for (const role of roles) await insertMembership(knex, doomedId, workspace.people[role].id, role);
+};
+
 const ready: { readonly [route in Route]?: (role: Role) => Promise<void> } = {
   'PATCH /api/comments/:commentId': writeComment,
   'DELETE /api/comments/:commentId': writeComment,
   'POST /api/comments/:commentId/resolution': writeComment,
   'DELETE /api/comments/:commentId/resolution': writeComment,
   'POST /api/comments/:commentId/application': writeComment,
+  'POST /api/workspaces/:workspaceId/deletion': makeDoomed,
   'POST /api/designs/:designId/revisions': makeDraft,
   'POST /api/designs/:designId/restoration': makeDraft,
   'GET /api/revisions/:revisionId': makeApproved,
@@ -403,6 +419,7 @@ const isAction = (access: Access): access is Action => (actions as readonly stri
 const guarded = (Object.keys(routes) as Route[]).filter((route) => isAction(routes[route]));
 const ids = (): Ids => ({
   workspace: workspace.id,
+  doomed: doomedId,
   engagement: engagementId,
   design: designId,
   waiver: waiverId,
@@ -492,6 +509,7 @@ describe.each(guarded)('%s', (route) => {
       await requests[route](members.owner, missing),
       await requests[route](members.owner, {
         workspace: 'x',
+        doomed: 'x',
         engagement: '1; drop',
         design: '../x',
         waiver: '%',
