@@ -75,6 +75,7 @@ import { replayWindowTooSmall } from './replay-window-too-small.ts';
 import { reservedGroupNotPassed } from './reserved-group-not-passed.ts';
 import { routerAdvertisementsTwice } from './router-advertisements-twice.ts';
 import { secondPathTooSmall } from './second-path-too-small.ts';
+import { secretInNotes } from './secret-in-notes.ts';
 import { segmentCouldBeRouted } from './segment-could-be-routed.ts';
 import { segmentHostsParted } from './segment-hosts-parted.ts';
 import { segmentIpv6BelowMinimum } from './segment-ipv6-below-minimum.ts';
@@ -189,6 +190,7 @@ export const rules: readonly Rule[] = [
   reservedGroupNotPassed,
   routerAdvertisementsTwice,
   secondPathTooSmall,
+  secretInNotes,
   segmentCouldBeRouted,
   segmentHostsParted,
   segmentIpv6BelowMinimum,
