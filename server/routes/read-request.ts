@@ -55,7 +55,7 @@ function expectedOf(issue: z.core.$ZodIssue): string {
 // The answer may be seen over a shoulder.
 function shown(path: string, value: unknown): string {
   if (value === undefined) return 'missing';
-  if (/password|current|next|^code$/.test(path)) return 'not usable';
+  if (/password|passphrase|token|current|next|^code$/.test(path)) return 'not usable';
   const text = JSON.stringify(value) ?? 'not JSON';
   return text.length > 80 ? `${text.slice(0, 77)}…` : text;
 }
