@@ -129,6 +129,7 @@ const sourcesOfIndex: { readonly [F in Exclude<keyof Network, 'design'>]: readon
   portGroupsByDevice: ['devices', 'cables'],
   bundles: ['devices', 'cables'],
   bundleByCable: ['devices', 'cables'],
+  firstTunnelElement: [],
 };
 
 interface Watched {

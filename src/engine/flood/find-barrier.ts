@@ -65,7 +65,7 @@ export const findBarriers = (
     const bundle = network.bundles[state.element];
     return {
       ...(bundle === undefined
-        ? { collection: 'tunnels', id: network.tunnelIds[state.element - network.bundles.length]! }
+        ? { collection: 'tunnels', id: network.tunnelIds[state.element - network.firstTunnelElement]! }
         : { collection: 'links', id: (bundle.alive[0] ?? bundle.cables[0])! }),
       direction: state.direction === 0 ? 'a-to-b' : 'b-to-a',
       ...(state.tags === untagged ? {} : { vlan: outerVlan(state.tags) }),

@@ -16,7 +16,7 @@ export const stepOf = (graph: FloodGraph, node: number): FloodStep => {
   const vlan = outerVlan(graph.tags[node]!);
   return {
     ...(bundle === undefined
-      ? { collection: 'tunnels', id: network.tunnelIds[element - network.bundles.length]! }
+      ? { collection: 'tunnels', id: network.tunnelIds[element - network.firstTunnelElement]! }
       : { collection: 'links', id: (bundle.alive[0] ?? bundle.cables[0])! }),
     direction: graph.direction[node] === 0 ? 'a-to-b' : 'b-to-a',
     ...(graph.tags[node] === untagged ? {} : { vlan }),
@@ -125,7 +125,7 @@ const describe = (graph: FloodGraph, parts: readonly Cyclic[]): Storm => {
   const elements = [...new Set(nodes.map((node) => graph.element[node]!))];
   const bundles = elements.flatMap((element) => network.bundles[element] ?? []);
   const tunnels = elements
-    .flatMap((element) => network.tunnelIds[element - network.bundles.length] ?? [])
+    .flatMap((element) => network.tunnelIds[element - network.firstTunnelElement] ?? [])
     .sort();
   const cables = bundles.flatMap(({ alive }) => alive).sort();
   const devices = [...new Set(nodes.map((node) => forwarding.places.all[graph.into[node]!]!.device))].sort();

@@ -23,7 +23,7 @@ export interface FloodGraph {
   readonly identity: object;
   readonly nodeCount: number;
   readonly edgeCount: number;
-  /** By node: the index of the bundle of cables, or of the tunnel after all bundles. */
+  /** By node: the index of the bundle of cables, or of the tunnel from `firstTunnelElement` on. */
   readonly element: Int32Array;
   readonly direction: Uint8Array;
   readonly tags: Int32Array;

@@ -75,7 +75,7 @@ export const forwardingOf = (network: Network, options: ForwardingOptions = {}):
   const states = tunnelStates(network);
   const blocked = options.blocked ?? new Set<number>();
   const past = options.pastBarriers;
-  const bundleCount = network.bundles.length;
+  const { firstTunnelElement } = network;
   const meantVlan = (device: Id): number | undefined => past?.vlanAt(entryOf(design.devices, device).site);
 
   const arriveInSwitch = (place: SwitchPlace, group: PortGroup, tags: Tags, visit: Visit): void => {
@@ -167,7 +167,7 @@ export const forwardingOf = (network: Network, options: ForwardingOptions = {}):
   };
 
   const arriveByTunnel = (element: number, direction: Direction, tags: Tags, visit: Visit): void => {
-    const id = network.tunnelIds[element - bundleCount]!;
+    const id = network.tunnelIds[element - firstTunnelElement]!;
     const tunnel = entryOf(design.tunnels, id);
     const state = states.get(id)!;
     if (!state.up && past === undefined && options.everyTunnelUp !== true) return;
@@ -316,7 +316,7 @@ export const forwardingOf = (network: Network, options: ForwardingOptions = {}):
   return {
     places,
     arrive: (element, direction, tags, visit) =>
-      element < bundleCount
+      element < firstTunnelElement
         ? enter(network.bundles[element]![direction === 0 ? 'b' : 'a'], tags, visit)
         : arriveByTunnel(element, direction, tags, visit),
     enter,

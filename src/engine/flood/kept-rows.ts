@@ -59,23 +59,22 @@ export interface KeptRows {
 export const keptRows = ({ network: before }: FloodGraph, now: Network): KeptRows => {
   const touched = touchedDevices(before, now);
   const stirred = stirredSites(before, now);
-  const elementBefore = new Int32Array(now.bundles.length + now.tunnelIds.length).fill(-1);
-  const elementNow = new Int32Array(before.bundles.length + before.tunnelIds.length).fill(-1);
+  const elementBefore = new Int32Array(now.firstTunnelElement + now.tunnelIds.length).fill(-1);
+  const elementNow = new Int32Array(before.firstTunnelElement + before.tunnelIds.length).fill(-1);
   const pair = (old: number | undefined, element: number): void => {
     if (old === undefined) return;
     elementBefore[element] = old;
     elementNow[old] = element;
   };
-  if (now.bundles === before.bundles) now.bundles.forEach((_bundle, i) => pair(i, i));
-  else
-    for (const { index, cables } of now.bundles) {
-      const old = before.bundleByCable.get(cables[0]!);
-      if (old?.cables[0] === cables[0]) pair(old?.index, index);
-    }
+  for (const bundle of now.bundles) {
+    const [cable] = bundle.cables;
+    const old = before.bundles[bundle.index] === bundle ? bundle : before.bundleByCable.get(cable!);
+    if (old?.cables[0] === cable) pair(old?.index, bundle.index);
+  }
   const { tunnelIndex } = placesOf(before);
   now.tunnelIds.forEach((id, i) => {
     const old = now.tunnelIds === before.tunnelIds ? i : tunnelIndex.get(id);
-    pair(old === undefined ? undefined : before.bundles.length + old, now.bundles.length + i);
+    pair(old === undefined ? undefined : before.firstTunnelElement + old, now.firstTunnelElement + i);
   });
   const placeNow = new Int32Array(placesOf(before).all.length).fill(-1);
   const placeBefore = new Int32Array(placesOf(now).all.length).fill(-1);

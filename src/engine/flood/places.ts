@@ -11,7 +11,7 @@ import { rebuiltDevices } from './rebuilt-devices.ts';
 
 /** 0 runs from end a to end b, 1 back. */
 export type Direction = 0 | 1;
-/** A way out: an element (cables first, then tunnels, by index) and the direction along it. */
+/** A way out: an element (a bundle of cables, or a tunnel from `firstTunnelElement` on) and the direction along it. */
 export interface Out {
   readonly element: number;
   readonly direction: Direction;
@@ -162,7 +162,7 @@ const buildCircuits = (
     const keepsTags = (innerTags ?? (device.settings?.keepInnerTags === true ? 'keep' : 'strip')) === 'keep';
     const horizon = numberFor(horizons, isMultipoint && vni !== undefined ? `${endpoint}/${vni}` : undefined);
     const out: Out = {
-      element: network.bundles.length + tunnelIndex.get(circuit.tunnel)!,
+      element: network.firstTunnelElement + tunnelIndex.get(circuit.tunnel)!,
       direction: end === 'a' ? 0 : 1,
     };
     circuits.push({
@@ -224,30 +224,32 @@ const placesIn = (
   return places;
 };
 
-/** Whether cables and tunnels have the numbers that they had. */
-const areElementsKept = (before: Network, now: Network): boolean =>
-  before.bundles === now.bundles && before.tunnelIds === now.tunnelIds;
+/** Whether tunnels have the numbers that they had. */
+const areTunnelsKept = (before: Network, now: Network): boolean =>
+  before.firstTunnelElement === now.firstTunnelElement && before.tunnelIds === now.tunnelIds;
 
 /** Every place in which frames of the design can be, with the ways in and out of it. */
 export const placesOf = perNetwork((network, earlier?: Answer<Places>): Places => {
   const areDevicesSame = earlier?.network.design.devices === network.design.devices;
   if (
     areDevicesSame &&
-    areElementsKept(earlier!.network, network) &&
+    areTunnelsKept(earlier!.network, network) &&
+    earlier!.network.portGroupsByDevice === network.portGroupsByDevice &&
     rebuiltDevices(earlier!.network, network).size === 0
   )
     return earlier!.value;
   const all: Place[] = [];
   const byDevice = new Map<Id, readonly Place[]>();
   const byForwarder = new Map<string, ForwarderPlace>();
-  const areElementsSame = earlier !== undefined && areElementsKept(earlier.network, network);
-  const tunnelIndex = areElementsSame
+  const areTunnelsSame = earlier !== undefined && areTunnelsKept(earlier.network, network);
+  const tunnelIndex = areTunnelsSame
     ? earlier.value.tunnelIndex
     : new Map(network.tunnelIds.map((id, index) => [id, index]));
-  const rebuilt = areElementsSame ? rebuiltDevices(earlier.network, network) : undefined;
+  const rebuilt = areTunnelsSame ? rebuiltDevices(earlier.network, network) : undefined;
   const kept = (id: Id): readonly Place[] | undefined => {
     if (rebuilt?.has(id) !== false) return undefined;
     if (earlier!.network.design.devices[id] !== network.design.devices[id]) return undefined;
+    if (earlier!.network.portGroupsByDevice.get(id) !== network.portGroupsByDevice.get(id)) return undefined;
     const places = earlier!.value.byDevice.get(id);
     return places?.[0] === undefined || places[0].index === all.length
       ? places
@@ -268,6 +270,8 @@ export const placesOf = perNetwork((network, earlier?: Answer<Places>): Places =
 export const devicesArrivedAt = perNetwork((network): readonly Id[] => {
   const devices: Id[] = [];
   for (const { a, b } of network.bundles) devices.push(b.device, a.device);
+  // Nothing crosses the numbers between bundles and tunnels.
+  while (devices.length < 2 * network.firstTunnelElement) devices.push('');
   for (const id of network.tunnelIds) {
     const tunnel = entryOf(network.design.tunnels, id);
     devices.push(deviceOfTunnelEnd(network, tunnel, 'b'), deviceOfTunnelEnd(network, tunnel, 'a'));

@@ -129,7 +129,7 @@ export const reach = (network: Network, source: Source, options: ReachOptions = 
   const deliveries = new Map<Id, Delivery>();
   const tunnels = new Set<Id>();
   for (const node of seen.order) {
-    const tunnel = network.tunnelIds[graph.element[node]! - network.bundles.length];
+    const tunnel = network.tunnelIds[graph.element[node]! - network.firstTunnelElement];
     if (tunnel !== undefined) tunnels.add(tunnel);
     const place = graph.forwarding.places.all[graph.into[node]!];
     if (place?.kind !== 'host') continue;
@@ -158,5 +158,5 @@ export const elementIndex = (
 ): number | undefined => {
   if (ref.collection === 'links') return network.bundleByCable.get(ref.id)?.index;
   entryOf(network.design.tunnels, ref.id);
-  return network.bundles.length + placesOf(network).tunnelIndex.get(ref.id)!;
+  return network.firstTunnelElement + placesOf(network).tunnelIndex.get(ref.id)!;
 };

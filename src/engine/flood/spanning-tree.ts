@@ -118,7 +118,7 @@ const hearing = (
 ): ReadonlyMap<BridgePort, readonly Heard[]> => {
   const heard = new Map<BridgePort, Heard[]>();
   const byPlace = new Map(bridges.map((bridge) => [bridge.place, bridge]));
-  const bundleCount = network.bundles.length;
+  const { firstTunnelElement } = network;
   for (const bridge of bridges)
     for (const port of bridge.ports) {
       const queue: Way[] = sentBy(bridge, port.ordinal).map((crossing) => [...crossing, []]);
@@ -144,9 +144,10 @@ const hearing = (
         const key = `${element} ${direction} ${tags}`;
         if (seen.has(key)) continue;
         seen.add(key);
-        const bundle = element < bundleCount ? network.bundles[element]! : undefined;
+        const bundle = element < firstTunnelElement ? network.bundles[element]! : undefined;
         if (bundle !== undefined && filtersBpdus(network, bundle)) continue;
-        tunnels = bundle === undefined ? [...behind, network.tunnelIds[element - bundleCount]!] : behind;
+        tunnels =
+          bundle === undefined ? [...behind, network.tunnelIds[element - firstTunnelElement]!] : behind;
         const group = bundle === undefined ? undefined : direction === 0 ? bundle.b : bundle.a;
         const [place] = group === undefined ? [] : (forwarding.places.byDevice.get(group.device) ?? []);
         // A switch that takes part listens before any VLAN is looked at, and only to untagged BPDUs.

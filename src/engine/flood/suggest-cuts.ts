@@ -63,7 +63,7 @@ const elementsOf = (network: Network, storm: Storm): readonly Element[] => {
     };
   });
   const tunnels = storm.tunnels.map((id): Element => ({
-    index: network.bundles.length + placesOf(network).tunnelIndex.get(id)!,
+    index: network.firstTunnelElement + placesOf(network).tunnelIndex.get(id)!,
     ids: [id],
     kind: 'tunnels',
     ...tunnelQuality(network, id),

@@ -13,13 +13,13 @@ export const tunnelSegments: (network: Network) => ReadonlyMap<Id, readonly Id[]
     const graph = floodGraph(network);
     if (earlier !== undefined && floodGraph(earlier.network).identity === graph.identity)
       return earlier.value;
-    const bundleCount = network.bundles.length;
+    const { firstTunnelElement } = network;
     const lists = network.tunnelIds.map((): Id[] => []);
     for (const { segment, nodes } of segmentReaches(graph))
       for (const node of nodes) {
         const element = graph.element[node]!;
-        if (element < bundleCount) continue;
-        const list = lists[element - bundleCount]!;
+        if (element < firstTunnelElement) continue;
+        const list = lists[element - firstTunnelElement]!;
         if (list.length === 0 || list[list.length - 1] !== segment) list.push(segment);
       }
     return new Map(network.tunnelIds.map((id, i) => [id, lists[i]!]));

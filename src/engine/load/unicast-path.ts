@@ -82,7 +82,7 @@ const crossingOf = (graph: FloodGraph, node: number): Crossing => {
   const bundle = network.bundles[element];
   return {
     ...(bundle === undefined
-      ? { collection: 'tunnels', id: network.tunnelIds[element - network.bundles.length]! }
+      ? { collection: 'tunnels', id: network.tunnelIds[element - network.firstTunnelElement]! }
       : { collection: 'links', id: (bundle.alive[0] ?? bundle.cables[0])!, bundle: element }),
     from: graph.direction[node] === 0 ? 'a' : 'b',
     tags: graph.tags[node]!,

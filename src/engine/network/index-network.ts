@@ -17,6 +17,7 @@ import type {
   TunnelAt,
 } from './network.ts';
 import { ends, entryOf, passOnAnswers, portKey, portVlanKey, siteVlanKey } from './network.ts';
+import { cablingAfter } from './cabling-after.ts';
 import type { Cabling } from './port-groups.ts';
 import { cablingOf, portGroupsAfter } from './port-groups.ts';
 
@@ -324,22 +325,24 @@ const hasTheSamePorts = ({ before, now }: EntryChange<Device>): boolean => {
   );
 };
 
-/** The cabling where links join what they did: only devices without cables can change nothing but their own ports. */
-const renewCabling = (
-  before: Network,
-  design: DesignFacts,
-  changes: Changes['devices'],
-): Partial<Cabling> => {
-  const others = changes.filter((change) => !hasTheSamePorts(change));
-  if (others.length === 0) return {};
-  return others.some(({ id }) => before.cablesByDevice.has(id))
-    ? listCabling(design)
-    : { portGroupsByDevice: portGroupsAfter(before.portGroupsByDevice, others) };
-};
-
 /** Whether links lead from where they did to where they did. */
 const joinTheSame = (changes: Changes['links']): boolean =>
   allAgreeIn(changes, 'kind', 'a', 'b', 'device', 'port', 'transport');
+
+/** The cabling after changes: devices that had no cables change nothing but their own ports. */
+const renewCabling = (before: Network, design: DesignFacts, { devices, links }: Changes): Cabling => {
+  const others = devices.filter((change) => !hasTheSamePorts(change));
+  if (others.some(({ id }) => before.cablesByDevice.has(id))) return listCabling(design);
+  const { portGroupsByDevice, bundles, bundleByCable, firstTunnelElement } = before;
+  const cabling = {
+    portGroupsByDevice:
+      others.length === 0 ? portGroupsByDevice : portGroupsAfter(portGroupsByDevice, others),
+    bundles,
+    bundleByCable,
+    firstTunnelElement,
+  };
+  return joinTheSame(links) ? cabling : (cablingAfter(cabling, design, links) ?? listCabling(design));
+};
 
 /** The index of a later version: lists whose entries say the same as before in what is listed of them are taken over. */
 const renew = (before: Network, design: DesignFacts): Network => {
@@ -374,7 +377,7 @@ const renew = (before: Network, design: DesignFacts): Network => {
       ? {}
       : renewForwarders(before, forwarders)),
     ...(segments.every(({ before: old, now }) => old?.sites === now?.sites) ? {} : listSegments(design)),
-    ...(linksJoinTheSame ? renewCabling(before, design, devices) : listCabling(design)),
+    ...renewCabling(before, design, changes),
   };
 };
 
@@ -396,11 +399,12 @@ const versionBefore = (design: DesignFacts): Network | undefined => {
 /**
  * Who is joined to what, as every analysis needs it. Built once per version of the design and kept; a design that differs
  * only in where things stand on the sheet has the same network, and any other version takes over what its changes leave alone.
+ * Name the version that it comes from where both must give the same numbers to bundles.
  */
-export const indexNetwork = (design: DesignFacts): Network => {
+export const indexNetwork = (design: DesignFacts, version?: Network): Network => {
   const own = known.get(design);
   if (own !== undefined) return own;
-  const before = versionBefore(design);
+  const before = version ?? versionBefore(design);
   const isSame =
     before?.design.meta === design.meta &&
     collections.every((collection) => before.design[collection] === design[collection]);

@@ -92,8 +92,11 @@ export interface Network {
   readonly segmentsBySiteVlan: ReadonlyMap<string, readonly Id[]>;
   /** In order of member, then of port number; see `portGroupAt` for one of them. */
   readonly portGroupsByDevice: ReadonlyMap<Id, readonly PortGroup[]>;
+  /** By number, which says nothing: an earlier version's bundles keep theirs. */
   readonly bundles: readonly Bundle[];
   readonly bundleByCable: ReadonlyMap<Id, Bundle>;
+  /** Elements that frames cross are bundles by number, and from here on tunnels as in `tunnelIds`; between them is room. */
+  readonly firstTunnelElement: number;
 }
 
 export const portKey = (device: Id, port: Id): string => `${device}/${port}`;

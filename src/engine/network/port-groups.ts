@@ -10,6 +10,7 @@ export interface Cabling {
   readonly portGroupsByDevice: ReadonlyMap<Id, readonly PortGroup[]>;
   readonly bundles: readonly Bundle[];
   readonly bundleByCable: ReadonlyMap<Id, Bundle>;
+  readonly firstTunnelElement: number;
 }
 
 interface PortsAsOne {
@@ -76,6 +77,24 @@ export const portGroupAt = (
   return index === undefined ? undefined : portGroupsByDevice.get(device)?.[index];
 };
 
+/** The logical port of a cable's plug among those of the devices given. */
+export const plugGroup = <G extends PortGroup>(
+  entry: Device,
+  portGroupsByDevice: ReadonlyMap<Id, readonly G[]>,
+  { device, port, member }: Cable['a'],
+): G | undefined => {
+  // Only a pair has members: on anything else a plug that names one is in the device all the same.
+  const index = groupIndex(entry, port, entry.kind === 'ha-pair' ? member : undefined);
+  return index === undefined ? undefined : portGroupsByDevice.get(device)![index];
+};
+
+/** Whether a cable has no end in a shut port. */
+export const isAlive = (devices: DesignFacts['devices'], { a, b }: Cable): boolean =>
+  devices[a.device]!.ports[a.port]?.shut !== true && devices[b.device]!.ports[b.port]?.shut !== true;
+
+/** Room for cables that come later, so that tunnels keep their numbers. */
+const spareElements = 256;
+
 type BundleDraft = Bundle & { readonly cables: Id[]; readonly alive: Id[] };
 
 /** The bundle that joins the two groups already; undefined where there is none. */
@@ -98,21 +117,14 @@ export const cablingOf = (
     const groups = groupsOf(id, devices[id]!);
     if (groups.length > 0) portGroupsByDevice.set(id, groups);
   }
-  const groupOf = (device: Device, { device: id, port, member }: Cable['a']): Draft | undefined => {
-    // Only a pair has members: on anything else a plug that names one is in the device all the same.
-    const index = groupIndex(device, port, device.kind === 'ha-pair' ? member : undefined);
-    return index === undefined ? undefined : portGroupsByDevice.get(id)![index];
-  };
 
   const bundles: BundleDraft[] = [];
   const bundleByCable = new Map<Id, Bundle>();
   for (const id of linkIds) {
     const cable = links[id]!;
     if (cable.kind !== 'cable') continue;
-    const deviceA = devices[cable.a.device]!;
-    const deviceB = devices[cable.b.device]!;
-    const a = groupOf(deviceA, cable.a);
-    const b = groupOf(deviceB, cable.b);
+    const a = plugGroup(devices[cable.a.device]!, portGroupsByDevice, cable.a);
+    const b = plugGroup(devices[cable.b.device]!, portGroupsByDevice, cable.b);
     if (a === undefined || b === undefined) continue;
     // Two cables between the same single ports stay two: only an aggregate makes one crossing of several.
     const isAggregated = a.aggregation !== undefined || b.aggregation !== undefined;
@@ -124,11 +136,10 @@ export const cablingOf = (
       b.bundles.push({ bundle: bundle.index, end: 'b' });
     }
     bundle.cables.push(id);
-    const isShut = deviceA.ports[cable.a.port]?.shut === true || deviceB.ports[cable.b.port]?.shut === true;
-    if (!isShut) bundle.alive.push(id);
+    if (isAlive(devices, cable)) bundle.alive.push(id);
     bundleByCable.set(id, bundle);
   }
-  return { portGroupsByDevice, bundles, bundleByCable };
+  return { portGroupsByDevice, bundles, bundleByCable, firstTunnelElement: bundles.length + spareElements };
 };
 
 /** The port groups where devices that have no cables came, went or got other ports. */

@@ -40,7 +40,7 @@ const withPairs = (
     const device = entryOf(design.devices, id);
     if (device.kind === 'ha-pair') devices[id] = change(device);
   }
-  return indexNetwork({ ...design, devices });
+  return indexNetwork({ ...design, devices }, network);
 };
 
 const allOuts = (network: Network, group: PortGroup): readonly Out[] =>
@@ -99,11 +99,11 @@ export const possibleFlood = perNetwork((network): PossibleFlood => {
       place.kind === 'forwarder' && isInTree(first, place) ? [[place.index, byCircuit(place)] as const] : [],
     ),
   );
-  const bundleCount = first.bundles.length;
+  const { firstTunnelElement } = first;
 
   const arrive = (element: number, direction: Direction, tags: Tags, visit: Visit): void => {
     forwarding.arrive(element, direction, tags, visit);
-    if (element < bundleCount || !isSharedEnd(first, element, direction)) return;
+    if (element < firstTunnelElement || !isSharedEnd(first, element, direction)) return;
     const device = entryOf(first.design.devices, farDevice(first, element, direction));
     // The other member of a pair is the one that the turned network calls active.
     if (device.kind === 'ha-pair') turned.arrive(element, direction, tags, visit);
@@ -150,7 +150,7 @@ const full = ([element, direction, tags, classes]: Parameters<Emit>): Parameters
 ];
 
 const farEndOf = (network: Network, element: number, direction: Direction) => {
-  const tunnel = entryOf(network.design.tunnels, network.tunnelIds[element - network.bundles.length]!);
+  const tunnel = entryOf(network.design.tunnels, network.tunnelIds[element - network.firstTunnelElement]!);
   return { tunnel, end: direction === 0 ? ('b' as const) : ('a' as const) };
 };
 const farDevice = (network: Network, element: number, direction: Direction): Id => {

@@ -61,7 +61,7 @@ const build = (network: Network, segment: Id): SegmentWays => {
   const placed = attachmentPoints(floodGraph(network), segment).points;
   const points = placed.map(({ point }) => point);
   const count = points.length;
-  const bundleCount = network.bundles.length;
+  const { firstTunnelElement } = network;
 
   const element: number[] = Array.from({ length: count * 2 }, () => -1);
   const direction: number[] = element.map(() => 0);
@@ -124,7 +124,7 @@ const build = (network: Network, segment: Id): SegmentWays => {
     const crossed = element[node]!;
     const way = direction[node]! as Direction;
     const needs =
-      crossed >= bundleCount && isSharedEnd(flood.network, crossed, way)
+      crossed >= firstTunnelElement && isSharedEnd(flood.network, crossed, way)
         ? FORWARDS | TAKES_TUNNELS
         : FORWARDS;
     flood.arrive(crossed, way, tags[node]!, (reached, ordinal, inside) => {

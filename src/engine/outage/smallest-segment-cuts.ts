@@ -141,7 +141,7 @@ const elementsOf = (network: Network, cut: readonly number[]): readonly ElementR
     .flatMap((element): ElementRef[] => {
       const bundle = network.bundles[element];
       return bundle === undefined
-        ? [{ collection: 'tunnels', id: network.tunnelIds[element - network.bundles.length]! }]
+        ? [{ collection: 'tunnels', id: network.tunnelIds[element - network.firstTunnelElement]! }]
         : bundle.alive.map((id) => ({ collection: 'links', id }));
     })
     .sort((x, y) => (`${x.collection} ${x.id}` < `${y.collection} ${y.id}` ? -1 : 1));

@@ -44,7 +44,7 @@ export const spanningTrees = perNetwork((network): readonly SpanningTree[] => {
   network.tunnelIds.forEach((id, i) => {
     const tunnel = entryOf(network.design.tunnels, id);
     const [a, b] = ends.map((end) => deviceOfTunnelEnd(network, tunnel, end));
-    join(a!, b!, network.bundles.length + i);
+    join(a!, b!, network.firstTunnelElement + i);
   });
   const trees: SpanningTree[] = [];
   const seen = new Set<Id>();
@@ -60,7 +60,7 @@ export const spanningTrees = perNetwork((network): readonly SpanningTree[] => {
         seen.add(next.device);
         devices.push(next.device);
       }
-    const crossesTunnels = [...elements].some((element) => element >= network.bundles.length);
+    const crossesTunnels = [...elements].some((element) => element >= network.firstTunnelElement);
     trees.push({ devices: new Set(devices), elements, crossesTunnels });
   }
   return trees;

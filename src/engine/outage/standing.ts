@@ -109,12 +109,12 @@ const translated = (network: Network, other: Network): Blocked => {
 /** How the design stands with nothing failed. */
 export const undisturbed: (network: Network) => Standing = perNetwork((network): Standing => {
   const flood = possibleFlood(network);
-  const bundleCount = network.bundles.length;
-  const elements = new Uint8Array(bundleCount + network.tunnelIds.length);
+  const { firstTunnelElement } = network;
+  const elements = new Uint8Array(firstTunnelElement + network.tunnelIds.length);
   for (const bundle of network.bundles) elements[bundle.index] = bundle.alive.length > 0 ? 1 : 0;
   const states = tunnelStates(network);
   network.tunnelIds.forEach((id, i) => {
-    elements[bundleCount + i] = states.get(id)!.up ? 1 : 0;
+    elements[firstTunnelElement + i] = states.get(id)!.up ? 1 : 0;
   });
   const places = Uint8Array.from(flood.places, (place) =>
     placeState(entryOf(network.design.devices, place.device), place),
@@ -152,7 +152,7 @@ const sameSet = (a: ReadonlySet<number>, b: ReadonlySet<number>): boolean =>
 export const standingAfter = (network: Network, casualties: Casualties): Change => {
   const before = undisturbed(network);
   const flood = possibleFlood(network);
-  const bundleCount = network.bundles.length;
+  const { firstTunnelElement } = network;
   const elements = before.elements.slice();
   const lost: number[] = [];
   const gained: number[] = [];
@@ -167,12 +167,12 @@ export const standingAfter = (network: Network, casualties: Casualties): Change 
       set(bundle.index, false);
   }
   const indices = tunnelIndices(network);
-  for (const tunnel of casualties.tunnels) set(bundleCount + indices.get(tunnel)!, false);
+  for (const tunnel of casualties.tunnels) set(firstTunnelElement + indices.get(tunnel)!, false);
   const touched = touchedTunnels(network, casualties);
   const after =
     touched.length === 0 ? undefined : indexNetwork(degrade(partOfTunnels(network, touched), casualties));
   if (after !== undefined)
-    for (const [id, { up }] of tunnelStates(after)) set(bundleCount + indices.get(id)!, up);
+    for (const [id, { up }] of tunnelStates(after)) set(firstTunnelElement + indices.get(id)!, up);
 
   const changed = new Set<number>();
   const { members } = casualties;

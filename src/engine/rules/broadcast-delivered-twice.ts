@@ -19,7 +19,7 @@ import { counted, countWord, listed } from './wording.ts';
 
 /** Tells which segments' ways form no tree: in a tree nothing can arrive twice, and most segments need no closer look. */
 const meetingAgain = (graph: FloodGraph): ((nodes: readonly number[]) => boolean) => {
-  const elements = graph.network.bundles.length + graph.network.tunnelIds.length;
+  const elements = graph.network.firstTunnelElement + graph.network.tunnelIds.length;
   const ends = new Int32Array(2 * elements);
   const parent = new Int32Array(graph.forwarding.places.all.length);
   const rootOf = (place: number): number => {
@@ -129,7 +129,7 @@ const differingWays = (network: Network, sender: Id, receiver: Id, copies: numbe
     .map(([element]): ElementRef => {
       const bundle = network.bundles[element];
       return bundle === undefined
-        ? { collection: 'tunnels', id: network.tunnelIds[element - network.bundles.length]! }
+        ? { collection: 'tunnels', id: network.tunnelIds[element - network.firstTunnelElement]! }
         : { collection: 'links', id: bundle.cables[0]! };
     });
 };

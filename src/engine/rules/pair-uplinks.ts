@@ -26,7 +26,7 @@ const uplinks = perNetwork((network): readonly Uplink[] => {
         const bundle = network.bundleByCable.get(cable);
         if (bundle !== undefined) bundles.add(bundle);
       }
-  const inOrder = [...bundles].sort((a, b) => a.index - b.index);
+  const inOrder = [...bundles].sort((a, b) => (a.cables[0]! < b.cables[0]! ? -1 : 1));
   return inOrder.flatMap(({ alive }) =>
     alive.flatMap((cable) => {
       const link = links[cable]!;

@@ -206,6 +206,6 @@ const crossTunnel = (following: Following, crossing: Crossing, bytesOf: BytesOf)
 
 /** What one copy meets between two devices: the bytes it has there, and what may cut or end it underway. */
 export const crossWire = (following: Following, crossing: Crossing, bytesOf: BytesOf): Crossed =>
-  crossing.element < following.network.bundles.length
+  crossing.element < following.network.firstTunnelElement
     ? crossCable(following, crossing, bytesOf)
     : crossTunnel(following, crossing, bytesOf);

@@ -137,7 +137,7 @@ export const followerOf = (following: Following): Follower => {
       const group = direction === 0 ? bundle.b : bundle.a;
       return { device: group.device, group, tags, hopLimit };
     }
-    const tunnel = network.tunnelIds[element - network.bundles.length]!;
+    const tunnel = network.tunnelIds[element - network.firstTunnelElement]!;
     const entry = entryOf(network.design.tunnels, tunnel);
     const far = otherEnd(direction === 0 ? 'a' : 'b');
     return { device: deviceOfTunnelEnd(network, entry, far), tunnel, tags, hopLimit };

@@ -86,7 +86,7 @@ export const namesOf = (
       ref: { collection: 'links', id },
     };
   }
-  const id = network.tunnelIds[element - network.bundles.length]!;
+  const id = network.tunnelIds[element - network.firstTunnelElement]!;
   const tunnel = entryOf(network.design.tunnels, id);
   const endpoints = [tunnel.a, tunnel.b].map(({ endpoint }): ElementRef => ({
     collection: 'endpoints',

@@ -197,7 +197,7 @@ const tagStripped = (
   direction: number,
   inside: Tags,
 ): DecisionFact => {
-  const id = network.tunnelIds[element - network.bundles.length]!;
+  const id = network.tunnelIds[element - network.firstTunnelElement]!;
   const tunnel = entryOf(network.design.tunnels, id);
   const end = direction === 0 ? 'a' : 'b';
   const { settings } = entryOf(network.design.devices, deviceOfTunnelEnd(network, tunnel, end));
@@ -248,7 +248,7 @@ export const passDevice = (following: Following, visited: Visited, byTunnel: boo
   const permitted = new Set<Id>();
   real.leave(place, ordinal, inside, (element, direction, tags) => {
     if (!isWanted(element, direction)) return;
-    const isTunnel = element >= network.bundles.length;
+    const isTunnel = element >= network.firstTunnelElement;
     const filter = filterAt(following, visited, isTunnel);
     if (filter.end !== undefined) {
       stopped.push(hopOf(following, { element, direction, tags }, filter.end));

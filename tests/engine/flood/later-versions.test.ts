@@ -8,6 +8,7 @@ import type { Design } from '#engine/model/design.ts';
 import { parseDesign } from '#engine/model/parse-design.ts';
 import { tunnelStates } from '#engine/network/can-come-up.ts';
 import { indexNetwork } from '#engine/network/index-network.ts';
+import type { Network, PortGroup } from '#engine/network/network.ts';
 import { generatedDesign } from '../../support/generated-designs.ts';
 import { generatedEdit } from '../../support/generated-edits.ts';
 
@@ -17,15 +18,54 @@ const fresh = (design: Design): Design => {
   return parsed.value;
 };
 
+/** What joins devices, bundles by their first cable: which numbers they have is a matter of history. */
+const cabling = ({ portGroupsByDevice, bundles, bundleByCable }: Network): unknown => {
+  const name = (bundle: number): string => bundles[bundle]!.cables[0]!;
+  const groups = new Map(
+    [...portGroupsByDevice].map(([device, list]) => [
+      device,
+      list.map((group) => ({
+        ...group,
+        bundles: group.bundles.map(({ bundle, end }) => `${name(bundle)} ${end}`),
+      })),
+    ]),
+  );
+  const isListed = (group: PortGroup): boolean =>
+    portGroupsByDevice.get(group.device)![group.index] === group;
+  return {
+    groups,
+    bundles: bundles
+      .map(({ index, cables, alive, a, b }, number) => ({
+        cables,
+        alive,
+        ends: [a, b].map(({ device, index: group }) => `${device} ${group}`),
+        isListed: number === index && isListed(a) && isListed(b),
+      }))
+      .sort((one, other) => (one.cables[0]! < other.cables[0]! ? -1 : 1)),
+    byCable: new Map([...bundleByCable].map(([cable, bundle]) => [cable, name(bundle.index)])),
+  };
+};
+
 /** All that the engine knows of who is joined to whom and who floods to whom. */
 const known = (design: Design): unknown => {
   const network = indexNetwork(design);
-  const { design: _design, ...lists } = network;
+  const {
+    design: _design,
+    portGroupsByDevice: _groups,
+    bundles,
+    bundleByCable: _byCable,
+    firstTunnelElement,
+    ...lists
+  } = network;
   const { nodeCount, element, direction, tags, into, edgeStart, edgeTo, edgeClasses, hasFilters } =
     floodGraph(network);
+  const elements = [...element].map(
+    (one) => bundles[one]?.cables[0] ?? network.tunnelIds[one - firstTunnelElement],
+  );
   return {
     lists,
-    graph: { nodeCount, element, direction, tags, into, edgeStart, edgeTo, edgeClasses, hasFilters },
+    cabling: cabling(network),
+    graph: { nodeCount, elements, direction, tags, into, edgeStart, edgeTo, edgeClasses, hasFilters },
     states: tunnelStates(network),
     storms: findStorms(floodGraph(network)),
     carried: tunnelSegments(network),

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { applyPatch } from '#engine/model/merge-patch.ts';
+import { placesOf } from '#engine/flood/places.ts';
 import { indexNetwork } from '#engine/network/index-network.ts';
 import { portVlanKey, segmentsAt, siteVlanKey } from '#engine/network/network.ts';
 import { portGroupAt } from '#engine/network/port-groups.ts';
@@ -63,6 +64,58 @@ describe('indexNetwork', () => {
     const [one, other] = [indexNetwork(design), indexNetwork(turned)];
     expect(JSON.stringify([...other.circuitsByPort])).toBe(JSON.stringify([...one.circuitsByPort]));
     expect(other.bundles.map(({ cables }) => cables)).toEqual(one.bundles.map(({ cables }) => cables));
+  });
+});
+
+describe('the network of a later version', () => {
+  const cableOf = (hub: string, port: string) => ({
+    kind: 'cable',
+    a: { device: 'sw-s1', port: 'p9' },
+    b: { device: hub, port },
+  });
+  const before = () => {
+    const design = applyPatch(hubDesign(6, { segments: ['a'] }), {
+      devices: {
+        'sw-s1': { ports: { p9: { number: 9, role: 'lan', mode: 'trunk' } } },
+        'sw-s2': { ports: { p9: { number: 9, role: 'lan', mode: 'trunk' } } },
+      },
+    });
+    return { design, network: indexNetwork(design) };
+  };
+
+  it('has the same tunnels, ports and bundles under the same numbers where a cable is added', () => {
+    const { design, network } = before();
+    const places = placesOf(network);
+    // Its id comes before all others.
+    const later = indexNetwork(applyPatch(design, { links: { 'ca-new': cableOf('sw-s2', 'p9') } }));
+    expect(later.firstTunnelElement).toBe(network.firstTunnelElement);
+    expect(later.bundles).toHaveLength(network.bundles.length + 1);
+    for (const bundle of network.bundles) expect(later.bundles[bundle.index]).toBe(bundle);
+    for (const [device, groups] of network.portGroupsByDevice)
+      if (device !== 'sw-s1' && device !== 'sw-s2') expect(later.portGroupsByDevice.get(device)).toBe(groups);
+    expect(placesOf(later).byDevice.get('fw-s3')).toBe(places.byDevice.get('fw-s3'));
+  });
+
+  it('gives the number of a cable that is gone to the last one and leaves all others theirs', () => {
+    const { design, network } = before();
+    const gone = network.bundles[0]!;
+    const last = network.bundles.at(-1)!;
+    const later = indexNetwork(applyPatch(design, { links: { [gone.cables[0]!]: null } }));
+    expect(later.firstTunnelElement).toBe(network.firstTunnelElement);
+    expect(later.bundles[0]).toMatchObject({ index: 0, cables: last.cables });
+    for (const bundle of network.bundles.slice(1, -1)) expect(later.bundles[bundle.index]).toEqual(bundle);
+    expect(later.bundles).toHaveLength(network.bundles.length - 1);
+    expect(later.bundleByCable.has(gone.cables[0]!)).toBe(false);
+  });
+
+  it('numbers everything anew once the room for cables is used up', () => {
+    const { design, network } = before();
+    const many = Object.fromEntries(
+      Array.from({ length: 300 }, (_one, i) => [`cb-new-${i}`, cableOf('sw-s2', 'p9')]),
+    );
+    const later = indexNetwork(applyPatch(design, { links: many }));
+    expect(later.bundles).toHaveLength(network.bundles.length + 300);
+    expect(later.firstTunnelElement).toBeGreaterThanOrEqual(later.bundles.length);
   });
 });
 
