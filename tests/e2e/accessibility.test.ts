@@ -77,7 +77,8 @@ const pages: readonly (readonly [string, (page: Page) => Promise<void>])[] = [
     async (page) => {
       await signInAs(page, 'architect');
       await page.goto('/http-api#postDesignsByDesignIdPatches');
-      await page.getByText('Answers these roles').first().waitFor();
+      const opened = page.locator('#postDesignsByDesignIdPatches');
+      await opened.getByText('Answers these roles').waitFor();
     },
   ],
   ['engagements', (page) => signInAs(page, 'architect')],
