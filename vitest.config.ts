@@ -59,7 +59,8 @@ export default defineConfig({
           environment: 'node',
           include: ['tests/e2e/**/*.test.ts'],
           globalSetup: ['tests/support/running-application.ts'],
-          fileParallelism: false,
+          // Each file has designs of its own; more browsers than two would wait for one another.
+          maxWorkers: 2,
           testTimeout: 90_000,
           hookTimeout: 120_000,
           // A pointer can miss what still glides on a machine that is busy; a fault fails twice.

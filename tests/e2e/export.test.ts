@@ -73,7 +73,9 @@ describe('a sheet that leaves', () => {
 
     await page.reload();
     dialog = await openDialog(page);
-    expect(await dialog.getByRole('checkbox', { name: 'Cabling' }).isChecked()).toBe(false);
+    expect(await dialog.getByRole('checkbox', { name: 'Findings' }).isChecked()).toBe(true);
+    // Layers are those on screen.
+    expect(await dialog.getByRole('checkbox', { name: 'Cabling' }).isChecked()).toBe(true);
     await dialog.getByText('PNG', { exact: true }).click();
     await dialog.getByText('3×', { exact: true }).click();
     await dialog.getByText('3,942 × 2,787 px').waitFor();

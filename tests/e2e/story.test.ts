@@ -62,7 +62,11 @@ describe('an architect on a real design', () => {
     await expect.poll(() => nodes(page, 'ring').count()).toBe(2);
     await drag(page, await middleOf(nodes(page, 'ring').nth(0)), await middleOf(nodes(page, 'ring').nth(1)));
     const dialog = page.getByRole('dialog', { name: 'Pull a tunnel' });
-    await expect.poll(() => dialog.getByLabel(/^VNI/).inputValue()).toBe('10001');
+    // From the workspace's pool, and such as no other design has.
+    const proposed = () => dialog.getByLabel(/^VNI/).inputValue();
+    await expect.poll(proposed).toMatch(/^10[1-8]\d\d$/);
+    const vni = await proposed();
+    const other = '10011';
     await dialog.getByRole('button', { name: 'Pull the tunnel' }).click();
     await dialog.waitFor({ state: 'detached' });
 
@@ -70,22 +74,24 @@ describe('an architect on a real design', () => {
     await openDrawer(page);
     const inspector = page.getByRole('complementary', { name: 'Inspector' });
     const far = inspector.getByLabel('VNI').last();
-    await far.fill('10011');
+    await far.fill(other);
     await far.press('Enter');
-    await expect.poll(() => finding(page, /VNI 10001 at .*10011/).count()).toBe(1);
+    await expect.poll(() => finding(page, new RegExp(`VNI ${vni} at .*${other}`)).count()).toBe(1);
     await expect
       .poll(() => page.locator('.react-flow__node-marks').getByText('VNIs differ').count())
       .toBeGreaterThan(0);
     await page.locator('[data-part="cut"]').first().waitFor({ state: 'attached' });
 
     // The offered fix makes it whole.
-    await finding(page, /VNI 10001/)
-      .getByRole('button', { name: /VNI 10001/ })
+    await finding(page, new RegExp(`VNI ${vni}`))
+      .getByRole('button', { name: new RegExp(`VNI ${vni}`) })
       .click();
-    await finding(page, /VNI 10001/)
-      .getByRole('button', { name: /^Set Site \d to 10001$/ })
+    await finding(page, new RegExp(`VNI ${vni}`))
+      .getByRole('button', { name: new RegExp(`^Set Site \\d to ${vni}$`) })
+      // The row offers what its details explain.
+      .first()
       .click();
-    await expect.poll(() => finding(page, /VNI 10001 at/).count()).toBe(0);
+    await expect.poll(() => finding(page, new RegExp(`VNI ${vni} at`)).count()).toBe(0);
     await expect.poll(() => page.locator('[data-part="cut"]').count()).toBe(0);
     await saved(page);
     const before = await storedDesign(page);

@@ -16,7 +16,7 @@ describe('the Stretch assistant', () => {
     await newDesign(page, 'From a form', 'Stretch');
     const dialog = page.getByRole('dialog', { name: 'Stretch' });
     await dialog.getByRole('button', { name: 'Add by names…' }).click();
-    await dialog.getByLabel('Names, one on each line').fill('Gullhaven\nOrrin Point');
+    await dialog.getByLabel('Names, one on each line').fill('Head office\nGullhaven\nOrrin Point\nSkerry');
     await dialog.getByText('Full mesh', { exact: true }).click();
     await dialog.getByText('Filtered', { exact: true }).click();
     await dialog.getByText(/Filtered: yes\. Expected a hub or a chain/).waitFor();
