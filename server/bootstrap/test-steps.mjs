@@ -39,9 +39,7 @@ export const testSteps = [
     [typescript, '--noEmit', '-p', 'src/engine'],
     [typescript, '--noEmit', '-p', 'src/drawing'],
   ]),
-  checks('lint', [
-    [join('node_modules', 'eslint', 'bin', 'eslint.js'), '--concurrency=2', '--max-warnings=0', '.'],
-  ]),
+  checks('lint', [[join('node_modules', 'eslint', 'bin', 'eslint.js'), '--max-warnings=0', '.']]),
   checks('format', [
     [join('node_modules', 'prettier', 'bin', 'prettier.cjs'), '--check', '--log-level=warn', '.'],
   ]),
