@@ -13,6 +13,8 @@ export default defineConfig({
         test: {
           name: 'engine',
           environment: 'node',
+          // What these test is pure, so one file can't leave anything behind for the next: modules are loaded once for all.
+          isolate: false,
           // Properties on generated designs take seconds on a machine that does other work.
           testTimeout: 30_000,
           include: ['tests/{engine,drawing,contract,reference,layout,golden}/**/*.test.ts'],
