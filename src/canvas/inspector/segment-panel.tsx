@@ -7,7 +7,7 @@ import { SelectCell } from '../../components/field-cells.tsx';
 import { tunnelSegments } from '../../engine/flood/tunnel-segments.ts';
 import { protocols } from '../../engine/model/intent.ts';
 import { patchAt } from '../../engine/model/merge-patch.ts';
-import { protocolWords } from '../../lib/protocol-words.ts';
+import { protocolWords } from '../../engine/model/protocol-words.ts';
 import { useSearchValues } from '../../lib/use-search-values.ts';
 import { newEntryId, perform, useOpenDesign, useOpenState } from '../../workspace/open-design-context.tsx';
 import { placeDemand } from '../../workspace/operations/place-parts.ts';

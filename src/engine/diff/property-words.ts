@@ -1,3 +1,4 @@
+import { protocolWords } from '../model/protocol-words.ts';
 import type { WriteValue } from './value-words.ts';
 import {
   accessOverhead,
@@ -262,27 +263,7 @@ export const propertyWords: { readonly [place: string]: { readonly [property: st
     name: property('Name'),
     sites: property('Sites'),
     mtu: property('MTU', bytes),
-    protocols: property(
-      'Protocols',
-      inWords({
-        ipv4: 'IPv4',
-        ipv6: 'IPv6',
-        igmp: 'IGMP',
-        ospf: 'OSPF',
-        'is-is': 'IS-IS',
-        pim: 'PIM',
-        vrrp: 'VRRP',
-        bfd: 'BFD',
-        dhcp: 'DHCP',
-        'spanning-tree': 'spanning tree',
-        lacp: 'LACP',
-        lldp: 'LLDP',
-        eapol: 'EAPOL',
-        ptp: 'PTP',
-        cfm: 'CFM',
-        'real-time-ethernet': 'real-time Ethernet',
-      }),
-    ),
+    protocols: property('Protocols', inWords(protocolWords)),
     hostsExpected: property('Hosts expected'),
     neighbourTimeoutUs: property('Neighbour timeout', milliseconds),
     mustBeFiltered: property('Filtering required'),

@@ -4,7 +4,7 @@ import { tunnelSegments } from '../../engine/flood/tunnel-segments.ts';
 import type { Entry } from '../../engine/model/design.ts';
 import type { Network } from '../../engine/network/network.ts';
 import { capacitiesOf } from '../../engine/rules/segment-capacity.ts';
-import { protocolWords } from '../../lib/protocol-words.ts';
+import { protocolWords } from '../../engine/model/protocol-words.ts';
 
 /** A segment in one line: what it needs and what it gets. */
 export interface SegmentRow {

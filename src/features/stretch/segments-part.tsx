@@ -5,7 +5,7 @@ import { ChoiceCell, CommitCell, NumberCell } from '../../components/field-cells
 import { protocols as allProtocols } from '../../engine/model/intent.ts';
 import type { SegmentPlan } from '../../engine/stretch/stretch-form.ts';
 import { MOST_SEGMENTS } from '../../engine/stretch/stretch-form.ts';
-import { protocolWords } from '../../lib/protocol-words.ts';
+import { protocolWords } from '../../engine/model/protocol-words.ts';
 import { nextSegment } from './first-form.ts';
 import { AddButton, FormPart, type FormPartProps, RemoveButton, replaced, withField } from './form-part.tsx';
 import { problemAt } from './problem-words.ts';

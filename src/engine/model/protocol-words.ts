@@ -1,4 +1,4 @@
-import type { Protocol } from '../engine/model/intent.ts';
+import type { Protocol } from './intent.ts';
 
 /** How the trade writes what a segment may have to carry. */
 export const protocolWords: { readonly [P in Protocol]: string } = {
