@@ -4,7 +4,7 @@ import '../canvas/canvas.css';
 import { ExtraActionsProvider } from '../canvas/actions/extra-actions.ts';
 import { useElementMenu } from '../canvas/actions/use-element-menu.ts';
 import { DeskCommands } from '../canvas/commands/desk-commands.tsx';
-import { clearDesk, setInspecting, useDesk } from '../canvas/desk-state.ts';
+import { clearDesk, setInspecting } from '../canvas/desk-state.ts';
 import type { DeskTab } from '../canvas/desk-tab.ts';
 import { standingOf } from '../canvas/flow-changes-to-patch.ts';
 import { GeometryProvider, useDrawn } from '../canvas/geometry-context.tsx';
@@ -33,6 +33,8 @@ import { usePageTitle } from '../lib/page-title.ts';
 import { useSearchValues } from '../lib/use-search-values.ts';
 import { useChecks } from '../workspace/checks-context.tsx';
 import { useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
+import { SheetSide } from './sheet-side.tsx';
+import { useDrawerTabs } from './use-drawer-tabs.ts';
 
 /** A sheet that nobody changes, with all that can be read from it: findings, traces, loads, outages, every value. */
 export function FrozenSheet({ title }: { readonly title: string }) {
@@ -58,7 +60,6 @@ function Surface({ title }: { readonly title: string }) {
   const open = useOpenDesign();
   const { findings, openFindings, waiverOf, document } = useChecks();
   const anySelected = useOpenState((state) => state.selection.length > 0);
-  const inspecting = useDesk((state) => state.inspecting);
   const { settled } = useDrawn();
   const view = useView();
   const menuOf = useElementMenu();
@@ -119,17 +120,10 @@ function Surface({ title }: { readonly title: string }) {
   const traceTab = useTraceTab(valueOf('drawer') === 'trace', { onShowFinding: showFinding });
   const loadTab = useLoadTab(valueOf('drawer') === 'load');
   const outageTab = useOutageTab(valueOf('drawer') === 'outage');
-  const tabs = [findingsTab, traceTab, loadTab, outageTab, outlineTab];
-  const openTab = (tab: string): void => change({ drawer: tab === 'findings' ? '' : tab });
-  const active = tabs.find((tab) => tab.value === valueOf('drawer')) ?? findingsTab;
-  const { decorations: upper, onPick, side } = active;
+  const tabs: [DeskTab, ...DeskTab[]] = [findingsTab, traceTab, loadTab, outageTab, outlineTab];
+  const { active, openTab, openings } = useDrawerTabs(tabs);
+  const { decorations: upper, onPick } = active;
   const decorations = useLaidOver(found, upper);
-  const openings = tabs.map(({ value, label }) => ({
-    name: `Open ${label.toLowerCase()}`,
-    kind: 'Drawer',
-    detail: '',
-    run: () => openTab(value),
-  }));
 
   return (
     <main id="main" tabIndex={-1} className="sheet-desk" data-selected={anySelected}>
@@ -152,17 +146,12 @@ function Surface({ title }: { readonly title: string }) {
           asked={active.value}
         />
       </div>
-      {inspecting && side !== undefined && !anySelected && (
-        <aside
-          aria-label={active.label}
-          className="h-full w-304 shrink-0 overflow-x-hidden overflow-y-auto border-l-1.5 border-ink bg-panel"
-        >
-          {side}
-        </aside>
-      )}
-      {inspecting && (side === undefined || anySelected) && (
-        <Inspector onConnect={() => undefined} onShowFinding={select} standing={standing} menuOf={menuOf} />
-      )}
+      <SheetSide
+        active={active}
+        inspector={
+          <Inspector onConnect={() => undefined} onShowFinding={select} standing={standing} menuOf={menuOf} />
+        }
+      />
     </main>
   );
 }

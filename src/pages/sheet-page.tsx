@@ -47,6 +47,8 @@ import { usePageTitle } from '../lib/page-title.ts';
 import { useSearchValues } from '../lib/use-search-values.ts';
 import { useChecks } from '../workspace/checks-context.tsx';
 import { useOpenDesign, useOpenState } from '../workspace/open-design-context.tsx';
+import { SheetSide } from './sheet-side.tsx';
+import { useDrawerTabs } from './use-drawer-tabs.ts';
 
 /** /designs/:designId: the drawing, with its tray, drawer and inspector. */
 export function SheetPage() {
@@ -92,7 +94,6 @@ function Surface({ commenting, onOpenThread }: SurfaceProps) {
   const editable = useOpenState((state) => state.editable);
   const title = useOpenState((state) => state.document.meta.title);
   const anySelected = useOpenState((state) => state.selection.length > 0);
-  const inspecting = useDesk((state) => state.inspecting);
   const { settled, preview, setPreview, sheet } = useDrawn();
   const view = useView();
   const standing = useMemo(() => standingOf(settled), [settled]);
@@ -206,17 +207,9 @@ function Surface({ commenting, onOpenThread }: SurfaceProps) {
     const at = anchorOf(settled, ref, document);
     if (at !== undefined) view.showPoint(at);
   });
-  const tabs = [findingsTab, comments.tab, traceTab, loadTab, outageTab, outlineTab];
-  const openTab = (tab: string): void => change({ drawer: tab === 'findings' ? '' : tab });
-  // The first is open where the address says nothing.
-  const active = tabs.find((tab) => tab.value === valueOf('drawer')) ?? findingsTab;
-  const { decorations: upper, onPick, side } = active;
-  const openings = tabs.map(({ value, label }) => ({
-    name: `Open ${label.toLowerCase()}`,
-    kind: 'Drawer',
-    detail: '',
-    run: () => openTab(value),
-  }));
+  const tabs: [DeskTab, ...DeskTab[]] = [findingsTab, comments.tab, traceTab, loadTab, outageTab, outlineTab];
+  const { active, openTab, openings } = useDrawerTabs(tabs);
+  const { decorations: upper, onPick } = active;
   const { flags } = comments;
   const decorations = useMemo(() => layOver(layOver(found, { flags }), upper ?? {}), [found, flags, upper]);
 
@@ -250,37 +243,32 @@ function Surface({ commenting, onOpenThread }: SurfaceProps) {
         />
       </div>
       {waiving.dialog}
-      {inspecting && side !== undefined && !anySelected && (
-        <aside
-          aria-label={active.label}
-          className="h-full w-304 shrink-0 overflow-x-hidden overflow-y-auto border-l-1.5 border-ink bg-panel"
-        >
-          {side}
-        </aside>
-      )}
-      {inspecting && (side === undefined || anySelected) && (
-        <Inspector
-          onConnect={({ kind, from }) => {
-            const end = endOf(
-              elementKey({ collection: from.collection, id: from.id }),
-              from.port === undefined
-                ? undefined
-                : `port:${from.port}${from.member === undefined ? '' : `@${from.member}`}`,
-            );
-            askToJoin({ kind, ...(end === undefined ? {} : { a: end }) });
-          }}
-          onShowFinding={select}
-          footOf={(ref) => (
-            <ElementComments
-              of={ref}
-              onComment={ask && (() => ask({ kind: 'element', ref }))}
-              onOpenThread={onOpenThread}
-            />
-          )}
-          standing={standing}
-          menuOf={menuOf}
-        />
-      )}
+      <SheetSide
+        active={active}
+        inspector={
+          <Inspector
+            onConnect={({ kind, from }) => {
+              const end = endOf(
+                elementKey({ collection: from.collection, id: from.id }),
+                from.port === undefined
+                  ? undefined
+                  : `port:${from.port}${from.member === undefined ? '' : `@${from.member}`}`,
+              );
+              askToJoin({ kind, ...(end === undefined ? {} : { a: end }) });
+            }}
+            onShowFinding={select}
+            footOf={(ref) => (
+              <ElementComments
+                of={ref}
+                onComment={ask && (() => ask({ kind: 'element', ref }))}
+                onOpenThread={onOpenThread}
+              />
+            )}
+            standing={standing}
+            menuOf={menuOf}
+          />
+        }
+      />
     </main>
   );
 }
